@@ -1,0 +1,31 @@
+export {
+  COLEBROOK_RANGE,
+  darcyFrictionFactor,
+  darcyFrictionFactorColebrook,
+  darcyFrictionFactorFullyRough,
+  LAMINAR_LIMIT_RE,
+  TURBULENT_LIMIT_RE,
+} from './friction-factor';
+export { boreAreaM2, darcyGradient, darcyGradientOf, GRAVITY_M_S2, type SinglePhaseFlow } from './darcy-gradient';
+export { liquidVelocityMS, mixtureVelocityMS } from './flow-velocity';
+export {
+  DRAINING_QUALITY,
+  flashVapourGradient,
+  flashVapourLiquidGradient,
+  flashVapourSteamGradient,
+  fullLineShare,
+  LEAST_PITCH,
+  type FlashingFlow,
+  type FlashingGradient,
+} from './flash-vapour';
+export {
+  FITTINGS,
+  fittingLossCoefficient,
+  TURBULENT_FRICTION_BY_SIZE,
+  turbulentFrictionFactorCrane,
+  type FittingData,
+  type FittingLoss,
+  type FittingName,
+} from './fittings';
+export { NOMINAL_SIZES, PIPE_CATALOGUE, type NominalSize, type PipeStandard } from './pipe-dimensions';
+export { pipeBore, pipeSizes, type PipeBore, type PipeSchedule, type PipeSizeName } from './pipe-catalogue';
