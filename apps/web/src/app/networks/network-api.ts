@@ -1,0 +1,69 @@
+import { HttpClient, HttpParams } from '@angular/common/http';
+import { inject, Injectable } from '@angular/core';
+import { EditAccepted, Network, NetworkResults, NetworkSummary, SavedBatch } from '@riseback/contracts';
+import type { EditBatch, NetworkFile } from '@riseback/network';
+import { map, type Observable, retry, throwError, timer } from 'rxjs';
+import { isTransient } from '../shared/problem';
+
+@Injectable({ providedIn: 'root' })
+export class NetworkApi {
+  private readonly http = inject(HttpClient);
+
+  list(siteId: string): Observable<NetworkSummary[]> {
+    return this.http.get<unknown>(`/api/sites/${siteId}/networks`).pipe(
+      retryTransient(),
+      map((body) => NetworkSummary.array().parse(body)),
+    );
+  }
+
+  /** Makes a network out of a network file, read on the server; `file` goes as it was given, mistakes included. */
+  create(siteId: string, file: unknown): Observable<{ id: string; name: string }> {
+    return this.http.post<unknown>(`/api/sites/${siteId}/networks`, file).pipe(map((body) => NetworkSummary.pick({ id: true, name: true }).parse(body)));
+  }
+
+  get(networkId: string): Observable<Network> {
+    return this.http.get<unknown>(`/api/networks/${networkId}`).pipe(
+      retryTransient(),
+      map((body) => Network.parse(body)),
+    );
+  }
+
+  file(networkId: string): Observable<NetworkFile> {
+    return this.http.get<NetworkFile>(`/api/networks/${networkId}/file`).pipe(retryTransient());
+  }
+
+  /** Safe to send again: the server answers a known batchId with its first answer. */
+  edit(networkId: string, version: number, batch: EditBatch): Observable<EditAccepted> {
+    return this.http
+      .post<unknown>(`/api/networks/${networkId}/edits`, batch, { headers: { 'If-Match': `"${String(version)}"` } })
+      .pipe(
+        retryTransient(),
+        map((body) => EditAccepted.parse(body)),
+      );
+  }
+
+  editsSince(networkId: string, version: number): Observable<SavedBatch[]> {
+    return this.http
+      .get<unknown>(`/api/networks/${networkId}/edits`, { params: new HttpParams({ fromObject: { since: version } }) })
+      .pipe(
+        retryTransient(),
+        map((body) => SavedBatch.array().parse(body)),
+      );
+  }
+
+  results(networkId: string, version: number): Observable<NetworkResults> {
+    return this.http
+      .get<unknown>(`/api/networks/${networkId}/results`, { params: new HttpParams({ fromObject: { version } }) })
+      .pipe(
+        retryTransient(),
+        map((body) => NetworkResults.parse(body)),
+      );
+  }
+}
+
+function retryTransient<T>() {
+  return retry<T>({
+    count: 3,
+    delay: (error: unknown, attempt) => (isTransient(error) ? timer(250 * 2 ** attempt) : throwError(() => error)),
+  });
+}

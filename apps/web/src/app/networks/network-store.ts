@@ -1,0 +1,215 @@
+import { computed, inject, Injectable, signal } from '@angular/core';
+import { toObservable, toSignal } from '@angular/core/rxjs-interop';
+import type { CaseOutcome, Network, NetworkResults, NodeResult, Permission, PipeResult, Problem, SolveResult, TrapResult } from '@riseback/contracts';
+import { type EditOp, findings, type NetworkDocument } from '@riseback/network';
+import type { DisplayUnits } from '@riseback/units';
+import { catchError, EMPTY, expand, filter, map, type Observable, of, scan, switchMap, timer } from 'rxjs';
+import { SessionStore } from '../session/session-store';
+import { toProblem } from '../shared/problem';
+import { EditQueue } from './edit-queue';
+import { NetworkApi } from './network-api';
+import { UndoStack } from './undo-stack';
+
+type Load = { status: 'loading' } | { status: 'ready'; network: Network } | { status: 'failed'; problem: Problem };
+
+export type SolveState =
+  | { kind: 'solving' }
+  | { kind: 'stale' }
+  | { kind: 'solved'; at: string; ms: number }
+  | { kind: 'failed'; problem: Problem };
+
+interface Answers {
+  readonly networkId: string;
+  readonly latest: NetworkResults | Problem | null;
+  readonly finished: Extract<NetworkResults, { state: 'finished' }> | null;
+}
+const NO_ANSWERS: Answers = { networkId: '', latest: null, finished: null };
+
+/** The network of the page: what it is, what was drawn, what came out. In the network page's `providers`. */
+@Injectable()
+export class NetworkStore {
+  private readonly api = inject(NetworkApi);
+  private readonly session = inject(SessionStore);
+  private readonly queue = inject(EditQueue);
+  private readonly undoStack = inject(UndoStack);
+
+  /** Set by the page from the route: which network, which case ('' = the first), which element is looked at. */
+  readonly networkId = signal('');
+  readonly wantedCaseId = signal('');
+  private readonly load = signal<Load>({ status: 'loading' });
+  private readonly refusal = signal<readonly string[]>([]);
+
+  readonly loading = computed(() => this.load().status === 'loading');
+  readonly problem = computed(() => pick(this.load(), 'failed')?.problem ?? null);
+  readonly network = computed(() => pick(this.load(), 'ready')?.network ?? null);
+  /** What is drawn now, saved or not. Null until loaded. */
+  readonly document = computed((): NetworkDocument | null => this.queue.present());
+  readonly saveState = this.queue.saveState;
+  readonly saveProblem = this.queue.problem;
+  /** Edits that could not be kept, each with its reasons. */
+  readonly refusedEdits = this.queue.refused;
+  /** Why the last edit was refused on the spot; empty when it was taken. */
+  readonly lastRefusal = this.refusal.asReadonly();
+  readonly undoLabel = computed(() => this.undoStack.nextUndo()?.label ?? null);
+  readonly redoLabel = computed(() => this.undoStack.nextRedo()?.label ?? null);
+  readonly mayDraw = computed(() => this.may('draw'));
+
+  readonly units = computed(
+    (): DisplayUnits => ({
+      system: this.session.unitSystem(),
+      atmosphericPressurePa: this.document()?.site.atmosphericPressurePa ?? 101_325,
+    }),
+  );
+
+  /** Topology findings of the document as drawn. */
+  readonly topology = computed(() => {
+    const document = this.document();
+    return document === null ? [] : findings(document);
+  });
+
+  private readonly savedInput = computed(() => ({
+    networkId: this.network()?.id ?? '',
+    solverHash: this.queue.solverHash(),
+  }));
+  private readonly answers = toSignal(
+    toObservable(this.savedInput).pipe(
+      filter(({ networkId }) => networkId !== ''),
+      switchMap(({ networkId }) => this.resultsWhenReady(networkId).pipe(map((latest) => ({ networkId, latest })))),
+      scan(
+        (before: Answers, { networkId, latest }): Answers => ({
+          networkId,
+          latest,
+          finished: isFinished(latest) ? latest : before.networkId === networkId ? before.finished : null,
+        }),
+        NO_ANSWERS,
+      ),
+    ),
+    { initialValue: NO_ANSWERS },
+  );
+
+  /** The newest finished results; they stay on screen while newer ones are computed. */
+  readonly finished = computed(() => this.answers().finished);
+  readonly solveState = computed((): SolveState => {
+    const { latest, finished } = this.answers();
+    if (latest !== null && 'state' in latest && latest.state === 'failed') return { kind: 'failed', problem: latest.problem };
+    if (latest !== null && !('state' in latest)) return { kind: 'failed', problem: latest };
+    if (finished?.solverHash === this.queue.solverHash() && this.queue.pendingCount() === 0) {
+      return { kind: 'solved', at: finished.finishedAt, ms: finished.solveMs };
+    }
+    return this.queue.saveState() === 'notSaved' ? { kind: 'stale' } : { kind: 'solving' };
+  });
+
+  readonly cases = computed(() => [...(this.document()?.cases.values() ?? [])].map(({ value }) => value));
+  readonly caseId = computed(() => {
+    const ids = this.cases().map(({ id }) => id);
+    const wanted = this.wantedCaseId();
+    return ids.includes(wanted) ? wanted : (ids[0] ?? '');
+  });
+  readonly outcomes = computed((): ReadonlyMap<string, CaseOutcome> => new Map((this.finished()?.cases ?? []).map((outcome) => [outcome.caseId, outcome])));
+  readonly outcome = computed((): CaseOutcome | null => this.outcomes().get(this.caseId()) ?? null);
+  /** The chosen case's result; null when there is none yet or the case is refused. */
+  readonly result = computed((): SolveResult | null => {
+    const outcome = this.outcome();
+    return outcome?.status === 'solved' ? outcome.result : null;
+  });
+  readonly trapResults = computed((): ReadonlyMap<string, TrapResult> => byId(this.result()?.traps));
+  readonly pipeResults = computed((): ReadonlyMap<string, PipeResult> => byId(this.result()?.pipes));
+  readonly nodeResults = computed((): ReadonlyMap<string, NodeResult> => byId(this.result()?.nodes));
+
+  may(permission: Permission): boolean {
+    return this.network()?.permissions.includes(permission) ?? false;
+  }
+
+  open(networkId: string): void {
+    this.networkId.set(networkId);
+    this.load.set({ status: 'loading' });
+    this.undoStack.clear();
+    this.api.get(networkId).subscribe({
+      next: (network) => {
+        this.queue.open(network);
+        this.load.set({ status: 'ready', network });
+      },
+      error: (error: unknown) => {
+        this.load.set({ status: 'failed', problem: toProblem(error) });
+      },
+    });
+  }
+
+  /** Makes one edit, one step of undo. False when it was refused: `lastRefusal` says why. */
+  edit(label: string, ops: readonly EditOp[]): boolean {
+    if (ops.length === 0) return true;
+    const added = this.queue.add(label, ops);
+    this.refusal.set(added.ok ? [] : added.reasons);
+    if (added.ok) this.undoStack.edited({ label, ops: added.inverse });
+    return added.ok;
+  }
+
+  /** The ids that the undo touched, so that focus can go there; null when there was nothing to undo or it no longer applies. */
+  undo(): readonly string[] | null {
+    const step = this.undoStack.nextUndo();
+    if (step === null) return null;
+    const added = this.queue.add(`undo ${step.label}`.slice(0, 120), step.ops);
+    this.refusal.set(added.ok ? [] : added.reasons);
+    if (!added.ok) {
+      this.undoStack.dropUndo();
+      return null;
+    }
+    this.undoStack.undone({ label: step.label, ops: added.inverse });
+    return touchedIds(step.ops);
+  }
+
+  redo(): readonly string[] | null {
+    const step = this.undoStack.nextRedo();
+    if (step === null) return null;
+    const added = this.queue.add(`redo ${step.label}`.slice(0, 120), step.ops);
+    this.refusal.set(added.ok ? [] : added.reasons);
+    if (!added.ok) {
+      this.undoStack.dropRedo();
+      return null;
+    }
+    this.undoStack.redone({ label: step.label, ops: added.inverse });
+    return touchedIds(step.ops);
+  }
+
+  retrySave(): void {
+    this.queue.retry();
+  }
+
+  dismissRefusals(): void {
+    this.refusal.set([]);
+    this.queue.dismissRefusals();
+  }
+
+  /** Asks until the results of the saved version are there; the server holds each question for up to five seconds. */
+  private resultsWhenReady(networkId: string): Observable<NetworkResults | Problem> {
+    const ask = () => this.api.results(networkId, this.queue.version());
+    return ask().pipe(
+      expand((results) => (results.state === 'waiting' ? timer(200).pipe(switchMap(ask)) : EMPTY)),
+      map((results): NetworkResults | Problem => results),
+      catchError((error: unknown) => of(toProblem(error))),
+    );
+  }
+}
+
+function pick<S extends Load['status']>(load: Load, status: S): Extract<Load, { status: S }> | null {
+  return load.status === status ? (load as Extract<Load, { status: S }>) : null;
+}
+
+function isFinished(answer: NetworkResults | Problem): answer is Extract<NetworkResults, { state: 'finished' }> {
+  return 'state' in answer && answer.state === 'finished';
+}
+
+function byId<T extends { id: string }>(items: readonly T[] | undefined): ReadonlyMap<string, T> {
+  return new Map((items ?? []).map((item) => [item.id, item]));
+}
+
+function touchedIds(ops: readonly EditOp[]): string[] {
+  return [
+    ...new Set(
+      ops.flatMap((op) => {
+        if (op.op === 'add') return typeof op.value['id'] === 'string' ? [op.value['id']] : [];
+        return 'id' in op ? [op.id] : [];
+      }),
+    ),
+  ];
+}

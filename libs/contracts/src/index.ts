@@ -1,0 +1,6 @@
+export * from './networks';
+export * from './problem';
+export * from './results';
+export * from './roles';
+export * from './session';
+export * from './sites';

@@ -1,0 +1,43 @@
+import * as z from 'zod';
+
+export const SignIn = z.strictObject({
+  email: z.string().trim().min(3).max(254),
+  password: z.string().min(1).max(1_000),
+});
+export type SignIn = z.infer<typeof SignIn>;
+
+export const UNIT_SYSTEMS = ['us', 'si'] as const;
+export const THEMES = ['system', 'light', 'dark'] as const;
+
+export const Person = z.object({
+  id: z.string(),
+  name: z.string(),
+  email: z.string(),
+  units: z.enum(UNIT_SYSTEMS),
+  theme: z.enum(THEMES),
+  timeZone: z.string(),
+});
+export type Person = z.infer<typeof Person>;
+
+export const Session = z.object({ person: Person });
+export type Session = z.infer<typeof Session>;
+
+/** What a person may change of their own profile. */
+export const ProfileChange = z
+  .strictObject({
+    units: z.enum(UNIT_SYSTEMS),
+    theme: z.enum(THEMES),
+    timeZone: z.string().min(1).max(64),
+  })
+  .partial();
+export type ProfileChange = z.infer<typeof ProfileChange>;
+
+/** One of the person's own sessions. */
+export const OwnSession = z.object({
+  id: z.string(),
+  agent: z.string(),
+  createdAt: z.iso.datetime(),
+  seenAt: z.iso.datetime(),
+  current: z.boolean(),
+});
+export type OwnSession = z.infer<typeof OwnSession>;
