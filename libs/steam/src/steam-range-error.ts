@@ -1,0 +1,41 @@
+export type SteamQuantity = 'pressure' | 'temperature' | 'enthalpy' | 'density';
+
+const UNITS: Readonly<Record<SteamQuantity, string>> = {
+  pressure: 'Pa',
+  temperature: 'K',
+  enthalpy: 'J/kg',
+  density: 'kg/m³',
+};
+
+/** A state outside what the equations are used for here. Callers add which element of the network it stands at. */
+export class SteamRangeError extends Error {
+  override readonly name = 'SteamRangeError';
+
+  /**
+   * @param quantity what lies outside
+   * @param value in Pa absolute, K, J/kg or kg/m³; may be NaN
+   * @param low least value allowed
+   * @param high greatest value allowed; depends on the pressure for an enthalpy or a boiling liquid's temperature
+   * @param subject what the limits hold for, as in "pressure of boiling water"
+   */
+  constructor(
+    readonly quantity: SteamQuantity,
+    readonly value: number,
+    readonly low: number,
+    readonly high: number,
+    subject: string,
+  ) {
+    const unit = UNITS[quantity];
+    super(`The ${quantity} of ${subject} is ${value} ${unit}; it must lie between ${low} and ${high} ${unit}.`);
+  }
+}
+
+/** Refuses NaN too: every comparison with it is false. */
+export function requireWithin(
+  quantity: SteamQuantity,
+  value: number,
+  [low, high]: readonly [number, number],
+  subject: string,
+): void {
+  if (!(value >= low && value <= high)) throw new SteamRangeError(quantity, value, low, high, subject);
+}
