@@ -47,7 +47,7 @@ export function propertiesFromGibbs(g: GibbsDerivatives, pressurePa: number, tem
   };
 }
 
-/** Fills powers[offset + i] = base^i for i = from … to, both within the array; powers of 0 and up must include i = 0. */
+/** Fills powers[i] = base^i for i = 0 … highest. */
 export function fillPowers(powers: Float64Array, base: number, highest: number): void {
   let power = 1;
   powers[0] = 1;

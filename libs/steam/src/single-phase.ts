@@ -4,6 +4,7 @@ import { REGION1_RANGE, region1Unchecked } from './region1';
 import { REGION2_RANGE, region2Unchecked } from './region2';
 import { saturationTemperatureK } from './saturation-line';
 import { SATURATION_RANGE_PA } from './saturation-state';
+import { saturationState } from './saturation-table';
 import { requireWithin, SteamRangeError } from './steam-range-error';
 import { viscosityPaS } from './viscosity';
 
@@ -20,6 +21,10 @@ export interface SinglePhaseState {
  * saturationState, so that its h_l is always accepted as a liquid and its h_g as a vapour.
  */
 const BOILING_SLACK_K = 1e-3;
+/** The same as a share of an enthalpy. */
+const BOILING_ENTHALPY_SLACK = 1e-6;
+/** Steam at 800 °C has more than this at any pressure of SATURATION_RANGE_PA (4.115 to 4.160 MJ/kg) [J/kg]. */
+const ENTHALPY_SURELY_BELOW_800_C = 4.1e6;
 /** The last Newton step of a temperature [K]; density and viscosity then stand to better than 1e-8. */
 const TEMPERATURE_TOLERANCE_K = 1e-6;
 /** How far out the first guess of a liquid's temperature may be before its enthalpy is refused unseen [K]. */
@@ -76,18 +81,13 @@ export function liquidAtTemperature(pressurePa: number, temperatureK: number): S
  */
 export function vapourAtEnthalpy(pressurePa: number, enthalpyJKg: number): SinglePhaseState {
   requireWithin('pressure', pressurePa, SATURATION_RANGE_PA, 'steam');
-  const low = saturationTemperatureK(pressurePa);
-  const high = REGION2_RANGE.temperatureK[1];
-  // Refused before the iteration, not after: far from steam Newton's method would run off the equation.
-  const enthalpyAt = (temperatureK: number): number => region2Unchecked(pressurePa, temperatureK).enthalpyJKg;
-  requireWithin(
-    'enthalpy',
-    enthalpyJKg,
-    [enthalpyAt(low - BOILING_SLACK_K), enthalpyAt(high)],
-    `steam at ${pressurePa} Pa`,
-  );
-  // h(T) bends downwards from saturation, so steps from there come up to the root without passing it
-  return solveTemperature('vapourAtEnthalpy', region2Unchecked, pressurePa, enthalpyJKg, low);
+  const boiling = saturationState(pressurePa);
+  const low = boiling.vapourEnthalpyJKg * (1 - BOILING_ENTHALPY_SLACK);
+  if (!(enthalpyJKg >= low && enthalpyJKg <= ENTHALPY_SURELY_BELOW_800_C)) {
+    const high = region2Unchecked(pressurePa, REGION2_RANGE.temperatureK[1]).enthalpyJKg;
+    requireWithin('enthalpy', enthalpyJKg, [low, high], `steam at ${pressurePa} Pa`);
+  }
+  return solveTemperature('vapourAtEnthalpy', region2Unchecked, pressurePa, enthalpyJKg, boiling.temperatureK);
 }
 
 /**

@@ -34,8 +34,9 @@ export class SteamRangeError extends Error {
 export function requireWithin(
   quantity: SteamQuantity,
   value: number,
-  [low, high]: readonly [number, number],
+  range: readonly [number, number],
   subject: string,
 ): void {
-  if (!(value >= low && value <= high)) throw new SteamRangeError(quantity, value, low, high, subject);
+  if (!(value >= range[0] && value <= range[1]))
+    throw new SteamRangeError(quantity, value, range[0], range[1], subject);
 }
