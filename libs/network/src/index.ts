@@ -1,0 +1,13 @@
+export * from './apply-batch';
+export type { BatchError } from './batch-draft';
+export * from './canonical-text';
+export * from './document-file';
+export * from './edit-batch';
+export * from './edit-ops';
+export * from './json-value';
+export * from './mistakes';
+export * from './network-document';
+export * from './network-file';
+export * from './override-keys';
+export * from './read-network-file';
+export * from './solver-input';
