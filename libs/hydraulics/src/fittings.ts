@@ -70,7 +70,7 @@ export type FittingName = keyof typeof FITTINGS;
 
 /**
  * Fully turbulent friction factor f_T of clean commercial steel by nominal size, with the schedule 40 bore that stands
- * for the size. Printed to three decimals, so each figure is within 2 % of the fully rough formula.
+ * for the size. Printed to three decimals and within 5 % of the fully rough formula.
  * Source: Crane TP-410, appendix A (25th-printing generation), confirmed through a published table of K built on it.
  */
 export const TURBULENT_FRICTION_BY_SIZE = [
