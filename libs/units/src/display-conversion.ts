@@ -23,7 +23,7 @@ export function fromDisplay(value: number, kind: QuantityKind, units: DisplayUni
 
 /**
  * Digits kept of a converted value. One fewer than a double can tell apart, so that what is stored of 1.5 in is 0.0381 m and of 32 °F
- * is 273.15 K, at a relative cost of 5e-16.
+ * is 273.15 K, at a relative cost of 5e-15 at most.
  */
 const STORED_DIGITS = 15;
 

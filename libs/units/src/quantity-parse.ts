@@ -142,7 +142,7 @@ function echoOf(si: number, typed: TypedQuantity, kind: QuantityKind, units: Dis
 
 /** For reading; suggestions keep the hyphen, since they go back into the field. */
 function withMinus(text: string): string {
-  return text.replace(/^-/, MINUS);
+  return text.replace(/^-(?=.*[1-9])/, MINUS).replace(/^-/, '');
 }
 
 /** The reference a field lends to a pressure unit that names none. */
