@@ -11,3 +11,6 @@ export * from './network-file';
 export * from './override-keys';
 export * from './read-network-file';
 export * from './solver-input';
+export * from './findings';
+export * from './solvable-part';
+export type { FindingCode, TopologyFinding } from './topology';

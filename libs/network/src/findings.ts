@@ -1,0 +1,145 @@
+import { fromFile } from './document-file';
+import { jsonPointer } from './mistakes';
+import { compareIds, type NetworkDocument } from './network-document';
+import type { NetworkFile } from './network-file';
+import { nodeFindings } from './node-findings';
+import { KIND_NAMES } from './override-keys';
+import { gaugeFindings, pipeFindings } from './pipe-findings';
+import {
+  GROUND,
+  hasFixedPressure,
+  isSource,
+  joinEnds,
+  JoinedSets,
+  nameOf,
+  pipesAtNodes,
+  pipesWithEnds,
+  type PipeEnds,
+  type TopologyFinding,
+} from './topology';
+import { vesselsInCircles } from './vessel-circles';
+
+/** A finding with its place in a file (RFC 6901). */
+export interface FileFinding extends TopologyFinding {
+  readonly pointer: string;
+}
+
+/**
+ * What stands in the way of a solve, and what else a person should know about the network as drawn; linear in its size.
+ *
+ * Reach is judged whatever way the arrows point: in a tree the flow runs to the receiver all the same, and the solver says where it
+ * runs against an arrow. Nodes of fixed pressure cut the network into trees; what leaves a flash vessel starts the next tree.
+ */
+export function findings(document: NetworkDocument): TopologyFinding[] {
+  const pipes = pipesWithEnds(document);
+  const atNodes = pipesAtNodes(pipes);
+  const nodes = Array.from(document.nodes.values(), ({ value }) => value);
+  return [
+    ...wholeFindings(document),
+    ...nodes.flatMap((node) => nodeFindings(node, atNodes)),
+    ...cutOffNodes(document, pipes),
+    ...pipes.flatMap(pipeFindings),
+    ...loops(pipes),
+    ...gaugeFindings(document),
+  ];
+}
+
+/** {@link findings} of a file, each with its pointer into it. */
+export function fileFindings(file: NetworkFile): FileFinding[] {
+  const indexes = {
+    nodes: indexesOf(file.nodes),
+    pipes: indexesOf(file.pipes),
+    trapModels: indexesOf(file.trapModels),
+    cases: indexesOf(file.cases),
+    gauges: indexesOf(file.gauges),
+  };
+  return findings(fromFile(file)).map((finding) => {
+    const { element, key } = finding;
+    // no finding is about an override; the whole network's are about its nodes
+    if (element === null || element.in === 'overrides') return { ...finding, pointer: '/nodes' };
+    const path = [element.in, indexes[element.in].get(element.id) ?? 0];
+    return { ...finding, pointer: jsonPointer(key === undefined ? path : [...path, key]) };
+  });
+}
+
+function wholeFindings(document: NetworkDocument): TopologyFinding[] {
+  const nodes = Array.from(document.nodes.values(), ({ value }) => value);
+  const found: TopologyFinding[] = [];
+  if (!nodes.some(hasFixedPressure)) {
+    found.push({
+      code: 'noReceiver',
+      severity: 'error',
+      element: null,
+      what: 'The network has no receiver',
+      why: 'Back pressure is counted up from where the condensate ends: a receiver, or a flash vessel of given pressure.',
+      remedy: 'Place a receiver and lead the return pipe to it.',
+    });
+  }
+  if (nodes.length > 0 && !nodes.some(isSource)) {
+    found.push({
+      code: 'noSource',
+      severity: 'note',
+      element: null,
+      what: 'Nothing flows in this network',
+      why: 'Condensate enters through traps and pumped inlets, and there are none.',
+      remedy: 'Place a trap and give its load.',
+    });
+  }
+  return found;
+}
+
+function cutOffNodes(document: NetworkDocument, pipes: readonly PipeEnds[]): TopologyFinding[] {
+  const nodes = Array.from(document.nodes.values(), ({ value }) => value);
+  // without any receiver everything is cut off, which one finding says better than many
+  if (!nodes.some(hasFixedPressure)) return [];
+  const sets = new JoinedSets();
+  for (const ends of pipes) joinEnds(sets, ends);
+  return nodes
+    .filter((node) => !hasFixedPressure(node) && !sets.areJoined(node.id, GROUND))
+    .map((node) => {
+      const kind = KIND_NAMES[node.kind];
+      return {
+        code: 'cutOff',
+        severity: 'error',
+        element: { in: 'nodes', id: node.id },
+        what: `${kind.charAt(0).toUpperCase()}${kind.slice(1)} ${nameOf(node)} is cut off`,
+        why: 'No receiver or flash vessel can be reached from it, so no pressure stands there.',
+        remedy: 'Draw the pipes that lead from it to the return, or delete it.',
+      };
+    });
+}
+
+function loops(pipes: readonly PipeEnds[]): TopologyFinding[] {
+  return [
+    ...secondWays(pipes).map(({ pipe }): TopologyFinding => ({
+      code: 'loop',
+      severity: 'error',
+      element: { in: 'pipes', id: pipe.id },
+      what: `Pipe ${nameOf(pipe)} closes a loop or opens a second way down`,
+      why: 'With more than one way to a receiver the flow divides by itself; so far only trees, with one way down from each trap, are computed.',
+      remedy: 'Delete a pipe of the loop, or the one that is shut in operation.',
+    })),
+    ...vesselsInCircles(pipes).map((vessel): TopologyFinding => ({
+      code: 'loop',
+      severity: 'error',
+      element: { in: 'nodes', id: vessel.id },
+      what: `The liquid of flash vessel ${nameOf(vessel)} comes back to it`,
+      why: 'A vessel that feeds itself fills up: its liquid must end in a receiver.',
+      remedy: 'Lead the pipe that drains it to a receiver.',
+    })),
+  ];
+}
+
+/** The pipes that join what hangs together already. They are tried by id, so that the file's order names no other pipe. */
+function secondWays(pipes: readonly PipeEnds[]): PipeEnds[] {
+  const sets = new JoinedSets();
+  // a pipe from a node to itself, or out of a receiver, has its own finding
+  const plain = pipes.filter(({ pipe, from }) => pipe.from !== pipe.to && from.kind !== 'receiver');
+  if (plain.every((ends) => joinEnds(sets, ends))) return [];
+  const again = new JoinedSets();
+  return plain.sort((a, b) => compareIds(a.pipe.id, b.pipe.id)).filter((ends) => !joinEnds(again, ends));
+}
+
+function indexesOf(list: readonly { readonly id: string }[]): Map<string, number> {
+  return new Map(list.map(({ id }, index) => [id, index]));
+}
