@@ -7,7 +7,10 @@ import drizzle from 'eslint-plugin-drizzle';
 const restrictImports = (...groups) => [
   'error',
   {
-    patterns: [...groups, [['@riseback/*/**'], 'Use the library door.']].map(([group, message]) => ({ group, message })),
+    patterns: [...groups, [['@riseback/*/**'], 'Use the library door.']].map(([group, message]) => ({
+      group,
+      message,
+    })),
   },
 ];
 const noDefault = { selector: 'ExportDefaultDeclaration', message: 'Named exports only.' };
@@ -25,7 +28,7 @@ const noToBeCloseTo = {
 };
 const routerMethods = {
   selector:
-    "CallExpression[callee.object.name=/^(app|router)$/][callee.property.name=/^(get|post|put|patch|delete)$/][arguments.length>1]",
+    'CallExpression[callee.object.name=/^(app|router)$/][callee.property.name=/^(get|post|put|patch|delete)$/][arguments.length>1]',
   message: 'A route is an entry of the route table, which carries its access rule.',
 };
 
@@ -56,7 +59,7 @@ const libraries = Object.entries(arrows).map(([name, may]) => ({
 }));
 
 export default tseslint.config(
-  { ignores: ['node_modules', 'dist', 'out', 'data', 'screens', '.angular', '**/*.mjs', '*.config.ts'] },
+  { ignores: ['node_modules', 'dist', 'out', 'data', 'screens', '.angular', '**/*.mjs', '**/*.config.ts'] },
   {
     files: ['**/*.ts'],
     extends: [tseslint.configs.base, prettier],
@@ -87,9 +90,10 @@ export default tseslint.config(
   {
     files: ['apps/**/*.ts'],
     rules: {
-      'no-restricted-imports': restrictImports(
-        [['**/server/**', 'express', 'drizzle-orm*', 'better-sqlite3', 'node:*'], 'The browser cannot import the server.'],
-      ),
+      'no-restricted-imports': restrictImports([
+        ['**/server/**', 'express', 'drizzle-orm*', 'better-sqlite3', 'node:*'],
+        'The browser cannot import the server.',
+      ]),
     },
   },
   {
@@ -97,7 +101,10 @@ export default tseslint.config(
     ignores: ['apps/web/src/app/drawing/graph-canvas/**'],
     rules: {
       'no-restricted-imports': restrictImports(
-        [['**/server/**', 'express', 'drizzle-orm*', 'better-sqlite3', 'node:*'], 'The browser cannot import the server.'],
+        [
+          ['**/server/**', 'express', 'drizzle-orm*', 'better-sqlite3', 'node:*'],
+          'The browser cannot import the server.',
+        ],
         [['@swimlane/ngx-graph'], 'Only the graph canvas knows the graph library.'],
       ),
     },
@@ -108,7 +115,10 @@ export default tseslint.config(
     rules: {
       'drizzle/enforce-delete-with-where': ['error', { drizzleObjectName: ['db', 'tx'] }],
       'drizzle/enforce-update-with-where': ['error', { drizzleObjectName: ['db', 'tx'] }],
-      'no-restricted-imports': restrictImports([['@angular/*', '**/apps/**'], 'The server does not import the web app.']),
+      'no-restricted-imports': restrictImports([
+        ['@angular/*', '**/apps/**'],
+        'The server does not import the web app.',
+      ]),
       'no-restricted-syntax': ['error', noDefault, noEnv, syncTransaction, routerMethods],
       'no-console': 'error',
     },

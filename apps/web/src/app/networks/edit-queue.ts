@@ -103,10 +103,12 @@ export class EditQueue {
       const accepted = await firstValueFrom(this.api.edit(state.networkId, state.version, batch));
       this.acknowledge(batch, accepted.version, accepted.solverHash);
     } catch (error) {
-      const stale = error instanceof HttpErrorResponse && error.status === 412 ? StaleVersion.safeParse(error.error) : null;
+      const stale =
+        error instanceof HttpErrorResponse && error.status === 412 ? StaleVersion.safeParse(error.error) : null;
       const problem = toProblem(error);
       if (stale?.success === true) this.moveBase(stale.data);
-      else if (problem.status >= 400 && problem.status < 500 && problem.status !== 401 && problem.status !== 429) this.refuse(batch, problem);
+      else if (problem.status >= 400 && problem.status < 500 && problem.status !== 401 && problem.status !== 429)
+        this.refuse(batch, problem);
       else this.failure.set(problem);
     }
   }
@@ -116,7 +118,14 @@ export class EditQueue {
     if (state === null) return;
     const base = mustApply(state.base, batch.ops);
     const pending = state.pending.filter(({ batchId }) => batchId !== batch.batchId);
-    this.state.set({ ...state, base, version, solverHash, pending, present: pending.length === 0 ? base : state.present });
+    this.state.set({
+      ...state,
+      base,
+      version,
+      solverHash,
+      pending,
+      present: pending.length === 0 ? base : state.present,
+    });
   }
 
   /** Others saved first: their batches go under ours, and ours are replayed on top. */
@@ -125,7 +134,11 @@ export class EditQueue {
     if (state === null) return;
     const base = batches.reduce((document, { ops }) => mustApply(document, ops), state.base);
     const own = new Set(batches.map(({ batchId }) => batchId));
-    this.replay({ ...state, base, version: currentVersion }, state.pending.filter(({ batchId }) => !own.has(batchId)), batches.at(-1)?.personName);
+    this.replay(
+      { ...state, base, version: currentVersion },
+      state.pending.filter(({ batchId }) => !own.has(batchId)),
+      batches.at(-1)?.personName,
+    );
   }
 
   private refuse(batch: EditBatch, problem: Problem): void {
@@ -133,7 +146,11 @@ export class EditQueue {
     if (state === null) return;
     const reasons = problem.errors?.map(({ detail }) => detail) ?? [problem.detail ?? problem.title];
     this.refusals.update((refused) => [...refused, { batch, reasons }]);
-    this.replay(state, state.pending.filter(({ batchId }) => batchId !== batch.batchId), undefined);
+    this.replay(
+      state,
+      state.pending.filter(({ batchId }) => batchId !== batch.batchId),
+      undefined,
+    );
   }
 
   private replay(state: QueueState, batches: readonly EditBatch[], other: string | undefined): void {
@@ -145,7 +162,9 @@ export class EditQueue {
         present = applied.document;
         pending.push(batch);
       } else {
-        const reasons = applied.errors.map(({ detail }) => (other === undefined ? detail : `${other} changed it meanwhile: ${detail}`));
+        const reasons = applied.errors.map(({ detail }) =>
+          other === undefined ? detail : `${other} changed it meanwhile: ${detail}`,
+        );
         this.refusals.update((refused) => [...refused, { batch, reasons }]);
       }
     }
@@ -156,6 +175,7 @@ export class EditQueue {
 /** For batches that the server has accepted: a refusal here means that the two sides no longer hold the same document. */
 function mustApply(document: NetworkDocument, ops: readonly EditOp[]): NetworkDocument {
   const applied = applyBatch(document, ops);
-  if (!applied.ok) throw new Error(`A saved edit does not apply: ${applied.errors.map(({ detail }) => detail).join('; ')}`);
+  if (!applied.ok)
+    throw new Error(`A saved edit does not apply: ${applied.errors.map(({ detail }) => detail).join('; ')}`);
   return applied.document;
 }

@@ -18,7 +18,9 @@ export class NetworkApi {
 
   /** Makes a network out of a network file, read on the server; `file` goes as it was given, mistakes included. */
   create(siteId: string, file: unknown): Observable<{ id: string; name: string }> {
-    return this.http.post<unknown>(`/api/sites/${siteId}/networks`, file).pipe(map((body) => NetworkSummary.pick({ id: true, name: true }).parse(body)));
+    return this.http
+      .post<unknown>(`/api/sites/${siteId}/networks`, file)
+      .pipe(map((body) => NetworkSummary.pick({ id: true, name: true }).parse(body)));
   }
 
   get(networkId: string): Observable<Network> {

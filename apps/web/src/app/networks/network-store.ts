@@ -1,6 +1,16 @@
 import { computed, inject, Injectable, signal } from '@angular/core';
 import { toObservable, toSignal } from '@angular/core/rxjs-interop';
-import type { CaseOutcome, Network, NetworkResults, NodeResult, Permission, PipeResult, Problem, SolveResult, TrapResult } from '@riseback/contracts';
+import type {
+  CaseOutcome,
+  Network,
+  NetworkResults,
+  NodeResult,
+  Permission,
+  PipeResult,
+  Problem,
+  SolveResult,
+  TrapResult,
+} from '@riseback/contracts';
 import { type EditOp, findings, type NetworkDocument } from '@riseback/network';
 import type { DisplayUnits } from '@riseback/units';
 import { catchError, EMPTY, expand, filter, map, type Observable, of, scan, switchMap, timer } from 'rxjs';
@@ -20,7 +30,7 @@ export type SolveState =
 
 interface Answers {
   readonly networkId: string;
-  readonly latest: NetworkResults | Problem | null;
+  readonly latest: NetworkResults | null;
   readonly finished: Extract<NetworkResults, { state: 'finished' }> | null;
 }
 const NO_ANSWERS: Answers = { networkId: '', latest: null, finished: null };
@@ -54,12 +64,10 @@ export class NetworkStore {
   readonly redoLabel = computed(() => this.undoStack.nextRedo()?.label ?? null);
   readonly mayDraw = computed(() => this.may('draw'));
 
-  readonly units = computed(
-    (): DisplayUnits => ({
-      system: this.session.unitSystem(),
-      atmosphericPressurePa: this.document()?.site.atmosphericPressurePa ?? 101_325,
-    }),
-  );
+  readonly units = computed((): DisplayUnits => ({
+    system: this.session.unitSystem(),
+    atmosphericPressurePa: this.document()?.site.atmosphericPressurePa ?? 101_325,
+  }));
 
   /** Topology findings of the document as drawn. */
   readonly topology = computed(() => {
@@ -79,7 +87,7 @@ export class NetworkStore {
         (before: Answers, { networkId, latest }): Answers => ({
           networkId,
           latest,
-          finished: isFinished(latest) ? latest : before.networkId === networkId ? before.finished : null,
+          finished: latest.state === 'finished' ? latest : before.networkId === networkId ? before.finished : null,
         }),
         NO_ANSWERS,
       ),
@@ -91,8 +99,7 @@ export class NetworkStore {
   readonly finished = computed(() => this.answers().finished);
   readonly solveState = computed((): SolveState => {
     const { latest, finished } = this.answers();
-    if (latest !== null && 'state' in latest && latest.state === 'failed') return { kind: 'failed', problem: latest.problem };
-    if (latest !== null && !('state' in latest)) return { kind: 'failed', problem: latest };
+    if (latest?.state === 'failed') return { kind: 'failed', problem: latest.problem };
     if (finished?.solverHash === this.queue.solverHash() && this.queue.pendingCount() === 0) {
       return { kind: 'solved', at: finished.finishedAt, ms: finished.solveMs };
     }
@@ -105,7 +112,10 @@ export class NetworkStore {
     const wanted = this.wantedCaseId();
     return ids.includes(wanted) ? wanted : (ids[0] ?? '');
   });
-  readonly outcomes = computed((): ReadonlyMap<string, CaseOutcome> => new Map((this.finished()?.cases ?? []).map((outcome) => [outcome.caseId, outcome])));
+  readonly outcomes = computed(
+    (): ReadonlyMap<string, CaseOutcome> =>
+      new Map((this.finished()?.cases ?? []).map((outcome) => [outcome.caseId, outcome])),
+  );
   readonly outcome = computed((): CaseOutcome | null => this.outcomes().get(this.caseId()) ?? null);
   /** The chosen case's result; null when there is none yet or the case is refused. */
   readonly result = computed((): SolveResult | null => {
@@ -181,22 +191,18 @@ export class NetworkStore {
   }
 
   /** Asks until the results of the saved version are there; the server holds each question for up to five seconds. */
-  private resultsWhenReady(networkId: string): Observable<NetworkResults | Problem> {
-    const ask = () => this.api.results(networkId, this.queue.version());
+  private resultsWhenReady(networkId: string): Observable<NetworkResults> {
+    const version = this.queue.version();
+    const ask = () => this.api.results(networkId, version);
     return ask().pipe(
       expand((results) => (results.state === 'waiting' ? timer(200).pipe(switchMap(ask)) : EMPTY)),
-      map((results): NetworkResults | Problem => results),
-      catchError((error: unknown) => of(toProblem(error))),
+      catchError((error: unknown) => of<NetworkResults>({ state: 'failed', version, problem: toProblem(error) })),
     );
   }
 }
 
 function pick<S extends Load['status']>(load: Load, status: S): Extract<Load, { status: S }> | null {
   return load.status === status ? (load as Extract<Load, { status: S }>) : null;
-}
-
-function isFinished(answer: NetworkResults | Problem): answer is Extract<NetworkResults, { state: 'finished' }> {
-  return 'state' in answer && answer.state === 'finished';
 }
 
 function byId<T extends { id: string }>(items: readonly T[] | undefined): ReadonlyMap<string, T> {

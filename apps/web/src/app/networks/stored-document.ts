@@ -12,7 +12,9 @@ export function toDocument(stored: StoredDocument): NetworkDocument {
     pipes: byId(stored.pipes),
     trapModels: byId(stored.trapModels),
     cases: byId(stored.cases),
-    overrides: new Map(stored.overrides.map(({ caseId, ordinal, value }) => [`${caseId}/${value.node}`, { ordinal, value }])),
+    overrides: new Map(
+      stored.overrides.map(({ caseId, ordinal, value }) => [`${caseId}/${value.node}`, { ordinal, value }]),
+    ),
     gauges: byId(stored.gauges),
   };
 }

@@ -7,7 +7,12 @@ export function toProblem(error: unknown): Problem {
     const parsed = Problem.safeParse(error.error);
     if (parsed.success) return parsed.data;
     if (error.status === 0) {
-      return { type: 'about:blank', title: 'The server cannot be reached', status: 0, detail: 'Check the network and try again.' };
+      return {
+        type: 'about:blank',
+        title: 'The server cannot be reached',
+        status: 0,
+        detail: 'Check the network and try again.',
+      };
     }
     return { type: 'about:blank', title: error.statusText || 'The request failed', status: error.status };
   }
@@ -21,5 +26,8 @@ export function toProblem(error: unknown): Problem {
 
 /** Worth another try by itself: no answer at all, or a server that says it is busy. */
 export function isTransient(error: unknown): boolean {
-  return error instanceof HttpErrorResponse && (error.status === 0 || error.status === 502 || error.status === 503 || error.status === 504);
+  return (
+    error instanceof HttpErrorResponse &&
+    (error.status === 0 || error.status === 502 || error.status === 503 || error.status === 504)
+  );
 }

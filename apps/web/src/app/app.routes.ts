@@ -1,0 +1,44 @@
+import type { Routes } from '@angular/router';
+import { signedInGuard } from './session/signed-in-guard';
+
+export const routes: Routes = [
+  { path: '', pathMatch: 'full', redirectTo: 'sites' },
+  {
+    path: 'sign-in',
+    title: 'Sign in · Riseback',
+    loadComponent: () => import('./sign-in/sign-in-page').then((m) => m.SignInPage),
+  },
+  {
+    path: 'sites',
+    canActivate: [signedInGuard],
+    children: [
+      {
+        path: '',
+        pathMatch: 'full',
+        title: 'Sites · Riseback',
+        loadComponent: () => import('./sites/site-list-page').then((m) => m.SiteListPage),
+      },
+      {
+        path: ':siteId',
+        pathMatch: 'full',
+        title: 'Networks · Riseback',
+        loadComponent: () => import('./networks/network-list-page').then((m) => m.NetworkListPage),
+      },
+      {
+        path: ':siteId/networks/:networkId',
+        loadComponent: () => import('./networks/network-page').then((m) => m.NetworkPage),
+        children: [
+          { path: '', pathMatch: 'full', redirectTo: 'drawing' },
+          { path: 'drawing', loadComponent: () => import('./drawing/drawing-page').then((m) => m.DrawingPage) },
+          { path: 'lists', loadComponent: () => import('./lists/lists-page').then((m) => m.ListsPage) },
+          { path: 'ledger', loadComponent: () => import('./results/ledger-page').then((m) => m.LedgerPage) },
+        ],
+      },
+    ],
+  },
+  {
+    path: '**',
+    title: 'Not found · Riseback',
+    loadComponent: () => import('./shell/not-found-page').then((m) => m.NotFoundPage),
+  },
+];

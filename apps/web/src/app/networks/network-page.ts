@@ -1,0 +1,56 @@
+import { ChangeDetectionStrategy, Component, effect, inject, input, untracked } from '@angular/core';
+import { Title } from '@angular/platform-browser';
+import { RouterLink, RouterLinkActive, RouterOutlet } from '@angular/router';
+import { ProblemBanner } from '../shared/problem-banner/problem-banner';
+import { AppBar } from '../shell/app-bar';
+import { EditQueue } from './edit-queue';
+import { NetworkStore } from './network-store';
+import { RefusedEdits } from './refused-edits';
+import { TitleBlock } from './title-block';
+import { UndoStack } from './undo-stack';
+
+const VIEWS = [
+  { path: 'drawing', word: 'Drawing' },
+  { path: 'lists', word: 'Lists' },
+  { path: 'ledger', word: 'Lift & ledger' },
+] as const;
+
+/** The frame of one network: views, title block, and the view that the route names. */
+@Component({
+  selector: 'app-network-page',
+  imports: [AppBar, ProblemBanner, RefusedEdits, RouterLink, RouterLinkActive, RouterOutlet, TitleBlock],
+  providers: [NetworkStore, EditQueue, UndoStack],
+  changeDetection: ChangeDetectionStrategy.OnPush,
+  host: { '(window:beforeunload)': 'warnBeforeLoss($event)' },
+  templateUrl: './network-page.html',
+  styleUrl: './network-page.scss',
+})
+export class NetworkPage {
+  protected readonly store = inject(NetworkStore);
+  private readonly title = inject(Title);
+
+  readonly siteId = input.required<string>();
+  readonly networkId = input.required<string>();
+  readonly case = input<string>();
+
+  protected readonly views = VIEWS;
+
+  constructor() {
+    effect(() => {
+      const networkId = this.networkId();
+      untracked(() => this.store.open(networkId));
+    });
+    effect(() => {
+      this.store.wantedCaseId.set(this.case() ?? '');
+    });
+    effect(() => {
+      const name = this.store.document()?.name;
+      if (name !== undefined) this.title.setTitle(`${name} · Riseback`);
+    });
+  }
+
+  /** The browser asks before a tab with unsaved edits is closed. */
+  protected warnBeforeLoss(event: BeforeUnloadEvent): void {
+    if (this.store.saveState() !== 'saved') event.preventDefault();
+  }
+}

@@ -1,0 +1,54 @@
+import { ChangeDetectionStrategy, Component, computed, inject, input } from '@angular/core';
+import { MatMenu, MatMenuItem, MatMenuTrigger } from '@angular/material/menu';
+import { Router, RouterLink } from '@angular/router';
+import type { ProfileChange, Role } from '@riseback/contracts';
+import { SessionStore } from '../session/session-store';
+import { RisebackMark } from './riseback-mark';
+
+/** Row 1 of every page: the mark, the page's own links (projected), the role and the person's menu. */
+@Component({
+  selector: 'app-bar',
+  imports: [MatMenu, MatMenuItem, MatMenuTrigger, RouterLink, RisebackMark],
+  changeDetection: ChangeDetectionStrategy.OnPush,
+  templateUrl: './app-bar.html',
+  styleUrl: './app-bar.scss',
+})
+export class AppBar {
+  private readonly session = inject(SessionStore);
+  private readonly router = inject(Router);
+
+  readonly role = input<Role>();
+
+  protected readonly person = this.session.person;
+  protected readonly initials = computed(() => initialsOf(this.person()?.name ?? ''));
+  protected readonly roleWord = computed(() => {
+    const role = this.role();
+    return role === undefined ? '' : role.charAt(0).toUpperCase() + role.slice(1);
+  });
+
+  protected readonly unitChoices = [
+    { value: 'us', word: 'US customary: psig, ft, lb/h' },
+    { value: 'si', word: 'SI: bar, m, kg/h' },
+  ] as const;
+  protected readonly themeChoices = [
+    { value: 'system', word: 'As the device' },
+    { value: 'light', word: 'Light' },
+    { value: 'dark', word: 'Dark' },
+  ] as const;
+
+  protected change(change: ProfileChange): void {
+    void this.session.changeProfile(change);
+  }
+
+  protected async signOut(): Promise<void> {
+    await this.session.signOut();
+    await this.router.navigateByUrl('/sign-in');
+  }
+}
+
+function initialsOf(name: string): string {
+  const parts = name.split(/\s+/).filter((part) => part !== '');
+  return [parts[0], parts.length > 1 ? parts.at(-1) : undefined]
+    .map((part) => part?.charAt(0).toUpperCase() ?? '')
+    .join('');
+}

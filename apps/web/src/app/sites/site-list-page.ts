@@ -1,0 +1,21 @@
+import { ChangeDetectionStrategy, Component, inject } from '@angular/core';
+import { toSignal } from '@angular/core/rxjs-interop';
+import { RouterLink } from '@angular/router';
+import type { Site } from '@riseback/contracts';
+import { type Load, LOADING, loads } from '../shared/load';
+import { ProblemBanner } from '../shared/problem-banner/problem-banner';
+import { AppBar } from '../shell/app-bar';
+import { SiteApi } from './site-api';
+
+@Component({
+  selector: 'app-site-list-page',
+  imports: [AppBar, ProblemBanner, RouterLink],
+  changeDetection: ChangeDetectionStrategy.OnPush,
+  templateUrl: './site-list-page.html',
+  styleUrl: '../shell/list-page.scss',
+})
+export class SiteListPage {
+  protected readonly load = toSignal<Load<Site[]>, Load<Site[]>>(loads(inject(SiteApi).list()), {
+    initialValue: LOADING,
+  });
+}
