@@ -1,0 +1,115 @@
+import { liquidAtTemperature, saturationPressurePa, saturationState, saturationTemperatureK } from '@riseback/steam';
+import { naming } from './element-failure';
+import type { OperatingNode } from './operating-case';
+import type { PipeGeometry } from './pipe-geometry';
+import type { ReturnTree } from './return-tree';
+
+/** What flows into a pipe, and how it cools on its way. */
+export interface PipeFlow {
+  readonly massFlowKgS: number;
+  readonly inletEnthalpyJKg: number;
+  readonly heatLossWM: number;
+  /** Enthalpy of liquid at ambient temperature: heat loss stops there, and a still pipe stands at it. */
+  readonly ambientEnthalpyJKg: number;
+}
+
+/** By node of the tree, vessel outlets included. */
+export interface FlowAndEnergy {
+  /** Everything that comes to the node, which is what leaves it but for a vessel's vapour. */
+  readonly massFlowKgS: Float64Array;
+  readonly enthalpyJKg: Float64Array;
+}
+
+/** Colder than this, water in a return would freeze; the ambient enthalpy is not taken below it. */
+const COLDEST_WATER_K = 274.15;
+
+export function ambientLiquidEnthalpyJKg(ambientTemperatureK: number): number {
+  return liquidEnthalpyJKg(Math.max(ambientTemperatureK, COLDEST_WATER_K));
+}
+
+/**
+ * Flows and enthalpies of a tree, from the traps down: h does not depend on pressure, so this needs no iteration.
+ *     m = Σ m_i,   h = Σ m_i h_i / m;   a vessel's liquid goes on at h_l(p_v), (1 − x) m of it
+ * Kinetic and potential energy are left out (docs/methods/network-walk.md shows their size).
+ * @throws ElementFailure where a trap, inlet or vessel stands outside the steam properties
+ */
+export function flowAndEnergy(
+  tree: ReturnTree,
+  nodes: readonly OperatingNode[],
+  pipes: readonly (PipeGeometry | undefined)[],
+  ambientEnthalpyJKg: number,
+): FlowAndEnergy {
+  const massFlowKgS = new Float64Array(tree.nodeCount);
+  const enthalpyJKg = new Float64Array(tree.nodeCount);
+  const enthalpyFlowW = new Float64Array(tree.nodeCount);
+  const add = (index: number, flowKgS: number, h: number): void => {
+    massFlowKgS[index] = (massFlowKgS[index] as number) + flowKgS;
+    enthalpyFlowW[index] = (enthalpyFlowW[index] as number) + flowKgS * h;
+  };
+  for (const index of tree.upstreamFirst) {
+    const source = sourceAt(index);
+    if (source) add(index, source.flowKgS, source.enthalpyJKg);
+    const flow = massFlowKgS[index] as number;
+    const h = flow > 0 ? (enthalpyFlowW[index] as number) / flow : ambientEnthalpyJKg;
+    enthalpyJKg[index] = h;
+    const pipe = pipes[tree.outPipe[index] as number];
+    if (pipe === undefined) continue;
+    const outlet = enthalpyAlong(
+      { massFlowKgS: flow, inletEnthalpyJKg: h, heatLossWM: pipe.heatLossWM, ambientEnthalpyJKg },
+      pipe.lengthM,
+    );
+    add(tree.drainsTo[index] as number, flow, outlet);
+  }
+  return { massFlowKgS, enthalpyJKg };
+
+  function sourceAt(index: number): { flowKgS: number; enthalpyJKg: number } | undefined {
+    const vessel = tree.vesselOfOutlet[index - nodes.length];
+    if (vessel !== undefined) return drainOfVessel(vessel);
+    const node = nodes[index];
+    if (node?.kind === 'trap') return { flowKgS: node.loadKgS, enthalpyJKg: trapEnthalpy(node, index) };
+    if (node?.kind !== 'pumpedInlet') return undefined;
+    const { temperatureK } = node.node;
+    return {
+      flowKgS: node.flowKgS,
+      enthalpyJKg: naming('node', node.node, index, () => liquidEnthalpyJKg(temperatureK)),
+    };
+  }
+
+  function trapEnthalpy({ node, inletPressurePa }: Extract<OperatingNode, { kind: 'trap' }>, index: number): number {
+    return naming('node', node, index, () => trapEnthalpyJKg(inletPressurePa, node.subcoolingK));
+  }
+
+  function drainOfVessel(vessel: number): { flowKgS: number; enthalpyJKg: number } | undefined {
+    const node = nodes[vessel];
+    if (node?.kind !== 'fixedPressure') return undefined;
+    const inflow = massFlowKgS[vessel] as number;
+    const h = enthalpyJKg[vessel] as number;
+    const saturation = naming('node', node.node, vessel, () => saturationState(node.pressurePa));
+    const { liquidEnthalpyJKg: liquid, vapourEnthalpyJKg: vapour } = saturation;
+    if (h <= liquid) return { flowKgS: inflow, enthalpyJKg: h };
+    return { flowKgS: inflow * Math.max(0, (vapour - h) / (vapour - liquid)), enthalpyJKg: liquid };
+  }
+}
+
+/**
+ * Enthalpy at a distance from a pipe's inlet: falls evenly with the heat lost, and stops at liquid of ambient temperature.
+ * What enters colder than that stays as it is.
+ */
+export function enthalpyAlong(flow: PipeFlow, distanceM: number): number {
+  const { massFlowKgS, inletEnthalpyJKg, heatLossWM, ambientEnthalpyJKg } = flow;
+  if (massFlowKgS === 0) return ambientEnthalpyJKg;
+  if (heatLossWM === 0) return inletEnthalpyJKg;
+  const cooled = inletEnthalpyJKg - (heatLossWM * distanceM) / massFlowKgS;
+  return Math.max(cooled, Math.min(inletEnthalpyJKg, ambientEnthalpyJKg));
+}
+
+/** Condensate comes to a trap as liquid at its inlet pressure, colder than boiling by its subcooling. */
+export function trapEnthalpyJKg(inletPressurePa: number, subcoolingK: number): number {
+  if (subcoolingK === 0) return saturationState(inletPressurePa).liquidEnthalpyJKg;
+  return liquidAtTemperature(inletPressurePa, saturationTemperatureK(inletPressurePa) - subcoolingK).enthalpyJKg;
+}
+
+/** h_l(T). What pressure above saturation adds, some 0.1 kJ/kg per bar, is left out. */
+function liquidEnthalpyJKg(temperatureK: number): number {
+  return saturationState(saturationPressurePa(temperatureK)).liquidEnthalpyJKg;
+}

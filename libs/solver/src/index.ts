@@ -1,0 +1,20 @@
+export { CHECK_LIMITS, limitsInForce, type CheckLimit, type LimitsInForce } from './check-limits';
+export { plainText } from './finding-text';
+export { modulatedInletPressurePa } from './modulating-inlet';
+export type { ProblemError, Refusal } from './refusal';
+export { isRefusal, solveNetwork, type SolveOptions } from './solve-network';
+export type {
+  FindingQuantity,
+  FindingText,
+  FindingWords,
+  NodeResult,
+  PipeResult,
+  SolveProblem,
+  SolveResult,
+  SolveWarning,
+  TrapCheck,
+  TrapResult,
+  UnmadeCheck,
+  Verdict,
+} from './solve-result';
+export { trapCapacityKgS } from './trap-capacity';

@@ -1,0 +1,71 @@
+import { fittingLossCoefficient, pipeBore, type FittingName } from '@riseback/hydraulics';
+import type { FittingKind, NetworkFile, PipeRun, RoutePiece } from '@riseback/network';
+
+/** What the march needs of a pipe, with its size and fittings looked up. */
+export interface PipeGeometry {
+  readonly lengthM: number;
+  readonly insideDiameterM: number;
+  readonly roughnessM: number;
+  /** K of all fittings and the given K, spread evenly over the length. */
+  readonly lossCoefficientPerM: number;
+  readonly heatLossWM: number;
+  /** From `from` to `to`; rises counted that way. */
+  readonly pieces: readonly RoutePiece[];
+}
+
+/** Each kind of fitting in a network file has its figures in libs/hydraulics; one that had none would not compile. */
+const FIGURES_OF: Readonly<Record<FittingKind, FittingName>> & Readonly<Record<FittingName, FittingKind>> = {
+  elbow90: 'elbow90',
+  elbow90LongRadius: 'elbow90LongRadius',
+  elbow45: 'elbow45',
+  mitre90: 'mitre90',
+  returnBend180: 'returnBend180',
+  teeRun: 'teeRun',
+  teeBranch: 'teeBranch',
+  gateValve: 'gateValve',
+  globeValve: 'globeValve',
+  angleValve: 'angleValve',
+  ballValve: 'ballValve',
+  plugValve: 'plugValve',
+  butterflyValve: 'butterflyValve',
+  swingCheckValve: 'swingCheckValve',
+  liftCheckValve: 'liftCheckValve',
+  entrance: 'entrance',
+  exit: 'exit',
+};
+
+/** The bore of a pipe; undefined for a size that no standard in the catalogue makes. */
+export function insideDiameterM(pipe: PipeRun): number | undefined {
+  return pipe.size === undefined ? pipe.insideDiameterM : pipeBore(pipe.size)?.insideDiameterM;
+}
+
+/** By pipe in the file's order; undefined where the size is unknown. */
+export function pipeGeometries(file: NetworkFile): (PipeGeometry | undefined)[] {
+  const elevationM = new Map(file.nodes.map((node) => [node.id, node.elevationM]));
+  return file.pipes.map((pipe) => {
+    const riseM = (elevationM.get(pipe.to) ?? 0) - (elevationM.get(pipe.from) ?? 0);
+    return pipeGeometry(pipe, riseM);
+  });
+}
+
+export function pipeGeometry(pipe: PipeRun, riseM: number): PipeGeometry | undefined {
+  const bore = insideDiameterM(pipe);
+  if (bore === undefined) return undefined;
+  let lossCoefficient = pipe.lossCoefficient;
+  for (const { kind, count } of pipe.fittings)
+    lossCoefficient += count * fittingLossCoefficient(FIGURES_OF[kind], bore);
+  return {
+    lengthM: pipe.lengthM,
+    insideDiameterM: bore,
+    roughnessM: pipe.roughnessM,
+    lossCoefficientPerM: lossCoefficient / pipe.lengthM,
+    heatLossWM: pipe.heatLossWM,
+    pieces: pipe.route ?? [{ lengthM: pipe.lengthM, riseM }],
+  };
+}
+
+/** The pieces as the walk meets them, from the downstream end up; rises counted in the direction of flow. */
+export function piecesAgainstFlow(pieces: readonly RoutePiece[], withArrow: boolean): readonly RoutePiece[] {
+  if (!withArrow) return pieces.map(({ lengthM, riseM }) => ({ lengthM, riseM: -riseM }));
+  return pieces.length === 1 ? pieces : pieces.toReversed();
+}

@@ -1,0 +1,90 @@
+import type { FileCase, NetworkFile } from '@riseback/network';
+import { assembleResult } from './assemble-result';
+import { limitsInForce } from './check-limits';
+import { ElementFailure, naming } from './element-failure';
+import { ambientLiquidEnthalpyJKg, flowAndEnergy } from './flow-and-energy';
+import { findCase, operatingNode, type OperatingNode } from './operating-case';
+import { pipeGeometries } from './pipe-geometry';
+import { MARCH_TOLERANCE_PA } from './pipe-march';
+import { pressureWalk } from './pressure-walk';
+import { noSolution, notAvailable, notAvailableYet, unknownCase, unsolvable, type Refusal } from './refusal';
+import { returnTree } from './return-tree';
+import type { SolveResult } from './solve-result';
+import { loopsIn, solvability } from './solvability';
+
+export interface SolveOptions {
+  /** '' is the plain network; left out, the first case, or the plain network if the file has none. */
+  readonly caseId?: string;
+  /** Leave out, and list, what cannot reach a receiver, instead of refusing the whole. */
+  readonly partial: boolean;
+  /** Error allowed in each step of the march, Pa. */
+  readonly marchTolerancePa?: number;
+}
+
+/**
+ * Back pressure at every trap of a network of trees, in one operating case.
+ * @returns a refusal for all that can be seen in the file without computing; else a result, which names a problem and has
+ *   `converged: false` where computing found that there is no solution
+ * Method: docs/methods/network-walk.md.
+ */
+export function solveNetwork(file: NetworkFile, options: SolveOptions): SolveResult | Refusal {
+  const operatingCase = findCase(file, options.caseId);
+  if (operatingCase === undefined) return unknownCase(file, options.caseId ?? '');
+  const unavailable = notAvailableYet(file, operatingCase);
+  if (unavailable.length > 0) return notAvailable(unavailable);
+
+  const geometries = pipeGeometries(file);
+  const { errors, unusablePipes } = solvability(file, geometries);
+  if (!options.partial && errors.length > 0) return unsolvable(errors);
+  const tree = returnTree(file, (pipe) => !unusablePipes.has(pipe));
+  const loops = loopsIn(tree);
+  if (loops.length > 0) return notAvailable(loops);
+
+  try {
+    const nodes = operatingNodes(file, operatingCase);
+    const ambientEnthalpyJKg = ambientLiquidEnthalpyJKg(file.site.ambientTemperatureK);
+    const flows = { ...flowAndEnergy(tree, nodes, geometries, ambientEnthalpyJKg), ambientEnthalpyJKg };
+    const march = { method: file.method, tolerancePa: options.marchTolerancePa ?? MARCH_TOLERANCE_PA };
+    const walk = pressureWalk(file, tree, nodes, geometries, flows, march);
+    return assembleResult({
+      file,
+      caseId: operatingCase.id,
+      tree,
+      nodes,
+      geometries,
+      flows,
+      walk,
+      limits: limitsInForce(file.limits),
+    });
+  } catch (error) {
+    if (!(error instanceof ElementFailure)) throw error;
+    return unsolved(operatingCase, error);
+  }
+}
+
+/** True where nothing was computed. */
+export function isRefusal(outcome: SolveResult | Refusal): outcome is Refusal {
+  return 'refused' in outcome;
+}
+
+function operatingNodes(file: NetworkFile, operatingCase: FileCase): OperatingNode[] {
+  const overrides = new Map(operatingCase.overrides.map((override) => [override.node, override]));
+  return file.nodes.map((node, i) =>
+    naming('node', node, i, () =>
+      operatingNode(node, file.site.atmosphericPressurePa, operatingCase, overrides.get(node.id)),
+    ),
+  );
+}
+
+function unsolved(operatingCase: FileCase, { element, pointer, message }: ElementFailure): SolveResult {
+  return {
+    case: operatingCase.id,
+    converged: false,
+    iterations: 1,
+    nodes: [],
+    pipes: [],
+    traps: [],
+    warnings: [],
+    problem: noSolution(element, pointer, message),
+  };
+}

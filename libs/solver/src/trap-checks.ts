@@ -1,0 +1,163 @@
+import type { Trap, TrapModel } from '@riseback/network';
+import { SATURATION_LINE_RANGE, saturationTemperatureK } from '@riseback/steam';
+import type { LimitsInForce } from './check-limits';
+import { amount, findingWords, say } from './finding-text';
+import type { TrapCheck, UnmadeCheck, Verdict } from './solve-result';
+import { trapCapacityKgS } from './trap-capacity';
+
+/** A trap in one case, with the return it was found to stand against. */
+export interface TrapUnderCheck {
+  readonly trap: Trap;
+  readonly model: TrapModel | undefined;
+  readonly inletPressurePa: number;
+  readonly backPressurePa: number;
+  readonly loadKgS: number;
+  readonly atmosphericPressurePa: number;
+  readonly limits: LimitsInForce;
+}
+
+type Check = (at: TrapUnderCheck) => TrapCheck | UnmadeCheck;
+
+/** Every check at a trap, in the order in which they are told. A new check is a function here and a part of docs/methods/checks.md. */
+export const TRAP_CHECKS: readonly Check[] = [differential, capacity, backPressureFraction, orificeRating, bodyRating];
+
+/** Makes each check that the trap's data allow, and says why the others are not made. */
+export function checkTrap(at: TrapUnderCheck): { checks: TrapCheck[]; notChecked: UnmadeCheck[] } {
+  const checks: TrapCheck[] = [];
+  const notChecked: UnmadeCheck[] = [];
+  for (const check of TRAP_CHECKS) {
+    const outcome = check(at);
+    if ('verdict' in outcome) checks.push(outcome);
+    else notChecked.push(outcome);
+  }
+  return { checks, notChecked };
+}
+
+/** What a trap shut off in this case says in place of its checks. */
+export const ISOLATED_UNCHECKED: readonly UnmadeCheck[] = [
+  'differential',
+  'capacity',
+  'backPressureFraction',
+  'orificeRating',
+  'bodyRating',
+].map((code) => ({ code, reason: 'The trap is isolated in this case.' }));
+
+function differential({ inletPressurePa, backPressurePa }: TrapUnderCheck): TrapCheck {
+  const value = inletPressurePa - backPressurePa;
+  const result = { code: 'differential', value, limit: 0 };
+  if (value > 0) {
+    const text = say`${amount('pressureDifference', value)} across the trap drives its condensate out.`;
+    return { ...result, verdict: 'pass', ...findingWords(text) };
+  }
+  const text = say`The return stands at ${amount('pressure', backPressurePa)} against ${amount('pressure', inletPressurePa)} at the inlet: nothing drives the condensate out, and it backs up into the steam space, where it costs heat and can hammer.`;
+  const remedy = say`Lower what stands behind the trap (less lift, a larger bore on its walk, another return), or lift its condensate with a pump.`;
+  return { ...result, verdict: 'fail', ...findingWords(text, remedy) };
+}
+
+function capacity({ trap, model, inletPressurePa, backPressurePa, loadKgS }: TrapUnderCheck): TrapCheck | UnmadeCheck {
+  const code = 'capacity';
+  const points = model?.capacity;
+  if (model === undefined) return { code, reason: 'The trap has no model, so its capacity is not known.' };
+  if (points === undefined || points.length === 0) return { code, reason: 'The trap’s model gives no capacities.' };
+  const differentialPa = inletPressurePa - backPressurePa;
+  if (differentialPa <= 0) return { code, reason: 'There is no differential at which to judge a capacity.' };
+  const value = trapCapacityKgS(points, differentialPa);
+  const limit = trap.sizingFactor * loadKgS;
+  const result = { code, value, limit };
+  if (value >= limit) {
+    const text = say`The model passes ${amount('massFlow', value)} at this differential; ${amount('massFlow', limit)} is needed.`;
+    return { ...result, verdict: 'pass', ...findingWords(text) };
+  }
+  const text = say`At ${amount('pressureDifference', differentialPa)} across it the model passes ${amount('massFlow', value)}, but ${amount('factor', trap.sizingFactor)} times its load needs ${amount('massFlow', limit)}: at start-up and at peaks condensate backs up.`;
+  const remedy = say`Choose a model or seat that passes ${amount('massFlow', limit)} at this differential, or lower what stands behind the trap.`;
+  return { ...result, verdict: 'fail', ...findingWords(text, remedy) };
+}
+
+function backPressureFraction(at: TrapUnderCheck): TrapCheck | UnmadeCheck {
+  const code = 'backPressureFraction';
+  const { trap, model, atmosphericPressurePa, limits } = at;
+  const ofType = trap.trapType === 'thermodynamic' ? limits.backPressureFraction : undefined;
+  const failAbove = model?.maximumBackPressureFraction ?? ofType?.failFraction;
+  if (failAbove === undefined) {
+    const reason =
+      trap.trapType === undefined
+        ? 'The trap’s type is not given.'
+        : 'No limit is known for this type of trap, and its model gives none.';
+    return { code, reason };
+  }
+  const inletGaugePa = at.inletPressurePa - atmosphericPressurePa;
+  const backGaugePa = at.backPressurePa - atmosphericPressurePa;
+  const remedy = say`Lower what stands behind the trap, or use a type that works against it (a float or inverted bucket trap).`;
+  if (inletGaugePa <= 0) {
+    const text = say`The inlet stands at ${amount('pressure', at.inletPressurePa)}, not above the atmosphere: no share of it can be left for the return.`;
+    return { code, verdict: 'fail', limit: failAbove, ...findingWords(text, remedy) };
+  }
+  const value = backGaugePa / inletGaugePa;
+  const watchAbove = Math.min(ofType?.watchFraction ?? failAbove, failAbove);
+  const leastInletPa = ofType?.minimumInletGaugePa ?? 0;
+  if (value > failAbove) {
+    const text = say`${amount('fraction', value)} of the inlet’s gauge pressure stands behind the trap; above ${amount('fraction', failAbove)} it no longer closes and blows steam into the return.`;
+    return { code, verdict: 'fail', value, limit: failAbove, ...findingWords(text, remedy) };
+  }
+  if (value > watchAbove) {
+    const text = say`${amount('fraction', value)} of the inlet’s gauge pressure stands behind the trap; above ${amount('fraction', watchAbove)} a trap of this type closes late and wears.`;
+    return { code, verdict: 'watch', value, limit: watchAbove, ...findingWords(text, remedy) };
+  }
+  if (inletGaugePa < leastInletPa) {
+    const text = say`The inlet has ${amount('pressureDifference', inletGaugePa)} above the atmosphere; below ${amount('pressureDifference', leastInletPa)} a trap of this type may not close.`;
+    return {
+      code,
+      verdict: 'watch',
+      value,
+      limit: watchAbove,
+      ...findingWords(text, say`Use a float or inverted bucket trap at so low a pressure.`),
+    };
+  }
+  const text = say`${amount('fraction', value)} of the inlet’s gauge pressure stands behind the trap.`;
+  return { code, verdict: 'pass', value, limit: watchAbove, ...findingWords(text) };
+}
+
+function orificeRating({ trap, model, atmosphericPressurePa }: TrapUnderCheck): TrapCheck | UnmadeCheck {
+  const code = 'orificeRating';
+  const limit = model?.maximumDifferentialPa;
+  if (limit === undefined)
+    return { code, reason: 'No maximum differential is known: the trap has no model, or its model gives none.' };
+  if (trap.maximumPressurePa === undefined)
+    return { code, reason: 'The trap’s maximumPressurePa, the safety valve’s setting, is not given.' };
+  const value = trap.maximumPressurePa - atmosphericPressurePa;
+  const result = { code, value, limit };
+  if (value <= limit) {
+    const text = say`The seat opens against ${amount('pressureDifference', limit)}; the safety valve lets at most ${amount('pressureDifference', value)} come to it.`;
+    return { ...result, verdict: 'pass', ...findingWords(text) };
+  }
+  const text = say`Up to the safety valve’s setting ${amount('pressureDifference', value)} can stand across the seat, which is rated for ${amount('pressureDifference', limit)}: above that the trap stays shut and floods.`;
+  const remedy = say`Choose a smaller seat or a model rated for ${amount('pressureDifference', value)}.`;
+  return { ...result, verdict: 'fail', ...findingWords(text, remedy) };
+}
+
+function bodyRating({ trap, model }: TrapUnderCheck): TrapCheck | UnmadeCheck {
+  const code = 'bodyRating';
+  const { bodyPressurePa, bodyTemperatureK } = model ?? {};
+  if (bodyPressurePa === undefined && bodyTemperatureK === undefined) {
+    return { code, reason: 'No body rating is known: the trap has no model, or its model gives none.' };
+  }
+  const pressurePa = trap.maximumPressurePa;
+  if (pressurePa === undefined)
+    return { code, reason: 'The trap’s maximumPressurePa, the safety valve’s setting, is not given.' };
+  const remedy = say`Fit a body rated for the safety valve’s setting. Until then keep the trap shut off and marked: a body above its rating can burst.`;
+  if (bodyPressurePa !== undefined && pressurePa > bodyPressurePa) {
+    const text = say`Up to the safety valve’s setting ${amount('pressure', pressurePa)} can stand in the body, which is rated for ${amount('pressure', bodyPressurePa)}.`;
+    return { code, verdict: 'fail', value: pressurePa, limit: bodyPressurePa, ...findingWords(text, remedy) };
+  }
+  // a setting above the critical pressure is judged by pressure alone: nothing boils there
+  const boils = pressurePa <= SATURATION_LINE_RANGE.pressurePa[1] && pressurePa >= SATURATION_LINE_RANGE.pressurePa[0];
+  const temperatureK = boils ? saturationTemperatureK(pressurePa) : undefined;
+  if (temperatureK !== undefined && bodyTemperatureK !== undefined && temperatureK > bodyTemperatureK) {
+    const text = say`Steam at the safety valve’s setting is ${amount('temperature', temperatureK)} hot; the body is rated for ${amount('temperature', bodyTemperatureK)}.`;
+    return { code, verdict: 'fail', value: temperatureK, limit: bodyTemperatureK, ...findingWords(text, remedy) };
+  }
+  const verdict: Verdict = 'pass';
+  const text = say`The body is rated for the safety valve’s setting${bodyPressurePa === undefined ? ' by temperature; its pressure rating is not known' : ''}${bodyTemperatureK === undefined ? ' by pressure; its temperature rating is not known' : ''}.`;
+  if (bodyPressurePa === undefined) return { code, verdict, ...findingWords(text) };
+  return { code, verdict, value: pressurePa, limit: bodyPressurePa, ...findingWords(text) };
+}
