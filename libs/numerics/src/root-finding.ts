@@ -24,7 +24,7 @@ export function findRootBracketed(
   f: (x: number) => number,
   low: number,
   high: number,
-  { xTolerance = 1e-12, fTolerance = 0, maximumIterations = 100, where = 'findRootBracketed' }: RootOptions = {},
+  { xTolerance = 1e-12, fTolerance = 0, maximumIterations = 200, where = 'findRootBracketed' }: RootOptions = {},
 ): number {
   let a = low;
   let fa = f(a);

@@ -6,7 +6,7 @@ import { saturationTemperatureK } from './saturation-line';
 import { SATURATION_RANGE_PA } from './saturation-state';
 import { saturationState } from './saturation-table';
 import { requireWithin, SteamRangeError } from './steam-range-error';
-import { viscosityPaS } from './viscosity';
+import { viscosityUnchecked } from './viscosity';
 
 /** One phase at a pressure: what friction and static head need of it. */
 export interface SinglePhaseState {
@@ -118,5 +118,5 @@ function solveTemperature(
 }
 
 function singlePhase(temperatureK: number, { densityKgM3, enthalpyJKg }: PhaseProperties): SinglePhaseState {
-  return { temperatureK, densityKgM3, enthalpyJKg, viscosityPaS: viscosityPaS(temperatureK, densityKgM3) };
+  return { temperatureK, densityKgM3, enthalpyJKg, viscosityPaS: viscosityUnchecked(temperatureK, densityKgM3) };
 }

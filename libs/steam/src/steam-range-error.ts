@@ -26,8 +26,15 @@ export class SteamRangeError extends Error {
     subject: string,
   ) {
     const unit = UNITS[quantity];
-    super(`The ${quantity} of ${subject} is ${value} ${unit}; it must lie between ${low} and ${high} ${unit}.`);
+    super(
+      `The ${quantity} of ${subject} is ${value} ${unit}; it must lie between ${sixDigits(low)} and ${sixDigits(high)} ${unit}.`,
+    );
   }
+}
+
+/** Limits that depend on the pressure come with all their bits; nobody reads more than six digits of them. */
+function sixDigits(limit: number): number {
+  return Number(limit.toPrecision(6));
 }
 
 /** Refuses NaN too: every comparison with it is false. */

@@ -17,6 +17,11 @@ export const VISCOSITY_RANGE = { temperatureK: [273.15, 1173.15], densityKgM3: [
 export function viscosityPaS(temperatureK: number, densityKgM3: number): number {
   requireWithin('temperature', temperatureK, VISCOSITY_RANGE.temperatureK, 'water or steam');
   requireWithin('density', densityKgM3, VISCOSITY_RANGE.densityKgM3, 'water or steam');
+  return viscosityUnchecked(temperatureK, densityKgM3);
+}
+
+/** For states this library has found itself, whose temperature rounding may leave a hair below 0 °C. */
+export function viscosityUnchecked(temperatureK: number, densityKgM3: number): number {
   const inverse = 647.096 / temperatureK;
   const density = densityKgM3 / 322;
   const dilute =
