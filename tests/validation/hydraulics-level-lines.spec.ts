@@ -6,12 +6,12 @@ import { readFigures, type FigureRow } from '../fixtures/hydraulics/read-figures
 
 const BAR_PA = 1e5;
 
-// Independent integrations of the same model, the vapour alone in the bore, along level lines; see the fixture's head. The
-// rows print pressures to 1e-9 bar, so 0.1 % of the rise is the agreement asked of the model itself.
+// Independent integrations of the same model, the vapour alone in the bore, along level lines; see the fixture's head. Their
+// own tolerance is about 2e-4 Pa, 1e-5 of the smallest rise; properties interpolated here add some 1e-6. Hence 1e-4 of the rise.
 describe('vapour part of the flash method along level lines', () => {
   it.each(readFigures('level-lines.csv').map((row) => [row('id'), row] as const))('line %s', (_id, row) => {
     const expectedRisePa = (Number(row('upstreamBar')) - Number(row('receiverBar'))) * BAR_PA;
-    expect(Math.abs(upstreamRisePa(row) - expectedRisePa)).toBeLessThan(0.001 * expectedRisePa);
+    expect(Math.abs(upstreamRisePa(row) - expectedRisePa)).toBeLessThan(1e-4 * expectedRisePa);
   });
 });
 
