@@ -1,0 +1,92 @@
+import cookieParser from 'cookie-parser';
+import express, { type Express } from 'express';
+import { accountRoutes } from './people/account-routes';
+import { OwnAccountService } from './people/own-account-service';
+import { PeopleRepository } from './people/people-repository';
+import { SignInService } from './people/sign-in-service';
+import { AccessRules } from './platform/auth/access';
+import { MembershipRepository } from './platform/auth/membership-repository';
+import { Passwords } from './platform/auth/passwords';
+import { SessionGate } from './platform/auth/session-gate';
+import { SessionRepository } from './platform/auth/session-repository';
+import { SessionTokens } from './platform/auth/session-token';
+import { Sessions } from './platform/auth/sessions';
+import { SignInGuard } from './platform/auth/sign-in-guard';
+import type { Config } from './platform/config';
+import type { Database } from './platform/db/database';
+import { healthRoutes } from './platform/health/health-routes';
+import { ReadinessCheck } from './platform/health/readiness';
+import { problemHandler } from './platform/http/problem-handler';
+import { apiRateLimit } from './platform/http/rate-limit';
+import { requestLog } from './platform/http/request-log';
+import { securityHeaders } from './platform/http/security-headers';
+import { webApplication } from './platform/http/web-application';
+import type { Log } from './platform/log';
+import { notFound } from './platform/problem';
+import { openApiRoute } from './platform/routes/openapi';
+import { registerRoutes } from './platform/routes/register-routes';
+import type { Route } from './platform/routes/route-table';
+import { SiteRepository } from './sites/site-repository';
+import { siteRoutes } from './sites/site-routes';
+import { SiteService } from './sites/site-service';
+
+/** What the application is made of; a test hands in a database in memory and a clock of its own. */
+export interface AppParts {
+  readonly db: Database;
+  readonly config: Config;
+  readonly log: Log;
+  readonly newId: () => string;
+  readonly now: () => Date;
+  readonly workerIsAlive: () => boolean;
+  /** The browser build; undefined while developing, when the pages come from their own server. */
+  readonly webFolder: string | undefined;
+}
+
+export interface App {
+  readonly handler: Express;
+  /** Everything that is registered, each with its access rule. */
+  readonly routes: readonly Route[];
+}
+
+export function buildApp(parts: AppParts): App {
+  const { db, config, log, newId, now } = parts;
+
+  const tokens = new SessionTokens(config.sessionSecret);
+  const sessions = new Sessions(new SessionRepository(db), tokens, newId, now);
+  const gate = new SessionGate(sessions, tokens, config.origin, now);
+  const people = new PeopleRepository(db);
+  const signIn = new SignInService(people, new Passwords(), new SignInGuard(now), sessions);
+  const account = new OwnAccountService(people, sessions);
+  const sites = new SiteService(new SiteRepository(db));
+
+  const routes: readonly Route[] = [
+    ...healthRoutes(new ReadinessCheck(db, parts.workerIsAlive)),
+    openApiRoute(() => routes),
+    ...accountRoutes(signIn, account, gate),
+    ...siteRoutes(sites),
+  ];
+
+  const app = express();
+  app.disable('x-powered-by');
+  app.set('etag', false);
+  app.set('trust proxy', config.trustProxy);
+  app.set('query parser', 'simple');
+  app.use(requestLog(log));
+  app.use(securityHeaders(config.origin?.protocol === 'https:'));
+  app.use(cookieParser());
+  app.use('/api', (_req, res, next) => {
+    res.set('Cache-Control', 'no-store');
+    next();
+  });
+  app.use('/api', apiRateLimit(config.requestsPerMinute, gate));
+  app.use(registerRoutes(routes, gate, new AccessRules(new MembershipRepository(db))));
+  app.use('/api', () => {
+    throw notFound('There is nothing at this address of the API; /api/openapi.json lists what there is.');
+  });
+  if (parts.webFolder !== undefined) app.use(webApplication(parts.webFolder));
+  app.use(() => {
+    throw notFound('There is nothing at this address.');
+  });
+  app.use(problemHandler(log));
+  return { handler: app, routes };
+}

@@ -1,0 +1,65 @@
+import type { OwnSession, Person, ProfileChange } from '@riseback/contracts';
+import type { PersonAccess } from '../platform/auth/access';
+import type { Sessions } from '../platform/auth/sessions';
+import { badRequest, notFound } from '../platform/problem';
+import type { PeopleRepository, PersonRow } from './people-repository';
+
+/** What people see and change of their own. */
+export class OwnAccountService {
+  constructor(
+    private readonly people: PeopleRepository,
+    private readonly sessions: Sessions,
+  ) {}
+
+  person(access: PersonAccess): Person {
+    const row = this.people.find(access.person.id);
+    if (row === undefined) throw notFound('This person is not known any more.');
+    return personOf(row);
+  }
+
+  changeProfile(access: PersonAccess, change: ProfileChange): Person {
+    const { units, theme, timeZone } = change;
+    if (timeZone !== undefined && !isTimeZone(timeZone)) {
+      throw badRequest('This time zone is not known.', [
+        { pointer: '/timeZone', detail: 'give a name of the IANA time zone database, such as Europe/Lisbon' },
+      ]);
+    }
+    const columns = {
+      ...(units === undefined ? {} : { units }),
+      ...(theme === undefined ? {} : { theme }),
+      ...(timeZone === undefined ? {} : { timeZone }),
+    };
+    const row = this.people.changeProfile(access.person.id, columns);
+    if (row === undefined) throw notFound('This person is not known any more.');
+    return personOf(row);
+  }
+
+  ownSessions(access: PersonAccess): OwnSession[] {
+    return this.sessions.listOf(access.person.id).map(({ id, agent, createdAt, seenAt }) => {
+      return { id, agent, createdAt, seenAt, current: id === access.person.sessionId };
+    });
+  }
+
+  signOut(access: PersonAccess): void {
+    this.sessions.end(access.person.sessionId, access.person, 'signedOut');
+  }
+
+  endOwnSession(access: PersonAccess, sessionId: string): void {
+    if (!this.sessions.end(sessionId, access.person, 'endedByOwner')) {
+      throw notFound('You have no such session; it may have ended already.');
+    }
+  }
+}
+
+export function personOf({ id, name, email, units, theme, timeZone }: PersonRow): Person {
+  return { id, name, email, units, theme, timeZone };
+}
+
+function isTimeZone(name: string): boolean {
+  try {
+    new Intl.DateTimeFormat('en', { timeZone: name });
+    return true;
+  } catch {
+    return false;
+  }
+}

@@ -1,0 +1,75 @@
+import type { Role } from '@riseback/contracts';
+import { and, eq, sql } from 'drizzle-orm';
+import { endAllSessions } from '../platform/auth/session-repository';
+import { appendAudit, type AuditEntry } from '../platform/db/audit';
+import type { Database } from '../platform/db/database';
+import { memberships, people } from '../platform/db/schema';
+
+export type PersonRow = typeof people.$inferSelect;
+type ProfileColumns = Partial<Pick<PersonRow, 'units' | 'theme' | 'timeZone'>>;
+
+export class PeopleRepository {
+  constructor(private readonly db: Database) {}
+
+  find(id: string): PersonRow | undefined {
+    return this.db.select().from(people).where(eq(people.id, id)).get();
+  }
+
+  findByEmail(email: string): PersonRow | undefined {
+    return this.db
+      .select()
+      .from(people)
+      .where(sql`lower(${people.email}) = lower(${email})`)
+      .get();
+  }
+
+  hasInstallationAdministrator(): boolean {
+    return this.db.select().from(people).where(eq(people.administersInstallation, true)).get() !== undefined;
+  }
+
+  insert(row: PersonRow, audit: AuditEntry): void {
+    this.db.transaction((tx) => {
+      tx.insert(people).values(row).run();
+      appendAudit(tx, audit);
+    });
+  }
+
+  changeProfile(id: string, change: ProfileColumns): PersonRow | undefined {
+    if (Object.keys(change).length === 0) return this.find(id);
+    return this.db.update(people).set(change).where(eq(people.id, id)).returning().get();
+  }
+
+  /** A new password ends every session of the person, the one that asked for it too. */
+  changePassword(id: string, passwordHash: string, audit: AuditEntry): void {
+    const at = audit.at.toISOString();
+    this.db.transaction((tx) => {
+      tx.update(people).set({ passwordHash, passwordChangedAt: at }).where(eq(people.id, id)).run();
+      endAllSessions(tx, id, at, 'passwordChanged');
+      appendAudit(tx, audit);
+    });
+  }
+
+  disable(id: string, audit: AuditEntry): void {
+    const at = audit.at.toISOString();
+    this.db.transaction((tx) => {
+      tx.update(people).set({ disabledAt: at }).where(eq(people.id, id)).run();
+      endAllSessions(tx, id, at, 'disabled');
+      appendAudit(tx, audit);
+    });
+  }
+
+  /** Gives a role at a site, or changes it; a changed one ends the person's sessions. */
+  giveRole(personId: string, siteId: string, role: Role, grantedBy: string | null, audit: AuditEntry): void {
+    const grantedAt = audit.at.toISOString();
+    this.db.transaction((tx) => {
+      const theirs = and(eq(memberships.personId, personId), eq(memberships.siteId, siteId));
+      const before = tx.select().from(memberships).where(theirs).get();
+      tx.insert(memberships)
+        .values({ personId, siteId, role, grantedBy, grantedAt })
+        .onConflictDoUpdate({ target: [memberships.personId, memberships.siteId], set: { role, grantedBy, grantedAt } })
+        .run();
+      if (before !== undefined && before.role !== role) endAllSessions(tx, personId, grantedAt, 'roleChanged');
+      appendAudit(tx, audit);
+    });
+  }
+}

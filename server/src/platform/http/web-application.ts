@@ -1,0 +1,43 @@
+import { readFileSync } from 'node:fs';
+import { extname, join } from 'node:path';
+import express, { Router, type Request } from 'express';
+import { notFound } from '../problem';
+import { nonceOf } from './security-headers';
+
+/** What index.html holds where the nonce belongs. */
+const NONCE_PLACEHOLDER = 'CSP_NONCE';
+/** Names such as main-ABCDEFGH.js change with their content. */
+const HASHED_NAME = /-[A-Z0-9]{8}\.\w+$/;
+
+/**
+ * The built pages. Every address that a person may open gets index.html, with this answer's nonce in it; a missing file
+ * gets 404, since a page in the place of a script only hides what is wrong.
+ * @param folder the browser build, with index.html in it
+ */
+export function webApplication(folder: string): Router {
+  const index = readFileSync(join(folder, 'index.html'), 'utf8');
+  const router = Router();
+  router.use(
+    express.static(folder, {
+      index: false,
+      redirect: false,
+      setHeaders: (res, path) => {
+        res.setHeader('Cache-Control', HASHED_NAME.test(path) ? 'public, max-age=31536000, immutable' : 'no-cache');
+      },
+    }),
+  );
+  router.use((req, res) => {
+    if (!isNavigation(req)) throw notFound('There is no such file.');
+    res
+      .set('Cache-Control', 'no-store')
+      .type('html')
+      .send(index.replaceAll(NONCE_PLACEHOLDER, nonceOf(res)));
+  });
+  return router;
+}
+
+function isNavigation(req: Request): boolean {
+  const reads = req.method === 'GET' || req.method === 'HEAD';
+  // No page's path has a dot in it (an element's tag may, but that stands in the query): what has one is a file.
+  return reads && req.accepts(['json', 'html']) === 'html' && extname(req.path) === '';
+}
