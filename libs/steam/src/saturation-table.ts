@@ -62,7 +62,7 @@ export interface SaturationSlopes {
  * Derivatives of saturationState along the boiling line: those of its own polynomials, so a march and its derivative agree.
  * @param pressurePa p [Pa absolute]
  * @throws SteamRangeError outside SATURATION_RANGE_PA, and for NaN
- * @remarks Within 1e-4 of the slopes of the direct equations (swept in the spec).
+ * @remarks Off by less than 1e-4 of what the property typically changes per unit of ln p (swept in the spec).
  */
 export function saturationSlopes(pressurePa: number): SaturationSlopes {
   requireWithin('pressure', pressurePa, SATURATION_RANGE_PA, 'boiling water');
