@@ -14,3 +14,4 @@ export * from './solver-input';
 export * from './findings';
 export * from './solvable-part';
 export type { FindingCode, TopologyFinding } from './topology';
+export * from './layout';
