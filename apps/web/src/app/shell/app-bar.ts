@@ -28,7 +28,7 @@ export class AppBar {
 
   protected readonly unitChoices = [
     { value: 'us', word: 'US customary: psig, ft, lb/h' },
-    { value: 'si', word: 'SI: bar, m, kg/h' },
+    { value: 'si', word: 'SI: kPa, m, kg/h' },
   ] as const;
   protected readonly themeChoices = [
     { value: 'system', word: 'As the device' },
