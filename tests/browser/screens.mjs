@@ -1,0 +1,144 @@
+// npm run screens: a picture of every screen in light, dark and phone width, in the folder screens/ (ignored by git).
+//   --only WORD   just the screens whose name contains it
+import { spawn } from 'node:child_process';
+import { mkdirSync, mkdtempSync, rmSync } from 'node:fs';
+import { createServer } from 'node:net';
+import { tmpdir } from 'node:os';
+import { join } from 'node:path';
+import { parseArgs } from 'node:util';
+import { demandNode, ensureInstalled, root } from '../../server/install.mjs';
+
+const { values: options } = parseArgs({ options: { only: { type: 'string' } } });
+demandNode();
+await ensureInstalled((line) => process.stdout.write(`${line}\n`));
+const { chromium } = await import('@playwright/test');
+
+const folder = join(root, 'screens');
+const port = await freePort();
+const address = `http://localhost:${port}`;
+const database = mkdtempSync(join(tmpdir(), 'riseback-screens-'));
+const server = spawn(process.execPath, ['server/start.mjs'], {
+  cwd: root,
+  env: { ...process.env, PORT: String(port), RISEBACK_DB: join(database, 'riseback.db') },
+  stdio: 'inherit',
+});
+
+const looks = [
+  { name: 'light', viewport: { width: 1440, height: 900 }, colorScheme: 'light' },
+  { name: 'dark', viewport: { width: 1440, height: 900 }, colorScheme: 'dark' },
+  { name: 'phone', viewport: { width: 390, height: 844 }, colorScheme: 'light' },
+  { name: 'phone-dark', viewport: { width: 390, height: 844 }, colorScheme: 'dark' },
+];
+
+try {
+  await answers(`${address}/readyz`);
+  rmSync(folder, { recursive: true, force: true });
+  mkdirSync(folder, { recursive: true });
+  const browser = await chromium.launch({
+    executablePath: process.env.RISEBACK_CHROMIUM ?? '/usr/bin/chromium',
+    args: [
+      '--no-sandbox',
+      '--disable-gpu',
+      '--disable-quic',
+      '--no-first-run',
+      '--disable-background-networking',
+      '--disable-component-update',
+      '--disable-sync',
+    ],
+  });
+  // One sign-in for all looks: the server slows down guesses, and a person's session serves many windows.
+  const first = await browser.newContext();
+  await first.request.post(`${address}/api/session`, {
+    data: { email: 'designer@ternquay.example', password: 'demo-tern-quay' },
+  });
+  const signedIn = await first.storageState();
+  const demo = await demoNetwork(first);
+  const empty = await emptyNetwork(first, demo.siteId);
+  for (const { name, ...look } of looks) {
+    const context = await browser.newContext({ ...look, storageState: signedIn });
+    const anonymous = await browser.newContext(look);
+    for (const screen of screens(demo, empty)) {
+      if (options.only !== undefined && !screen.name.includes(options.only)) continue;
+      const page = await (screen.anonymous ? anonymous : context).newPage();
+      await page.goto(`${address}${screen.path}`);
+      await page.waitForLoadState('networkidle');
+      if (screen.solved) await page.getByText(/^Solved \d\d:\d\d/).waitFor();
+      await page.waitForTimeout(400);
+      await page.screenshot({ path: join(folder, `${screen.name}-${name}.png`) });
+      process.stdout.write(`screens/${screen.name}-${name}.png\n`);
+      await page.close();
+    }
+    await context.close();
+    await anonymous.close();
+  }
+  await browser.close();
+} finally {
+  server.kill('SIGTERM');
+  rmSync(database, { recursive: true, force: true });
+}
+
+function screens({ siteId, networkId, elements }, empty) {
+  const network = `/sites/${siteId}/networks/${networkId}`;
+  return [
+    { name: 'sign-in', path: '/sign-in', anonymous: true },
+    { name: 'sites', path: '/sites' },
+    { name: 'networks', path: `/sites/${siteId}` },
+    { name: 'drawing', path: `${network}/drawing`, solved: true },
+    { name: 'drawing-trap', path: `${network}/drawing?element=${elements.trap}`, solved: true },
+    { name: 'drawing-pipe', path: `${network}/drawing?element=${elements.pipe}`, solved: true },
+    { name: 'drawing-empty', path: `/sites/${siteId}/networks/${empty}/drawing` },
+    { name: 'lists', path: `${network}/lists`, solved: true },
+    { name: 'ledger', path: `${network}/ledger?element=${elements.trap}`, solved: true },
+    { name: 'not-found', path: '/nowhere' },
+  ];
+}
+
+async function demoNetwork(context) {
+  const [site] = await json(context, '/api/sites');
+  const [network] = await json(context, `/api/sites/${site.id}/networks`);
+  const file = await json(context, `/api/networks/${network.id}/file`);
+  return {
+    siteId: site.id,
+    networkId: network.id,
+    elements: {
+      trap: file.nodes.find(({ tag }) => tag === 'BL-2').id,
+      pipe: file.pipes.find(({ route }) => route !== undefined).id,
+    },
+  };
+}
+
+async function emptyNetwork(context, siteId) {
+  const { cookies } = await context.storageState();
+  const token = cookies.find(({ name }) => name === 'XSRF-TOKEN').value;
+  const answer = await context.request.post(`${address}/api/sites/${siteId}/networks`, {
+    headers: { 'X-XSRF-TOKEN': decodeURIComponent(token) },
+    data: { format: 'riseback-network', version: 1, name: 'Empty sheet' },
+  });
+  return (await answer.json()).id;
+}
+
+async function json(context, path) {
+  return (await context.request.get(`${address}${path}`)).json();
+}
+
+function freePort() {
+  return new Promise((resolve) => {
+    const probe = createServer().listen(0, () => {
+      const { port: free } = probe.address();
+      probe.close(() => resolve(free));
+    });
+  });
+}
+
+async function answers(url) {
+  for (let attempt = 0; attempt < 240; attempt += 1) {
+    if (server.exitCode !== null) throw new Error('The application did not start; its messages stand above.');
+    const ready = await fetch(url).then(
+      ({ ok }) => ok,
+      () => false,
+    );
+    if (ready) return;
+    await new Promise((resolve) => setTimeout(resolve, 1_000));
+  }
+  throw new Error('The application did not answer in four minutes.');
+}
