@@ -1,5 +1,7 @@
+export { ledger, type LedgerEntry } from './back-pressure-ledger';
 export { CHECK_LIMITS, limitsInForce, type CheckLimit, type LimitsInForce } from './check-limits';
 export { plainText } from './finding-text';
+export { liftProfile, type ProfilePoint } from './lift-profile';
 export { modulatedInletPressurePa } from './modulating-inlet';
 export type { ProblemError, Refusal } from './refusal';
 export { isRefusal, solveNetwork, type SolveOptions } from './solve-network';

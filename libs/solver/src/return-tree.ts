@@ -1,4 +1,4 @@
-import type { NetworkFile } from '@riseback/network';
+import { compareIds, type NetworkFile } from '@riseback/network';
 
 /** A pipe that closes a loop, or joins two nodes of fixed pressure, so that the network is not a tree. */
 export interface TreeBreak {
@@ -32,8 +32,11 @@ export interface ReturnTree {
   readonly breaks: readonly TreeBreak[];
 }
 
-/** Finds the trees, in time linear in nodes and pipes. Pipes for which `usable` is false are as if not there. */
-export function returnTree(file: NetworkFile, usable: (pipe: number) => boolean): ReturnTree {
+/**
+ * Finds the trees, in time linear in nodes and pipes.
+ * @param isSound by pipe; one that is not is as if not there. Left out, all are
+ */
+export function returnTree(file: NetworkFile, isSound?: readonly boolean[]): ReturnTree {
   const { nodes, pipes } = file;
   const vesselOfOutlet: number[] = [];
   const outletOfVessel = new Int32Array(nodes.length).fill(-1);
@@ -43,16 +46,20 @@ export function returnTree(file: NetworkFile, usable: (pipe: number) => boolean)
   });
   const nodeCount = nodes.length + vesselOfOutlet.length;
 
-  const ends = pipes.map((pipe, i) => (usable(i) ? endsOf(pipe.from, pipe.to, indexOf, outletOfVessel) : undefined));
+  const ends = pipes.map((pipe, i) =>
+    (isSound?.[i] ?? true) ? endsOf(pipe.from, pipe.to, indexOf, outletOfVessel) : undefined,
+  );
   const touching = pipesByNode(nodeCount, ends);
   // flows are summed in the order of the pipes' ids, so that the file's order changes no result, not even by rounding
-  for (const list of touching) list.sort((a, b) => compareIds(pipes[a]?.id, pipes[b]?.id));
+  for (const list of touching) list.sort((a, b) => compareIds(idOf(pipes, a), idOf(pipes, b)));
   const outPipe = new Int32Array(nodeCount).fill(-1);
   const drainsTo = new Int32Array(nodeCount).fill(-1);
   const endOfWalk = new Int32Array(nodeCount).fill(-1);
   const arrow = new Int8Array(pipes.length);
   const breaks: TreeBreak[] = [];
-  const fixed = nodes.flatMap((node, i) => (node.kind === 'receiver' || node.kind === 'flashVessel' ? [i] : []));
+  const fixed = nodes
+    .flatMap((node, i) => (node.kind === 'receiver' || node.kind === 'flashVessel' ? [i] : []))
+    .sort((a, b) => compareIds(idOf(nodes, a), idOf(nodes, b)));
   for (const node of fixed) endOfWalk[node] = node;
 
   // breadth first, all ends at once, so that each node is found from below and the queue is the order of the walk
@@ -94,9 +101,8 @@ export function returnTree(file: NetworkFile, usable: (pipe: number) => boolean)
   };
 }
 
-function compareIds(a = '', b = ''): number {
-  if (a === b) return 0;
-  return a < b ? -1 : 1;
+function idOf(elements: readonly { readonly id: string }[], index: number): string {
+  return (elements[index] as { readonly id: string }).id;
 }
 
 interface PipeEnds {

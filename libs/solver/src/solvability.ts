@@ -1,39 +1,40 @@
-import type { NetworkFile } from '@riseback/network';
+import { fileFindings, fromFile, solvablePart, type NetworkFile } from '@riseback/network';
 import type { PipeGeometry } from './pipe-geometry';
 import { missing, type ProblemError } from './refusal';
 import type { ReturnTree, TreeBreak } from './return-tree';
 
-/** What a network's findings mean for a solve. */
-export interface Solvability {
-  /** Mistakes that a solve of the whole network cannot pass over. */
-  readonly errors: readonly ProblemError[];
-  /** Pipes that cannot be computed; a partial solve leaves them out, with what drains through them alone. */
-  readonly unusablePipes: ReadonlySet<number>;
+/**
+ * What a solve of the whole network cannot pass over, each with its place. Loops are told by {@link loopsIn}: they are sound
+ * networks, only not computed yet.
+ */
+export function mistakesIn(file: NetworkFile, geometries: readonly (PipeGeometry | undefined)[]): ProblemError[] {
+  const found = fileFindings(file)
+    .filter(({ code, severity }) => severity === 'error' && code !== 'loop')
+    .map(({ pointer, what, remedy }) => ({ pointer, detail: `${what}. ${remedy}` }));
+  return [...found, ...unknownSizes(file, geometries)];
 }
 
-export function solvability(file: NetworkFile, geometries: readonly (PipeGeometry | undefined)[]): Solvability {
-  const errors: ProblemError[] = [];
-  const unusablePipes = new Set<number>();
-  file.pipes.forEach((pipe, i) => {
-    if (geometries[i] === undefined) {
-      unusablePipes.add(i);
-      const { nps, schedule } = pipe.size ?? {};
-      errors.push({
-        pointer: `/pipes/${i}/size`,
-        detail: `No pipe standard here makes NPS ${nps} in schedule ${schedule}`,
-      });
-    }
-  });
-  return { errors, unusablePipes };
+/** By pipe: whether a live solve may count on it. What drains through other pipes alone is left out. */
+export function soundPipes(file: NetworkFile, geometries: readonly (PipeGeometry | undefined)[]): boolean[] {
+  const { pipes } = solvablePart(fromFile(file));
+  return file.pipes.map(({ id }, i) => pipes.has(id) && geometries[i] !== undefined);
 }
 
 /** What makes the network more than a set of trees, by name. */
-export function loopsIn(tree: ReturnTree): ProblemError[] {
-  return tree.breaks.map(({ pipe, why }) => missing(`/pipes/${pipe}`, BREAK[why]));
+export function loopsIn({ breaks }: ReturnTree): ProblemError[] {
+  return breaks.map(({ pipe, why }) => missing(`/pipes/${pipe}`, BREAK[why]));
 }
 
 const BREAK: Readonly<Record<TreeBreak['why'], string>> = {
   loop: 'a loop (this pipe closes one)',
-  parallelReceivers: 'a network that drains to several receivers at once (this pipe joins two)',
-  vesselCycle: 'a vessel that drains back into itself',
+  parallelReceivers: 'a second way down (this pipe joins what drains to two receivers or vessels)',
+  vesselCycle: 'a flash vessel whose liquid comes back to it (through this pipe)',
 };
+
+function unknownSizes(file: NetworkFile, geometries: readonly (PipeGeometry | undefined)[]): ProblemError[] {
+  return file.pipes.flatMap(({ size }, i) => {
+    if (geometries[i] !== undefined || size === undefined) return [];
+    const detail = `No standard in the pipe catalogue makes size ${size.nps} in schedule ${size.schedule}. Choose another, or give insideDiameterM.`;
+    return [{ pointer: `/pipes/${i}/size`, detail }];
+  });
+}

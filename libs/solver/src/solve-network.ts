@@ -10,7 +10,7 @@ import { pressureWalk } from './pressure-walk';
 import { noSolution, notAvailable, notAvailableYet, unknownCase, unsolvable, type Refusal } from './refusal';
 import { returnTree } from './return-tree';
 import type { SolveResult } from './solve-result';
-import { loopsIn, solvability } from './solvability';
+import { loopsIn, mistakesIn, soundPipes } from './solvability';
 
 export interface SolveOptions {
   /** '' is the plain network; left out, the first case, or the plain network if the file has none. */
@@ -30,15 +30,13 @@ export interface SolveOptions {
 export function solveNetwork(file: NetworkFile, options: SolveOptions): SolveResult | Refusal {
   const operatingCase = findCase(file, options.caseId);
   if (operatingCase === undefined) return unknownCase(file, options.caseId ?? '');
-  const unavailable = notAvailableYet(file, operatingCase);
-  if (unavailable.length > 0) return notAvailable(unavailable);
-
   const geometries = pipeGeometries(file);
-  const { errors, unusablePipes } = solvability(file, geometries);
-  if (!options.partial && errors.length > 0) return unsolvable(errors);
-  const tree = returnTree(file, (pipe) => !unusablePipes.has(pipe));
-  const loops = loopsIn(tree);
-  if (loops.length > 0) return notAvailable(loops);
+  const mistakes = options.partial ? [] : mistakesIn(file, geometries);
+  const isSound = mistakes.length === 0 && !options.partial ? undefined : soundPipes(file, geometries);
+  const tree = returnTree(file, isSound);
+  const unavailable = [...notAvailableYet(file, operatingCase), ...loopsIn(tree)];
+  if (mistakes.length > 0) return unsolvable([...mistakes, ...unavailable]);
+  if (unavailable.length > 0) return notAvailable(unavailable);
 
   try {
     const nodes = operatingNodes(file, operatingCase);
