@@ -212,11 +212,11 @@ CREATE TABLE `solves` (
 	`engine_version` text NOT NULL,
 	`state` text NOT NULL,
 	`started_at` text NOT NULL,
-	`finished_at` text,
+	`finished_at` text NOT NULL,
 	`problem` text,
 	`summary` text,
 	FOREIGN KEY (`network_id`) REFERENCES `networks`(`id`) ON UPDATE no action ON DELETE no action,
-	CONSTRAINT "solves_state" CHECK(state in ('solving', 'finished', 'failed')),
+	CONSTRAINT "solves_state" CHECK(state in ('finished', 'failed')),
 	CONSTRAINT "solves_problem" CHECK(json_valid(problem)),
 	CONSTRAINT "solves_summary" CHECK(json_valid(summary))
 ) STRICT;

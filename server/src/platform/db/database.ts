@@ -58,12 +58,18 @@ function refuseDamaged(sqlite: Sqlite.Database, path: string): void {
  */
 function migrateWithoutForeignKeys(db: Database, path: string): void {
   const migrationsFolder = findMigrations();
-  refuseNewer(db.$client, new Set(readMigrationFiles({ migrationsFolder }).map((migration) => migration.folderMillis)), path);
+  refuseNewer(
+    db.$client,
+    new Set(readMigrationFiles({ migrationsFolder }).map((migration) => migration.folderMillis)),
+    path,
+  );
   db.$client.pragma('foreign_keys = OFF');
   migrate(db, { migrationsFolder });
   const broken = db.$client.pragma('foreign_key_check') as unknown[];
   if (broken.length > 0) {
-    throw new UnusableDatabaseError(`After its migration ${broken.length} rows of ${path} point at nothing: put back the last backup`);
+    throw new UnusableDatabaseError(
+      `After its migration ${broken.length} rows of ${path} point at nothing: put back the last backup`,
+    );
   }
 }
 
@@ -72,7 +78,9 @@ function refuseNewer(sqlite: Sqlite.Database, known: ReadonlySet<number>, path: 
   if (table === undefined) return;
   const applied = sqlite.prepare('select created_at from __drizzle_migrations').pluck().all();
   if (applied.some((at) => !known.has(Number(at)))) {
-    throw new UnusableDatabaseError(`The database ${path} was made by a newer Riseback: start that one, or put back an older backup`);
+    throw new UnusableDatabaseError(
+      `The database ${path} was made by a newer Riseback: start that one, or put back an older backup`,
+    );
   }
 }
 
@@ -81,7 +89,8 @@ function findMigrations(): string {
   let folder = dirname(fileURLToPath(import.meta.url));
   while (!existsSync(join(folder, 'drizzle', 'meta', '_journal.json'))) {
     const above = dirname(folder);
-    if (above === folder) throw new UnusableDatabaseError('The folder "drizzle" with the migrations is missing beside the program');
+    if (above === folder)
+      throw new UnusableDatabaseError('The folder "drizzle" with the migrations is missing beside the program');
     folder = above;
   }
   return join(folder, 'drizzle');
@@ -94,5 +103,6 @@ function demandFullSynchronous(sqlite: Sqlite.Database): void {
   sqlite.pragma('synchronous = FULL');
   write();
   const level: unknown = sqlite.pragma('synchronous', { simple: true });
-  if (level !== FULL) throw new UnusableDatabaseError(`SQLite does not keep synchronous = FULL (it says ${String(level)})`);
+  if (level !== FULL)
+    throw new UnusableDatabaseError(`SQLite does not keep synchronous = FULL (it says ${String(level)})`);
 }

@@ -1,4 +1,5 @@
-import { ROLES, THEMES, UNIT_SYSTEMS } from '@riseback/contracts';
+import type { Person, Role } from '@riseback/contracts';
+import type { NodeKind } from '@riseback/network';
 import { sql } from 'drizzle-orm';
 import {
   check,
@@ -17,16 +18,22 @@ import {
  * in the name, NULL means that the key is absent. Tables are STRICT: db-generate adds that to what drizzle-kit writes.
  * Checks name their columns without the table, since a rebuilt table bears another name while it is filled.
  */
-export const NODE_KINDS = ['trap', 'junction', 'flashVessel', 'pumpedInlet', 'receiver'] as const;
-export const SESSION_ENDS = [
-  'signedOut',
-  'endedByOwner',
-  'passwordChanged',
-  'roleChanged',
-  'disabled',
-  'expired',
-] as const;
-export const SOLVE_STATES = ['solving', 'finished', 'failed'] as const;
+
+/**
+ * The list of all members of a union; the compiler refuses one too few or too many. drizzle-kit loads this file without
+ * the means to load the libraries, so that their lists are repeated here.
+ */
+const allOf =
+  <Member extends string>() =>
+  <const List extends readonly [Member, ...Member[]]>(list: [Member] extends [List[number]] ? List : never): List =>
+    list;
+
+const ROLES = allOf<Role>()(['viewer', 'commissioning', 'designer', 'reviewer', 'administrator']);
+const UNIT_SYSTEMS = allOf<Person['units']>()(['us', 'si']);
+const THEMES = allOf<Person['theme']>()(['system', 'light', 'dark']);
+const NODE_KINDS = allOf<NodeKind>()(['trap', 'junction', 'flashVessel', 'pumpedInlet', 'receiver']);
+const SESSION_ENDS = ['signedOut', 'endedByOwner', 'passwordChanged', 'roleChanged', 'disabled', 'expired'] as const;
+const SOLVE_STATES = ['finished', 'failed'] as const;
 
 const oneOf = (name: string, column: string, values: readonly string[]) =>
   check(name, sql.raw(`${column} in (${values.map((value) => `'${value}'`).join(', ')})`));
@@ -280,6 +287,7 @@ export const edits = sqliteTable(
   ],
 );
 
+/** Solves that have ended. Those under way are in memory only, so that a killed server leaves none behind half-done. */
 export const solves = sqliteTable(
   'solves',
   {
@@ -291,7 +299,7 @@ export const solves = sqliteTable(
     engineVersion: text('engine_version').notNull(),
     state: text('state', { enum: SOLVE_STATES }).notNull(),
     startedAt: text('started_at').notNull(),
-    finishedAt: text('finished_at'),
+    finishedAt: text('finished_at').notNull(),
     problem: json('problem'),
     summary: json('summary'),
   },

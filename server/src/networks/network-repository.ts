@@ -1,0 +1,203 @@
+import { EditOp, Limits, Method, SiteConditions, type CollectionName, type NetworkDocument } from '@riseback/network';
+import { and, asc, eq, gt, isNull, sql } from 'drizzle-orm';
+import * as z from 'zod';
+import { appendAudit, type AuditEntry } from '../platform/db/audit';
+import type { Queries } from '../platform/db/database';
+import { cases, edits, networks, people, sites } from '../platform/db/schema';
+import { ElementRepository, type Touched } from './element-repository';
+
+const Ops = z.array(EditOp);
+
+export interface NetworkHead {
+  readonly id: string;
+  readonly siteId: string;
+  readonly siteName: string;
+  readonly name: string;
+  readonly version: number;
+  readonly solverHash: string;
+}
+
+/** A network as a list shows it. `firstCaseId` is '' where it has no cases. */
+export interface ListedNetwork extends Omit<NetworkHead, 'siteName'> {
+  readonly changedAt: string;
+  readonly changedBy: string;
+  readonly firstCaseId: string;
+}
+
+/** One accepted batch. */
+export interface StoredEdit {
+  readonly networkId: string;
+  readonly version: number;
+  readonly batchId: string;
+  readonly personId: string;
+  readonly at: string;
+  readonly label: string;
+  readonly forward: readonly EditOp[];
+  readonly inverse: readonly EditOp[];
+  readonly solverHash: string;
+}
+
+export interface NewNetwork {
+  readonly id: string;
+  readonly siteId: string;
+  readonly document: NetworkDocument;
+  readonly solverHash: string;
+  readonly createdBy: string;
+  readonly createdAt: string;
+}
+
+/** The networks' rows, their elements and their edits, through the connection or one transaction on it. */
+export class NetworkRepository {
+  private readonly elements: ElementRepository;
+
+  constructor(private readonly db: Queries) {
+    this.elements = new ElementRepository(db);
+  }
+
+  /**
+   * Runs a change as one transaction, by the repository it is handed. References are checked at its end, so that the
+   * order of a batch's steps does not matter.
+   */
+  transaction<T>(change: (networks: NetworkRepository) => T): T {
+    return this.db.transaction(
+      (tx) => {
+        tx.run(sql`pragma defer_foreign_keys = on`);
+        return change(new NetworkRepository(tx));
+      },
+      { behavior: 'immediate' },
+    );
+  }
+
+  head(networkId: string): NetworkHead | undefined {
+    return this.db
+      .select({
+        id: networks.id,
+        siteId: networks.siteId,
+        siteName: sites.name,
+        name: networks.name,
+        version: networks.version,
+        solverHash: networks.solverHash,
+      })
+      .from(networks)
+      .innerJoin(sites, eq(sites.id, networks.siteId))
+      .where(eq(networks.id, networkId))
+      .get();
+  }
+
+  /** The networks of a site that are not archived, by name. */
+  list(siteId: string): ListedNetwork[] {
+    const firstCaseId = sql<string>`coalesce((select ${cases.id} from ${cases} where ${cases.networkId} = ${networks.id} order by ${cases.ordinal}, ${cases.id} limit 1), '')`;
+    return this.db
+      .select({
+        id: networks.id,
+        siteId: networks.siteId,
+        name: networks.name,
+        version: networks.version,
+        solverHash: networks.solverHash,
+        changedAt: edits.at,
+        changedBy: people.name,
+        firstCaseId,
+      })
+      .from(networks)
+      .innerJoin(edits, and(eq(edits.networkId, networks.id), eq(edits.version, networks.version)))
+      .innerJoin(people, eq(people.id, edits.personId))
+      .where(and(eq(networks.siteId, siteId), isNull(networks.archivedAt)))
+      .orderBy(sql`${networks.name} collate nocase`, asc(networks.id))
+      .all();
+  }
+
+  document(networkId: string): NetworkDocument | undefined {
+    const row = this.db.select().from(networks).where(eq(networks.id, networkId)).get();
+    if (row === undefined) return undefined;
+    return {
+      name: row.name,
+      site: SiteConditions.parse(row.conditions),
+      method: Method.parse(row.method),
+      limits: Limits.parse(row.limits),
+      ...this.elements.read(networkId),
+    };
+  }
+
+  insert(network: NewNetwork): void {
+    const { id, siteId, document, solverHash, createdBy, createdAt } = network;
+    this.db
+      .insert(networks)
+      .values({ id, siteId, version: 1, solverHash, createdBy, createdAt, ...settingsRow(document) })
+      .run();
+    this.elements.insertAll(id, 1, document);
+  }
+
+  /** Stores what a batch made of the network: its own row and the rows of the elements that the batch touched. */
+  update(
+    networkId: string,
+    version: number,
+    document: NetworkDocument,
+    solverHash: string,
+    touched: readonly Touched[],
+  ): void {
+    this.db
+      .update(networks)
+      .set({ version, solverHash, ...settingsRow(document) })
+      .where(eq(networks.id, networkId))
+      .run();
+    this.elements.writeTouched(networkId, version, document, touched);
+  }
+
+  insertEdit(edit: StoredEdit): void {
+    this.db.insert(edits).values(edit).run();
+  }
+
+  audit(entry: AuditEntry): void {
+    appendAudit(this.db, entry);
+  }
+
+  editByBatch(batchId: string): StoredEdit | undefined {
+    const row = this.db.select().from(edits).where(eq(edits.batchId, batchId)).get();
+    return row === undefined ? undefined : editOf(row);
+  }
+
+  edit(networkId: string, version: number): StoredEdit | undefined {
+    const row = this.db
+      .select()
+      .from(edits)
+      .where(and(eq(edits.networkId, networkId), eq(edits.version, version)))
+      .get();
+    return row === undefined ? undefined : editOf(row);
+  }
+
+  /** The accepted batches after a version, oldest first, with their authors' names. */
+  editsSince(networkId: string, version: number): (StoredEdit & { readonly personName: string })[] {
+    return this.db
+      .select({ edit: edits, personName: people.name })
+      .from(edits)
+      .innerJoin(people, eq(people.id, edits.personId))
+      .where(and(eq(edits.networkId, networkId), gt(edits.version, version)))
+      .orderBy(asc(edits.version))
+      .all()
+      .map(({ edit, personName }) => ({ ...editOf(edit), personName }));
+  }
+}
+
+function settingsRow(document: NetworkDocument) {
+  return { name: document.name, conditions: document.site, method: document.method, limits: document.limits };
+}
+
+function editOf(row: typeof edits.$inferSelect): StoredEdit {
+  return { ...row, forward: Ops.parse(row.forward), inverse: Ops.parse(row.inverse) };
+}
+
+/** The elements that a batch names, each once. */
+export function touchedBy(ops: readonly EditOp[]): Touched[] {
+  const touched = new Map<string, Touched>();
+  for (const op of ops) {
+    if (op.in === 'network') continue;
+    const id = op.op === 'add' ? addedId(op.id, op.value) : op.id;
+    touched.set(`${op.in} ${id}`, { collection: op.in satisfies CollectionName, id });
+  }
+  return [...touched.values()];
+}
+
+/** Only an override says its id beside its value; every other element carries it. */
+function addedId(id: string | undefined, value: Readonly<Record<string, unknown>>): string {
+  return id ?? String(value['id']);
+}

@@ -1,0 +1,297 @@
+import type {
+  EditAccepted,
+  Network,
+  NetworkSummary,
+  SavedBatch,
+  SolveSummary,
+  StaleVersion,
+} from '@riseback/contracts';
+import {
+  applyBatch,
+  fromFile,
+  jsonEqual,
+  layoutMissingPositions,
+  readNetworkFile,
+  toFile,
+  type BatchError,
+  type EditBatch,
+  type NetworkDocument,
+  type NetworkFile,
+} from '@riseback/network';
+import type { NetworkAccess, SiteAccess } from '../platform/auth/access';
+import { badRequest, conflict, notFound, staleVersion, unprocessable } from '../platform/problem';
+import { creationOps } from './creation-ops';
+import { solverHashOf } from './network-hashes';
+import { touchedBy, type NetworkHead, type NetworkRepository, type StoredEdit } from './network-repository';
+import { toStoredDocument } from './stored-document';
+
+/** What the networks need of the solves: to be told of a new version, and the verdicts of a stored one. */
+export interface NetworkSolves {
+  changed(network: {
+    readonly networkId: string;
+    readonly solverHash: string;
+    readonly document: NetworkDocument;
+  }): void;
+  summary(networkId: string, solverHash: string, firstCaseId: string): SolveSummary;
+}
+
+/** Documents kept in memory, so that an edit does not read a whole network again. */
+const CACHED_DOCUMENTS = 16;
+
+export class NetworkService {
+  private readonly documents = new Map<string, { readonly version: number; readonly document: NetworkDocument }>();
+
+  constructor(
+    private readonly networks: NetworkRepository,
+    private readonly solves: NetworkSolves,
+    private readonly newId: () => string,
+    private readonly now: () => Date,
+  ) {}
+
+  list(access: SiteAccess): NetworkSummary[] {
+    return this.networks.list(access.siteId).map(({ firstCaseId, solverHash, ...network }) => ({
+      ...network,
+      solve: this.solves.summary(network.id, solverHash, firstCaseId),
+    }));
+  }
+
+  /**
+   * Makes a network of a network file; its version is 1.
+   * @throws ProblemError 400 naming each mistake of the file
+   */
+  create(access: SiteAccess, json: unknown): Network {
+    const networkId = this.createFor(access.siteId, access.person, documentOf(json));
+    return this.networkOf(access, networkId);
+  }
+
+  /** As `create`, for a document that is known to be good and without a request behind it (the demo). */
+  createFor(
+    siteId: string,
+    by: { readonly id: string; readonly sessionId?: string },
+    document: NetworkDocument,
+  ): string {
+    const id = this.newId();
+    const solverHash = solverHashOf(document);
+    const at = this.now();
+    this.networks.transaction((networks) => {
+      networks.insert({ id, siteId, document, solverHash, createdBy: by.id, createdAt: at.toISOString() });
+      networks.insertEdit({
+        networkId: id,
+        version: 1,
+        batchId: this.newId(),
+        personId: by.id,
+        at: at.toISOString(),
+        label: 'create the network',
+        forward: creationOps(document),
+        inverse: [],
+        solverHash,
+      });
+      networks.audit({
+        at,
+        personId: by.id,
+        ...sessionOf(by),
+        siteId,
+        action: 'network.create',
+        subject: id,
+        details: { name: document.name },
+      });
+    });
+    this.remember(id, 1, document);
+    this.solves.changed({ networkId: id, solverHash, document });
+    return id;
+  }
+
+  get(access: NetworkAccess): Network {
+    return this.networkOf(access, access.networkId);
+  }
+
+  file(access: NetworkAccess): NetworkFile {
+    return toFile(this.documentOf(this.networks, this.head(access.networkId)));
+  }
+
+  editsSince(access: NetworkAccess, version: number): SavedBatch[] {
+    return savedBatches(this.networks, access.networkId, version);
+  }
+
+  /**
+   * The network as it stood after a version (by default the newest), with the hash of what its solve takes.
+   * @throws ProblemError 404 where it never had this version
+   */
+  atVersion(
+    access: NetworkAccess,
+    version: number | undefined,
+  ): {
+    readonly networkId: string;
+    readonly version: number;
+    readonly solverHash: string;
+    readonly document: NetworkDocument;
+  } {
+    const { networkId } = access;
+    const head = this.head(networkId);
+    const document = this.documentOf(this.networks, head);
+    if (version === undefined || version === head.version) {
+      return { networkId, version: head.version, solverHash: head.solverHash, document };
+    }
+    const edit = this.networks.edit(networkId, version);
+    if (edit === undefined) throw notFound(`The network has no version ${version}; its newest is ${head.version}.`);
+    const later = this.networks.editsSince(networkId, version);
+    return { networkId, version, solverHash: edit.solverHash, document: undone(document, later) };
+  }
+
+  /**
+   * Applies one batch to the version it was made on: the only way to change a network.
+   * @throws ProblemError 409 the batchId is known with another content; 412 not the current version; 403 a touched
+   *   collection needs another role; 422 the batch does not fit the network
+   */
+  edit(access: NetworkAccess, onVersion: number, batch: EditBatch): EditAccepted {
+    const { answer, changed } = this.networks.transaction((networks) =>
+      this.editWithin(networks, access, onVersion, batch),
+    );
+    if (changed !== undefined) {
+      this.remember(access.networkId, answer.version, changed);
+      this.solves.changed({ networkId: access.networkId, solverHash: answer.solverHash, document: changed });
+    }
+    return answer;
+  }
+
+  private editWithin(
+    networks: NetworkRepository,
+    access: NetworkAccess,
+    onVersion: number,
+    batch: EditBatch,
+  ): { readonly answer: EditAccepted; readonly changed?: NetworkDocument } {
+    const { networkId, person } = access;
+    const known = networks.editByBatch(batch.batchId);
+    if (known !== undefined) return { answer: firstAnswer(known, access, batch) };
+    const head = this.head(networkId);
+    if (head.version !== onVersion) throw stale(networks, head, onVersion);
+    requirePermissions(access, batch);
+
+    const applied = applyBatch(this.documentOf(networks, head), batch.ops);
+    if (!applied.ok) throw doesNotFit(applied.errors);
+    const { document } = applied;
+    const version = head.version + 1;
+    const solverHash = solverHashOf(document);
+    const at = this.now();
+    networks.update(networkId, version, document, solverHash, touchedBy(batch.ops));
+    networks.insertEdit({
+      networkId,
+      version,
+      batchId: batch.batchId,
+      personId: person.id,
+      at: at.toISOString(),
+      label: batch.label,
+      forward: batch.ops,
+      inverse: applied.inverse,
+      solverHash,
+    });
+    networks.audit({
+      at,
+      personId: person.id,
+      sessionId: person.sessionId,
+      siteId: access.siteId,
+      action: 'network.edit',
+      subject: networkId,
+      details: { version, batchId: batch.batchId, label: batch.label },
+    });
+    return { answer: { version, solverHash }, changed: document };
+  }
+
+  private networkOf(access: SiteAccess, networkId: string): Network {
+    const head = this.head(networkId);
+    return {
+      ...head,
+      role: access.role,
+      permissions: [...access.permissions],
+      document: toStoredDocument(this.documentOf(this.networks, head)),
+    };
+  }
+
+  private head(networkId: string): NetworkHead {
+    const head = this.networks.head(networkId);
+    if (head === undefined) throw notFound('There is no such network, or you have no role at its site.');
+    return head;
+  }
+
+  private documentOf(networks: NetworkRepository, { id, version }: NetworkHead): NetworkDocument {
+    const cached = this.documents.get(id);
+    if (cached?.version === version) return cached.document;
+    const document = networks.document(id);
+    if (document === undefined) throw new Error(`network ${id} has a version but no document`);
+    this.remember(id, version, document);
+    return document;
+  }
+
+  private remember(networkId: string, version: number, document: NetworkDocument): void {
+    this.documents.delete(networkId);
+    this.documents.set(networkId, { version, document });
+    const [oldest] = this.documents.keys();
+    if (this.documents.size > CACHED_DOCUMENTS && oldest !== undefined) this.documents.delete(oldest);
+  }
+}
+
+function documentOf(json: unknown): NetworkDocument {
+  const read = readNetworkFile(json);
+  if (!read.ok) throw badRequest('The network file has mistakes; nothing was stored.', read.errors);
+  return layoutMissingPositions(fromFile(read.file));
+}
+
+/** Every accepted batch has its exact inverse, so that every version can be had again. */
+function undone(document: NetworkDocument, edits: readonly StoredEdit[]): NetworkDocument {
+  return edits.toReversed().reduce((present, edit) => {
+    const applied = applyBatch(present, edit.inverse);
+    if (!applied.ok)
+      throw new Error(`the inverse of version ${edit.version} of network ${edit.networkId} does not apply`);
+    return applied.document;
+  }, document);
+}
+
+/** A batch sent again, after an answer that got lost: it was accepted once and is not applied a second time. */
+function firstAnswer(known: StoredEdit, access: NetworkAccess, batch: EditBatch): EditAccepted {
+  const same =
+    known.networkId === access.networkId &&
+    known.personId === access.person.id &&
+    known.label === batch.label &&
+    jsonEqual(known.forward, batch.ops);
+  if (!same) throw conflict('This batchId is taken by another batch: give every batch a new UUID.');
+  return { version: known.version, solverHash: known.solverHash };
+}
+
+function stale(networks: NetworkRepository, head: NetworkHead, onVersion: number): Error {
+  return staleVersion(
+    `The network is at version ${head.version}, the change was made on version ${onVersion}: apply the batches since, then send it again.`,
+    { currentVersion: head.version, batches: savedBatches(networks, head.id, onVersion) } satisfies StaleVersion,
+  );
+}
+
+function doesNotFit(errors: readonly BatchError[]): Error {
+  return unprocessable(
+    'The batch does not fit the network; nothing was changed.',
+    errors.map(({ opIndex, element, key, detail }) => ({
+      pointer: `/ops/${opIndex}`,
+      detail: [...[element, key].filter((part) => part !== undefined), detail].join(': '),
+    })),
+  );
+}
+
+/** Gauges belong to those who take readings, everything else to those who draw; a batch that touches both needs both. */
+function requirePermissions(access: NetworkAccess, batch: EditBatch): void {
+  if (batch.ops.some((op) => op.in === 'gauges')) access.require('readings');
+  if (batch.ops.some((op) => op.in !== 'gauges')) access.require('draw');
+}
+
+function savedBatches(networks: NetworkRepository, networkId: string, since: number): SavedBatch[] {
+  return networks.editsSince(networkId, since).map((edit) => ({
+    version: edit.version,
+    batchId: edit.batchId,
+    personId: edit.personId,
+    personName: edit.personName,
+    at: edit.at,
+    label: edit.label,
+    ops: [...edit.forward],
+  }));
+}
+
+function sessionOf(by: { readonly sessionId?: string }): { sessionId?: string } {
+  return by.sessionId === undefined ? {} : { sessionId: by.sessionId };
+}

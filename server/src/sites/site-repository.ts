@@ -1,0 +1,70 @@
+import type { Role } from '@riseback/contracts';
+import { and, count, eq, isNull, sql } from 'drizzle-orm';
+import type { Queries } from '../platform/db/database';
+import { memberships, networks, sites } from '../platform/db/schema';
+
+/** A site as one of its people sees it. */
+export interface SiteOfPerson {
+  readonly id: string;
+  readonly name: string;
+  readonly role: Role;
+  readonly atmosphericPressurePa: number;
+  readonly ambientTemperatureK: number;
+  readonly networkCount: number;
+}
+
+export interface NewSite {
+  readonly id: string;
+  readonly name: string;
+  readonly atmosphericPressurePa: number;
+  readonly ambientTemperatureK: number;
+  readonly createdAt: string;
+}
+
+export class SiteRepository {
+  constructor(private readonly db: Queries) {}
+
+  /** The sites where a person has a role, by name. */
+  sitesOf(personId: string): SiteOfPerson[] {
+    return this.ofPerson(personId)
+      .orderBy(sql`${sites.name} collate nocase`, sites.id)
+      .all();
+  }
+
+  siteOf(personId: string, siteId: string): SiteOfPerson | undefined {
+    return this.sitesOf(personId).find((site) => site.id === siteId);
+  }
+
+  isEmpty(): boolean {
+    return this.db.select({ id: sites.id }).from(sites).limit(1).get() === undefined;
+  }
+
+  insert(site: NewSite): void {
+    this.db
+      .insert(sites)
+      .values({ ...site, limits: {}, tagPattern: null })
+      .run();
+  }
+
+  private ofPerson(personId: string) {
+    const networkCount = this.db
+      .select({ siteId: networks.siteId, networkCount: count().as('network_count') })
+      .from(networks)
+      .where(isNull(networks.archivedAt))
+      .groupBy(networks.siteId)
+      .as('counted');
+    return this.db
+      .select({
+        id: sites.id,
+        name: sites.name,
+        role: memberships.role,
+        atmosphericPressurePa: sites.atmosphericPressurePa,
+        ambientTemperatureK: sites.ambientTemperatureK,
+        networkCount: sql<number>`coalesce(${networkCount.networkCount}, 0)`,
+      })
+      .from(sites)
+      .innerJoin(memberships, and(eq(memberships.siteId, sites.id), eq(memberships.personId, personId)))
+      .leftJoin(networkCount, eq(networkCount.siteId, sites.id))
+      .$dynamic();
+  }
+}

@@ -1,0 +1,38 @@
+import { NetworkResults, SolveResult } from '@riseback/contracts';
+import * as z from 'zod';
+import { NETWORK_FILE_LIMIT_BYTES, networkRoute, signedInRoute, type Route } from '../platform/routes/route-table';
+import type { ResultService } from './result-service';
+
+/** Read by `readNetworkFile` in the service, whose mistakes point further than a schema's. */
+const AnyNetworkFile = z.unknown();
+const CaseQuery = z.object({ case: z.string().max(64).optional() });
+const VersionQuery = z.object({ version: z.coerce.number().int().min(1).optional() });
+
+export function solveRoutes(service: ResultService): Route[] {
+  return [
+    signedInRoute({
+      method: 'post',
+      path: '/api/solve',
+      summary: 'Solve one case of a network file without storing it',
+      query: CaseQuery,
+      body: AnyNetworkFile,
+      bodyLimitBytes: NETWORK_FILE_LIMIT_BYTES,
+      answers: { 200: SolveResult },
+      handler: async ({ access, query, body, res }) => {
+        res.json((await service.solveFile(access, body, query.case)) satisfies SolveResult);
+      },
+    }),
+    networkRoute({
+      method: 'get',
+      path: '/api/networks/:networkId/results',
+      summary: 'The results of a version in all its cases; 202 while they are being computed',
+      permission: 'view',
+      query: VersionQuery,
+      answers: { 200: NetworkResults, 202: NetworkResults },
+      handler: async ({ access, query, res }) => {
+        const results = (await service.results(access, query.version)) satisfies NetworkResults;
+        res.status(results.state === 'waiting' ? 202 : 200).json(results);
+      },
+    }),
+  ];
+}
