@@ -1,5 +1,8 @@
 import cookieParser from 'cookie-parser';
 import express, { type Express } from 'express';
+import { NetworkRepository } from './networks/network-repository';
+import { networkRoutes } from './networks/network-routes';
+import { NetworkService } from './networks/network-service';
 import { accountRoutes } from './people/account-routes';
 import { OwnAccountService } from './people/own-account-service';
 import { PeopleRepository } from './people/people-repository';
@@ -16,6 +19,8 @@ import type { Config } from './platform/config';
 import type { Database } from './platform/db/database';
 import { healthRoutes } from './platform/health/health-routes';
 import { ReadinessCheck } from './platform/health/readiness';
+import { solvesOnePipe } from './platform/health/one-pipe';
+import { SolverProbe } from './platform/health/solver-probe';
 import { problemHandler } from './platform/http/problem-handler';
 import { apiRateLimit } from './platform/http/rate-limit';
 import { requestLog } from './platform/http/request-log';
@@ -29,6 +34,12 @@ import type { Route } from './platform/routes/route-table';
 import { SiteRepository } from './sites/site-repository';
 import { siteRoutes } from './sites/site-routes';
 import { SiteService } from './sites/site-service';
+import { ENGINE_VERSION } from './solve/engine-version';
+import { LiveSolves } from './solve/live-solves';
+import { ResultService } from './solve/result-service';
+import type { SolvePort } from './solve/solve-port';
+import { SolveRepository } from './solve/solve-repository';
+import { solveRoutes } from './solve/solve-routes';
 
 /** What the application is made of; a test hands in a database in memory and a clock of its own. */
 export interface AppParts {
@@ -37,7 +48,7 @@ export interface AppParts {
   readonly log: Log;
   readonly newId: () => string;
   readonly now: () => Date;
-  readonly workerIsAlive: () => boolean;
+  readonly solver: SolvePort;
   /** The browser build; undefined while developing, when the pages come from their own server. */
   readonly webFolder: string | undefined;
 }
@@ -46,10 +57,12 @@ export interface App {
   readonly handler: Express;
   /** Everything that is registered, each with its access rule. */
   readonly routes: readonly Route[];
+  /** For the demo, which makes its network without a request. */
+  readonly networks: NetworkService;
 }
 
 export function buildApp(parts: AppParts): App {
-  const { db, config, log, newId, now } = parts;
+  const { db, config, log, newId, now, solver } = parts;
 
   const tokens = new SessionTokens(config.sessionSecret);
   const sessions = new Sessions(new SessionRepository(db), tokens, newId, now);
@@ -58,12 +71,19 @@ export function buildApp(parts: AppParts): App {
   const signIn = new SignInService(people, new Passwords(), new SignInGuard(now), sessions);
   const account = new OwnAccountService(people, sessions);
   const sites = new SiteService(new SiteRepository(db));
+  const report = (error: unknown) => log.error({ err: error }, 'solve failed');
+  const live = new LiveSolves(new SolveRepository(db), solver, { engineVersion: ENGINE_VERSION, newId, now, report });
+  const networks = new NetworkService(new NetworkRepository(db), live, newId, now);
+  const results = new ResultService(networks, live, solver, { engineVersion: ENGINE_VERSION, newId });
+  const readiness = new ReadinessCheck(db, new SolverProbe(() => solvesOnePipe(solver), now));
 
   const routes: readonly Route[] = [
-    ...healthRoutes(new ReadinessCheck(db, parts.workerIsAlive)),
+    ...healthRoutes(readiness),
     openApiRoute(() => routes),
     ...accountRoutes(signIn, account, gate),
     ...siteRoutes(sites),
+    ...networkRoutes(networks),
+    ...solveRoutes(results),
   ];
 
   const app = express();
@@ -88,5 +108,5 @@ export function buildApp(parts: AppParts): App {
     throw notFound('There is nothing at this address.');
   });
   app.use(problemHandler(log));
-  return { handler: app, routes };
+  return { handler: app, routes, networks };
 }

@@ -21,8 +21,8 @@ export function healthRoutes(readiness: ReadinessCheck): Route[] {
       path: '/readyz',
       summary: 'Whether it can write, has room on its disk and can solve.',
       answers: { 200: Ready, 503: Ready },
-      handler: ({ res }) => {
-        const parts = readiness.check();
+      handler: async ({ res }) => {
+        const parts = await readiness.check();
         const ready = parts.database && parts.disk && parts.worker;
         res.set('Cache-Control', 'no-store').status(ready ? 200 : 503);
         res.json({ ready, ...parts } satisfies z.infer<typeof Ready>);

@@ -1,6 +1,7 @@
 import { statfsSync } from 'node:fs';
 import { dirname } from 'node:path';
 import type { Database } from '../db/database';
+import type { SolverProbe } from './solver-probe';
 
 /** Room for some thousands of edits and their write-ahead log. */
 const LEAST_FREE_BYTES = 64 * 1024 * 1024;
@@ -13,14 +14,13 @@ export interface Readiness {
 
 /** Whether work handed to this server would be kept and computed. */
 export class ReadinessCheck {
-  /** @param workerIsAlive asks the solver's pool */
   constructor(
     private readonly db: Database,
-    private readonly workerIsAlive: () => boolean,
+    private readonly solver: Pick<SolverProbe, 'isAlive'>,
   ) {}
 
-  check(): Readiness {
-    return { database: this.canWrite(), disk: this.hasRoom(), worker: this.workerIsAlive() };
+  async check(): Promise<Readiness> {
+    return { database: this.canWrite(), disk: this.hasRoom(), worker: await this.solver.isAlive() };
   }
 
   /** Takes the write lock and rolls back: a database that is full, locked or read-only says so here. */

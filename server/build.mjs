@@ -1,0 +1,121 @@
+// Builds the pages (ng build) and the server (esbuild) into `dist`, when their sources have changed.
+import { spawn } from 'node:child_process';
+import { createHash } from 'node:crypto';
+import { existsSync, mkdirSync, readdirSync, readFileSync, renameSync, rmSync, writeFileSync } from 'node:fs';
+import { join, relative } from 'node:path';
+import { ensureInstalled, root } from './install.mjs';
+
+const dist = join(root, 'dist');
+const stamp = join(dist, '.riseback-build');
+
+/** Whatever can change what is built. */
+const SOURCES = ['apps', 'libs', 'server', 'angular.json', 'package.json', 'package-lock.json', 'tsconfig.json'];
+const NO_SOURCE = /(^|\/)(node_modules|\.angular)(\/|$)|\.spec\.ts$|\.md$/;
+
+/** Builds when the sources are not those that `dist` was built from. `log` takes one line. */
+export async function ensureBuilt(log) {
+  const wanted = hashOfSources();
+  if (isBuilt(wanted)) return;
+  log('Building the pages and the server …');
+  // Into a folder of its own, renamed when whole: a build that is stopped half-way leaves the last one as it was.
+  const target = join(root, 'out', `build-${process.pid}`);
+  rmSync(target, { recursive: true, force: true });
+  mkdirSync(target, { recursive: true });
+  try {
+    await Promise.all([buildPages(join(target, 'web')), buildServer(join(target, 'server'))]);
+    writeFileSync(join(target, '.riseback-build'), wanted);
+    replaceDist(target);
+  } finally {
+    rmSync(target, { recursive: true, force: true });
+  }
+}
+
+function isBuilt(wanted) {
+  return existsSync(stamp) && readFileSync(stamp, 'utf8') === wanted;
+}
+
+function hashOfSources() {
+  const hash = createHash('sha256').update(process.versions.node);
+  for (const file of SOURCES.flatMap((path) => filesOf(join(root, path))).sort()) {
+    hash.update(relative(root, file)).update('\0').update(readFileSync(file)).update('\0');
+  }
+  return hash.digest('hex');
+}
+
+function filesOf(path) {
+  if (NO_SOURCE.test(relative(root, path)) || !existsSync(path)) return [];
+  const entries = readdirOrUndefined(path);
+  return entries === undefined ? [path] : entries.flatMap((name) => filesOf(join(path, name)));
+}
+
+function readdirOrUndefined(path) {
+  try {
+    return readdirSync(path);
+  } catch (error) {
+    if (error.code === 'ENOTDIR') return undefined;
+    throw error;
+  }
+}
+
+function replaceDist(target) {
+  const old = join(root, 'out', `old-${process.pid}`);
+  rmSync(old, { recursive: true, force: true });
+  if (existsSync(dist)) renameSync(dist, old);
+  renameSync(target, dist);
+  rmSync(old, { recursive: true, force: true });
+}
+
+async function buildPages(outputPath) {
+  const ng = join(root, 'node_modules', '@angular', 'cli', 'bin', 'ng.js');
+  const args = [ng, 'build', 'web', '--output-path', relative(root, outputPath), '--progress=false'];
+  const { code, output } = await run(process.execPath, args);
+  if (code !== 0) {
+    process.stderr.write(output);
+    throw new Error('The pages cannot be built; the messages stand above.');
+  }
+}
+
+async function buildServer(outdir) {
+  const { build } = await import('esbuild');
+  const { dependencies } = JSON.parse(readFileSync(join(root, 'package.json'), 'utf8'));
+  await build({
+    absWorkingDir: root,
+    entryPoints: {
+      main: 'server/src/main.ts',
+      'solve-worker': 'server/workers/solve-worker.ts',
+    },
+    outdir,
+    bundle: true,
+    platform: 'node',
+    target: 'node20',
+    format: 'esm',
+    sourcemap: true,
+    // Not `packages: 'external'`: that would leave our own libraries, which are TypeScript, to be imported at run time.
+    external: Object.keys(dependencies).flatMap((name) => [name, `${name}/*`]),
+    logLevel: 'warning',
+  });
+}
+
+function run(command, args) {
+  return new Promise((resolve, reject) => {
+    const child = spawn(command, args, {
+      cwd: root,
+      stdio: ['ignore', 'pipe', 'pipe'],
+      env: { ...process.env, CI: '1' },
+    });
+    let output = '';
+    const take = (chunk) => {
+      output += chunk;
+    };
+    child.stdout.on('data', take);
+    child.stderr.on('data', take);
+    child.on('error', reject);
+    child.on('close', (code) => resolve({ code, output }));
+  });
+}
+
+if (process.argv[1] === join(root, 'server', 'build.mjs')) {
+  const log = (line) => process.stderr.write(`${line}\n`);
+  await ensureInstalled(log);
+  await ensureBuilt(log);
+}

@@ -1,0 +1,158 @@
+import { randomBytes, randomUUID } from 'node:crypto';
+import { Writable } from 'node:stream';
+import { ROLES, type Role } from '@riseback/contracts';
+import request from 'supertest';
+import { buildApp, type App } from '../../server/src/app';
+import { SessionRepository } from '../../server/src/platform/auth/session-repository';
+import { SessionTokens } from '../../server/src/platform/auth/session-token';
+import { Sessions, type IssuedSession } from '../../server/src/platform/auth/sessions';
+import { readConfig, type Config } from '../../server/src/platform/config';
+import { openDatabase, type Database } from '../../server/src/platform/db/database';
+import { memberships, people, sites } from '../../server/src/platform/db/schema';
+import { createLog } from '../../server/src/platform/log';
+import { solveCases } from '../../server/src/solve/solve-cases';
+import type { SolvePort } from '../../server/src/solve/solve-port';
+
+export type HttpMethod = 'get' | 'post' | 'put' | 'patch' | 'delete';
+/** A person with each role at the site, one with a role elsewhere, and one with none anywhere. */
+export type Who = Role | 'stranger' | 'outsider';
+
+export const HOST = 'localhost:4310';
+const START = new Date('2026-03-02T08:00:00.000Z');
+
+/** Solves in the test's own thread. */
+const inThread: SolvePort = {
+  solve: (_key, job) => Promise.resolve({ end: 'finished', outcomes: solveCases(job), solveMs: 1 }),
+};
+
+export interface TestServerOptions {
+  readonly config?: Partial<Config>;
+  readonly solver?: SolvePort;
+  readonly webFolder?: string;
+}
+
+/** The application on a database in memory, with a clock that the test moves and everything it logs. */
+export class TestServer {
+  readonly db: Database = openDatabase(':memory:');
+  readonly config: Config;
+  readonly app: App;
+  readonly sessions: Sessions;
+  readonly tokens: SessionTokens;
+  readonly log: string[] = [];
+  readonly siteId = 'site-a';
+  readonly otherSiteId = 'site-b';
+  private time = START.getTime();
+
+  constructor(options: TestServerOptions = {}) {
+    const secret = randomBytes(48).toString('base64');
+    const env = { NODE_ENV: 'test', RISEBACK_DB: ':memory:', RISEBACK_SESSION_SECRET: secret };
+    this.config = { ...readConfig(env), ...options.config };
+    const now = () => this.now();
+    const sink = new Writable({
+      write: (chunk: Buffer, _encoding, done) => {
+        this.log.push(chunk.toString());
+        done();
+      },
+    });
+    this.app = buildApp({
+      db: this.db,
+      config: this.config,
+      log: createLog(this.config, sink),
+      newId: randomUUID,
+      now,
+      solver: options.solver ?? inThread,
+      webFolder: options.webFolder,
+    });
+    this.tokens = new SessionTokens(this.config.sessionSecret);
+    this.sessions = new Sessions(new SessionRepository(this.db), this.tokens, randomUUID, now);
+    this.addPeople();
+  }
+
+  now(): Date {
+    return new Date(this.time);
+  }
+
+  pass(ms: number): void {
+    this.time += ms;
+  }
+
+  /** A session made in the database, without the cost of a password. */
+  session(personId: string): IssuedSession {
+    return this.sessions.start(personId, 'test');
+  }
+
+  /** A client with a session of that person, or without one; it proves where it comes from unless told not to. */
+  as(who: Who | 'anonymous'): Client {
+    return new Client(this, who === 'anonymous' ? undefined : this.session(who));
+  }
+
+  close(): void {
+    this.db.$client.close();
+  }
+
+  addPerson(id: string, passwordHash = '-'): void {
+    const at = START.toISOString();
+    this.db
+      .insert(people)
+      .values({
+        id,
+        email: `${id}@ternquay.example`,
+        name: id,
+        passwordHash,
+        passwordChangedAt: at,
+        units: 'us',
+        theme: 'system',
+        timeZone: 'UTC',
+        createdAt: at,
+      })
+      .run();
+  }
+
+  private addPeople(): void {
+    const at = START.toISOString();
+    for (const id of [this.siteId, this.otherSiteId]) {
+      const site = {
+        id,
+        name: id,
+        atmosphericPressurePa: 101_325,
+        ambientTemperatureK: 293.15,
+        limits: {},
+        createdAt: at,
+      };
+      this.db.insert(sites).values(site).run();
+    }
+    for (const id of [...ROLES, 'stranger', 'outsider']) this.addPerson(id);
+    const grant = (personId: string, siteId: string, role: Role) =>
+      this.db.insert(memberships).values({ personId, siteId, role, grantedAt: at }).run();
+    for (const role of ROLES) grant(role, this.siteId, role);
+    grant('outsider', this.otherSiteId, 'administrator');
+  }
+}
+
+export class Client {
+  readonly cookie: string | undefined;
+  readonly proof: string | undefined;
+
+  constructor(
+    private readonly server: TestServer,
+    readonly issued: IssuedSession | undefined,
+  ) {
+    this.cookie = issued === undefined ? undefined : `riseback-session=${issued.token}`;
+    this.proof = issued === undefined ? undefined : server.tokens.forgeryProof(issued.sessionId);
+  }
+
+  send(method: HttpMethod, path: string): request.Test {
+    const test = request(this.server.app.handler)[method](path).set('Host', HOST);
+    if (this.cookie !== undefined) void test.set('Cookie', this.cookie);
+    if (this.proof !== undefined && method !== 'get') void test.set('X-XSRF-TOKEN', this.proof);
+    return test;
+  }
+
+  get(path: string): request.Test {
+    return this.send('get', path);
+  }
+
+  post(path: string, body: object): request.Test {
+    return this.send('post', path).send(body);
+  }
+}
