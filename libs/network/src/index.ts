@@ -11,6 +11,7 @@ export * from './network-file';
 export * from './override-keys';
 export * from './read-network-file';
 export * from './solver-input';
+export * from './element-keys';
 export * from './findings';
 export * from './solvable-part';
 export type { FindingCode, TopologyFinding } from './topology';

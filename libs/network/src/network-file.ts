@@ -166,7 +166,7 @@ type TrapInFile = Omit<Trap, TrapDefaults> & { [key in TrapDefaults]?: Trap[key]
 
 const { shape: trapShape } = Trap;
 /** A trap as a file may give it: what is left out takes the default of its type. */
-const FileTrap = z
+export const FileTrap = z
   .strictObject({
     ...trapShape,
     loadTolerance: trapShape.loadTolerance.optional(),

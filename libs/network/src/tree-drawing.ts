@@ -28,6 +28,11 @@ interface Measure {
   readonly branchLines: ReadonlyMap<string, { readonly side: Side; readonly distance: number }>;
 }
 
+/** Where a header starts; the side at which its riser comes in is not free for a leaf. */
+interface Start extends Position {
+  readonly used: Readonly<Record<Side, number>>;
+}
+
 /**
  * Draws trees under each other. Each is a header from its root at the right to the left; single nodes hang above and below it in
  * turn, and each branch is a header of its own in a band above or below. Of two branches, the one nearer the receiver takes the outer
@@ -130,7 +135,7 @@ function place(
   mainY: number,
   positions: Map<string, Position>,
 ): void {
-  const starts = new Map<string, Position>([[tree.order[0] ?? '', { x: 0, y: mainY }]]);
+  const starts = new Map<string, Start>([[tree.order[0] ?? '', { x: 0, y: mainY, used: { above: 0, below: 0 } }]]);
   for (const [head, header] of headers) {
     const start = starts.get(head);
     const branchLines = measures.get(head)?.branchLines;
@@ -139,11 +144,15 @@ function place(
     let x = start.x;
     for (const node of header.nodes) {
       positions.set(node, { x, y });
-      const used = { above: 0, below: 0 };
+      const used = node === head ? { ...start.used } : { above: 0, below: 0 };
       for (const branch of header.branches.get(node) ?? []) {
         const line = branchLines.get(branch);
         if (line === undefined) continue;
-        starts.set(branch, { x: x - BRANCH_SHIFT * used[line.side], y: y + sign(line.side) * line.distance });
+        starts.set(branch, {
+          x: x - BRANCH_SHIFT * used[line.side],
+          y: y + sign(line.side) * line.distance,
+          used: line.side === 'above' ? { above: 0, below: 1 } : { above: 1, below: 0 },
+        });
         used[line.side] += 1;
       }
       for (const { id, side } of header.leaves.get(node) ?? []) {
