@@ -102,9 +102,8 @@ export class SolveRepository {
       .from(solves)
       .where(eq(solves.networkId, networkId))
       .orderBy(desc(solves.finishedAt), desc(solves.id))
-      .limit(-1)
-      .offset(KEPT_SOLVES)
-      .all();
+      .all()
+      .slice(KEPT_SOLVES);
     if (old.length > 0) this.delete(old.map(({ id }) => id));
   }
 

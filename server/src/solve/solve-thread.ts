@@ -88,9 +88,7 @@ export class SolveThread implements SolvePort {
   }
 
   private startWorker(): Worker {
-    const worker = new Worker(this.workerUrl, {
-      execArgv: this.workerUrl.pathname.endsWith('.ts') ? ['--import', 'tsx'] : [],
-    });
+    const worker = workerAt(this.workerUrl);
     // the server's socket keeps the process alive, not its solver
     worker.unref();
     worker.on('message', (answer: SolveAnswer) => this.take(answer));
@@ -131,6 +129,13 @@ export class SolveThread implements SolvePort {
     this.running.resolve(end);
     this.running = undefined;
   }
+}
+
+/** A worker does not inherit tsx's loader, nor take it from `--import`, so a worker in TypeScript registers it first. */
+function workerAt(url: URL): Worker {
+  if (!url.pathname.endsWith('.ts')) return new Worker(url);
+  const script = `import('tsx/esm/api').then(({ register }) => { register(); return import(${JSON.stringify(url.href)}); })`;
+  return new Worker(script, { eval: true });
 }
 
 /** TypeScript through tsx while developing; beside the server's bundle once built. */
