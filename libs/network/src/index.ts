@@ -14,5 +14,5 @@ export * from './solver-input';
 export * from './element-keys';
 export * from './findings';
 export * from './solvable-part';
-export type { FindingCode, TopologyFinding } from './topology';
+export type { FindingCode, FindingText, TopologyFinding } from './topology';
 export * from './layout';

@@ -1,6 +1,6 @@
 import type { NetworkDocument } from './network-document';
 import type { PipeRun } from './network-file';
-import { nameOf, type PipeEnds, type TopologyFinding } from './topology';
+import { nameOf, type FindingText, type PipeEnds, type TopologyFinding } from './topology';
 
 /** Lengths and rises agree within a millimetre or a thousandth: as good as a tape measure and a rounded foot. */
 export const ROUTE_TOLERANCE = { absoluteM: 1e-3, relative: 1e-3 } as const;
@@ -37,7 +37,13 @@ function shorterThanRise(pipe: PipeRun, riseM: number): TopologyFinding[] {
   return [
     {
       ...error(pipe, 'shorterThanRise', 'lengthM'),
-      what: `Pipe ${nameOf(pipe)} ${verb} ${metres(Math.abs(riseM))} but is only ${metres(pipe.lengthM)} long`,
+      ...said([
+        `Pipe ${nameOf(pipe)} ${verb} `,
+        metres(Math.abs(riseM)),
+        ' but is only ',
+        metres(pipe.lengthM),
+        ' long',
+      ]),
       why: 'A pipe is at least as long as the difference of its two elevations.',
       remedy: `Correct its length, or the elevation of ${pipe.from} or ${pipe.to}.`,
     },
@@ -60,7 +66,12 @@ function routeFindings(pipe: PipeRun, riseM: number): TopologyFinding[] {
     } else if (Math.abs(piece.riseM) > piece.lengthM + tolerance(piece.lengthM)) {
       found.push({
         ...error(pipe, 'shorterThanRise', 'route'),
-        what: `${place} ${piece.riseM > 0 ? 'rises' : 'falls'} ${metres(Math.abs(piece.riseM))} over only ${metres(piece.lengthM)}`,
+        ...said([
+          `${place} ${piece.riseM > 0 ? 'rises' : 'falls'} `,
+          metres(Math.abs(piece.riseM)),
+          ' over only ',
+          metres(piece.lengthM),
+        ]),
         why: 'A piece of pipe is at least as long as its rise or fall.',
         remedy: 'Correct the length or the rise of this piece.',
       });
@@ -70,7 +81,13 @@ function routeFindings(pipe: PipeRun, riseM: number): TopologyFinding[] {
   if (Math.abs(lengthM - pipe.lengthM) > tolerance(pipe.lengthM)) {
     found.push({
       ...error(pipe, 'routeLength', 'route'),
-      what: `The route of pipe ${nameOf(pipe)} adds up to ${metres(lengthM)}, but the pipe is ${metres(pipe.lengthM)} long`,
+      ...said([
+        `The route of pipe ${nameOf(pipe)} adds up to `,
+        metres(lengthM),
+        ', but the pipe is ',
+        metres(pipe.lengthM),
+        ' long',
+      ]),
       why: `The pieces of a route add up to the pipe's length ${WITHIN}.`,
       remedy: 'Correct a piece of the route, or the length of the pipe.',
     });
@@ -80,7 +97,12 @@ function routeFindings(pipe: PipeRun, riseM: number): TopologyFinding[] {
   if (Math.abs(routeRiseM - riseM) > tolerance(Math.max(climbedM, Math.abs(riseM)))) {
     found.push({
       ...error(pipe, 'routeRise', 'route'),
-      what: `The route of pipe ${nameOf(pipe)} rises ${metres(routeRiseM)} in all, but its ends differ by ${metres(riseM)}`,
+      ...said([
+        `The route of pipe ${nameOf(pipe)} rises `,
+        metres(routeRiseM),
+        ' in all, but its ends differ by ',
+        metres(riseM),
+      ]),
       why: `The rises and falls of a route add up to the difference of the pipe's two elevations ${WITHIN}.`,
       remedy: `Correct a piece of the route, or the elevation of ${pipe.from} or ${pipe.to}.`,
     });
@@ -100,7 +122,13 @@ export function gaugeFindings(document: NetworkDocument): TopologyFinding[] {
       severity: 'note',
       element: { in: 'gauges', id },
       key: 'distanceM',
-      what: `Gauge ${nameOf(gauge)} stands ${metres(gauge.distanceM)} along pipe ${nameOf(pipe)}, which is only ${metres(pipe.lengthM)} long`,
+      ...said([
+        `Gauge ${nameOf(gauge)} stands `,
+        metres(gauge.distanceM),
+        ` along pipe ${nameOf(pipe)}, which is only `,
+        metres(pipe.lengthM),
+        ' long',
+      ]),
       why: 'Its readings cannot be compared with a pressure in that pipe.',
       remedy: 'Correct its distance from the start of the pipe, or name the pipe that it stands on.',
     });
@@ -126,6 +154,12 @@ function sum(numbers: readonly number[]): number {
   return numbers.reduce((total, number) => total + number, 0);
 }
 
-function metres(lengthM: number): string {
-  return `${Number(lengthM.toFixed(3))} m`;
+function metres(si: number): FindingText[number] {
+  return { quantity: 'length', si };
+}
+
+/** A sentence with lengths in it, for the command line in metres to the millimetre. */
+function said(whatText: FindingText): Pick<TopologyFinding, 'what'> & { whatText: FindingText } {
+  const what = whatText.map((part) => (typeof part === 'string' ? part : `${Number(part.si.toFixed(3))} m`)).join('');
+  return { what, whatText };
 }

@@ -16,6 +16,9 @@ export type FindingCode =
   | 'routeRise'
   | 'gaugePastEnd';
 
+/** A sentence as words and SI lengths, so that a screen can show it in the person's units. */
+export type FindingText = readonly (string | { readonly quantity: 'length'; readonly si: number })[];
+
 /** Something about the network as drawn that a person should know. An `error` stands in the way of a solve; it never stops a save. */
 export interface TopologyFinding {
   readonly code: FindingCode;
@@ -25,6 +28,8 @@ export interface TopologyFinding {
   /** The element's key at which it can be mended, where there is one. */
   readonly key?: string;
   readonly what: string;
+  /** `what` with its numbers apart, where it has any. */
+  readonly whatText?: FindingText;
   readonly why: string;
   readonly remedy: string;
 }
