@@ -61,7 +61,7 @@ describe('flash steam against published percentages', () => {
   });
 
   it('has one more misprint on its list: 250 to 30 psig was printed 17.7 %, and is 14.9', () => {
-    // the figure stands in a published table whose other cells agree; the neighbours 200 and 300 to 30 psig bracket 14.9
+    // the same table prints 12.8 % for 200 and 16.7 % for 300 to 30 psig, which bracket 14.9 and not 17.7
     const percent = 100 * flashQuality((250 + 14.696) * PSI_PA, (30 + 14.696) * PSI_PA);
     expect(Math.abs(percent - 14.9)).toBeLessThan(0.05);
   });
