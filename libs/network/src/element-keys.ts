@@ -1,4 +1,5 @@
 import type * as z from 'zod';
+import { Method, SiteConditions } from './file-settings';
 import {
   CapacityPoint,
   FileCase,
@@ -7,7 +8,6 @@ import {
   FlashVessel,
   Gauge,
   Junction,
-  Method,
   NetworkFileShape,
   Override,
   PipeRun,
@@ -16,7 +16,6 @@ import {
   PumpedInlet,
   Receiver,
   RoutePiece,
-  SiteConditions,
   Trap,
   TrapModel,
 } from './network-file';

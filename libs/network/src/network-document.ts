@@ -1,8 +1,6 @@
+import { Method, SiteConditions, type Limits } from './file-settings';
 import {
-  Method,
-  SiteConditions,
   type Gauge,
-  type Limits,
   type NetworkNode,
   type OperatingCase,
   type Override,

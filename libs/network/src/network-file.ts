@@ -1,4 +1,5 @@
 import * as z from 'zod';
+import { Limits, Method, SiteConditions } from './file-settings';
 import { isObject } from './json-value';
 
 /**
@@ -35,17 +36,6 @@ const note = z.string().max(4_000);
 const area = z.string().trim().min(1).max(80);
 const calendarDate = z.iso.date();
 
-export const STATIC_LIFT_BASES = ['rule', 'liquidFull', 'twoPhase'] as const;
-export const FRICTION_METHODS = [
-  'flashVapour',
-  'homogeneous',
-  'lockhartMartinelli',
-  'friedel',
-  'mullerSteinhagenHeck',
-  'byPattern',
-] as const;
-export const VOID_FRACTIONS = ['homogeneous', 'zivi', 'chisholm', 'rouhaniAxelsson'] as const;
-export const COINCIDENCES = ['average', 'ownPeak', 'probable'] as const;
 export const TRAP_TYPES = ['invertedBucket', 'floatThermostatic', 'thermostatic', 'thermodynamic', 'orifice'] as const;
 export const DISCHARGES = ['intermittent', 'continuous'] as const;
 export const TRAP_STATES = ['normal', 'isolated', 'failedOpen'] as const;
@@ -70,8 +60,6 @@ export const FITTING_KINDS = [
   'exit',
 ] as const;
 
-/** Half a psi per foot of rise, in Pa/m (common practice). */
-export const DEFAULT_LIFT_RULE_PA_M = 11_310.297;
 /** New commercial steel, m: 0.0018 in, as the handbook tables use. */
 export const DEFAULT_ROUGHNESS_M = 4.57e-5;
 
@@ -84,42 +72,6 @@ export const MAXIMUM_ELEMENTS = {
   overrides: 50_000,
   gauges: 50_000,
 } as const;
-
-export const SiteConditions = z.strictObject({
-  atmosphericPressurePa: z.number().min(30_000).max(120_000).default(101_325),
-  ambientTemperatureK: z.number().min(213.15).max(343.15).default(293.15),
-});
-
-export const Method = z.strictObject({
-  staticLift: z.enum(STATIC_LIFT_BASES).default('rule'),
-  liftRulePaM: z.number().min(0).max(20_000).default(DEFAULT_LIFT_RULE_PA_M),
-  dropCredit: z.number().min(0).max(1).default(0),
-  friction: z.enum(FRICTION_METHODS).default('flashVapour'),
-  voidFraction: z.enum(VOID_FRACTIONS).default('rouhaniAxelsson'),
-  coincidence: z.enum(COINCIDENCES).default('average'),
-  acceleration: z.boolean().default(true),
-});
-
-const limit = z.number().positive().max(1e9);
-/** Limits of checks by the check's code; a key left out keeps the default (libs/solver names its value and source). */
-export const Limits = z.strictObject({
-  backPressureFraction: z
-    .strictObject({
-      watchFraction: limit.max(1),
-      failFraction: limit.max(1),
-      minimumInletGaugePa: z.number().min(0).max(2.5e7),
-    })
-    .partial()
-    .optional(),
-  velocity: z.strictObject({ watchMS: limit, failMS: limit, liquidMS: limit }).partial().optional(),
-  momentum: z.strictObject({ limitPa: limit }).partial().optional(),
-  gradient: z.strictObject({ flashingPaM: limit, liquidPaM: limit }).partial().optional(),
-  thermalShock: z.strictObject({ limitK: limit }).partial().optional(),
-  stall: z
-    .strictObject({ watchMargin: z.number().min(0).max(1) })
-    .partial()
-    .optional(),
-});
 
 export const Position = z.strictObject({ x: coordinate, y: coordinate });
 
@@ -231,7 +183,9 @@ export type Junction = z.infer<typeof Junction>;
 
 export const FileNode = z
   .discriminatedUnion('kind', [FileTrap, Junction, FlashVessel, PumpedInlet, Receiver])
-  .transform((node): NetworkNode => (node.kind === 'trap' ? withTrapDefaults(node) : node));
+  .transform((node): z.input<typeof NetworkNode> => (node.kind === 'trap' ? withTrapDefaults(node) : node))
+  // so that what comes out has a schema too, for the description of the API
+  .pipe(NetworkNode);
 
 export const PipeSize = z.strictObject({ nps: z.string().min(1).max(16), schedule: z.string().min(1).max(32) });
 export const Fitting = z.strictObject({ kind: z.enum(FITTING_KINDS), count: z.number().int().min(1).max(1_000) });
@@ -351,14 +305,10 @@ export const Gauge = z
   );
 export type Gauge = z.infer<typeof Gauge>;
 
-export type SiteConditions = z.infer<typeof SiteConditions>;
-export type Method = z.infer<typeof Method>;
-export type Limits = z.infer<typeof Limits>;
 export type Position = z.infer<typeof Position>;
 export type Fitting = z.infer<typeof Fitting>;
 export type FittingKind = (typeof FITTING_KINDS)[number];
 export type TrapType = (typeof TRAP_TYPES)[number];
-export type FrictionMethod = (typeof FRICTION_METHODS)[number];
 export type RoutePiece = z.infer<typeof RoutePiece>;
 export type PipeSize = z.infer<typeof PipeSize>;
 

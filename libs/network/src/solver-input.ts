@@ -1,16 +1,8 @@
 import { canonicalText, sortedBy } from './canonical-text';
 import { overridesByCase } from './document-file';
 import type { NetworkDocument, Placed } from './network-document';
-import type {
-  Limits,
-  Method,
-  NetworkNode,
-  OperatingCase,
-  Override,
-  PipeRun,
-  SiteConditions,
-  TrapModel,
-} from './network-file';
+import type { Limits, Method, SiteConditions } from './file-settings';
+import type { NetworkNode, OperatingCase, Override, PipeRun, TrapModel } from './network-file';
 
 type WithoutKeys<T, K extends PropertyKey> = T extends unknown ? Omit<T, K> : never;
 type SolverNode = WithoutKeys<NetworkNode, 'tag' | 'position' | 'area' | 'note'>;
