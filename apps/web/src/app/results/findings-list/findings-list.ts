@@ -1,0 +1,52 @@
+import { ChangeDetectionStrategy, Component, computed, input, output } from '@angular/core';
+import type { Position } from '@riseback/network';
+import { type Status, StatusMark } from '../../shared/status-mark/status-mark';
+import type { Finding, FindingSeverity } from '../finding-list';
+import { checkName } from '../finding-words';
+
+const MARKS: Readonly<Record<FindingSeverity, { readonly status: Status; readonly word: string }>> = {
+  fail: { status: 'fail', word: 'Fail' },
+  watch: { status: 'watch', word: 'Watch' },
+  note: { status: 'none', word: 'Note' },
+};
+
+/** The findings of a case as a table, each leading to its element. */
+@Component({
+  selector: 'app-findings-list',
+  imports: [StatusMark],
+  changeDetection: ChangeDetectionStrategy.OnPush,
+  templateUrl: './findings-list.html',
+  styleUrl: './findings-list.scss',
+})
+export class FindingsList {
+  readonly findings = input.required<readonly Finding[]>();
+  /** The sheet's zone of a place; left out where no drawing is shown. */
+  readonly zoneOf = input<(position: Position) => string>();
+  /** The element looked at now; its findings are marked. */
+  readonly currentId = input('');
+  /** No case has been solved yet, so that silence means nothing. */
+  readonly unsolved = input(false);
+  /** The id of the element that a finding leads to. */
+  readonly opened = output<string>();
+
+  protected readonly rows = computed(() => {
+    const zoneOf = this.zoneOf();
+    return this.findings().map((finding) => ({
+      finding,
+      ...MARKS[finding.severity],
+      name: checkName(finding.code),
+      zone: finding.position === null || zoneOf === undefined ? '' : zoneOf(finding.position),
+      current: finding.element !== null && finding.element.id === this.currentId(),
+    }));
+  });
+  protected readonly counts = computed(() => {
+    const count = (severity: FindingSeverity) =>
+      this.findings().filter((finding) => finding.severity === severity).length;
+    const parts = [
+      `${count('fail').toString()} fail`,
+      `${count('watch').toString()} watch`,
+      ...(count('note') > 0 ? [`${count('note').toString()} ${count('note') === 1 ? 'note' : 'notes'}`] : []),
+    ];
+    return parts.join(', ');
+  });
+}

@@ -1,0 +1,113 @@
+import { type DisplayUnits, displayUnit, formatQuantity, fromDisplay, toDisplay } from '@riseback/units';
+import { niceTicks } from '../nice-ticks';
+import { spreadLabels } from './spread-labels';
+import type { StaffModel, StaffPartKind } from './staff-model';
+
+/** The tall staff's own measures, in px at full size. */
+export const TALL = {
+  width: 332,
+  height: 324,
+  top: 12,
+  bottom: 10,
+  tickEnd: 48,
+  tubeLeft: 56,
+  tubeWidth: 26,
+  labelLeft: 122,
+  valueRight: 296,
+} as const;
+const ROW = 18;
+const BIG_ROW = 32;
+/** An axis number nearer to the limit's label than this would run into it. */
+const LIMIT_LABEL_REACH = 22;
+
+export interface TallLabel {
+  readonly key: 'inlet' | 'differential' | 'back' | StaffPartKind;
+  readonly name: string;
+  readonly value: string;
+  readonly y: number;
+  /** From the tube to the label. */
+  readonly leader: string;
+}
+
+export interface TallStaff {
+  readonly unit: string;
+  readonly ticks: readonly { readonly y: number; readonly text: string }[];
+  readonly parts: readonly { readonly kind: StaffPartKind; readonly y: number; readonly height: number }[];
+  readonly tubeTop: number;
+  readonly tubeFoot: number;
+  readonly inletY: number;
+  readonly backY: number;
+  readonly limit: { readonly y: number; readonly text: string; readonly exceeded: boolean } | null;
+  readonly labels: readonly TallLabel[];
+}
+
+/** Where everything of a tall staff stands. */
+export function tallStaff(model: StaffModel, units: DisplayUnits, scaleMaximumPa: number | undefined): TallStaff {
+  const shown = (pa: number) => toDisplay(pa, 'pressure', units);
+  const pressure = (pa: number) => formatQuantity(pa, 'pressure', units);
+  const ticks = niceTicks(shown(model.footPa), shown(Math.max(model.topPa, scaleMaximumPa ?? model.topPa)), 5);
+  const [low = 0, high = 1] = [ticks[0], ticks.at(-1)];
+  const foot = TALL.height - TALL.bottom;
+  const yOf = (pa: number) => foot - ((shown(pa) - low) / (high - low)) * (foot - TALL.top);
+
+  const { limitPa } = model;
+  const limit =
+    limitPa === undefined ? null : { y: yOf(limitPa), text: pressure(limitPa), exceeded: model.backPa > limitPa };
+  return {
+    unit: displayUnit('pressure', units.system),
+    ticks: ticks.map((tick) => {
+      const y = yOf(fromDisplay(tick, 'pressure', units));
+      const hidden = limit !== null && Math.abs(limit.y - y) < LIMIT_LABEL_REACH;
+      return { y, text: hidden ? '' : formatTick(tick) };
+    }),
+    parts: model.parts.map(({ kind, fromPa, toPa }) => ({
+      kind,
+      y: yOf(toPa),
+      height: Math.max(0, yOf(fromPa) - yOf(toPa)),
+    })),
+    tubeTop: yOf(Math.max(model.inletPa, model.backPa)),
+    tubeFoot: yOf(model.footPa),
+    inletY: yOf(model.inletPa),
+    backY: yOf(model.backPa),
+    limit,
+    labels: labels(model, units, yOf),
+  };
+}
+
+function labels(model: StaffModel, units: DisplayUnits, yOf: (pa: number) => number): TallLabel[] {
+  const { inletPa, backPa, differentialPa } = model;
+  const wanted: (Omit<TallLabel, 'y' | 'leader'> & { readonly pa: number })[] = [
+    { key: 'inlet', name: 'Steam inlet', value: formatQuantity(inletPa, 'pressure', units), pa: inletPa },
+    {
+      key: 'differential',
+      name: differentialPa > 0 ? 'Differential' : 'No differential',
+      value: formatQuantity(differentialPa, 'pressureDifference', units, { decimals: 1 }),
+      pa: (inletPa + backPa) / 2,
+    },
+    { key: 'back', name: 'Back pressure', value: formatQuantity(backPa, 'pressure', units), pa: backPa },
+    // from the top of the pile down, so that parts of no height keep the order in which they lie
+    ...model.parts.toReversed().map(({ kind, name, shown, fromPa, toPa }) => ({
+      key: kind,
+      name,
+      value: shown,
+      pa: (fromPa + toPa) / 2,
+    })),
+  ];
+  const wishes = wanted.map(({ key, pa }) => ({ at: yOf(pa), height: key === 'back' ? BIG_ROW : ROW }));
+  const middles = spreadLabels(wishes, 0, TALL.height);
+  return wanted.map(({ key, name, value, pa }, i) => {
+    const y = middles[i] ?? 0;
+    return { key, name, value, y, leader: leader(yOf(pa), y) };
+  });
+}
+
+/** Level out of the tube, slanting to the label's height, level to the label. */
+function leader(from: number, to: number): string {
+  const start = TALL.tubeLeft + TALL.tubeWidth;
+  const end = TALL.labelLeft - 4;
+  return `M${start} ${from.toFixed(1)}H${start + 8}L${end - 8} ${to.toFixed(1)}H${end}`;
+}
+
+function formatTick(tick: number): string {
+  return (tick < 0 ? '−' : '') + String(Math.abs(tick));
+}
