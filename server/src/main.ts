@@ -4,8 +4,11 @@ import { createServer, type Server } from 'node:http';
 import type { AddressInfo } from 'node:net';
 import { dirname } from 'node:path';
 import { fileURLToPath } from 'node:url';
+import { DEMO_PASSWORD, DEMO_PEOPLE } from '../demo/demo-people';
+import { seedDemo } from '../demo/seed-demo';
 import { buildApp } from './app';
 import { PeopleRepository } from './people/people-repository';
+import { Passwords } from './platform/auth/passwords';
 import { ConfigError, readConfig, type Config } from './platform/config';
 import { openDatabase, UnusableDatabaseError } from './platform/db/database';
 import { DatabaseInUseError, holdExclusively } from './platform/exclusive-use';
@@ -25,12 +28,23 @@ async function start(): Promise<void> {
   const log = createLog(config, logDestination(logFile));
   exitOnUncaught(log);
 
+  // The database holds password hashes, the log who did what: both are this account's alone.
+  process.umask(0o077);
   say('Opening the database …');
   if (config.databasePath !== ':memory:') mkdirSync(dirname(config.databasePath), { recursive: true, mode: 0o700 });
   const hold = holdExclusively(config.databasePath);
   const db = openDatabase(config.databasePath);
   const solver = new SolveThread({ report: (error) => log.error({ err: error }, 'solver') });
-  const app = buildApp({ db, config, log, newId: randomUUID, now: () => new Date(), solver, webFolder: builtPages() });
+  const now = () => new Date();
+  const app = buildApp({ db, config, log, newId: randomUUID, now, solver, webFolder: builtPages() });
+  const people = new PeopleRepository(db);
+  if (config.production) {
+    refuseDemoPeople(people);
+  } else {
+    const hashPassword = (password: string) => new Passwords().hash(password);
+    const seeded = await seedDemo({ db, networks: app.networks, hashPassword, newId: randomUUID, now });
+    if (seeded) say('The database is new: the demo site is in it.');
+  }
 
   const server = createServer(app.handler);
   shutDownGracefully(server, log, async () => {
@@ -42,11 +56,31 @@ async function start(): Promise<void> {
   const address = addressOf(server, config);
   log.info({ address, production: config.production }, 'listening');
   if (logFile !== undefined) say(`Requests are logged in ${logFile}`);
-  if (config.production && !new PeopleRepository(db).hasInstallationAdministrator()) {
-    say('Nobody can sign in yet. Make the first administrator, who is asked for a password:');
-    say('  npm run first-administrator -- EMAIL "NAME" "SITE"');
-  }
+  if (config.production) sayFirstAdministrator(people);
+  else saySignIns(people);
   say(`Riseback: ${address}`);
+}
+
+/** Their password is printed in the documentation. */
+function refuseDemoPeople(people: PeopleRepository): void {
+  const demo = DEMO_PEOPLE.find(({ email }) => people.findByEmail(email) !== undefined);
+  if (demo === undefined) return;
+  throw new UnusableDatabaseError(
+    'The database holds the demo people, whose password everybody knows; it cannot serve in production. Name another in RISEBACK_DB.',
+  );
+}
+
+function sayFirstAdministrator(people: PeopleRepository): void {
+  if (people.hasInstallationAdministrator()) return;
+  say('Nobody can sign in yet. Make the first administrator, who is asked for a password:');
+  say('  npm run first-administrator -- EMAIL "NAME" "SITE"');
+}
+
+function saySignIns(people: PeopleRepository): void {
+  const known = DEMO_PEOPLE.filter(({ email }) => people.findByEmail(email) !== undefined);
+  if (known.length === 0) return;
+  say(`Sign in with the password ${DEMO_PASSWORD} as`);
+  for (const { email, role } of known) say(`  ${email.padEnd(32)} ${role ?? 'no role at any site'}`);
 }
 
 /** Beside the bundle once built; while developing, the pages come from the web's own server. */

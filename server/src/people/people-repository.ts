@@ -11,6 +11,11 @@ type ProfileColumns = Partial<Pick<PersonRow, 'units' | 'theme' | 'timeZone'>>;
 export class PeopleRepository {
   constructor(private readonly db: Database) {}
 
+  /** All that `work` writes, also through other repositories on this connection, or none of it. */
+  inOneTransaction<T>(work: () => T): T {
+    return this.db.transaction(() => work(), { behavior: 'immediate' });
+  }
+
   find(id: string): PersonRow | undefined {
     return this.db.select().from(people).where(eq(people.id, id)).get();
   }

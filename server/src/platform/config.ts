@@ -61,7 +61,7 @@ export function readConfig(env: Readonly<Record<string, string | undefined>>): C
   const settings = parseSettings(env);
   const production = settings.NODE_ENV === 'production';
   const origin = readOrigin(settings, production);
-  const databasePath = settings.RISEBACK_DB === ':memory:' ? ':memory:' : resolve(settings.RISEBACK_DB);
+  const databasePath = resolveDatabase(settings);
   return {
     port: settings.PORT,
     host: settings.HOST,
@@ -73,6 +73,15 @@ export function readConfig(env: Readonly<Record<string, string | undefined>>): C
     requestsPerMinute: settings.RISEBACK_REQUESTS_PER_MINUTE,
     logLevel: settings.RISEBACK_LOG_LEVEL,
   };
+}
+
+/** The one setting that commands on the machine share with the server. @throws ConfigError as readConfig */
+export function databasePathOf(env: Readonly<Record<string, string | undefined>>): string {
+  return resolveDatabase(parseSettings(env));
+}
+
+function resolveDatabase({ RISEBACK_DB: path }: Settings): string {
+  return path === ':memory:' ? path : resolve(path);
 }
 
 function parseSettings(env: Readonly<Record<string, string | undefined>>): Settings {

@@ -14,6 +14,7 @@ export function requestLog(log: Log): RequestHandler {
       return id;
     },
     quietReqLogger: true,
+    quietResLogger: true,
     customAttributeKeys: { reqId: 'id', responseTime: 'ms' },
     customSuccessObject: (req, res, object: { ms?: number }) => ({
       ms: object.ms,

@@ -1,5 +1,5 @@
 import { readFileSync } from 'node:fs';
-import { extname, join } from 'node:path';
+import { join } from 'node:path';
 import express, { Router, type Request } from 'express';
 import { notFound } from '../problem';
 import { nonceOf } from './security-headers';
@@ -39,5 +39,5 @@ export function webApplication(folder: string): Router {
 function isNavigation(req: Request): boolean {
   const reads = req.method === 'GET' || req.method === 'HEAD';
   // No page's path has a dot in it (an element's tag may, but that stands in the query): what has one is a file.
-  return reads && req.accepts(['json', 'html']) === 'html' && extname(req.path) === '';
+  return reads && req.accepts(['json', 'html']) === 'html' && !req.path.includes('.');
 }
