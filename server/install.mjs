@@ -16,7 +16,9 @@ const LOCK_STALE_MS = 20 * 60_000;
 export function demandNode() {
   const [major, minor] = process.versions.node.split('.').map(Number);
   if (major === 20 && minor >= 19) return;
-  process.stderr.write(`Riseback needs Node.js 20.19 or a later 20; this is ${process.version}. Install that and start again.\n`);
+  process.stderr.write(
+    `Riseback needs Node.js 20.19 or a later 20; this is ${process.version}. Install that and start again.\n`,
+  );
   process.exit(1);
 }
 
