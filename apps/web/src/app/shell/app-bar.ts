@@ -17,13 +17,14 @@ export class AppBar {
   private readonly session = inject(SessionStore);
   private readonly router = inject(Router);
 
-  readonly role = input<Role>();
+  /** Null or absent where no site is open. */
+  readonly role = input<Role | null>();
 
   protected readonly person = this.session.person;
   protected readonly initials = computed(() => initialsOf(this.person()?.name ?? ''));
   protected readonly roleWord = computed(() => {
     const role = this.role();
-    return role === undefined ? '' : role.charAt(0).toUpperCase() + role.slice(1);
+    return role == null ? '' : role.charAt(0).toUpperCase() + role.slice(1);
   });
 
   protected readonly unitChoices = [
