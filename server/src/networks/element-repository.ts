@@ -79,14 +79,12 @@ function upsert(
   elements: readonly { readonly id: string; readonly placed: Placed<object> }[],
 ): void {
   for (let start = 0; start < elements.length; start += ROWS_A_STATEMENT) {
-    const rows = elements
-      .slice(start, start + ROWS_A_STATEMENT)
-      .map(({ id, placed }) => ({
-        networkId,
-        changedIn: version,
-        ordinal: placed.ordinal,
-        ...rowOf(table, id, placed.value),
-      }));
+    const rows = elements.slice(start, start + ROWS_A_STATEMENT).map(({ id, placed }) => ({
+      networkId,
+      changedIn: version,
+      ordinal: placed.ordinal,
+      ...rowOf(table, id, placed.value),
+    }));
     db.insert(table.table)
       .values(rows)
       .onConflictDoUpdate({

@@ -90,6 +90,7 @@ export function networkRoutes(service: NetworkService): Route[] {
 function downloadName(networkName: string): string {
   const plain = networkName
     .normalize('NFKD')
+    .replaceAll(/\p{Mark}/gu, '')
     .replaceAll(/[^A-Za-z0-9]+/g, '-')
     .replaceAll(/^-+|-+$/g, '')
     .slice(0, 80);

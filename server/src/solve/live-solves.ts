@@ -35,9 +35,8 @@ export class LiveSolves {
 
   /** Starts a solve where none is stored; one that failed is tried again. The newest version of a network wins. */
   changed(input: VersionedInput): void {
-    const overview = this.solves.overview(this.keyOf(input));
-    if (overview !== undefined && overview !== 'failed') return;
-    this.start(input.networkId, input).catch(this.options.report);
+    // the edit is stored already: whatever goes wrong here must not make its answer look like a refusal
+    this.startUnlessStored(input).catch(this.options.report);
   }
 
   /** What is stored for this input, waiting so long for a solve to end. Undefined: it has not ended yet. */
@@ -65,6 +64,11 @@ export class LiveSolves {
     if (overview === 'failed') return { state: 'failed' };
     const counts = overview.cases.find((verdicts) => verdicts.caseId === caseId)?.counts;
     return counts === undefined ? { state: 'failed' } : { state: 'solved', ...counts };
+  }
+
+  private async startUnlessStored(input: VersionedInput): Promise<void> {
+    const overview = this.solves.overview(this.keyOf(input));
+    if (overview === undefined || overview === 'failed') await this.start(input.networkId, input);
   }
 
   private start(key: string, input: VersionedInput): Promise<void> {

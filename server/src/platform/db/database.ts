@@ -32,8 +32,8 @@ const BUSY_TIMEOUT_MS = 5_000;
 export function openDatabase(path: string): Database {
   const sqlite = new Sqlite(path, { timeout: BUSY_TIMEOUT_MS });
   try {
-    sqlite.pragma('journal_mode = WAL');
     refuseDamaged(sqlite, path);
+    sqlite.pragma('journal_mode = WAL');
     const db = drizzle(sqlite, { schema });
     migrateWithoutForeignKeys(db, path);
     sqlite.pragma('foreign_keys = ON');
@@ -46,9 +46,20 @@ export function openDatabase(path: string): Database {
 }
 
 function refuseDamaged(sqlite: Sqlite.Database, path: string): void {
-  const answer: unknown = sqlite.pragma('quick_check(1)', { simple: true });
-  if (answer !== 'ok') {
-    throw new UnusableDatabaseError(`The database ${path} is damaged (${String(answer)}): put back its last backup`);
+  const damage = damageOf(sqlite);
+  if (damage === undefined) return;
+  throw new UnusableDatabaseError(`The database ${path} is damaged (${damage}): put back its last backup`);
+}
+
+/** What is wrong with the file, by SQLite's own words; a head that is none of SQLite's makes even the check throw. */
+function damageOf(sqlite: Sqlite.Database): string | undefined {
+  try {
+    const answer: unknown = sqlite.pragma('quick_check(1)', { simple: true });
+    return answer === 'ok' ? undefined : String(answer);
+  } catch (error) {
+    if (error instanceof Sqlite.SqliteError && ['SQLITE_NOTADB', 'SQLITE_CORRUPT'].includes(error.code))
+      return error.message;
+    throw error;
   }
 }
 
