@@ -13,7 +13,8 @@ import { ChangeDetectionStrategy, Component } from '@angular/core';
       overflow: hidden;
     }
     svg {
-      width: max(720px, 50vw);
+      width: 100%;
+      min-width: 560px;
       height: auto;
     }
     .ground {
