@@ -66,7 +66,8 @@ export class QuantityField {
   });
   protected readonly complaint = computed(() => {
     const parsed = this.parsed();
-    if (parsed?.ok === false) return parsed.reason + (parsed.suggestion === undefined ? '' : ` Did you mean ${parsed.suggestion}?`);
+    if (parsed?.ok === false)
+      return parsed.reason + (parsed.suggestion === undefined ? '' : ` Did you mean ${parsed.suggestion}?`);
     if (parsed === null && !this.optional() && this.touched())
       return `Give a value in ${unitsAccepted(this.kind()).slice(0, 4).join(', ')}.`;
     return '';

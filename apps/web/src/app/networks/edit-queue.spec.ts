@@ -1,0 +1,173 @@
+import { HttpTestingController, provideHttpClientTesting } from '@angular/common/http/testing';
+import { provideHttpClient } from '@angular/common/http';
+import { TestBed } from '@angular/core/testing';
+import type { Network, SavedBatch } from '@riseback/contracts';
+import { type EditOp, setOp, type NetworkDocument } from '@riseback/network';
+import { beforeEach, describe, expect, it } from 'vitest';
+import { EditQueue } from './edit-queue';
+
+const network: Network = {
+  id: 'n1',
+  siteId: 's1',
+  siteName: 'Site',
+  name: 'Trial',
+  version: 7,
+  role: 'designer',
+  permissions: ['view', 'draw'],
+  solverHash: 'hash 7',
+  document: {
+    name: 'Trial',
+    site: { atmosphericPressurePa: 101_325, ambientTemperatureK: 293.15 },
+    method: {
+      staticLift: 'rule',
+      liftRulePaM: 11_310.297,
+      dropCredit: 0,
+      friction: 'flashVapour',
+      voidFraction: 'rouhaniAxelsson',
+      coincidence: 'average',
+      acceleration: true,
+    },
+    limits: {},
+    nodes: [
+      { ordinal: 0, value: { id: 'J1', kind: 'junction', elevationM: 1 } },
+      { ordinal: 1, value: { id: 'J2', kind: 'junction', elevationM: 2 } },
+    ],
+    pipes: [],
+    trapModels: [],
+    cases: [],
+    overrides: [],
+    gauges: [],
+  },
+};
+const EDITS = '/api/networks/n1/edits';
+
+describe('EditQueue', () => {
+  let queue: EditQueue;
+  let server: HttpTestingController;
+
+  beforeEach(() => {
+    TestBed.configureTestingModule({ providers: [EditQueue, provideHttpClient(), provideHttpClientTesting()] });
+    queue = TestBed.inject(EditQueue);
+    server = TestBed.inject(HttpTestingController);
+    queue.open(network);
+  });
+
+  const present = (): NetworkDocument => {
+    const document = queue.present();
+    if (document === null) throw new Error('not open');
+    return document;
+  };
+  const elevation = (id: string, toM: number): EditOp => setOp(present(), 'nodes', id, 'elevationM', toM);
+  const elevationOf = (id: string) => present().nodes.get(id)?.value.elevationM;
+  /** Lets the queue's awaits run. */
+  const settle = () => new Promise((resolve) => setTimeout(resolve));
+
+  it('shows an edit at once and says saved only after the server’s word', async () => {
+    expect(queue.add('elevation of J1', [elevation('J1', 3)]).ok).toBe(true);
+    expect(elevationOf('J1')).toBe(3);
+    expect(queue.saveState()).toBe('saving');
+    const request = server.expectOne(EDITS);
+    expect(request.request.headers.get('If-Match')).toBe('"7"');
+    request.flush({ version: 8, solverHash: 'hash 8' });
+    await settle();
+    expect(queue.saveState()).toBe('saved');
+    expect(queue.version()).toBe(8);
+    expect(queue.solverHash()).toBe('hash 8');
+  });
+
+  it('keeps one batch in flight and sends the next on the new version', async () => {
+    queue.add('first', [elevation('J1', 3)]);
+    queue.add('second', [elevation('J2', 4)]);
+    server.expectOne(EDITS).flush({ version: 8, solverHash: 'h' });
+    await settle();
+    const second = server.expectOne(EDITS);
+    expect(second.request.headers.get('If-Match')).toBe('"8"');
+    second.flush({ version: 9, solverHash: 'h' });
+    await settle();
+    expect(queue.pendingCount()).toBe(0);
+  });
+
+  it('puts another person’s edit under ours when they touched something else', async () => {
+    queue.add('mine', [elevation('J1', 3)]);
+    server
+      .expectOne(EDITS)
+      .flush(staleAnswer([{ op: 'set', in: 'nodes', id: 'J2', key: 'elevationM', from: 2, to: 20 }]), {
+        status: 412,
+        statusText: 'Precondition Failed',
+      });
+    await settle();
+    expect([elevationOf('J1'), elevationOf('J2')]).toEqual([3, 20]);
+    const again = server.expectOne(EDITS);
+    expect(again.request.headers.get('If-Match')).toBe('"8"');
+    again.flush({ version: 9, solverHash: 'h' });
+    await settle();
+    expect(queue.saveState()).toBe('saved');
+  });
+
+  it('keeps what the person wanted in sight when another changed the same thing', async () => {
+    queue.add('mine', [elevation('J1', 3)]);
+    server
+      .expectOne(EDITS)
+      .flush(staleAnswer([{ op: 'set', in: 'nodes', id: 'J1', key: 'elevationM', from: 1, to: 30 }]), {
+        status: 412,
+        statusText: 'Precondition Failed',
+      });
+    await settle();
+    expect(elevationOf('J1')).toBe(30);
+    expect(queue.refused().map(({ batch }) => batch.label)).toEqual(['mine']);
+    expect(queue.refused()[0]?.reasons[0]).toContain('Ada Other');
+  });
+
+  it('keeps the edit through a failing server and sends the same batch again', async () => {
+    queue.add('mine', [elevation('J1', 3)]);
+    const first = server.expectOne(EDITS);
+    const { batchId } = first.request.body as { batchId: string };
+    first.flush({ type: 'about:blank', title: 'Broken', status: 500 }, { status: 500, statusText: 'Error' });
+    await settle();
+    expect(queue.saveState()).toBe('notSaved');
+    expect(elevationOf('J1')).toBe(3);
+    queue.retry();
+    const second = server.expectOne(EDITS);
+    expect((second.request.body as { batchId: string }).batchId).toBe(batchId);
+    second.flush({ version: 8, solverHash: 'h' });
+    await settle();
+    expect(queue.saveState()).toBe('saved');
+  });
+
+  it('takes an edit that the server refuses out again and says why', async () => {
+    queue.add('mine', [elevation('J1', 3)]);
+    server
+      .expectOne(EDITS)
+      .flush(
+        { type: '/problems/forbidden', title: 'Forbidden', status: 403, detail: 'Ask a designer.' },
+        { status: 403, statusText: 'Forbidden' },
+      );
+    await settle();
+    expect(elevationOf('J1')).toBe(1);
+    expect(queue.refused()[0]?.reasons).toEqual(['Ask a designer.']);
+  });
+
+  it('refuses on the spot what the reducer refuses, and sends nothing', () => {
+    expect(queue.add('bad', [{ op: 'set', in: 'nodes', id: 'J9', key: 'elevationM', from: 1, to: 2 }]).ok).toBe(false);
+    server.expectNone(EDITS);
+  });
+});
+
+function staleAnswer(ops: EditOp[]) {
+  const batch: SavedBatch = {
+    version: 8,
+    batchId: crypto.randomUUID(),
+    personId: 'p2',
+    personName: 'Ada Other',
+    at: '2026-03-01T08:00:00.000Z',
+    label: 'theirs',
+    ops,
+  };
+  return {
+    type: '/problems/stale-version',
+    title: 'Changed meanwhile',
+    status: 412,
+    currentVersion: 8,
+    batches: [batch],
+  };
+}
