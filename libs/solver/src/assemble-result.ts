@@ -1,9 +1,10 @@
 import { boreAreaM2 } from '@riseback/hydraulics';
 import type { NetworkFile, TrapModel } from '@riseback/network';
+import type { SaturationState } from '@riseback/steam';
 import type { LimitsInForce } from './check-limits';
-import { naming } from './element-failure';
+import { atElement } from './element-failure';
 import { enthalpyAlong, type FlowAndEnergy } from './flow-and-energy';
-import { fluidStateAt, vapourFraction, type FluidState } from './fluid-state';
+import { fluidStateAt, thermodynamicQuality, vapourFraction, type FluidState } from './fluid-state';
 import type { OperatingNode } from './operating-case';
 import { checkPipe, vesselCannotDrain } from './pipe-checks';
 import type { PipeGeometry } from './pipe-geometry';
@@ -71,13 +72,18 @@ function upstreamEnds({ tree, file }: Solved): Int32Array {
 function nodeResult(solved: Solved, index: number): NodeResult {
   const { file, flows, walk } = solved;
   const node = file.nodes[index] as NetworkFile['nodes'][number];
-  const state = naming('node', node, index, () => stateAt(solved, index, flows.enthalpyJKg[index] as number));
+  let state: FluidState;
+  try {
+    state = stateAt(solved, index, flows.enthalpyJKg[index] as number);
+  } catch (error) {
+    throw atElement('node', node, index, error);
+  }
   return {
     id: node.id,
     pressurePa: walk.pressurePa[index] as number,
     temperatureK: state.temperatureK,
     enthalpyJKg: flows.enthalpyJKg[index] as number,
-    quality: vapourFraction(state),
+    quality: vapourFraction(state.quality),
     massFlowKgS: flows.massFlowKgS[index] as number,
   };
 }
@@ -90,11 +96,15 @@ function pipeResult(solved: Solved, index: number, upstream: number): PipeResult
   if (pipe === undefined || marched === undefined || geometry === undefined) return undefined;
   const flow = pipeFlow(upstream, geometry, solved.flows);
   const below = tree.drainsTo[upstream] as number;
-  const inlet = naming('pipe', pipe, index, () => stateAt(solved, upstream, flow.inletEnthalpyJKg));
-  const outlet = naming('pipe', pipe, index, () => stateAt(solved, below, enthalpyAlong(flow, geometry.lengthM)));
+  let outlet: FluidState;
+  try {
+    outlet = stateAt(solved, below, enthalpyAlong(flow, geometry.lengthM));
+  } catch (error) {
+    throw atElement('pipe', pipe, index, error);
+  }
   const massFlowKgS = flow.massFlowKgS === 0 ? 0 : flow.massFlowKgS * (tree.arrow[index] as number);
   const massFlux = massFlowKgS / boreAreaM2(geometry.insideDiameterM);
-  const quality = vapourFraction(outlet);
+  const quality = vapourFraction(outlet.quality);
   return {
     id: pipe.id,
     massFlowKgS,
@@ -103,17 +113,21 @@ function pipeResult(solved: Solved, index: number, upstream: number): PipeResult
     staticPa: marched.staticPa,
     frictionPa: marched.frictionPa,
     flashPa: marched.flashPa,
-    upstreamQuality: vapourFraction(inlet),
+    upstreamQuality: vapourFraction(thermodynamicQuality(saturationAt(solved, upstream), flow.inletEnthalpyJKg)),
     downstreamQuality: quality,
     liquidVelocityMS: massFlux / outlet.liquidDensityKgM3,
     mixtureVelocityMS: massFlux * (quality / outlet.vapourDensityKgM3 + (1 - quality) / outlet.liquidDensityKgM3),
   };
 }
 
-function stateAt({ walk }: Solved, index: number, enthalpyJKg: number): FluidState {
+function stateAt(solved: Solved, index: number, enthalpyJKg: number): FluidState {
+  return fluidStateAt(saturationAt(solved, index), enthalpyJKg);
+}
+
+function saturationAt({ walk }: Solved, index: number): SaturationState {
   const saturation = walk.saturation[index];
   if (saturation === undefined) throw new Error(`The walk left no state at node ${String(index)}`);
-  return fluidStateAt(saturation, enthalpyJKg);
+  return saturation;
 }
 
 function trapResult(

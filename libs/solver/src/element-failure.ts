@@ -21,17 +21,16 @@ export class ElementFailure extends Error {
 
 const COLLECTION = { node: 'nodes', pipe: 'pipes' } as const;
 
-/** Runs a computation for one element, so that a failure in it carries the element's name. Bugs pass through as they are. */
-export function naming<T>(
+/**
+ * What to throw where computing failed at an element: a failure that names it, or the error itself where it is a bug.
+ * Meant for a catch clause: `throw atElement('pipe', pipe, index, error)`.
+ */
+export function atElement(
   kind: keyof typeof COLLECTION,
   element: { readonly id: string },
   index: number,
-  compute: () => T,
-): T {
-  try {
-    return compute();
-  } catch (error) {
-    if (!(error instanceof SteamRangeError || error instanceof NoConvergenceError)) throw error;
-    throw new ElementFailure(element.id, `/${COLLECTION[kind]}/${index}`, error);
-  }
+  error: unknown,
+): unknown {
+  if (!(error instanceof SteamRangeError || error instanceof NoConvergenceError)) return error;
+  return new ElementFailure(element.id, `/${COLLECTION[kind]}/${index}`, error);
 }

@@ -1,5 +1,5 @@
 import { liquidAtTemperature, saturationPressurePa, saturationState, saturationTemperatureK } from '@riseback/steam';
-import { naming } from './element-failure';
+import { atElement } from './element-failure';
 import type { OperatingNode } from './operating-case';
 import type { PipeGeometry } from './pipe-geometry';
 import type { ReturnTree } from './return-tree';
@@ -47,8 +47,13 @@ export function flowAndEnergy(
     enthalpyFlowW[index] = (enthalpyFlowW[index] as number) + flowKgS * h;
   };
   for (const index of tree.upstreamFirst) {
-    const source = sourceAt(index);
-    if (source) add(index, source.flowKgS, source.enthalpyJKg);
+    const node = nodes[index] ?? nodes[tree.vesselOfOutlet[index - nodes.length] as number];
+    if (node === undefined) continue;
+    try {
+      addSource(index, node);
+    } catch (error) {
+      throw atElement('node', node.node, nodes.indexOf(node), error);
+    }
     const flow = massFlowKgS[index] as number;
     const h = flow > 0 ? (enthalpyFlowW[index] as number) / flow : ambientEnthalpyJKg;
     enthalpyJKg[index] = h;
@@ -62,32 +67,22 @@ export function flowAndEnergy(
   }
   return { massFlowKgS, enthalpyJKg };
 
-  function sourceAt(index: number): { flowKgS: number; enthalpyJKg: number } | undefined {
-    const vessel = tree.vesselOfOutlet[index - nodes.length];
-    if (vessel !== undefined) return drainOfVessel(vessel);
-    const node = nodes[index];
-    if (node?.kind === 'trap') return { flowKgS: node.loadKgS, enthalpyJKg: trapEnthalpy(node, index) };
-    if (node?.kind !== 'pumpedInlet') return undefined;
-    const { temperatureK } = node.node;
-    return {
-      flowKgS: node.flowKgS,
-      enthalpyJKg: naming('node', node.node, index, () => liquidEnthalpyJKg(temperatureK)),
-    };
+  function addSource(index: number, node: OperatingNode): void {
+    if (node.kind === 'trap') {
+      add(index, node.loadKgS, trapEnthalpyJKg(node.inletPressurePa, node.node.subcoolingK));
+    } else if (node.kind === 'pumpedInlet') {
+      add(index, node.flowKgS, liquidEnthalpyJKg(node.node.temperatureK));
+    } else if (node.kind === 'fixedPressure' && index >= nodes.length) {
+      addDrain(index, tree.vesselOfOutlet[index - nodes.length] as number, node.pressurePa);
+    }
   }
 
-  function trapEnthalpy({ node, inletPressurePa }: Extract<OperatingNode, { kind: 'trap' }>, index: number): number {
-    return naming('node', node, index, () => trapEnthalpyJKg(inletPressurePa, node.subcoolingK));
-  }
-
-  function drainOfVessel(vessel: number): { flowKgS: number; enthalpyJKg: number } | undefined {
-    const node = nodes[vessel];
-    if (node?.kind !== 'fixedPressure') return undefined;
+  function addDrain(outlet: number, vessel: number, pressurePa: number): void {
     const inflow = massFlowKgS[vessel] as number;
     const h = enthalpyJKg[vessel] as number;
-    const saturation = naming('node', node.node, vessel, () => saturationState(node.pressurePa));
-    const { liquidEnthalpyJKg: liquid, vapourEnthalpyJKg: vapour } = saturation;
-    if (h <= liquid) return { flowKgS: inflow, enthalpyJKg: h };
-    return { flowKgS: inflow * Math.max(0, (vapour - h) / (vapour - liquid)), enthalpyJKg: liquid };
+    const { liquidEnthalpyJKg: liquid, vapourEnthalpyJKg: vapour } = saturationState(pressurePa);
+    if (h <= liquid) add(outlet, inflow, h);
+    else add(outlet, inflow * Math.max(0, (vapour - h) / (vapour - liquid)), liquid);
   }
 }
 

@@ -1,9 +1,9 @@
-import { liquidAtEnthalpy, saturationState, vapourAtEnthalpy, type SaturationState } from '@riseback/steam';
+import { liquidAtEnthalpy, vapourAtEnthalpy, type SaturationState } from '@riseback/steam';
 
 /** Condensate, flash steam or both at a pressure and an enthalpy, in equilibrium. */
 export interface FluidState {
   readonly saturation: SaturationState;
-  /** Thermodynamic x = (h − h_l)/(h_g − h_l): at or below 0 subcooled, above 1 superheated. */
+  /** Thermodynamic quality: not held within 0 and 1. */
   readonly quality: number;
   readonly temperatureK: number;
   readonly liquidDensityKgM3: number;
@@ -12,15 +12,13 @@ export interface FluidState {
   readonly vapourViscosityPaS: number;
 }
 
-/** @throws SteamRangeError outside the steam properties */
-export function fluidState(pressurePa: number, enthalpyJKg: number): FluidState {
-  return fluidStateAt(saturationState(pressurePa), enthalpyJKg);
-}
-
-/** The same where the saturation state is already known. The phase that is not there has its saturation properties. */
+/**
+ * The state at an enthalpy, from the saturation state at its pressure. The phase that is not there has its saturation properties.
+ * @throws SteamRangeError outside the steam properties
+ */
 export function fluidStateAt(saturation: SaturationState, enthalpyJKg: number): FluidState {
-  const { pressurePa, liquidEnthalpyJKg, vapourEnthalpyJKg } = saturation;
-  const quality = (enthalpyJKg - liquidEnthalpyJKg) / (vapourEnthalpyJKg - liquidEnthalpyJKg);
+  const { pressurePa } = saturation;
+  const quality = thermodynamicQuality(saturation, enthalpyJKg);
   const liquid = quality < 0 ? liquidAtEnthalpy(pressurePa, enthalpyJKg) : undefined;
   const vapour = quality > 1 ? vapourAtEnthalpy(pressurePa, enthalpyJKg) : undefined;
   return {
@@ -35,6 +33,12 @@ export function fluidStateAt(saturation: SaturationState, enthalpyJKg: number): 
 }
 
 /** Mass fraction of vapour: x within 0 and 1. */
-export function vapourFraction({ quality }: FluidState): number {
+export function vapourFraction(quality: number): number {
   return Math.min(1, Math.max(0, quality));
+}
+
+/** x = (h − h_l)/(h_g − h_l): at or below 0 subcooled, above 1 superheated. */
+export function thermodynamicQuality(saturation: SaturationState, enthalpyJKg: number): number {
+  const { liquidEnthalpyJKg, vapourEnthalpyJKg } = saturation;
+  return (enthalpyJKg - liquidEnthalpyJKg) / (vapourEnthalpyJKg - liquidEnthalpyJKg);
 }

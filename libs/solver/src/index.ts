@@ -3,6 +3,7 @@ export { CHECK_LIMITS, limitsInForce, type CheckLimit, type LimitsInForce } from
 export { plainText } from './finding-text';
 export { liftProfile, type ProfilePoint } from './lift-profile';
 export { modulatedInletPressurePa } from './modulating-inlet';
+export type { GradientEvaluation } from './pipe-march';
 export type { ProblemError, Refusal } from './refusal';
 export { isRefusal, solveNetwork, type SolveOptions } from './solve-network';
 export type {

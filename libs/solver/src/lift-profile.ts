@@ -1,7 +1,7 @@
 import type { NetworkFile } from '@riseback/network';
 import { ambientLiquidEnthalpyJKg, type PipeFlow } from './flow-and-energy';
 import { piecesAgainstFlow } from './pipe-geometry';
-import { MARCH_TOLERANCE_PA, marchPipe } from './pipe-march';
+import { MARCH_TOLERANCE_PA, PipeMarcher } from './pipe-march';
 import type { SolveResult } from './solve-result';
 import { walkOfTrap, type WalkStep } from './walk-of-trap';
 
@@ -59,13 +59,11 @@ function piecesWithPressure(
 ): PieceWithPressure[] {
   const pieces: PieceWithPressure[] = [];
   let outletPressurePa = result.downstreamPressurePa;
-  marchPipe(geometry, flow, piecesAgainstFlow(geometry.pieces, withArrow), outletPressurePa, {
-    method: file.method,
-    tolerancePa: MARCH_TOLERANCE_PA,
-    onPieceEnd: ({ lengthM, riseM }, inletPressurePa) => {
-      pieces.push({ lengthM, riseM, outletPressurePa });
-      outletPressurePa = inletPressurePa;
-    },
+  const marcher = new PipeMarcher({ method: file.method, tolerancePa: MARCH_TOLERANCE_PA });
+  const against = piecesAgainstFlow(geometry.pieces, withArrow);
+  marcher.march(geometry, flow, against, outletPressurePa, ({ lengthM, riseM }, inletPressurePa) => {
+    pieces.push({ lengthM, riseM, outletPressurePa });
+    outletPressurePa = inletPressurePa;
   });
   return pieces.reverse();
 }

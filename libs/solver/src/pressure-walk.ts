@@ -1,11 +1,11 @@
 import type { NetworkFile } from '@riseback/network';
 import { saturationState, type SaturationState } from '@riseback/steam';
-import { naming } from './element-failure';
+import { atElement } from './element-failure';
 import type { FlowAndEnergy, PipeFlow } from './flow-and-energy';
 import { handCheckLiftPa } from './hand-check';
 import type { OperatingNode } from './operating-case';
 import { piecesAgainstFlow, type PipeGeometry } from './pipe-geometry';
-import { marchPipe, type MarchedPipe, type MarchOptions } from './pipe-march';
+import { PipeMarcher, type MarchedPipe, type MarchOptions } from './pipe-march';
 import type { ReturnTree } from './return-tree';
 
 /** What stands at each node of the tree above the end of its walk, by index; untouched where no fixed pressure is reached. */
@@ -35,18 +35,30 @@ export function pressureWalk(
   const byNode = (): Float64Array => new Float64Array(tree.nodeCount);
   const [pressurePa, staticPa, frictionPa, flashPa, handCheckPa] = [byNode(), byNode(), byNode(), byNode(), byNode()];
   const saturation: (SaturationState | undefined)[] = new Array<SaturationState | undefined>(tree.nodeCount);
+  const marcher = new PipeMarcher(options);
   const marched: (MarchedPipe | undefined)[] = new Array<MarchedPipe | undefined>(file.pipes.length);
 
   for (const index of tree.downstreamFirst) {
     const end = nodes[index];
     if (end?.kind === 'fixedPressure') {
-      pressurePa[index] = end.pressurePa;
-      saturation[index] = naming('node', end.node, index, () => saturationState(end.pressurePa));
+      standAt(end, index);
     } else {
       walkUpTo(index);
     }
   }
   return { saturation, pressurePa, staticPa, frictionPa, flashPa, handCheckPa, marched };
+
+  function standAt(
+    { node, pressurePa: given }: Extract<OperatingNode, { kind: 'fixedPressure' }>,
+    index: number,
+  ): void {
+    pressurePa[index] = given;
+    try {
+      saturation[index] = saturationState(given);
+    } catch (error) {
+      throw atElement('node', node, index, error);
+    }
+  }
 
   function walkUpTo(index: number): void {
     const pipeIndex = tree.outPipe[index] as number;
@@ -56,12 +68,13 @@ export function pressureWalk(
     const below = tree.drainsTo[index] as number;
     const pieces = piecesAgainstFlow(geometry.pieces, tree.arrow[pipeIndex] === 1);
     const flow = pipeFlow(index, geometry, flows);
-    const outletPressurePa = pressurePa[below] as number;
-    const up = naming('pipe', pipe, pipeIndex, () => {
-      const run = marchPipe(geometry, flow, pieces, outletPressurePa, options);
-      saturation[index] = saturationState(run.upstreamPressurePa);
-      return run;
-    });
+    let up: MarchedPipe;
+    try {
+      up = marcher.march(geometry, flow, pieces, pressurePa[below] as number);
+      saturation[index] = saturationState(up.upstreamPressurePa);
+    } catch (error) {
+      throw atElement('pipe', pipe, pipeIndex, error);
+    }
     marched[pipeIndex] = up;
     pressurePa[index] = up.upstreamPressurePa;
     staticPa[index] = (staticPa[below] as number) + up.staticPa;

@@ -1,11 +1,11 @@
 import type { FileCase, NetworkFile } from '@riseback/network';
 import { assembleResult } from './assemble-result';
 import { limitsInForce } from './check-limits';
-import { ElementFailure, naming } from './element-failure';
+import { atElement, ElementFailure } from './element-failure';
 import { ambientLiquidEnthalpyJKg, flowAndEnergy } from './flow-and-energy';
 import { findCase, operatingNode, type OperatingNode } from './operating-case';
 import { pipeGeometries } from './pipe-geometry';
-import { MARCH_TOLERANCE_PA } from './pipe-march';
+import { MARCH_TOLERANCE_PA, type GradientEvaluation } from './pipe-march';
 import { pressureWalk } from './pressure-walk';
 import { noSolution, notAvailable, notAvailableYet, unknownCase, unsolvable, type Refusal } from './refusal';
 import { returnTree } from './return-tree';
@@ -19,6 +19,8 @@ export interface SolveOptions {
   readonly partial: boolean;
   /** Error allowed in each step of the march, Pa. */
   readonly marchTolerancePa?: number;
+  /** Told of each gradient evaluated. */
+  readonly onGradient?: (evaluation: GradientEvaluation) => void;
 }
 
 /**
@@ -42,7 +44,11 @@ export function solveNetwork(file: NetworkFile, options: SolveOptions): SolveRes
     const nodes = operatingNodes(file, operatingCase);
     const ambientEnthalpyJKg = ambientLiquidEnthalpyJKg(file.site.ambientTemperatureK);
     const flows = { ...flowAndEnergy(tree, nodes, geometries, ambientEnthalpyJKg), ambientEnthalpyJKg };
-    const march = { method: file.method, tolerancePa: options.marchTolerancePa ?? MARCH_TOLERANCE_PA };
+    const march = {
+      method: file.method,
+      tolerancePa: options.marchTolerancePa ?? MARCH_TOLERANCE_PA,
+      onGradient: options.onGradient,
+    };
     const walk = pressureWalk(file, tree, nodes, geometries, flows, march);
     return assembleResult({
       file,
@@ -67,11 +73,13 @@ export function isRefusal(outcome: SolveResult | Refusal): outcome is Refusal {
 
 function operatingNodes(file: NetworkFile, operatingCase: FileCase): OperatingNode[] {
   const overrides = new Map(operatingCase.overrides.map((override) => [override.node, override]));
-  return file.nodes.map((node, i) =>
-    naming('node', node, i, () =>
-      operatingNode(node, file.site.atmosphericPressurePa, operatingCase, overrides.get(node.id)),
-    ),
-  );
+  return file.nodes.map((node, i) => {
+    try {
+      return operatingNode(node, file.site.atmosphericPressurePa, operatingCase, overrides.get(node.id));
+    } catch (error) {
+      throw atElement('node', node, i, error);
+    }
+  });
 }
 
 function unsolved(operatingCase: FileCase, { element, pointer, message }: ElementFailure): SolveResult {

@@ -1,0 +1,161 @@
+import { performance } from 'node:perf_hooks';
+import { flashVapourLiquidGradient, flashVapourSteamGradient } from '@riseback/hydraulics';
+import { readNetworkFile, type NetworkFile } from '@riseback/network';
+import { isRefusal, solveNetwork, type GradientEvaluation, type SolveOptions } from '@riseback/solver';
+import { saturationState, saturationStateDirect } from '@riseback/steam';
+
+const PIPES = [100, 200, 500, 1000, 2000, 5000, 10_000, 20_000] as const;
+const RATIO_PIPES = 2000;
+const REPEATS = 15;
+
+/** What the solver costs, each figure as a ratio within this run, so that it means the same on any machine. */
+export function* solverBench(): Generator<string> {
+  yield* overPipes();
+  yield saturationRatio();
+  yield* wholeSolveRatio();
+}
+
+function* overPipes(): Generator<string> {
+  const [first] = PIPES;
+  solve(plant(RATIO_PIPES));
+  const times = PIPES.map((pipes) => {
+    const file = plant(pipes);
+    return leastMs(() => solve(file));
+  });
+  const [reference = NaN] = times;
+  yield 'Whole solve over pipes (time of 100 pipes = 1)';
+  for (const [i, pipes] of PIPES.entries()) {
+    const ratio = (times[i] ?? NaN) / reference;
+    yield `  ${String(pipes).padStart(6)} pipes: ${ratio.toFixed(1).padStart(7)}, ${(ratio / (pipes / first)).toFixed(2)} per pipe`;
+  }
+  yield `  exponent of time over pipes: ${slopeOfLogs(PIPES, times).toFixed(2)} (goal: at most 1.1)`;
+}
+
+function saturationRatio(): string {
+  const pressures = Array.from({ length: 2000 }, (_, i) => 1e3 * 1e4 ** (i / 2000));
+  const sum = (state: typeof saturationState) => (): number =>
+    pressures.reduce((total, pressure) => total + state(pressure).liquidDensityKgM3, 0);
+  const ratio = leastMs(sum(saturationStateDirect)) / leastMs(sum(saturationState));
+  return `Saturation look-up: ${ratio.toFixed(1)} times as fast as the direct formulas (goal: 10)`;
+}
+
+function* wholeSolveRatio(): Generator<string> {
+  const file = plant(RATIO_PIPES);
+  const evaluations: GradientEvaluation[] = [];
+  solve(file, { onGradient: (evaluation) => evaluations.push(evaluation) });
+  const states = file.nodes.map(() => 1.5e5);
+  const flows = evaluations.map(flashingFlow);
+  const whole = (): void => solve(file);
+  const lookUps = (): number => {
+    let sum = 0;
+    for (const { pressurePa } of evaluations) sum += saturationState(pressurePa).vapourDensityKgM3;
+    for (const pressurePa of states) sum += saturationState(pressurePa).vapourDensityKgM3;
+    return sum;
+  };
+  const friction = (): number => {
+    let sum = 0;
+    for (const flow of flows) sum += flashVapourLiquidGradient(flow) + flashVapourSteamGradient(flow);
+    return sum;
+  };
+  const [wholeMs = NaN, lookUpsMs = NaN, frictionMs = NaN] = leastTimesMs([whole, lookUps, friction]);
+  const bareMs = lookUpsMs + frictionMs;
+  yield `Whole solve of ${RATIO_PIPES} pipes: ${(wholeMs / bareMs).toFixed(2)} times its ${evaluations.length} gradients alone (goal: at most 2)`;
+  yield `  of the bare sum, look-ups ${percent(lookUpsMs / bareMs)}, friction ${percent(frictionMs / bareMs)}`;
+}
+
+function flashingFlow({ pipe, massFlowKgS, pressurePa, enthalpyJKg, riseSlope }: GradientEvaluation) {
+  const saturation = saturationState(pressurePa);
+  const { liquidEnthalpyJKg, vapourEnthalpyJKg } = saturation;
+  const quality = (enthalpyJKg - liquidEnthalpyJKg) / (vapourEnthalpyJKg - liquidEnthalpyJKg);
+  return { ...pipe, massFlowKgS, quality, saturation, fallSlope: -riseSlope };
+}
+
+function solve(file: NetworkFile, options: Partial<SolveOptions> = {}): void {
+  const outcome = solveNetwork(file, { partial: false, ...options });
+  if (isRefusal(outcome) || !outcome.converged) throw new Error('the bench network was not solved');
+}
+
+/** Halls of 40 pipes, each a header with a trap at every junction and a riser at its end, all led to one receiver. */
+function plant(pipeCount: number): NetworkFile {
+  const nodes: object[] = [{ id: 'R', kind: 'receiver', elevationM: 4, pressurePa: 120_000 }];
+  const pipes: object[] = [];
+  for (let i = 0; i < pipeCount / 2; i++) {
+    const inHall = i % 20;
+    const [junction, trap] = [`J${i}`, `T${i}`];
+    nodes.push({ id: junction, kind: 'junction', elevationM: 0.5 });
+    nodes.push({
+      id: trap,
+      kind: 'trap',
+      elevationM: 1,
+      inletPressurePa: 5e5 + (i % 7) * 1e5,
+      loadKgS: 0.01 + (i % 5) * 0.004,
+      trapType: 'thermodynamic',
+      trapModel: 'M1',
+      maximumPressurePa: 1.2e6,
+    });
+    const riser = {
+      to: 'R',
+      lengthM: 20,
+      route: [
+        { lengthM: 5, riseM: 3.5 },
+        { lengthM: 15, riseM: 0 },
+      ],
+    };
+    const header = { to: `J${i - 1}`, lengthM: 8 };
+    pipes.push({
+      id: `H${i}`,
+      from: junction,
+      insideDiameterM: 0.08,
+      lossCoefficient: 1,
+      ...(inHall === 0 ? riser : header),
+    });
+    pipes.push({
+      id: `B${i}`,
+      from: trap,
+      to: junction,
+      lengthM: 3,
+      size: { nps: '1', schedule: '80' },
+      lossCoefficient: 2,
+    });
+  }
+  const capacity = [
+    { differentialPa: 1e5, flowKgS: 0.1 },
+    { differentialPa: 1e6, flowKgS: 0.3 },
+  ];
+  const trapModels = [
+    { id: 'M1', name: 'Model', maximumDifferentialPa: 2e6, bodyPressurePa: 2e6, bodyTemperatureK: 500, capacity },
+  ];
+  const read = readNetworkFile({ format: 'riseback-network', version: 1, name: 'Bench', nodes, pipes, trapModels });
+  if (!read.ok) throw new Error(JSON.stringify(read.errors));
+  return read.file;
+}
+
+function leastMs(work: () => unknown): number {
+  return leastTimesMs([work])[0] ?? NaN;
+}
+
+/** The least of several timings, taken in turn: other work on the machine only ever adds, and adds to all alike. */
+function leastTimesMs(works: readonly (() => unknown)[]): number[] {
+  const least = works.map(() => Infinity);
+  for (let repeat = 0; repeat < REPEATS; repeat++) {
+    for (const [i, work] of works.entries()) {
+      const start = performance.now();
+      work();
+      least[i] = Math.min(least[i] ?? NaN, performance.now() - start);
+    }
+  }
+  return least;
+}
+
+/** Slope of the least-squares line through the logarithms. */
+function slopeOfLogs(xs: readonly number[], ys: readonly number[]): number {
+  const [lx, ly] = [xs.map(Math.log), ys.map(Math.log)];
+  const mean = (values: readonly number[]): number => values.reduce((a, b) => a + b, 0) / values.length;
+  const [mx, my] = [mean(lx), mean(ly)];
+  const over = lx.reduce((sum, x, i) => sum + (x - mx) * ((ly[i] ?? NaN) - my), 0);
+  return over / lx.reduce((sum, x) => sum + (x - mx) ** 2, 0);
+}
+
+function percent(share: number): string {
+  return `${(share * 100).toFixed(0)} %`;
+}
