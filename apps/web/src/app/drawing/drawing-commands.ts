@@ -1,0 +1,182 @@
+import { inject, Injectable } from '@angular/core';
+import {
+  type EditOp,
+  newElementId,
+  nextOrdinal,
+  type NetworkDocument,
+  type NodeKind,
+  type Position,
+  removalOps,
+  setOp,
+  withDependents,
+} from '@riseback/network';
+import { NetworkStore } from '../networks/network-store';
+import { DrawingScene } from './drawing-scene';
+import { DrawingState, IDLE } from './drawing-state';
+import { NOTHING_DISPLACED } from './model/drawn-network';
+import { KIND_WORDS, nameOf } from './model/element-words';
+import { downstreamOf } from './model/navigation';
+
+/** Prefixes of new ids, by kind. */
+const ID_PREFIXES: Readonly<Record<NodeKind | 'pipe', string>> = {
+  trap: 'T',
+  junction: 'J',
+  receiver: 'R',
+  flashVessel: 'V',
+  pumpedInlet: 'P',
+  pipe: 'L',
+};
+
+/** The edits that the drawing makes, each one batch and one step of undo. In the drawing page's `providers`. */
+@Injectable()
+export class DrawingCommands {
+  private readonly store = inject(NetworkStore);
+  private readonly scene = inject(DrawingScene);
+  private readonly state = inject(DrawingState);
+
+  /** Adds an element with the fields that were asked for. Its id, or null when it was refused. */
+  add(kind: NodeKind | 'pipe', fields: Readonly<Record<string, unknown>>): string | null {
+    const document = this.store.document();
+    if (document === null) return null;
+    const collection = kind === 'pipe' ? 'pipes' : 'nodes';
+    const id = newElementId(document, ID_PREFIXES[kind]);
+    const value = kind === 'pipe' ? { id, ...fields } : { id, kind, ...fields };
+    const tag = typeof fields['tag'] === 'string' ? fields['tag'] : id;
+    const added = this.store.edit(`${KIND_WORDS[kind]} ${tag} placed`, [
+      { op: 'add', in: collection, ordinal: nextOrdinal(document, collection), value },
+    ]);
+    if (!added) return null;
+    this.state.select(id);
+    this.state.focusOn(id);
+    this.state.say(`${this.scene.nameOf(id)} added`);
+    return id;
+  }
+
+  /** Sets one key of an element: one accepted field is one step of undo. */
+  set(id: string, key: string, to: unknown, what: string): boolean {
+    return this.setAll(id, { [key]: to }, what);
+  }
+
+  /** Sets keys that only make sense together (a receiver's pressure and its vent). */
+  setAll(id: string, values: Readonly<Record<string, unknown>>, what: string): boolean {
+    const document = this.store.document();
+    const place = document === null ? null : elementIn(document, id);
+    if (document === null || place === null) return false;
+    const ops = Object.entries(values)
+      .filter(([key, to]) => !sameValue(place.value[key], to))
+      .map(([key, to]) => setOp(document, place.collection, id, key, to));
+    return this.store.edit(`${what} of ${place.name}`.slice(0, 120), ops);
+  }
+
+  /** What would go along with a deletion, in words; empty when nothing does. */
+  goingAlong(ids: ReadonlySet<string>): string[] {
+    const document = this.store.document();
+    if (document === null) return [];
+    const going = withDependents(document, picked(document, ids));
+    const named = [...going.nodes, ...going.pipes]
+      .filter((id) => !ids.has(id))
+      .map((id) => {
+        const place = elementIn(document, id);
+        return place === null ? id : `${place.collection === 'pipes' ? 'pipe' : ''} ${place.name}`.trim();
+      });
+    const count = (number: number, one: string, many: string) => (number === 0 ? [] : [`${String(number)} ${number === 1 ? one : many}`]);
+    return [
+      ...named,
+      ...count(going.overrides.length, 'value set in a case', 'values set in cases'),
+      ...count(going.gauges.length, 'gauge', 'gauges'),
+    ];
+  }
+
+  /** Deletes the elements with what hangs on them; the keyboard goes to the neighbour downstream. */
+  remove(ids: ReadonlySet<string>): boolean {
+    const document = this.store.document();
+    if (document === null || ids.size === 0) return false;
+    const neighbour = this.neighbourBelow(ids);
+    const names = [...ids].map((id) => elementIn(document, id)?.name ?? id);
+    const [first = ''] = names;
+    const label = names.length === 1 ? `${first} deleted` : `${String(names.length)} elements deleted`;
+    if (!this.store.edit(label, removalOps(document, picked(document, ids)))) return false;
+    this.state.select();
+    this.state.focusOn(neighbour);
+    this.state.say(`${label}. Undo brings it back.`);
+    return true;
+  }
+
+  /** Sets down what was displaced: one batch, which changes the positions of nothing else. */
+  settle(): void {
+    const { nodes, bends } = this.state.displaced();
+    const document = this.store.document();
+    this.state.mode.set(IDLE);
+    if (document !== null) {
+      const ops: EditOp[] = [
+        ...[...nodes].filter(([id]) => document.nodes.has(id)).map(([id, at]) => setOp(document, 'nodes', id, 'position', { x: at.x, y: at.y })),
+        ...[...bends].filter(([id]) => document.pipes.has(id)).map(([id, points]) => setOp(document, 'pipes', id, 'bends', plain(points))),
+      ].filter((op) => !sameValue(op.from, op.to));
+      const [first] = [...nodes.keys(), ...bends.keys()];
+      const name = first === undefined ? '' : (elementIn(document, first)?.name ?? first);
+      const label = nodes.size > 1 ? `${String(nodes.size)} elements moved` : bends.size > 0 && nodes.size === 0 ? `bend of ${name} moved` : `${name} moved`;
+      if (ops.length > 0 && this.store.edit(label, ops)) this.state.say(label);
+    }
+    this.state.displaced.set(NOTHING_DISPLACED);
+  }
+
+  undo(): void {
+    const label = this.store.undoLabel();
+    this.afterStep(this.store.undo(), label === null ? 'Nothing to undo' : `Undone: ${label}`);
+  }
+
+  redo(): void {
+    const label = this.store.redoLabel();
+    this.afterStep(this.store.redo(), label === null ? 'Nothing to redo' : `Done again: ${label}`);
+  }
+
+  /** After undo and redo the keyboard is on what changed. */
+  private afterStep(touched: readonly string[] | null, words: string): void {
+    this.state.draft.set(null);
+    this.state.say(touched === null && this.store.lastRefusal().length > 0 ? `Not possible: ${this.store.lastRefusal().join(' ')}` : words);
+    const there = (touched ?? []).filter((id) => this.scene.has(id));
+    const [first] = there;
+    this.state.selection.update((selected) => new Set([...selected].filter((id) => this.scene.has(id))));
+    if (first === undefined) return;
+    this.state.select(...there);
+    this.state.focusOn(first);
+  }
+
+  private neighbourBelow(ids: ReadonlySet<string>): string | null {
+    const network = this.scene.settled();
+    const focused = this.state.focusId();
+    const start = focused !== null && ids.has(focused) ? focused : ([...ids][0] ?? null);
+    const seen = new Set<string>();
+    for (let here = start; here !== null && !seen.has(here); here = downstreamOf(network, here, this.scene.reversed) ?? null) {
+      seen.add(here);
+      // a pipe goes with its node, so the neighbour is the next node that stays
+      if (!ids.has(here) && network.nodes.has(here)) return here;
+    }
+    return [...network.nodes.keys()].find((id) => !ids.has(id)) ?? null;
+  }
+}
+
+interface PlaceInDocument {
+  readonly collection: 'nodes' | 'pipes';
+  readonly name: string;
+  readonly value: Readonly<Record<string, unknown>>;
+}
+
+function elementIn(document: NetworkDocument, id: string): PlaceInDocument | null {
+  const node = document.nodes.get(id)?.value;
+  if (node !== undefined) return { collection: 'nodes', name: nameOf(node), value: { ...node } };
+  const pipe = document.pipes.get(id)?.value;
+  return pipe === undefined ? null : { collection: 'pipes', name: nameOf(pipe), value: { ...pipe } };
+}
+
+function picked(document: NetworkDocument, ids: ReadonlySet<string>): { nodes: string[]; pipes: string[] } {
+  return { nodes: [...ids].filter((id) => document.nodes.has(id)), pipes: [...ids].filter((id) => document.pipes.has(id)) };
+}
+
+function plain(points: readonly Position[]): Position[] {
+  return points.map(({ x, y }) => ({ x, y }));
+}
+
+function sameValue(a: unknown, b: unknown): boolean {
+  return a === b || JSON.stringify(a) === JSON.stringify(b);
+}

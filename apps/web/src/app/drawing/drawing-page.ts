@@ -1,0 +1,92 @@
+import { ChangeDetectionStrategy, Component, computed, effect, inject, input, signal, untracked } from '@angular/core';
+import { Router } from '@angular/router';
+import type { Position } from '@riseback/network';
+import { NetworkStore } from '../networks/network-store';
+import { allFindings } from '../results/finding-list';
+import { FindingsList } from '../results/findings-list/findings-list';
+import { DrawingCommands } from './drawing-commands';
+import { DrawingScene } from './drawing-scene';
+import { DrawingState } from './drawing-state';
+import { DrawingTray } from './drawing-tray';
+import { EmptySheet } from './empty-sheet';
+import { Inspector } from './inspector/inspector';
+import { KeyList } from './key-list';
+import { zoneOf } from './model/sheet-zones';
+import { DeletePrompt } from './sheet/delete-prompt';
+import { DrawingSheet } from './sheet/drawing-sheet';
+import { NodePlacing } from './sheet/node-placing';
+import { SheetKeys } from './sheet/sheet-keys';
+import { TagFinder } from './tag-finder';
+
+/** The drawing of a network: sheet, tray, findings, inspector. Which element is looked at stands in the address. */
+@Component({
+  selector: 'app-drawing-page',
+  imports: [DrawingSheet, DrawingTray, EmptySheet, FindingsList, Inspector, KeyList, TagFinder],
+  providers: [DeletePrompt, DrawingCommands, DrawingScene, DrawingState, NodePlacing, SheetKeys],
+  changeDetection: ChangeDetectionStrategy.OnPush,
+  host: { '[class.no-inspector]': '!inspectorOpen()' },
+  templateUrl: './drawing-page.html',
+  styleUrl: './drawing-page.scss',
+})
+export class DrawingPage {
+  private readonly router = inject(Router);
+  protected readonly store = inject(NetworkStore);
+  protected readonly state = inject(DrawingState);
+  protected readonly scene = inject(DrawingScene);
+
+  /** From the address: the element looked at. */
+  readonly element = input<string>();
+
+  protected readonly findingsOpen = signal(true);
+  protected readonly inspectorOpen = signal(true);
+  protected readonly findings = computed(() => {
+    const document = this.store.document();
+    if (document === null) return [];
+    return allFindings({ document, topology: this.store.topology(), outcome: this.store.outcome(), units: this.store.units() });
+  });
+  protected readonly zoneAt = computed(() => {
+    const sheet = this.scene.sheet();
+    return (position: Position) => zoneOf(position, sheet);
+  });
+  protected readonly unsolved = computed(() => this.store.outcome() === null);
+  protected readonly currentId = computed(() => this.state.chosenId() ?? '');
+
+  constructor() {
+    effect(() => {
+      const wanted = this.element();
+      untracked(() => {
+        if (wanted !== undefined && wanted !== this.state.chosenId() && this.scene.has(wanted)) {
+          this.state.select(wanted);
+          this.state.focusId.set(wanted);
+        }
+      });
+    });
+    effect(() => {
+      const chosen = this.state.chosenId();
+      untracked(() => {
+        if ((this.element() ?? null) !== chosen) this.writeAddress(chosen);
+      });
+    });
+    effect(() => {
+      if (this.state.draft() !== null || this.state.fieldsAsked() > 0) this.inspectorOpen.set(true);
+    });
+  }
+
+  protected open(elementId: string): void {
+    if (!this.scene.has(elementId)) return;
+    this.state.select(elementId);
+    this.state.focusOn(elementId);
+  }
+
+  protected toggleFindings(): void {
+    this.findingsOpen.update((open) => !open);
+  }
+
+  protected toggleInspector(): void {
+    this.inspectorOpen.update((open) => !open);
+  }
+
+  private writeAddress(element: string | null): void {
+    void this.router.navigate([], { queryParams: { element }, queryParamsHandling: 'merge', replaceUrl: true });
+  }
+}

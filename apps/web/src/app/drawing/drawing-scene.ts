@@ -1,0 +1,85 @@
+import { computed, inject, Injectable } from '@angular/core';
+import type { SolveWarning } from '@riseback/contracts';
+import { NetworkStore } from '../networks/network-store';
+import { DrawingState } from './drawing-state';
+import { colourScale } from './model/colour-scale';
+import { drawnNetwork, EMPTY_DRAWING } from './model/drawn-network';
+import { type NodeView, nodeView, type PipeView, pipeView, type SceneResults } from './model/element-views';
+import { sheetAround } from './model/sheet-zones';
+
+/** The network as it is drawn: document, results and what the person does to it, joined. In the drawing page's `providers`. */
+@Injectable()
+export class DrawingScene {
+  private readonly store = inject(NetworkStore);
+  private readonly state = inject(DrawingState);
+
+  /** As the document has it. */
+  readonly settled = computed(() => {
+    const document = this.store.document();
+    return document === null ? EMPTY_DRAWING : drawnNetwork(document);
+  });
+  /** With what is being moved in its new place. */
+  readonly network = computed(() => {
+    const document = this.store.document();
+    const displaced = this.state.displaced();
+    const still = displaced.nodes.size === 0 && displaced.bends.size === 0;
+    return document === null || still ? this.settled() : drawnNetwork(document, displaced);
+  });
+  readonly empty = computed(() => this.settled().nodes.size === 0);
+  readonly sheet = computed(() => {
+    const { nodes, pipes } = this.settled();
+    return sheetAround([...[...nodes.values()].map(({ at }) => at), ...[...pipes.values()].flatMap(({ points }) => points)]);
+  });
+
+  readonly scale = computed(() => colourScale(this.state.colouredBy(), [...this.store.outcomes().values()], this.store.units()));
+
+  private readonly results = computed((): SceneResults => {
+    const warnings = new Map<string, SolveWarning[]>();
+    for (const warning of this.store.result()?.warnings ?? []) {
+      warnings.set(warning.element, [...(warnings.get(warning.element) ?? []), warning]);
+    }
+    const isolated = new Set<string>();
+    for (const [id, { value }] of this.store.document()?.overrides ?? []) {
+      if (value.state === 'isolated' && id.startsWith(`${this.store.caseId()}/`)) isolated.add(value.node);
+    }
+    return { traps: this.store.trapResults(), nodes: this.store.nodeResults(), pipes: this.store.pipeResults(), warnings, isolated };
+  });
+
+  readonly nodeViews = computed((): ReadonlyMap<string, NodeView> => {
+    const [network, results, scale, units, selection] = [this.network(), this.results(), this.scale(), this.store.units(), this.state.selection()];
+    return new Map([...network.nodes.values()].map((node) => [node.id, nodeView(node, network, results, scale, units, selection.has(node.id))]));
+  });
+  readonly pipeViews = computed((): ReadonlyMap<string, PipeView> => {
+    const [network, results, scale, units, selection] = [this.network(), this.results(), this.scale(), this.store.units(), this.state.selection()];
+    return new Map([...network.pipes.values()].map((pipe) => [pipe.id, pipeView(pipe, network, results, scale, units, selection.has(pipe.id))]));
+  });
+
+  /** Pipes on the way of the one selected trap. */
+  readonly way = computed((): ReadonlySet<string> => {
+    const chosen = this.state.chosenId();
+    return new Set(chosen === null ? [] : this.store.trapResults().get(chosen)?.walk);
+  });
+
+  readonly reversed = (pipeId: string): boolean => (this.store.pipeResults().get(pipeId)?.massFlowKgS ?? 0) < 0;
+
+  /** The element with the keyboard, or the first where none had it: the drawing's one tab stop. */
+  readonly tabStop = computed(() => {
+    const { nodes, pipes } = this.settled();
+    const focused = this.state.focusId();
+    if (focused !== null && (nodes.has(focused) || pipes.has(focused))) return focused;
+    return trapsFirst(this.nodeViews()) ?? null;
+  });
+
+  has(id: string): boolean {
+    return this.settled().nodes.has(id) || this.settled().pipes.has(id);
+  }
+
+  nameOf(id: string): string {
+    return this.nodeViews().get(id)?.name ?? this.pipeViews().get(id)?.name ?? id;
+  }
+}
+
+function trapsFirst(views: ReadonlyMap<string, NodeView>): string | undefined {
+  const all = [...views.values()];
+  return (all.find(({ node }) => node.kind === 'trap') ?? all[0])?.id;
+}

@@ -1,0 +1,114 @@
+import { ChangeDetectionStrategy, Component, computed, effect, inject, Injector, afterNextRender, signal, untracked, viewChild } from '@angular/core';
+import { MatButton } from '@angular/material/button';
+import { RouterLink } from '@angular/router';
+import { NetworkStore } from '../../networks/network-store';
+import { type Status, StatusMark } from '../../shared/status-mark/status-mark';
+import { DrawingScene } from '../drawing-scene';
+import { DrawingState } from '../drawing-state';
+import { isPipe, KIND_WORDS, nameOf, TRAP_TYPE_WORDS } from '../model/element-words';
+import { DeletePrompt } from '../sheet/delete-prompt';
+import { ElementIcon } from '../symbols/element-icon';
+import { InputsTab } from './inputs-tab';
+import { ModelTab } from './model-tab';
+import { NetworkPanel } from './network-panel';
+import { NewElementForm } from './new-element-form';
+import { ResultTab } from './result-tab';
+
+const TABS = { result: 'Result', inputs: 'Inputs', model: 'Model' } as const;
+type Tab = keyof typeof TABS;
+
+/** Beside the sheet: the selected element's result, inputs and model; the new element being asked for; or the network as a whole. */
+@Component({
+  selector: 'app-inspector',
+  imports: [ElementIcon, InputsTab, MatButton, ModelTab, NetworkPanel, NewElementForm, ResultTab, RouterLink, StatusMark],
+  changeDetection: ChangeDetectionStrategy.OnPush,
+  templateUrl: './inspector.html',
+  styleUrl: './inspector.scss',
+})
+export class Inspector {
+  protected readonly store = inject(NetworkStore);
+  protected readonly state = inject(DrawingState);
+  private readonly scene = inject(DrawingScene);
+  private readonly deletePrompt = inject(DeletePrompt);
+
+  private readonly inputs = viewChild(InputsTab);
+
+  private readonly wantedTab = signal<Tab>('result');
+  protected readonly element = computed(() => {
+    const chosen = this.state.chosenId();
+    if (chosen === null) return null;
+    const { nodes, pipes } = this.scene.settled();
+    return nodes.get(chosen)?.node ?? pipes.get(chosen)?.pipe ?? null;
+  });
+  protected readonly head = computed(() => {
+    const element = this.element();
+    if (element === null) return null;
+    if (isPipe(element)) return { kind: 'pipe' as const, name: nameOf(element), under: 'Pipe', trapType: undefined, vented: false };
+    const trapType = element.kind === 'trap' ? element.trapType : undefined;
+    const words = KIND_WORDS[element.kind];
+    return {
+      kind: element.kind,
+      name: nameOf(element),
+      under: [trapType === undefined ? words.charAt(0).toUpperCase() + words.slice(1) : TRAP_TYPE_WORDS[trapType], element.area ?? '']
+        .filter((part) => part !== '')
+        .join(', '),
+      trapType,
+      vented: element.kind === 'receiver' && element.vented === true,
+    };
+  });
+  protected readonly status = computed((): Status | null => {
+    const chosen = this.state.chosenId();
+    if (chosen === null) return null;
+    const concern = this.scene.nodeViews().get(chosen)?.concern ?? this.scene.pipeViews().get(chosen)?.concern ?? null;
+    if (concern !== null) return concern;
+    return this.store.trapResults().has(chosen) ? 'pass' : null;
+  });
+  protected readonly model = computed(() => {
+    const element = this.element();
+    if (element === null || isPipe(element) || element.kind !== 'trap' || element.trapModel === undefined) return null;
+    return this.store.document()?.trapModels.get(element.trapModel)?.value ?? null;
+  });
+  protected readonly tabs = computed(() => (Object.keys(TABS) as Tab[]).filter((tab) => tab !== 'model' || this.model() !== null));
+  protected readonly tab = computed(() => (this.tabs().includes(this.wantedTab()) ? this.wantedTab() : 'result'));
+  protected readonly words = TABS;
+  protected readonly isTrap = computed(() => this.head()?.kind === 'trap');
+
+  constructor() {
+    const injector = inject(Injector);
+    effect(() => {
+      if (this.state.fieldsAsked() === 0) return;
+      untracked(() => {
+        this.wantedTab.set('inputs');
+        afterNextRender(() => this.inputs()?.focusFirst(), { injector });
+      });
+    });
+  }
+
+  protected choose(tab: Tab): void {
+    this.wantedTab.set(tab);
+  }
+
+  /** Arrows go from tab to tab, as everywhere. */
+  protected step(event: Event, by: number): void {
+    const tabs = this.tabs();
+    const next = tabs[(tabs.indexOf(this.tab()) + by + tabs.length) % tabs.length];
+    if (next === undefined) return;
+    this.wantedTab.set(next);
+    const list = event.currentTarget instanceof Element ? event.currentTarget : null;
+    list?.querySelector<HTMLElement>(`[data-tab="${next}"]`)?.focus();
+  }
+
+  /** Back to the drawing: from a field, or with the button. */
+  protected back(): void {
+    this.state.focusOn(this.state.chosenId() ?? this.state.focusId());
+  }
+
+  protected close(): void {
+    this.state.select();
+    this.state.focusOn(this.state.focusId());
+  }
+
+  protected askDelete(): void {
+    void this.deletePrompt.ask(this.state.selection());
+  }
+}

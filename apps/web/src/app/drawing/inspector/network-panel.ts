@@ -1,0 +1,80 @@
+import { ChangeDetectionStrategy, Component, computed, inject, signal } from '@angular/core';
+import { FRICTION_METHODS, type Method, type SiteConditions, setNetworkOp, STATIC_LIFT_BASES } from '@riseback/network';
+import { FRICTION_WORDS, STATIC_LIFT_WORDS } from '../../networks/method-words';
+import { NetworkStore } from '../../networks/network-store';
+import { ChoiceField } from './choice-field';
+import type { FieldSpec } from './element-fields';
+import { type FieldChange, PropertyFields } from './property-fields';
+
+const SITE_FIELDS: readonly FieldSpec[] = [
+  { type: 'quantity', key: 'atmosphericPressurePa', label: 'Atmosphere', kind: 'absolutePressure' },
+  { type: 'quantity', key: 'ambientTemperatureK', label: 'Air temperature', kind: 'temperature' },
+];
+const RULE_FIELD: FieldSpec = { type: 'quantity', key: 'liftRulePaM', label: 'Rule of lift', kind: 'pressurePerRise' };
+const DROP_FIELD: FieldSpec = {
+  type: 'quantity',
+  key: 'dropCredit',
+  label: 'Credit for falls',
+  kind: 'fraction',
+  hint: 'Share of a fall’s head that counts',
+};
+
+/** What can be computed so far; the file keeps the others, and a solve with one of them is refused by name. */
+const COMPUTED_FRICTION: readonly Method['friction'][] = ['flashVapour'];
+const COMPUTED_LIFT: readonly Method['staticLift'][] = ['rule', 'liquidFull'];
+
+/** The network as a whole: site conditions and method, shown while no element is selected. */
+@Component({
+  selector: 'app-network-panel',
+  imports: [ChoiceField, PropertyFields],
+  changeDetection: ChangeDetectionStrategy.OnPush,
+  templateUrl: './network-panel.html',
+  styleUrl: './inspector-tabs.scss',
+})
+export class NetworkPanel {
+  protected readonly store = inject(NetworkStore);
+
+  protected readonly siteFields = SITE_FIELDS;
+  protected readonly frictionChoices = FRICTION_METHODS.map((value) => ({
+    value,
+    words: FRICTION_WORDS[value] + (COMPUTED_FRICTION.includes(value) ? '' : ' (not computed yet)'),
+  }));
+  protected readonly liftChoices = STATIC_LIFT_BASES.map((value) => ({
+    value,
+    words: STATIC_LIFT_WORDS[value] + (COMPUTED_LIFT.includes(value) ? '' : ' (not computed yet)'),
+  }));
+  protected readonly fixed = computed(() => !this.store.mayDraw());
+  protected readonly siteValues = computed((): Readonly<Record<string, unknown>> => ({ ...this.store.document()?.site }));
+  protected readonly methodValues = computed((): Readonly<Record<string, unknown>> => ({ ...this.store.document()?.method }));
+  protected readonly methodFields = computed(() => (this.store.document()?.method.staticLift === 'rule' ? [RULE_FIELD, DROP_FIELD] : [DROP_FIELD]));
+  protected readonly counts = computed(() => {
+    const document = this.store.document();
+    if (document === null) return '';
+    const traps = [...document.nodes.values()].filter(({ value }) => value.kind === 'trap').length;
+    return `${String(traps)} traps, ${String(document.pipes.size)} pipes`;
+  });
+  protected readonly refusal = signal<{ key: string; reason: string } | null>(null);
+
+  protected setSite({ key, what, to }: FieldChange): void {
+    const document = this.store.document();
+    if (document === null) return;
+    const site = { ...document.site, [key]: to } as SiteConditions;
+    this.taken(key, this.store.edit(`${what} of the site`, [setNetworkOp(document, 'site', site)]));
+  }
+
+  protected setMethod(key: string, to: unknown, what: string): void {
+    const document = this.store.document();
+    if (document === null || to === undefined) return;
+    const method = { ...document.method, [key]: to } as Method;
+    this.taken(key, this.store.edit(`method: ${what}`, [setNetworkOp(document, 'method', method)]));
+  }
+
+  protected refusalAt(key: string): string {
+    const refusal = this.refusal();
+    return refusal?.key === key ? refusal.reason : '';
+  }
+
+  private taken(key: string, taken: boolean): void {
+    this.refusal.set(taken ? null : { key, reason: this.store.lastRefusal().join(' ') });
+  }
+}

@@ -1,0 +1,64 @@
+/** A rectangle on the sheet in pixels of the present zoom. */
+export interface Box {
+  readonly x: number;
+  readonly y: number;
+  readonly width: number;
+  readonly height: number;
+}
+
+/** A label with the places it may take, best first. */
+export interface LabelRequest {
+  readonly key: string;
+  readonly candidates: readonly Box[];
+}
+
+const CELL = 8;
+/** A box may touch the edge of a cell without taking it. */
+const SLACK = 1;
+
+/**
+ * Lays labels one after another, in order of right, each at its first free candidate. A label that finds no place is left out.
+ * @param kept the candidates taken in the frame before: tried first, so that labels do not hop while something is dragged
+ * @returns the index of the candidate taken, by key
+ */
+export function placeLabels(
+  requests: readonly LabelRequest[],
+  obstacles: readonly Box[],
+  kept: ReadonlyMap<string, number> = new Map(),
+): Map<string, number> {
+  const taken = new TakenCells();
+  for (const obstacle of obstacles) taken.take(obstacle);
+  const placed = new Map<string, number>();
+  for (const { key, candidates } of requests) {
+    const index = [kept.get(key) ?? 0, ...candidates.keys()].find((i) => {
+      const box = candidates[i];
+      return box !== undefined && taken.isFree(box);
+    });
+    const box = index === undefined ? undefined : candidates[index];
+    if (index === undefined || box === undefined) continue;
+    taken.take(box);
+    placed.set(key, index);
+  }
+  return placed;
+}
+
+class TakenCells {
+  private readonly cells = new Set<number>();
+
+  take(box: Box): void {
+    for (const cell of cellsOf(box)) this.cells.add(cell);
+  }
+
+  isFree(box: Box): boolean {
+    for (const cell of cellsOf(box)) if (this.cells.has(cell)) return false;
+    return true;
+  }
+}
+
+function* cellsOf({ x, y, width, height }: Box): Generator<number> {
+  const [left, right] = [Math.floor((x + SLACK) / CELL), Math.floor((x + width - SLACK) / CELL)];
+  const [top, bottom] = [Math.floor((y + SLACK) / CELL), Math.floor((y + height - SLACK) / CELL)];
+  for (let column = left; column <= right; column++) {
+    for (let row = top; row <= bottom; row++) yield column * 0x100000 + row;
+  }
+}

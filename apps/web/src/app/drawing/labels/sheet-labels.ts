@@ -1,0 +1,181 @@
+import type { Position } from '@riseback/network';
+import { type DisplayUnits, formatQuantity } from '@riseback/units';
+import { sizeWords } from '../model/accessible-name';
+import { nameOf } from '../model/element-words';
+import type { Concern, NodeView, PipeView, Side } from '../model/element-views';
+import { longestPiece, middle, pieces } from '../model/geometry';
+import { symbolScale } from '../model/viewport';
+import type { Box, LabelRequest } from './label-placement';
+
+export interface LabelLine {
+  readonly text: string;
+  readonly look: 'tag' | 'value' | 'name' | 'lift' | 'pipe';
+  readonly concern: Concern | null;
+}
+
+/** Where a label may stand: its box and how its lines are set in it. */
+export interface LabelPlace extends Box {
+  readonly align: 'start' | 'middle' | 'end';
+}
+
+export interface SheetLabel extends LabelRequest {
+  readonly elementId: string;
+  readonly lines: readonly LabelLine[];
+  readonly candidates: readonly LabelPlace[];
+}
+
+/** From which zoom on each kind of label shows; the text keeps its size, so there must be room for it. */
+const FROM_ZOOM = { failing: 0.5, lifts: 0.5, values: 0.9, pipes: 1.4, flows: 2 } as const;
+export const LINE_HEIGHT = 14;
+const MARK_WIDTH = 15;
+const GAP = 4;
+/** Half of a symbol with its wash, px at symbol scale 1. */
+const SYMBOL_REACH: Readonly<Record<NodeView['node']['kind'], Readonly<{ x: number; y: number }>>> = {
+  trap: { x: 15, y: 15 },
+  pumpedInlet: { x: 15, y: 15 },
+  junction: { x: 6, y: 6 },
+  receiver: { x: 36, y: 26 },
+  flashVessel: { x: 17, y: 36 },
+};
+
+interface Subject {
+  readonly nodes: Iterable<NodeView>;
+  readonly pipes: Iterable<PipeView>;
+  readonly selected: ReadonlySet<string>;
+  /** Pointed at or focused: shows its label at any zoom. */
+  readonly pointedAt: ReadonlySet<string>;
+}
+
+/** Every label wanted at this zoom, in order of right. Places are sheet coordinates times zoom. */
+export function sheetLabels({ nodes, pipes, selected, pointedAt }: Subject, zoom: number, units: DisplayUnits): SheetLabel[] {
+  const scale = symbolScale(zoom) * zoom;
+  const wanted: (SheetLabel & { right: number })[] = [];
+  for (const view of nodes) {
+    const chosen = selected.has(view.id) || pointedAt.has(view.id);
+    if (!chosen && zoom < nodeZoom(view)) continue;
+    const lines = nodeLines(view, zoom, chosen, units);
+    if (lines.length === 0) continue;
+    const candidates = sides(view).map((side) => beside(view.at, side, reach(view, scale), lines, zoom));
+    wanted.push({ key: `n:${view.id}`, elementId: view.id, lines, candidates, right: nodeRight(view, chosen) });
+  }
+  for (const view of pipes) {
+    if (view.lift !== null && zoom >= FROM_ZOOM.lifts) wanted.push({ ...liftLabel(view, view.lift, zoom, units), right: 6 });
+    const chosen = selected.has(view.id) || pointedAt.has(view.id);
+    const tag = chosen || zoom >= FROM_ZOOM.pipes ? pipeLabel(view, zoom, units) : undefined;
+    if (tag !== undefined) wanted.push({ ...tag, right: chosen ? 0 : 8 });
+  }
+  return wanted.sort((a, b) => a.right - b.right);
+}
+
+/** What labels must keep clear of: symbols and washes. */
+export function labelObstacles(nodes: Iterable<NodeView>, pipes: Iterable<PipeView>, zoom: number): Box[] {
+  const scale = symbolScale(zoom) * zoom;
+  const boxes: Box[] = [];
+  for (const view of nodes) {
+    const { x, y } = reach(view, scale);
+    boxes.push({ x: view.at.x * zoom - x, y: view.at.y * zoom - y, width: 2 * x, height: 2 * y });
+  }
+  const half = 5 * scale;
+  for (const { drawn } of pipes) {
+    for (const [a, b] of pieces(drawn.points)) {
+      const [left, top] = [Math.min(a.x, b.x) * zoom - half, Math.min(a.y, b.y) * zoom - half];
+      boxes.push({ x: left, y: top, width: Math.abs(b.x - a.x) * zoom + 2 * half, height: Math.abs(b.y - a.y) * zoom + 2 * half });
+    }
+  }
+  return boxes;
+}
+
+function nodeZoom({ node, concern }: NodeView): number {
+  if (node.kind === 'receiver' || node.kind === 'flashVessel') return 0;
+  if (concern === 'fail') return FROM_ZOOM.failing;
+  if (node.kind === 'junction') return node.tag === undefined ? FROM_ZOOM.pipes : FROM_ZOOM.values;
+  return FROM_ZOOM.values;
+}
+
+function nodeRight({ node, concern }: NodeView, chosen: boolean): number {
+  if (chosen) return 0;
+  if (concern === 'fail') return 1;
+  if (concern === 'watch') return 2;
+  if (node.kind === 'trap' || node.kind === 'pumpedInlet') return 4;
+  return node.kind === 'junction' ? 7 : 5;
+}
+
+function nodeLines(view: NodeView, zoom: number, chosen: boolean, units: DisplayUnits): LabelLine[] {
+  const { node, concern, pressurePa } = view;
+  const value = pressurePa === undefined ? undefined : formatQuantity(pressurePa, 'pressure', units);
+  const named = node.kind === 'junction' ? (chosen ? nameOf(node) : (node.tag ?? '')) : nameOf(node);
+  const lines: LabelLine[] = [];
+  if (named !== '' && (chosen || zoom >= nodeZoom(view))) {
+    const vessel = node.kind === 'receiver' || node.kind === 'flashVessel';
+    lines.push({ text: named, look: vessel ? 'name' : 'tag', concern: null });
+  }
+  if (value !== undefined && (chosen || node.kind !== 'junction' || zoom >= FROM_ZOOM.pipes)) {
+    lines.push({ text: value, look: 'value', concern });
+  }
+  if (zoom >= FROM_ZOOM.flows && node.kind === 'trap') {
+    lines.push({ text: formatQuantity(node.loadKgS, 'massFlow', units, { withUnit: true }), look: 'tag', concern: null });
+  }
+  return lines;
+}
+
+function sides({ outlet }: NodeView): Side[] {
+  const outer = opposite(outlet);
+  return [...new Set<Side>([outer, 'right', 'left', 'up', 'down', outlet])];
+}
+
+function beside(at: Position, side: Side, { x: rx, y: ry }: { x: number; y: number }, lines: readonly LabelLine[], zoom: number): LabelPlace {
+  const width = Math.max(...lines.map(lineWidth));
+  const height = lines.length * LINE_HEIGHT;
+  const [x, y] = [at.x * zoom, at.y * zoom];
+  switch (side) {
+    case 'up':
+      return { x: x - width / 2, y: y - ry - GAP / 2 - height, width, height, align: 'middle' };
+    case 'down':
+      return { x: x - width / 2, y: y + ry + GAP / 2, width, height, align: 'middle' };
+    case 'left':
+      return { x: x - rx - GAP - width, y: y - height / 2, width, height, align: 'end' };
+    case 'right':
+      return { x: x + rx + GAP, y: y - height / 2, width, height, align: 'start' };
+  }
+}
+
+function liftLabel({ id }: PipeView, lift: NonNullable<PipeView['lift']>, zoom: number, units: DisplayUnits): SheetLabel {
+  const lines: LabelLine[] = [
+    { text: `${formatQuantity(lift.riseM, 'length', units, { withUnit: true })} lift`, look: 'lift', concern: null },
+  ];
+  const at = middle(lift.piece);
+  const room = { x: 20, y: 8 };
+  return { key: `l:${id}`, elementId: id, lines, candidates: [beside(at, 'right', room, lines, zoom), beside(at, 'left', room, lines, zoom)] };
+}
+
+function pipeLabel({ id, drawn }: PipeView, zoom: number, units: DisplayUnits): SheetLabel | undefined {
+  const level = longestPiece(drawn.points, 'level');
+  const piece = level ?? longestPiece(drawn.points, 'upright');
+  if (piece === undefined) return undefined;
+  const lines: LabelLine[] = [{ text: `${nameOf(drawn.pipe)} ${shortSize(drawn.pipe, units)}`, look: 'pipe', concern: null }];
+  const at = middle(piece);
+  const room = { x: 10, y: 7 };
+  const order: Side[] = level === undefined ? ['right', 'left'] : ['down', 'up'];
+  return { key: `p:${id}`, elementId: id, lines, candidates: order.map((side) => beside(at, side, room, lines, zoom)) };
+}
+
+/** 1-1/2″, or the bore. */
+function shortSize(pipe: PipeView['drawn']['pipe'], units: DisplayUnits): string {
+  return pipe.size === undefined ? sizeWords(pipe, units) : `${pipe.size.nps}″`;
+}
+
+function reach({ node }: NodeView, scale: number): { x: number; y: number } {
+  const { x, y } = SYMBOL_REACH[node.kind];
+  return { x: x * scale, y: y * scale };
+}
+
+/** Near enough for placing: Inter's digits and capitals at the sizes of the sheet. */
+function lineWidth({ text, look, concern }: LabelLine): number {
+  const perLetter = look === 'tag' || look === 'pipe' ? 6.4 : 7.3;
+  return text.length * perLetter + (concern === null ? 0 : MARK_WIDTH);
+}
+
+function opposite(side: Side): Side {
+  const across: Readonly<Record<Side, Side>> = { up: 'down', down: 'up', left: 'right', right: 'left' };
+  return across[side];
+}

@@ -1,0 +1,28 @@
+import type { NetworkNode, NodeKind, PipeRun, TrapType } from '@riseback/network';
+
+/** What the trade calls each kind, as it stands in a sentence. */
+export const KIND_WORDS: Readonly<Record<NodeKind | 'pipe', string>> = {
+  trap: 'trap',
+  junction: 'junction',
+  receiver: 'receiver',
+  flashVessel: 'flash vessel',
+  pumpedInlet: 'pumped inlet',
+  pipe: 'pipe',
+};
+
+export const TRAP_TYPE_WORDS: Readonly<Record<TrapType, string>> = {
+  invertedBucket: 'Inverted bucket',
+  floatThermostatic: 'Float and thermostatic',
+  thermostatic: 'Thermostatic',
+  thermodynamic: 'Thermodynamic disc',
+  orifice: 'Orifice plate',
+};
+
+/** What an element is called on the drawing: its tag, or its id where it has none. */
+export function nameOf(element: Pick<NetworkNode | PipeRun, 'id' | 'tag'>): string {
+  return element.tag ?? element.id;
+}
+
+export function isPipe(element: NetworkNode | PipeRun): element is PipeRun {
+  return 'from' in element;
+}

@@ -1,0 +1,235 @@
+import {
+  afterRenderEffect,
+  ChangeDetectionStrategy,
+  Component,
+  computed,
+  effect,
+  ElementRef,
+  inject,
+  linkedSignal,
+  signal,
+  untracked,
+  viewChild,
+} from '@angular/core';
+import type { Position } from '@riseback/network';
+import { NetworkStore } from '../../networks/network-store';
+import { DrawingScene } from '../drawing-scene';
+import { DrawingState } from '../drawing-state';
+import { GraphCanvas } from '../graph-canvas/graph-canvas';
+import { LabelLayer } from '../labels/label-layer';
+import { placeLabels } from '../labels/label-placement';
+import { labelObstacles, sheetLabels } from '../labels/sheet-labels';
+import type { NodeView } from '../model/element-views';
+import { linePath } from '../model/line-path';
+import { placeOf } from '../model/navigation';
+import { centreToShow, fitView, symbolScale, toScreen } from '../model/viewport';
+import { NodeMark } from '../symbols/node-mark';
+import { NodeSymbol } from '../symbols/node-symbol';
+import { PipeMark } from '../symbols/pipe-mark';
+import { areaOutlines } from './area-outlines';
+import { ColourLegend } from './colour-legend';
+import { SheetKeys } from './sheet-keys';
+import { SheetPointer } from './sheet-pointer';
+import { ZoneFrame } from './zone-frame';
+
+/** Below this zoom values have no room, so symbols carry the status shapes themselves. */
+const MARKS_BELOW_ZOOM = 0.9;
+/** How near the edge the focused element may come before the view follows, px. */
+const FOLLOW_MARGIN = 48;
+const LEGEND = { width: 310, height: 92 } as const;
+
+/** The sheet of paper: frame, network, labels and legend, with what pointer and keys do on it. */
+@Component({
+  selector: 'app-drawing-sheet',
+  imports: [ColourLegend, GraphCanvas, LabelLayer, NodeMark, NodeSymbol, PipeMark, ZoneFrame],
+  providers: [SheetPointer],
+  changeDetection: ChangeDetectionStrategy.OnPush,
+  host: { '[style.--symbol-scale]': 'symbolScale()', '[class]': 'state.mode().kind' },
+  templateUrl: './drawing-sheet.html',
+  styleUrl: './drawing-sheet.scss',
+})
+export class DrawingSheet {
+  protected readonly store = inject(NetworkStore);
+  protected readonly state = inject(DrawingState);
+  protected readonly scene = inject(DrawingScene);
+  protected readonly pointer = inject(SheetPointer);
+  private readonly keys = inject(SheetKeys);
+
+  private readonly canvas = viewChild.required(GraphCanvas);
+  private readonly surface = viewChild.required<ElementRef<HTMLElement>>('surface');
+
+  protected readonly marksBelow = MARKS_BELOW_ZOOM;
+  protected readonly viewport = computed(() => this.canvas().viewport());
+  protected readonly symbolScale = computed(() => symbolScale(this.viewport().zoom));
+  protected readonly canvasNodes = computed(() => [...this.scene.settled().nodes.values()]);
+  protected readonly canvasLinks = computed(() =>
+    [...this.scene.settled().pipes.values()].map(({ id, pipe, points }) => ({ id, from: pipe.from, to: pipe.to, points })),
+  );
+  protected readonly keep = computed(() => {
+    const focused = this.state.focusId();
+    return new Set([...this.state.selection(), ...(focused === null ? [] : [focused])]);
+  });
+  protected readonly areas = computed(() => areaOutlines(this.scene.network()));
+  protected readonly drawingName = computed(
+    () => `Drawing of ${this.store.document()?.name ?? 'the network'}. Arrows go from element to element, question mark lists the keys.`,
+  );
+  protected readonly caseName = computed(() => this.store.cases().find(({ id }) => id === this.store.caseId())?.name ?? '');
+  protected readonly wayOf = computed(() => {
+    const chosen = this.state.chosenId();
+    const node = chosen === null ? undefined : this.scene.settled().nodes.get(chosen)?.node;
+    return node?.kind === 'trap' ? (node.tag ?? node.id) : null;
+  });
+  protected readonly stale = computed(() => this.store.solveState().kind !== 'solved');
+
+  private readonly hovered = signal<string | null>(null);
+  private readonly pointedAt = computed(() => new Set([this.hovered(), this.state.focusId()].flatMap((id) => (id === null ? [] : [id]))));
+  protected readonly labels = computed(() =>
+    sheetLabels(
+      { nodes: this.scene.nodeViews().values(), pipes: this.scene.pipeViews().values(), selected: this.state.selection(), pointedAt: this.pointedAt() },
+      this.viewport().zoom,
+      this.store.units(),
+    ),
+  );
+  private readonly obstacles = computed(() =>
+    labelObstacles(this.scene.nodeViews().values(), this.scene.pipeViews().values(), this.viewport().zoom),
+  );
+  protected readonly placed = linkedSignal<{ labels: ReturnType<typeof sheetLabels>; obstacles: ReturnType<typeof labelObstacles> }, ReadonlyMap<string, number>>({
+    source: () => ({ labels: this.labels(), obstacles: this.obstacles() }),
+    computation: ({ labels, obstacles }, before) => placeLabels(labels, obstacles, before?.value),
+  });
+
+  /** The pipe being drawn, the new node being asked for. */
+  protected readonly previewLine = computed(() => {
+    const mode = this.state.mode();
+    const draft = this.state.draft();
+    if (draft?.kind === 'pipe') return this.lineBetween(draft.from, draft.to, null);
+    return mode.kind === 'piping' && mode.from !== null ? this.lineBetween(mode.from, mode.to, mode.pointer) : '';
+  });
+  protected readonly ghost = computed(() => {
+    const draft = this.state.draft();
+    return draft?.kind === 'node' ? { kind: draft.what, at: toScreen(draft.at, this.viewport()) } : null;
+  });
+  protected readonly boxShape = computed(() => {
+    const box = this.pointer.box();
+    if (box === null) return null;
+    const [a, b] = [toScreen(box[0], this.viewport()), toScreen(box[1], this.viewport())];
+    return { x: Math.min(a.x, b.x), y: Math.min(a.y, b.y), width: Math.abs(a.x - b.x), height: Math.abs(a.y - b.y) };
+  });
+
+  private readonly gestures = {
+    viewport: () => this.viewport(),
+    holdStill: (still: boolean) => {
+      this.canvas().holdStill(still);
+    },
+    zoomAbout: (point: Position, factor: number) => {
+      this.canvas().zoomAbout(point, factor);
+    },
+    corner: () => {
+      const { left, top } = this.surface().nativeElement.getBoundingClientRect();
+      return { x: left, y: top };
+    },
+  };
+
+  constructor() {
+    effect(() => {
+      this.state.zoom.set(this.viewport().zoom);
+    });
+    effect(() => {
+      // only another network moves the view by itself
+      this.store.network();
+      if (this.canvas().ready()) untracked(() => { this.fit(); });
+    });
+    effect(() => {
+      const asked = this.state.zoomAsked();
+      if (asked === null) return;
+      untracked(() => {
+        if (asked.factor === null) this.fit();
+        else this.zoomBy(asked.factor);
+      });
+    });
+    afterRenderEffect(() => {
+      if (this.state.focusAsked() > 0) untracked(() => { this.followFocus(); });
+    });
+  }
+
+  zoomBy(factor: number): void {
+    const { width, height } = this.viewport();
+    this.canvas().zoomAbout({ x: width / 2, y: height / 2 }, factor);
+    this.state.say(`${String(Math.round(this.viewport().zoom * 100))} per cent`);
+  }
+
+  /** Shows everything, clear of the legend where the network would lie under it. */
+  fit(): void {
+    const { nodes, pipes } = this.scene.settled();
+    const points = [...[...nodes.values()].map(({ at }) => at), ...[...pipes.values()].flatMap((pipe) => pipe.points)];
+    const size = this.viewport();
+    const none = { left: 0, top: 0, right: 0, bottom: 0 };
+    const plain = fitView(points, size, none);
+    const pan = { panX: size.width / 2 - plain.centre.x * plain.zoom, panY: size.height / 2 - plain.centre.y * plain.zoom };
+    const covered = points.some((point) => {
+      const { x, y } = toScreen(point, { ...size, zoom: plain.zoom, ...pan });
+      return x < LEGEND.width && y < LEGEND.height;
+    });
+    this.canvas().show(covered ? fitView(points, size, { ...none, top: LEGEND.height - 32 }) : plain);
+  }
+
+  protected activeBend(id: string): number {
+    const mode = this.state.mode();
+    return mode.kind === 'moving' && mode.ids[0] === id ? mode.bend : -1;
+  }
+
+  protected shiftOf(view: NodeView): string {
+    const from = this.scene.settled().nodes.get(view.id)?.at ?? view.at;
+    return `translate(${view.at.x - from.x} ${view.at.y - from.y})`;
+  }
+
+  protected focused(id: string): void {
+    this.state.focusId.set(id);
+    if (this.scene.settled().nodes.get(id)?.node.kind === 'trap') this.state.lastTrapId.set(id);
+  }
+
+  protected keyDown(event: KeyboardEvent): void {
+    if (this.keys.handle(event, this)) {
+      event.preventDefault();
+      event.stopPropagation();
+    }
+  }
+
+  protected down(event: PointerEvent): void {
+    this.pointer.down(event, this.gestures);
+  }
+
+  protected move(event: PointerEvent): void {
+    this.pointer.move(event, this.gestures);
+    const element = event.target instanceof Element ? event.target.closest<SVGElement>('[data-element]') : null;
+    this.hovered.set(element?.dataset['element'] ?? null);
+  }
+
+  protected up(event: PointerEvent): void {
+    this.pointer.up(event, this.gestures);
+  }
+
+  protected cancelled(): void {
+    this.pointer.cancel(this.gestures);
+  }
+
+  private followFocus(): void {
+    const id = this.state.focusId();
+    const place = id === null ? undefined : placeOf(this.scene.settled(), id);
+    if (id === null || place === undefined) {
+      this.canvas().focusDrawing();
+      return;
+    }
+    const centre = centreToShow(place, this.viewport(), FOLLOW_MARGIN);
+    if (centre !== null) this.canvas().show({ zoom: this.viewport().zoom, centre });
+    this.canvas().focusElement(id);
+  }
+
+  private lineBetween(from: string, to: string | null, pointer: Position | null): string {
+    const network = this.scene.settled();
+    const start = placeOf(network, from);
+    const end = (to === null ? undefined : placeOf(network, to)) ?? pointer ?? undefined;
+    if (start === undefined || end === undefined) return '';
+    return linePath([toScreen(start, this.viewport()), toScreen(end, this.viewport())]);
+  }
+}
