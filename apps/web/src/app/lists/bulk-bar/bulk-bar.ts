@@ -1,0 +1,71 @@
+import { ChangeDetectionStrategy, Component, computed, input, linkedSignal, output, signal } from '@angular/core';
+import { MatButton } from '@angular/material/button';
+import type { CellEdit } from '../grid/list-grid';
+import type { ListTable } from '../list-table';
+import { bulkProposal, namesOf } from './bulk-edit';
+
+/** At the foot while rows are ticked: one property set in all of them as one step of undo, or all of them deleted. */
+@Component({
+  selector: 'app-bulk-bar',
+  imports: [MatButton],
+  changeDetection: ChangeDetectionStrategy.OnPush,
+  host: { role: 'region', 'aria-label': 'Selected rows' },
+  templateUrl: './bulk-bar.html',
+  styleUrl: './bulk-bar.scss',
+})
+export class BulkBar {
+  readonly table = input.required<ListTable>();
+  readonly ids = input.required<readonly string[]>();
+  readonly one = input.required<string>();
+  readonly many = input.required<string>();
+  readonly edited = output<CellEdit>();
+  readonly deleteWanted = output();
+  readonly cleared = output();
+
+  protected readonly columns = computed(() =>
+    this.table().columns.filter(({ bulk, key }) => bulk && key !== 'tag' && key !== 'name'),
+  );
+  protected readonly key = linkedSignal<string>(() => this.columns()[0]?.key ?? '');
+  protected readonly column = computed(() => this.columns().find(({ key }) => key === this.key()));
+  /** The first row's editor stands for all: choices and units are the same down a column. */
+  protected readonly editor = computed(() => {
+    const editor = this.table().editor(this.ids()[0] ?? '', this.key());
+    return editor === null || editor.by === 'dialog' ? null : editor;
+  });
+  protected readonly text = linkedSignal<string, string>({
+    source: this.key,
+    computation: () => {
+      const editor = this.editor();
+      return editor?.by === 'choice' ? editor.chosen : '';
+    },
+  });
+  protected readonly complaint = signal('');
+  protected readonly echo = computed(() => {
+    const editor = this.editor();
+    return editor?.by === 'quantity' ? editor.echo(this.text()) : '';
+  });
+  protected readonly countWords = computed(() => {
+    const count = this.ids().length;
+    return `${String(count)} ${count === 1 ? this.one() : this.many()} selected`;
+  });
+  protected readonly names = computed(() => namesOf(this.table(), this.ids()));
+
+  protected chooseColumn(key: string): void {
+    this.key.set(key);
+    this.complaint.set('');
+  }
+
+  protected type(text: string): void {
+    this.text.set(text);
+    this.complaint.set('');
+  }
+
+  protected set(event: Event): void {
+    event.preventDefault();
+    const proposal = bulkProposal(this.table(), this.ids(), this.key(), this.text());
+    this.complaint.set(proposal.ok ? '' : proposal.reason);
+    if (!proposal.ok) return;
+    const title = this.column()?.title.toLowerCase() ?? '';
+    this.edited.emit({ label: `set ${title} in ${String(this.ids().length)} rows`, ops: proposal.ops });
+  }
+}

@@ -1,0 +1,81 @@
+import type { NodeResult, PipeResult, TrapResult } from '@riseback/contracts';
+import type { EditOp, NetworkDocument, NetworkNode, PipeRun, TrapModel } from '@riseback/network';
+import type { DisplayUnits, QuantityKind } from '@riseback/units';
+import type { RowFinding } from '../row-findings';
+
+export type ListedElement = NetworkNode | PipeRun | TrapModel;
+
+/** All that a cell's text may depend on besides its element. */
+export interface ListContext {
+  readonly document: NetworkDocument;
+  readonly units: DisplayUnits;
+  readonly traps: ReadonlyMap<string, TrapResult>;
+  readonly pipes: ReadonlyMap<string, PipeResult>;
+  readonly nodes: ReadonlyMap<string, NodeResult>;
+  readonly findings: ReadonlyMap<string, readonly RowFinding[]>;
+  /** Why the element has no result in the chosen case; '' when it has one. */
+  readonly waiting: (id: string) => string;
+  /** Right end of every staff in the list, Pa absolute. */
+  readonly staffTopPa: number;
+}
+
+/** What a typed or chosen text comes to: the ops that make it so, or why it cannot be. */
+export type Proposal =
+  | { readonly ok: true; readonly ops: readonly EditOp[] }
+  | { readonly ok: false; readonly reason: string; readonly suggestion?: string };
+
+export interface Choice {
+  readonly value: string;
+  readonly word: string;
+}
+
+export type DialogName = 'service' | 'fittings' | 'route' | 'capacity';
+
+/** How a cell is edited. Every editor works on text, so that typing, the bulk bar and specs take the same way. */
+export type ColumnEditor<E> =
+  | {
+      readonly by: 'quantity';
+      readonly quantity: QuantityKind;
+      /** Whether it may be left empty: the key is then absent, or takes its default. */
+      readonly optional: boolean;
+      readonly si: (element: E, context: ListContext) => number | undefined;
+      readonly propose: (si: number | undefined, element: E, context: ListContext) => Proposal;
+    }
+  | {
+      readonly by: 'text';
+      readonly optional: boolean;
+      readonly maxLength: number;
+      /** Texts to offer while typing. */
+      readonly suggestions?: (context: ListContext) => readonly string[];
+      readonly propose: (text: string | undefined, element: E, context: ListContext) => Proposal;
+    }
+  | {
+      readonly by: 'choice';
+      readonly choices: (element: E, context: ListContext) => readonly Choice[];
+      readonly chosen: (element: E, context: ListContext) => string;
+      readonly propose: (value: string, element: E, context: ListContext) => Proposal;
+    }
+  | { readonly by: 'dialog'; readonly dialog: DialogName };
+
+export const COLUMN_GROUPS = ['element', 'inputs', 'result'] as const;
+export type ColumnGroup = (typeof COLUMN_GROUPS)[number];
+
+/** One typed entry drives a column's head, print, sorting, editing and bulk editing. */
+export interface Column<E> {
+  readonly key: string;
+  readonly title: string;
+  readonly group: ColumnGroup;
+  readonly widthPx: number;
+  /** The unit stands in the head, the numbers to the right. */
+  readonly quantity?: QuantityKind;
+  /** Shown only when all inputs are wanted. */
+  readonly minor?: true;
+  /** How the cell is drawn when not as text. */
+  readonly face?: 'verdict' | 'staff' | 'drawingLink';
+  /** What is sorted by, SI; printed by the column's quantity unless `show` says otherwise. */
+  readonly value: (element: E, context: ListContext) => number | string | undefined;
+  readonly show?: (element: E, context: ListContext) => string;
+  /** Set off from typed inputs: worked out from something else. */
+  readonly derived?: (element: E) => boolean;
+  readonly editor?: ColumnEditor<E>;
+}

@@ -1,0 +1,258 @@
+import { FITTINGS, NOMINAL_SIZES, pipeBore, pipeSizes } from '@riseback/hydraulics';
+import { inOrder, type NetworkDocument, type PipeRun, setOp } from '@riseback/network';
+import { formatQuantity } from '@riseback/units';
+import type { Choice, Column, ListContext, Proposal } from './column';
+import { quantityColumn, resultColumn } from './column-kinds';
+import { findingColumn, nameColumns, noteColumn } from './shared-columns';
+
+/** For a pipe that is given by its bore and gets a nominal size: the usual one for condensate piping to begin with. */
+const FIRST_SCHEDULE = '80';
+
+export const PIPE_COLUMNS: readonly Column<PipeRun>[] = [
+  ...nameColumns<PipeRun>('pipes'),
+  endColumn('from', 'From'),
+  endColumn('to', 'To'),
+  quantityColumn<PipeRun>('pipes', 'lengthM', 'length', { title: 'Length', widthPx: 84 }),
+  nominalSizeColumn(),
+  scheduleColumn(),
+  boreColumn(),
+  {
+    key: 'fittings',
+    title: 'Fittings',
+    group: 'inputs',
+    widthPx: 150,
+    value: ({ fittings }) => fittings.map(({ kind, count }) => `${String(count)} ${FITTINGS[kind].name}`).join('; '),
+    editor: { by: 'dialog', dialog: 'fittings' },
+  },
+  quantityColumn<PipeRun>('pipes', 'lossCoefficient', 'factor', { title: 'Loss K', widthPx: 76, optional: true }),
+  {
+    key: 'rise',
+    title: 'Rise',
+    group: 'inputs',
+    widthPx: 76,
+    quantity: 'length',
+    derived: () => true,
+    value: (pipe, { document }) => riseM(pipe, document),
+  },
+  {
+    key: 'route',
+    title: 'Route',
+    group: 'inputs',
+    widthPx: 150,
+    minor: true,
+    value: ({ route }) => route?.length,
+    show: (pipe, context) => routeWords(pipe, context),
+    editor: { by: 'dialog', dialog: 'route' },
+  },
+  quantityColumn<PipeRun>('pipes', 'roughnessM', 'roughness', {
+    title: 'Roughness',
+    widthPx: 100,
+    optional: true,
+    minor: true,
+  }),
+  quantityColumn<PipeRun>('pipes', 'heatLossWM', 'heatLossPerLength', {
+    title: 'Heat loss',
+    widthPx: 116,
+    optional: true,
+    minor: true,
+  }),
+  checkValveColumn(),
+  noteColumn('pipes'),
+  resultColumn<PipeRun>(
+    'massFlowKgS',
+    'massFlow',
+    { title: 'Flow', widthPx: 84 },
+    ({ id }, { pipes }) => pipes.get(id)?.massFlowKgS,
+  ),
+  resultColumn<PipeRun>(
+    'liquidVelocityMS',
+    'velocity',
+    { title: 'Liquid', widthPx: 88 },
+    ({ id }, { pipes }) => pipes.get(id)?.liquidVelocityMS,
+  ),
+  resultColumn<PipeRun>(
+    'mixtureVelocityMS',
+    'velocity',
+    { title: 'Mixture', widthPx: 92 },
+    ({ id }, { pipes }) => pipes.get(id)?.mixtureVelocityMS,
+  ),
+  resultColumn<PipeRun>(
+    'staticPa',
+    'pressureDifference',
+    { title: 'Static', widthPx: 72 },
+    ({ id }, { pipes }) => pipes.get(id)?.staticPa,
+  ),
+  resultColumn<PipeRun>(
+    'frictionPa',
+    'pressureDifference',
+    { title: 'Friction', widthPx: 80 },
+    ({ id }, { pipes }) => pipes.get(id)?.frictionPa,
+  ),
+  resultColumn<PipeRun>(
+    'flashPa',
+    'pressureDifference',
+    { title: 'Flash', widthPx: 72 },
+    ({ id }, { pipes }) => pipes.get(id)?.flashPa,
+  ),
+  findingColumn<PipeRun>('Finding', () => false),
+];
+
+function endColumn(key: 'from' | 'to', title: string): Column<PipeRun> {
+  return {
+    key,
+    title,
+    group: 'inputs',
+    widthPx: 84,
+    value: (pipe, { document }) => nodeName(pipe[key], document),
+    editor: {
+      by: 'text',
+      optional: false,
+      maxLength: 64,
+      suggestions: ({ document }) => inOrder(document.nodes).map(([id]) => nodeName(id, document)),
+      propose: (text, { id }, { document }) => {
+        const node = text === undefined ? undefined : findNode(text, document);
+        return node === undefined
+          ? {
+              ok: false,
+              reason: `Nothing in this network is called ${text ?? 'so'}. Type the tag of a trap, junction or vessel.`,
+            }
+          : { ok: true, ops: [setOp(document, 'pipes', id, key, node)] };
+      },
+    },
+  };
+}
+
+function nominalSizeColumn(): Column<PipeRun> {
+  return {
+    key: 'nps',
+    title: 'Size in',
+    group: 'inputs',
+    widthPx: 76,
+    value: ({ size }) => (size === undefined ? undefined : sizeRank(size.nps)),
+    show: ({ size }) => size?.nps ?? '',
+    editor: {
+      by: 'choice',
+      choices: ({ size }) =>
+        (pipeSizes().find(({ schedule }) => schedule === (size?.schedule ?? FIRST_SCHEDULE))?.sizes ?? []).map(
+          ({ nps, dn }) => ({ value: nps, word: `${nps} in (DN ${String(dn)})` }),
+        ),
+      chosen: ({ size }) => size?.nps ?? '',
+      propose: (nps, pipe, { document }) => sizeSet(pipe, nps, pipe.size?.schedule ?? FIRST_SCHEDULE, document),
+    },
+  };
+}
+
+function scheduleColumn(): Column<PipeRun> {
+  return {
+    key: 'schedule',
+    title: 'Schedule',
+    group: 'inputs',
+    widthPx: 84,
+    value: ({ size }) => size?.schedule,
+    editor: {
+      by: 'choice',
+      choices: ({ size }): Choice[] =>
+        pipeSizes()
+          .filter(({ sizes }) => size === undefined || sizes.some(({ nps }) => nps === size.nps))
+          .map(({ standard, schedule }) => ({ value: schedule, word: `${schedule} (${standard})` })),
+      chosen: ({ size }) => size?.schedule ?? '',
+      propose: (schedule, pipe, { document }) =>
+        pipe.size === undefined
+          ? { ok: false, reason: 'This pipe is given by its bore. Choose a nominal size first.' }
+          : sizeSet(pipe, pipe.size.nps, schedule, document),
+    },
+  };
+}
+
+function boreColumn(): Column<PipeRun> {
+  const bore = ({ size, insideDiameterM }: PipeRun): number | undefined =>
+    insideDiameterM ?? (size === undefined ? undefined : pipeBore(size)?.insideDiameterM);
+  return {
+    key: 'insideDiameterM',
+    title: 'Bore',
+    group: 'inputs',
+    widthPx: 76,
+    quantity: 'diameter',
+    value: bore,
+    derived: ({ size }) => size !== undefined,
+    editor: {
+      by: 'quantity',
+      quantity: 'diameter',
+      optional: false,
+      si: bore,
+      propose: (insideDiameterM, { id }, { document }) => ({
+        ok: true,
+        ops: [
+          setOp(document, 'pipes', id, 'insideDiameterM', insideDiameterM),
+          setOp(document, 'pipes', id, 'size', undefined),
+        ],
+      }),
+    },
+  };
+}
+
+function checkValveColumn(): Column<PipeRun> {
+  return {
+    key: 'checkValve',
+    title: 'Check valve',
+    group: 'inputs',
+    widthPx: 92,
+    minor: true,
+    value: ({ checkValve }) => (checkValve ? 'Yes' : 'No'),
+    editor: {
+      by: 'choice',
+      choices: () => [
+        { value: 'yes', word: 'Yes' },
+        { value: 'no', word: 'No' },
+      ],
+      chosen: ({ checkValve }) => (checkValve ? 'yes' : 'no'),
+      propose: (value, { id }, { document }) => ({
+        ok: true,
+        ops: [setOp(document, 'pipes', id, 'checkValve', value === 'yes')],
+      }),
+    },
+  };
+}
+
+/** A pipe has a size or a bore, never both, so the bore goes with the same batch. */
+function sizeSet(pipe: PipeRun, nps: string, schedule: string, document: NetworkDocument): Proposal {
+  if (pipeBore({ nps, schedule }) === undefined) {
+    return { ok: false, reason: `${nps} in is not made in schedule ${schedule}. Choose another size or schedule.` };
+  }
+  return {
+    ok: true,
+    ops: [
+      setOp(document, 'pipes', pipe.id, 'size', { nps, schedule }),
+      setOp(document, 'pipes', pipe.id, 'insideDiameterM', undefined),
+    ],
+  };
+}
+
+export function riseM({ from, to }: PipeRun, document: NetworkDocument): number | undefined {
+  const [start, end] = [document.nodes.get(from)?.value, document.nodes.get(to)?.value];
+  return start === undefined || end === undefined ? undefined : end.elevationM - start.elevationM;
+}
+
+function routeWords({ route }: PipeRun, { units }: ListContext): string {
+  if (route === undefined) return '';
+  return route
+    .map(({ lengthM, riseM: rise }) =>
+      [lengthM, rise].map((metres) => formatQuantity(metres, 'length', units)).join(' up '),
+    )
+    .join(', ');
+}
+
+/** An element by its tag, else by its id; a tag that two share names the first. */
+export function findNode(text: string, document: NetworkDocument): string | undefined {
+  const wanted = text.trim().toLowerCase();
+  for (const [id, { value }] of inOrder(document.nodes)) if (value.tag?.toLowerCase() === wanted) return id;
+  return [...document.nodes.keys()].find((id) => id.toLowerCase() === wanted);
+}
+
+export function nodeName(id: string, document: NetworkDocument): string {
+  return document.nodes.get(id)?.value.tag ?? id;
+}
+
+function sizeRank(nps: string): number | undefined {
+  return new Map<string, number>(Object.entries(NOMINAL_SIZES)).get(nps);
+}

@@ -1,0 +1,74 @@
+import type { NetworkNode, PipeRun } from '@riseback/network';
+import { findingSummary } from '../row-findings';
+import type { Column, ListContext } from './column';
+import { quantityColumn, textColumn } from './column-kinds';
+
+type Drawn = NetworkNode | PipeRun;
+
+/** What a person calls it, where it stands, and the way to it on the drawing. */
+export function nameColumns<E extends Drawn>(collection: 'nodes' | 'pipes'): Column<E>[] {
+  return [
+    {
+      ...textColumn<Drawn>(collection, 'tag', { title: 'Tag', group: 'element', widthPx: 92, maxLength: 64 }),
+      show: (element) => element.tag ?? element.id,
+      derived: (element) => element.tag === undefined,
+    },
+    {
+      key: 'drawing',
+      title: 'On the drawing',
+      group: 'element',
+      widthPx: 34,
+      face: 'drawingLink',
+      value: (element) => element.id,
+      show: (element) => `Show ${element.tag ?? element.id} on the drawing`,
+    },
+    textColumn<Drawn>(collection, 'area', {
+      title: 'Area',
+      group: 'element',
+      widthPx: 110,
+      maxLength: 80,
+      suggestions: ({ document }) => distinct([...nodesOf(document), ...pipesOf(document)].map(({ area }) => area)),
+    }),
+  ];
+}
+
+export function elevationColumn<E extends NetworkNode>(): Column<E> {
+  return quantityColumn<NetworkNode>('nodes', 'elevationM', 'length', { title: 'Elevation', widthPx: 84 });
+}
+
+export function noteColumn<E extends Drawn>(collection: 'nodes' | 'pipes'): Column<E> {
+  return textColumn<Drawn>(collection, 'note', { title: 'Note', widthPx: 160, maxLength: 4_000, minor: true });
+}
+
+/** The worst finding with its word; an element that passes its checks says so where `passes` is known. */
+export function findingColumn<E extends Drawn>(
+  title: string,
+  passes: (element: E, context: ListContext) => boolean,
+): Column<E> {
+  return {
+    key: 'finding',
+    title,
+    group: 'result',
+    widthPx: 190,
+    face: 'verdict',
+    value: (element, context) => {
+      const worst = context.findings.get(element.id)?.[0];
+      if (worst !== undefined) return worst.status === 'fail' ? 0 : 1;
+      return passes(element, context) ? 2 : undefined;
+    },
+    show: (element, { findings }) => findingSummary(findings.get(element.id) ?? []),
+  };
+}
+
+/** For suggestions: each text once, in the order of an index. */
+export function distinct(texts: Iterable<string | undefined>): string[] {
+  return [...new Set([...texts].filter((text) => text !== undefined))].sort((a, b) => a.localeCompare(b));
+}
+
+function nodesOf(document: ListContext['document']): NetworkNode[] {
+  return Array.from(document.nodes.values(), ({ value }) => value);
+}
+
+function pipesOf(document: ListContext['document']): PipeRun[] {
+  return Array.from(document.pipes.values(), ({ value }) => value);
+}

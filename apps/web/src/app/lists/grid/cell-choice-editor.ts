@@ -1,0 +1,57 @@
+import { afterNextRender, ChangeDetectionStrategy, Component, input, output, viewChild } from '@angular/core';
+import { MatOption, MatSelect } from '@angular/material/select';
+import type { Choice } from '../columns/column';
+
+/** The choices of a cell, open at once; choosing accepts, Escape keeps what was. */
+@Component({
+  selector: 'app-cell-choice-editor',
+  imports: [MatOption, MatSelect],
+  changeDetection: ChangeDetectionStrategy.OnPush,
+  template: `
+    <mat-select
+      [aria-label]="label()"
+      [value]="chosen()"
+      [panelWidth]="null"
+      hideSingleSelectionIndicator
+      (selectionChange)="picked.emit($event.value)"
+      (closed)="closed.emit()"
+      (keydown)="$event.stopPropagation()"
+    >
+      @for (choice of choices(); track choice.value) {
+        <mat-option [value]="choice.value">{{ choice.word }}</mat-option>
+      }
+    </mat-select>
+  `,
+  styles: `
+    :host {
+      display: block;
+      width: 100%;
+      height: 100%;
+      padding: 0 4px 0 7px;
+      outline: 2px solid var(--rb-copper);
+      outline-offset: -2px;
+      background: var(--rb-well);
+    }
+    mat-select {
+      height: 100%;
+      --mat-select-trigger-text-size: 12.5px;
+      --mat-select-trigger-text-line-height: 26px;
+    }
+  `,
+})
+export class CellChoiceEditor {
+  readonly label = input.required<string>();
+  readonly choices = input.required<readonly Choice[]>();
+  readonly chosen = input.required<string>();
+  readonly picked = output<string>();
+  readonly closed = output();
+
+  private readonly select = viewChild.required(MatSelect);
+
+  constructor() {
+    afterNextRender(() => {
+      this.select().focus({ preventScroll: true });
+      this.select().open();
+    });
+  }
+}

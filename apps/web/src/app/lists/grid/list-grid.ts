@@ -1,0 +1,462 @@
+import { CdkConnectedOverlay, CdkOverlayOrigin, type ConnectedPosition } from '@angular/cdk/overlay';
+import {
+  CdkFixedSizeVirtualScroll,
+  CdkVirtualForOf,
+  CdkVirtualScrollableElement,
+  CdkVirtualScrollViewport,
+} from '@angular/cdk/scrolling';
+import {
+  ChangeDetectionStrategy,
+  ChangeDetectorRef,
+  Component,
+  computed,
+  type ElementRef,
+  inject,
+  input,
+  linkedSignal,
+  output,
+  signal,
+  untracked,
+  viewChild,
+} from '@angular/core';
+import type { EditOp } from '@riseback/network';
+import { displayUnit, type DisplayUnits, formatQuantity } from '@riseback/units';
+import { Staff } from '../../results/staff/staff';
+import { StatusMark } from '../../shared/status-mark/status-mark';
+import { arrangeRows, nextSorting, type Sorting } from '../arrange-rows';
+import type { DialogName } from '../columns/column';
+import type { CellView, ListTable, TableColumn } from '../list-table';
+import { CellChoiceEditor } from './cell-choice-editor';
+import { type CellPosition, cellAfterKey, HEAD_ROW, scrollToShow, within } from './cell-navigation';
+import { type AcceptedText, type AfterEdit, CellTextEditor, type RefusedText } from './cell-text-editor';
+import { gridLayout } from './grid-layout';
+import { extendRows, keepShown, NO_ROWS, type RowSelection, toggleAllRows, toggleRow } from './row-selection';
+
+export const ROW_HEIGHT_PX = 26;
+/** Group heads and column heads. */
+const HEAD_HEIGHT_PX = 52;
+
+interface Editing {
+  readonly id: string;
+  readonly key: string;
+  readonly start: string;
+  readonly selectAll: boolean;
+}
+
+export interface CellEdit {
+  readonly label: string;
+  readonly ops: readonly EditOp[];
+}
+
+let gridCount = 0;
+
+/**
+ * A list as a grid by the WAI-ARIA pattern: one tab stop, which keeps the focus while `aria-activedescendant` names the active cell, so
+ * that a row scrolled out of the window never takes the focus with it. Only the rows in sight are in the page.
+ */
+@Component({
+  selector: 'app-list-grid',
+  imports: [
+    CdkConnectedOverlay,
+    CdkFixedSizeVirtualScroll,
+    CdkOverlayOrigin,
+    CdkVirtualForOf,
+    CdkVirtualScrollableElement,
+    CdkVirtualScrollViewport,
+    CellChoiceEditor,
+    CellTextEditor,
+    Staff,
+    StatusMark,
+  ],
+  changeDetection: ChangeDetectionStrategy.OnPush,
+  templateUrl: './list-grid.html',
+  styleUrl: './list-grid.scss',
+})
+export class ListGrid {
+  private readonly changeDetector = inject(ChangeDetectorRef);
+
+  readonly table = input.required<ListTable>();
+  readonly label = input.required<string>();
+  /** What the rows are, over the first columns. */
+  readonly elementWord = input.required<string>();
+  readonly emptyWords = input.required<string>();
+  readonly filter = input('');
+  readonly allInputs = input(false);
+  readonly mayEdit = input(false);
+  /** The results shown are those of an earlier state of the network. */
+  readonly stale = input(false);
+  readonly units = input.required<DisplayUnits>();
+  readonly staffTopPa = input.required<number>();
+  readonly edited = output<CellEdit>();
+  readonly dialogWanted = output<{ id: string; dialog: DialogName }>();
+  readonly drawingWanted = output<string>();
+  readonly selectedChange = output<readonly string[]>();
+  readonly activeChange = output<string>();
+  /** For the page's live region. */
+  readonly told = output<string>();
+
+  private readonly region = viewChild.required<ElementRef<HTMLElement>>('region');
+
+  protected readonly gridId = `list-${String(++gridCount)}`;
+  protected readonly ROW_HEIGHT_PX = ROW_HEIGHT_PX;
+  protected readonly HEAD_ROW = HEAD_ROW;
+  protected readonly trackId = (_: number, id: string): string => id;
+  protected readonly besideCell: ConnectedPosition[] = [
+    { originX: 'end', originY: 'bottom', overlayX: 'end', overlayY: 'top', offsetY: 4 },
+    { originX: 'end', originY: 'top', overlayX: 'end', overlayY: 'bottom', offsetY: -4 },
+  ];
+  protected readonly sorting = signal<Sorting | null>(null);
+  protected readonly editing = signal<Editing | null>(null);
+  protected readonly focused = signal(false);
+  /** Texts that were refused and left standing, by cell. */
+  private readonly drafts = signal<ReadonlyMap<string, RefusedText>>(new Map());
+
+  private readonly tableIds = computed(() => this.table().ids, { equal: sameItems });
+  /** Values that change leave rows where they are: a row that jumps away under the hand is worse than an order a moment old. */
+  protected readonly rowIds = computed(() => {
+    this.tableIds();
+    const [filter, sorting] = [this.filter(), this.sorting()];
+    return untracked(() => arrangeRows(this.table(), filter, sorting));
+  });
+  protected readonly columns = computed(() => this.table().columns.filter(({ minor }) => !minor || this.allInputs()));
+  protected readonly layout = computed(() => gridLayout(this.columns(), this.mayEdit()));
+  protected readonly selection = linkedSignal<readonly string[], RowSelection>({
+    source: this.rowIds,
+    computation: (order, previous) => keepShown(previous?.value ?? NO_ROWS, order),
+  });
+  private readonly position = signal<CellPosition>({ row: 0, column: 0 });
+  protected readonly active = computed(() =>
+    within(this.position(), { rows: this.rowIds().length, columns: this.layout().cells.length, page: 1 }),
+  );
+  protected readonly activeId = computed(() => this.rowIds()[this.active().row] ?? null);
+  protected readonly activeCellId = computed(() => {
+    const { row, column } = this.active();
+    return row === HEAD_ROW || this.rowIds().length > 0 ? this.cellId(row, column) : null;
+  });
+  protected readonly staffScale = computed(() => {
+    const { system, atmosphericPressurePa } = this.units();
+    const [from, to] = [atmosphericPressurePa, this.staffTopPa()].map((pa) =>
+      formatQuantity(pa, 'pressure', this.units(), { decimals: 0 }),
+    );
+    return `${from ?? ''} to ${to ?? ''} ${displayUnit('pressure', system)}`;
+  });
+  protected readonly allTicked = computed(() => {
+    const rows = this.rowIds();
+    return rows.length > 0 && this.selection().ids.size === rows.length;
+  });
+
+  /** Puts the active cell on a row, in sight; false when the list does not show it. */
+  showRow(id: string): boolean {
+    const row = this.rowIds().indexOf(id);
+    if (row < 0) return false;
+    this.moveTo({ row, column: this.active().column });
+    this.focus();
+    return true;
+  }
+
+  focus(): void {
+    this.region().nativeElement.focus({ preventScroll: true });
+  }
+
+  clearSelection(): void {
+    this.select(NO_ROWS);
+  }
+
+  protected cellId(row: number, column: number): string {
+    return `${this.gridId}-${row === HEAD_ROW ? 'head' : String(row)}-${String(column)}`;
+  }
+
+  protected view(id: string, column: TableColumn): CellView {
+    return this.table().cell(id, column.key);
+  }
+
+  protected draft(id: string, column: TableColumn): RefusedText | undefined {
+    return this.drafts().get(draftKey(id, column.key));
+  }
+
+  protected editorOf(id: string, column: TableColumn) {
+    const editing = this.editing();
+    if (editing?.id !== id || editing.key !== column.key) return null;
+    const editor = this.table().editor(id, column.key);
+    return editor === null || editor.by === 'dialog' ? null : { ...editing, editor };
+  }
+
+  protected cellLabel(id: string, column: TableColumn): string {
+    return `${column.title} of ${this.table().nameOf(id)}`;
+  }
+
+  protected sortDirection(column: TableColumn): Sorting['direction'] | null {
+    const sorting = this.sorting();
+    return sorting?.key === column.key ? sorting.direction : null;
+  }
+
+  protected sortBy(column: TableColumn): void {
+    const id = this.activeId();
+    this.sorting.update((sorting) => nextSorting(sorting, column.key));
+    if (id !== null && this.active().row !== HEAD_ROW) {
+      this.position.update(({ column: at }) => ({ row: this.rowIds().indexOf(id), column: at }));
+    }
+    const direction = this.sortDirection(column);
+    this.told.emit(direction === null ? 'In the order of the file' : `Sorted by ${column.title}, ${direction}`);
+  }
+
+  /** The grid keeps the focus when a cell is pressed; an editor in it takes its own. */
+  protected keepFocus(event: MouseEvent): void {
+    if (placeOf(event) !== null) event.preventDefault();
+  }
+
+  /** One listener for all cells: the grid is what has the focus and the keys. */
+  protected press(event: MouseEvent): void {
+    const place = placeOf(event);
+    if (place === null) return;
+    const { row, column } = this.active();
+    const again = place.row === row && place.column === column && this.focused();
+    this.focus();
+    this.moveTo(place);
+    const cell = this.layout().cells[place.column];
+    const id = this.rowIds()[place.row];
+    if (place.row === HEAD_ROW) this.pressHead();
+    else if (cell === undefined || id === undefined) return;
+    else if (cell.kind === 'tick') this.tick(id, event.shiftKey);
+    else if (cell.column.face === 'drawingLink') this.drawingWanted.emit(id);
+    else if (again) this.startEditing(null);
+  }
+
+  protected onKey(event: KeyboardEvent): void {
+    if (this.editing() !== null || event.altKey || event.isComposing) return;
+    const ctrl = event.ctrlKey || event.metaKey;
+    if (this.moveByKey(event, ctrl) || this.actByKey(event, ctrl)) {
+      event.preventDefault();
+      event.stopPropagation();
+    }
+  }
+
+  protected acceptText({ proposal, then }: AcceptedText): void {
+    const editing = this.editing();
+    if (editing === null) return;
+    this.editing.set(null);
+    this.dropDraft(editing);
+    this.emitEdit(editing, proposal.ops);
+    this.moveAfterEdit(then);
+  }
+
+  protected cancelEditing(): void {
+    const editing = this.editing();
+    this.editing.set(null);
+    if (editing !== null) this.dropDraft(editing);
+    this.focus();
+  }
+
+  protected keepDraft(refused: RefusedText): void {
+    const editing = this.editing();
+    if (editing === null) return;
+    this.editing.set(null);
+    this.drafts.update((drafts) => new Map(drafts).set(draftKey(editing.id, editing.key), refused));
+  }
+
+  protected pick(value: string): void {
+    const editing = this.editing();
+    const editor = editing === null ? null : this.table().editor(editing.id, editing.key);
+    if (editing === null || editor?.by !== 'choice') return;
+    const proposal = editor.propose(value);
+    if (proposal.ok) {
+      this.dropDraft(editing);
+      this.emitEdit(editing, proposal.ops);
+    } else {
+      this.keepDraft({
+        text: editor.choices.find((choice) => choice.value === value)?.word ?? value,
+        reason: proposal.reason,
+      });
+      this.told.emit(proposal.reason);
+    }
+  }
+
+  protected endPicking(): void {
+    this.editing.set(null);
+    this.focus();
+  }
+
+  protected tickAll(): void {
+    this.select(toggleAllRows(this.selection(), this.rowIds()));
+  }
+
+  private moveByKey(event: KeyboardEvent, ctrl: boolean): boolean {
+    const page = Math.max(
+      1,
+      Math.floor((this.region().nativeElement.clientHeight - HEAD_HEIGHT_PX) / ROW_HEIGHT_PX) - 1,
+    );
+    const extent = { rows: this.rowIds().length, columns: this.layout().cells.length, page };
+    const to = cellAfterKey({ key: event.key, ctrl }, this.active(), extent);
+    if (to === null) return false;
+    const extends_ = event.shiftKey && this.mayEdit() && to.row !== this.active().row && to.row !== HEAD_ROW;
+    const from = this.activeId();
+    this.moveTo(to);
+    if (extends_) {
+      const start = this.selection().anchor ?? from;
+      const order = this.rowIds();
+      this.select(extendRows({ ids: this.selection().ids, anchor: start }, order, order[to.row] ?? ''));
+    }
+    return true;
+  }
+
+  private actByKey(event: KeyboardEvent, ctrl: boolean): boolean {
+    const { key } = event;
+    if (this.active().row === HEAD_ROW) return (key === 'Enter' || key === ' ') && this.pressHead();
+    const id = this.activeId();
+    if (id === null) return false;
+    if (key === 'Enter' || key === 'F2') return this.pressCell(id);
+    if (key === 'Escape') return this.escape(id);
+    if (!this.mayEdit()) return false;
+    if (key === ' ') return this.tick(id, event.shiftKey);
+    if (ctrl) return key.toLowerCase() === 'a' && this.selectAllRows();
+    if (key === 'Delete' || key === 'Backspace') return this.emptyCell(id);
+    return key.length === 1 && this.startEditing(key);
+  }
+
+  private pressHead(): boolean {
+    const cell = this.layout().cells[this.active().column];
+    if (cell?.kind === 'tick') this.tickAll();
+    else if (cell !== undefined && cell.column.face !== 'drawingLink') this.sortBy(cell.column);
+    return true;
+  }
+
+  private pressCell(id: string): boolean {
+    const cell = this.layout().cells[this.active().column];
+    if (cell?.kind === 'tick') return this.tick(id, false);
+    if (cell?.column.face === 'drawingLink') {
+      this.drawingWanted.emit(id);
+      return true;
+    }
+    return this.startEditing(null);
+  }
+
+  private escape(id: string): boolean {
+    const cell = this.layout().cells[this.active().column];
+    if (cell?.kind === 'column' && this.draft(id, cell.column) !== undefined)
+      this.dropDraft({ id, key: cell.column.key });
+    else if (this.selection().ids.size > 0) this.clearSelection();
+    else return false;
+    return true;
+  }
+
+  private tick(id: string, extend: boolean): boolean {
+    if (!this.mayEdit()) return false;
+    this.select(extend ? extendRows(this.selection(), this.rowIds(), id) : toggleRow(this.selection(), id));
+    return true;
+  }
+
+  private selectAllRows(): boolean {
+    if (!this.allTicked()) this.tickAll();
+    return true;
+  }
+
+  private select(selection: RowSelection): void {
+    this.selection.set(selection);
+    const order = this.rowIds();
+    this.selectedChange.emit(order.filter((id) => selection.ids.has(id)));
+    const count = selection.ids.size;
+    this.told.emit(count === 0 ? 'No rows selected' : `${String(count)} ${count === 1 ? 'row' : 'rows'} selected`);
+  }
+
+  /** @param firstKey what the person typed on the closed cell, which begins a new text; null keeps the old one */
+  private startEditing(firstKey: string | null): boolean {
+    const cell = this.layout().cells[this.active().column];
+    const id = this.activeId();
+    if (id === null || cell?.kind !== 'column') return false;
+    const { key } = cell.column;
+    const editor = this.mayEdit() ? this.table().editor(id, key) : null;
+    if (editor === null) {
+      if (firstKey === null) this.told.emit(`${this.cellLabel(id, cell.column)} cannot be changed here`);
+      return firstKey === null;
+    }
+    if (editor.by === 'dialog') {
+      if (firstKey === null) this.dialogWanted.emit({ id, dialog: editor.dialog });
+      return firstKey === null;
+    }
+    const initial = editor.by === 'choice' ? '' : editor.initial;
+    this.editing.set({
+      id,
+      key,
+      start: firstKey ?? this.draft(id, cell.column)?.text ?? initial,
+      selectAll: firstKey === null,
+    });
+    // at once, so that the next key typed already falls into the box
+    this.changeDetector.detectChanges();
+    return true;
+  }
+
+  private emptyCell(id: string): boolean {
+    const cell = this.layout().cells[this.active().column];
+    if (cell?.kind !== 'column') return false;
+    const { key } = cell.column;
+    const editor = this.table().editor(id, key);
+    if (editor === null || editor.by === 'dialog' || editor.by === 'choice') return false;
+    const proposal = editor.propose('');
+    if (proposal.ok) this.emitEdit({ id, key }, proposal.ops);
+    else this.told.emit(proposal.reason);
+    return true;
+  }
+
+  private emitEdit({ id, key }: Pick<Editing, 'id' | 'key'>, ops: readonly EditOp[]): void {
+    const column = this.table().columns.find((each) => each.key === key);
+    if (column === undefined || ops.length === 0) return;
+    this.edited.emit({ label: `set ${column.title.toLowerCase()} of ${this.table().nameOf(id)}`, ops });
+  }
+
+  private dropDraft({ id, key }: Pick<Editing, 'id' | 'key'>): void {
+    const dropped = draftKey(id, key);
+    if (!this.drafts().has(dropped)) return;
+    this.drafts.update((drafts) => new Map([...drafts].filter(([each]) => each !== dropped)));
+  }
+
+  private moveAfterEdit(then: AfterEdit): void {
+    if (then === 'stay') return;
+    const { row, column } = this.active();
+    const down = then === 'down' ? 1 : then === 'up' ? -1 : 0;
+    const right = then === 'right' ? 1 : then === 'left' ? -1 : 0;
+    this.moveTo({ row: Math.max(0, row + down), column: column + right });
+    this.focus();
+  }
+
+  private moveTo(to: CellPosition): void {
+    const before = this.activeId();
+    this.position.set(within(to, { rows: this.rowIds().length, columns: this.layout().cells.length, page: 1 }));
+    this.scrollToActive();
+    const id = this.activeId();
+    if (id !== null && id !== before) this.activeChange.emit(id);
+  }
+
+  private scrollToActive(): void {
+    const { row, column } = this.active();
+    const region = this.region().nativeElement;
+    if (row !== HEAD_ROW) {
+      const start = HEAD_HEIGHT_PX + row * ROW_HEIGHT_PX;
+      region.scrollTop = scrollToShow(
+        { start, end: start + ROW_HEIGHT_PX },
+        { offset: region.scrollTop, size: region.clientHeight, coveredStart: HEAD_HEIGHT_PX },
+      );
+    }
+    const cell = this.layout().cells[column];
+    if (cell === undefined || cell.stickyLeftPx !== null) return;
+    region.scrollLeft = scrollToShow(
+      { start: cell.leftPx, end: cell.leftPx + cell.widthPx },
+      { offset: region.scrollLeft, size: region.clientWidth, coveredStart: this.layout().stickyWidthPx },
+    );
+  }
+}
+
+/** The cell that was pressed; null for what is inside an editor or between cells. */
+function placeOf({ target }: MouseEvent): CellPosition | null {
+  if (!(target instanceof Element) || target.closest('app-cell-text-editor, app-cell-choice-editor') !== null)
+    return null;
+  const cell = target.closest<HTMLElement>('[data-row]');
+  return cell === null ? null : { row: Number(cell.dataset['row']), column: Number(cell.dataset['column']) };
+}
+
+function draftKey(id: string, key: string): string {
+  return `${id}/${key}`;
+}
+
+function sameItems(a: readonly string[], b: readonly string[]): boolean {
+  return a.length === b.length && a.every((item, index) => item === b[index]);
+}

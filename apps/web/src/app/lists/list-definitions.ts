@@ -1,0 +1,139 @@
+import {
+  type FlashVessel,
+  inOrder,
+  type Junction,
+  type NetworkDocument,
+  type NetworkNode,
+  type PipeRun,
+  type PumpedInlet,
+  type TrapModel,
+} from '@riseback/network';
+import type { Column, ListContext, ListedElement } from './columns/column';
+import { JUNCTION_COLUMNS, PUMPED_INLET_COLUMNS, VESSEL_COLUMNS, type Vessel } from './columns/node-columns';
+import { PIPE_COLUMNS } from './columns/pipe-columns';
+import { isTrap, TRAP_COLUMNS } from './columns/trap-columns';
+import { TRAP_MODEL_COLUMNS } from './columns/trap-model-columns';
+import { type ListTable, tabulate } from './list-table';
+
+export const LIST_IDS = ['traps', 'pipes', 'junctions', 'vessels', 'pumped-inlets', 'trap-models'] as const;
+export type ListId = (typeof LIST_IDS)[number];
+
+export type ListedCollection = 'nodes' | 'pipes' | 'trapModels';
+
+/** What can be added from a list's own button. */
+export type NewKind = NetworkNode['kind'] | 'pipe' | 'trapModel';
+
+export interface ListFacts {
+  readonly id: ListId;
+  readonly word: string;
+  readonly one: string;
+  readonly many: string;
+  readonly collection: ListedCollection;
+  readonly additions: readonly { readonly kind: NewKind; readonly word: string }[];
+}
+
+/** A list as the page sees it; what its rows are made of stays inside. */
+export interface ElementList extends ListFacts {
+  readonly count: (document: NetworkDocument) => number;
+  readonly holds: (document: NetworkDocument, elementId: string) => boolean;
+  readonly table: (context: ListContext) => ListTable;
+}
+
+export const ELEMENT_LISTS: readonly ElementList[] = [
+  elementList(
+    {
+      id: 'traps',
+      word: 'Traps',
+      one: 'trap',
+      many: 'traps',
+      collection: 'nodes',
+      additions: [{ kind: 'trap', word: 'Add a trap' }],
+    },
+    (document) => nodes(document).filter(isTrap),
+    TRAP_COLUMNS,
+  ),
+  elementList(
+    {
+      id: 'pipes',
+      word: 'Pipes',
+      one: 'pipe',
+      many: 'pipes',
+      collection: 'pipes',
+      additions: [{ kind: 'pipe', word: 'Add a pipe' }],
+    },
+    (document): PipeRun[] => inOrder(document.pipes).map(([, { value }]) => value),
+    PIPE_COLUMNS,
+  ),
+  elementList(
+    {
+      id: 'junctions',
+      word: 'Junctions',
+      one: 'junction',
+      many: 'junctions',
+      collection: 'nodes',
+      additions: [{ kind: 'junction', word: 'Add a junction' }],
+    },
+    (document) => nodes(document).filter((node): node is Junction => node.kind === 'junction'),
+    JUNCTION_COLUMNS,
+  ),
+  elementList(
+    {
+      id: 'vessels',
+      word: 'Vessels & receivers',
+      one: 'vessel',
+      many: 'vessels',
+      collection: 'nodes',
+      additions: [
+        { kind: 'receiver', word: 'Add a receiver' },
+        { kind: 'flashVessel', word: 'Add a flash vessel' },
+      ],
+    },
+    (document) => nodes(document).filter(isVessel),
+    VESSEL_COLUMNS,
+  ),
+  elementList(
+    {
+      id: 'pumped-inlets',
+      word: 'Pumped inlets',
+      one: 'pumped inlet',
+      many: 'pumped inlets',
+      collection: 'nodes',
+      additions: [{ kind: 'pumpedInlet', word: 'Add a pumped inlet' }],
+    },
+    (document) => nodes(document).filter((node): node is PumpedInlet => node.kind === 'pumpedInlet'),
+    PUMPED_INLET_COLUMNS,
+  ),
+  elementList(
+    {
+      id: 'trap-models',
+      word: 'Trap models',
+      one: 'trap model',
+      many: 'trap models',
+      collection: 'trapModels',
+      additions: [{ kind: 'trapModel', word: 'Add a trap model' }],
+    },
+    (document): TrapModel[] => inOrder(document.trapModels).map(([, { value }]) => value),
+    TRAP_MODEL_COLUMNS,
+  ),
+];
+
+function elementList<E extends ListedElement>(
+  facts: ListFacts,
+  elements: (document: NetworkDocument) => E[],
+  columns: readonly Column<E>[],
+): ElementList {
+  return {
+    ...facts,
+    count: (document) => elements(document).length,
+    holds: (document, elementId) => elements(document).some(({ id }) => id === elementId),
+    table: (context) => tabulate(columns, elements(context.document), context),
+  };
+}
+
+function nodes(document: NetworkDocument): NetworkNode[] {
+  return inOrder(document.nodes).map(([, { value }]) => value);
+}
+
+function isVessel(node: NetworkNode): node is Vessel {
+  return node.kind === 'receiver' || node.kind === ('flashVessel' satisfies FlashVessel['kind']);
+}

@@ -1,0 +1,231 @@
+import {
+  ChangeDetectionStrategy,
+  Component,
+  computed,
+  DestroyRef,
+  effect,
+  inject,
+  input,
+  linkedSignal,
+  signal,
+  untracked,
+  viewChild,
+} from '@angular/core';
+import { MatButton } from '@angular/material/button';
+import { MatDialog } from '@angular/material/dialog';
+import { MatTabLink, MatTabNav, MatTabNavPanel } from '@angular/material/tabs';
+import { ActivatedRoute, Router, RouterLink } from '@angular/router';
+import { firstValueFrom } from 'rxjs';
+import { NetworkStore } from '../networks/network-store';
+import { BulkBar } from './bulk-bar/bulk-bar';
+import type { DialogName } from './columns/column';
+import { deletionOf } from './deletion';
+import { CellDialogs } from './dialogs/cell-dialogs';
+import { DeleteDialog, type DeleteDialogData } from './dialogs/delete-dialog';
+import { type CellEdit, ListGrid } from './grid/list-grid';
+import { listContext } from './list-context';
+import { ELEMENT_LISTS, type ElementList, type ListId, type NewKind } from './list-definitions';
+import { newElementForm } from './new-element';
+
+/** How long the active row must stand before the address names it. */
+const ADDRESS_DELAY_MS = 300;
+
+/** The elements of the network as tables: inputs to be edited in place, results beside them. */
+@Component({
+  selector: 'app-lists-page',
+  imports: [BulkBar, ListGrid, MatButton, MatTabLink, MatTabNav, MatTabNavPanel, RouterLink],
+  changeDetection: ChangeDetectionStrategy.OnPush,
+  host: { '(document:keydown)': 'undoByKey($event)' },
+  templateUrl: './lists-page.html',
+  styleUrl: './lists-page.scss',
+})
+export class ListsPage {
+  protected readonly store = inject(NetworkStore);
+  private readonly dialogs = inject(CellDialogs);
+  private readonly dialog = inject(MatDialog);
+  private readonly router = inject(Router);
+  private readonly route = inject(ActivatedRoute);
+
+  /** From the query: which list, and which element's row; the element's own list comes first. */
+  readonly list = input<string>();
+  readonly element = input<string>();
+
+  private readonly grid = viewChild(ListGrid);
+
+  protected readonly filter = signal('');
+  protected readonly allInputs = signal(false);
+  protected readonly told = signal('');
+  private addressTimer: ReturnType<typeof setTimeout> | undefined;
+
+  /** Kept as it is while the address names an element that is gone. */
+  protected readonly current = linkedSignal<{ list: string | undefined; element: string | undefined }, ElementList>({
+    source: () => ({ list: this.list(), element: this.element() }),
+    computation: ({ list, element }, previous) =>
+      untracked(() => this.listOf(element)) ?? findList(list) ?? previous?.value ?? firstList(),
+  });
+  protected readonly selected = linkedSignal<ListId, readonly string[]>({
+    source: () => this.current().id,
+    computation: () => [],
+  });
+  protected readonly tabs = computed(() => {
+    const document = this.store.document();
+    return ELEMENT_LISTS.map(({ id, word, count }) => ({
+      id,
+      word,
+      count: document === null ? 0 : count(document),
+      current: id === this.current().id,
+    }));
+  });
+  private readonly context = computed(() => {
+    const document = this.store.document();
+    if (document === null) return null;
+    return listContext({
+      document,
+      units: this.store.units(),
+      topology: this.store.topology(),
+      outcome: this.store.outcome(),
+      result: this.store.result(),
+      traps: this.store.trapResults(),
+      pipes: this.store.pipeResults(),
+      nodes: this.store.nodeResults(),
+    });
+  });
+  protected readonly table = computed(() => {
+    const context = this.context();
+    return context === null ? null : this.current().table(context);
+  });
+  protected readonly staffTopPa = computed(() => this.context()?.staffTopPa ?? 0);
+  protected readonly hasMinor = computed(() => this.table()?.columns.some(({ minor }) => minor) ?? false);
+  protected readonly emptyWords = computed(() =>
+    this.filter().trim() === ''
+      ? `No ${this.current().many} in this network yet.`
+      : `No ${this.current().one} has “${this.filter().trim()}” in its tag, area, type or model.`,
+  );
+
+  constructor() {
+    effect(() => {
+      const element = this.element();
+      const grid = this.grid();
+      if (element !== undefined && grid !== undefined) untracked(() => grid.showRow(element));
+    });
+    inject(DestroyRef).onDestroy(() => {
+      clearTimeout(this.addressTimer);
+    });
+  }
+
+  protected edit({ label, ops }: CellEdit): void {
+    const short = label.slice(0, 120);
+    const taken = this.store.edit(short, ops);
+    this.told.set(taken ? `Done: ${short}` : `Not taken: ${this.store.lastRefusal().join(' ')}`);
+  }
+
+  protected async openDialog({ id, dialog }: { id: string; dialog: DialogName }): Promise<void> {
+    const document = this.store.document();
+    if (document === null) return;
+    const edit = await this.dialogs.open(dialog, id, document, this.store.units());
+    if (edit !== null) this.edit(edit);
+  }
+
+  protected async add(kind: NewKind): Promise<void> {
+    const document = this.store.document();
+    if (document === null) return;
+    const form = newElementForm(kind, document);
+    const values = await this.dialogs.askFields({ ...form, units: this.store.units(), submitWord: 'Add' });
+    if (values === undefined) return;
+    const { id, label, op } = form.make(values);
+    this.filter.set('');
+    this.edit({ label, ops: [op] });
+    this.grid()?.showRow(id);
+  }
+
+  protected async deleteSelected(): Promise<void> {
+    const document = this.store.document();
+    if (document === null) return;
+    const { title, along, label, ops } = deletionOf(document, this.current(), this.selected());
+    const data: DeleteDialogData = { title, along };
+    const agreed = await firstValueFrom(
+      this.dialog.open<DeleteDialog, DeleteDialogData, boolean>(DeleteDialog, { data }).afterClosed(),
+    );
+    if (agreed !== true) return;
+    this.edit({ label, ops });
+    this.selected.set([]);
+    this.grid()?.focus();
+  }
+
+  protected clearSelection(): void {
+    this.grid()?.clearSelection();
+    this.grid()?.focus();
+  }
+
+  protected undo(): void {
+    const label = this.store.undoLabel();
+    this.afterStep(this.store.undo(), `Undone: ${label ?? ''}`);
+  }
+
+  protected redo(): void {
+    const label = this.store.redoLabel();
+    this.afterStep(this.store.redo(), `Done again: ${label ?? ''}`);
+  }
+
+  /** Not while a text is typed, where the browser's own undo belongs, nor behind a dialog. */
+  protected undoByKey(event: KeyboardEvent): void {
+    if (!(event.ctrlKey || event.metaKey) || event.altKey || !this.store.mayDraw()) return;
+    if (this.dialog.openDialogs.length > 0 || isTextBox(event.target)) return;
+    const key = event.key.toLowerCase();
+    if (key === 'z' && !event.shiftKey) this.undo();
+    else if (key === 'y' || (key === 'z' && event.shiftKey)) this.redo();
+    else return;
+    event.preventDefault();
+  }
+
+  /** The address names the active row, so that the other views open at the same element and the link can be passed on. */
+  protected nameInAddress(id: string): void {
+    clearTimeout(this.addressTimer);
+    if (this.current().collection === 'trapModels') return;
+    this.addressTimer = setTimeout(() => {
+      void this.router.navigate([], {
+        relativeTo: this.route,
+        queryParams: { element: id, list: this.current().id },
+        queryParamsHandling: 'merge',
+        replaceUrl: true,
+      });
+    }, ADDRESS_DELAY_MS);
+  }
+
+  protected showOnDrawing(id: string): void {
+    clearTimeout(this.addressTimer);
+    void this.router.navigate(['../drawing'], {
+      relativeTo: this.route,
+      queryParams: { element: id, list: null },
+      queryParamsHandling: 'merge',
+    });
+  }
+
+  private afterStep(touched: readonly string[] | null, words: string): void {
+    this.told.set(touched === null ? this.store.lastRefusal().join(' ') || 'Nothing to undo' : words);
+    const shown = touched?.find((id) => this.table()?.ids.includes(id));
+    if (shown !== undefined) this.grid()?.showRow(shown);
+  }
+
+  private listOf(element: string | undefined): ElementList | undefined {
+    const document = this.store.document();
+    if (element === undefined || document === null) return undefined;
+    return ELEMENT_LISTS.find(({ collection, holds }) => collection !== 'trapModels' && holds(document, element));
+  }
+}
+
+function findList(id: string | undefined): ElementList | undefined {
+  return ELEMENT_LISTS.find((list) => list.id === id);
+}
+
+function firstList(): ElementList {
+  const [first] = ELEMENT_LISTS;
+  if (first === undefined) throw new RangeError('There are no lists');
+  return first;
+}
+
+function isTextBox(target: EventTarget | null): boolean {
+  return (
+    target instanceof HTMLInputElement || target instanceof HTMLTextAreaElement || target instanceof HTMLSelectElement
+  );
+}
