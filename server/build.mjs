@@ -1,8 +1,9 @@
 // Builds the pages (ng build) and the server (esbuild) into `dist`, when their sources have changed.
 import { spawn } from 'node:child_process';
 import { createHash } from 'node:crypto';
-import { existsSync, mkdirSync, readdirSync, readFileSync, renameSync, rmSync, writeFileSync } from 'node:fs';
+import { existsSync, mkdirSync, readdirSync, readFileSync, renameSync, rmSync, statSync, writeFileSync } from 'node:fs';
 import { join, relative } from 'node:path';
+import { brotliCompressSync, gzipSync } from 'node:zlib';
 import { ensureInstalled, root } from './install.mjs';
 
 const dist = join(root, 'dist');
@@ -22,12 +23,19 @@ export async function ensureBuilt(log) {
   rmSync(target, { recursive: true, force: true });
   mkdirSync(target, { recursive: true });
   try {
-    await Promise.all([buildPages(join(target, 'web')), buildServer(join(target, 'server'))]);
+    await bothOrNeither(buildPages(join(target, 'web')), buildServer(join(target, 'server')));
+    compressPages(join(target, 'web', 'browser'));
     writeFileSync(join(target, '.riseback-build'), wanted);
     replaceDist(target);
   } finally {
     rmSync(target, { recursive: true, force: true });
   }
+}
+
+/** Waits for the second even if the first fails: it would go on writing into a folder that is being removed. */
+async function bothOrNeither(...builds) {
+  const failed = (await Promise.allSettled(builds)).find(({ status }) => status === 'rejected');
+  if (failed !== undefined) throw failed.reason;
 }
 
 function isBuilt(wanted) {
@@ -72,6 +80,16 @@ async function buildPages(outputPath) {
   if (code !== 0) {
     process.stderr.write(output);
     throw new Error('The pages cannot be built; the messages stand above.');
+  }
+}
+
+/** Once here, as small as can be, rather than at each request. index.html is filled in at each request and stays as it is. */
+function compressPages(folder) {
+  const worthwhile = filesOf(folder).filter((file) => /\.(js|css|svg|json)$/.test(file) && statSync(file).size > 1024);
+  for (const file of worthwhile) {
+    const content = readFileSync(file);
+    writeFileSync(`${file}.br`, brotliCompressSync(content));
+    writeFileSync(`${file}.gz`, gzipSync(content, { level: 9 }));
   }
 }
 

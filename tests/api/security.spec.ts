@@ -1,7 +1,7 @@
 import { mkdirSync, mkdtempSync, rmSync, writeFileSync } from 'node:fs';
 import { tmpdir } from 'node:os';
 import { join } from 'node:path';
-import { gzipSync } from 'node:zlib';
+import { brotliCompressSync, gzipSync } from 'node:zlib';
 import request from 'supertest';
 import { afterAll, afterEach, beforeAll, beforeEach, describe, expect, it } from 'vitest';
 import * as z from 'zod';
@@ -243,6 +243,7 @@ describe('the pages', () => {
     folder = mkdtempSync(join(tmpdir(), 'riseback-pages-'));
     writeFileSync(join(folder, 'index.html'), '<app-root ngCspNonce="CSP_NONCE"></app-root>');
     writeFileSync(join(folder, 'main-ABCD2345.js'), '1;');
+    writeFileSync(join(folder, 'main-ABCD2345.js.br'), brotliCompressSync('1;'));
     writeFileSync(join(folder, 'mark.svg'), '<svg/>');
     mkdirSync(join(folder, 'media'));
     pages = new TestServer({ webFolder: folder });
@@ -289,6 +290,21 @@ describe('the pages', () => {
     expect(hashed.headers['cache-control']).toBe('public, max-age=31536000, immutable');
     const plain = await pages.as('anonymous').get('/mark.svg').expect(200);
     expect(plain.headers['cache-control']).toBe('no-cache');
+  });
+
+  it('are sent compressed to those who take that, under the type of the file', async () => {
+    const open = (encodings: string) =>
+      pages.as('anonymous').get('/main-ABCD2345.js').set('Accept-Encoding', encodings).buffer(true).expect(200);
+    const plain = await open('identity');
+    expect(plain.headers['content-encoding']).toBeUndefined();
+    const packed = await open('gzip, br');
+    expect(packed.headers['content-encoding']).toBe('br');
+    for (const { headers, text } of [plain, packed]) {
+      expect(text).toBe('1;');
+      expect(headers['content-type']).toContain('javascript');
+      expect(headers['vary']).toContain('Accept-Encoding');
+      expect(headers['cache-control']).toContain('immutable');
+    }
   });
 
   it.each(['/main-GONE2345.js', '/media/none.woff2', '/../package.json', '/%2e%2e/package.json', '/.env'])(

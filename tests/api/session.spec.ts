@@ -1,5 +1,7 @@
+import { hkdfSync } from 'node:crypto';
 import { hashSync } from 'bcryptjs';
 import { eq } from 'drizzle-orm';
+import jwt from 'jsonwebtoken';
 import request from 'supertest';
 import { afterEach, beforeEach, describe, expect, it } from 'vitest';
 import { PeopleRepository } from '../../server/src/people/people-repository';
@@ -205,17 +207,28 @@ describe('a session', () => {
 
   it('is not taken from a token with another signature, algorithm or audience', async () => {
     const { issued } = server.as('viewer');
-    const token = issued?.token ?? '';
-    const [header = '', payload = '', signature = ''] = token.split('.');
+    const answerTo = async (token: string) => {
+      const cookie = `riseback-session=${token}`;
+      return (await request(server.app.handler).get('/api/session').set('Host', HOST).set('Cookie', cookie)).status;
+    };
+    const [header = '', payload = '', signature = ''] = (issued?.token ?? '').split('.');
     const unsigned = Buffer.from(JSON.stringify({ alg: 'none', typ: 'JWT' })).toString('base64url');
-    const forged = [`${unsigned}.${payload}.`, `${header}.${payload}.${signature.slice(0, -4)}AAAA`, 'x', `${token}x`];
-    for (const cookie of forged) {
-      await request(server.app.handler)
-        .get('/api/session')
-        .set('Host', HOST)
-        .set('Cookie', `riseback-session=${cookie}`)
-        .expect(401);
-    }
+    const forged = [
+      `${unsigned}.${payload}.`,
+      `${header}.${payload}.${signature.slice(0, -4)}AAAA`,
+      `${header}.${payload}`,
+      'x',
+    ];
+    for (const token of forged) expect(await answerTo(token), token).toBe(401);
+
+    // Signed by the right key, as only a leak or another use of the key could make them.
+    const key = Buffer.from(hkdfSync('sha256', server.config.sessionSecret, 'riseback', 'session token', 32));
+    const second = Math.floor(server.now().getTime() / 1000);
+    const claims = { sid: issued?.sessionId, iat: second, exp: second + 60 };
+    const sign = (algorithm: 'HS256' | 'HS512', audience: string) => jwt.sign(claims, key, { algorithm, audience });
+    expect(await answerTo(sign('HS256', 'riseback-session'))).toBe(200);
+    expect(await answerTo(sign('HS512', 'riseback-session'))).toBe(401);
+    expect(await answerTo(sign('HS256', 'something-else'))).toBe(401);
   });
 
   it('is listed to its owner, who can end another of them but nobody else’s', async () => {

@@ -1,13 +1,18 @@
-import { readFileSync } from 'node:fs';
+import { readdirSync, readFileSync } from 'node:fs';
 import { join } from 'node:path';
-import express, { Router, type Request } from 'express';
+import express, { Router, type Request, type RequestHandler } from 'express';
 import { notFound } from '../problem';
 import { nonceOf } from './security-headers';
 
 /** What index.html holds where the nonce belongs. */
 const NONCE_PLACEHOLDER = 'CSP_NONCE';
 /** Names such as main-ABCDEFGH.js change with their content. */
-const HASHED_NAME = /-[A-Z0-9]{8}\.\w+$/;
+const HASHED_NAME = /-[A-Z0-9]{8}\.\w+(\.br|\.gz)?$/;
+/** What the build lays beside a file, best first. */
+const COMPRESSED = [
+  { suffix: '.br', encoding: 'br' },
+  { suffix: '.gz', encoding: 'gzip' },
+] as const;
 
 /**
  * The built pages. Every address that a person may open gets index.html, with this answer's nonce in it; a missing file
@@ -16,7 +21,11 @@ const HASHED_NAME = /-[A-Z0-9]{8}\.\w+$/;
  */
 export function webApplication(folder: string): Router {
   const index = readFileSync(join(folder, 'index.html'), 'utf8');
+  const files = new Set(
+    readdirSync(folder, { recursive: true }).map((path) => `/${String(path).replaceAll('\\', '/')}`),
+  );
   const router = Router();
+  router.use(preferCompressed(files));
   router.use(
     express.static(folder, {
       index: false,
@@ -34,6 +43,20 @@ export function webApplication(folder: string): Router {
       .send(index.replaceAll(NONCE_PLACEHOLDER, nonceOf(res)));
   });
   return router;
+}
+
+/** Serves the compressed form of a file where there is one that the browser takes. */
+function preferCompressed(files: ReadonlySet<string>): RequestHandler {
+  return (req, res, next) => {
+    const forms = COMPRESSED.filter(({ suffix }) => files.has(req.path + suffix));
+    if (forms.length > 0) res.vary('Accept-Encoding');
+    const form = forms.find(({ encoding }) => req.acceptsEncodings(encoding) === encoding);
+    if (form !== undefined) {
+      res.type(req.path.slice(req.path.lastIndexOf('.'))).set('Content-Encoding', form.encoding);
+      req.url = req.path + form.suffix;
+    }
+    next();
+  };
 }
 
 function isNavigation(req: Request): boolean {
