@@ -39,7 +39,9 @@ describe('FindingsList', () => {
 
   it('says shape, word, place, what is wrong and what would mend it', async () => {
     await shown({ findings: FINDINGS, zoneOf: () => 'C2' });
-    const rows = [...element.querySelectorAll('tbody tr')].map((row) => row.textContent.replace(/\s+/g, ' ').trim());
+    const rows = [...element.querySelectorAll('tbody tr')].map((row) =>
+      [...row.children].map((cell) => cell.textContent.replace(/\s+/g, ' ').trim()).join(' '),
+    );
     expect(rows).toEqual([
       'Fail TR-9 C2 Differential. Nothing drives the condensate out. Lower the return.',
       'Note Network – No source. Nothing flows. –',

@@ -1,0 +1,101 @@
+import { ChangeDetectionStrategy, Component, computed, input, linkedSignal } from '@angular/core';
+import { type DisplayUnits, displayUnit, formatQuantity } from '@riseback/units';
+import type { ProfilePoint } from '@riseback/solver';
+import type { BackPressureLimit } from '../back-pressure-limit';
+import type { PressureRamp } from '../pressure-ramp';
+import { PROFILE, profileFigure } from './profile-figure';
+
+/** Pressure over elevation along the way from a trap to its vessel; pointer or arrow keys read it place by place. */
+@Component({
+  selector: 'app-lift-profile',
+  changeDetection: ChangeDetectionStrategy.OnPush,
+  templateUrl: './lift-profile.html',
+  styleUrl: './lift-profile.scss',
+})
+export class LiftProfile {
+  /** From the trap down; at least two. */
+  readonly points = input.required<readonly ProfilePoint[]>();
+  readonly units = input.required<DisplayUnits>();
+  readonly ramp = input.required<PressureRamp>();
+  readonly trapName = input.required<string>();
+  readonly endName = input.required<string>();
+  readonly nameOfPipe = input.required<(pipeId: string) => string>();
+  readonly limit = input<BackPressureLimit | null>(null);
+  readonly exceeded = input(false);
+
+  protected readonly PROFILE = PROFILE;
+  /** The place that is read; another way begins at its trap again, unread. */
+  protected readonly at = linkedSignal<readonly ProfilePoint[], number | null>({
+    source: this.points,
+    computation: () => null,
+  });
+
+  protected readonly figure = computed(() =>
+    profileFigure({
+      points: this.points(),
+      nameOfPipe: this.nameOfPipe(),
+      units: this.units(),
+      ramp: this.ramp(),
+      limitPa: this.limit()?.pressurePa,
+    }),
+  );
+  protected readonly titles = computed(() => ({
+    pressure: displayUnit('pressure', this.units().system),
+    length: displayUnit('length', this.units().system),
+  }));
+  protected readonly ends = computed(() => ({
+    start: this.pressureAt(0),
+    end: this.pressureAt(-1),
+    limit: this.limit() === null ? '' : formatQuantity(this.limit()?.pressurePa ?? 0, 'pressure', this.units()),
+  }));
+  protected readonly sentence = computed(() => {
+    const { length, pressure } = this.titles();
+    const { lifts } = this.figure();
+    const way = formatQuantity(this.points().at(-1)?.distanceM ?? 0, 'length', this.units());
+    const risen = lifts.map(({ text }) => text).filter((text) => text !== '');
+    return (
+      `Lift profile: over ${way} ${length} of way the pressure falls from ${this.ends().start} ${pressure} at ${this.trapName()} ` +
+      `to ${this.ends().end} ${pressure} in ${this.endName()}${risen.length === 0 ? '' : `, with ${risen.join(' and ')}`}. ` +
+      'The table below has every number.'
+    );
+  });
+  protected readonly sample = computed(() => {
+    const at = this.at();
+    return at === null ? null : (this.figure().samples[at] ?? null);
+  });
+
+  protected step(event: Event, to: 'next' | 'before' | 'first' | 'last'): void {
+    event.preventDefault();
+    const last = this.figure().samples.length - 1;
+    const at = this.at();
+    switch (to) {
+      case 'next':
+        this.at.set(at === null ? 0 : Math.min(last, at + 1));
+        break;
+      case 'before':
+        this.at.set(at === null ? last : Math.max(0, at - 1));
+        break;
+      case 'first':
+        this.at.set(0);
+        break;
+      case 'last':
+        this.at.set(last);
+    }
+  }
+
+  /** The place nearest to the pointer, whatever size the figure is shown in. */
+  protected point(event: PointerEvent): void {
+    const box = (event.currentTarget as Element).getBoundingClientRect();
+    if (box.width === 0) return;
+    const x = PROFILE.left + ((event.clientX - box.left) / box.width) * (PROFILE.right - PROFILE.left);
+    const { samples } = this.figure();
+    this.at.set(
+      samples.reduce((best, { x: at }, i) => (Math.abs(at - x) < Math.abs((samples[best]?.x ?? 0) - x) ? i : best), 0),
+    );
+  }
+
+  private pressureAt(index: number): string {
+    const point = this.points().at(index);
+    return point === undefined ? '' : formatQuantity(point.pressurePa, 'pressure', this.units());
+  }
+}
