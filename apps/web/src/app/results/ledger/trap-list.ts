@@ -47,7 +47,7 @@ export class TrapList {
   /** Up and down go from trap to trap; Tab goes through them too, as through any links. */
   protected step(event: Event, by: 1 | -1): void {
     const links = [...this.list().nativeElement.querySelectorAll<HTMLAnchorElement>('a')];
-    const at = links.findIndex((link) => link === event.target);
+    const at = links.findIndex((link) => link === event.currentTarget);
     const next = links[at + by];
     if (at === -1 || next === undefined) return;
     event.preventDefault();

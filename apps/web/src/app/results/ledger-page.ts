@@ -1,0 +1,143 @@
+import { ChangeDetectionStrategy, Component, computed, inject, input, linkedSignal } from '@angular/core';
+import { ActivatedRoute, Router, RouterLink } from '@angular/router';
+import type { SolveResult } from '@riseback/contracts';
+import { type NetworkDocument, toFile } from '@riseback/network';
+import { ledger, liftProfile, type SolveResult as Solved } from '@riseback/solver';
+import { NetworkStore } from '../networks/network-store';
+import { SessionStore } from '../session/session-store';
+import { ProblemBanner } from '../shared/problem-banner/problem-banner';
+import { allFindings } from './finding-list';
+import { FindingsList } from './findings-list/findings-list';
+import { nameOf } from './ledger/element-text';
+import { LedgerSheet } from './ledger/ledger-sheet';
+import { groupTraps, trapOfElement } from './ledger/trap-groups';
+import { TrapList } from './ledger/trap-list';
+import { pressureRamp, pressuresOf } from './pressure-ramp';
+
+/** Lift & ledger: the traps by their ways, and the account of the chosen one, or of the one that governs. */
+@Component({
+  selector: 'app-ledger-page',
+  imports: [FindingsList, LedgerSheet, ProblemBanner, RouterLink, TrapList],
+  changeDetection: ChangeDetectionStrategy.OnPush,
+  templateUrl: './ledger-page.html',
+  styleUrl: './ledger-page.scss',
+})
+export class LedgerPage {
+  protected readonly store = inject(NetworkStore);
+  private readonly session = inject(SessionStore);
+  private readonly router = inject(Router);
+  private readonly route = inject(ActivatedRoute);
+
+  /** From the address: a trap, or any element that a trap's way goes through. */
+  readonly element = input<string>();
+
+  /**
+   * The network that the results on screen belong to. Lengths of a newer drawing beside pressures of an older solve would be an
+   * account of nothing, so the drawing is taken over only when its results are there.
+   */
+  private readonly solvedDocument = linkedSignal<
+    { readonly document: NetworkDocument | null; readonly solved: boolean },
+    NetworkDocument | null
+  >({
+    source: () => ({ document: this.store.document(), solved: this.store.solveState().kind === 'solved' }),
+    computation: ({ document, solved }, previous) => (solved ? document : (previous?.value ?? null)),
+  });
+
+  protected readonly view = computed(() => {
+    const document = this.solvedDocument();
+    const result = this.store.result();
+    if (document === null || result?.converged !== true) return null;
+    return { document, result, grouped: groupTraps(document, result, this.store.units()) };
+  });
+  protected readonly ramp = computed(() =>
+    pressureRamp(pressuresOf(this.store.outcomes().values()), this.store.units()),
+  );
+
+  /** The chosen trap; without a choice, the one that governs; null where the choice has no account. */
+  protected readonly item = computed(() => {
+    const view = this.view();
+    if (view === null) return null;
+    const wanted = this.element() ?? '';
+    return wanted === '' ? view.grouped.governing : trapOfElement(view.document, view.grouped, wanted);
+  });
+  protected readonly account = computed(() => {
+    const view = this.view();
+    const item = this.item();
+    if (view === null || item === null) return null;
+    const [file, solved] = [toFile(view.document), asSolved(view.result)];
+    return {
+      item,
+      document: view.document,
+      entries: ledger(file, solved, item.id),
+      points: liftProfile(file, solved, item.id),
+      nodeResult: view.result.nodes.find(({ id }) => id === item.id),
+    };
+  });
+
+  protected readonly hasTraps = computed(() =>
+    [...(this.store.document()?.nodes.values() ?? [])].some(({ value }) => value.kind === 'trap'),
+  );
+  /** Why there is no account at all. */
+  protected readonly problem = computed(() => {
+    const state = this.store.solveState();
+    if (state.kind === 'failed') return state.problem;
+    const outcome = this.store.outcome();
+    if (outcome?.status === 'refused') return outcome.problem;
+    return outcome?.result.converged === false ? (outcome.result.problem ?? null) : null;
+  });
+  /** What an element without an account has against it. */
+  protected readonly ofElement = computed(() => {
+    const document = this.store.document();
+    const id = this.element() ?? '';
+    if (document === null) return { name: id, findings: [] };
+    const element = document.nodes.get(id)?.value ?? document.pipes.get(id)?.value;
+    const { topology, outcome, units } = this.store;
+    const findings = allFindings({ document, topology: topology(), outcome: outcome(), units: units() });
+    return {
+      name: element === undefined ? '' : nameOf(element),
+      findings: findings.filter((finding) => finding.element?.id === id),
+    };
+  });
+  protected readonly staleReason = computed(() => {
+    switch (this.store.solveState().kind) {
+      case 'solved':
+        return '';
+      case 'solving':
+        return 'The network has changed and is being solved again; these numbers belong to what stood before.';
+      case 'stale':
+        return 'The last change is not saved, so it is not solved either; these numbers belong to what stood before.';
+      case 'failed':
+        return 'The last change could not be solved; these numbers belong to what stood before.';
+    }
+  });
+  protected readonly caseName = computed(
+    () => this.store.cases().find(({ id }) => id === this.store.caseId())?.name ?? '',
+  );
+  protected readonly solvedAt = computed(() => {
+    const finished = this.store.finished();
+    if (finished === null) return '';
+    const format = new Intl.DateTimeFormat('en-GB', {
+      dateStyle: 'medium',
+      timeStyle: 'short',
+      timeZone: this.session.timeZone(),
+    });
+    return format.format(new Date(finished.finishedAt));
+  });
+
+  protected open(elementId: string): void {
+    void this.router.navigate([], { queryParams: { element: elementId }, queryParamsHandling: 'merge' });
+  }
+
+  protected showOnDrawing(elementId: string): void {
+    void this.router.navigate(['../drawing'], {
+      relativeTo: this.route,
+      queryParams: { element: elementId },
+      queryParamsHandling: 'merge',
+    });
+  }
+}
+
+/** The contract's result is the solver's, but that an absent key may also be undefined there. */
+function asSolved(result: SolveResult): Solved {
+  return result as Solved;
+}
