@@ -94,6 +94,14 @@ describe('results', () => {
     await designer.get(resultsPath(id, 0)).expect(400);
   });
 
+  it('are waited for no longer once the solver has closed', async () => {
+    const server = new TestServer({ solver: { solve: () => Promise.resolve({ end: 'superseded' }) } });
+    servers.push(server);
+    const designer = server.as('designer');
+    const id = await makeNetwork(designer, server.siteId);
+    await designer.get(resultsPath(id)).expect(202);
+  });
+
   it('of a version that was superseded before its solve began are computed for whoever asks', async () => {
     const { server, solver, designer } = withHeldSolver();
     const id = await makeNetwork(designer, server.siteId);

@@ -5,7 +5,7 @@ import { networkRoute, NETWORK_FILE_LIMIT_BYTES, siteRoute, type Route } from '.
 import type { NetworkService } from './network-service';
 
 /** Read by `readNetworkFile` in the service, whose mistakes point further than a schema's. */
-const AnyNetworkFile = z.unknown();
+const AnyNetworkFile = z.unknown().meta({ description: 'A network file, format riseback-network version 1' });
 const FileQuery = z.object({ download: z.literal('1').optional() });
 const SinceQuery = z.object({ since: z.coerce.number().int().min(0) });
 

@@ -46,12 +46,13 @@ export class LiveSolves {
       timer = setTimeout(() => resolve('late'), waitMs);
     });
     try {
-      // a solve that a newer version superseded is started again, under a key of its own, because someone asks for it
-      for (let late = false; ;) {
+      // twice: a solve that a newer version superseded is started again, under a key of its own, because someone asks for it
+      for (let attempt = 1, late = false; attempt <= 2 && !late; attempt += 1) {
         const stored = this.solves.find(this.keyOf(input));
-        if (stored !== undefined || late) return stored;
+        if (stored !== undefined) return stored;
         late = (await Promise.race([this.start(`${input.networkId} ${input.solverHash}`, input), giveUp])) === 'late';
       }
+      return this.solves.find(this.keyOf(input));
     } finally {
       clearTimeout(timer);
     }

@@ -4,7 +4,7 @@ import { NETWORK_FILE_LIMIT_BYTES, networkRoute, signedInRoute, type Route } fro
 import type { ResultService } from './result-service';
 
 /** Read by `readNetworkFile` in the service, whose mistakes point further than a schema's. */
-const AnyNetworkFile = z.unknown();
+const AnyNetworkFile = z.unknown().meta({ description: 'A network file, format riseback-network version 1' });
 const CaseQuery = z.object({ case: z.string().max(64).optional() });
 const VersionQuery = z.object({ version: z.coerce.number().int().min(1).optional() });
 

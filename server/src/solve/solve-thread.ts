@@ -55,6 +55,7 @@ export class SolveThread implements SolvePort {
   }
 
   solve(key: string, job: SolveJob): Promise<SolveEnd> {
+    if (this.closed) return Promise.resolve({ end: 'superseded' });
     const earlier = this.waiting.get(key);
     if (earlier === undefined && this.waiting.size >= MOST_WAITING)
       return Promise.resolve({ end: 'failed', detail: BUSY });
