@@ -50,7 +50,12 @@ function plainAmount({ quantity, si }: Amount): string {
   return `${fourDigits(si * scale)}${unit}`;
 }
 
-/** Plain decimals without trailing zeros; toPrecision alone would turn to powers of ten from 10,000 up. */
+/** Plain decimals without trailing zeros: toPrecision would turn to powers of ten from 10,000 up, and is slow besides. */
 function fourDigits(value: number): string {
-  return Math.abs(value) >= 1000 ? String(Math.round(value)) : String(Number(value.toPrecision(4)));
+  const size = Math.abs(value);
+  if (size >= 1000) return String(Math.round(value));
+  if (size >= 100) return String(Math.round(value * 10) / 10);
+  if (size >= 10) return String(Math.round(value * 100) / 100);
+  if (size >= 1) return String(Math.round(value * 1000) / 1000);
+  return String(Number(value.toPrecision(4)));
 }

@@ -2,7 +2,7 @@ import type { Trap, TrapModel } from '@riseback/network';
 import { SATURATION_LINE_RANGE, saturationTemperatureK } from '@riseback/steam';
 import type { LimitsInForce } from './check-limits';
 import { amount, findingWords, say } from './finding-text';
-import type { TrapCheck, UnmadeCheck, Verdict } from './solve-result';
+import type { TrapCheck, UnmadeCheck } from './solve-result';
 import { trapCapacityKgS } from './trap-capacity';
 
 /** A trap in one case, with the return it was found to stand against. */
@@ -32,6 +32,19 @@ export function checkTrap(at: TrapUnderCheck): { checks: TrapCheck[]; notChecked
   }
   return { checks, notChecked };
 }
+
+// Most checks pass, and value and limit stand beside the words: words without numbers are made once.
+const CAPACITY_PASSES = findingWords(
+  say`The model passes at this differential what the load needs with its sizing factor.`,
+);
+const SEAT_PASSES = findingWords(say`The seat opens against all that the safety valve lets come to it.`);
+const BODY_PASSES = findingWords(say`The body is rated for the safety valve’s setting.`);
+const BODY_PASSES_BY_PRESSURE = findingWords(
+  say`The body’s pressure rating covers the safety valve’s setting; its temperature rating is not known.`,
+);
+const BODY_PASSES_BY_TEMPERATURE = findingWords(
+  say`The body’s temperature rating covers steam at the safety valve’s setting; its pressure rating is not known.`,
+);
 
 /** What a trap shut off in this case says in place of its checks. */
 export const ISOLATED_UNCHECKED: readonly UnmadeCheck[] = [
@@ -65,8 +78,7 @@ function capacity({ trap, model, inletPressurePa, backPressurePa, loadKgS }: Tra
   const limit = trap.sizingFactor * loadKgS;
   const result = { code, value, limit };
   if (value >= limit) {
-    const text = say`The model passes ${amount('massFlow', value)} at this differential; ${amount('massFlow', limit)} is needed.`;
-    return { ...result, verdict: 'pass', ...findingWords(text) };
+    return { ...result, verdict: 'pass', ...CAPACITY_PASSES };
   }
   const text = say`At ${amount('pressureDifference', differentialPa)} across it the model passes ${amount('massFlow', value)}, but ${amount('factor', trap.sizingFactor)} times its load needs ${amount('massFlow', limit)}: at start-up and at peaks condensate backs up.`;
   const remedy = say`Choose a model or seat that passes ${amount('massFlow', limit)} at this differential, or lower what stands behind the trap.`;
@@ -127,8 +139,7 @@ function orificeRating({ trap, model, atmosphericPressurePa }: TrapUnderCheck): 
   const value = trap.maximumPressurePa - atmosphericPressurePa;
   const result = { code, value, limit };
   if (value <= limit) {
-    const text = say`The seat opens against ${amount('pressureDifference', limit)}; the safety valve lets at most ${amount('pressureDifference', value)} come to it.`;
-    return { ...result, verdict: 'pass', ...findingWords(text) };
+    return { ...result, verdict: 'pass', ...SEAT_PASSES };
   }
   const text = say`Up to the safety valve’s setting ${amount('pressureDifference', value)} can stand across the seat, which is rated for ${amount('pressureDifference', limit)}: above that the trap stays shut and floods.`;
   const remedy = say`Choose a smaller seat or a model rated for ${amount('pressureDifference', value)}.`;
@@ -156,8 +167,7 @@ function bodyRating({ trap, model }: TrapUnderCheck): TrapCheck | UnmadeCheck {
     const text = say`Steam at the safety valve’s setting is ${amount('temperature', temperatureK)} hot; the body is rated for ${amount('temperature', bodyTemperatureK)}.`;
     return { code, verdict: 'fail', value: temperatureK, limit: bodyTemperatureK, ...findingWords(text, remedy) };
   }
-  const verdict: Verdict = 'pass';
-  const text = say`The body is rated for the safety valve’s setting${bodyPressurePa === undefined ? ' by temperature; its pressure rating is not known' : ''}${bodyTemperatureK === undefined ? ' by pressure; its temperature rating is not known' : ''}.`;
-  if (bodyPressurePa === undefined) return { code, verdict, ...findingWords(text) };
-  return { code, verdict, value: pressurePa, limit: bodyPressurePa, ...findingWords(text) };
+  if (bodyPressurePa === undefined) return { code, verdict: 'pass', ...BODY_PASSES_BY_TEMPERATURE };
+  const words = bodyTemperatureK === undefined ? BODY_PASSES_BY_PRESSURE : BODY_PASSES;
+  return { code, verdict: 'pass', value: pressurePa, limit: bodyPressurePa, ...words };
 }
