@@ -1,4 +1,4 @@
-import { createHmac, hkdfSync, timingSafeEqual } from 'node:crypto';
+import { createHmac, createSecretKey, hkdfSync, timingSafeEqual, type KeyObject } from 'node:crypto';
 import jwt from 'jsonwebtoken';
 import * as z from 'zod';
 
@@ -16,8 +16,8 @@ export interface TokenClaims {
 
 /** Signs and reads the two values that a browser holds: the session's token and the proof against forged requests. */
 export class SessionTokens {
-  private readonly tokenKey: Buffer;
-  private readonly forgeryKey: Buffer;
+  private readonly tokenKey: KeyObject;
+  private readonly forgeryKey: KeyObject;
 
   constructor(secret: string) {
     this.tokenKey = derive(secret, 'session token');
@@ -53,8 +53,9 @@ export class SessionTokens {
   }
 }
 
-function derive(secret: string, purpose: string): Buffer {
-  return Buffer.from(hkdfSync('sha256', secret, 'riseback', purpose, 32));
+function derive(secret: string, purpose: string): KeyObject {
+  // As a KeyObject: of bare bytes jsonwebtoken first tries to make a public key, at each token, which takes 0.7 ms.
+  return createSecretKey(Buffer.from(hkdfSync('sha256', secret, 'riseback', purpose, 32)));
 }
 
 function seconds(date: Date): number {

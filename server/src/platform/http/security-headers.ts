@@ -31,7 +31,7 @@ export function securityHeaders(https: boolean): RequestHandler {
         formAction: ["'none'"],
         frameAncestors: ["'none'"],
         requireTrustedTypesFor: ["'script'"],
-        trustedTypes: ['angular', 'angular#bundler'],
+        trustedTypes: ['angular', 'angular#components'],
       },
     },
     strictTransportSecurity: https ? { maxAge: 365 * 24 * 3600, includeSubDomains: false } : false,
