@@ -79,7 +79,8 @@ export class DrawingCommands {
         const place = elementIn(document, id);
         return place === null ? id : `${place.collection === 'pipes' ? 'pipe' : ''} ${place.name}`.trim();
       });
-    const count = (number: number, one: string, many: string) => (number === 0 ? [] : [`${String(number)} ${number === 1 ? one : many}`]);
+    const count = (number: number, one: string, many: string) =>
+      number === 0 ? [] : [`${String(number)} ${number === 1 ? one : many}`];
     return [
       ...named,
       ...count(going.overrides.length, 'value set in a case', 'values set in cases'),
@@ -109,12 +110,21 @@ export class DrawingCommands {
     this.state.mode.set(IDLE);
     if (document !== null) {
       const ops: EditOp[] = [
-        ...[...nodes].filter(([id]) => document.nodes.has(id)).map(([id, at]) => setOp(document, 'nodes', id, 'position', { x: at.x, y: at.y })),
-        ...[...bends].filter(([id]) => document.pipes.has(id)).map(([id, points]) => setOp(document, 'pipes', id, 'bends', plain(points))),
+        ...[...nodes]
+          .filter(([id]) => document.nodes.has(id))
+          .map(([id, at]) => setOp(document, 'nodes', id, 'position', { x: at.x, y: at.y })),
+        ...[...bends]
+          .filter(([id]) => document.pipes.has(id))
+          .map(([id, points]) => setOp(document, 'pipes', id, 'bends', plain(points))),
       ].filter((op) => !sameValue(op.from, op.to));
       const [first] = [...nodes.keys(), ...bends.keys()];
       const name = first === undefined ? '' : (elementIn(document, first)?.name ?? first);
-      const label = nodes.size > 1 ? `${String(nodes.size)} elements moved` : bends.size > 0 && nodes.size === 0 ? `bend of ${name} moved` : `${name} moved`;
+      const label =
+        nodes.size > 1
+          ? `${String(nodes.size)} elements moved`
+          : bends.size > 0 && nodes.size === 0
+            ? `bend of ${name} moved`
+            : `${name} moved`;
       if (ops.length > 0 && this.store.edit(label, ops)) this.state.say(label);
     }
     this.state.displaced.set(NOTHING_DISPLACED);
@@ -133,7 +143,11 @@ export class DrawingCommands {
   /** After undo and redo the keyboard is on what changed. */
   private afterStep(touched: readonly string[] | null, words: string): void {
     this.state.draft.set(null);
-    this.state.say(touched === null && this.store.lastRefusal().length > 0 ? `Not possible: ${this.store.lastRefusal().join(' ')}` : words);
+    this.state.say(
+      touched === null && this.store.lastRefusal().length > 0
+        ? `Not possible: ${this.store.lastRefusal().join(' ')}`
+        : words,
+    );
     const there = (touched ?? []).filter((id) => this.scene.has(id));
     const [first] = there;
     this.state.selection.update((selected) => new Set([...selected].filter((id) => this.scene.has(id))));
@@ -147,7 +161,11 @@ export class DrawingCommands {
     const focused = this.state.focusId();
     const start = focused !== null && ids.has(focused) ? focused : ([...ids][0] ?? null);
     const seen = new Set<string>();
-    for (let here = start; here !== null && !seen.has(here); here = downstreamOf(network, here, this.scene.reversed) ?? null) {
+    for (
+      let here = start;
+      here !== null && !seen.has(here);
+      here = downstreamOf(network, here, this.scene.reversed) ?? null
+    ) {
       seen.add(here);
       // a pipe goes with its node, so the neighbour is the next node that stays
       if (!ids.has(here) && network.nodes.has(here)) return here;
@@ -170,7 +188,10 @@ function elementIn(document: NetworkDocument, id: string): PlaceInDocument | nul
 }
 
 function picked(document: NetworkDocument, ids: ReadonlySet<string>): { nodes: string[]; pipes: string[] } {
-  return { nodes: [...ids].filter((id) => document.nodes.has(id)), pipes: [...ids].filter((id) => document.pipes.has(id)) };
+  return {
+    nodes: [...ids].filter((id) => document.nodes.has(id)),
+    pipes: [...ids].filter((id) => document.pipes.has(id)),
+  };
 }
 
 function plain(points: readonly Position[]): Position[] {

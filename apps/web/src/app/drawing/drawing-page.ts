@@ -42,7 +42,12 @@ export class DrawingPage {
   protected readonly findings = computed(() => {
     const document = this.store.document();
     if (document === null) return [];
-    return allFindings({ document, topology: this.store.topology(), outcome: this.store.outcome(), units: this.store.units() });
+    return allFindings({
+      document,
+      topology: this.store.topology(),
+      outcome: this.store.outcome(),
+      units: this.store.units(),
+    });
   });
   protected readonly zoneAt = computed(() => {
     const sheet = this.scene.sheet();

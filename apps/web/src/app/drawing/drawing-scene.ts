@@ -28,10 +28,15 @@ export class DrawingScene {
   readonly empty = computed(() => this.settled().nodes.size === 0);
   readonly sheet = computed(() => {
     const { nodes, pipes } = this.settled();
-    return sheetAround([...[...nodes.values()].map(({ at }) => at), ...[...pipes.values()].flatMap(({ points }) => points)]);
+    return sheetAround([
+      ...[...nodes.values()].map(({ at }) => at),
+      ...[...pipes.values()].flatMap(({ points }) => points),
+    ]);
   });
 
-  readonly scale = computed(() => colourScale(this.state.colouredBy(), [...this.store.outcomes().values()], this.store.units()));
+  readonly scale = computed(() =>
+    colourScale(this.state.colouredBy(), [...this.store.outcomes().values()], this.store.units()),
+  );
 
   private readonly results = computed((): SceneResults => {
     const warnings = new Map<string, SolveWarning[]>();
@@ -42,16 +47,44 @@ export class DrawingScene {
     for (const [id, { value }] of this.store.document()?.overrides ?? []) {
       if (value.state === 'isolated' && id.startsWith(`${this.store.caseId()}/`)) isolated.add(value.node);
     }
-    return { traps: this.store.trapResults(), nodes: this.store.nodeResults(), pipes: this.store.pipeResults(), warnings, isolated };
+    return {
+      traps: this.store.trapResults(),
+      nodes: this.store.nodeResults(),
+      pipes: this.store.pipeResults(),
+      warnings,
+      isolated,
+    };
   });
 
   readonly nodeViews = computed((): ReadonlyMap<string, NodeView> => {
-    const [network, results, scale, units, selection] = [this.network(), this.results(), this.scale(), this.store.units(), this.state.selection()];
-    return new Map([...network.nodes.values()].map((node) => [node.id, nodeView(node, network, results, scale, units, selection.has(node.id))]));
+    const [network, results, scale, units, selection] = [
+      this.network(),
+      this.results(),
+      this.scale(),
+      this.store.units(),
+      this.state.selection(),
+    ];
+    return new Map(
+      [...network.nodes.values()].map((node) => [
+        node.id,
+        nodeView(node, network, results, scale, units, selection.has(node.id)),
+      ]),
+    );
   });
   readonly pipeViews = computed((): ReadonlyMap<string, PipeView> => {
-    const [network, results, scale, units, selection] = [this.network(), this.results(), this.scale(), this.store.units(), this.state.selection()];
-    return new Map([...network.pipes.values()].map((pipe) => [pipe.id, pipeView(pipe, network, results, scale, units, selection.has(pipe.id))]));
+    const [network, results, scale, units, selection] = [
+      this.network(),
+      this.results(),
+      this.scale(),
+      this.store.units(),
+      this.state.selection(),
+    ];
+    return new Map(
+      [...network.pipes.values()].map((pipe) => [
+        pipe.id,
+        pipeView(pipe, network, results, scale, units, selection.has(pipe.id)),
+      ]),
+    );
   });
 
   /** Pipes on the way of the one selected trap. */

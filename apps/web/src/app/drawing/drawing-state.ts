@@ -9,9 +9,21 @@ export type Mode =
   /** Waiting for the place of a new node. */
   | { readonly kind: 'placing'; readonly what: NodeKind }
   /** Waiting for the ends of a new pipe; `from` is null until the first is chosen. */
-  | { readonly kind: 'piping'; readonly from: string | null; readonly to: string | null; readonly typed: string; readonly pointer: Position | null }
+  | {
+      readonly kind: 'piping';
+      readonly from: string | null;
+      readonly to: string | null;
+      readonly typed: string;
+      readonly pointer: Position | null;
+    }
   /** Moving the selection, or a bend of one pipe, before it is set down. */
-  | { readonly kind: 'moving'; readonly ids: readonly string[]; readonly bend: number; readonly dx: number; readonly dy: number };
+  | {
+      readonly kind: 'moving';
+      readonly ids: readonly string[];
+      readonly bend: number;
+      readonly dx: number;
+      readonly dy: number;
+    };
 
 /** A new element whose fields are being asked for; it joins the network when they are accepted. */
 export type Draft =

@@ -15,8 +15,12 @@ import { ElementIcon } from './symbols/element-icon';
       @if (store.mayDraw()) {
         <p>Begin where the condensate ends: back pressure is counted up from there.</p>
         <p class="ways">
-          <button matButton="filled" type="button" (click)="placing.besideFocus('receiver')"><app-element-icon kind="receiver" /> Place a receiver</button>
-          <button matButton="outlined" type="button" (click)="placing.besideFocus('trap')"><app-element-icon kind="trap" /> Place a trap</button>
+          <button matButton="filled" type="button" (click)="placing.besideFocus('receiver')">
+            <app-element-icon kind="receiver" /> Place a receiver
+          </button>
+          <button matButton="outlined" type="button" (click)="placing.besideFocus('trap')">
+            <app-element-icon kind="trap" /> Place a trap
+          </button>
         </p>
       } @else {
         <p>A designer of this site can draw here.</p>

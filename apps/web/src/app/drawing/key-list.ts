@@ -1,4 +1,12 @@
-import { ChangeDetectionStrategy, Component, effect, type ElementRef, inject, untracked, viewChild } from '@angular/core';
+import {
+  ChangeDetectionStrategy,
+  Component,
+  effect,
+  type ElementRef,
+  inject,
+  untracked,
+  viewChild,
+} from '@angular/core';
 import { MatButton } from '@angular/material/button';
 import { DrawingState } from './drawing-state';
 
@@ -12,7 +20,10 @@ const KEYS: readonly (readonly [string, string])[] = [
   ['T, J, R, V, U', 'place a trap, junction, receiver, flash vessel, pumped inlet beside the focus'],
   ['Insert', 'the same as a menu'],
   ['P', 'a pipe from here: arrows or a typed tag choose its end'],
-  ['M', 'move: arrows one step, Shift ten, Enter sets down, Escape puts back; on a pipe a bend, comma and full stop choose which'],
+  [
+    'M',
+    'move: arrows one step, Shift ten, Enter sets down, Escape puts back; on a pipe a bend, comma and full stop choose which',
+  ],
   ['Delete', 'delete, after saying what goes along'],
   ['Ctrl+Z, Ctrl+Shift+Z', 'undo, redo'],
   ['/', 'find a tag'],
@@ -38,7 +49,10 @@ const KEYS: readonly (readonly [string, string])[] = [
           }
         </tbody>
       </table>
-      <label><input #act type="checkbox" [checked]="state.lettersAct()" (change)="state.lettersAct.set(act.checked)" /> Single letters and signs act while the drawing has the focus</label>
+      <label
+        ><input #act type="checkbox" [checked]="state.lettersAct()" (change)="state.lettersAct.set(act.checked)" />
+        Single letters and signs act while the drawing has the focus</label
+      >
       <button matButton="filled" type="button" (click)="dialog.close()">Close</button>
     </dialog>
   `,
@@ -82,7 +96,10 @@ export class KeyList {
 
   constructor() {
     effect(() => {
-      if (this.state.keysAsked() > 0) untracked(() => { this.dialog().nativeElement.showModal(); });
+      if (this.state.keysAsked() > 0)
+        untracked(() => {
+          this.dialog().nativeElement.showModal();
+        });
     });
   }
 

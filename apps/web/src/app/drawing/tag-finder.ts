@@ -1,4 +1,15 @@
-import { afterNextRender, ChangeDetectionStrategy, Component, effect, type ElementRef, inject, Injector, signal, untracked, viewChild } from '@angular/core';
+import {
+  afterNextRender,
+  ChangeDetectionStrategy,
+  Component,
+  effect,
+  type ElementRef,
+  inject,
+  Injector,
+  signal,
+  untracked,
+  viewChild,
+} from '@angular/core';
 import { DrawingScene } from './drawing-scene';
 import { DrawingState } from './drawing-state';
 import { findByTag } from './model/navigation';
@@ -11,16 +22,21 @@ import { findByTag } from './model/navigation';
     @if (open()) {
       <form (submit)="go($event, box.value)">
         <label for="tag-finder">Find a tag</label>
-        <input #box id="tag-finder" type="text" autocomplete="off" spellcheck="false" (keydown.escape)="leave()" (blur)="open.set(false)" />
+        <input
+          #box
+          id="tag-finder"
+          type="text"
+          autocomplete="off"
+          spellcheck="false"
+          (keydown.escape)="leave()"
+          (blur)="open.set(false)"
+        />
         <span role="status">{{ missing() }}</span>
       </form>
     }
   `,
   styles: `
     form {
-      position: absolute;
-      top: 28px;
-      right: 30px;
       display: flex;
       flex-wrap: wrap;
       align-items: center;

@@ -95,7 +95,9 @@ export class GraphCanvas {
     const { left, top, right, bottom } = this.nearby();
     const keep = this.keep();
     const within = ({ x, y }: Position) => x >= left && x <= right && y >= top && y <= bottom;
-    const near = links.filter(({ id, points }) => keep.has(id) || points.some(within) || crosses(points, { left, top, right, bottom }));
+    const near = links.filter(
+      ({ id, points }) => keep.has(id) || points.some(within) || crosses(points, { left, top, right, bottom }),
+    );
     const ends = new Set(near.flatMap(({ from, to }) => [from, to]));
     return { nodes: nodes.filter(({ id, at }) => keep.has(id) || ends.has(id) || within(at)), links: near };
   });
@@ -191,7 +193,13 @@ export class GraphCanvas {
 
   protected readView(): void {
     const graph = this.graph();
-    this.view.set({ zoom: graph.zoomLevel, panX: graph.panOffsetX, panY: graph.panOffsetY, width: graph.width, height: graph.height });
+    this.view.set({
+      zoom: graph.zoomLevel,
+      panX: graph.panOffsetX,
+      panY: graph.panOffsetY,
+      width: graph.width,
+      height: graph.height,
+    });
     if (this.ready() || !graph.initialized) return;
     this.ready.set(true);
     const { wanted } = this;
@@ -211,7 +219,10 @@ function sameView(a: Viewport, b: Viewport): boolean {
 }
 
 /** A long run may pass the window with none of its points inside. */
-function crosses(points: readonly Position[], { left, top, right, bottom }: { left: number; top: number; right: number; bottom: number }): boolean {
+function crosses(
+  points: readonly Position[],
+  { left, top, right, bottom }: { left: number; top: number; right: number; bottom: number },
+): boolean {
   return points.some((b, i) => {
     const a = points[i - 1];
     return (

@@ -33,7 +33,7 @@ const ORDER: Readonly<Record<Status, number>> = { fail: 0, watch: 1, pass: 2, no
       }
     </ul>
   `,
-  styleUrl: './inspector-tabs.scss',
+  styleUrl: './check-list.scss',
 })
 export class CheckList {
   readonly checks = input.required<readonly (TrapCheck | SolveWarning)[]>();
@@ -50,6 +50,12 @@ export class CheckList {
         remedy: check.remedy === undefined ? '' : findingWords(check.remedy, this.units()),
       }))
       .sort((a, b) => ORDER[a.status] - ORDER[b.status]),
-    ...this.unmade().map(({ code, reason }) => ({ key: `unmade/${code}`, status: 'none' as const, name: checkName(code), words: reason, remedy: '' })),
+    ...this.unmade().map(({ code, reason }) => ({
+      key: `unmade/${code}`,
+      status: 'none' as const,
+      name: checkName(code),
+      words: reason,
+      remedy: '',
+    })),
   ]);
 }

@@ -68,7 +68,13 @@ export function nodeFields(node: NetworkNode, document: NetworkDocument): readon
         FLOW,
         TEMPERATURE,
         PEAK,
-        { type: 'quantity', key: 'availablePressurePa', label: 'Pressure the pump can give', kind: 'pressure', optional: true },
+        {
+          type: 'quantity',
+          key: 'availablePressurePa',
+          label: 'Pressure the pump can give',
+          kind: 'pressure',
+          optional: true,
+        },
         AREA,
         NOTE,
       ];
@@ -89,7 +95,13 @@ function trapFields(document: NetworkDocument): FieldSpec[] {
     },
     PEAK,
     { type: 'quantity', key: 'subcoolingK', label: 'Subcooling', kind: 'temperatureDifference' },
-    { type: 'quantity', key: 'loadTolerance', label: 'Load known to', kind: 'fraction', hint: 'Plus or minus this share' },
+    {
+      type: 'quantity',
+      key: 'loadTolerance',
+      label: 'Load known to',
+      kind: 'fraction',
+      hint: 'Plus or minus this share',
+    },
     {
       type: 'quantity',
       key: 'maximumPressurePa',
@@ -102,10 +114,19 @@ function trapFields(document: NetworkDocument): FieldSpec[] {
   ];
 }
 
-export const PIPE_FIELDS_BEFORE_SIZE: readonly FieldSpec[] = [TAG, { type: 'quantity', key: 'lengthM', label: 'Length', kind: 'length' }];
+export const PIPE_FIELDS_BEFORE_SIZE: readonly FieldSpec[] = [
+  TAG,
+  { type: 'quantity', key: 'lengthM', label: 'Length', kind: 'length' },
+];
 export const PIPE_FIELDS_AFTER_SIZE: readonly FieldSpec[] = [
   { type: 'quantity', key: 'roughnessM', label: 'Roughness', kind: 'roughness' },
-  { type: 'quantity', key: 'lossCoefficient', label: 'Further loss coefficient', kind: 'factor', hint: 'Added to the fittings' },
+  {
+    type: 'quantity',
+    key: 'lossCoefficient',
+    label: 'Further loss coefficient',
+    kind: 'factor',
+    hint: 'Added to the fittings',
+  },
   { type: 'quantity', key: 'heatLossWM', label: 'Heat loss', kind: 'heatLossPerLength' },
   { type: 'flag', key: 'checkValve', label: 'Check valve' },
 ];

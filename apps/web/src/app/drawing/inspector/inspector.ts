@@ -1,4 +1,15 @@
-import { ChangeDetectionStrategy, Component, computed, effect, inject, Injector, afterNextRender, signal, untracked, viewChild } from '@angular/core';
+import {
+  ChangeDetectionStrategy,
+  Component,
+  computed,
+  effect,
+  inject,
+  Injector,
+  afterNextRender,
+  signal,
+  untracked,
+  viewChild,
+} from '@angular/core';
 import { MatButton } from '@angular/material/button';
 import { RouterLink } from '@angular/router';
 import { NetworkStore } from '../../networks/network-store';
@@ -20,7 +31,17 @@ type Tab = keyof typeof TABS;
 /** Beside the sheet: the selected element's result, inputs and model; the new element being asked for; or the network as a whole. */
 @Component({
   selector: 'app-inspector',
-  imports: [ElementIcon, InputsTab, MatButton, ModelTab, NetworkPanel, NewElementForm, ResultTab, RouterLink, StatusMark],
+  imports: [
+    ElementIcon,
+    InputsTab,
+    MatButton,
+    ModelTab,
+    NetworkPanel,
+    NewElementForm,
+    ResultTab,
+    RouterLink,
+    StatusMark,
+  ],
   changeDetection: ChangeDetectionStrategy.OnPush,
   templateUrl: './inspector.html',
   styleUrl: './inspector.scss',
@@ -43,13 +64,17 @@ export class Inspector {
   protected readonly head = computed(() => {
     const element = this.element();
     if (element === null) return null;
-    if (isPipe(element)) return { kind: 'pipe' as const, name: nameOf(element), under: 'Pipe', trapType: undefined, vented: false };
+    if (isPipe(element))
+      return { kind: 'pipe' as const, name: nameOf(element), under: 'Pipe', trapType: undefined, vented: false };
     const trapType = element.kind === 'trap' ? element.trapType : undefined;
     const words = KIND_WORDS[element.kind];
     return {
       kind: element.kind,
       name: nameOf(element),
-      under: [trapType === undefined ? words.charAt(0).toUpperCase() + words.slice(1) : TRAP_TYPE_WORDS[trapType], element.area ?? '']
+      under: [
+        trapType === undefined ? words.charAt(0).toUpperCase() + words.slice(1) : TRAP_TYPE_WORDS[trapType],
+        element.area ?? '',
+      ]
         .filter((part) => part !== '')
         .join(', '),
       trapType,
@@ -68,7 +93,9 @@ export class Inspector {
     if (element === null || isPipe(element) || element.kind !== 'trap' || element.trapModel === undefined) return null;
     return this.store.document()?.trapModels.get(element.trapModel)?.value ?? null;
   });
-  protected readonly tabs = computed(() => (Object.keys(TABS) as Tab[]).filter((tab) => tab !== 'model' || this.model() !== null));
+  protected readonly tabs = computed(() =>
+    (Object.keys(TABS) as Tab[]).filter((tab) => tab !== 'model' || this.model() !== null),
+  );
   protected readonly tab = computed(() => (this.tabs().includes(this.wantedTab()) ? this.wantedTab() : 'result'));
   protected readonly words = TABS;
   protected readonly isTrap = computed(() => this.head()?.kind === 'trap');

@@ -47,7 +47,8 @@ export class ModelTab {
   protected readonly differentialUnit = computed(() => displayUnit('pressureDifference', this.store.units().system));
   protected readonly flowUnit = computed(() => displayUnit('massFlow', this.store.units().system));
   protected readonly rows = computed(() => {
-    const { orificeDiameterM, maximumDifferentialPa, bodyPressurePa, bodyTemperatureK, maximumBackPressureFraction } = this.model();
+    const { orificeDiameterM, maximumDifferentialPa, bodyPressurePa, bodyTemperatureK, maximumBackPressureFraction } =
+      this.model();
     return [
       this.row('Orifice', orificeDiameterM, 'diameter'),
       this.row('Largest differential', maximumDifferentialPa, 'pressureDifference'),

@@ -44,9 +44,15 @@ export class NetworkPanel {
     words: STATIC_LIFT_WORDS[value] + (COMPUTED_LIFT.includes(value) ? '' : ' (not computed yet)'),
   }));
   protected readonly fixed = computed(() => !this.store.mayDraw());
-  protected readonly siteValues = computed((): Readonly<Record<string, unknown>> => ({ ...this.store.document()?.site }));
-  protected readonly methodValues = computed((): Readonly<Record<string, unknown>> => ({ ...this.store.document()?.method }));
-  protected readonly methodFields = computed(() => (this.store.document()?.method.staticLift === 'rule' ? [RULE_FIELD, DROP_FIELD] : [DROP_FIELD]));
+  protected readonly siteValues = computed((): Readonly<Record<string, unknown>> => ({
+    ...this.store.document()?.site,
+  }));
+  protected readonly methodValues = computed((): Readonly<Record<string, unknown>> => ({
+    ...this.store.document()?.method,
+  }));
+  protected readonly methodFields = computed(() =>
+    this.store.document()?.method.staticLift === 'rule' ? [RULE_FIELD, DROP_FIELD] : [DROP_FIELD],
+  );
   protected readonly counts = computed(() => {
     const document = this.store.document();
     if (document === null) return '';

@@ -50,7 +50,9 @@ export class PipeSizeField {
   protected readonly boreWords = computed(() => {
     const size = this.size();
     const bore = size === undefined ? undefined : pipeBore(size);
-    return bore === undefined ? this.hint() : `Bore ${formatQuantity(bore.insideDiameterM, 'diameter', this.units(), { withUnit: true })}`;
+    return bore === undefined
+      ? this.hint()
+      : `Bore ${formatQuantity(bore.insideDiameterM, 'diameter', this.units(), { withUnit: true })}`;
   });
 
   protected chooseSchedule(schedule: string | undefined): void {

@@ -38,7 +38,9 @@ export class ResultTab {
   });
   protected readonly limit = computed(() => {
     const [trap, result] = [this.trap(), this.trapResult()];
-    return trap === null || result === null ? null : backPressureLimit(result, trap, this.modelOf(trap), this.store.units());
+    return trap === null || result === null
+      ? null
+      : backPressureLimit(result, trap, this.modelOf(trap), this.store.units());
   });
   protected readonly receiverName = computed(() => {
     const last = this.trapResult()?.walk.at(-1);
@@ -57,7 +59,9 @@ export class ResultTab {
       value: this.backPressureIn(outcome),
     })),
   );
-  protected readonly warnings = computed(() => (this.store.result()?.warnings ?? []).filter(({ element }) => element === this.element().id));
+  protected readonly warnings = computed(() =>
+    (this.store.result()?.warnings ?? []).filter(({ element }) => element === this.element().id),
+  );
   protected readonly parts = computed((): Row[] => {
     const result = this.trapResult();
     return result === null ? [] : this.breakdown(result);
@@ -108,7 +112,8 @@ export class ResultTab {
     if (outcome.status !== 'solved') return '–';
     const { id } = this.element();
     const pressurePa =
-      outcome.result.traps.find((trap) => trap.id === id)?.backPressurePa ?? outcome.result.nodes.find((node) => node.id === id)?.pressurePa;
+      outcome.result.traps.find((trap) => trap.id === id)?.backPressurePa ??
+      outcome.result.nodes.find((node) => node.id === id)?.pressurePa;
     return pressurePa === undefined ? '–' : formatQuantity(pressurePa, 'pressure', this.store.units());
   }
 

@@ -44,7 +44,9 @@ export class ServiceEditor {
   });
   protected readonly inletK = computed(() => this.temperatures().inletK);
   protected readonly outletK = computed(() => this.temperatures().outletK);
-  protected readonly waiting = computed(() => this.wanted() !== 'constant' && (this.inletK() === undefined || this.outletK() === undefined));
+  protected readonly waiting = computed(
+    () => this.wanted() !== 'constant' && (this.inletK() === undefined || this.outletK() === undefined),
+  );
 
   protected choose(value: string | undefined): void {
     this.wanted.set(value === 'varyingInlet' || value === 'varyingFlow' ? value : 'constant');

@@ -1,4 +1,14 @@
-import { ChangeDetectionStrategy, Component, effect, type ElementRef, input, output, signal, untracked, viewChild } from '@angular/core';
+import {
+  ChangeDetectionStrategy,
+  Component,
+  effect,
+  type ElementRef,
+  input,
+  output,
+  signal,
+  untracked,
+  viewChild,
+} from '@angular/core';
 
 let fieldCount = 0;
 

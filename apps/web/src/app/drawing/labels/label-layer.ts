@@ -37,7 +37,9 @@ export class LabelLayer {
   protected readonly laid = computed((): LaidLabel[] =>
     this.labels().flatMap((label) => {
       const place = label.candidates[this.placed().get(label.key) ?? -1];
-      return place === undefined ? [] : [{ key: label.key, lines: label.lines.map((line, i) => laidLine(line, i, place)) }];
+      return place === undefined
+        ? []
+        : [{ key: label.key, lines: label.lines.map((line, i) => laidLine(line, i, place)) }];
     }),
   );
   protected readonly moved = computed(() => {
@@ -52,5 +54,11 @@ function laidLine(line: LabelLine, index: number, { x, y, width, align }: LabelP
   const textWidth = line.text.length * 7.3;
   const textX = align === 'start' ? anchorX + mark : align === 'middle' ? anchorX + mark / 2 : anchorX;
   const left = align === 'start' ? x : align === 'middle' ? textX - textWidth / 2 - mark : textX - textWidth - mark;
-  return { ...line, x: textX, y: y + index * LINE_HEIGHT + BASELINE, anchor: align, markX: line.concern === null ? null : left };
+  return {
+    ...line,
+    x: textX,
+    y: y + index * LINE_HEIGHT + BASELINE,
+    anchor: align,
+    markX: line.concern === null ? null : left,
+  };
 }

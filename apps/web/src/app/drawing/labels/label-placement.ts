@@ -12,9 +12,8 @@ export interface LabelRequest {
   readonly candidates: readonly Box[];
 }
 
-const CELL = 8;
-/** A box may touch the edge of a cell without taking it. */
-const SLACK = 1;
+/** Boxes are looked up by square cells of this size, px; about the width of a label, so that one lies in few. */
+const CELL = 64;
 
 /**
  * Lays labels one after another, in order of right, each at its first free candidate. A label that finds no place is left out.
@@ -26,7 +25,7 @@ export function placeLabels(
   obstacles: readonly Box[],
   kept: ReadonlyMap<string, number> = new Map(),
 ): Map<string, number> {
-  const taken = new TakenCells();
+  const taken = new TakenBoxes();
   for (const obstacle of obstacles) taken.take(obstacle);
   const placed = new Map<string, number>();
   for (const { key, candidates } of requests) {
@@ -42,22 +41,32 @@ export function placeLabels(
   return placed;
 }
 
-class TakenCells {
-  private readonly cells = new Set<number>();
+class TakenBoxes {
+  private readonly cells = new Map<number, Box[]>();
 
   take(box: Box): void {
-    for (const cell of cellsOf(box)) this.cells.add(cell);
+    for (const cell of cellsOf(box)) {
+      const there = this.cells.get(cell);
+      if (there === undefined) this.cells.set(cell, [box]);
+      else there.push(box);
+    }
   }
 
   isFree(box: Box): boolean {
-    for (const cell of cellsOf(box)) if (this.cells.has(cell)) return false;
+    for (const cell of cellsOf(box)) {
+      if (this.cells.get(cell)?.some((other) => overlap(box, other)) === true) return false;
+    }
     return true;
   }
 }
 
+function overlap(a: Box, b: Box): boolean {
+  return a.x < b.x + b.width && b.x < a.x + a.width && a.y < b.y + b.height && b.y < a.y + a.height;
+}
+
 function* cellsOf({ x, y, width, height }: Box): Generator<number> {
-  const [left, right] = [Math.floor((x + SLACK) / CELL), Math.floor((x + width - SLACK) / CELL)];
-  const [top, bottom] = [Math.floor((y + SLACK) / CELL), Math.floor((y + height - SLACK) / CELL)];
+  const [left, right] = [Math.floor(x / CELL), Math.floor((x + width) / CELL)];
+  const [top, bottom] = [Math.floor(y / CELL), Math.floor((y + height) / CELL)];
   for (let column = left; column <= right; column++) {
     for (let row = top; row <= bottom; row++) yield column * 0x100000 + row;
   }

@@ -4,12 +4,13 @@ import { sizeWords } from '../model/accessible-name';
 import { nameOf } from '../model/element-words';
 import type { Concern, NodeView, PipeView, Side } from '../model/element-views';
 import { longestPiece, middle, pieces } from '../model/geometry';
+import type { AreaOutline } from '../sheet/area-outlines';
 import { symbolScale } from '../model/viewport';
 import type { Box, LabelRequest } from './label-placement';
 
 export interface LabelLine {
   readonly text: string;
-  readonly look: 'tag' | 'value' | 'name' | 'lift' | 'pipe';
+  readonly look: 'tag' | 'value' | 'name' | 'lift' | 'pipe' | 'area';
   readonly concern: Concern | null;
 }
 
@@ -24,8 +25,11 @@ export interface SheetLabel extends LabelRequest {
   readonly candidates: readonly LabelPlace[];
 }
 
-/** From which zoom on each kind of label shows; the text keeps its size, so there must be room for it. */
-const FROM_ZOOM = { failing: 0.5, lifts: 0.5, values: 0.9, pipes: 1.4, flows: 2 } as const;
+/**
+ * From which zoom on each kind of label shows; the text keeps its size, so there must be room for it. Values come before tags: what
+ * stands against each trap is what the sheet is for, and four digits fit where a tag does not.
+ */
+const FROM_ZOOM = { values: 0.45, lifts: 0.45, tags: 0.7, pipes: 1.4, flows: 2 } as const;
 export const LINE_HEIGHT = 14;
 const MARK_WIDTH = 15;
 const GAP = 4;
@@ -41,15 +45,20 @@ const SYMBOL_REACH: Readonly<Record<NodeView['node']['kind'], Readonly<{ x: numb
 interface Subject {
   readonly nodes: Iterable<NodeView>;
   readonly pipes: Iterable<PipeView>;
+  readonly areas: readonly AreaOutline[];
   readonly selected: ReadonlySet<string>;
   /** Pointed at or focused: shows its label at any zoom. */
   readonly pointedAt: ReadonlySet<string>;
 }
 
 /** Every label wanted at this zoom, in order of right. Places are sheet coordinates times zoom. */
-export function sheetLabels({ nodes, pipes, selected, pointedAt }: Subject, zoom: number, units: DisplayUnits): SheetLabel[] {
+export function sheetLabels(
+  { nodes, pipes, areas, selected, pointedAt }: Subject,
+  zoom: number,
+  units: DisplayUnits,
+): SheetLabel[] {
   const scale = symbolScale(zoom) * zoom;
-  const wanted: (SheetLabel & { right: number })[] = [];
+  const wanted: (SheetLabel & { right: number })[] = areas.map((area) => ({ ...areaLabel(area, zoom), right: 3 }));
   for (const view of nodes) {
     const chosen = selected.has(view.id) || pointedAt.has(view.id);
     if (!chosen && zoom < nodeZoom(view)) continue;
@@ -59,7 +68,8 @@ export function sheetLabels({ nodes, pipes, selected, pointedAt }: Subject, zoom
     wanted.push({ key: `n:${view.id}`, elementId: view.id, lines, candidates, right: nodeRight(view, chosen) });
   }
   for (const view of pipes) {
-    if (view.lift !== null && zoom >= FROM_ZOOM.lifts) wanted.push({ ...liftLabel(view, view.lift, zoom, units), right: 6 });
+    if (view.lift !== null && zoom >= FROM_ZOOM.lifts)
+      wanted.push({ ...liftLabel(view, view.lift, zoom, units), right: 6 });
     const chosen = selected.has(view.id) || pointedAt.has(view.id);
     const tag = chosen || zoom >= FROM_ZOOM.pipes ? pipeLabel(view, zoom, units) : undefined;
     if (tag !== undefined) wanted.push({ ...tag, right: chosen ? 0 : 8 });
@@ -79,16 +89,20 @@ export function labelObstacles(nodes: Iterable<NodeView>, pipes: Iterable<PipeVi
   for (const { drawn } of pipes) {
     for (const [a, b] of pieces(drawn.points)) {
       const [left, top] = [Math.min(a.x, b.x) * zoom - half, Math.min(a.y, b.y) * zoom - half];
-      boxes.push({ x: left, y: top, width: Math.abs(b.x - a.x) * zoom + 2 * half, height: Math.abs(b.y - a.y) * zoom + 2 * half });
+      boxes.push({
+        x: left,
+        y: top,
+        width: Math.abs(b.x - a.x) * zoom + 2 * half,
+        height: Math.abs(b.y - a.y) * zoom + 2 * half,
+      });
     }
   }
   return boxes;
 }
 
-function nodeZoom({ node, concern }: NodeView): number {
+function nodeZoom({ node }: NodeView): number {
   if (node.kind === 'receiver' || node.kind === 'flashVessel') return 0;
-  if (concern === 'fail') return FROM_ZOOM.failing;
-  if (node.kind === 'junction') return node.tag === undefined ? FROM_ZOOM.pipes : FROM_ZOOM.values;
+  if (node.kind === 'junction') return node.tag === undefined ? FROM_ZOOM.pipes : FROM_ZOOM.tags;
   return FROM_ZOOM.values;
 }
 
@@ -105,15 +119,19 @@ function nodeLines(view: NodeView, zoom: number, chosen: boolean, units: Display
   const value = pressurePa === undefined ? undefined : formatQuantity(pressurePa, 'pressure', units);
   const named = node.kind === 'junction' ? (chosen ? nameOf(node) : (node.tag ?? '')) : nameOf(node);
   const lines: LabelLine[] = [];
-  if (named !== '' && (chosen || zoom >= nodeZoom(view))) {
-    const vessel = node.kind === 'receiver' || node.kind === 'flashVessel';
+  const vessel = node.kind === 'receiver' || node.kind === 'flashVessel';
+  if (named !== '' && (chosen || vessel || zoom >= FROM_ZOOM.tags || concern !== null)) {
     lines.push({ text: named, look: vessel ? 'name' : 'tag', concern: null });
   }
   if (value !== undefined && (chosen || node.kind !== 'junction' || zoom >= FROM_ZOOM.pipes)) {
     lines.push({ text: value, look: 'value', concern });
   }
   if (zoom >= FROM_ZOOM.flows && node.kind === 'trap') {
-    lines.push({ text: formatQuantity(node.loadKgS, 'massFlow', units, { withUnit: true }), look: 'tag', concern: null });
+    lines.push({
+      text: formatQuantity(node.loadKgS, 'massFlow', units, { withUnit: true }),
+      look: 'tag',
+      concern: null,
+    });
   }
   return lines;
 }
@@ -123,7 +141,13 @@ function sides({ outlet }: NodeView): Side[] {
   return [...new Set<Side>([outer, 'right', 'left', 'up', 'down', outlet])];
 }
 
-function beside(at: Position, side: Side, { x: rx, y: ry }: { x: number; y: number }, lines: readonly LabelLine[], zoom: number): LabelPlace {
+function beside(
+  at: Position,
+  side: Side,
+  { x: rx, y: ry }: { x: number; y: number },
+  lines: readonly LabelLine[],
+  zoom: number,
+): LabelPlace {
   const width = Math.max(...lines.map(lineWidth));
   const height = lines.length * LINE_HEIGHT;
   const [x, y] = [at.x * zoom, at.y * zoom];
@@ -139,20 +163,59 @@ function beside(at: Position, side: Side, { x: rx, y: ry }: { x: number; y: numb
   }
 }
 
-function liftLabel({ id }: PipeView, lift: NonNullable<PipeView['lift']>, zoom: number, units: DisplayUnits): SheetLabel {
+function liftLabel(
+  { id }: PipeView,
+  lift: NonNullable<PipeView['lift']>,
+  zoom: number,
+  units: DisplayUnits,
+): SheetLabel {
   const lines: LabelLine[] = [
     { text: `${formatQuantity(lift.riseM, 'length', units, { withUnit: true })} lift`, look: 'lift', concern: null },
   ];
-  const at = middle(lift.piece);
-  const room = { x: 20, y: 8 };
-  return { key: `l:${id}`, elementId: id, lines, candidates: [beside(at, 'right', room, lines, zoom), beside(at, 'left', room, lines, zoom)] };
+  const [a, b] = lift.piece;
+  // the staff stands at the right
+  const [right, left] = [
+    { x: 13 * zoom + 6, y: 8 },
+    { x: 8, y: 8 },
+  ];
+  const places = [0.5, 0.35, 0.65].map((share) => ({ x: a.x, y: a.y + (b.y - a.y) * share }));
+  return {
+    key: `l:${id}`,
+    elementId: id,
+    lines,
+    candidates: [
+      ...places.map((at) => beside(at, 'right', right, lines, zoom)),
+      ...places.map((at) => beside(at, 'left', left, lines, zoom)),
+    ],
+  };
+}
+
+/** In the outline, at the corner that is free. */
+function areaLabel({ name, x, y, width, height }: AreaOutline, zoom: number): SheetLabel {
+  const lines: LabelLine[] = [{ text: name, look: 'area', concern: null }];
+  const size = { width: Math.max(...lines.map(lineWidth)), height: LINE_HEIGHT };
+  const [left, right] = [x * zoom + 10, (x + width) * zoom - 10 - size.width];
+  const [top, bottom] = [y * zoom - LINE_HEIGHT / 2, (y + height) * zoom - LINE_HEIGHT / 2];
+  return {
+    key: `a:${name}`,
+    elementId: '',
+    lines,
+    candidates: [
+      { x: left, y: top, ...size, align: 'start' },
+      { x: right, y: top, ...size, align: 'end' },
+      { x: left, y: bottom, ...size, align: 'start' },
+      { x: right, y: bottom, ...size, align: 'end' },
+    ],
+  };
 }
 
 function pipeLabel({ id, drawn }: PipeView, zoom: number, units: DisplayUnits): SheetLabel | undefined {
   const level = longestPiece(drawn.points, 'level');
   const piece = level ?? longestPiece(drawn.points, 'upright');
   if (piece === undefined) return undefined;
-  const lines: LabelLine[] = [{ text: `${nameOf(drawn.pipe)} ${shortSize(drawn.pipe, units)}`, look: 'pipe', concern: null }];
+  const lines: LabelLine[] = [
+    { text: `${nameOf(drawn.pipe)} ${shortSize(drawn.pipe, units)}`, look: 'pipe', concern: null },
+  ];
   const at = middle(piece);
   const room = { x: 10, y: 7 };
   const order: Side[] = level === undefined ? ['right', 'left'] : ['down', 'up'];
@@ -171,7 +234,7 @@ function reach({ node }: NodeView, scale: number): { x: number; y: number } {
 
 /** Near enough for placing: Inter's digits and capitals at the sizes of the sheet. */
 function lineWidth({ text, look, concern }: LabelLine): number {
-  const perLetter = look === 'tag' || look === 'pipe' ? 6.4 : 7.3;
+  const perLetter = look === 'tag' || look === 'pipe' ? 6.2 : 7.2;
   return text.length * perLetter + (concern === null ? 0 : MARK_WIDTH);
 }
 

@@ -57,11 +57,19 @@ export function pipeName(pipe: PipeRun, facts: PipeFacts, units: DisplayUnits): 
 /** "1-1/2 in schedule 80", or the bore where the pipe has no nominal size. */
 export function sizeWords({ size, insideDiameterM }: PipeRun, units: DisplayUnits): string {
   if (size !== undefined) return `${size.nps} in schedule ${size.schedule}`;
-  return insideDiameterM === undefined ? 'no size' : `${formatQuantity(insideDiameterM, 'diameter', units, { withUnit: true })} bore`;
+  return insideDiameterM === undefined
+    ? 'no size'
+    : `${formatQuantity(insideDiameterM, 'diameter', units, { withUnit: true })} bore`;
 }
 
-function pressureWords(node: NetworkNode, trap: TrapResult | undefined, result: NodeResult | undefined, units: DisplayUnits): string {
-  if (trap !== undefined) return `${formatQuantity(trap.backPressurePa, 'pressure', units, { withUnit: true })} behind it`;
+function pressureWords(
+  node: NetworkNode,
+  trap: TrapResult | undefined,
+  result: NodeResult | undefined,
+  units: DisplayUnits,
+): string {
+  if (trap !== undefined)
+    return `${formatQuantity(trap.backPressurePa, 'pressure', units, { withUnit: true })} behind it`;
   if (result !== undefined) return formatQuantity(result.pressurePa, 'pressure', units, { withUnit: true });
   return node.kind === 'trap' ? 'not solved' : '';
 }

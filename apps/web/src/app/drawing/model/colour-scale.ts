@@ -20,12 +20,17 @@ export interface ColourScale {
   readonly decimals: number;
 }
 
-export const COLOUR_KINDS: Readonly<Record<ColouredBy, QuantityKind>> = { pressure: 'pressure', flash: 'fraction', velocity: 'velocity' };
+export const COLOUR_KINDS: Readonly<Record<ColouredBy, QuantityKind>> = {
+  pressure: 'pressure',
+  flash: 'fraction',
+  velocity: 'velocity',
+};
 
 /** Classes of even, round width for a network, the same in all its cases. Pressures take the limits that every other view takes. */
 export function colourScale(by: ColouredBy, outcomes: readonly CaseOutcome[], units: DisplayUnits): ColourScale {
   const kind = COLOUR_KINDS[by];
-  const limits = by === 'pressure' ? pressureRamp(pressuresOf(outcomes), units).limits : limitsFromZero(by, outcomes, units);
+  const limits =
+    by === 'pressure' ? pressureRamp(pressuresOf(outcomes), units).limits : limitsFromZero(by, outcomes, units);
   const decimals = decimalsOf((limits[1] ?? 1) - (limits[0] ?? 0));
   return { by, kind, limits: limits.map((limit) => fromDisplay(limit, kind, units)), decimals };
 }
@@ -57,7 +62,11 @@ export function stretches(start: number, end: number, scale: ColourScale): Stret
   });
 }
 
-function limitsFromZero(by: Exclude<ColouredBy, 'pressure'>, outcomes: readonly CaseOutcome[], units: DisplayUnits): number[] {
+function limitsFromZero(
+  by: Exclude<ColouredBy, 'pressure'>,
+  outcomes: readonly CaseOutcome[],
+  units: DisplayUnits,
+): number[] {
   let most = 0;
   for (const outcome of outcomes) if (outcome.status === 'solved') most = Math.max(most, mostOf(by, outcome.result));
   const step = roundStep(toDisplay(most, COLOUR_KINDS[by], units) / CLASS_COUNT);
@@ -66,7 +75,8 @@ function limitsFromZero(by: Exclude<ColouredBy, 'pressure'>, outcomes: readonly 
 
 function mostOf(by: Exclude<ColouredBy, 'pressure'>, { pipes }: SolveResult): number {
   return pipes.reduce(
-    (most, pipe) => Math.max(most, by === 'flash' ? Math.max(pipe.upstreamQuality, pipe.downstreamQuality) : pipe.mixtureVelocityMS),
+    (most, pipe) =>
+      Math.max(most, by === 'flash' ? Math.max(pipe.upstreamQuality, pipe.downstreamQuality) : pipe.mixtureVelocityMS),
     0,
   );
 }

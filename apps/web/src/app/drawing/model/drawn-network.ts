@@ -1,4 +1,11 @@
-import { inOrder, type NetworkDocument, type NetworkNode, type NodeKind, type PipeRun, type Position } from '@riseback/network';
+import {
+  inOrder,
+  type NetworkDocument,
+  type NetworkNode,
+  type NodeKind,
+  type PipeRun,
+  type Position,
+} from '@riseback/network';
 import { type Axis, pointAt, rightAngled } from './geometry';
 
 /** A node with its place on the sheet. */
@@ -25,7 +32,12 @@ export interface DrawnNetwork {
   readonly entering: ReadonlyMap<string, readonly string[]>;
 }
 
-export const EMPTY_DRAWING: DrawnNetwork = { nodes: new Map(), pipes: new Map(), leaving: new Map(), entering: new Map() };
+export const EMPTY_DRAWING: DrawnNetwork = {
+  nodes: new Map(),
+  pipes: new Map(),
+  leaving: new Map(),
+  entering: new Map(),
+};
 
 /** What is being dragged or moved by keys, before it is set down. */
 export interface Displaced {

@@ -130,7 +130,11 @@ export function worstConcern(findings: readonly { readonly verdict: Verdict }[])
   return findings.some(({ verdict }) => verdict === 'watch') ? 'watch' : null;
 }
 
-function nodeValue({ by }: ColourScale, trap: TrapResult | undefined, result: NodeResult | undefined): number | undefined {
+function nodeValue(
+  { by }: ColourScale,
+  trap: TrapResult | undefined,
+  result: NodeResult | undefined,
+): number | undefined {
   switch (by) {
     case 'pressure':
       return trap?.backPressurePa ?? result?.pressurePa;
@@ -153,12 +157,20 @@ function pipeStretches(scale: ColourScale, result: PipeResult): Stretch[] {
 }
 
 /** On the longest piece, off its middle, so that the arrow keeps clear of tags and lift marks. */
-function arrowOn(points: readonly Position[], reversed: boolean, still: boolean, parts: readonly Stretch[]): PipeView['arrow'] {
+function arrowOn(
+  points: readonly Position[],
+  reversed: boolean,
+  still: boolean,
+  parts: readonly Stretch[],
+): PipeView['arrow'] {
   const level = longestPiece(points, 'level');
   const upright = longestPiece(points, 'upright');
   const piece = [level, upright]
     .flatMap((candidate) => (candidate === undefined ? [] : [candidate]))
-    .reduce<[Position, Position] | undefined>((best, next) => (best === undefined || span(next) > span(best) ? next : best), undefined);
+    .reduce<[Position, Position] | undefined>(
+      (best, next) => (best === undefined || span(next) > span(best) ? next : best),
+      undefined,
+    );
   if (still || piece === undefined || span(piece) < LEAST_ARROW_PIECE) return null;
   const on = pointAt(piece, 0.62);
   const middle = parts.find((part) => part.from <= 0.5 && part.to >= 0.5);
@@ -172,7 +184,8 @@ function span([a, b]: readonly [Position, Position]): number {
 function outletSide(id: string, { leaving, entering, pipes }: DrawnNetwork): Side {
   const out = leaving.get(id)?.[0];
   const into = entering.get(id)?.[0];
-  const points = out !== undefined ? pipes.get(out)?.points : into !== undefined ? pipes.get(into)?.points.toReversed() : undefined;
+  const points =
+    out !== undefined ? pipes.get(out)?.points : into !== undefined ? pipes.get(into)?.points.toReversed() : undefined;
   const [a, b] = points ?? [];
   if (a === undefined || b === undefined) return 'down';
   if (Math.abs(b.y - a.y) >= Math.abs(b.x - a.x)) return b.y < a.y ? 'up' : 'down';

@@ -29,7 +29,8 @@ export function nearestInDirection(network: DrawnNetwork, fromId: string, direct
     const { ahead, aside } = resolve({ x: at.x - from.x, y: at.y - from.y }, direction);
     if (ahead <= 0 || Math.abs(aside) > ahead) continue;
     const distance = Math.hypot(ahead, aside);
-    if (best === undefined || distance < best.distance || (distance === best.distance && id < best.id)) best = { id, distance };
+    if (best === undefined || distance < best.distance || (distance === best.distance && id < best.id))
+      best = { id, distance };
   }
   return best?.id;
 }
@@ -75,7 +76,9 @@ export function trapAbove(network: DrawnNetwork, id: string | undefined, reverse
   const seen = new Set(queue);
   for (let here = queue.shift(); here !== undefined; here = queue.shift()) {
     if (network.nodes.get(here)?.node.kind === 'trap') return here;
-    const above = network.pipes.has(here) ? [upstreamOf(network, here, reversed)] : feedingPipes(network, here, reversed);
+    const above = network.pipes.has(here)
+      ? [upstreamOf(network, here, reversed)]
+      : feedingPipes(network, here, reversed);
     for (const next of above) {
       if (next === undefined || seen.has(next)) continue;
       seen.add(next);
@@ -86,7 +89,10 @@ export function trapAbove(network: DrawnNetwork, id: string | undefined, reverse
 }
 
 /** The element named by a tag, or the first whose tag or id starts with what was typed. Letters' case does not matter. */
-export function findByTag(elements: Iterable<{ id: string; tag?: string | undefined }>, typed: string): string | undefined {
+export function findByTag(
+  elements: Iterable<{ id: string; tag?: string | undefined }>,
+  typed: string,
+): string | undefined {
   const wanted = typed.trim().toLowerCase();
   if (wanted === '') return undefined;
   let starting: string | undefined;
@@ -103,11 +109,17 @@ export function placeOf({ nodes, pipes }: DrawnNetwork, id: string): Position | 
 }
 
 function drainingPipes({ leaving, entering }: DrawnNetwork, node: string, reversed: Reversed): string[] {
-  return [...(leaving.get(node) ?? []).filter((pipe) => !reversed(pipe)), ...(entering.get(node) ?? []).filter(reversed)];
+  return [
+    ...(leaving.get(node) ?? []).filter((pipe) => !reversed(pipe)),
+    ...(entering.get(node) ?? []).filter(reversed),
+  ];
 }
 
 function feedingPipes({ leaving, entering }: DrawnNetwork, node: string, reversed: Reversed): string[] {
-  return [...(entering.get(node) ?? []).filter((pipe) => !reversed(pipe)), ...(leaving.get(node) ?? []).filter(reversed)];
+  return [
+    ...(entering.get(node) ?? []).filter((pipe) => !reversed(pipe)),
+    ...(leaving.get(node) ?? []).filter(reversed),
+  ];
 }
 
 function resolve({ x, y }: Position, direction: Direction): { ahead: number; aside: number } {

@@ -27,7 +27,8 @@ export function nearestFreePoint(near: Position, occupied: Occupied): Position {
   if (isFree(centre, occupied)) return centre;
   for (let ring = 1; ring <= FARTHEST_RING; ring++) {
     const free = ringAround(centre, ring).filter((point) => isFree(point, occupied));
-    if (free.length > 0) return free.reduce((best, point) => (distance(point, centre) < distance(best, centre) ? point : best));
+    if (free.length > 0)
+      return free.reduce((best, point) => (distance(point, centre) < distance(best, centre) ? point : best));
   }
   return centre;
 }

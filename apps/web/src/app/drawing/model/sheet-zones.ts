@@ -21,7 +21,10 @@ export function sheetAround(points: Iterable<Position>): Sheet {
     [left, right, top, bottom] = [Math.min(left, x), Math.max(right, x), Math.min(top, y), Math.max(bottom, y)];
   }
   if (left === Infinity) return { left: 0, top: 0, ...LEAST };
-  const [firstColumn, firstRow] = [Math.floor((left - MARGIN) / FIELD.width), Math.floor((top - MARGIN) / FIELD.height)];
+  const [firstColumn, firstRow] = [
+    Math.floor((left - MARGIN) / FIELD.width),
+    Math.floor((top - MARGIN) / FIELD.height),
+  ];
   return {
     left: firstColumn * FIELD.width,
     top: firstRow * FIELD.height,

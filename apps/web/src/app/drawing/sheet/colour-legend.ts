@@ -2,7 +2,11 @@ import { ChangeDetectionStrategy, Component, computed, input, model } from '@ang
 import { type DisplayUnits, displayUnit, formatQuantity } from '@riseback/units';
 import { COLOURED_BY, type ColouredBy, type ColourScale } from '../model/colour-scale';
 
-const WORDS: Readonly<Record<ColouredBy, string>> = { pressure: 'Back pressure', flash: 'Flash share', velocity: 'Velocity' };
+const WORDS: Readonly<Record<ColouredBy, string>> = {
+  pressure: 'Back pressure',
+  flash: 'Flash share',
+  velocity: 'Velocity',
+};
 
 /** What the colours mean, with the unit that stands nowhere else on the sheet; also the chooser of what is coloured. */
 @Component({

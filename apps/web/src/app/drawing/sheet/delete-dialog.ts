@@ -1,6 +1,12 @@
 import { ChangeDetectionStrategy, Component, computed, inject } from '@angular/core';
 import { MatButton } from '@angular/material/button';
-import { MAT_DIALOG_DATA, MatDialogActions, MatDialogClose, MatDialogContent, MatDialogTitle } from '@angular/material/dialog';
+import {
+  MAT_DIALOG_DATA,
+  MatDialogActions,
+  MatDialogClose,
+  MatDialogContent,
+  MatDialogTitle,
+} from '@angular/material/dialog';
 
 export interface DeleteQuestion {
   readonly names: readonly string[];
@@ -52,7 +58,9 @@ export class DeleteDialog {
   protected readonly question = inject<DeleteQuestion>(MAT_DIALOG_DATA);
 
   protected readonly title =
-    this.question.names.length === 1 ? (this.question.names[0] ?? '') : `${String(this.question.names.length)} elements`;
+    this.question.names.length === 1
+      ? (this.question.names[0] ?? '')
+      : `${String(this.question.names.length)} elements`;
   protected readonly shown = computed(() => this.question.goingAlong.slice(0, MOST_NAMED));
   protected readonly more = computed(() => this.question.goingAlong.length - this.shown().length);
 }

@@ -23,7 +23,11 @@ export class DeletePrompt {
       return element === undefined ? id : nameOf(element);
     });
     const data: DeleteQuestion = { names, goingAlong: this.commands.goingAlong(ids) };
-    const opened = this.dialog.open<DeleteDialog, DeleteQuestion, boolean>(DeleteDialog, { data, width: '400px', restoreFocus: false });
+    const opened = this.dialog.open<DeleteDialog, DeleteQuestion, boolean>(DeleteDialog, {
+      data,
+      width: '400px',
+      restoreFocus: false,
+    });
     const agreed = await firstValueFrom(opened.afterClosed());
     if (agreed === true) this.commands.remove(ids);
     else this.state.focusOn(this.state.focusId());

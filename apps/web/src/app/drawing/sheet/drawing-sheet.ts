@@ -33,7 +33,7 @@ import { SheetPointer } from './sheet-pointer';
 import { ZoneFrame } from './zone-frame';
 
 /** Below this zoom values have no room, so symbols carry the status shapes themselves. */
-const MARKS_BELOW_ZOOM = 0.9;
+const MARKS_BELOW_ZOOM = 0.45;
 /** How near the edge the focused element may come before the view follows, px. */
 const FOLLOW_MARGIN = 48;
 const LEGEND = { width: 310, height: 92 } as const;
@@ -63,7 +63,12 @@ export class DrawingSheet {
   protected readonly symbolScale = computed(() => symbolScale(this.viewport().zoom));
   protected readonly canvasNodes = computed(() => [...this.scene.settled().nodes.values()]);
   protected readonly canvasLinks = computed(() =>
-    [...this.scene.settled().pipes.values()].map(({ id, pipe, points }) => ({ id, from: pipe.from, to: pipe.to, points })),
+    [...this.scene.settled().pipes.values()].map(({ id, pipe, points }) => ({
+      id,
+      from: pipe.from,
+      to: pipe.to,
+      points,
+    })),
   );
   protected readonly keep = computed(() => {
     const focused = this.state.focusId();
@@ -71,9 +76,12 @@ export class DrawingSheet {
   });
   protected readonly areas = computed(() => areaOutlines(this.scene.network()));
   protected readonly drawingName = computed(
-    () => `Drawing of ${this.store.document()?.name ?? 'the network'}. Arrows go from element to element, question mark lists the keys.`,
+    () =>
+      `Drawing of ${this.store.document()?.name ?? 'the network'}. Arrows go from element to element, question mark lists the keys.`,
   );
-  protected readonly caseName = computed(() => this.store.cases().find(({ id }) => id === this.store.caseId())?.name ?? '');
+  protected readonly caseName = computed(
+    () => this.store.cases().find(({ id }) => id === this.store.caseId())?.name ?? '',
+  );
   protected readonly wayOf = computed(() => {
     const chosen = this.state.chosenId();
     const node = chosen === null ? undefined : this.scene.settled().nodes.get(chosen)?.node;
@@ -81,11 +89,24 @@ export class DrawingSheet {
   });
   protected readonly stale = computed(() => this.store.solveState().kind !== 'solved');
 
+  private readonly size = computed(() => ({ width: this.viewport().width, height: this.viewport().height }), {
+    equal: (a, b) => a.width === b.width && a.height === b.height,
+  });
+  /** The person has moved the view. */
+  private looked = false;
   private readonly hovered = signal<string | null>(null);
-  private readonly pointedAt = computed(() => new Set([this.hovered(), this.state.focusId()].flatMap((id) => (id === null ? [] : [id]))));
+  private readonly pointedAt = computed(
+    () => new Set([this.hovered(), this.state.focusId()].flatMap((id) => (id === null ? [] : [id]))),
+  );
   protected readonly labels = computed(() =>
     sheetLabels(
-      { nodes: this.scene.nodeViews().values(), pipes: this.scene.pipeViews().values(), selected: this.state.selection(), pointedAt: this.pointedAt() },
+      {
+        nodes: this.scene.nodeViews().values(),
+        pipes: this.scene.pipeViews().values(),
+        areas: this.areas(),
+        selected: this.state.selection(),
+        pointedAt: this.pointedAt(),
+      },
       this.viewport().zoom,
       this.store.units(),
     ),
@@ -93,7 +114,10 @@ export class DrawingSheet {
   private readonly obstacles = computed(() =>
     labelObstacles(this.scene.nodeViews().values(), this.scene.pipeViews().values(), this.viewport().zoom),
   );
-  protected readonly placed = linkedSignal<{ labels: ReturnType<typeof sheetLabels>; obstacles: ReturnType<typeof labelObstacles> }, ReadonlyMap<string, number>>({
+  protected readonly placed = linkedSignal<
+    { labels: ReturnType<typeof sheetLabels>; obstacles: ReturnType<typeof labelObstacles> },
+    ReadonlyMap<string, number>
+  >({
     source: () => ({ labels: this.labels(), obstacles: this.obstacles() }),
     computation: ({ labels, obstacles }, before) => placeLabels(labels, obstacles, before?.value),
   });
@@ -135,9 +159,13 @@ export class DrawingSheet {
       this.state.zoom.set(this.viewport().zoom);
     });
     effect(() => {
-      // only another network moves the view by itself
+      // until the person looks for themselves everything is shown, however large the sheet becomes while the page fills
+      this.size();
       this.store.network();
-      if (this.canvas().ready()) untracked(() => { this.fit(); });
+      if (this.canvas().ready() && !this.looked)
+        untracked(() => {
+          this.fit();
+        });
     });
     effect(() => {
       const asked = this.state.zoomAsked();
@@ -148,11 +176,15 @@ export class DrawingSheet {
       });
     });
     afterRenderEffect(() => {
-      if (this.state.focusAsked() > 0) untracked(() => { this.followFocus(); });
+      if (this.state.focusAsked() > 0)
+        untracked(() => {
+          this.followFocus();
+        });
     });
   }
 
   zoomBy(factor: number): void {
+    this.looked = true;
     const { width, height } = this.viewport();
     this.canvas().zoomAbout({ x: width / 2, y: height / 2 }, factor);
     this.state.say(`${String(Math.round(this.viewport().zoom * 100))} per cent`);
@@ -165,7 +197,10 @@ export class DrawingSheet {
     const size = this.viewport();
     const none = { left: 0, top: 0, right: 0, bottom: 0 };
     const plain = fitView(points, size, none);
-    const pan = { panX: size.width / 2 - plain.centre.x * plain.zoom, panY: size.height / 2 - plain.centre.y * plain.zoom };
+    const pan = {
+      panX: size.width / 2 - plain.centre.x * plain.zoom,
+      panY: size.height / 2 - plain.centre.y * plain.zoom,
+    };
     const covered = points.some((point) => {
       const { x, y } = toScreen(point, { ...size, zoom: plain.zoom, ...pan });
       return x < LEGEND.width && y < LEGEND.height;
@@ -188,6 +223,10 @@ export class DrawingSheet {
     if (this.scene.settled().nodes.get(id)?.node.kind === 'trap') this.state.lastTrapId.set(id);
   }
 
+  protected wheeled(): void {
+    this.looked = true;
+  }
+
   protected keyDown(event: KeyboardEvent): void {
     if (this.keys.handle(event, this)) {
       event.preventDefault();
@@ -196,6 +235,7 @@ export class DrawingSheet {
   }
 
   protected down(event: PointerEvent): void {
+    this.looked = true;
     this.pointer.down(event, this.gestures);
   }
 

@@ -27,8 +27,13 @@ export class NodePlacing {
     const beside = focused === null ? undefined : placeOf(network, focused);
     const sheet = this.scene.sheet();
     const near =
-      beside === undefined ? { x: sheet.left + 4 * FIELD.width, y: sheet.top + 3 * FIELD.height } : { x: beside.x + BESIDE, y: beside.y };
-    const occupied = { nodes: [...network.nodes.values()].map(({ at }) => at), lines: [...network.pipes.values()].map(({ points }) => points) };
+      beside === undefined
+        ? { x: sheet.left + 4 * FIELD.width, y: sheet.top + 3 * FIELD.height }
+        : { x: beside.x + BESIDE, y: beside.y };
+    const occupied = {
+      nodes: [...network.nodes.values()].map(({ at }) => at),
+      lines: [...network.pipes.values()].map(({ points }) => points),
+    };
     this.ask(kind, nearestFreePoint(near, occupied));
   }
 

@@ -21,9 +21,25 @@ import { GRID } from '../model/placement';
 import { DeletePrompt } from './delete-prompt';
 import { NodePlacing } from './node-placing';
 
-const ARROWS: Readonly<Record<string, Direction>> = { ArrowLeft: 'left', ArrowRight: 'right', ArrowUp: 'up', ArrowDown: 'down' };
-const STEPS: Readonly<Record<Direction, readonly [number, number]>> = { left: [-1, 0], right: [1, 0], up: [0, -1], down: [0, 1] };
-export const PLACE_KEYS: Readonly<Record<string, NodeKind>> = { t: 'trap', j: 'junction', r: 'receiver', v: 'flashVessel', u: 'pumpedInlet' };
+const ARROWS: Readonly<Record<string, Direction>> = {
+  ArrowLeft: 'left',
+  ArrowRight: 'right',
+  ArrowUp: 'up',
+  ArrowDown: 'down',
+};
+const STEPS: Readonly<Record<Direction, readonly [number, number]>> = {
+  left: [-1, 0],
+  right: [1, 0],
+  up: [0, -1],
+  down: [0, 1],
+};
+export const PLACE_KEYS: Readonly<Record<string, NodeKind>> = {
+  t: 'trap',
+  j: 'junction',
+  r: 'receiver',
+  v: 'flashVessel',
+  u: 'pumpedInlet',
+};
 
 /** What zooms the view; the sheet is one. */
 export interface Zoomable {
@@ -60,7 +76,10 @@ export class SheetKeys {
   /** Starts a pipe at a node, by key or from the tray; without a node the first click or tag chooses it. */
   startPipe(from: string | null): void {
     this.state.mode.set({ kind: 'piping', from, to: null, typed: '', pointer: null });
-    const start = from === null ? 'Choose where the pipe starts' : `Pipe from ${this.tagOf(from)}: choose its end with the arrows or type its tag`;
+    const start =
+      from === null
+        ? 'Choose where the pipe starts'
+        : `Pipe from ${this.tagOf(from)}: choose its end with the arrows or type its tag`;
     this.state.say(start);
   }
 
@@ -88,7 +107,9 @@ export class SheetKeys {
     }
     const before = this.focused();
     if (event.shiftKey && event.key in ARROWS) {
-      this.state.selection.update((selected) => new Set([...selected, ...(before === undefined ? [] : [before]), next]));
+      this.state.selection.update(
+        (selected) => new Set([...selected, ...(before === undefined ? [] : [before]), next]),
+      );
     }
     this.state.focusOn(next);
     return true;
@@ -247,7 +268,9 @@ export class SheetKeys {
     const pipe = mode.bend < 0 ? undefined : network.pipes.get(mode.ids[0] ?? '');
     this.state.mode.set(mode);
     this.state.displaced.set(
-      pipe === undefined ? shiftNodes(network, mode.ids, mode.dx, mode.dy) : shiftBend(pipe, mode.bend, mode.dx, mode.dy),
+      pipe === undefined
+        ? shiftNodes(network, mode.ids, mode.dx, mode.dy)
+        : shiftBend(pipe, mode.bend, mode.dx, mode.dy),
     );
   }
 
@@ -289,7 +312,9 @@ export class SheetKeys {
   }
 
   private chooseTyped(mode: Extract<Mode, { kind: 'piping' }>, typed: string): void {
-    const nodes = [...this.scene.settled().nodes.values()].filter(({ id }) => id !== mode.from).map(({ node }) => ({ id: node.id, tag: node.tag }));
+    const nodes = [...this.scene.settled().nodes.values()]
+      .filter(({ id }) => id !== mode.from)
+      .map(({ node }) => ({ id: node.id, tag: node.tag }));
     this.chooseEnd(mode, findByTag(nodes, typed), typed);
   }
 
@@ -321,6 +346,10 @@ export class SheetKeys {
     const { nodes, pipes } = this.scene.settled();
     const element = nodes.get(id)?.node ?? pipes.get(id)?.pipe;
     if (element === undefined) return id;
-    return isPipe(element) ? `pipe ${nameOf(element)}` : element.tag === undefined ? `${KIND_WORDS[element.kind]} ${element.id}` : element.tag;
+    return isPipe(element)
+      ? `pipe ${nameOf(element)}`
+      : element.tag === undefined
+        ? `${KIND_WORDS[element.kind]} ${element.id}`
+        : element.tag;
   }
 }

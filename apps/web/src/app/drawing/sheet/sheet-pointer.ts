@@ -21,9 +21,21 @@ export interface PointerSurface {
 }
 
 type Gesture =
-  | { readonly kind: 'press'; readonly start: Position; readonly id: string | null; readonly bend: number; readonly adding: boolean }
+  | {
+      readonly kind: 'press';
+      readonly start: Position;
+      readonly id: string | null;
+      readonly bend: number;
+      readonly adding: boolean;
+    }
   | { readonly kind: 'drag'; readonly start: Position; readonly ids: readonly string[]; readonly grip: Position }
-  | { readonly kind: 'bend'; readonly start: Position; readonly id: string; readonly bend: number; readonly grip: Position }
+  | {
+      readonly kind: 'bend';
+      readonly start: Position;
+      readonly id: string;
+      readonly bend: number;
+      readonly grip: Position;
+    }
   | { readonly kind: 'pipe'; readonly from: string }
   | { readonly kind: 'box'; readonly start: Position };
 
@@ -211,7 +223,12 @@ export class SheetPointer {
   }
 
   /** The grabbed point lands on the grid; what goes along keeps its distance to it. */
-  private snapped(start: Position, point: Position, grip: Position, surface: PointerSurface): { dx: number; dy: number } {
+  private snapped(
+    start: Position,
+    point: Position,
+    grip: Position,
+    surface: PointerSurface,
+  ): { dx: number; dy: number } {
     const { zoom } = surface.viewport();
     const landed = snapPoint({ x: grip.x + (point.x - start.x) / zoom, y: grip.y + (point.y - start.y) / zoom });
     return { dx: landed.x - grip.x, dy: landed.y - grip.y };
@@ -226,7 +243,8 @@ export class SheetPointer {
     const [c, d] = now;
     if (a === undefined || b === undefined || c === undefined || d === undefined) return false;
     const apart = Math.hypot(b.x - a.x, b.y - a.y);
-    if (apart > 0) surface.zoomAbout({ x: (c.x + d.x) / 2, y: (c.y + d.y) / 2 }, Math.hypot(d.x - c.x, d.y - c.y) / apart);
+    if (apart > 0)
+      surface.zoomAbout({ x: (c.x + d.x) / 2, y: (c.y + d.y) / 2 }, Math.hypot(d.x - c.x, d.y - c.y) / apart);
     return true;
   }
 }

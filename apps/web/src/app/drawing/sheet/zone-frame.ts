@@ -18,7 +18,13 @@ const ROOM_FOR_TEXT = 10;
   host: { 'aria-hidden': 'true' },
   template: `
     <svg width="100%" height="100%" focusable="false">
-      <rect class="frame" [attr.x]="strip" [attr.y]="strip" [attr.width]="viewport().width" [attr.height]="viewport().height" />
+      <rect
+        class="frame"
+        [attr.x]="strip"
+        [attr.y]="strip"
+        [attr.width]="viewport().width"
+        [attr.height]="viewport().height"
+      />
       @for (x of ticks().x; track x) {
         <path [attr.d]="'M' + x + ' 4V' + strip + 'M' + x + ' ' + (viewport().height + strip) + 'v14'" />
       }
@@ -51,7 +57,9 @@ const ROOM_FOR_TEXT = 10;
     }
     text {
       fill: var(--rb-ink-2);
-      font: 400 11px/14px Inter, sans-serif;
+      font:
+        400 11px/14px Inter,
+        sans-serif;
       text-anchor: middle;
     }
   `,
@@ -83,7 +91,15 @@ export class ZoneFrame {
 }
 
 /** A field's name in the middle of what is seen of it. */
-function marks(count: number, start: number, step: number, zoom: number, pan: number, room: number, name: (index: number) => string): Mark[] {
+function marks(
+  count: number,
+  start: number,
+  step: number,
+  zoom: number,
+  pan: number,
+  room: number,
+  name: (index: number) => string,
+): Mark[] {
   return Array.from({ length: count }, (_, i) => {
     const low = Math.max(0, (start + i * step) * zoom + pan);
     const high = Math.min(room, (start + (i + 1) * step) * zoom + pan);

@@ -45,7 +45,8 @@ export class NodeMark {
     const { x, y } = this.frame();
     const c = CORNER;
     return (
-      `M${-x} ${-y + c}V${-y}H${-x + c}M${x - c} ${-y}H${x}V${-y + c}` + `M${x} ${y - c}V${y}H${x - c}M${-x + c} ${y}H${-x}V${y - c}`
+      `M${-x} ${-y + c}V${-y}H${-x + c}M${x - c} ${-y}H${x}V${-y + c}` +
+      `M${x} ${y - c}V${y}H${x - c}M${-x + c} ${y}H${-x}V${y - c}`
     );
   });
 }

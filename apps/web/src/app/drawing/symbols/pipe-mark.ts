@@ -31,7 +31,9 @@ export class PipeMark {
   readonly activeBend = input(-1);
 
   protected readonly line = computed(() => linePath(this.view().drawn.points));
-  protected readonly wash = computed(() => this.view().wash.map(({ points, level }) => ({ path: linePath(points), level })));
+  protected readonly wash = computed(() =>
+    this.view().wash.map(({ points, level }) => ({ path: linePath(points), level })),
+  );
   protected readonly bends = computed(() => (this.bendable() ? shownBends(this.view().drawn) : []));
   protected readonly frame = computed(() => frameOf(this.view().drawn.points));
   protected readonly brackets = computed(() => {
