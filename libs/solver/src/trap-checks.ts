@@ -77,7 +77,7 @@ function capacity({ trap, model, inletPressurePa, backPressurePa, loadKgS }: Tra
   const value = trapCapacityKgS(points, differentialPa);
   const limit = trap.sizingFactor * loadKgS;
   const result = { code, value, limit };
-  if (value >= limit) {
+  if (isAtLeast(value, limit)) {
     return { ...result, verdict: 'pass', ...CAPACITY_PASSES };
   }
   const text = say`At ${amount('pressureDifference', differentialPa)} across it the model passes ${amount('massFlow', value)}, but ${amount('factor', trap.sizingFactor)} times its load needs ${amount('massFlow', limit)}: at start-up and at peaks condensate backs up.`;
@@ -138,7 +138,7 @@ function orificeRating({ trap, model, atmosphericPressurePa }: TrapUnderCheck): 
     return { code, reason: 'The trap’s maximumPressurePa, the safety valve’s setting, is not given.' };
   const value = trap.maximumPressurePa - atmosphericPressurePa;
   const result = { code, value, limit };
-  if (value <= limit) {
+  if (isAtLeast(limit, value)) {
     return { ...result, verdict: 'pass', ...SEAT_PASSES };
   }
   const text = say`Up to the safety valve’s setting ${amount('pressureDifference', value)} can stand across the seat, which is rated for ${amount('pressureDifference', limit)}: above that the trap stays shut and floods.`;
@@ -156,18 +156,23 @@ function bodyRating({ trap, model }: TrapUnderCheck): TrapCheck | UnmadeCheck {
   if (pressurePa === undefined)
     return { code, reason: 'The trap’s maximumPressurePa, the safety valve’s setting, is not given.' };
   const remedy = say`Fit a body rated for the safety valve’s setting. Until then keep the trap shut off and marked: a body above its rating can burst.`;
-  if (bodyPressurePa !== undefined && pressurePa > bodyPressurePa) {
+  if (bodyPressurePa !== undefined && !isAtLeast(bodyPressurePa, pressurePa)) {
     const text = say`Up to the safety valve’s setting ${amount('pressure', pressurePa)} can stand in the body, which is rated for ${amount('pressure', bodyPressurePa)}.`;
     return { code, verdict: 'fail', value: pressurePa, limit: bodyPressurePa, ...findingWords(text, remedy) };
   }
   // a setting above the critical pressure is judged by pressure alone: nothing boils there
   const boils = pressurePa <= SATURATION_LINE_RANGE.pressurePa[1] && pressurePa >= SATURATION_LINE_RANGE.pressurePa[0];
   const temperatureK = boils ? saturationTemperatureK(pressurePa) : undefined;
-  if (temperatureK !== undefined && bodyTemperatureK !== undefined && temperatureK > bodyTemperatureK) {
+  if (temperatureK !== undefined && bodyTemperatureK !== undefined && !isAtLeast(bodyTemperatureK, temperatureK)) {
     const text = say`Steam at the safety valve’s setting is ${amount('temperature', temperatureK)} hot; the body is rated for ${amount('temperature', bodyTemperatureK)}.`;
     return { code, verdict: 'fail', value: temperatureK, limit: bodyTemperatureK, ...findingWords(text, remedy) };
   }
   if (bodyPressurePa === undefined) return { code, verdict: 'pass', ...BODY_PASSES_BY_TEMPERATURE };
   const words = bodyTemperatureK === undefined ? BODY_PASSES_BY_PRESSURE : BODY_PASSES;
   return { code, verdict: 'pass', value: pressurePa, limit: bodyPressurePa, ...words };
+}
+
+/** A rating that just meets what is asked for passes: 600 lb/h and 3 × 200 lb/h differ in the last digits of a conversion. */
+function isAtLeast(rating: number, asked: number): boolean {
+  return rating >= asked * (1 - 1e-6);
 }
