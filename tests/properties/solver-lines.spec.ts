@@ -1,4 +1,3 @@
-import { performance } from 'node:perf_hooks';
 import { isRefusal, solveNetwork } from '@riseback/solver';
 import { describe, expect, it } from 'vitest';
 import { found, networkFile, refused, solved, trapOf } from '../fixtures/solver/small-networks';
@@ -53,9 +52,10 @@ describe('2,000 pipes in one line', () => {
       const file = line(count);
       solved(file);
       const times = [1, 2, 3].map(() => {
-        const start = performance.now();
+        // processor time: what else runs on the machine does not count
+        const start = process.cpuUsage();
         solved(file);
-        return performance.now() - start;
+        return process.cpuUsage(start).user;
       });
       return Math.min(...times);
     };

@@ -111,6 +111,16 @@ describe('the solve command as it is run', () => {
     expect((JSON.parse(output) as { case: string }).case).toBe('design');
   });
 
+  it('exits with 3 where computing finds no solution, with the element and the value', () => {
+    const file = JSON.parse(demo) as { pipes: Record<string, Json>[] };
+    const crossing = file.pipes.findIndex(({ id }) => id === 'L24');
+    Object.assign(file.pipes[crossing] ?? {}, { size: { nps: '1/8', schedule: '80' } });
+    const { exitCode, output, error } = solveText(JSON.stringify(file));
+    expect([exitCode, output]).toEqual([3, undefined]);
+    expect(error?.errors.map(({ pointer }) => pointer)).toEqual([`/pipes/${crossing}`]);
+    expect(error?.detail).toMatch(/L24.*10000000/);
+  });
+
   it('exits with 2 and one problem object on standard error', () => {
     const path = join(folder, 'bad.json');
     writeFileSync(path, demo.replace('"flashVessel"', '"flashVesel"'));

@@ -59,10 +59,11 @@ function momentum({ result, massFluxKgM2S, limits }: PipeUnderCheck): SolveWarni
 }
 
 function gradient({ result, lengthM, limits }: PipeUnderCheck): SolveWarning | undefined {
-  const limit = result.downstreamQuality > 0 ? limits.gradient.flashingPaM : limits.gradient.liquidPaM;
+  const flashing = result.downstreamQuality > 0;
+  const limit = flashing ? limits.gradient.flashingPaM : limits.gradient.liquidPaM;
   const value = (result.frictionPa + result.flashPa) / lengthM;
   if (value <= limit) return undefined;
-  const text = say`Friction and flash steam cost ${amount('pressureGradient', value)}, fittings included; above ${amount('pressureGradient', limit)} a return is small for its load, and every trap upstream pays for it.`;
+  const text = say`${flashing ? 'Friction and flash steam cost' : 'Friction costs'} ${amount('pressureGradient', value)}, fittings included; above ${amount('pressureGradient', limit)} a return is small for its load, and every trap upstream pays for it.`;
   return { code: 'gradient', element: result.id, verdict: 'watch', value, limit, ...findingWords(text, LARGER_BORE) };
 }
 

@@ -18,14 +18,20 @@ export interface TrapUnderCheck {
 
 type Check = (at: TrapUnderCheck) => TrapCheck | UnmadeCheck;
 
-/** Every check at a trap, in the order in which they are told. A new check is a function here and a part of docs/methods/checks.md. */
-export const TRAP_CHECKS: readonly Check[] = [differential, capacity, backPressureFraction, orificeRating, bodyRating];
+/** Every check at a trap by its code, in the order in which they are told. A new check is a function here and a part of docs/methods/checks.md. */
+export const TRAP_CHECKS = {
+  differential,
+  capacity,
+  backPressureFraction,
+  orificeRating,
+  bodyRating,
+} as const satisfies Record<string, Check>;
 
 /** Makes each check that the trap's data allow, and says why the others are not made. */
 export function checkTrap(at: TrapUnderCheck): { checks: TrapCheck[]; notChecked: UnmadeCheck[] } {
   const checks: TrapCheck[] = [];
   const notChecked: UnmadeCheck[] = [];
-  for (const check of TRAP_CHECKS) {
+  for (const check of Object.values<Check>(TRAP_CHECKS)) {
     const outcome = check(at);
     if ('verdict' in outcome) checks.push(outcome);
     else notChecked.push(outcome);
@@ -47,13 +53,10 @@ const BODY_PASSES_BY_TEMPERATURE = findingWords(
 );
 
 /** What a trap shut off in this case says in place of its checks. */
-export const ISOLATED_UNCHECKED: readonly UnmadeCheck[] = [
-  'differential',
-  'capacity',
-  'backPressureFraction',
-  'orificeRating',
-  'bodyRating',
-].map((code) => ({ code, reason: 'The trap is isolated in this case.' }));
+export const ISOLATED_UNCHECKED: readonly UnmadeCheck[] = Object.keys(TRAP_CHECKS).map((code) => ({
+  code,
+  reason: 'The trap is isolated in this case.',
+}));
 
 function differential({ inletPressurePa, backPressurePa }: TrapUnderCheck): TrapCheck {
   const value = inletPressurePa - backPressurePa;
