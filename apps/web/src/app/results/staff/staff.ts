@@ -23,13 +23,13 @@ export class Staff {
   readonly inletPressurePa = input.required<number>();
   readonly units = input.required<DisplayUnits>();
   /** The back pressure above which a check would fail; see `backPressureLimit`. */
-  readonly limitPa = input<number>();
+  readonly limitPa = input(undefined, { transform: given });
   /** What the limit comes from, a word or two under its number. */
   readonly limitWord = input('limit');
   readonly receiverName = input('Receiver');
   readonly orientation = input<'tall' | 'flat'>('tall');
   /** One scale for the staffs of a table. */
-  readonly scaleMaximumPa = input<number>();
+  readonly scaleMaximumPa = input(undefined, { transform: given });
   /** Width of a flat staff, px. */
   readonly width = input(112);
 
@@ -58,4 +58,9 @@ export class Staff {
   protected readonly flat = computed(() =>
     this.orientation() === 'flat' ? flatStaff(this.model(), this.width(), this.scaleMaximumPa()) : null,
   );
+}
+
+/** A template's `?.` gives null where TypeScript's gives undefined. */
+function given(value: number | null | undefined): number | undefined {
+  return value ?? undefined;
 }
