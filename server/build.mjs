@@ -5,6 +5,7 @@ import { existsSync, mkdirSync, readdirSync, readFileSync, renameSync, rmSync, s
 import { join, relative } from 'node:path';
 import { brotliCompressSync, gzipSync } from 'node:zlib';
 import { ensureInstalled, root } from './install.mjs';
+import { withLock } from './work-lock.mjs';
 
 const dist = join(root, 'dist');
 const stamp = join(dist, '.riseback-build');
@@ -17,9 +18,16 @@ const NO_SOURCE = /(^|\/)(node_modules|\.angular)(\/|$)|\.spec\.ts$|\.md$/;
 export async function ensureBuilt(log) {
   const wanted = hashOfSources();
   if (isBuilt(wanted)) return;
+  await withLock(join(root, 'out', 'building'), log, async () => {
+    // another process may have built meanwhile
+    if (!isBuilt(wanted)) await build(wanted, log);
+  });
+}
+
+async function build(wanted, log) {
   log('Building the pages and the server …');
   // Into a folder of its own, renamed when whole: a build that is stopped half-way leaves the last one as it was.
-  const target = join(root, 'out', `build-${process.pid}`);
+  const target = join(root, 'out', 'build');
   rmSync(target, { recursive: true, force: true });
   mkdirSync(target, { recursive: true });
   try {
@@ -66,7 +74,7 @@ function readdirOrUndefined(path) {
 }
 
 function replaceDist(target) {
-  const old = join(root, 'out', `old-${process.pid}`);
+  const old = join(root, 'out', 'build-before');
   rmSync(old, { recursive: true, force: true });
   if (existsSync(dist)) renameSync(dist, old);
   renameSync(target, dist);
@@ -94,9 +102,9 @@ function compressPages(folder) {
 }
 
 async function buildServer(outdir) {
-  const { build } = await import('esbuild');
+  const esbuild = await import('esbuild');
   const { dependencies } = JSON.parse(readFileSync(join(root, 'package.json'), 'utf8'));
-  await build({
+  await esbuild.build({
     absWorkingDir: root,
     entryPoints: {
       main: 'server/src/main.ts',

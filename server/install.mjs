@@ -1,16 +1,16 @@
 // Makes node_modules match the package files and this Node.js, with built-ins only: it runs before anything is installed.
 import { spawn } from 'node:child_process';
 import { createHash } from 'node:crypto';
-import { existsSync, mkdirSync, readdirSync, readFileSync, rmdirSync, statSync, writeFileSync } from 'node:fs';
+import { existsSync, readdirSync, readFileSync, writeFileSync } from 'node:fs';
 import { join } from 'node:path';
 import { fileURLToPath } from 'node:url';
+import { withLock } from './work-lock.mjs';
 
 export const root = fileURLToPath(new URL('..', import.meta.url));
 const modules = join(root, 'node_modules');
 const stamp = join(modules, '.riseback-install');
-const lock = join(root, '.riseback-installing');
-/** An install takes minutes; a lock older than this was left by one that was killed. */
-const LOCK_STALE_MS = 20 * 60_000;
+// not in node_modules, which npm ci empties
+const lock = join(root, 'out', 'installing');
 
 /** Stops with advice when this Node.js is not one that the packages run on. */
 export function demandNode() {
@@ -40,7 +40,7 @@ function isInstalled(wanted) {
 export async function ensureInstalled(log) {
   const wanted = wantedStamp();
   if (isInstalled(wanted)) return;
-  await withLock(log, async () => {
+  await withLock(lock, log, async () => {
     if (isInstalled(wanted)) return;
     log('Installing packages (a few minutes the first time) …');
     const { code, output } = await run('npm', ['ci', '--include=dev', '--no-audit', '--no-fund']);
@@ -54,28 +54,6 @@ export async function ensureInstalled(log) {
     }
     writeFileSync(stamp, wanted);
   });
-}
-
-async function withLock(log, work) {
-  for (let waited = false; ; waited = true) {
-    try {
-      mkdirSync(lock);
-      break;
-    } catch (error) {
-      if (error.code !== 'EEXIST') throw error;
-      if (Date.now() - statSync(lock).mtimeMs > LOCK_STALE_MS) {
-        rmdirSync(lock);
-        continue;
-      }
-      if (!waited) log(`Waiting for another install to end (${lock}) …`);
-      await new Promise((resolve) => setTimeout(resolve, 1_000));
-    }
-  }
-  try {
-    await work();
-  } finally {
-    rmdirSync(lock);
-  }
 }
 
 /** Runs a command with all its output on standard error; keeps the output to tell why it failed. */
