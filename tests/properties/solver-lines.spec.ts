@@ -89,6 +89,11 @@ describe('networks that cannot be solved', () => {
     expect(pointers({ nodes: [receiver, trap], pipes: [pipe] })).toEqual(['/pipes/0/size']);
   });
 
+  it('name a roughness that fills the bore', () => {
+    const pipe = { ...riser, insideDiameterM: 0.004, roughnessM: 0.003 };
+    expect(pointers({ nodes: [receiver, trap], pipes: [pipe] })).toEqual(['/pipes/0/roughnessM']);
+  });
+
   it('leave out, in a live solve, what reaches no receiver, and list it', () => {
     const lost = { ...trap, id: 'T2' };
     const stub = { id: 'L2', from: 'T2', to: 'J9', lengthM: 2, insideDiameterM: 0.03 };

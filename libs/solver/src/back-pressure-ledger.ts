@@ -1,8 +1,7 @@
 import type { NetworkFile } from '@riseback/network';
 import { handCheckLiftPa } from './hand-check';
 import { piecesAgainstFlow } from './pipe-geometry';
-import type { SolveResult } from './solve-result';
-import { walkOfTrap } from './walk-of-trap';
+import { walkOfTrap, type WalkedResult } from './walk-of-trap';
 
 /** One pipe's line in a trap's account of its back pressure. SI, pressures absolute. */
 export interface LedgerEntry {
@@ -31,7 +30,7 @@ export interface LedgerEntry {
  * @param file the file that was solved
  * @returns no lines for a trap that the result does not have
  */
-export function ledger(file: NetworkFile, result: SolveResult, trapId: string): LedgerEntry[] {
+export function ledger(file: NetworkFile, result: WalkedResult, trapId: string): LedgerEntry[] {
   const walk = walkOfTrap(file, result, trapId);
   if (walk === undefined) return [];
   let handCheckRunningPa = walk.trap.receiverPressurePa;

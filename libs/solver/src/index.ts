@@ -21,3 +21,4 @@ export type {
   Verdict,
 } from './solve-result';
 export { trapCapacityKgS } from './trap-capacity';
+export type { WalkedResult } from './walk-of-trap';

@@ -2,8 +2,7 @@ import type { NetworkFile } from '@riseback/network';
 import { ambientLiquidEnthalpyJKg, type PipeFlow } from './flow-and-energy';
 import { piecesAgainstFlow } from './pipe-geometry';
 import { MARCH_TOLERANCE_PA, PipeMarcher } from './pipe-march';
-import type { SolveResult } from './solve-result';
-import { walkOfTrap, type WalkStep } from './walk-of-trap';
+import { walkOfTrap, type WalkedResult, type WalkStep } from './walk-of-trap';
 
 /** A place on the way from a trap to the end of its walk: the trap, each end of a route's piece, each end of a pipe. */
 export interface ProfilePoint {
@@ -21,7 +20,7 @@ export interface ProfilePoint {
  * @param file the file that was solved
  * @returns no points for a trap that the result does not have
  */
-export function liftProfile(file: NetworkFile, result: SolveResult, trapId: string): ProfilePoint[] {
+export function liftProfile(file: NetworkFile, result: WalkedResult, trapId: string): ProfilePoint[] {
   const walk = walkOfTrap(file, result, trapId);
   const [first] = walk?.steps ?? [];
   if (walk === undefined || first === undefined) return [];

@@ -39,7 +39,7 @@ export function insideDiameterM(pipe: PipeRun): number | undefined {
   return pipe.size === undefined ? pipe.insideDiameterM : pipeBore(pipe.size)?.insideDiameterM;
 }
 
-/** By pipe in the file's order; undefined where the size is unknown. */
+/** By pipe in the file's order; undefined where the pipe cannot be. */
 export function pipeGeometries(file: NetworkFile): (PipeGeometry | undefined)[] {
   const elevationM = new Map(file.nodes.map((node) => [node.id, node.elevationM]));
   return file.pipes.map((pipe) => {
@@ -48,9 +48,10 @@ export function pipeGeometries(file: NetworkFile): (PipeGeometry | undefined)[] 
   });
 }
 
+/** @returns undefined for a size that no standard makes, and for a roughness that reaches the middle of the bore */
 export function pipeGeometry(pipe: PipeRun, riseM: number): PipeGeometry | undefined {
   const bore = insideDiameterM(pipe);
-  if (bore === undefined) return undefined;
+  if (bore === undefined || pipe.roughnessM >= bore / 2) return undefined;
   let lossCoefficient = pipe.lossCoefficient;
   for (const { kind, count } of pipe.fittings)
     lossCoefficient += count * fittingLossCoefficient(FIGURES_OF[kind], bore);

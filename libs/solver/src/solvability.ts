@@ -1,5 +1,5 @@
 import { fileFindings, fromFile, solvablePart, type NetworkFile } from '@riseback/network';
-import type { PipeGeometry } from './pipe-geometry';
+import { insideDiameterM, type PipeGeometry } from './pipe-geometry';
 import { missing, type ProblemError } from './refusal';
 import type { ReturnTree, TreeBreak } from './return-tree';
 
@@ -11,7 +11,7 @@ export function mistakesIn(file: NetworkFile, geometries: readonly (PipeGeometry
   const found = fileFindings(file)
     .filter(({ code, severity }) => severity === 'error' && code !== 'loop')
     .map(({ pointer, what, remedy }) => ({ pointer, detail: `${what}. ${remedy}` }));
-  return [...found, ...unknownSizes(file, geometries)];
+  return [...found, ...impossiblePipes(file, geometries)];
 }
 
 /** By pipe: whether a live solve may count on it. What drains through other pipes alone is left out. */
@@ -31,10 +31,16 @@ const BREAK: Readonly<Record<TreeBreak['why'], string>> = {
   vesselCycle: 'a flash vessel whose liquid comes back to it (through this pipe)',
 };
 
-function unknownSizes(file: NetworkFile, geometries: readonly (PipeGeometry | undefined)[]): ProblemError[] {
-  return file.pipes.flatMap(({ size }, i) => {
-    if (geometries[i] !== undefined || size === undefined) return [];
-    const detail = `No standard in the pipe catalogue makes size ${size.nps} in schedule ${size.schedule}. Choose another, or give insideDiameterM.`;
-    return [{ pointer: `/pipes/${i}/size`, detail }];
+/** What keeps a pipe from being computed although it is drawn right. */
+function impossiblePipes(file: NetworkFile, geometries: readonly (PipeGeometry | undefined)[]): ProblemError[] {
+  return file.pipes.flatMap((pipe, i) => {
+    if (geometries[i] !== undefined) return [];
+    const { size } = pipe;
+    if (size !== undefined && insideDiameterM(pipe) === undefined) {
+      const detail = `No standard in the pipe catalogue makes size ${size.nps} in schedule ${size.schedule}. Choose another, or give insideDiameterM.`;
+      return [{ pointer: `/pipes/${i}/size`, detail }];
+    }
+    const detail = `The roughness, ${pipe.roughnessM} m, fills the bore. New steel has 0.0000457 m.`;
+    return [{ pointer: `/pipes/${i}/roughnessM`, detail }];
   });
 }

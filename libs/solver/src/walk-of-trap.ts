@@ -1,6 +1,13 @@
 import type { NetworkFile, NetworkNode, PipeRun } from '@riseback/network';
 import { insideDiameterM, pipeGeometry, type PipeGeometry } from './pipe-geometry';
-import type { NodeResult, PipeResult, SolveResult, TrapResult } from './solve-result';
+import type { NodeResult, PipeResult, TrapResult } from './solve-result';
+
+/** What a walk needs of a result, be it fresh from the solver or read from the server. */
+export interface WalkedResult {
+  readonly nodes: readonly NodeResult[];
+  readonly pipes: readonly PipeResult[];
+  readonly traps: readonly Pick<TrapResult, 'id' | 'backPressurePa' | 'receiverPressurePa' | 'walk'>[];
+}
 
 /** One pipe on a trap's walk. */
 export interface WalkStep {
@@ -19,9 +26,9 @@ export interface WalkStep {
  */
 export function walkOfTrap(
   file: NetworkFile,
-  result: SolveResult,
+  result: WalkedResult,
   trapId: string,
-): { readonly trap: TrapResult; readonly steps: readonly WalkStep[] } | undefined {
+): { readonly trap: WalkedResult['traps'][number]; readonly steps: readonly WalkStep[] } | undefined {
   const trap = result.traps.find(({ id }) => id === trapId);
   if (trap === undefined) return undefined;
   const nodes = byId(file.nodes);
