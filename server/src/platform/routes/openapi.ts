@@ -11,13 +11,16 @@ const PROBLEM_REF = {
 
 /** GET /api/openapi.json, made from the very table that is registered, so that it cannot lag behind. */
 export function openApiRoute(table: () => readonly Route[]): Route {
+  // Made at the first request: the table holds this route too, and does not change.
+  let description: Json | undefined;
   return publicRoute({
     method: 'get',
     path: '/api/openapi.json',
     summary: 'This description (OpenAPI 3.1).',
     answers: { 200: 'An OpenAPI document.' },
     handler: ({ res }) => {
-      res.json(describeRoutes(table()));
+      description ??= describeRoutes(table());
+      res.json(description);
     },
   });
 }
