@@ -30,6 +30,8 @@ export class SessionStore {
 
   /** The person behind the session cookie, asked of the server once; null when there is none. */
   restore(): Promise<Person | null> {
+    // The cookie that comes with a session and that pages may read: without it there is nobody to ask about.
+    if (!this.document.cookie.includes('XSRF-TOKEN=')) return Promise.resolve(null);
     this.asked ??= firstValueFrom(this.api.current()).then(
       ({ person }) => {
         this.signedIn.set(person);
