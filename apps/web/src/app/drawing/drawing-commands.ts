@@ -132,16 +132,18 @@ export class DrawingCommands {
 
   undo(): void {
     const label = this.store.undoLabel();
-    this.afterStep(this.store.undo(), label === null ? 'Nothing to undo' : `Undone: ${label}`);
+    const otherwise = this.fallback();
+    this.afterStep(this.store.undo(), otherwise, label === null ? 'Nothing to undo' : `Undone: ${label}`);
   }
 
   redo(): void {
     const label = this.store.redoLabel();
-    this.afterStep(this.store.redo(), label === null ? 'Nothing to redo' : `Done again: ${label}`);
+    const otherwise = this.fallback();
+    this.afterStep(this.store.redo(), otherwise, label === null ? 'Nothing to redo' : `Done again: ${label}`);
   }
 
   /** After undo and redo the keyboard is on what changed. */
-  private afterStep(touched: readonly string[] | null, words: string): void {
+  private afterStep(touched: readonly string[] | null, otherwise: string | null, words: string): void {
     this.state.draft.set(null);
     this.state.say(
       touched === null && this.store.lastRefusal().length > 0
@@ -151,9 +153,19 @@ export class DrawingCommands {
     const there = (touched ?? []).filter((id) => this.scene.has(id));
     const [first] = there;
     this.state.selection.update((selected) => new Set([...selected].filter((id) => this.scene.has(id))));
-    if (first === undefined) return;
-    this.state.select(...there);
-    this.state.focusOn(first);
+    if (first !== undefined) {
+      this.state.select(...there);
+      this.state.focusOn(first);
+      return;
+    }
+    const focused = this.state.focusId();
+    this.state.focusOn(focused !== null && this.scene.has(focused) ? focused : otherwise);
+  }
+
+  /** Where the keyboard goes if the element that has it vanishes. */
+  private fallback(): string | null {
+    const focused = this.state.focusId();
+    return focused === null ? null : this.neighbourBelow(new Set([focused]));
   }
 
   private neighbourBelow(ids: ReadonlySet<string>): string | null {

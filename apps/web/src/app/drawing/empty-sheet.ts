@@ -2,12 +2,11 @@ import { ChangeDetectionStrategy, Component, inject } from '@angular/core';
 import { MatButton } from '@angular/material/button';
 import { NetworkStore } from '../networks/network-store';
 import { NodePlacing } from './sheet/node-placing';
-import { ElementIcon } from './symbols/element-icon';
 
 /** What an empty drawing offers to begin with: the receiver first, since every pressure is counted up from it. */
 @Component({
   selector: 'app-empty-sheet',
-  imports: [ElementIcon, MatButton],
+  imports: [MatButton],
   changeDetection: ChangeDetectionStrategy.OnPush,
   template: `
     <div>
@@ -15,12 +14,8 @@ import { ElementIcon } from './symbols/element-icon';
       @if (store.mayDraw()) {
         <p>Begin where the condensate ends: back pressure is counted up from there.</p>
         <p class="ways">
-          <button matButton="filled" type="button" (click)="placing.besideFocus('receiver')">
-            <app-element-icon kind="receiver" /> Place a receiver
-          </button>
-          <button matButton="outlined" type="button" (click)="placing.besideFocus('trap')">
-            <app-element-icon kind="trap" /> Place a trap
-          </button>
+          <button matButton="filled" type="button" (click)="placing.besideFocus('receiver')">Place a receiver</button>
+          <button matButton="outlined" type="button" (click)="placing.besideFocus('trap')">Place a trap</button>
         </p>
       } @else {
         <p>A designer of this site can draw here.</p>

@@ -1,16 +1,17 @@
 import { NgTemplateOutlet } from '@angular/common';
+import type { TemplateRef } from '@angular/core';
 import {
+  afterNextRender,
   afterRenderEffect,
   ChangeDetectionStrategy,
   Component,
   computed,
   contentChild,
-  effect,
   ElementRef,
   inject,
+  Injector,
   input,
   signal,
-  TemplateRef,
   untracked,
   viewChild,
 } from '@angular/core';
@@ -50,6 +51,7 @@ const RENDER_ALL = 400;
   styleUrl: './graph-canvas.scss',
 })
 export class GraphCanvas {
+  private readonly injector = inject(Injector);
   private readonly host = inject<ElementRef<HTMLElement>>(ElementRef);
 
   readonly nodes = input.required<readonly CanvasNode[]>();
@@ -120,7 +122,8 @@ export class GraphCanvas {
   );
 
   constructor() {
-    effect(() => {
+    // after rendering: only then has the library the new lists
+    afterRenderEffect(() => {
       this.graphNodes();
       this.graphLinks();
       untracked(() => {
@@ -170,13 +173,22 @@ export class GraphCanvas {
     this.host.nativeElement.querySelector('svg')?.focus();
   }
 
-  /** Puts the keyboard on an element that is rendered; false when it is not. */
-  focusElement(elementId: string): boolean {
+  /** Puts the keyboard on an element; a new one is waited for until the library has rendered it. */
+  focusElement(elementId: string, triesLeft = 3): void {
     const mark = [...this.host.nativeElement.querySelectorAll<SVGElement>('[data-element]')].find(
       (candidate) => candidate.dataset['element'] === elementId,
     );
-    mark?.focus({ preventScroll: true });
-    return mark !== undefined;
+    if (mark !== undefined) mark.focus({ preventScroll: true });
+    else if (triesLeft === 0) this.focusDrawing();
+    else {
+      afterNextRender(
+        () => {
+          this.focusElement(elementId, triesLeft - 1);
+        },
+        { injector: this.injector },
+      );
+      this.graph().basicUpdate();
+    }
   }
 
   protected contextOf(data: unknown): MarkContext {

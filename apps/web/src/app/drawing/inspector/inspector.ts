@@ -121,7 +121,7 @@ export class Inspector {
     const next = tabs[(tabs.indexOf(this.tab()) + by + tabs.length) % tabs.length];
     if (next === undefined) return;
     this.wantedTab.set(next);
-    const list = event.currentTarget instanceof Element ? event.currentTarget : null;
+    const list = event.currentTarget instanceof Element ? event.currentTarget.parentElement : null;
     list?.querySelector<HTMLElement>(`[data-tab="${next}"]`)?.focus();
   }
 

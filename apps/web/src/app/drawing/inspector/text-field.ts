@@ -51,6 +51,11 @@ export class TextField {
     return true;
   }
 
+  /** What is filled in is typed over, as in a quantity field. */
+  protected selectAll(): void {
+    this.box().nativeElement.select();
+  }
+
   protected restore(event: Event): void {
     const box = this.box().nativeElement;
     if (box.value === (this.value() ?? '')) return;

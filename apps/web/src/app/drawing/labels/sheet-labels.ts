@@ -33,11 +33,13 @@ const FROM_ZOOM = { values: 0.45, lifts: 0.45, tags: 0.7, pipes: 1.4, flows: 2 }
 export const LINE_HEIGHT = 14;
 const MARK_WIDTH = 15;
 const GAP = 4;
+/** Selected elements stand in brackets, which labels keep clear of. */
+const ROOM_FOR_BRACKETS = 1.3;
 /** Half of a symbol with its wash, px at symbol scale 1. */
 const SYMBOL_REACH: Readonly<Record<NodeView['node']['kind'], Readonly<{ x: number; y: number }>>> = {
   trap: { x: 15, y: 15 },
   pumpedInlet: { x: 15, y: 15 },
-  junction: { x: 6, y: 6 },
+  junction: { x: 9, y: 9 },
   receiver: { x: 36, y: 26 },
   flashVessel: { x: 17, y: 36 },
 };
@@ -64,7 +66,7 @@ export function sheetLabels(
     if (!chosen && zoom < nodeZoom(view)) continue;
     const lines = nodeLines(view, zoom, chosen, units);
     if (lines.length === 0) continue;
-    const candidates = sides(view).map((side) => beside(view.at, side, reach(view, scale), lines, zoom));
+    const candidates = nodePlaces(view, lines, chosen ? scale * ROOM_FOR_BRACKETS : scale, zoom);
     wanted.push({ key: `n:${view.id}`, elementId: view.id, lines, candidates, right: nodeRight(view, chosen) });
   }
   for (const view of pipes) {
@@ -136,6 +138,15 @@ function nodeLines(view: NodeView, zoom: number, chosen: boolean, units: Display
   return lines;
 }
 
+/** A failing trap in a row of others finds room a line higher than they do; its tag says whose it is. */
+function nodePlaces(view: NodeView, lines: readonly LabelLine[], scale: number, zoom: number): LabelPlace[] {
+  const at = reach(view, scale);
+  const near = sides(view).map((side) => beside(view.at, side, at, lines, zoom));
+  if (view.concern !== 'fail') return near;
+  const farther = { x: at.x, y: at.y + lines.length * LINE_HEIGHT };
+  return [...near, beside(view.at, opposite(view.outlet), farther, lines, zoom)];
+}
+
 function sides({ outlet }: NodeView): Side[] {
   const outer = opposite(outlet);
   return [...new Set<Side>([outer, 'right', 'left', 'up', 'down', outlet])];
@@ -178,7 +189,7 @@ function liftLabel(
     { x: 13 * zoom + 6, y: 8 },
     { x: 8, y: 8 },
   ];
-  const places = [0.5, 0.35, 0.65].map((share) => ({ x: a.x, y: a.y + (b.y - a.y) * share }));
+  const places = [0.5, 0.35, 0.65, 0.2, 0.8].map((share) => ({ x: a.x, y: a.y + (b.y - a.y) * share }));
   return {
     key: `l:${id}`,
     elementId: id,

@@ -1,10 +1,10 @@
+import type { ElementRef } from '@angular/core';
 import {
   afterRenderEffect,
   ChangeDetectionStrategy,
   Component,
   computed,
   effect,
-  ElementRef,
   inject,
   linkedSignal,
   signal,
@@ -17,8 +17,8 @@ import { DrawingScene } from '../drawing-scene';
 import { DrawingState } from '../drawing-state';
 import { GraphCanvas } from '../graph-canvas/graph-canvas';
 import { LabelLayer } from '../labels/label-layer';
-import { placeLabels } from '../labels/label-placement';
-import { labelObstacles, sheetLabels } from '../labels/sheet-labels';
+import { type Box, placeLabels } from '../labels/label-placement';
+import { labelObstacles, type SheetLabel, sheetLabels } from '../labels/sheet-labels';
 import type { NodeView } from '../model/element-views';
 import { linePath } from '../model/line-path';
 import { placeOf } from '../model/navigation';
@@ -32,11 +32,15 @@ import { SheetKeys } from './sheet-keys';
 import { SheetPointer } from './sheet-pointer';
 import { ZoneFrame } from './zone-frame';
 
-/** Below this zoom values have no room, so symbols carry the status shapes themselves. */
-const MARKS_BELOW_ZOOM = 0.45;
 /** How near the edge the focused element may come before the view follows, px. */
 const FOLLOW_MARGIN = 48;
 const LEGEND = { width: 310, height: 92 } as const;
+
+interface LabelSubject {
+  readonly labels: readonly SheetLabel[];
+  readonly obstacles: readonly Box[];
+  readonly zoom: number;
+}
 
 /** The sheet of paper: frame, network, labels and legend, with what pointer and keys do on it. */
 @Component({
@@ -58,7 +62,6 @@ export class DrawingSheet {
   private readonly canvas = viewChild.required(GraphCanvas);
   private readonly surface = viewChild.required<ElementRef<HTMLElement>>('surface');
 
-  protected readonly marksBelow = MARKS_BELOW_ZOOM;
   protected readonly viewport = computed(() => this.canvas().viewport());
   protected readonly symbolScale = computed(() => symbolScale(this.viewport().zoom));
   protected readonly canvasNodes = computed(() => [...this.scene.settled().nodes.values()]);
@@ -114,12 +117,11 @@ export class DrawingSheet {
   private readonly obstacles = computed(() =>
     labelObstacles(this.scene.nodeViews().values(), this.scene.pipeViews().values(), this.viewport().zoom),
   );
-  protected readonly placed = linkedSignal<
-    { labels: ReturnType<typeof sheetLabels>; obstacles: ReturnType<typeof labelObstacles> },
-    ReadonlyMap<string, number>
-  >({
-    source: () => ({ labels: this.labels(), obstacles: this.obstacles() }),
-    computation: ({ labels, obstacles }, before) => placeLabels(labels, obstacles, before?.value),
+  protected readonly placed = linkedSignal<LabelSubject, ReadonlyMap<string, number>>({
+    source: () => ({ labels: this.labels(), obstacles: this.obstacles(), zoom: this.viewport().zoom }),
+    // at another zoom there is other room, so only there do labels look for their best place again
+    computation: ({ labels, obstacles, zoom }, before) =>
+      placeLabels(labels, obstacles, before?.source.zoom === zoom ? before.value : undefined),
   });
 
   /** The pipe being drawn, the new node being asked for. */

@@ -26,10 +26,12 @@ export class NodePlacing {
     const focused = this.scene.tabStop();
     const beside = focused === null ? undefined : placeOf(network, focused);
     const sheet = this.scene.sheet();
+    const onSource = focused !== null && isSource(network.nodes.get(focused)?.node.kind);
+    const below = isSource(kind) && !onSource;
     const near =
       beside === undefined
         ? { x: sheet.left + 4 * FIELD.width, y: sheet.top + 3 * FIELD.height }
-        : { x: beside.x + BESIDE, y: beside.y };
+        : { x: beside.x + (below ? 0 : BESIDE), y: beside.y + (below ? BESIDE : 0) };
     const occupied = {
       nodes: [...network.nodes.values()].map(({ at }) => at),
       lines: [...network.pipes.values()].map(({ points }) => points),
@@ -42,4 +44,9 @@ export class NodePlacing {
     this.state.draft.set({ kind: 'node', what: kind, at });
     this.state.say(`New ${KIND_WORDS[kind]}: give its tag and elevation`);
   }
+}
+
+/** Sources hang below a header, side by side, so that their pipes do not run through each other. */
+function isSource(kind: NodeKind | undefined): boolean {
+  return kind === 'trap' || kind === 'pumpedInlet';
 }

@@ -2,6 +2,7 @@ import { ChangeDetectionStrategy, Component, computed, input } from '@angular/co
 import type { Position } from '@riseback/network';
 import { shownBends } from '../model/drawn-network';
 import type { PipeView } from '../model/element-views';
+import { cutLine } from '../model/geometry';
 import { linePath } from '../model/line-path';
 
 /** Room between a pipe and what frames it, drawing units. */
@@ -35,7 +36,8 @@ export class PipeMark {
     this.view().wash.map(({ points, level }) => ({ path: linePath(points), level })),
   );
   protected readonly bends = computed(() => (this.bendable() ? shownBends(this.view().drawn) : []));
-  protected readonly frame = computed(() => frameOf(this.view().drawn.points));
+  /** Short of its ends, which lie under the symbols that it joins. */
+  protected readonly frame = computed(() => frameOf(cutLine(this.view().drawn.points, 0.15, 0.85)));
   protected readonly brackets = computed(() => {
     const { x, y, width, height } = this.frame();
     const [r, b] = [x + width, y + height];
