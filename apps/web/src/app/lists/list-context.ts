@@ -1,8 +1,8 @@
-import type { CaseOutcome, NodeResult, PipeResult, SolveResult, TrapResult } from '@riseback/contracts';
+import type { CaseOutcome, NodeResult, PipeResult, Problem, SolveResult, TrapResult } from '@riseback/contracts';
 import type { NetworkDocument, TopologyFinding } from '@riseback/network';
 import type { DisplayUnits } from '@riseback/units';
-import type { ListContext } from './columns/column';
-import { rowFindings } from './row-findings';
+import type { ListContext, Waiting } from './columns/column';
+import { type RowFinding, rowFindings } from './row-findings';
 
 interface Solved {
   readonly document: NetworkDocument;
@@ -30,29 +30,41 @@ export function listContext(solved: Solved): ListContext {
     staffTopPa: staffTopPa(result, units),
     waiting: (id) => {
       if (result === null) return withoutResult(solved.outcome);
-      if (!result.converged) return 'No solution in this case';
-      if (leftOut.has(id)) return leftOutWords(findings.get(id)?.find(({ status }) => status === 'fail')?.word);
-      return traps.has(id) || pipes.has(id) || nodes.has(id) ? '' : 'Waiting for the solve';
+      if (!result.converged) return refusedBy('No solution', result.problem);
+      if (leftOut.has(id)) return leftOutFor(findings.get(id)?.find(({ status }) => status === 'fail'));
+      return traps.has(id) || pipes.has(id) || nodes.has(id) ? null : WAITING_FOR_SOLVE;
     },
   };
 }
 
-function withoutResult(outcome: CaseOutcome | null): string {
-  return outcome?.status === 'refused'
-    ? `Not solved: ${outcome.problem.detail ?? outcome.problem.title}`
-    : 'Waiting for the solve';
+const WAITING_FOR_SOLVE: Waiting = { words: 'Waiting for the solve', sentence: '' };
+
+function withoutResult(outcome: CaseOutcome | null): Waiting {
+  return outcome?.status === 'refused' ? refusedBy('Case not solved', outcome.problem) : WAITING_FOR_SOLVE;
 }
 
-function leftOutWords(finding: string | undefined): string {
-  return finding === undefined ? 'Waiting for a way to a receiver' : `Waiting: ${finding.toLowerCase()}`;
+function refusedBy(words: string, problem: Problem | undefined): Waiting {
+  const detail = problem?.detail ?? problem?.title;
+  return { words, sentence: detail === undefined ? '' : `${words}: ${detail}.` };
 }
 
-/** One scale for every staff: up to the highest inlet or back pressure, rounded up to a whole ten in the person's unit. */
+function leftOutFor(finding: RowFinding | undefined): Waiting {
+  if (finding === undefined || finding.code === 'cutOff')
+    return { words: 'Waiting for a way to a receiver', sentence: '' };
+  return { words: `Waiting: ${finding.word.toLowerCase()}`, sentence: finding.sentences.join(' ') };
+}
+
+/** How many of a hundred inlets lie within the scale; the few highest would press all others into a corner. */
+const INLETS_WITHIN = 0.75;
+
+/** One scale for every staff: all back pressures and most inlets, rounded up to a whole ten psi or half a bar. */
 function staffTopPa(result: SolveResult | null, units: DisplayUnits): number {
-  const highest = (result?.traps ?? []).reduce(
-    (top, { backPressurePa, differentialPa }) => Math.max(top, backPressurePa, backPressurePa + differentialPa),
-    units.atmosphericPressurePa,
-  );
+  const traps = result?.traps ?? [];
+  const inletsPa = traps
+    .map(({ backPressurePa, differentialPa }) => backPressurePa + differentialPa)
+    .sort((a, b) => a - b);
+  const usualInletPa = inletsPa[Math.floor(INLETS_WITHIN * inletsPa.length)] ?? units.atmosphericPressurePa;
+  const highest = traps.reduce((top, { backPressurePa }) => Math.max(top, backPressurePa), usualInletPa);
   const step = units.system === 'us' ? 10 * 6_894.757 : 50_000;
   const steps = Math.max(1, Math.ceil((highest - units.atmosphericPressurePa) / step - 1e-6));
   return units.atmosphericPressurePa + steps * step;

@@ -26,6 +26,8 @@ export type NewKind = NetworkNode['kind'] | 'pipe' | 'trapModel';
 export interface ListFacts {
   readonly id: ListId;
   readonly word: string;
+  /** Over the first columns. */
+  readonly head: string;
   readonly one: string;
   readonly many: string;
   readonly collection: ListedCollection;
@@ -44,6 +46,7 @@ export const ELEMENT_LISTS: readonly ElementList[] = [
     {
       id: 'traps',
       word: 'Traps',
+      head: 'Trap',
       one: 'trap',
       many: 'traps',
       collection: 'nodes',
@@ -56,6 +59,7 @@ export const ELEMENT_LISTS: readonly ElementList[] = [
     {
       id: 'pipes',
       word: 'Pipes',
+      head: 'Pipe',
       one: 'pipe',
       many: 'pipes',
       collection: 'pipes',
@@ -68,6 +72,7 @@ export const ELEMENT_LISTS: readonly ElementList[] = [
     {
       id: 'junctions',
       word: 'Junctions',
+      head: 'Junction',
       one: 'junction',
       many: 'junctions',
       collection: 'nodes',
@@ -80,6 +85,7 @@ export const ELEMENT_LISTS: readonly ElementList[] = [
     {
       id: 'vessels',
       word: 'Vessels & receivers',
+      head: 'Vessel or receiver',
       one: 'vessel',
       many: 'vessels',
       collection: 'nodes',
@@ -95,6 +101,7 @@ export const ELEMENT_LISTS: readonly ElementList[] = [
     {
       id: 'pumped-inlets',
       word: 'Pumped inlets',
+      head: 'Pumped inlet',
       one: 'pumped inlet',
       many: 'pumped inlets',
       collection: 'nodes',
@@ -107,6 +114,7 @@ export const ELEMENT_LISTS: readonly ElementList[] = [
     {
       id: 'trap-models',
       word: 'Trap models',
+      head: 'Trap model',
       one: 'trap model',
       many: 'trap models',
       collection: 'trapModels',

@@ -19,6 +19,7 @@ import type {
   ListContext,
   ListedElement,
   Proposal,
+  Waiting,
 } from './columns/column';
 
 /** A column as the grid sees it. */
@@ -40,6 +41,8 @@ export interface CellView {
   readonly text: string;
   /** Not an input of the row itself: worked out, or its id where a tag is missing. */
   readonly derived: boolean;
+  /** Stands in for all results of the row and runs on over their cells. */
+  readonly waiting: boolean;
   readonly status?: Status;
   readonly trap?: TrapResult;
   /** Said in full when the cell is the active one. */
@@ -83,7 +86,7 @@ export interface ListTable {
   readonly sortValue: (id: string, key: string) => number | string | undefined;
 }
 
-const NOTHING: CellView = { text: '', derived: false, sentences: [] };
+const NOTHING: CellView = { text: '', derived: false, waiting: false, sentences: [] };
 
 export function tabulate<E extends ListedElement>(
   columns: readonly Column<E>[],
@@ -115,11 +118,11 @@ export function tabulate<E extends ListedElement>(
 }
 
 function tableColumn<E>(column: Column<E>, units: DisplayUnits): TableColumn {
-  const { key, title, group, widthPx, quantity, minor, editor, face } = column;
+  const { key, title, group, widthPx, quantity, unit, minor, editor, face } = column;
   return {
     key,
     title,
-    unit: quantity === undefined ? '' : displayUnit(quantity, units.system),
+    unit: quantity === undefined ? (unit ?? '') : displayUnit(quantity, units.system),
     group,
     widthPx,
     numeric: quantity !== undefined && face === undefined,
@@ -140,10 +143,20 @@ function cellView<E extends ListedElement>(
   if (column.face === 'verdict') return verdictView(column, element, context);
   if (column.group === 'result') {
     const waiting = context.waiting(element.id);
-    if (waiting !== '') return isFirstResult ? { text: waiting, derived: true, sentences: [] } : NOTHING;
+    if (waiting !== null) return isFirstResult ? waitingView(waiting) : NOTHING;
   }
   const trap = column.face === 'staff' ? context.traps.get(element.id) : undefined;
-  return { text: printed(column, element, context), derived, sentences: [], ...(trap === undefined ? {} : { trap }) };
+  return {
+    text: printed(column, element, context),
+    derived,
+    waiting: false,
+    sentences: [],
+    ...(trap === undefined ? {} : { trap }),
+  };
+}
+
+function waitingView({ words, sentence }: Waiting): CellView {
+  return { text: words, derived: false, waiting: true, sentences: sentence === '' ? [] : [sentence] };
 }
 
 function verdictView<E extends ListedElement>(column: Column<E>, element: E, context: ListContext): CellView {
@@ -153,6 +166,7 @@ function verdictView<E extends ListedElement>(column: Column<E>, element: E, con
   return {
     text: printed(column, element, context),
     derived: false,
+    waiting: false,
     sentences: findings.map(({ word, sentences }) => `${word}. ${sentences.join(' ')}`),
     ...(worst !== undefined ? { status: worst } : passes ? { status: 'pass' as const } : {}),
   };

@@ -1,10 +1,12 @@
 import {
+  afterNextRender,
   ChangeDetectionStrategy,
   Component,
   computed,
   DestroyRef,
   effect,
   inject,
+  Injector,
   input,
   linkedSignal,
   signal,
@@ -17,6 +19,7 @@ import { MatTabLink, MatTabNav, MatTabNavPanel } from '@angular/material/tabs';
 import { ActivatedRoute, Router, RouterLink } from '@angular/router';
 import { firstValueFrom } from 'rxjs';
 import { NetworkStore } from '../networks/network-store';
+import { backPressureLimit } from '../results/back-pressure-limit';
 import { BulkBar } from './bulk-bar/bulk-bar';
 import type { DialogName } from './columns/column';
 import { deletionOf } from './deletion';
@@ -45,6 +48,7 @@ export class ListsPage {
   private readonly dialog = inject(MatDialog);
   private readonly router = inject(Router);
   private readonly route = inject(ActivatedRoute);
+  private readonly injector = inject(Injector);
 
   /** From the query: which list, and which element's row; the element's own list comes first. */
   readonly list = input<string>();
@@ -95,6 +99,15 @@ export class ListsPage {
     return context === null ? null : this.current().table(context);
   });
   protected readonly staffTopPa = computed(() => this.context()?.staffTopPa ?? 0);
+  protected readonly limitPa = computed(() => {
+    const context = this.context();
+    return (id: string): number | undefined => {
+      const [trap, result] = [context?.document.nodes.get(id)?.value, context?.traps.get(id)];
+      if (context === null || trap?.kind !== 'trap' || result === undefined) return undefined;
+      const model = trap.trapModel === undefined ? undefined : context.document.trapModels.get(trap.trapModel)?.value;
+      return backPressureLimit(result, trap, model, context.units)?.pressurePa;
+    };
+  });
   protected readonly hasMinor = computed(() => this.table()?.columns.some(({ minor }) => minor) ?? false);
   protected readonly emptyWords = computed(() =>
     this.filter().trim() === ''
@@ -106,7 +119,9 @@ export class ListsPage {
     effect(() => {
       const element = this.element();
       const grid = this.grid();
-      if (element !== undefined && grid !== undefined) untracked(() => grid.showRow(element));
+      untracked(() => {
+        if (element !== undefined && grid !== undefined && grid.shownRow() !== element) grid.showRow(element);
+      });
     });
     inject(DestroyRef).onDestroy(() => {
       clearTimeout(this.addressTimer);
@@ -130,12 +145,13 @@ export class ListsPage {
     const document = this.store.document();
     if (document === null) return;
     const form = newElementForm(kind, document);
-    const values = await this.dialogs.askFields({ ...form, units: this.store.units(), submitWord: 'Add' });
+    const words = { submitWord: 'Add', leaveWord: 'Cancel' };
+    const values = await this.dialogs.askFields({ ...form, ...words, units: this.store.units() });
     if (values === undefined) return;
     const { id, label, op } = form.make(values);
     this.filter.set('');
     this.edit({ label, ops: [op] });
-    this.grid()?.showRow(id);
+    this.showRowSoon(id);
   }
 
   protected async deleteSelected(): Promise<void> {
@@ -203,8 +219,14 @@ export class ListsPage {
 
   private afterStep(touched: readonly string[] | null, words: string): void {
     this.told.set(touched === null ? this.store.lastRefusal().join(' ') || 'Nothing to undo' : words);
-    const shown = touched?.find((id) => this.table()?.ids.includes(id));
-    if (shown !== undefined) this.grid()?.showRow(shown);
+    const ids = new Set(this.table()?.ids);
+    const shown = touched?.find((id) => ids.has(id));
+    if (shown !== undefined) this.showRowSoon(shown);
+  }
+
+  /** A row that the edit made is there only after the next drawing. */
+  private showRowSoon(id: string): void {
+    afterNextRender(() => this.grid()?.showRow(id), { injector: this.injector });
   }
 
   private listOf(element: string | undefined): ElementList | undefined {

@@ -5,6 +5,7 @@ import { checkName, findingWords } from '../results/finding-words';
 
 /** One thing that stands against an element: in a word for the table, in sentences for who asks. */
 export interface RowFinding {
+  readonly code: string;
   readonly status: 'fail' | 'watch';
   readonly word: string;
   readonly sentences: readonly string[];
@@ -23,6 +24,7 @@ export function rowFindings(
   for (const { element, severity, code, what, why, remedy } of topology) {
     if (element === null || element.in === 'gauges') continue;
     add(element.id, {
+      code,
       status: severity === 'error' ? 'fail' : 'watch',
       word: checkName(code),
       sentences: [`${what}.`, why, remedy],
@@ -37,6 +39,7 @@ export function rowFindings(
     if (check.verdict === 'pass') return;
     const remedy = check.remedy === undefined ? [] : [findingWords(check.remedy, units)];
     add(id, {
+      code: check.code,
       status: check.verdict,
       word: checkName(check.code),
       sentences: [findingWords(check.text, units), ...remedy],

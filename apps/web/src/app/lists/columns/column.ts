@@ -5,6 +5,12 @@ import type { RowFinding } from '../row-findings';
 
 export type ListedElement = NetworkNode | PipeRun | TrapModel;
 
+/** In a few words for the table, and in a sentence for who asks. */
+export interface Waiting {
+  readonly words: string;
+  readonly sentence: string;
+}
+
 /** All that a cell's text may depend on besides its element. */
 export interface ListContext {
   readonly document: NetworkDocument;
@@ -13,8 +19,8 @@ export interface ListContext {
   readonly pipes: ReadonlyMap<string, PipeResult>;
   readonly nodes: ReadonlyMap<string, NodeResult>;
   readonly findings: ReadonlyMap<string, readonly RowFinding[]>;
-  /** Why the element has no result in the chosen case; '' when it has one. */
-  readonly waiting: (id: string) => string;
+  /** Why the element has no result in the chosen case; null when it has one. */
+  readonly waiting: (id: string) => Waiting | null;
   /** Right end of every staff in the list, Pa absolute. */
   readonly staffTopPa: number;
 }
@@ -68,6 +74,8 @@ export interface Column<E> {
   readonly widthPx: number;
   /** The unit stands in the head, the numbers to the right. */
   readonly quantity?: QuantityKind;
+  /** The unit in the head where the cells are names that carry one, such as nominal sizes. */
+  readonly unit?: string;
   /** Shown only when all inputs are wanted. */
   readonly minor?: true;
   /** How the cell is drawn when not as text. */

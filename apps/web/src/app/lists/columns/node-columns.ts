@@ -11,7 +11,7 @@ export const JUNCTION_COLUMNS: readonly Column<Junction>[] = [
   elevationColumn(),
   noteColumn('nodes'),
   ...stateColumns<Junction>(),
-  findingColumn('Finding', () => false),
+  findingColumn({ title: 'Finding', widthPx: 200 }, () => false),
 ];
 
 export const PUMPED_INLET_COLUMNS: readonly Column<PumpedInlet>[] = [
@@ -27,7 +27,7 @@ export const PUMPED_INLET_COLUMNS: readonly Column<PumpedInlet>[] = [
   }),
   noteColumn('nodes'),
   ...stateColumns<PumpedInlet>(),
-  findingColumn('Finding', () => false),
+  findingColumn({ title: 'Finding', widthPx: 200 }, () => false),
 ];
 
 export const VESSEL_COLUMNS: readonly Column<Vessel>[] = [
@@ -73,7 +73,7 @@ export const VESSEL_COLUMNS: readonly Column<Vessel>[] = [
   },
   noteColumn('nodes'),
   ...stateColumns<Vessel>(),
-  findingColumn('Finding', () => false),
+  findingColumn({ title: 'Finding', widthPx: 200 }, () => false),
 ];
 
 /** What the solve says of a node: pressure, temperature, share of flash steam, flow through it. */

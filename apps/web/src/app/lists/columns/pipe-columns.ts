@@ -9,10 +9,12 @@ import { findingColumn, nameColumns, noteColumn } from './shared-columns';
 const FIRST_SCHEDULE = '80';
 
 export const PIPE_COLUMNS: readonly Column<PipeRun>[] = [
-  ...nameColumns<PipeRun>('pipes'),
+  ...nameColumns<PipeRun>('pipes').map((column) =>
+    column.key === 'area' ? { ...column, minor: true as const } : column,
+  ),
   endColumn('from', 'From'),
   endColumn('to', 'To'),
-  quantityColumn<PipeRun>('pipes', 'lengthM', 'length', { title: 'Length', widthPx: 84 }),
+  quantityColumn<PipeRun>('pipes', 'lengthM', 'length', { title: 'Length', widthPx: 76 }),
   nominalSizeColumn(),
   scheduleColumn(),
   boreColumn(),
@@ -20,16 +22,16 @@ export const PIPE_COLUMNS: readonly Column<PipeRun>[] = [
     key: 'fittings',
     title: 'Fittings',
     group: 'inputs',
-    widthPx: 150,
+    widthPx: 120,
     value: ({ fittings }) => fittings.map(({ kind, count }) => `${String(count)} ${FITTINGS[kind].name}`).join('; '),
     editor: { by: 'dialog', dialog: 'fittings' },
   },
-  quantityColumn<PipeRun>('pipes', 'lossCoefficient', 'factor', { title: 'Loss K', widthPx: 76, optional: true }),
+  quantityColumn<PipeRun>('pipes', 'lossCoefficient', 'factor', { title: 'Loss K', widthPx: 64, optional: true }),
   {
     key: 'rise',
     title: 'Rise',
     group: 'inputs',
-    widthPx: 76,
+    widthPx: 60,
     quantity: 'length',
     derived: () => true,
     value: (pipe, { document }) => riseM(pipe, document),
@@ -61,7 +63,7 @@ export const PIPE_COLUMNS: readonly Column<PipeRun>[] = [
   resultColumn<PipeRun>(
     'massFlowKgS',
     'massFlow',
-    { title: 'Flow', widthPx: 84 },
+    { title: 'Flow', widthPx: 76 },
     ({ id }, { pipes }) => pipes.get(id)?.massFlowKgS,
   ),
   resultColumn<PipeRun>(
@@ -94,7 +96,7 @@ export const PIPE_COLUMNS: readonly Column<PipeRun>[] = [
     { title: 'Flash', widthPx: 72 },
     ({ id }, { pipes }) => pipes.get(id)?.flashPa,
   ),
-  findingColumn<PipeRun>('Finding', () => false),
+  findingColumn<PipeRun>({ title: 'Finding', widthPx: 160 }, () => false),
 ];
 
 function endColumn(key: 'from' | 'to', title: string): Column<PipeRun> {
@@ -102,7 +104,7 @@ function endColumn(key: 'from' | 'to', title: string): Column<PipeRun> {
     key,
     title,
     group: 'inputs',
-    widthPx: 84,
+    widthPx: 78,
     value: (pipe, { document }) => nodeName(pipe[key], document),
     editor: {
       by: 'text',
@@ -125,9 +127,10 @@ function endColumn(key: 'from' | 'to', title: string): Column<PipeRun> {
 function nominalSizeColumn(): Column<PipeRun> {
   return {
     key: 'nps',
-    title: 'Size in',
+    title: 'Size',
+    unit: 'in',
     group: 'inputs',
-    widthPx: 76,
+    widthPx: 64,
     value: ({ size }) => (size === undefined ? undefined : sizeRank(size.nps)),
     show: ({ size }) => size?.nps ?? '',
     editor: {
@@ -147,7 +150,7 @@ function scheduleColumn(): Column<PipeRun> {
     key: 'schedule',
     title: 'Schedule',
     group: 'inputs',
-    widthPx: 84,
+    widthPx: 72,
     value: ({ size }) => size?.schedule,
     editor: {
       by: 'choice',
@@ -171,7 +174,7 @@ function boreColumn(): Column<PipeRun> {
     key: 'insideDiameterM',
     title: 'Bore',
     group: 'inputs',
-    widthPx: 76,
+    widthPx: 66,
     quantity: 'diameter',
     value: bore,
     derived: ({ size }) => size !== undefined,

@@ -9,7 +9,7 @@ type Drawn = NetworkNode | PipeRun;
 export function nameColumns<E extends Drawn>(collection: 'nodes' | 'pipes'): Column<E>[] {
   return [
     {
-      ...textColumn<Drawn>(collection, 'tag', { title: 'Tag', group: 'element', widthPx: 92, maxLength: 64 }),
+      ...textColumn<Drawn>(collection, 'tag', { title: 'Tag', group: 'element', widthPx: 84, maxLength: 64 }),
       show: (element) => element.tag ?? element.id,
       derived: (element) => element.tag === undefined,
     },
@@ -25,7 +25,7 @@ export function nameColumns<E extends Drawn>(collection: 'nodes' | 'pipes'): Col
     textColumn<Drawn>(collection, 'area', {
       title: 'Area',
       group: 'element',
-      widthPx: 110,
+      widthPx: 96,
       maxLength: 80,
       suggestions: ({ document }) => distinct([...nodesOf(document), ...pipesOf(document)].map(({ area }) => area)),
     }),
@@ -42,14 +42,14 @@ export function noteColumn<E extends Drawn>(collection: 'nodes' | 'pipes'): Colu
 
 /** The worst finding with its word; an element that passes its checks says so where `passes` is known. */
 export function findingColumn<E extends Drawn>(
-  title: string,
+  { title, widthPx }: { readonly title: string; readonly widthPx: number },
   passes: (element: E, context: ListContext) => boolean,
 ): Column<E> {
   return {
     key: 'finding',
     title,
     group: 'result',
-    widthPx: 190,
+    widthPx,
     face: 'verdict',
     value: (element, context) => {
       const worst = context.findings.get(element.id)?.[0];

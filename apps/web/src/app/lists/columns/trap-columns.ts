@@ -9,19 +9,19 @@ export const TRAP_COLUMNS: readonly Column<Trap>[] = [
   choiceColumn<Trap, string>('nodes', 'trapType', TRAP_TYPE_WORDS, {
     title: 'Type',
     group: 'element',
-    widthPx: 150,
+    widthPx: 130,
     none: 'Not given',
   }),
   trapModelColumn(),
-  quantityColumn<Trap>('nodes', 'inletPressurePa', 'pressure', { title: 'Inlet', widthPx: 84 }),
-  quantityColumn<Trap>('nodes', 'loadKgS', 'massFlow', { title: 'Load', widthPx: 84 }),
+  quantityColumn<Trap>('nodes', 'inletPressurePa', 'pressure', { title: 'Inlet', widthPx: 78 }),
+  quantityColumn<Trap>('nodes', 'loadKgS', 'massFlow', { title: 'Load', widthPx: 78 }),
   quantityColumn<Trap>('nodes', 'sizingFactor', 'factor', { title: 'Sizing factor', widthPx: 92, optional: true }),
   elevationColumn(),
   {
     key: 'service',
     title: 'Service',
     group: 'inputs',
-    widthPx: 96,
+    widthPx: 86,
     value: ({ service }) => (service.kind === 'constant' ? 'Constant' : 'Modulating'),
     editor: { by: 'dialog', dialog: 'service' },
   },
@@ -68,7 +68,7 @@ export const TRAP_COLUMNS: readonly Column<Trap>[] = [
     key: 'staff',
     title: 'Staff',
     group: 'result',
-    widthPx: 180,
+    widthPx: 150,
     quantity: 'pressure',
     face: 'staff',
     value: ({ id }, { traps }) => traps.get(id)?.backPressurePa,
@@ -78,7 +78,7 @@ export const TRAP_COLUMNS: readonly Column<Trap>[] = [
   resultColumn<Trap>(
     'backPressurePa',
     'pressure',
-    { title: 'Back', widthPx: 84 },
+    { title: 'Back', widthPx: 76 },
     ({ id }, { traps }) => traps.get(id)?.backPressurePa,
   ),
   resultColumn<Trap>(
@@ -87,7 +87,10 @@ export const TRAP_COLUMNS: readonly Column<Trap>[] = [
     { title: 'Differential', widthPx: 96 },
     ({ id }, { traps }) => traps.get(id)?.differentialPa,
   ),
-  findingColumn<Trap>('Verdict', ({ id }, { traps }) => (traps.get(id)?.checks.length ?? 0) > 0),
+  findingColumn<Trap>(
+    { title: 'Verdict', widthPx: 210 },
+    ({ id }, { traps }) => (traps.get(id)?.checks.length ?? 0) > 0,
+  ),
 ];
 
 function trapModelColumn(): Column<Trap> {
@@ -97,7 +100,7 @@ function trapModelColumn(): Column<Trap> {
     key: 'trapModel',
     title: 'Model',
     group: 'element',
-    widthPx: 150,
+    widthPx: 124,
     value: nameOfModel,
     editor: {
       by: 'choice',

@@ -141,6 +141,7 @@ function serviceForm(trap: Trap, units: DisplayUnits): FieldsDialogData {
     values: { control: 'varyingInlet', ...service },
     units,
     submitWord: 'Set',
+    leaveWord: 'Keep as it is',
     judge: (values) =>
       modulating(values) && numberOf(values, 'secondaryOutletK') <= numberOf(values, 'secondaryInletK')
         ? 'What is heated leaves hotter than it came: give a higher second temperature.'

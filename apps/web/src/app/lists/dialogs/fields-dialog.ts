@@ -18,6 +18,7 @@ export interface FieldsDialogData {
   readonly values: FieldValues;
   readonly units: DisplayUnits;
   readonly submitWord: string;
+  readonly leaveWord: string;
   /** Why these values cannot be taken; '' when they can. */
   readonly judge: (values: FieldValues) => string;
 }
@@ -38,7 +39,7 @@ export interface FieldsDialogData {
         <p class="complaint" role="alert">{{ complaint() }}</p>
       </mat-dialog-content>
       <mat-dialog-actions align="end">
-        <button matButton type="button" (click)="reference.close()">Keep as it is</button>
+        <button matButton type="button" (click)="reference.close()">{{ data.leaveWord }}</button>
         <button matButton="filled" type="submit">{{ data.submitWord }}</button>
       </mat-dialog-actions>
     </form>

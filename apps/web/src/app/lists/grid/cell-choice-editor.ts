@@ -37,6 +37,12 @@ import type { Choice } from '../columns/column';
       --mat-select-trigger-text-size: 12.5px;
       --mat-select-trigger-text-line-height: 26px;
     }
+    mat-option {
+      min-height: 28px;
+      padding: 0 12px;
+      --mat-option-label-text-size: 12.5px;
+      --mat-option-label-text-line-height: 17px;
+    }
   `,
 })
 export class CellChoiceEditor {

@@ -12,6 +12,7 @@ import {
 } from '@angular/core';
 import type { Proposal } from '../columns/column';
 import type { CellEditor } from '../list-table';
+import type { RefusedText } from './cell-drafts';
 import { StatusMark } from '../../shared/status-mark/status-mark';
 
 type TextEditor = Extract<CellEditor, { by: 'quantity' | 'text' }>;
@@ -20,10 +21,6 @@ export type AfterEdit = 'down' | 'up' | 'right' | 'left' | 'stay';
 export interface AcceptedText {
   readonly proposal: Extract<Proposal, { ok: true }>;
   readonly then: AfterEdit;
-}
-export interface RefusedText {
-  readonly text: string;
-  readonly reason: string;
 }
 
 let editorCount = 0;

@@ -27,14 +27,12 @@ import { arrangeRows, nextSorting, type Sorting } from '../arrange-rows';
 import type { DialogName } from '../columns/column';
 import type { CellView, ListTable, TableColumn } from '../list-table';
 import { CellChoiceEditor } from './cell-choice-editor';
-import { type CellPosition, cellAfterKey, HEAD_ROW, scrollToShow, within } from './cell-navigation';
-import { type AcceptedText, type AfterEdit, CellTextEditor, type RefusedText } from './cell-text-editor';
+import { CellDrafts, type RefusedText } from './cell-drafts';
+import { type CellPosition, cellAfterKey, HEAD_ROW, within } from './cell-navigation';
+import { type AcceptedText, type AfterEdit, CellTextEditor } from './cell-text-editor';
 import { gridLayout } from './grid-layout';
+import { pressedCell, ROW_HEIGHT_PX, rowsInSight, showCell } from './grid-region';
 import { extendRows, keepShown, NO_ROWS, type RowSelection, toggleAllRows, toggleRow } from './row-selection';
-
-export const ROW_HEIGHT_PX = 26;
-/** Group heads and column heads. */
-const HEAD_HEIGHT_PX = 52;
 
 interface Editing {
   readonly id: string;
@@ -87,6 +85,7 @@ export class ListGrid {
   readonly stale = input(false);
   readonly units = input.required<DisplayUnits>();
   readonly staffTopPa = input.required<number>();
+  readonly limitPa = input<(id: string) => number | undefined>(() => undefined);
   readonly edited = output<CellEdit>();
   readonly dialogWanted = output<{ id: string; dialog: DialogName }>();
   readonly drawingWanted = output<string>();
@@ -108,8 +107,7 @@ export class ListGrid {
   protected readonly sorting = signal<Sorting | null>(null);
   protected readonly editing = signal<Editing | null>(null);
   protected readonly focused = signal(false);
-  /** Texts that were refused and left standing, by cell. */
-  private readonly drafts = signal<ReadonlyMap<string, RefusedText>>(new Map());
+  private readonly drafts = new CellDrafts();
 
   private readonly tableIds = computed(() => this.table().ids, { equal: sameItems });
   /** Values that change leave rows where they are: a row that jumps away under the hand is worse than an order a moment old. */
@@ -124,9 +122,14 @@ export class ListGrid {
     source: this.rowIds,
     computation: (order, previous) => keepShown(previous?.value ?? NO_ROWS, order),
   });
-  private readonly position = signal<CellPosition>({ row: 0, column: 0 });
+  /** Null until the person has moved: the first row's tag. */
+  private readonly position = signal<CellPosition | null>(null);
   protected readonly active = computed(() =>
-    within(this.position(), { rows: this.rowIds().length, columns: this.layout().cells.length, page: 1 }),
+    within(this.position() ?? { row: 0, column: this.mayEdit() ? 1 : 0 }, {
+      rows: this.rowIds().length,
+      columns: this.layout().cells.length,
+      page: 1,
+    }),
   );
   protected readonly activeId = computed(() => this.rowIds()[this.active().row] ?? null);
   protected readonly activeCellId = computed(() => {
@@ -151,7 +154,13 @@ export class ListGrid {
     if (row < 0) return false;
     this.moveTo({ row, column: this.active().column });
     this.focus();
+    this.scrollToActiveSoon();
     return true;
+  }
+
+  /** The row that the person is on; null until they have moved. */
+  shownRow(): string | null {
+    return this.position() === null ? null : this.activeId();
   }
 
   focus(): void {
@@ -171,7 +180,7 @@ export class ListGrid {
   }
 
   protected draft(id: string, column: TableColumn): RefusedText | undefined {
-    return this.drafts().get(draftKey(id, column.key));
+    return this.drafts.of({ id, key: column.key });
   }
 
   protected editorOf(id: string, column: TableColumn) {
@@ -194,7 +203,7 @@ export class ListGrid {
     const id = this.activeId();
     this.sorting.update((sorting) => nextSorting(sorting, column.key));
     if (id !== null && this.active().row !== HEAD_ROW) {
-      this.position.update(({ column: at }) => ({ row: this.rowIds().indexOf(id), column: at }));
+      this.position.set({ row: this.rowIds().indexOf(id), column: this.active().column });
     }
     const direction = this.sortDirection(column);
     this.told.emit(direction === null ? 'In the order of the file' : `Sorted by ${column.title}, ${direction}`);
@@ -202,12 +211,12 @@ export class ListGrid {
 
   /** The grid keeps the focus when a cell is pressed; an editor in it takes its own. */
   protected keepFocus(event: MouseEvent): void {
-    if (placeOf(event) !== null) event.preventDefault();
+    if (pressedCell(event) !== null) event.preventDefault();
   }
 
   /** One listener for all cells: the grid is what has the focus and the keys. */
   protected press(event: MouseEvent): void {
-    const place = placeOf(event);
+    const place = pressedCell(event);
     if (place === null) return;
     const { row, column } = this.active();
     const again = place.row === row && place.column === column && this.focused();
@@ -235,7 +244,7 @@ export class ListGrid {
     const editing = this.editing();
     if (editing === null) return;
     this.editing.set(null);
-    this.dropDraft(editing);
+    this.drafts.drop(editing);
     this.emitEdit(editing, proposal.ops);
     this.moveAfterEdit(then);
   }
@@ -243,7 +252,7 @@ export class ListGrid {
   protected cancelEditing(): void {
     const editing = this.editing();
     this.editing.set(null);
-    if (editing !== null) this.dropDraft(editing);
+    if (editing !== null) this.drafts.drop(editing);
     this.focus();
   }
 
@@ -251,7 +260,7 @@ export class ListGrid {
     const editing = this.editing();
     if (editing === null) return;
     this.editing.set(null);
-    this.drafts.update((drafts) => new Map(drafts).set(draftKey(editing.id, editing.key), refused));
+    this.drafts.keep(editing, refused);
   }
 
   protected pick(value: string): void {
@@ -260,7 +269,7 @@ export class ListGrid {
     if (editing === null || editor?.by !== 'choice') return;
     const proposal = editor.propose(value);
     if (proposal.ok) {
-      this.dropDraft(editing);
+      this.drafts.drop(editing);
       this.emitEdit(editing, proposal.ops);
     } else {
       this.keepDraft({
@@ -281,10 +290,7 @@ export class ListGrid {
   }
 
   private moveByKey(event: KeyboardEvent, ctrl: boolean): boolean {
-    const page = Math.max(
-      1,
-      Math.floor((this.region().nativeElement.clientHeight - HEAD_HEIGHT_PX) / ROW_HEIGHT_PX) - 1,
-    );
+    const page = rowsInSight(this.region().nativeElement);
     const extent = { rows: this.rowIds().length, columns: this.layout().cells.length, page };
     const to = cellAfterKey({ key: event.key, ctrl }, this.active(), extent);
     if (to === null) return false;
@@ -333,7 +339,7 @@ export class ListGrid {
   private escape(id: string): boolean {
     const cell = this.layout().cells[this.active().column];
     if (cell?.kind === 'column' && this.draft(id, cell.column) !== undefined)
-      this.dropDraft({ id, key: cell.column.key });
+      this.drafts.drop({ id, key: cell.column.key });
     else if (this.selection().ids.size > 0) this.clearSelection();
     else return false;
     return true;
@@ -354,6 +360,8 @@ export class ListGrid {
     this.selection.set(selection);
     const order = this.rowIds();
     this.selectedChange.emit(order.filter((id) => selection.ids.has(id)));
+    // the bulk bar comes and goes under the region
+    this.scrollToActiveSoon();
     const count = selection.ids.size;
     this.told.emit(count === 0 ? 'No rows selected' : `${String(count)} ${count === 1 ? 'row' : 'rows'} selected`);
   }
@@ -403,12 +411,6 @@ export class ListGrid {
     this.edited.emit({ label: `set ${column.title.toLowerCase()} of ${this.table().nameOf(id)}`, ops });
   }
 
-  private dropDraft({ id, key }: Pick<Editing, 'id' | 'key'>): void {
-    const dropped = draftKey(id, key);
-    if (!this.drafts().has(dropped)) return;
-    this.drafts.update((drafts) => new Map([...drafts].filter(([each]) => each !== dropped)));
-  }
-
   private moveAfterEdit(then: AfterEdit): void {
     if (then === 'stay') return;
     const { row, column } = this.active();
@@ -427,34 +429,15 @@ export class ListGrid {
   }
 
   private scrollToActive(): void {
-    const { row, column } = this.active();
-    const region = this.region().nativeElement;
-    if (row !== HEAD_ROW) {
-      const start = HEAD_HEIGHT_PX + row * ROW_HEIGHT_PX;
-      region.scrollTop = scrollToShow(
-        { start, end: start + ROW_HEIGHT_PX },
-        { offset: region.scrollTop, size: region.clientHeight, coveredStart: HEAD_HEIGHT_PX },
-      );
-    }
-    const cell = this.layout().cells[column];
-    if (cell === undefined || cell.stickyLeftPx !== null) return;
-    region.scrollLeft = scrollToShow(
-      { start: cell.leftPx, end: cell.leftPx + cell.widthPx },
-      { offset: region.scrollLeft, size: region.clientWidth, coveredStart: this.layout().stickyWidthPx },
-    );
+    showCell(this.region().nativeElement, this.layout(), this.active());
   }
-}
 
-/** The cell that was pressed; null for what is inside an editor or between cells. */
-function placeOf({ target }: MouseEvent): CellPosition | null {
-  if (!(target instanceof Element) || target.closest('app-cell-text-editor, app-cell-choice-editor') !== null)
-    return null;
-  const cell = target.closest<HTMLElement>('[data-row]');
-  return cell === null ? null : { row: Number(cell.dataset['row']), column: Number(cell.dataset['column']) };
-}
-
-function draftKey(id: string, key: string): string {
-  return `${id}/${key}`;
+  /** Again when the page has been drawn: the region may have grown or shrunk by then. */
+  private scrollToActiveSoon(): void {
+    requestAnimationFrame(() => {
+      this.scrollToActive();
+    });
+  }
 }
 
 function sameItems(a: readonly string[], b: readonly string[]): boolean {
