@@ -13,12 +13,27 @@ export interface IntegrationOptions {
   readonly maximumSteps: number;
   /** How many parts the derivative writes; none by default. */
   readonly partCount?: number;
+  /** Arrays for the parts, for callers that integrate again and again; made anew by default. */
+  readonly workspace?: IntegrationWorkspace;
   /** First step to try, in the unit of s, sign not regarded; by default the whole way. */
   readonly initialStep?: number;
   /** Called after each accepted step, the last of which is at `endS` to the bit. */
   readonly onStep?: (s: number, y: number) => void;
   /** Named in the errors. */
   readonly where?: string;
+}
+
+/** The parts' slopes at each stage and their totals. One integration at a time may use it, and the next overwrites its totals. */
+export interface IntegrationWorkspace {
+  readonly stages: readonly Float64Array[];
+  readonly totals: Float64Array;
+}
+
+export function integrationWorkspace(partCount: number): IntegrationWorkspace {
+  return {
+    stages: Array.from({ length: STAGES }, () => new Float64Array(partCount)),
+    totals: new Float64Array(partCount),
+  };
 }
 
 export interface IntegrationResult {
@@ -67,15 +82,14 @@ export function integrateAdaptive(
   )) {
     throw new NonPhysicalInputError(where, { startS: s, startY: y, endS, absoluteTolerance, initialStep });
   }
-  const totals = new Float64Array(partCount);
+  const { stages, totals } = options.workspace ?? integrationWorkspace(partCount);
+  totals.fill(0);
   if (s === endS) return { y, steps: 0, rejectedSteps: 0, parts: totals };
 
   const whole = endS - s;
   const direction = Math.sign(whole);
-  const stageParts = Array.from({ length: partCount === 0 ? 1 : STAGES }, () => new Float64Array(partCount));
-  const partsOf = (stage: number): Float64Array => stageParts[partCount === 0 ? 0 : stage] as Float64Array;
-
-  let k1 = derivative(s, y, partsOf(0));
+  const [parts1, parts2, parts3, parts4, parts5, parts6, parts7] = stages as StageParts;
+  let k1 = derivative(s, y, parts1);
   if (!Number.isFinite(k1)) throw new NoConvergenceError(where, 0, whole);
   let step = direction * Math.min(initialStep, Math.abs(whole));
   let steps = 0;
@@ -86,27 +100,31 @@ export function integrateAdaptive(
     const last = Math.abs(step) * 1.01 >= Math.abs(left);
     const h = last ? left : step;
 
-    const k2 = derivative(s + h * C2, y + h * (A21 * k1), partsOf(1));
-    const k3 = derivative(s + h * C3, y + h * (A31 * k1 + A32 * k2), partsOf(2));
-    const k4 = derivative(s + h * C4, y + h * (A41 * k1 + A42 * k2 + A43 * k3), partsOf(3));
-    const k5 = derivative(s + h * C5, y + h * (A51 * k1 + A52 * k2 + A53 * k3 + A54 * k4), partsOf(4));
+    const k2 = derivative(s + h * C2, y + h * (A21 * k1), parts2);
+    const k3 = derivative(s + h * C3, y + h * (A31 * k1 + A32 * k2), parts3);
+    const k4 = derivative(s + h * C4, y + h * (A41 * k1 + A42 * k2 + A43 * k3), parts4);
+    const k5 = derivative(s + h * C5, y + h * (A51 * k1 + A52 * k2 + A53 * k3 + A54 * k4), parts5);
     const nextS = last ? endS : s + h;
-    const k6 = derivative(nextS, y + h * (A61 * k1 + A62 * k2 + A63 * k3 + A64 * k4 + A65 * k5), partsOf(5));
+    const k6 = derivative(nextS, y + h * (A61 * k1 + A62 * k2 + A63 * k3 + A64 * k4 + A65 * k5), parts6);
     const nextY = y + h * (B1 * k1 + B3 * k3 + B4 * k4 + B5 * k5 + B6 * k6);
-    const k7 = derivative(nextS, nextY, partsOf(6));
+    const k7 = derivative(nextS, nextY, parts7);
     const error = Math.abs(h * (E1 * k1 + E3 * k3 + E4 * k4 + E5 * k5 + E6 * k6 + E7 * k7)) / absoluteTolerance;
 
     if (error <= 1) {
       for (let part = 0; part < partCount; part++) {
-        const slope = (stage: number): number => partsOf(stage)[part] as number;
-        const weighted = B1 * slope(0) + B3 * slope(2) + B4 * slope(3) + B5 * slope(4) + B6 * slope(5);
+        const weighted =
+          B1 * (parts1[part] as number) +
+          B3 * (parts3[part] as number) +
+          B4 * (parts4[part] as number) +
+          B5 * (parts5[part] as number) +
+          B6 * (parts6[part] as number);
         totals[part] = (totals[part] as number) + h * weighted;
       }
       s = nextS;
       y = nextY;
       // the last stage is the first of the next step; its parts move along with it
       k1 = k7;
-      if (partCount > 0) partsOf(0).set(partsOf(6));
+      if (partCount > 0) parts1.set(parts7);
       steps++;
       onStep?.(s, y);
       if (last) return { y, steps, rejectedSteps, parts: totals };
@@ -126,6 +144,15 @@ function stepFactor(error: number): number {
 }
 
 const STAGES = 7;
+type StageParts = readonly [
+  Float64Array,
+  Float64Array,
+  Float64Array,
+  Float64Array,
+  Float64Array,
+  Float64Array,
+  Float64Array,
+];
 const C2 = 1 / 5;
 const C3 = 3 / 10;
 const C4 = 4 / 5;

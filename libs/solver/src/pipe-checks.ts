@@ -19,7 +19,12 @@ export const PIPE_CHECKS: readonly Check[] = [reversed, velocity, momentum, grad
 /** What an engineer should know of a pipe; nothing of one that stands still. */
 export function checkPipe(at: PipeUnderCheck): SolveWarning[] {
   if (at.result.massFlowKgS === 0) return [];
-  return PIPE_CHECKS.flatMap((check) => check(at) ?? []);
+  const warnings: SolveWarning[] = [];
+  for (const check of PIPE_CHECKS) {
+    const warning = check(at);
+    if (warning) warnings.push(warning);
+  }
+  return warnings;
 }
 
 const LARGER_BORE = say`Use a larger bore, or take some of the traps to another return.`;

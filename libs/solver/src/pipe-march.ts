@@ -8,6 +8,7 @@ import {
 import type { Method, RoutePiece } from '@riseback/network';
 import {
   integrateAdaptive,
+  integrationWorkspace,
   NoConvergenceError,
   type IntegrationOptions,
   type IntegrationResult,
@@ -48,6 +49,7 @@ const [LOWEST_PA, HIGHEST_PA] = SATURATION_RANGE_PA;
 const STATIC = 0;
 const FRICTION = 1;
 const FLASH = 2;
+const PARTS = 3;
 
 type Writable<T> = { -readonly [Key in keyof T]: T[Key] };
 
@@ -73,7 +75,8 @@ export class PipeMarcher {
     this.integration = {
       absoluteTolerance: options.tolerancePa,
       maximumSteps: MAXIMUM_STEPS,
-      partCount: 3,
+      partCount: PARTS,
+      workspace: integrationWorkspace(PARTS),
       where: 'the march along the pipe',
       onStep: (_distanceM, pressurePa) => {
         this.at.reachedPa = pressurePa;

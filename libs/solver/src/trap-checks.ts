@@ -39,7 +39,13 @@ export function checkTrap(at: TrapUnderCheck): { checks: TrapCheck[]; notChecked
   return { checks, notChecked };
 }
 
+const LESS_BEHIND_OR_PUMP = say`Lower what stands behind the trap (less lift, a larger bore on its walk, another return), or lift its condensate with a pump.`;
+const LESS_BEHIND_OR_TYPE = say`Lower what stands behind the trap, or use a type that works against it (a float or inverted bucket trap).`;
+const RATED_BODY = say`Fit a body rated for the safety valve’s setting. Until then keep the trap shut off and marked: a body above its rating can burst.`;
+
 // Most checks pass, and value and limit stand beside the words: words without numbers are made once.
+const DIFFERENTIAL_PASSES = findingWords(say`The inlet stands above the return, which drives the condensate out.`);
+const FRACTION_PASSES = findingWords(say`The share of the inlet’s gauge pressure behind the trap is within its limit.`);
 const CAPACITY_PASSES = findingWords(
   say`The model passes at this differential what the load needs with its sizing factor.`,
 );
@@ -60,14 +66,11 @@ export const ISOLATED_UNCHECKED: readonly UnmadeCheck[] = Object.keys(TRAP_CHECK
 
 function differential({ inletPressurePa, backPressurePa }: TrapUnderCheck): TrapCheck {
   const value = inletPressurePa - backPressurePa;
-  const result = { code: 'differential', value, limit: 0 };
   if (value > 0) {
-    const text = say`${amount('pressureDifference', value)} across the trap drives its condensate out.`;
-    return { ...result, verdict: 'pass', ...findingWords(text) };
+    return { code: 'differential', verdict: 'pass', value, limit: 0, ...DIFFERENTIAL_PASSES };
   }
   const text = say`The return stands at ${amount('pressure', backPressurePa)} against ${amount('pressure', inletPressurePa)} at the inlet: nothing drives the condensate out, and it backs up into the steam space, where it costs heat and can hammer.`;
-  const remedy = say`Lower what stands behind the trap (less lift, a larger bore on its walk, another return), or lift its condensate with a pump.`;
-  return { ...result, verdict: 'fail', ...findingWords(text, remedy) };
+  return { code: 'differential', verdict: 'fail', value, limit: 0, ...findingWords(text, LESS_BEHIND_OR_PUMP) };
 }
 
 function capacity({ trap, model, inletPressurePa, backPressurePa, loadKgS }: TrapUnderCheck): TrapCheck | UnmadeCheck {
@@ -79,13 +82,12 @@ function capacity({ trap, model, inletPressurePa, backPressurePa, loadKgS }: Tra
   if (differentialPa <= 0) return { code, reason: 'There is no differential at which to judge a capacity.' };
   const value = trapCapacityKgS(points, differentialPa);
   const limit = trap.sizingFactor * loadKgS;
-  const result = { code, value, limit };
   if (isAtLeast(value, limit)) {
-    return { ...result, verdict: 'pass', ...CAPACITY_PASSES };
+    return { code, verdict: 'pass', value, limit, ...CAPACITY_PASSES };
   }
   const text = say`At ${amount('pressureDifference', differentialPa)} across it the model passes ${amount('massFlow', value)}, but ${amount('factor', trap.sizingFactor)} times its load needs ${amount('massFlow', limit)}: at start-up and at peaks condensate backs up.`;
   const remedy = say`Choose a model or seat that passes ${amount('massFlow', limit)} at this differential, or lower what stands behind the trap.`;
-  return { ...result, verdict: 'fail', ...findingWords(text, remedy) };
+  return { code, verdict: 'fail', value, limit, ...findingWords(text, remedy) };
 }
 
 function backPressureFraction(at: TrapUnderCheck): TrapCheck | UnmadeCheck {
@@ -102,21 +104,20 @@ function backPressureFraction(at: TrapUnderCheck): TrapCheck | UnmadeCheck {
   }
   const inletGaugePa = at.inletPressurePa - atmosphericPressurePa;
   const backGaugePa = at.backPressurePa - atmosphericPressurePa;
-  const remedy = say`Lower what stands behind the trap, or use a type that works against it (a float or inverted bucket trap).`;
   if (inletGaugePa <= 0) {
     const text = say`The inlet stands at ${amount('pressure', at.inletPressurePa)}, not above the atmosphere: no share of it can be left for the return.`;
-    return { code, verdict: 'fail', limit: failAbove, ...findingWords(text, remedy) };
+    return { code, verdict: 'fail', limit: failAbove, ...findingWords(text, LESS_BEHIND_OR_TYPE) };
   }
   const value = backGaugePa / inletGaugePa;
   const watchAbove = Math.min(ofType?.watchFraction ?? failAbove, failAbove);
   const leastInletPa = ofType?.minimumInletGaugePa ?? 0;
   if (value > failAbove) {
     const text = say`${amount('fraction', value)} of the inlet’s gauge pressure stands behind the trap; above ${amount('fraction', failAbove)} it no longer closes and blows steam into the return.`;
-    return { code, verdict: 'fail', value, limit: failAbove, ...findingWords(text, remedy) };
+    return { code, verdict: 'fail', value, limit: failAbove, ...findingWords(text, LESS_BEHIND_OR_TYPE) };
   }
   if (value > watchAbove) {
     const text = say`${amount('fraction', value)} of the inlet’s gauge pressure stands behind the trap; above ${amount('fraction', watchAbove)} a trap of this type closes late and wears.`;
-    return { code, verdict: 'watch', value, limit: watchAbove, ...findingWords(text, remedy) };
+    return { code, verdict: 'watch', value, limit: watchAbove, ...findingWords(text, LESS_BEHIND_OR_TYPE) };
   }
   if (inletGaugePa < leastInletPa) {
     const text = say`The inlet has ${amount('pressureDifference', inletGaugePa)} above the atmosphere; below ${amount('pressureDifference', leastInletPa)} a trap of this type may not close.`;
@@ -128,8 +129,7 @@ function backPressureFraction(at: TrapUnderCheck): TrapCheck | UnmadeCheck {
       ...findingWords(text, say`Use a float or inverted bucket trap at so low a pressure.`),
     };
   }
-  const text = say`${amount('fraction', value)} of the inlet’s gauge pressure stands behind the trap.`;
-  return { code, verdict: 'pass', value, limit: watchAbove, ...findingWords(text) };
+  return { code, verdict: 'pass', value, limit: watchAbove, ...FRACTION_PASSES };
 }
 
 function orificeRating({ trap, model, atmosphericPressurePa }: TrapUnderCheck): TrapCheck | UnmadeCheck {
@@ -140,13 +140,12 @@ function orificeRating({ trap, model, atmosphericPressurePa }: TrapUnderCheck): 
   if (trap.maximumPressurePa === undefined)
     return { code, reason: 'The trap’s maximumPressurePa, the safety valve’s setting, is not given.' };
   const value = trap.maximumPressurePa - atmosphericPressurePa;
-  const result = { code, value, limit };
   if (isAtLeast(limit, value)) {
-    return { ...result, verdict: 'pass', ...SEAT_PASSES };
+    return { code, verdict: 'pass', value, limit, ...SEAT_PASSES };
   }
   const text = say`Up to the safety valve’s setting ${amount('pressureDifference', value)} can stand across the seat, which is rated for ${amount('pressureDifference', limit)}: above that the trap stays shut and floods.`;
   const remedy = say`Choose a smaller seat or a model rated for ${amount('pressureDifference', value)}.`;
-  return { ...result, verdict: 'fail', ...findingWords(text, remedy) };
+  return { code, verdict: 'fail', value, limit, ...findingWords(text, remedy) };
 }
 
 function bodyRating({ trap, model }: TrapUnderCheck): TrapCheck | UnmadeCheck {
@@ -158,17 +157,16 @@ function bodyRating({ trap, model }: TrapUnderCheck): TrapCheck | UnmadeCheck {
   const pressurePa = trap.maximumPressurePa;
   if (pressurePa === undefined)
     return { code, reason: 'The trap’s maximumPressurePa, the safety valve’s setting, is not given.' };
-  const remedy = say`Fit a body rated for the safety valve’s setting. Until then keep the trap shut off and marked: a body above its rating can burst.`;
   if (bodyPressurePa !== undefined && !isAtLeast(bodyPressurePa, pressurePa)) {
     const text = say`Up to the safety valve’s setting ${amount('pressure', pressurePa)} can stand in the body, which is rated for ${amount('pressure', bodyPressurePa)}.`;
-    return { code, verdict: 'fail', value: pressurePa, limit: bodyPressurePa, ...findingWords(text, remedy) };
+    return { code, verdict: 'fail', value: pressurePa, limit: bodyPressurePa, ...findingWords(text, RATED_BODY) };
   }
   // a setting above the critical pressure is judged by pressure alone: nothing boils there
   const boils = pressurePa <= SATURATION_LINE_RANGE.pressurePa[1] && pressurePa >= SATURATION_LINE_RANGE.pressurePa[0];
   const temperatureK = boils ? saturationTemperatureK(pressurePa) : undefined;
   if (temperatureK !== undefined && bodyTemperatureK !== undefined && !isAtLeast(bodyTemperatureK, temperatureK)) {
     const text = say`Steam at the safety valve’s setting is ${amount('temperature', temperatureK)} hot; the body is rated for ${amount('temperature', bodyTemperatureK)}.`;
-    return { code, verdict: 'fail', value: temperatureK, limit: bodyTemperatureK, ...findingWords(text, remedy) };
+    return { code, verdict: 'fail', value: temperatureK, limit: bodyTemperatureK, ...findingWords(text, RATED_BODY) };
   }
   if (bodyPressurePa === undefined) return { code, verdict: 'pass', ...BODY_PASSES_BY_TEMPERATURE };
   const words = bodyTemperatureK === undefined ? BODY_PASSES_BY_PRESSURE : BODY_PASSES;
