@@ -6,6 +6,7 @@ describe('niceTicks', () => {
     [0, 75, 5, [0, 20, 40, 60, 80]],
     [0, 75, 4, [0, 20, 40, 60, 80]],
     [-0.4, 0.9, 5, [-0.5, 0, 0.5, 1]],
+    [14.99996, 30.5, 4, [15, 20, 25, 30, 35]],
     [10, 50, 4, [10, 20, 30, 40, 50]],
   ])('holds %d to %d in at most %d steps', (low, high, most, ticks) => {
     expect(niceTicks(low, high, most)).toEqual(ticks);
@@ -23,8 +24,9 @@ describe('niceTicks', () => {
       const [low, high] = [-50 + i * 0.7, -50 + i * 0.7 + 1.37 ** (i % 30)];
       const ticks = niceTicks(low, high, 5);
       expect(ticks.length).toBeLessThanOrEqual(6);
-      expect(ticks[0]).toBeLessThanOrEqual(low + 1e-9);
-      expect(ticks.at(-1)).toBeGreaterThanOrEqual(high - 1e-6);
+      const step = (ticks[1] ?? 0) - (ticks[0] ?? 0);
+      expect(ticks[0]).toBeLessThanOrEqual(low + 0.0021 * step);
+      expect(ticks.at(-1)).toBeGreaterThanOrEqual(high - 0.0021 * step);
     }
   });
 });

@@ -57,10 +57,11 @@ export class LedgerSheet {
     if (end?.kind === 'flashVessel') return 'vessel held at';
     return end?.kind === 'receiver' && end.vented === true ? 'receiver, vented' : 'receiver held at';
   });
-  protected readonly place = computed(() => {
-    const { area, note } = this.item().trap;
-    return [area ?? '', (note ?? '').split('\n')[0] ?? ''].filter((part) => part !== '').join(', ');
-  });
+  protected readonly note = computed(() => (this.item().trap.note ?? '').split('\n')[0] ?? '');
+  /** Site and network, once where they bear one name. */
+  protected readonly place = computed(() =>
+    [...new Set([this.siteName(), this.document().name])].filter((name) => name !== '').join(', '),
+  );
   protected readonly duty = computed(() => {
     const { trap, inletPa } = this.item();
     const model = trap.trapModel === undefined ? undefined : this.document().trapModels.get(trap.trapModel)?.value.name;

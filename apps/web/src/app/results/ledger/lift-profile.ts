@@ -1,9 +1,25 @@
-import { ChangeDetectionStrategy, Component, computed, input, linkedSignal } from '@angular/core';
+import {
+  afterNextRender,
+  ChangeDetectionStrategy,
+  Component,
+  computed,
+  DestroyRef,
+  type ElementRef,
+  inject,
+  input,
+  linkedSignal,
+  signal,
+  viewChild,
+} from '@angular/core';
 import { type DisplayUnits, displayUnit, formatQuantity } from '@riseback/units';
 import type { ProfilePoint } from '@riseback/solver';
 import type { BackPressureLimit } from '../back-pressure-limit';
 import type { PressureRamp } from '../pressure-ramp';
 import { PROFILE, profileFigure } from './profile-figure';
+
+/** Width on the A4 page, px, and the least in which its words still find room. */
+const FULL_WIDTH = 1056;
+const LEAST_WIDTH = 300;
 
 /** Pressure over elevation along the way from a trap to its vessel; pointer or arrow keys read it place by place. */
 @Component({
@@ -23,7 +39,11 @@ export class LiftProfile {
   readonly limit = input<BackPressureLimit | null>(null);
   readonly exceeded = input(false);
 
+  private readonly frame = viewChild.required<ElementRef<HTMLElement>>('frame');
+
   protected readonly PROFILE = PROFILE;
+  /** Drawn as wide as the page gives room, so that its words keep their size on a phone. */
+  protected readonly width = signal(FULL_WIDTH);
   /** The place that is read; another way begins at its trap again, unread. */
   protected readonly at = linkedSignal<readonly ProfilePoint[], number | null>({
     source: this.points,
@@ -37,6 +57,7 @@ export class LiftProfile {
       units: this.units(),
       ramp: this.ramp(),
       limitPa: this.limit()?.pressurePa,
+      width: this.width(),
     }),
   );
   protected readonly titles = computed(() => ({
@@ -64,6 +85,21 @@ export class LiftProfile {
     return at === null ? null : (this.figure().samples[at] ?? null);
   });
 
+  constructor() {
+    const destroyed = inject(DestroyRef);
+    afterNextRender(() => {
+      const frame = this.frame().nativeElement;
+      const observer = new ResizeObserver(() => {
+        // a page that is printed, or not shown at all, gives no width worth a new drawing
+        if (frame.clientWidth > 0) this.width.set(Math.max(LEAST_WIDTH, Math.min(frame.clientWidth, 1.2 * FULL_WIDTH)));
+      });
+      observer.observe(frame);
+      destroyed.onDestroy(() => {
+        observer.disconnect();
+      });
+    });
+  }
+
   protected step(event: Event, to: 'next' | 'before' | 'first' | 'last'): void {
     event.preventDefault();
     const last = this.figure().samples.length - 1;
@@ -87,8 +123,8 @@ export class LiftProfile {
   protected point(event: PointerEvent): void {
     const box = (event.currentTarget as Element).getBoundingClientRect();
     if (box.width === 0) return;
-    const x = PROFILE.left + ((event.clientX - box.left) / box.width) * (PROFILE.right - PROFILE.left);
-    const { samples } = this.figure();
+    const { right, samples } = this.figure();
+    const x = PROFILE.left + ((event.clientX - box.left) / box.width) * (right - PROFILE.left);
     this.at.set(
       samples.reduce((best, { x: at }, i) => (Math.abs(at - x) < Math.abs((samples[best]?.x ?? 0) - x) ? i : best), 0),
     );

@@ -5,6 +5,8 @@ import { PROFILE, profileFigure } from './profile-figure';
 
 const units = { system: 'us', atmosphericPressurePa: 101_325 } as const;
 const FT = 0.3048;
+const WIDTH = 1056;
+const RIGHT = WIDTH - PROFILE.rightMargin;
 const psig = (value: number) => 101_325 + value * 6_894.757293168;
 const point = (feet: number, elevation: number, pressure: number, pipeId: string): ProfilePoint => ({
   distanceM: feet * FT,
@@ -29,12 +31,13 @@ const figure = (limitPa?: number) =>
     units,
     ramp: pressureRamp([psig(0), psig(35)], units),
     limitPa,
+    width: WIDTH,
   });
 
 describe('profileFigure', () => {
   it('runs from the left edge to the right with distance', () => {
     const { start, end, distanceTicks } = figure();
-    expect([start.x, end.x]).toEqual([PROFILE.left, PROFILE.right]);
+    expect([start.x, end.x]).toEqual([PROFILE.left, RIGHT]);
     expect(distanceTicks.map(({ text }) => text)).toEqual(['0', '100', '200', '300', '400']);
   });
 
@@ -58,7 +61,7 @@ describe('profileFigure', () => {
     const { lifts } = figure();
     expect(lifts).toHaveLength(1);
     expect(lifts[0]?.text).toBe('22 ft lift');
-    const scale = (PROFILE.right - PROFILE.left) / 400;
+    const scale = (RIGHT - PROFILE.left) / 400;
     expect(lifts[0]?.x).toBeCloseTo(PROFILE.left + 130 * scale, 6);
     expect(lifts[0]?.width).toBeCloseTo(30 * scale, 6);
   });
@@ -92,6 +95,7 @@ describe('profileFigure', () => {
       units,
       ramp: pressureRamp([], units),
       limitPa: undefined,
+      width: WIDTH,
     });
     expect(JSON.stringify(made)).not.toMatch(/null,"y|NaN|Infinity/);
     expect(made.washes.length).toBeGreaterThan(0);

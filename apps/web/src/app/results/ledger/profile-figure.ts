@@ -4,12 +4,12 @@ import { area, line } from 'd3-shape';
 import { niceTicks } from '../nice-ticks';
 import { PAPER_CORE_FROM, type PressureClass, type PressureRamp } from '../pressure-ramp';
 
-/** The figure's own measures, px at full size. */
+/** The figure's own measures, px; its width is what the page gives it. */
 export const PROFILE = {
-  width: 1056,
   height: 306,
   left: 48,
-  right: 990,
+  /** Right of the plot, for what stands at the end of the way. */
+  rightMargin: 66,
   pressureTop: 24,
   pressureBottom: 158,
   numbers: 176,
@@ -31,6 +31,8 @@ export interface ProfileSample extends Place {
 }
 
 export interface ProfileFigure {
+  /** Where the plot ends. */
+  readonly right: number;
   readonly pressureTicks: readonly Tick[];
   readonly elevationTicks: readonly Tick[];
   readonly distanceTicks: readonly Tick[];
@@ -69,17 +71,22 @@ export interface ProfileInput {
   readonly units: DisplayUnits;
   readonly ramp: PressureRamp;
   readonly limitPa: number | undefined;
+  /** Of the whole figure, px. */
+  readonly width: number;
 }
 
 /** Everything a lift profile draws, as numbers and paths: pressure upwards over elevation, flow from left to right. */
-export function profileFigure({ points, nameOfPipe, units, ramp, limitPa }: ProfileInput): ProfileFigure {
+export function profileFigure({ points, nameOfPipe, units, ramp, limitPa, width }: ProfileInput): ProfileFigure {
   const shown = points.map((point) => ({
     distance: toDisplay(point.distanceM, 'length', units),
     elevation: toDisplay(point.elevationM, 'length', units),
     pressure: toDisplay(point.pressurePa, 'pressure', units),
   }));
   const wayLength = Math.max(shown.at(-1)?.distance ?? 0, 1e-9);
-  const distanceTicks = niceTicks(0, wayLength, 6).filter((tick) => tick <= wayLength * 1.0001);
+  const right = width - PROFILE.rightMargin;
+  const distanceTicks = niceTicks(0, wayLength, Math.max(2, Math.floor((right - PROFILE.left) / 140))).filter(
+    (tick) => tick <= wayLength * 1.0001,
+  );
   const limit = limitPa === undefined ? undefined : toDisplay(limitPa, 'pressure', units);
   const pressures = shown.map(({ pressure }) => pressure);
   const [least, most] = [Math.min(...pressures), Math.max(...pressures)];
@@ -89,9 +96,9 @@ export function profileFigure({ points, nameOfPipe, units, ramp, limitPa }: Prof
   const reach = limitInSight ? [least, most, limit] : [least, most];
   const pressureTicks = niceTicks(Math.min(...reach), Math.max(...reach), 4);
   const elevations = shown.map(({ elevation }) => elevation);
-  const elevationTicks = niceTicks(Math.min(...elevations), Math.max(...elevations), 2);
+  const elevationTicks = niceTicks(Math.min(...elevations), Math.max(...elevations), 3);
 
-  const x = (distance: number) => PROFILE.left + (distance / wayLength) * (PROFILE.right - PROFILE.left);
+  const x = (distance: number) => PROFILE.left + (distance / wayLength) * (right - PROFILE.left);
   const pressureY = scaleOf(pressureTicks, PROFILE.pressureBottom, PROFILE.pressureTop);
   const elevationY = scaleOf(elevationTicks, PROFILE.elevationBottom, PROFILE.elevationTop);
   const places = shown.map(({ distance, elevation, pressure }): Place => ({
@@ -104,6 +111,7 @@ export function profileFigure({ points, nameOfPipe, units, ramp, limitPa }: Prof
   const limitY = limitInSight ? pressureY(limit) : undefined;
 
   return {
+    right,
     pressureTicks: pressureTicks.map((tick) => ({ at: pressureY(tick), text: tickText(tick) })),
     elevationTicks: elevationTicks.map((tick) => ({ at: elevationY(tick), text: tickText(tick) })),
     distanceTicks: distanceTicks.map((tick) => ({ at: x(tick), text: tickText(tick) })),
@@ -119,7 +127,7 @@ export function profileFigure({ points, nameOfPipe, units, ramp, limitPa }: Prof
         PROFILE.elevationBottom,
         (place) => place.elevationY,
       )(places) ?? '',
-    lifts: lifts(points, places, units),
+    lifts: lifts(points, places, units, right),
     ...pipesAlong(points, places),
     start,
     end,
@@ -190,7 +198,12 @@ function crossed(from: number, to: number, limits: readonly number[]): number[] 
 }
 
 /** Rises that follow one another are one lift. A label that would run into the one before it is left out. */
-function lifts(points: readonly ProfilePoint[], places: readonly Place[], units: DisplayUnits): ProfileFigure['lifts'] {
+function lifts(
+  points: readonly ProfilePoint[],
+  places: readonly Place[],
+  units: DisplayUnits,
+  edge: number,
+): ProfileFigure['lifts'] {
   const found: { from: number; to: number; riseM: number }[] = [];
   points.forEach((point, i) => {
     const before = points[i - 1];
@@ -208,7 +221,7 @@ function lifts(points: readonly ProfilePoint[], places: readonly Place[], units:
       const decimals = units.system === 'us' ? 0 : 1;
       const text = `${formatQuantity(riseM, 'length', units, { withUnit: true, decimals })} lift`;
       const half = text.length * 3.4;
-      const labelX = Math.min(PROFILE.right - half, Math.max(PROFILE.left + half, right + half + 8));
+      const labelX = Math.min(edge - half, Math.max(PROFILE.left + half, right + half + 8));
       const free = labelX - half > taken;
       if (free) taken = labelX + half + 8;
       return { x: left, width: Math.max(2, right - left), labelX, text: free ? text : '' };
