@@ -61,8 +61,9 @@ export function darcyGradientOf(
       lossCoefficientPerM,
     });
   }
-  if (massFlowKgS === 0) return 0;
   const massFlux = massFlowKgS / boreAreaM2(insideDiameterM);
+  // a still pipe, and a flow so small that its square vanishes while 64/Re overflows
+  if (massFlux * massFlux === 0) return 0;
   const Re = (massFlux * insideDiameterM) / viscosityPaS;
   const f = darcyFrictionFactor(Re, roughnessM / insideDiameterM);
   return ((f / insideDiameterM + lossCoefficientPerM) * massFlux * massFlux) / (2 * densityKgM3);

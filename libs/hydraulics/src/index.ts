@@ -29,3 +29,16 @@ export {
 } from './fittings';
 export { NOMINAL_SIZES, PIPE_CATALOGUE, type NominalSize, type PipeStandard } from './pipe-dimensions';
 export { pipeBore, pipeSizes, type PipeBore, type PipeSchedule, type PipeSizeName } from './pipe-catalogue';
+export { fittingsGradient, liquidOnlyGradient, vapourOnlyGradient } from './two-phase-point';
+export { homogeneousGradient } from './homogeneous';
+export { chisholmC, lockhartMartinelliGradient } from './lockhart-martinelli';
+export { friedelGradient } from './friedel';
+export { mullerSteinhagenHeckGradient } from './mueller-steinhagen-heck';
+export {
+  twoPhaseDensityKgM3,
+  voidFractionChisholm,
+  voidFractionHomogeneous,
+  voidFractionRouhaniAxelsson,
+  voidFractionZivi,
+  type VoidFraction,
+} from './void-fraction';
