@@ -42,3 +42,11 @@ export {
   voidFractionZivi,
   type VoidFraction,
 } from './void-fraction';
+export {
+  STRATIFIED_SLOPE_LIMIT,
+  stratifiedFlow,
+  type FrictionLaw,
+  type LiquidSurface,
+  type StratifiedFlow,
+} from './stratified-flow';
+export { byPatternGradient, type PatternedGradient } from './by-pattern';
