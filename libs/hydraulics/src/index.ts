@@ -50,3 +50,6 @@ export {
   type StratifiedFlow,
 } from './stratified-flow';
 export { byPatternGradient, type PatternedGradient } from './by-pattern';
+export { flowPattern, type FlowPattern } from './flow-pattern';
+export { levelFlowPattern, type LevelFlowPattern } from './level-flow-pattern';
+export { riseFlow, type RiseFlow, type RiseFlowPattern } from './rise-flow-pattern';
