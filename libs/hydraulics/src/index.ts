@@ -53,3 +53,9 @@ export { byPatternGradient, type PatternedGradient } from './by-pattern';
 export { flowPattern, type FlowPattern } from './flow-pattern';
 export { levelFlowPattern, type LevelFlowPattern } from './level-flow-pattern';
 export { riseFlow, type RiseFlow, type RiseFlowPattern } from './rise-flow-pattern';
+export {
+  CHOKED_PRESSURE_RATIO,
+  napierOrificeFlowKgS,
+  ORIFICE_DISCHARGE_COEFFICIENT,
+  orificeSteamFlowKgS,
+} from './steam-orifice';
