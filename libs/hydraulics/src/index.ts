@@ -59,3 +59,9 @@ export {
   ORIFICE_DISCHARGE_COEFFICIENT,
   orificeSteamFlowKgS,
 } from './steam-orifice';
+export {
+  accelerationFactor,
+  criticalPressurePa,
+  isenthalpicVolumeSlope,
+  vapourAccelerationFactor,
+} from './acceleration';
