@@ -108,10 +108,10 @@ describe('allFindings', () => {
     };
     const list = said({ caseId: 'design', status: 'refused', problem });
     expect(list.map(({ element, severity, what }) => [element?.id, severity, what])).toEqual([
-      [undefined, 'fail', 'Not available yet: friction method friedel is not available yet'],
-      [undefined, 'fail', 'Not available yet: nobody'],
-      ['L2', 'fail', 'Not available yet: a loop is not available yet'],
-      ['T1', 'fail', 'Not available yet: state failedOpen of T1 is not available yet'],
+      [undefined, 'fail', 'Friction method friedel is not available yet'],
+      [undefined, 'fail', 'Nobody'],
+      ['L2', 'fail', 'A loop is not available yet'],
+      ['T1', 'fail', 'State failedOpen of T1 is not available yet'],
     ]);
     expect(new Set(list.map(({ id }) => id)).size).toBe(list.length);
   });

@@ -129,7 +129,7 @@ function ofProblem(document: NetworkDocument, problem: Problem | undefined, code
     ...at(document, pointedAt(document, pointer)),
     severity: 'fail',
     code,
-    what: `${title}: ${detail}`,
+    what: `${detail.charAt(0).toUpperCase()}${detail.slice(1)}`,
   }));
 }
 

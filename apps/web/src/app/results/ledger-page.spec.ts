@@ -144,8 +144,15 @@ describe('LedgerPage', () => {
     };
     store.outcome.set({ caseId: '', status: 'refused', problem });
     await opened();
-    expect(text('app-problem-banner')).toContain('state failedOpen of T1');
-    expect(element.querySelector('table')).toBeNull();
+    expect(text('h1')).toBe('This network has no result, so no ledger');
+    expect(text('app-findings-list')).toContain('state failedOpen of T1');
+    expect(element.querySelector('app-ledger-table')).toBeNull();
+  });
+
+  it('shows the trap that governs to whoever asks for what is not there', async () => {
+    await opened('gone');
+    expect(text('h1')).toBe('Nothing by that name');
+    expect(text('.notice a')).toBe('Show the trap that governs');
   });
 
   it('leads from a trap that was left out to what is against it', async () => {

@@ -77,25 +77,29 @@ export class LedgerPage {
   protected readonly hasTraps = computed(() =>
     [...(this.store.document()?.nodes.values() ?? [])].some(({ value }) => value.kind === 'trap'),
   );
-  /** Why there is no account at all. */
+  /** Why the newest state could not be solved at all. */
   protected readonly problem = computed(() => {
     const state = this.store.solveState();
-    if (state.kind === 'failed') return state.problem;
-    const outcome = this.store.outcome();
-    if (outcome?.status === 'refused') return outcome.problem;
-    return outcome?.result.converged === false ? (outcome.result.problem ?? null) : null;
+    return state.kind === 'failed' ? state.problem : null;
+  });
+  private readonly findings = computed(() => {
+    const document = this.store.document();
+    const { topology, outcome, units } = this.store;
+    return document === null ? [] : allFindings({ document, topology: topology(), outcome: outcome(), units: units() });
+  });
+  /** What stands against this case as a whole: it asks for what is not computed, or has no solution. */
+  protected readonly unanswered = computed(() => {
+    const reasons = this.findings().filter(({ code }) => code === 'refused' || code === 'noSolution');
+    return reasons.length === 0 ? null : reasons;
   });
   /** What an element without an account has against it. */
   protected readonly ofElement = computed(() => {
     const document = this.store.document();
     const id = this.element() ?? '';
-    if (document === null) return { name: id, findings: [] };
-    const element = document.nodes.get(id)?.value ?? document.pipes.get(id)?.value;
-    const { topology, outcome, units } = this.store;
-    const findings = allFindings({ document, topology: topology(), outcome: outcome(), units: units() });
+    const element = document?.nodes.get(id)?.value ?? document?.pipes.get(id)?.value;
     return {
       name: element === undefined ? '' : nameOf(element),
-      findings: findings.filter((finding) => finding.element?.id === id),
+      findings: this.findings().filter((finding) => finding.element?.id === id),
     };
   });
   protected readonly staleReason = computed(() => {
