@@ -1,5 +1,6 @@
 import { NonPhysicalInputError } from '@riseback/numerics';
 import { saturationState } from '@riseback/steam';
+import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import type { FlashingFlow } from './flash-vapour';
 import { flowPattern } from './flow-pattern';
@@ -105,6 +106,29 @@ describe('flowPattern', () => {
     { name: 'a fall of 9°', change: { fallSlope: sin(9) }, pattern: levelFlowPattern({ ...LINE, fallSlope: sin(9) }) },
   ])('$name', ({ change, pattern }) => {
     expect(flowPattern({ ...LINE, ...change })).toBe(pattern);
+  });
+
+  it('answers for every moving flow that is not a drop', () => {
+    const decades = (from: number, to: number): fc.Arbitrary<number> =>
+      fc.double({ min: from, max: to, noNaN: true }).map((decade) => 10 ** decade);
+    const anyFlow = fc.record<FlashingFlow>({
+      massFlowKgS: fc.oneof(decades(-9, 4), decades(-300, -9)),
+      quality: fc.oneof(
+        decades(-300, 0),
+        decades(-16, 0).map((liquid) => 1 - liquid),
+      ),
+      saturation: decades(3, 6.9).map((pressurePa) => saturationState(pressurePa)),
+      insideDiameterM: decades(-2.5, 0.3),
+      roughnessM: fc.double({ min: 0, max: 1e-3, noNaN: true }),
+      lossCoefficientPerM: fc.constant(0),
+      fallSlope: fc.double({ min: -1, max: 0.17, noNaN: true }),
+    });
+    fc.assert(
+      fc.property(anyFlow, (flow) => {
+        expect(flowPattern(flow)).toBeTypeOf('string');
+      }),
+      { numRuns: 2000 },
+    );
   });
 
   it.each([{ quality: NaN }, { fallSlope: NaN }])('refuses %o', (change) => {

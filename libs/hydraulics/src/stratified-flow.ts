@@ -48,7 +48,7 @@ const WAVES_AT_KG_M3 = 1.2;
  * j_t = 5 √(1.2/ρ_g) m/s. The lowest root counts.
  *     r_A = [ρ_g j_g²/((ρ_l − ρ_g) g D cos β)] (u_g/j_g)² r/((A_g/D²)(1 − h)²),   r = S_i/D
  * @param friction this program's Darcy factor unless a check needs another law
- * @returns undefined where no level below 1 − 1e-7 of the bore balances: the pipe runs full
+ * @returns undefined where no level below 1 − 1e-7 of the bore balances: the pipe runs full; and for a phase of less than 1e-150 m/s
  * @throws NonPhysicalInputError for a quality outside 0 < x < 1, a flow that does not move, a slope beyond 10°, or NaN
  * Source: Taitel & Dukler, AIChE J. 22 (1976) 47-55; wavy surface: Andritsos & Hanratty, AIChE J. 33 (1987) 444-454;
  *   see docs/methods/by-pattern.md.
@@ -63,6 +63,8 @@ export function stratifiedFlow(
     throw new NonPhysicalInputError('stratifiedFlow', { quality, massFlowKgS, insideDiameterM: D, fallSlope });
   }
   const forces = forcesOf(flow, surface, friction);
+  // a creep whose velocity head vanishes in floating point has no forces to balance
+  if (forces.liquidSpeedMS ** 2 === 0 || forces.vapourSpeedMS ** 2 === 0) return undefined;
   const logit = lowestLevel(forces, fallSlope);
   if (logit === undefined) return undefined;
   const section = sectionAtLogit(logit);
