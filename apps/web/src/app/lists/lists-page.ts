@@ -27,7 +27,7 @@ import { CellDialogs } from './dialogs/cell-dialogs';
 import { DeleteDialog, type DeleteDialogData } from './dialogs/delete-dialog';
 import { type CellEdit, ListGrid } from './grid/list-grid';
 import { listContext } from './list-context';
-import { ELEMENT_LISTS, type ElementList, type ListId, type NewKind } from './list-definitions';
+import { ELEMENT_LISTS, type ElementList, type NewKind } from './list-definitions';
 import { newElementForm } from './new-element';
 
 /** How long the active row must stand before the address names it. */
@@ -67,10 +67,7 @@ export class ListsPage {
     computation: ({ list, element }, previous) =>
       untracked(() => this.listOf(element)) ?? findList(list) ?? previous?.value ?? firstList(),
   });
-  protected readonly selected = linkedSignal<ListId, readonly string[]>({
-    source: () => this.current().id,
-    computation: () => [],
-  });
+  protected readonly selected = computed(() => this.grid()?.selectedIds() ?? []);
   protected readonly tabs = computed(() => {
     const document = this.store.document();
     return ELEMENT_LISTS.map(({ id, word, count }) => ({
@@ -164,7 +161,6 @@ export class ListsPage {
     );
     if (agreed !== true) return;
     this.edit({ label, ops });
-    this.selected.set([]);
     this.grid()?.focus();
   }
 

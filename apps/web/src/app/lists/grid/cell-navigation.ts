@@ -43,7 +43,7 @@ export function cellAfterKey(
 }
 
 /** The nearest place that the grid has. */
-export function within({ row, column }: CellPosition, { rows, columns }: GridExtent): CellPosition {
+export function within({ row, column }: CellPosition, { rows, columns }: Omit<GridExtent, 'page'>): CellPosition {
   return {
     row: Math.max(HEAD_ROW, Math.min(row, rows - 1)),
     column: Math.max(0, Math.min(column, columns - 1)),

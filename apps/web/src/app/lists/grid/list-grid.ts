@@ -13,26 +13,24 @@ import {
   type ElementRef,
   inject,
   input,
-  linkedSignal,
   output,
   signal,
-  untracked,
   viewChild,
 } from '@angular/core';
 import type { EditOp } from '@riseback/network';
 import { displayUnit, type DisplayUnits, formatQuantity } from '@riseback/units';
 import { Staff } from '../../results/staff/staff';
 import { StatusMark } from '../../shared/status-mark/status-mark';
-import { arrangeRows, nextSorting, type Sorting } from '../arrange-rows';
+import type { Sorting } from '../arrange-rows';
 import type { DialogName } from '../columns/column';
 import type { CellView, ListTable, TableColumn } from '../list-table';
 import { CellChoiceEditor } from './cell-choice-editor';
 import { CellDrafts, type RefusedText } from './cell-drafts';
-import { type CellPosition, cellAfterKey, HEAD_ROW, within } from './cell-navigation';
+import { type CellPosition, cellAfterKey, HEAD_ROW } from './cell-navigation';
 import { type AcceptedText, type AfterEdit, CellTextEditor } from './cell-text-editor';
-import { gridLayout } from './grid-layout';
 import { pressedCell, ROW_HEIGHT_PX, rowsInSight, showCell } from './grid-region';
-import { extendRows, keepShown, NO_ROWS, type RowSelection, toggleAllRows, toggleRow } from './row-selection';
+import { GridState } from './grid-state';
+import { extendRows, NO_ROWS, type RowSelection, toggleAllRows, toggleRow } from './row-selection';
 
 interface Editing {
   readonly id: string;
@@ -89,7 +87,6 @@ export class ListGrid {
   readonly edited = output<CellEdit>();
   readonly dialogWanted = output<{ id: string; dialog: DialogName }>();
   readonly drawingWanted = output<string>();
-  readonly selectedChange = output<readonly string[]>();
   readonly activeChange = output<string>();
   /** For the page's live region. */
   readonly told = output<string>();
@@ -104,37 +101,15 @@ export class ListGrid {
     { originX: 'end', originY: 'bottom', overlayX: 'end', overlayY: 'top', offsetY: 4 },
     { originX: 'end', originY: 'top', overlayX: 'end', overlayY: 'bottom', offsetY: -4 },
   ];
-  protected readonly sorting = signal<Sorting | null>(null);
+  protected readonly state = new GridState(this);
   protected readonly editing = signal<Editing | null>(null);
   protected readonly focused = signal(false);
   private readonly drafts = new CellDrafts();
 
-  private readonly tableIds = computed(() => this.table().ids, { equal: sameItems });
-  /** Values that change leave rows where they are: a row that jumps away under the hand is worse than an order a moment old. */
-  protected readonly rowIds = computed(() => {
-    this.tableIds();
-    const [filter, sorting] = [this.filter(), this.sorting()];
-    return untracked(() => arrangeRows(this.table(), filter, sorting));
-  });
-  protected readonly columns = computed(() => this.table().columns.filter(({ minor }) => !minor || this.allInputs()));
-  protected readonly layout = computed(() => gridLayout(this.columns(), this.mayEdit()));
-  protected readonly selection = linkedSignal<readonly string[], RowSelection>({
-    source: this.rowIds,
-    computation: (order, previous) => keepShown(previous?.value ?? NO_ROWS, order),
-  });
-  /** Null until the person has moved: the first row's tag. */
-  private readonly position = signal<CellPosition | null>(null);
-  protected readonly active = computed(() =>
-    within(this.position() ?? { row: 0, column: this.mayEdit() ? 1 : 0 }, {
-      rows: this.rowIds().length,
-      columns: this.layout().cells.length,
-      page: 1,
-    }),
-  );
-  protected readonly activeId = computed(() => this.rowIds()[this.active().row] ?? null);
+  readonly selectedIds = this.state.selectedIds;
   protected readonly activeCellId = computed(() => {
-    const { row, column } = this.active();
-    return row === HEAD_ROW || this.rowIds().length > 0 ? this.cellId(row, column) : null;
+    const { row, column } = this.state.active();
+    return row === HEAD_ROW || this.state.rowIds().length > 0 ? this.cellId(row, column) : null;
   });
   protected readonly staffScale = computed(() => {
     const { system, atmosphericPressurePa } = this.units();
@@ -143,16 +118,11 @@ export class ListGrid {
     );
     return `${from ?? ''} to ${to ?? ''} ${displayUnit('pressure', system)}`;
   });
-  protected readonly allTicked = computed(() => {
-    const rows = this.rowIds();
-    return rows.length > 0 && this.selection().ids.size === rows.length;
-  });
-
   /** Puts the active cell on a row, in sight; false when the list does not show it. */
   showRow(id: string): boolean {
-    const row = this.rowIds().indexOf(id);
+    const row = this.state.rowIds().indexOf(id);
     if (row < 0) return false;
-    this.moveTo({ row, column: this.active().column });
+    this.moveTo({ row, column: this.state.active().column });
     this.focus();
     this.scrollToActiveSoon();
     return true;
@@ -160,7 +130,7 @@ export class ListGrid {
 
   /** The row that the person is on; null until they have moved. */
   shownRow(): string | null {
-    return this.position() === null ? null : this.activeId();
+    return this.state.hasMoved() ? this.state.activeId() : null;
   }
 
   focus(): void {
@@ -195,16 +165,12 @@ export class ListGrid {
   }
 
   protected sortDirection(column: TableColumn): Sorting['direction'] | null {
-    const sorting = this.sorting();
+    const sorting = this.state.sorting();
     return sorting?.key === column.key ? sorting.direction : null;
   }
 
   protected sortBy(column: TableColumn): void {
-    const id = this.activeId();
-    this.sorting.update((sorting) => nextSorting(sorting, column.key));
-    if (id !== null && this.active().row !== HEAD_ROW) {
-      this.position.set({ row: this.rowIds().indexOf(id), column: this.active().column });
-    }
+    this.state.sortBy(column.key);
     const direction = this.sortDirection(column);
     this.told.emit(direction === null ? 'In the order of the file' : `Sorted by ${column.title}, ${direction}`);
   }
@@ -218,12 +184,12 @@ export class ListGrid {
   protected press(event: MouseEvent): void {
     const place = pressedCell(event);
     if (place === null) return;
-    const { row, column } = this.active();
+    const { row, column } = this.state.active();
     const again = place.row === row && place.column === column && this.focused();
     this.focus();
     this.moveTo(place);
-    const cell = this.layout().cells[place.column];
-    const id = this.rowIds()[place.row];
+    const cell = this.state.layout().cells[place.column];
+    const id = this.state.rowIds()[place.row];
     if (place.row === HEAD_ROW) this.pressHead();
     else if (cell === undefined || id === undefined) return;
     else if (cell.kind === 'tick') this.tick(id, event.shiftKey);
@@ -286,29 +252,29 @@ export class ListGrid {
   }
 
   protected tickAll(): void {
-    this.select(toggleAllRows(this.selection(), this.rowIds()));
+    this.select(toggleAllRows(this.state.selection(), this.state.rowIds()));
   }
 
   private moveByKey(event: KeyboardEvent, ctrl: boolean): boolean {
     const page = rowsInSight(this.region().nativeElement);
-    const extent = { rows: this.rowIds().length, columns: this.layout().cells.length, page };
-    const to = cellAfterKey({ key: event.key, ctrl }, this.active(), extent);
+    const extent = { rows: this.state.rowIds().length, columns: this.state.layout().cells.length, page };
+    const to = cellAfterKey({ key: event.key, ctrl }, this.state.active(), extent);
     if (to === null) return false;
-    const extends_ = event.shiftKey && this.mayEdit() && to.row !== this.active().row && to.row !== HEAD_ROW;
-    const from = this.activeId();
+    const extends_ = event.shiftKey && this.mayEdit() && to.row !== this.state.active().row && to.row !== HEAD_ROW;
+    const from = this.state.activeId();
     this.moveTo(to);
     if (extends_) {
-      const start = this.selection().anchor ?? from;
-      const order = this.rowIds();
-      this.select(extendRows({ ids: this.selection().ids, anchor: start }, order, order[to.row] ?? ''));
+      const start = this.state.selection().anchor ?? from;
+      const order = this.state.rowIds();
+      this.select(extendRows({ ids: this.state.selection().ids, anchor: start }, order, order[to.row] ?? ''));
     }
     return true;
   }
 
   private actByKey(event: KeyboardEvent, ctrl: boolean): boolean {
     const { key } = event;
-    if (this.active().row === HEAD_ROW) return (key === 'Enter' || key === ' ') && this.pressHead();
-    const id = this.activeId();
+    if (this.state.active().row === HEAD_ROW) return (key === 'Enter' || key === ' ') && this.pressHead();
+    const id = this.state.activeId();
     if (id === null) return false;
     if (key === 'Enter' || key === 'F2') return this.pressCell(id);
     if (key === 'Escape') return this.escape(id);
@@ -320,14 +286,14 @@ export class ListGrid {
   }
 
   private pressHead(): boolean {
-    const cell = this.layout().cells[this.active().column];
+    const cell = this.state.activeCell();
     if (cell?.kind === 'tick') this.tickAll();
     else if (cell !== undefined && cell.column.face !== 'drawingLink') this.sortBy(cell.column);
     return true;
   }
 
   private pressCell(id: string): boolean {
-    const cell = this.layout().cells[this.active().column];
+    const cell = this.state.activeCell();
     if (cell?.kind === 'tick') return this.tick(id, false);
     if (cell?.column.face === 'drawingLink') {
       this.drawingWanted.emit(id);
@@ -337,29 +303,29 @@ export class ListGrid {
   }
 
   private escape(id: string): boolean {
-    const cell = this.layout().cells[this.active().column];
+    const cell = this.state.activeCell();
     if (cell?.kind === 'column' && this.draft(id, cell.column) !== undefined)
       this.drafts.drop({ id, key: cell.column.key });
-    else if (this.selection().ids.size > 0) this.clearSelection();
+    else if (this.state.selection().ids.size > 0) this.clearSelection();
     else return false;
     return true;
   }
 
   private tick(id: string, extend: boolean): boolean {
     if (!this.mayEdit()) return false;
-    this.select(extend ? extendRows(this.selection(), this.rowIds(), id) : toggleRow(this.selection(), id));
+    this.select(
+      extend ? extendRows(this.state.selection(), this.state.rowIds(), id) : toggleRow(this.state.selection(), id),
+    );
     return true;
   }
 
   private selectAllRows(): boolean {
-    if (!this.allTicked()) this.tickAll();
+    if (!this.state.allTicked()) this.tickAll();
     return true;
   }
 
   private select(selection: RowSelection): void {
-    this.selection.set(selection);
-    const order = this.rowIds();
-    this.selectedChange.emit(order.filter((id) => selection.ids.has(id)));
+    this.state.selection.set(selection);
     // the bulk bar comes and goes under the region
     this.scrollToActiveSoon();
     const count = selection.ids.size;
@@ -368,8 +334,8 @@ export class ListGrid {
 
   /** @param firstKey what the person typed on the closed cell, which begins a new text; null keeps the old one */
   private startEditing(firstKey: string | null): boolean {
-    const cell = this.layout().cells[this.active().column];
-    const id = this.activeId();
+    const cell = this.state.activeCell();
+    const id = this.state.activeId();
     if (id === null || cell?.kind !== 'column') return false;
     const { key } = cell.column;
     const editor = this.mayEdit() ? this.table().editor(id, key) : null;
@@ -394,7 +360,7 @@ export class ListGrid {
   }
 
   private emptyCell(id: string): boolean {
-    const cell = this.layout().cells[this.active().column];
+    const cell = this.state.activeCell();
     if (cell?.kind !== 'column') return false;
     const { key } = cell.column;
     const editor = this.table().editor(id, key);
@@ -413,7 +379,7 @@ export class ListGrid {
 
   private moveAfterEdit(then: AfterEdit): void {
     if (then === 'stay') return;
-    const { row, column } = this.active();
+    const { row, column } = this.state.active();
     const down = then === 'down' ? 1 : then === 'up' ? -1 : 0;
     const right = then === 'right' ? 1 : then === 'left' ? -1 : 0;
     this.moveTo({ row: Math.max(0, row + down), column: column + right });
@@ -421,15 +387,15 @@ export class ListGrid {
   }
 
   private moveTo(to: CellPosition): void {
-    const before = this.activeId();
-    this.position.set(within(to, { rows: this.rowIds().length, columns: this.layout().cells.length, page: 1 }));
+    const before = this.state.activeId();
+    this.state.moveTo(to);
     this.scrollToActive();
-    const id = this.activeId();
+    const id = this.state.activeId();
     if (id !== null && id !== before) this.activeChange.emit(id);
   }
 
   private scrollToActive(): void {
-    showCell(this.region().nativeElement, this.layout(), this.active());
+    showCell(this.region().nativeElement, this.state.layout(), this.state.active());
   }
 
   /** Again when the page has been drawn: the region may have grown or shrunk by then. */
@@ -438,8 +404,4 @@ export class ListGrid {
       this.scrollToActive();
     });
   }
-}
-
-function sameItems(a: readonly string[], b: readonly string[]): boolean {
-  return a.length === b.length && a.every((item, index) => item === b[index]);
 }
