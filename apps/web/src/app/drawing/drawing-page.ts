@@ -1,4 +1,14 @@
-import { ChangeDetectionStrategy, Component, computed, effect, inject, input, signal, untracked } from '@angular/core';
+import {
+  ChangeDetectionStrategy,
+  Component,
+  computed,
+  DOCUMENT,
+  effect,
+  inject,
+  input,
+  signal,
+  untracked,
+} from '@angular/core';
 import { Router } from '@angular/router';
 import type { Position } from '@riseback/network';
 import { NetworkStore } from '../networks/network-store';
@@ -17,6 +27,8 @@ import { DrawingSheet } from './sheet/drawing-sheet';
 import { NodePlacing } from './sheet/node-placing';
 import { SheetKeys } from './sheet/sheet-keys';
 import { TagFinder } from './tag-finder';
+
+const NARROW = '(width < 720px)';
 
 /** The drawing of a network: sheet, tray, findings, inspector. Which element is looked at stands in the address. */
 @Component({
@@ -37,8 +49,10 @@ export class DrawingPage {
   /** From the address: the element looked at. */
   readonly element = input<string>();
 
-  protected readonly findingsOpen = signal(true);
-  protected readonly inspectorOpen = signal(true);
+  /** On a phone the sheet has all the room until something is chosen. */
+  private readonly narrow = inject(DOCUMENT).defaultView?.matchMedia(NARROW).matches === true;
+  protected readonly findingsOpen = signal(!this.narrow);
+  protected readonly inspectorOpen = signal(!this.narrow);
   protected readonly findings = computed(() => {
     const document = this.store.document();
     if (document === null) return [];
@@ -71,6 +85,10 @@ export class DrawingPage {
       untracked(() => {
         if ((this.element() ?? null) !== chosen) this.writeAddress(chosen);
       });
+    });
+    effect(() => {
+      const chosen = this.state.chosenId();
+      if (this.narrow) this.inspectorOpen.set(chosen !== null);
     });
     effect(() => {
       if (this.state.draft() !== null || this.state.fieldsAsked() > 0) this.inspectorOpen.set(true);

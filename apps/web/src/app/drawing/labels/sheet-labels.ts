@@ -1,5 +1,5 @@
 import type { Position } from '@riseback/network';
-import { type DisplayUnits, formatQuantity } from '@riseback/units';
+import { type DisplayUnits, formatQuantity, type QuantityKind } from '@riseback/units';
 import { sizeWords } from '../model/accessible-name';
 import { nameOf } from '../model/element-words';
 import type { Concern, NodeView, PipeView, Side } from '../model/element-views';
@@ -53,10 +53,14 @@ interface Subject {
   readonly pointedAt: ReadonlySet<string>;
 }
 
-/** Every label wanted at this zoom, in order of right. Places are sheet coordinates times zoom. */
+/**
+ * Every label wanted at this zoom, in order of right. Places are sheet coordinates times zoom.
+ * @param kind of the values, which are what is coloured
+ */
 export function sheetLabels(
   { nodes, pipes, areas, selected, pointedAt }: Subject,
   zoom: number,
+  kind: QuantityKind,
   units: DisplayUnits,
 ): SheetLabel[] {
   const scale = symbolScale(zoom) * zoom;
@@ -64,7 +68,7 @@ export function sheetLabels(
   for (const view of nodes) {
     const chosen = selected.has(view.id) || pointedAt.has(view.id);
     if (!chosen && zoom < nodeZoom(view)) continue;
-    const lines = nodeLines(view, zoom, chosen, units);
+    const lines = nodeLines(view, zoom, chosen, kind, units);
     if (lines.length === 0) continue;
     const candidates = nodePlaces(view, lines, chosen ? scale * ROOM_FOR_BRACKETS : scale, zoom);
     wanted.push({ key: `n:${view.id}`, elementId: view.id, lines, candidates, right: nodeRight(view, chosen) });
@@ -116,14 +120,21 @@ function nodeRight({ node, concern }: NodeView, chosen: boolean): number {
   return node.kind === 'junction' ? 7 : 5;
 }
 
-function nodeLines(view: NodeView, zoom: number, chosen: boolean, units: DisplayUnits): LabelLine[] {
-  const { node, concern, pressurePa } = view;
-  const value = pressurePa === undefined ? undefined : formatQuantity(pressurePa, 'pressure', units);
+function nodeLines(
+  view: NodeView,
+  zoom: number,
+  chosen: boolean,
+  kind: QuantityKind,
+  units: DisplayUnits,
+): LabelLine[] {
+  const { node, concern, shown } = view;
+  const value = shown === undefined ? undefined : formatQuantity(shown, kind, units);
   const named = node.kind === 'junction' ? (chosen ? nameOf(node) : (node.tag ?? '')) : nameOf(node);
   const lines: LabelLine[] = [];
   const vessel = node.kind === 'receiver' || node.kind === 'flashVessel';
   if (named !== '' && (chosen || vessel || zoom >= FROM_ZOOM.tags || concern !== null)) {
-    lines.push({ text: named, look: vessel ? 'name' : 'tag', concern: null });
+    // without a value to stand beside, the status shape goes to the tag
+    lines.push({ text: named, look: vessel ? 'name' : 'tag', concern: value === undefined ? concern : null });
   }
   if (value !== undefined && (chosen || node.kind !== 'junction' || zoom >= FROM_ZOOM.pipes)) {
     lines.push({ text: value, look: 'value', concern });

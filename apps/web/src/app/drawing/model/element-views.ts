@@ -20,6 +20,8 @@ export interface NodeView {
   readonly concern: Concern | null;
   /** Back pressure of a trap, pressure of any other node, Pa absolute. */
   readonly pressurePa: number | undefined;
+  /** What its label shows: the quantity that is coloured. */
+  readonly shown: number | undefined;
   /** Where the first pipe goes; labels keep to the other side. */
   readonly outlet: Side;
   /** Read out. */
@@ -86,6 +88,7 @@ export function nodeView(
     level: coloured === undefined ? null : classOf(coloured, scale),
     concern: worstConcern([...(trap?.checks ?? []), ...warnings]),
     pressurePa: trap?.backPressurePa ?? result?.pressurePa,
+    shown: coloured,
     outlet: outletSide(id, network),
     name: nodeName(node, { trap, result, warnings, selected }, units),
   };

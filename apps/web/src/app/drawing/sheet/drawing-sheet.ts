@@ -111,6 +111,7 @@ export class DrawingSheet {
         pointedAt: this.pointedAt(),
       },
       this.viewport().zoom,
+      this.scene.scale().kind,
       this.store.units(),
     ),
   );
@@ -205,7 +206,7 @@ export class DrawingSheet {
     };
     const covered = points.some((point) => {
       const { x, y } = toScreen(point, { ...size, zoom: plain.zoom, ...pan });
-      return x < LEGEND.width && y < LEGEND.height;
+      return size.width > 2 * LEGEND.width && x < LEGEND.width && y < LEGEND.height;
     });
     this.canvas().show(covered ? fitView(points, size, { ...none, top: LEGEND.height - 32 }) : plain);
   }
