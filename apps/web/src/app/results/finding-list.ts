@@ -130,6 +130,7 @@ function ofProblem(document: NetworkDocument, problem: Problem | undefined, code
     severity: 'fail',
     code,
     what: `${detail.charAt(0).toUpperCase()}${detail.slice(1)}`,
+    ...(code === 'refused' ? { remedy: 'Change what is named here, or look at another case.' } : {}),
   }));
 }
 

@@ -99,8 +99,8 @@ describe('LedgerPage', () => {
   it('reads five psi of lift for ten feet, by the ledger and by hand', async () => {
     await opened('T1');
     const closing = [...element.querySelectorAll('tfoot td')].map((cell) => cell.textContent.trim());
-    // columns: no, place, bore, length, rise, flow, flash %, static, friction, flash, running, bar, hand adds, hand running
-    expect([closing[7], closing[12], closing[13]]).toEqual(['5.00', '5.00', '5.00']);
+    // columns: no, place and bore, length, rise, flow, flash %, static, friction, flash, running, bar, hand adds, hand running
+    expect([closing[6], closing[11], closing[12]]).toEqual(['5.00', '5.00', '5.00']);
     expect(text('.hand-check')).toMatch(/^Hand check is \d\.\d\d psi lower: it leaves out .*flash steam/);
     expect(element.querySelectorAll('tbody tr')).toHaveLength(4);
     expect(element.querySelector('app-lift-profile [role=img]')?.getAttribute('aria-label')).toContain(
