@@ -1,6 +1,8 @@
 import { defineConfig } from '@playwright/test';
 
-const port = 4390;
+/** While developing, RISEBACK_TEST_PORT names a server that is already up. */
+const running = process.env['RISEBACK_TEST_PORT'];
+const port = Number(running ?? 4390);
 
 /** Debian's chromium drives the built application on a database of its own. */
 const config = defineConfig({
@@ -34,6 +36,7 @@ const config = defineConfig({
     env: { PORT: String(port) },
     url: `http://localhost:${String(port)}/readyz`,
     timeout: 240_000,
+    reuseExistingServer: running !== undefined,
     gracefulShutdown: { signal: 'SIGTERM', timeout: 15_000 },
   },
 });
