@@ -86,7 +86,7 @@ export class GraphCanvas {
       const { x, y } = toSheet({ x: 0, y: 0 }, view);
       const [stepX, stepY] = [view.width / view.zoom / 2, view.height / view.zoom / 2];
       const [left, top] = [Math.floor(x / stepX - 1) * stepX, Math.floor(y / stepY - 1) * stepY];
-      return { left, top, right: left + 5 * stepX, bottom: top + 5 * stepY };
+      return { left, top, right: left + 4 * stepX, bottom: top + 4 * stepY };
     },
     { equal: (a, b) => a.left === b.left && a.top === b.top && a.right === b.right && a.bottom === b.bottom },
   );

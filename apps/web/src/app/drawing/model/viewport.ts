@@ -25,7 +25,7 @@ export interface Inset {
 export const ZOOM_RANGE = { least: 0.1, most: 4 } as const;
 /** Fitting never blows a small network up beyond this. */
 const MOST_FIT_ZOOM = 1.4;
-const LABEL_ROOM = 48;
+const LABEL_ROOM = { most: 48, share: 0.06 } as const;
 
 export function toScreen({ x, y }: Position, { zoom, panX, panY }: Viewport): Position {
   return { x: x * zoom + panX, y: y * zoom + panY };
@@ -45,8 +45,9 @@ export function fitView(points: Iterable<Position>, size: { width: number; heigh
     [left, right, top, bottom] = [Math.min(left, x), Math.max(right, x), Math.min(top, y), Math.max(bottom, y)];
   }
   if (left === Infinity) return { zoom: 1, centre: { x: size.width / 2, y: size.height / 2 } };
-  const width = Math.max(1, size.width - inset.left - inset.right - 2 * LABEL_ROOM);
-  const height = Math.max(1, size.height - inset.top - inset.bottom - 2 * LABEL_ROOM);
+  const room = Math.min(LABEL_ROOM.most, size.width * LABEL_ROOM.share);
+  const width = Math.max(1, size.width - inset.left - inset.right - 2 * room);
+  const height = Math.max(1, size.height - inset.top - inset.bottom - 2 * room);
   const wanted = Math.min(width / Math.max(1, right - left), height / Math.max(1, bottom - top), MOST_FIT_ZOOM);
   const zoom = clampZoom(wanted);
   return {
