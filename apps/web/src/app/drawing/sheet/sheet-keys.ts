@@ -47,7 +47,7 @@ export interface Zoomable {
   fit(): void;
 }
 
-/** The keyboard model of the drawing (docs/drawing-keys.md): each key does one thing and says what it did. */
+/** The keyboard model of the drawing (`KeyList` says it to people): each key does one thing and says what it did. */
 @Injectable()
 export class SheetKeys {
   private readonly store = inject(NetworkStore);
