@@ -67,7 +67,7 @@ export class ListsPage {
     computation: ({ list, element }, previous) =>
       untracked(() => this.listOf(element)) ?? findList(list) ?? previous?.value ?? firstList(),
   });
-  protected readonly selected = computed(() => this.grid()?.selectedIds() ?? []);
+  protected readonly selected = signal<readonly string[]>([]);
   protected readonly tabs = computed(() => {
     const document = this.store.document();
     return ELEMENT_LISTS.map(({ id, word, count }) => ({

@@ -15,7 +15,7 @@ import type { Choice } from '../columns/column';
       hideSingleSelectionIndicator
       (selectionChange)="picked.emit($event.value)"
       (closed)="closed.emit()"
-      (keydown)="$event.stopPropagation()"
+      (keydown)="keepKeys($event)"
     >
       @for (choice of choices(); track choice.value) {
         <mat-option [value]="choice.value">{{ choice.word }}</mat-option>
@@ -59,5 +59,10 @@ export class CellChoiceEditor {
       this.select().focus({ preventScroll: true });
       this.select().open();
     });
+  }
+
+  /** The grid behind must not act on the key that chose. Escape goes on, since the overlay listens for it at the document. */
+  protected keepKeys(event: KeyboardEvent): void {
+    if (event.key !== 'Escape') event.stopPropagation();
   }
 }

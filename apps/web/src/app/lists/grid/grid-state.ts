@@ -32,7 +32,9 @@ export class GridState {
     source: this.rowIds,
     computation: (order, previous) => keepShown(previous?.value ?? NO_ROWS, order),
   });
-  readonly selectedIds = computed(() => this.rowIds().filter((id) => this.selection().ids.has(id)));
+  readonly selectedIds = computed(() => this.rowIds().filter((id) => this.selection().ids.has(id)), {
+    equal: sameItems,
+  });
   readonly allTicked = computed(() => this.rowIds().length > 0 && this.selection().ids.size === this.rowIds().length);
 
   /** Null until the person has moved: the first row's tag. */

@@ -1,4 +1,6 @@
-import { ChangeDetectionStrategy, Component, computed, signal, viewChild } from '@angular/core';
+import { TestKey } from '@angular/cdk/testing';
+import { UnitTestElement } from '@angular/cdk/testing/testbed';
+import { ChangeDetectionStrategy, Component, computed, signal } from '@angular/core';
 import { type ComponentFixture, TestBed } from '@angular/core/testing';
 import { applyBatch, type NetworkDocument } from '@riseback/network';
 import { beforeEach, describe, expect, it } from 'vitest';
@@ -19,6 +21,7 @@ import { type CellEdit, ListGrid } from './list-grid';
     [units]="{ system: 'us', atmosphericPressurePa: 101325 }"
     [staffTopPa]="7e5"
     (edited)="take($event)"
+    (selectedChange)="selected.set($event)"
     (told)="told.set($event)"
     (drawingWanted)="drawing.set($event)"
   />`,
@@ -29,8 +32,8 @@ class Host {
   readonly filter = signal('');
   readonly told = signal('');
   readonly drawing = signal('');
+  readonly selected = signal<readonly string[]>([]);
   readonly edits: CellEdit[] = [];
-  readonly grid = viewChild.required(ListGrid);
   readonly table = computed(() => {
     const [traps] = ELEMENT_LISTS;
     if (traps === undefined) throw new Error('no lists');
@@ -65,6 +68,9 @@ describe('ListGrid', () => {
     target.dispatchEvent(new KeyboardEvent('keydown', { key, bubbles: true, cancelable: true, ...init }));
     await fixture.whenStable();
   };
+  /** Keys with all that Material's own key handling looks at. */
+  const keysTo = (target: HTMLElement, ...keys: TestKey[]): Promise<void> =>
+    new UnitTestElement(target, () => fixture.whenStable().then(() => undefined)).sendKeys(...keys);
   const active = (): string => {
     const id = grid.getAttribute('aria-activedescendant') ?? '';
     return document.getElementById(id)?.textContent.trim() ?? '';
@@ -154,11 +160,11 @@ describe('ListGrid', () => {
   it('ticks rows with Space, extends with Shift, and forgets rows that the filter hides', async () => {
     await press(' ');
     await press('ArrowDown', { shiftKey: true });
-    const { grid: list, filter } = fixture.componentInstance;
-    expect(list().selectedIds()).toEqual(['T1', 'T2']);
+    const { selected, filter } = fixture.componentInstance;
+    expect(selected()).toEqual(['T1', 'T2']);
     filter.set('hall');
     await fixture.whenStable();
-    expect(list().selectedIds()).toEqual(['T1']);
+    expect(selected()).toEqual(['T1']);
   });
 
   it('empties an optional cell with Delete and says when it cannot', async () => {
@@ -169,6 +175,21 @@ describe('ListGrid', () => {
     for (let step = 0; step < 3; step += 1) await press('ArrowRight');
     await press('Delete');
     expect(fixture.componentInstance.edits).toMatchObject([{ ops: [{ key: 'area', from: 'Hall' }] }]);
+  });
+
+  it('chooses a word from a list, and keeps the old one on Escape', async () => {
+    await press('Home');
+    for (let step = 0; step < 4; step += 1) await press('ArrowRight');
+    await press('Enter');
+    const select = element('mat-select');
+    await keysTo(select, TestKey.DOWN_ARROW, TestKey.ESCAPE);
+    expect(document.querySelector('mat-option')).toBeNull();
+    expect(fixture.componentInstance.edits).toEqual([]);
+    await press('Enter');
+    const again = element('mat-select');
+    await keysTo(again, TestKey.DOWN_ARROW, TestKey.ENTER);
+    expect(fixture.componentInstance.edits).toMatchObject([{ ops: [{ key: 'trapType', to: 'invertedBucket' }] }]);
+    expect(element('[role=grid]').querySelector('mat-select')).toBeNull();
   });
 
   it('opens the drawing at the row', async () => {
@@ -185,6 +206,6 @@ describe('ListGrid', () => {
     await press(' ');
     expect(grid.getAttribute('aria-readonly')).toBe('true');
     expect(grid.querySelector('input')).toBeNull();
-    expect(fixture.componentInstance.grid().selectedIds()).toEqual([]);
+    expect(fixture.componentInstance.selected()).toEqual([]);
   });
 });

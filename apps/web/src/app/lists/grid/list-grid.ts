@@ -10,11 +10,13 @@ import {
   ChangeDetectorRef,
   Component,
   computed,
+  effect,
   type ElementRef,
   inject,
   input,
   output,
   signal,
+  untracked,
   viewChild,
 } from '@angular/core';
 import type { EditOp } from '@riseback/network';
@@ -87,6 +89,8 @@ export class ListGrid {
   readonly edited = output<CellEdit>();
   readonly dialogWanted = output<{ id: string; dialog: DialogName }>();
   readonly drawingWanted = output<string>();
+  /** The ticked rows in the order shown; again when the filter or a deletion takes some away. */
+  readonly selectedChange = output<readonly string[]>();
   readonly activeChange = output<string>();
   /** For the page's live region. */
   readonly told = output<string>();
@@ -106,7 +110,6 @@ export class ListGrid {
   protected readonly focused = signal(false);
   private readonly drafts = new CellDrafts();
 
-  readonly selectedIds = this.state.selectedIds;
   protected readonly activeCellId = computed(() => {
     const { row, column } = this.state.active();
     return row === HEAD_ROW || this.state.rowIds().length > 0 ? this.cellId(row, column) : null;
@@ -118,6 +121,15 @@ export class ListGrid {
     );
     return `${from ?? ''} to ${to ?? ''} ${displayUnit('pressure', system)}`;
   });
+  constructor() {
+    effect(() => {
+      const ids = this.state.selectedIds();
+      untracked(() => {
+        this.selectedChange.emit(ids);
+      });
+    });
+  }
+
   /** Puts the active cell on a row, in sight; false when the list does not show it. */
   showRow(id: string): boolean {
     const row = this.state.rowIds().indexOf(id);
