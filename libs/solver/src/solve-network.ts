@@ -2,11 +2,11 @@ import type { FileCase, NetworkFile } from '@riseback/network';
 import { assembleResult } from './assemble-result';
 import { limitsInForce } from './check-limits';
 import { atElement, ElementFailure } from './element-failure';
-import { ambientLiquidEnthalpyJKg, flowAndEnergy } from './flow-and-energy';
+import { ambientLiquidEnthalpyJKg } from './flow-and-energy';
+import { networkState } from './network-state';
 import { findCase, operatingNode, type OperatingNode } from './operating-case';
 import { pipeGeometries } from './pipe-geometry';
 import { MARCH_TOLERANCE_PA, type GradientEvaluation } from './pipe-march';
-import { pressureWalk } from './pressure-walk';
 import { noSolution, notAvailable, notAvailableYet, unknownCase, unsolvable, type Refusal } from './refusal';
 import { returnTree } from './return-tree';
 import type { SolveResult } from './solve-result';
@@ -43,21 +43,20 @@ export function solveNetwork(file: NetworkFile, options: SolveOptions): SolveRes
   try {
     const nodes = operatingNodes(file, operatingCase);
     const ambientEnthalpyJKg = ambientLiquidEnthalpyJKg(file.site.ambientTemperatureK);
-    const flows = { ...flowAndEnergy(tree, nodes, geometries, ambientEnthalpyJKg), ambientEnthalpyJKg };
     const march = {
       method: file.method,
       tolerancePa: options.marchTolerancePa ?? MARCH_TOLERANCE_PA,
       onGradient: options.onGradient,
     };
-    const walk = pressureWalk(file, tree, nodes, geometries, flows, march);
+    const state = networkState({ file, geometries, tree, ambientEnthalpyJKg }, nodes, march);
     return assembleResult({
       file,
       caseId: operatingCase.id,
-      tree,
       nodes,
       geometries,
-      flows,
-      walk,
+      tree: state.tree,
+      flows: state.flows,
+      walk: state.walk,
       limits: limitsInForce(file.limits),
     });
   } catch (error) {
