@@ -88,7 +88,7 @@ export const TRAP_COLUMNS: readonly Column<Trap>[] = [
     ({ id }, { traps }) => traps.get(id)?.differentialPa,
   ),
   findingColumn<Trap>(
-    { title: 'Verdict', widthPx: 210 },
+    { title: 'Verdict', widthPx: 192 },
     ({ id }, { traps }) => (traps.get(id)?.checks.length ?? 0) > 0,
   ),
 ];
