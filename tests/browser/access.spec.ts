@@ -6,7 +6,7 @@ test('a viewer reads everything and can change nothing', async ({ page }) => {
   const network = await demoNetworkPath(page);
   await page.goto(`${network}/drawing?element=TR5`);
   const inspector = page.getByRole('complementary', { name: 'Inspector' });
-  await expect(inspector.getByRole('term').filter({ hasText: 'Back pressure' })).toBeVisible();
+  await expect(inspector.getByRole('img', { name: /Back pressure/ })).toBeVisible();
   await expect(page.getByRole('toolbar').getByRole('button', { name: 'Trap' })).toHaveCount(0);
   await inspector.getByRole('tab', { name: 'Inputs' }).click();
   await expect(inspector.getByLabel('Load', { exact: true })).toBeDisabled();

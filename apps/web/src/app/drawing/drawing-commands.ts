@@ -14,7 +14,7 @@ import { NetworkStore } from '../networks/network-store';
 import { DrawingScene } from './drawing-scene';
 import { DrawingState, IDLE } from './drawing-state';
 import { NOTHING_DISPLACED } from './model/drawn-network';
-import { KIND_WORDS, nameOf } from './model/element-words';
+import { KIND_WORDS, nameOf } from '../shared/element-words';
 import { downstreamOf } from './model/navigation';
 
 /** Prefixes of new ids, by kind. */

@@ -1,5 +1,5 @@
 import { inOrder, type NetworkDocument, type NetworkNode, type NodeKind, type PipeRun } from '@riseback/network';
-import { nameOf } from '../model/element-words';
+import { nameOf } from '../../shared/element-words';
 import { nextTag } from '../model/placement';
 
 /** What a new element's fields are filled with, and where from: nothing is assumed silently. */

@@ -1,6 +1,6 @@
 import { DISCHARGES, type NetworkDocument, type NetworkNode, type NodeKind, TRAP_TYPES } from '@riseback/network';
 import type { QuantityKind } from '@riseback/units';
-import { TRAP_TYPE_WORDS } from '../model/element-words';
+import { TRAP_TYPE_WORDS } from '../../shared/element-words';
 
 export interface Choice {
   readonly value: string;

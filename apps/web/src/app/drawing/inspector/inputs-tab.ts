@@ -2,7 +2,7 @@ import { ChangeDetectionStrategy, Component, computed, inject, input, linkedSign
 import type { Fitting, NetworkNode, PipeRun, RoutePiece, Trap } from '@riseback/network';
 import { NetworkStore } from '../../networks/network-store';
 import { DrawingCommands } from '../drawing-commands';
-import { isPipe, nameOf } from '../model/element-words';
+import { isPipe, nameOf } from '../../shared/element-words';
 import { nodeFields, PIPE_FIELDS_AFTER_SIZE, PIPE_FIELDS_BEFORE_SIZE, PIPE_FIELDS_LAST } from './element-fields';
 import { FittingsEditor } from './fittings-editor';
 import { type ChosenSize, PipeSizeField } from './pipe-size-field';

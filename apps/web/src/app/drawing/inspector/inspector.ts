@@ -16,7 +16,7 @@ import { NetworkStore } from '../../networks/network-store';
 import { type Status, StatusMark } from '../../shared/status-mark/status-mark';
 import { DrawingScene } from '../drawing-scene';
 import { DrawingState } from '../drawing-state';
-import { isPipe, KIND_WORDS, nameOf, TRAP_TYPE_WORDS } from '../model/element-words';
+import { isPipe, KIND_WORDS, nameOf, TRAP_TYPE_WORDS } from '../../shared/element-words';
 import { DeletePrompt } from '../sheet/delete-prompt';
 import { ElementIcon } from '../symbols/element-icon';
 import { InputsTab } from './inputs-tab';

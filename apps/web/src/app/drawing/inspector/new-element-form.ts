@@ -16,7 +16,7 @@ import type { PipeSize } from '@riseback/network';
 import { NetworkStore } from '../../networks/network-store';
 import { DrawingCommands } from '../drawing-commands';
 import { type Draft, DrawingState } from '../drawing-state';
-import { KIND_WORDS, nameOf } from '../model/element-words';
+import { KIND_WORDS, nameOf } from '../../shared/element-words';
 import { ElementIcon } from '../symbols/element-icon';
 import { type DraftDefaults, nodeDefaults, pipeDefaults } from './draft-defaults';
 import { ASKED_FIELDS, PIPE_FIELDS_BEFORE_SIZE } from './element-fields';

@@ -36,7 +36,10 @@ export class PipeSizeField {
   );
   protected readonly ownBore = computed(() => this.schedule() === OWN_BORE);
   protected readonly schedules = [
-    ...pipeSizes().map(({ standard, schedule }) => ({ value: schedule, words: `${standard}, ${schedule}` })),
+    ...pipeSizes().map(({ standard, schedule }) => ({
+      value: schedule,
+      words: schedule.startsWith(standard) ? schedule : `${standard}, ${schedule}`,
+    })),
     { value: OWN_BORE, words: 'Bore of its own' },
   ];
   protected readonly sizes = computed(() => {

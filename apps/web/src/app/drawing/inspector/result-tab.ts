@@ -5,7 +5,7 @@ import { formatQuantity, type QuantityKind } from '@riseback/units';
 import { NetworkStore } from '../../networks/network-store';
 import { backPressureLimit } from '../../results/back-pressure-limit';
 import { Staff } from '../../results/staff/staff';
-import { isPipe, nameOf } from '../model/element-words';
+import { isPipe, nameOf } from '../../shared/element-words';
 import { CheckList } from './check-list';
 
 interface Row {

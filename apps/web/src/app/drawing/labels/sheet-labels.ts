@@ -1,7 +1,7 @@
 import type { Position } from '@riseback/network';
 import { type DisplayUnits, formatQuantity, type QuantityKind } from '@riseback/units';
 import { sizeWords } from '../model/accessible-name';
-import { nameOf } from '../model/element-words';
+import { nameOf } from '../../shared/element-words';
 import type { Concern, NodeView, PipeView, Side } from '../model/element-views';
 import { longestPiece, middle, pieces } from '../model/geometry';
 import type { AreaOutline } from '../sheet/area-outlines';

@@ -2,7 +2,7 @@ import type { NodeResult, PipeResult, TrapCheck, TrapResult, Verdict } from '@ri
 import type { NetworkNode, PipeRun } from '@riseback/network';
 import { type DisplayUnits, formatQuantity } from '@riseback/units';
 import { checkName } from '../../results/finding-words';
-import { KIND_WORDS, nameOf } from './element-words';
+import { KIND_WORDS, nameOf } from '../../shared/element-words';
 
 export interface NodeFacts {
   readonly trap: TrapResult | undefined;

@@ -16,7 +16,7 @@ describe('nearestFreePoint', () => {
     ];
     const free = nearestFreePoint({ x: 0, y: 0 }, { nodes, lines });
     expect(free).not.toEqual({ x: 0, y: 0 });
-    expect(Math.hypot(free.x, free.y)).toBe(2 * GRID);
+    expect(Math.hypot(free.x, free.y)).toBe(4 * GRID);
     expect(free.y).not.toBe(40);
   });
 

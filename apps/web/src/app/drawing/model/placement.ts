@@ -4,7 +4,7 @@ import { distance, distanceToPiece, pieces } from './geometry';
 /** Step of the drawing's grid, drawing units. */
 export const GRID = 20;
 /** Symbols nearer than this would touch each other's labels. */
-const CLEARANCE = 2 * GRID;
+const CLEARANCE = 4 * GRID;
 const FARTHEST_RING = 60;
 
 export function snap(value: number): number {

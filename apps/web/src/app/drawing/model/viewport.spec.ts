@@ -53,7 +53,8 @@ describe('the window', () => {
     expect(toScreen({ x: 600, y: 100 }, { ...viewport, panX }).x).toBe(SIZE.width - 40);
   });
 
-  it('keeps symbols between 0.8 and 1.6 of their size', () => {
-    expect([0.1, 1, 4].map((zoom) => symbolScale(zoom) * zoom)).toEqual([0.8, 1, 1.6]);
+  it('keeps symbols between 0.8 and 1.6 of their size, and lets them shrink where they would cover each other', () => {
+    expect([0.3, 0.5, 1, 4].map((zoom) => symbolScale(zoom) * zoom)).toEqual([0.8, 0.8, 1, 1.6]);
+    expect(symbolScale(0.15) * 0.15).toBeCloseTo(0.4, 12);
   });
 });

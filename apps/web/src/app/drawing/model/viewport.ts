@@ -72,9 +72,16 @@ export function centreToShow(place: Position, viewport: Viewport, margin: number
   return toSheet({ x: viewport.width / 2 + dx, y: viewport.height / 2 + dy }, viewport);
 }
 
-/** Symbols keep between 0.8 and 1.6 of their size on the screen; this is the factor on the sheet that does it. */
+/** Below this zoom symbols four grid steps apart would run into each other at the size they keep above it. */
+const CROWDED_ZOOM = 0.3;
+
+/**
+ * Symbols keep between 0.8 and 1.6 of their size on the screen, and shrink with the sheet where it is so small that they would cover each
+ * other; this is the factor on the sheet that does it.
+ */
 export function symbolScale(zoom: number): number {
-  return Math.min(1.6, Math.max(0.8, zoom)) / zoom;
+  const least = 0.8 * Math.min(1, zoom / CROWDED_ZOOM);
+  return Math.min(1.6, Math.max(least, zoom)) / zoom;
 }
 
 function outside(value: number, low: number, high: number): number {

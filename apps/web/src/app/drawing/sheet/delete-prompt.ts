@@ -4,7 +4,7 @@ import { firstValueFrom } from 'rxjs';
 import { DrawingCommands } from '../drawing-commands';
 import { DrawingScene } from '../drawing-scene';
 import { DrawingState } from '../drawing-state';
-import { nameOf } from '../model/element-words';
+import { nameOf } from '../../shared/element-words';
 import { DeleteDialog, type DeleteQuestion } from './delete-dialog';
 
 /** Says what goes along before anything is deleted. In the drawing page's `providers`. */

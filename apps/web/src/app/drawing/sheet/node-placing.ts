@@ -2,13 +2,13 @@ import { inject, Injectable } from '@angular/core';
 import type { NodeKind, Position } from '@riseback/network';
 import { DrawingScene } from '../drawing-scene';
 import { DrawingState, IDLE } from '../drawing-state';
-import { KIND_WORDS } from '../model/element-words';
+import { KIND_WORDS } from '../../shared/element-words';
 import { FIELD } from '../model/sheet-zones';
 import { placeOf } from '../model/navigation';
 import { GRID, nearestFreePoint, snapPoint } from '../model/placement';
 
 /** How far from the focused element a new one is put, before it looks for free room. */
-const BESIDE = 4 * GRID;
+const BESIDE = 6 * GRID;
 
 /** Puts a new node somewhere and asks for its fields; it joins the network when they are given. */
 @Injectable()

@@ -6,7 +6,7 @@ import { DrawingScene } from '../drawing-scene';
 import { DrawingState, IDLE, type Mode } from '../drawing-state';
 import { movableBends, shiftBend, shiftNodes } from '../model/displacement';
 import { NOTHING_DISPLACED } from '../model/drawn-network';
-import { isPipe, KIND_WORDS, nameOf } from '../model/element-words';
+import { isPipe, KIND_WORDS, nameOf } from '../../shared/element-words';
 import {
   type Direction,
   downstreamOf,

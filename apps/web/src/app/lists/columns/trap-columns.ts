@@ -2,7 +2,8 @@ import { inOrder, type NetworkNode, setOp, type Trap } from '@riseback/network';
 import type { Choice, Column, ListContext } from './column';
 import { choiceColumn, keySet, quantityColumn, resultColumn, textColumn } from './column-kinds';
 import { distinct, elevationColumn, findingColumn, nameColumns, noteColumn } from './shared-columns';
-import { CONTROL_WORDS, DISCHARGE_WORDS, TRAP_TYPE_WORDS } from './trap-words';
+import { TRAP_TYPE_WORDS } from '../../shared/element-words';
+import { CONTROL_WORDS, DISCHARGE_WORDS } from './trap-words';
 
 export const TRAP_COLUMNS: readonly Column<Trap>[] = [
   ...nameColumns<Trap>('nodes'),

@@ -1,21 +1,9 @@
 import type { NetworkNode, PipeRun, TrapType } from '@riseback/network';
 import { type DisplayUnits, formatQuantity } from '@riseback/units';
-
-/** What the plant calls it: its tag, else its id. */
-export function nameOf(element: { readonly id: string; readonly tag?: string | undefined }): string {
-  return element.tag ?? element.id;
-}
-
-const TRAP_TYPES: Readonly<Record<TrapType, string>> = {
-  invertedBucket: 'Inverted bucket',
-  floatThermostatic: 'Float-thermostatic',
-  thermostatic: 'Thermostatic',
-  thermodynamic: 'Thermodynamic',
-  orifice: 'Orifice',
-};
+import { nameOf, TRAP_TYPE_WORDS } from '../../shared/element-words';
 
 export function trapTypeWords(type: TrapType | undefined): string {
-  return type === undefined ? 'Trap of no given type' : TRAP_TYPES[type];
+  return type === undefined ? 'Trap of no given type' : TRAP_TYPE_WORDS[type];
 }
 
 /** "flash vessel FV-1", "receiver VR-1". */

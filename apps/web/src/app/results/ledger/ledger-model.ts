@@ -9,8 +9,9 @@ import {
   roundedSum,
   toDisplay,
 } from '@riseback/units';
-import { boreWords, nameOf } from './element-text';
+import { boreWords } from './element-text';
 import { printAccount, type PrintedAccount, valueOf } from './printed-account';
+import { nameOf } from '../../shared/element-words';
 
 /** Decimals of the account: a hundredth of a psi or of a kPa is below anything that matters. */
 const DECIMALS = 2;

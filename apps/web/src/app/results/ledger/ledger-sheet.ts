@@ -9,11 +9,12 @@ import { ElementIcon } from '../../drawing/symbols/element-icon';
 import { FRICTION_WORDS, STATIC_LIFT_WORDS } from '../../networks/method-words';
 import { StatusMark } from '../../shared/status-mark/status-mark';
 import type { PressureRamp } from '../pressure-ramp';
-import { endWords, nameOf, trapTypeWords } from './element-text';
+import { endWords, trapTypeWords } from './element-text';
 import { ledgerModel } from './ledger-model';
 import { LedgerTable } from './ledger-table';
 import { LiftProfile } from './lift-profile';
 import type { TrapItem } from './trap-groups';
+import { nameOf } from '../../shared/element-words';
 
 /** One trap's page, A4 landscape: head, lift profile, ledger, foot. What is seen is what prints. */
 @Component({

@@ -4,7 +4,8 @@ import { type DisplayUnits, formatQuantity } from '@riseback/units';
 import type { Status } from '../../shared/status-mark/status-mark';
 import { type BackPressureLimit, backPressureLimit } from '../back-pressure-limit';
 import { worstVerdict } from '../verdict';
-import { endWords, nameOf } from './element-text';
+import { endWords } from './element-text';
+import { nameOf } from '../../shared/element-words';
 
 export interface TrapItem {
   readonly id: string;

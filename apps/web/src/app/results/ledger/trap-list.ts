@@ -4,8 +4,9 @@ import type { Trap } from '@riseback/network';
 import { type DisplayUnits, displayUnit } from '@riseback/units';
 import { StatusMark } from '../../shared/status-mark/status-mark';
 import { Staff } from '../staff/staff';
-import { endWords, nameOf } from './element-text';
+import { endWords } from './element-text';
 import type { GroupedTraps } from './trap-groups';
+import { nameOf } from '../../shared/element-words';
 
 /** The traps of a network by where they drain to, worst first, each a link to its account. */
 @Component({

@@ -10,16 +10,17 @@ export const KIND_WORDS: Readonly<Record<NodeKind | 'pipe', string>> = {
   pipe: 'pipe',
 };
 
+/** Trade names of trap types, as short as a column needs. */
 export const TRAP_TYPE_WORDS: Readonly<Record<TrapType, string>> = {
   invertedBucket: 'Inverted bucket',
-  floatThermostatic: 'Float and thermostatic',
+  floatThermostatic: 'Float-thermostatic',
   thermostatic: 'Thermostatic',
-  thermodynamic: 'Thermodynamic disc',
-  orifice: 'Orifice plate',
+  thermodynamic: 'Thermodynamic',
+  orifice: 'Orifice',
 };
 
-/** What an element is called on the drawing: its tag, or its id where it has none. */
-export function nameOf(element: Pick<NetworkNode | PipeRun, 'id' | 'tag'>): string {
+/** What the plant calls an element: its tag, or its id where it has none. */
+export function nameOf(element: { readonly id: string; readonly tag?: string | undefined }): string {
   return element.tag ?? element.id;
 }
 
