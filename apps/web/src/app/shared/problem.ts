@@ -14,7 +14,7 @@ export function toProblem(error: unknown): Problem {
         detail: 'Check the network and try again.',
       };
     }
-    return { type: 'about:blank', title: error.statusText || 'The request failed', status: error.status };
+    return { type: 'about:blank', title: `The request failed (${String(error.status)})`, status: error.status };
   }
   return {
     type: 'about:blank',
