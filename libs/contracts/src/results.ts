@@ -33,6 +33,21 @@ export const TrapCheck = z.object({
 });
 export type TrapCheck = z.infer<typeof TrapCheck>;
 
+/** Patterns of level runs, of rises, and of a single phase. */
+export const FlowPattern = z.enum([
+  'liquid',
+  'vapour',
+  'stratifiedSmooth',
+  'stratifiedWavy',
+  'intermittent',
+  'annular',
+  'dispersedBubble',
+  'bubbly',
+  'slug',
+  'churn',
+]);
+export type FlowPattern = z.infer<typeof FlowPattern>;
+
 export const NodeResult = z.object({
   id: z.string(),
   pressurePa: z.number(),
@@ -55,6 +70,9 @@ export const PipeResult = z.object({
   downstreamQuality: z.number(),
   liquidVelocityMS: z.number(),
   mixtureVelocityMS: z.number(),
+  flowPattern: FlowPattern.optional(),
+  choked: z.boolean().optional(),
+  outletPressurePa: z.number().optional(),
 });
 export type PipeResult = z.infer<typeof PipeResult>;
 

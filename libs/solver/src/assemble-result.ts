@@ -3,11 +3,12 @@ import type { NetworkFile, TrapModel } from '@riseback/network';
 import type { SaturationState } from '@riseback/steam';
 import type { LimitsInForce } from './check-limits';
 import { atElement } from './element-failure';
-import { enthalpyAlong, type FlowAndEnergy } from './flow-and-energy';
-import { fluidStateAt, thermodynamicQuality, vapourFraction, type FluidState } from './fluid-state';
+import type { FlowAndEnergy } from './flow-and-energy';
+import { fluidStateAt, vapourFraction, type FluidState } from './fluid-state';
 import type { OperatingNode } from './operating-case';
 import { checkPipe, vesselCannotDrain } from './pipe-checks';
 import type { PipeGeometry } from './pipe-geometry';
+import { pipeResult } from './pipe-result';
 import { pipeFlow, type PressureWalk } from './pressure-walk';
 import type { ReturnTree } from './return-tree';
 import type { NodeResult, PipeResult, SolveResult, SolveWarning, TrapResult } from './solve-result';
@@ -47,11 +48,23 @@ export function assembleResult(solved: Solved): SolveResult {
     if (drain) warnings.push(drain);
   });
   file.pipes.forEach((pipe, index) => {
-    const result = pipeResult(solved, index, upstreamEnd[index] as number);
-    if (result === undefined) {
+    const marched = solved.walk.marched[index];
+    const geometry = solved.geometries[index];
+    if (marched === undefined || geometry === undefined) {
       leftOut.push(pipe.id);
       return;
     }
+    const upstream = upstreamEnd[index] as number;
+    const result = pipeResult({
+      pipe,
+      index,
+      geometry,
+      marched,
+      flow: pipeFlow(upstream, geometry, solved.flows),
+      arrow: tree.arrow[index] as number,
+      upstream: saturationAt(solved, upstream),
+      downstream: saturationAt(solved, tree.drainsTo[upstream] as number),
+    });
     pipes.push(result);
     warnings.push(...pipeWarnings(solved, index, result));
   });
@@ -85,38 +98,6 @@ function nodeResult(solved: Solved, index: number): NodeResult {
     enthalpyJKg: flows.enthalpyJKg[index] as number,
     quality: vapourFraction(state.quality),
     massFlowKgS: flows.massFlowKgS[index] as number,
-  };
-}
-
-function pipeResult(solved: Solved, index: number, upstream: number): PipeResult | undefined {
-  const { file, tree, walk, geometries } = solved;
-  const pipe = file.pipes[index];
-  const marched = walk.marched[index];
-  const geometry = geometries[index];
-  if (pipe === undefined || marched === undefined || geometry === undefined) return undefined;
-  const flow = pipeFlow(upstream, geometry, solved.flows);
-  const below = tree.drainsTo[upstream] as number;
-  let outlet: FluidState;
-  try {
-    outlet = stateAt(solved, below, enthalpyAlong(flow, geometry.lengthM));
-  } catch (error) {
-    throw atElement('pipe', pipe, index, error);
-  }
-  const massFlowKgS = flow.massFlowKgS === 0 ? 0 : flow.massFlowKgS * (tree.arrow[index] as number);
-  const massFlux = massFlowKgS / boreAreaM2(geometry.insideDiameterM);
-  const quality = vapourFraction(outlet.quality);
-  return {
-    id: pipe.id,
-    massFlowKgS,
-    upstreamPressurePa: marched.upstreamPressurePa,
-    downstreamPressurePa: walk.pressurePa[below] as number,
-    staticPa: marched.staticPa,
-    frictionPa: marched.frictionPa,
-    flashPa: marched.flashPa,
-    upstreamQuality: vapourFraction(thermodynamicQuality(saturationAt(solved, upstream), flow.inletEnthalpyJKg)),
-    downstreamQuality: quality,
-    liquidVelocityMS: massFlux / outlet.liquidDensityKgM3,
-    mixtureVelocityMS: massFlux * (quality / outlet.vapourDensityKgM3 + (1 - quality) / outlet.liquidDensityKgM3),
   };
 }
 

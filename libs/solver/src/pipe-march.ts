@@ -1,9 +1,11 @@
 import {
+  accelerationFactor,
+  boreAreaM2,
   darcyGradientOf,
-  flashVapourLiquidGradient,
-  flashVapourSteamGradient,
   GRAVITY_M_S2,
+  twoPhaseDensityKgM3,
   type FlashingFlow,
+  type VoidFraction,
 } from '@riseback/hydraulics';
 import type { Method, RoutePiece } from '@riseback/network';
 import {
@@ -14,12 +16,25 @@ import {
   type IntegrationResult,
 } from '@riseback/numerics';
 import { SATURATION_RANGE_PA, saturationState, type SaturationState } from '@riseback/steam';
+import { chokedOutletPa } from './choking';
 import { enthalpyAlong, type PipeFlow } from './flow-and-energy';
 import { fluidStateAt, thermodynamicQuality } from './fluid-state';
+import {
+  FLASH,
+  FRICTION,
+  FRICTION_LAWS,
+  PARTS,
+  STATIC,
+  VOID_FRACTION_LAWS,
+  type FrictionLaw,
+  type FrictionLawName,
+} from './friction-laws';
 import type { PipeGeometry } from './pipe-geometry';
 
 export interface MarchedPipe {
   readonly upstreamPressurePa: number;
+  /** What stands at the outlet: the node's pressure, or above it the critical pressure of a flow that chokes there. */
+  readonly outletPressurePa: number;
   readonly staticPa: number;
   readonly frictionPa: number;
   readonly flashPa: number;
@@ -34,8 +49,16 @@ export interface GradientEvaluation {
   readonly riseSlope: number;
 }
 
+/** What the march asks of a network's method. */
+export interface MarchMethod extends Pick<
+  Method,
+  'staticLift' | 'liftRulePaM' | 'dropCredit' | 'voidFraction' | 'acceleration'
+> {
+  readonly friction: FrictionLawName;
+}
+
 export interface MarchOptions {
-  readonly method: Pick<Method, 'staticLift' | 'liftRulePaM' | 'dropCredit'>;
+  readonly method: MarchMethod;
   /** Error allowed in each step of the march. */
   readonly tolerancePa: number;
   readonly onGradient?: ((evaluation: GradientEvaluation) => void) | undefined;
@@ -44,18 +67,24 @@ export interface MarchOptions {
 /** Small against 5 Pa even where a walk takes dozens of steps; a step's true error is far below its estimate. */
 export const MARCH_TOLERANCE_PA = 0.1;
 const MAXIMUM_STEPS = 20_000;
+/** Share of the critical pressure by which a march with acceleration keeps clear of it: there its gradient has no bound. */
+const ABOVE_CHOKING = 1e-5;
+/** Over so many bores the flow gets well clear of choking. */
+const START_BORES = 10;
 const [LOWEST_PA, HIGHEST_PA] = SATURATION_RANGE_PA;
 
-const STATIC = 0;
-const FRICTION = 1;
-const FLASH = 2;
-const PARTS = 3;
+interface PartTotals {
+  staticPa: number;
+  frictionPa: number;
+  flashPa: number;
+}
 
 type Writable<T> = { -readonly [Key in keyof T]: T[Key] };
 
 /**
  * Marches pipes against their flow, from the pressure at the outlet to the pressure at the inlet.
  *     −dp/ds = static + friction + flash      (docs/methods/network-walk.md)
+ * with what acceleration takes counted as flash, (static + friction + flash)/[1 + G² (dv/dp)_h] in all.
  * One marcher serves a whole solve. It holds the piece of pipe that it is at, so that a step makes nothing new but the state of
  * the water: making closures and objects for each pipe once cost as much as all its physics.
  */
@@ -63,15 +92,23 @@ export class PipeMarcher {
   private readonly at: Place = {
     pipe: { lengthM: 0, insideDiameterM: 0, roughnessM: 0, lossCoefficientPerM: 0, heatLossWM: 0, pieces: [] },
     flow: { massFlowKgS: 0, inletEnthalpyJKg: 0, heatLossWM: 0, ambientEnthalpyJKg: 0 },
+    massFluxKgM2S: 0,
     riseSlope: 0,
     outletM: 0,
     reachedPa: 0,
   };
+  private readonly law: FrictionLaw;
+  private readonly voidFraction: VoidFraction;
+  private readonly accelerates: boolean;
   /** Filled in anew for each gradient. */
   private readonly flashing: Writable<FlashingFlow>;
   private readonly integration: IntegrationOptions;
 
   constructor(private readonly options: MarchOptions) {
+    const { friction, voidFraction, acceleration } = options.method;
+    this.law = FRICTION_LAWS[friction];
+    this.voidFraction = VOID_FRACTION_LAWS[voidFraction];
+    this.accelerates = acceleration && !this.law.vapourAlone;
     this.integration = {
       absoluteTolerance: options.tolerancePa,
       maximumSteps: MAXIMUM_STEPS,
@@ -97,6 +134,7 @@ export class PipeMarcher {
 
   /**
    * @param piecesAgainstFlow from the outlet up, rises counted in the direction of flow
+   * @param nodePressurePa of the node that the pipe discharges into
    * @param onPieceEnd told the pressure at the upstream end of each piece
    * @returns the inlet pressure and what each part adds; they add up to the difference but for rounding
    * @throws SteamRangeError where the pressure leaves the steam properties; NoConvergenceError where no step is short enough
@@ -105,30 +143,60 @@ export class PipeMarcher {
     pipe: PipeGeometry,
     flow: PipeFlow,
     piecesAgainstFlow: readonly RoutePiece[],
-    outletPressurePa: number,
+    nodePressurePa: number,
     onPieceEnd?: (piece: RoutePiece, pressurePa: number) => void,
   ): MarchedPipe {
     const { at, flashing } = this;
+    this.enter(pipe, flow, piecesAgainstFlow[0]);
+    const criticalPa = this.criticalPressurePa(nodePressurePa);
+    const outletPressurePa = Math.max(nodePressurePa, criticalPa);
+    const totals = { staticPa: 0, frictionPa: 0, flashPa: 0 };
+    let pressurePa = outletPressurePa;
+    if (this.accelerates) pressurePa = Math.max(pressurePa, criticalPa * (1 + ABOVE_CHOKING));
+    totals.flashPa = pressurePa - nodePressurePa;
+    // just above choking the gradient runs up without bound: the first few bores are marched by themselves
+    let startM = criticalPa > 0 ? START_BORES * pipe.insideDiameterM : 0;
+    for (const piece of piecesAgainstFlow) {
+      at.riseSlope = piece.riseM / piece.lengthM;
+      flashing.fallSlope = -at.riseSlope;
+      if (startM > 0 && startM < piece.lengthM) pressurePa = this.stretch(pressurePa, startM, totals);
+      else startM = 0;
+      pressurePa = this.stretch(pressurePa, piece.lengthM - startM, totals);
+      startM = 0;
+      onPieceEnd?.(piece, pressurePa);
+    }
+    return { upstreamPressurePa: pressurePa, outletPressurePa, ...totals };
+  }
+
+  /** Marches up a stretch of one slope, and adds what it costs. @returns the pressure at its upstream end */
+  private stretch(outletPressurePa: number, lengthM: number, totals: PartTotals): number {
+    const { y, parts } = this.integrate(outletPressurePa, lengthM);
+    totals.staticPa += parts[STATIC] as number;
+    totals.frictionPa += parts[FRICTION] as number;
+    totals.flashPa += parts[FLASH] as number;
+    this.at.outletM -= lengthM;
+    return y;
+  }
+
+  private enter(pipe: PipeGeometry, flow: PipeFlow, lastPiece: RoutePiece | undefined): void {
+    const { at, flashing } = this;
     at.pipe = pipe;
     at.flow = flow;
+    at.massFluxKgM2S = flow.massFlowKgS / boreAreaM2(pipe.insideDiameterM);
     at.outletM = pipe.lengthM;
     flashing.massFlowKgS = flow.massFlowKgS;
     flashing.insideDiameterM = pipe.insideDiameterM;
     flashing.roughnessM = pipe.roughnessM;
     flashing.lossCoefficientPerM = pipe.lossCoefficientPerM;
-    let [upstreamPressurePa, staticPa, frictionPa, flashPa] = [outletPressurePa, 0, 0, 0];
-    for (const piece of piecesAgainstFlow) {
-      at.riseSlope = piece.riseM / piece.lengthM;
-      flashing.fallSlope = -at.riseSlope;
-      const { y, parts } = this.integrate(upstreamPressurePa, piece.lengthM);
-      upstreamPressurePa = y;
-      staticPa += parts[STATIC] as number;
-      frictionPa += parts[FRICTION] as number;
-      flashPa += parts[FLASH] as number;
-      at.outletM -= piece.lengthM;
-      onPieceEnd?.(piece, y);
-    }
-    return { upstreamPressurePa, staticPa, frictionPa, flashPa };
+    flashing.fallSlope = lastPiece === undefined ? 0 : -lastPiece.riseM / lastPiece.lengthM;
+  }
+
+  /** Critical pressure at the outlet, of a flow that chokes or nearly does; 0 of any other. */
+  private criticalPressurePa(nodePressurePa: number): number {
+    const { flow, massFluxKgM2S, outletM } = this.at;
+    const { friction } = this.options.method;
+    const nearlyPa = Math.max(LOWEST_PA, nodePressurePa * (1 - ABOVE_CHOKING));
+    return chokedOutletPa(friction, this.flashing, massFluxKgM2S, enthalpyAlong(flow, outletM), nearlyPa) ?? 0;
   }
 
   private integrate(outletPressurePa: number, lengthM: number): IntegrationResult {
@@ -150,27 +218,27 @@ export class PipeMarcher {
     this.report(pressurePa, enthalpyJKg);
     const saturation = saturationState(pressurePa);
     const quality = thermodynamicQuality(saturation, enthalpyJKg);
-    const inPhase = quality > 0 && quality <= 1;
-    const liquidDensity = inPhase
-      ? this.flashGradients(saturation, quality, parts)
-      : this.singlePhaseGradients(saturation, enthalpyJKg, parts);
-    const staticPaM = this.staticGradient(liquidDensity);
-    parts[STATIC] = staticPaM;
-    return staticPaM + (parts[FRICTION] as number) + (parts[FLASH] as number);
+    return quality > 0 && quality <= 1
+      ? this.twoPhaseGradient(saturation, quality, enthalpyJKg, parts)
+      : this.singlePhaseGradient(saturation, enthalpyJKg, parts);
   };
 
-  /** Writes what liquid and flash steam cost by the flash-vapour method. @returns the liquid's density */
-  private flashGradients(saturation: SaturationState, quality: number, parts: Float64Array): number {
+  private twoPhaseGradient(
+    saturation: SaturationState,
+    quality: number,
+    enthalpyJKg: number,
+    parts: Float64Array,
+  ): number {
     const { flashing } = this;
     flashing.saturation = saturation;
     flashing.quality = quality;
-    parts[FRICTION] = flashVapourLiquidGradient(flashing);
-    parts[FLASH] = flashVapourSteamGradient(flashing);
-    return saturation.liquidDensityKgM3;
+    const fullBoreShare = this.law.write(flashing, parts);
+    parts[STATIC] = this.twoPhaseStaticGradient(fullBoreShare);
+    return this.accelerated(saturation, enthalpyJKg, fullBoreShare, parts);
   }
 
-  /** Writes what subcooled liquid (as friction) or superheated steam (as flash) costs. @returns the liquid's density */
-  private singlePhaseGradients(saturation: SaturationState, enthalpyJKg: number, parts: Float64Array): number {
+  /** Subcooled liquid counts as friction, superheated steam as flash. */
+  private singlePhaseGradient(saturation: SaturationState, enthalpyJKg: number, parts: Float64Array): number {
     const fluid = fluidStateAt(saturation, enthalpyJKg);
     const isLiquid = fluid.quality <= 0;
     const density = isLiquid ? fluid.liquidDensityKgM3 : fluid.vapourDensityKgM3;
@@ -179,20 +247,51 @@ export class PipeMarcher {
     const alone = darcyGradientOf(massFlowKgS, density, viscosity, insideDiameterM, roughnessM, lossCoefficientPerM);
     parts[FRICTION] = isLiquid ? alone : 0;
     parts[FLASH] = isLiquid ? 0 : alone;
-    return fluid.liquidDensityKgM3;
+    parts[STATIC] = this.staticGradient(fluid.liquidDensityKgM3, density, 1);
+    return isLiquid ? sumOf(parts) : this.accelerated(saturation, enthalpyJKg, 1, parts);
+  }
+
+  /** Counts what it takes to speed the flow up as flash. @returns the whole gradient; not a number from choking on */
+  private accelerated(
+    saturation: SaturationState,
+    enthalpyJKg: number,
+    fullBoreShare: number,
+    parts: Float64Array,
+  ): number {
+    const steadyPaM = sumOf(parts);
+    if (!this.accelerates || fullBoreShare === 0) return steadyPaM;
+    const ofFullBore = accelerationFactor(this.at.massFluxKgM2S, saturation, enthalpyJKg) - 1;
+    const factor = 1 + fullBoreShare * ofFullBore;
+    if (!(factor > 0)) return NaN;
+    parts[FLASH] = (parts[FLASH] as number) - (fullBoreShare * ofFullBore * steadyPaM) / factor;
+    return sumOf(parts);
+  }
+
+  private twoPhaseStaticGradient(fullBoreShare: number): number {
+    const { flashing, at } = this;
+    const { staticLift, dropCredit } = this.options.method;
+    if (at.riseSlope === 0 || (at.riseSlope < 0 && dropCredit === 0)) return 0;
+    const liquidDensity = flashing.saturation.liquidDensityKgM3;
+    const density =
+      staticLift === 'twoPhase' ? twoPhaseDensityKgM3(flashing, this.voidFraction(flashing)) : liquidDensity;
+    return this.staticGradient(liquidDensity, density, fullBoreShare);
   }
 
   /**
    * Static gradient in the direction of flow by the network's basis, of a still pipe too.
-   *     rise: basis × slope;   fall: −dropCredit × min(basis, ρ_l g) × slope
+   *     rise: basis × slope;   fall: −dropCredit × share that fills the bore × min(basis, ρ_l g) × slope
+   * @param densityKgM3 of what flows, for the two-phase basis
    */
-  private staticGradient(liquidDensityKgM3: number): number {
+  private staticGradient(liquidDensityKgM3: number, densityKgM3: number, fullBoreShare: number): number {
     const { riseSlope } = this.at;
     if (riseSlope === 0) return 0;
     const { staticLift, liftRulePaM, dropCredit } = this.options.method;
     const liquidPaM = liquidDensityKgM3 * GRAVITY_M_S2;
-    const basisPaM = staticLift === 'rule' ? liftRulePaM : liquidPaM;
-    return riseSlope > 0 ? basisPaM * riseSlope : dropCredit * Math.min(basisPaM, liquidPaM) * riseSlope;
+    let basisPaM = liftRulePaM;
+    if (staticLift === 'liquidFull') basisPaM = liquidPaM;
+    else if (staticLift === 'twoPhase') basisPaM = densityKgM3 * GRAVITY_M_S2;
+    if (riseSlope > 0) return basisPaM * riseSlope;
+    return dropCredit * fullBoreShare * Math.min(basisPaM, liquidPaM) * riseSlope;
   }
 
   private report(pressurePa: number, enthalpyJKg: number): void {
@@ -203,10 +302,15 @@ export class PipeMarcher {
   }
 }
 
+function sumOf(parts: Float64Array): number {
+  return (parts[STATIC] as number) + (parts[FRICTION] as number) + (parts[FLASH] as number);
+}
+
 /** The piece of pipe that a marcher is at. */
 interface Place {
   pipe: PipeGeometry;
   flow: PipeFlow;
+  massFluxKgM2S: number;
   /** Rise per metre in the direction of flow. */
   riseSlope: number;
   /** From the pipe's inlet to the outlet of the piece. */

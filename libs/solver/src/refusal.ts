@@ -38,10 +38,8 @@ export function noSolution(element: string, pointer: string, reason: string): So
 
 /** What a solve of this case would need and is not computed yet, each by name. */
 export function notAvailableYet(file: NetworkFile, operatingCase: FileCase): ProblemError[] {
-  const { friction, staticLift, coincidence } = file.method;
+  const { coincidence } = file.method;
   const errors: ProblemError[] = [];
-  if (friction !== 'flashVapour') errors.push(missing('/method/friction', `friction method ${friction}`));
-  if (staticLift === 'twoPhase') errors.push(missing('/method/staticLift', `static lift ${staticLift}`));
   if (coincidence !== 'average') errors.push(missing('/method/coincidence', `coincidence ${coincidence}`));
   const caseIndex = file.cases.indexOf(operatingCase);
   operatingCase.overrides.forEach(({ node, state }, i) => {

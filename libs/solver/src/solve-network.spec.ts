@@ -260,14 +260,13 @@ describe('what is not computed yet is refused by name', () => {
   const unavailable = (parts: Record<string, unknown>, options?: Partial<SolveOptions>) =>
     refusedAt(file(parts), options);
 
-  it.each([
-    [{ friction: 'friedel' }, '/method/friction', 'friction method friedel is not available yet'],
-    [{ staticLift: 'twoPhase' }, '/method/staticLift', 'static lift twoPhase is not available yet'],
-    [{ coincidence: 'ownPeak' }, '/method/coincidence', 'coincidence ownPeak is not available yet'],
-  ])('%j', (method, pointer, detail) => {
-    expect(unavailable({ method })).toEqual([{ pointer, detail }]);
-    expect(unavailable({ method }, { partial: true })).toEqual([{ pointer, detail }]);
-  });
+  it.each([[{ coincidence: 'ownPeak' }, '/method/coincidence', 'coincidence ownPeak is not available yet']])(
+    '%j',
+    (method, pointer, detail) => {
+      expect(unavailable({ method })).toEqual([{ pointer, detail }]);
+      expect(unavailable({ method }, { partial: true })).toEqual([{ pointer, detail }]);
+    },
+  );
 
   it('a failed-open trap, in the case that has one', () => {
     const cases = [

@@ -1,3 +1,5 @@
+import type { FlowPattern } from '@riseback/hydraulics';
+
 /** What a solve answers; the command line prints it as it stands. Every pressure is absolute, Pa. Keys not computed yet are left out. */
 export interface NodeResult {
   readonly id: string;
@@ -20,6 +22,12 @@ export interface PipeResult {
   readonly downstreamQuality: number;
   readonly liquidVelocityMS: number;
   readonly mixtureVelocityMS: number;
+  /** At the downstream end. Absent where no map answers: a still pipe, and one that ends in a fall steeper than 10°. */
+  readonly flowPattern?: FlowPattern;
+  /** Whether the flow leaves at its critical velocity, so that the outlet stands above the node it discharges into. */
+  readonly choked: boolean;
+  /** Of a choked pipe: the critical pressure at its outlet, at which quality, velocities and pattern of its end are told. */
+  readonly outletPressurePa?: number;
 }
 
 export type Verdict = 'pass' | 'watch' | 'fail';
