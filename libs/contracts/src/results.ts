@@ -76,6 +76,10 @@ export const PipeResult = z.object({
 });
 export type PipeResult = z.infer<typeof PipeResult>;
 
+/** Lowest and highest back pressure over a set of methods, Pa absolute. */
+export const PressureBand = z.object({ lowPa: z.number(), highPa: z.number() });
+export type PressureBand = z.infer<typeof PressureBand>;
+
 export const TrapResult = z.object({
   id: z.string(),
   backPressurePa: z.number(),
@@ -85,7 +89,11 @@ export const TrapResult = z.object({
   flashPa: z.number(),
   differentialPa: z.number(),
   handCheck: z.object({ staticPa: z.number(), backPressurePa: z.number() }),
+  liveSteamKgS: z.number().optional(),
   walk: z.array(z.string()),
+  /** Over every friction method and basis of lift; then over those that suit each pipe's flow. Absent while they are not computed. */
+  spread: PressureBand.optional(),
+  credible: PressureBand.optional(),
   checks: z.array(TrapCheck),
   notChecked: z.array(z.object({ code: z.string(), reason: z.string() })),
 });
