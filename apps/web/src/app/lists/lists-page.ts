@@ -24,7 +24,7 @@ import { BulkBar } from './bulk-bar/bulk-bar';
 import type { DialogName } from './columns/column';
 import { deletionOf } from './deletion';
 import { CellDialogs } from './dialogs/cell-dialogs';
-import { DeleteDialog, type DeleteDialogData } from './dialogs/delete-dialog';
+import { DeleteDialog, type DeleteDialogData } from '../shared/delete-dialog/delete-dialog';
 import { type CellEdit, ListGrid } from './grid/list-grid';
 import { listContext } from './list-context';
 import { ELEMENT_LISTS, type ElementList, type NewKind } from './list-definitions';

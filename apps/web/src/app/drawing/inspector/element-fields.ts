@@ -1,11 +1,7 @@
 import { DISCHARGES, type NetworkDocument, type NetworkNode, type NodeKind, TRAP_TYPES } from '@riseback/network';
 import type { QuantityKind } from '@riseback/units';
 import { TRAP_TYPE_WORDS } from '../../shared/element-words';
-
-export interface Choice {
-  readonly value: string;
-  readonly words: string;
-}
+import type { Choice } from '../../shared/fields/choice-field';
 
 interface FieldBase {
   readonly key: string;

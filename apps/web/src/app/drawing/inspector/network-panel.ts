@@ -2,7 +2,7 @@ import { ChangeDetectionStrategy, Component, computed, inject, signal } from '@a
 import { FRICTION_METHODS, type Method, type SiteConditions, setNetworkOp, STATIC_LIFT_BASES } from '@riseback/network';
 import { FRICTION_WORDS, STATIC_LIFT_WORDS } from '../../networks/method-words';
 import { NetworkStore } from '../../networks/network-store';
-import { ChoiceField } from './choice-field';
+import { ChoiceField } from '../../shared/fields/choice-field';
 import type { FieldSpec } from './element-fields';
 import { type FieldChange, PropertyFields } from './property-fields';
 

@@ -3,7 +3,7 @@ import { pipeBore, pipeSizes } from '@riseback/hydraulics';
 import type { PipeSize } from '@riseback/network';
 import { type DisplayUnits, formatQuantity } from '@riseback/units';
 import { QuantityField } from '../../shared/quantity-field/quantity-field';
-import { ChoiceField } from './choice-field';
+import { ChoiceField } from '../../shared/fields/choice-field';
 
 /** A pipe's nominal size and schedule, or its bore. Exactly one of the two keys is set. */
 export interface ChosenSize {

@@ -1,9 +1,9 @@
 import { ChangeDetectionStrategy, Component, input, output, viewChildren } from '@angular/core';
 import type { DisplayUnits } from '@riseback/units';
 import { QuantityField } from '../../shared/quantity-field/quantity-field';
-import { ChoiceField } from './choice-field';
+import { ChoiceField } from '../../shared/fields/choice-field';
 import type { FieldSpec } from './element-fields';
-import { TextField } from './text-field';
+import { TextField } from '../../shared/fields/text-field';
 
 export interface FieldChange {
   readonly key: string;

@@ -2,7 +2,7 @@ import { ChangeDetectionStrategy, Component, computed, input, linkedSignal, outp
 import type { Trap } from '@riseback/network';
 import type { DisplayUnits } from '@riseback/units';
 import { QuantityField } from '../../shared/quantity-field/quantity-field';
-import { ChoiceField } from './choice-field';
+import { ChoiceField } from '../../shared/fields/choice-field';
 
 type Service = Trap['service'];
 type Wanted = 'constant' | 'varyingInlet' | 'varyingFlow';

@@ -1,5 +1,9 @@
 import { ChangeDetectionStrategy, Component, type ElementRef, input, output, viewChild } from '@angular/core';
-import type { Choice } from './element-fields';
+
+export interface Choice {
+  readonly value: string;
+  readonly words: string;
+}
 
 let fieldCount = 0;
 
