@@ -116,3 +116,34 @@ describe('Tern Quay Cannery in its design case', () => {
     expect(stalled).toEqual([true, true, true]);
   });
 });
+
+describe('Tern Quay Cannery with RT-5 failed open', () => {
+  // the same independent walk, with Napier’s steam through a 3/8 in orifice at 75 psig; printed in round figures
+  const open = solved(file, { caseId: 'rt5open' });
+  // the traps on the hall's header; RT-5 itself has its own branch's steam on top
+  const HALL = WALKED.slice(0, 18).flatMap(([tag]) => (tag === 'RT-5' ? [] : [tag]));
+  const idOf = (tag: string) => file.nodes.find((node) => node.tag === tag)?.id ?? '';
+  const failing = (tag: string) =>
+    found(open.traps, idOf(tag)).checks.flatMap(({ code, verdict }) => (verdict === 'fail' ? [code] : []));
+
+  it('blows about 370 lb/h of live steam', () => {
+    const steamKgS = found(open.traps, idOf('RT-5')).liveSteamKgS ?? NaN;
+    expect(Math.abs((steamKgS * 3600) / 0.45359237 - 370)).toBeLessThan(5);
+  });
+
+  it.each(HALL)('raises %s by 6 to 7 psi', (tag) => {
+    const risePsi = (found(open.traps, idOf(tag)).backPressurePa - trapByTag(tag).backPressurePa) / PSI_PA;
+    expect(risePsi).toBeGreaterThan(6);
+    expect(risePsi).toBeLessThan(7);
+  });
+
+  it('turns EX-1 and takes the differential of PH-1', () => {
+    expect(failing('EX-1')).toContain('backPressureFraction');
+    expect(failing('PH-1')).toContain('differential');
+  });
+
+  it('lets about 980 lb/h of vapour leave the flash vessel', () => {
+    const vessel = found(open.nodes, 'V1');
+    expect(Math.abs((vessel.quality * vessel.massFlowKgS * 3600) / 0.45359237 - 980)).toBeLessThan(15);
+  });
+});

@@ -5,6 +5,7 @@ import type { LimitsInForce } from './check-limits';
 import { atElement } from './element-failure';
 import type { FlowAndEnergy } from './flow-and-energy';
 import { fluidStateAt, vapourFraction, type FluidState } from './fluid-state';
+import { failedOpen } from './open-traps';
 import type { OperatingNode } from './operating-case';
 import { checkPipe, vesselCannotDrain } from './pipe-checks';
 import type { PipeGeometry } from './pipe-geometry';
@@ -43,7 +44,11 @@ export function assembleResult(solved: Solved): SolveResult {
     }
     nodes.push(nodeResult(solved, index));
     const node = solved.nodes[index];
-    if (node?.kind === 'trap') traps.push(trapResult(solved, node, index, models));
+    if (node?.kind === 'trap') {
+      traps.push(trapResult(solved, node, index, models));
+      const blowing = failedOpen(node, solved.walk.pressurePa[index] as number);
+      if (blowing) warnings.push(blowing);
+    }
     const drain = vesselWarning(solved, index);
     if (drain) warnings.push(drain);
   });
@@ -136,6 +141,7 @@ function trapResult(
     flashPa: walk.flashPa[index] as number,
     differentialPa: inletPressurePa - backPressurePa,
     handCheck: { staticPa: handStaticPa, backPressurePa: receiverPressurePa + handStaticPa },
+    ...(node.liveSteamKgS === undefined ? {} : { liveSteamKgS: node.liveSteamKgS }),
     walk: walkFrom(index, solved),
     ...checked,
   };

@@ -70,6 +70,8 @@ export function flowAndEnergy(
   function addSource(index: number, node: OperatingNode): void {
     if (node.kind === 'trap') {
       add(index, node.loadKgS, trapEnthalpyJKg(node.inletPressurePa, node.node.subcoolingK));
+      const { liveSteamKgS = 0 } = node;
+      if (liveSteamKgS > 0) add(index, liveSteamKgS, saturationState(node.inletPressurePa).vapourEnthalpyJKg);
     } else if (node.kind === 'pumpedInlet') {
       add(index, node.flowKgS, liquidEnthalpyJKg(node.node.temperatureK));
     } else if (node.kind === 'fixedPressure' && index >= nodes.length) {

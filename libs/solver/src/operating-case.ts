@@ -8,18 +8,27 @@ import type {
   PumpedInlet,
   Receiver,
   Trap,
+  TrapModel,
 } from '@riseback/network';
+import { atElement } from './element-failure';
 import { modulatedInletPressurePa } from './modulating-inlet';
+import type { ProblemError } from './refusal';
+
+export interface OperatingTrap {
+  readonly kind: 'trap';
+  readonly node: Trap;
+  readonly inletPressurePa: number;
+  readonly loadKgS: number;
+  readonly isolated: boolean;
+  /** Of a trap that has failed open: the hole that passes live steam. */
+  readonly openOrificeM?: number;
+  /** Live steam that it passes on top of its load, as open-traps.ts finds it. */
+  readonly liveSteamKgS?: number;
+}
 
 /** A node as it stands in one operating case. */
 export type OperatingNode =
-  | {
-      readonly kind: 'trap';
-      readonly node: Trap;
-      readonly inletPressurePa: number;
-      readonly loadKgS: number;
-      readonly isolated: boolean;
-    }
+  | OperatingTrap
   | { readonly kind: 'pumpedInlet'; readonly node: PumpedInlet; readonly flowKgS: number }
   | { readonly kind: 'fixedPressure'; readonly node: Receiver | FlashVessel; readonly pressurePa: number }
   | { readonly kind: 'junction'; readonly node: Junction };
@@ -35,18 +44,46 @@ export function findCase(file: NetworkFile, caseId: string | undefined): FileCas
 }
 
 /**
- * A node in a case. An override stands as it is; the case's factors work on what is not overridden,
+ * The nodes in a case, in the file's order. An override stands as it is; the case's factors work on what is not overridden,
  * the pressure factor on gauge pressure.
+ * @throws ElementFailure where a modulating trap's steam space falls outside the steam properties
  */
-export function operatingNode(
+export function operatingNodes(file: NetworkFile, operatingCase: FileCase): OperatingNode[] {
+  const overrides = new Map(operatingCase.overrides.map((override) => [override.node, override]));
+  const models = new Map(file.trapModels.map((model) => [model.id, model]));
+  return file.nodes.map((node, i) => {
+    try {
+      return operatingNode(node, file.site.atmosphericPressurePa, operatingCase, overrides.get(node.id), models);
+    } catch (error) {
+      throw atElement('node', node, i, error);
+    }
+  });
+}
+
+/** The traps that a case has fail open and that have no hole to say how much steam they then pass. */
+export function openWithoutOrifice(file: NetworkFile, operatingCase: FileCase): ProblemError[] {
+  const models = new Map(file.trapModels.map((model) => [model.id, model]));
+  const traps = new Map(file.nodes.flatMap((node) => (node.kind === 'trap' ? [[node.id, node]] : [])));
+  const caseIndex = file.cases.indexOf(operatingCase);
+  return operatingCase.overrides.flatMap((override, i) => {
+    const trap = traps.get(override.node);
+    if (override.state !== 'failedOpen' || trap === undefined || openOrificeM(trap, override, models) !== undefined)
+      return [];
+    const detail = `Trap ${override.node} fails open in case ${operatingCase.id}, but no orifice is known: give its override or its trap model an orificeDiameterM.`;
+    return [{ pointer: `/cases/${caseIndex}/overrides/${i}`, detail }];
+  });
+}
+
+function operatingNode(
   node: NetworkNode,
   atmosphericPressurePa: number,
   operatingCase: FileCase,
   override: Override | undefined,
+  models: ReadonlyMap<string, TrapModel>,
 ): OperatingNode {
   switch (node.kind) {
     case 'trap':
-      return operatingTrap(node, atmosphericPressurePa, operatingCase, override);
+      return operatingTrap(node, atmosphericPressurePa, operatingCase, override, models);
     case 'pumpedInlet':
       return { kind: 'pumpedInlet', node, flowKgS: override?.flowKgS ?? node.flowKgS };
     case 'flashVessel':
@@ -65,11 +102,14 @@ function operatingTrap(
   atmosphericPressurePa: number,
   operatingCase: FileCase,
   override: Override | undefined,
-): OperatingNode {
+  models: ReadonlyMap<string, TrapModel>,
+): OperatingTrap {
   const isolated = override?.state === 'isolated';
   const loadKgS = override?.loadKgS ?? node.loadKgS * operatingCase.loadFactor;
   const inletPressurePa = override?.inletPressurePa ?? servicePressurePa();
-  return { kind: 'trap', node, inletPressurePa, loadKgS: isolated ? 0 : loadKgS, isolated };
+  const trap: OperatingTrap = { kind: 'trap', node, inletPressurePa, loadKgS: isolated ? 0 : loadKgS, isolated };
+  const orificeM = override?.state === 'failedOpen' ? openOrificeM(node, override, models) : undefined;
+  return orificeM === undefined ? trap : { ...trap, openOrificeM: orificeM };
 
   function servicePressurePa(): number {
     const gaugePa = node.inletPressurePa - atmosphericPressurePa;
@@ -79,4 +119,11 @@ function operatingTrap(
     if (service.kind === 'constant' || isolated || node.loadKgS === 0) return fullLoadPa;
     return modulatedInletPressurePa(service, fullLoadPa, loadKgS / node.loadKgS);
   }
+}
+
+function openOrificeM(trap: Trap, override: Override, models: ReadonlyMap<string, TrapModel>): number | undefined {
+  return (
+    override.orificeDiameterM ??
+    (trap.trapModel === undefined ? undefined : models.get(trap.trapModel)?.orificeDiameterM)
+  );
 }

@@ -1,4 +1,4 @@
-import type { FileCase, NetworkFile } from '@riseback/network';
+import type { NetworkFile } from '@riseback/network';
 import type { SolveProblem } from './solve-result';
 
 /** Nothing was computed: the file shows that it cannot be, or it asks for what is not computed yet. */
@@ -36,17 +36,10 @@ export function noSolution(element: string, pointer: string, reason: string): So
   };
 }
 
-/** What a solve of this case would need and is not computed yet, each by name. */
-export function notAvailableYet(file: NetworkFile, operatingCase: FileCase): ProblemError[] {
+/** What a solve of the network would need and is not computed yet, each by name. */
+export function notAvailableYet(file: NetworkFile): ProblemError[] {
   const { coincidence } = file.method;
-  const errors: ProblemError[] = [];
-  if (coincidence !== 'average') errors.push(missing('/method/coincidence', `coincidence ${coincidence}`));
-  const caseIndex = file.cases.indexOf(operatingCase);
-  operatingCase.overrides.forEach(({ node, state }, i) => {
-    if (state !== 'failedOpen') return;
-    errors.push(missing(`/cases/${caseIndex}/overrides/${i}/state`, `state failedOpen of ${node}`));
-  });
-  return errors;
+  return coincidence === 'average' ? [] : [missing('/method/coincidence', `coincidence ${coincidence}`)];
 }
 
 export function missing(pointer: string, what: string): ProblemError {

@@ -268,17 +268,6 @@ describe('what is not computed yet is refused by name', () => {
     },
   );
 
-  it('a failed-open trap, in the case that has one', () => {
-    const cases = [
-      { id: 'a', name: 'A' },
-      { id: 'b', name: 'B', overrides: [{ node: 'T1', state: 'failedOpen' }] },
-    ];
-    expect(unavailable({ cases }, { caseId: 'b' }).map(({ pointer }) => pointer)).toEqual([
-      '/cases/1/overrides/0/state',
-    ]);
-    expect(solved(file({ cases }), { caseId: 'a' }).converged).toBe(true);
-  });
-
   it.each([true, false])('a loop and a second way down (live solve: %s)', (partial) => {
     const nodes = [trap, { id: 'J1', kind: 'junction', elevationM: 0 }, receiver, { ...receiver, id: 'R2' }];
     const start = { ...riser, to: 'J1' };

@@ -1,10 +1,10 @@
 import type { FileCase, NetworkFile } from '@riseback/network';
 import { assembleResult } from './assemble-result';
 import { limitsInForce } from './check-limits';
-import { atElement, ElementFailure } from './element-failure';
+import { ElementFailure } from './element-failure';
 import { ambientLiquidEnthalpyJKg } from './flow-and-energy';
-import { networkState } from './network-state';
-import { findCase, operatingNode, type OperatingNode } from './operating-case';
+import { stateWithOpenTraps } from './open-traps';
+import { findCase, openWithoutOrifice, operatingNodes } from './operating-case';
 import { pipeGeometries } from './pipe-geometry';
 import { MARCH_TOLERANCE_PA, type GradientEvaluation } from './pipe-march';
 import { noSolution, notAvailable, notAvailableYet, unknownCase, unsolvable, type Refusal } from './refusal';
@@ -36,19 +36,20 @@ export function solveNetwork(file: NetworkFile, options: SolveOptions): SolveRes
   const mistakes = options.partial ? [] : mistakesIn(file, geometries);
   const isSound = mistakes.length === 0 && !options.partial ? undefined : soundPipes(file, geometries);
   const tree = returnTree(file, isSound);
-  const unavailable = [...notAvailableYet(file, operatingCase), ...loopsIn(tree)];
-  if (mistakes.length > 0) return unsolvable([...mistakes, ...unavailable]);
+  const unavailable = [...notAvailableYet(file), ...loopsIn(tree)];
+  const openMistakes = openWithoutOrifice(file, operatingCase);
+  if (mistakes.length + openMistakes.length > 0) return unsolvable([...mistakes, ...openMistakes, ...unavailable]);
   if (unavailable.length > 0) return notAvailable(unavailable);
 
   try {
-    const nodes = operatingNodes(file, operatingCase);
+    const inCase = operatingNodes(file, operatingCase);
     const ambientEnthalpyJKg = ambientLiquidEnthalpyJKg(file.site.ambientTemperatureK);
     const march = {
       method: file.method,
       tolerancePa: options.marchTolerancePa ?? MARCH_TOLERANCE_PA,
       onGradient: options.onGradient,
     };
-    const state = networkState({ file, geometries, tree, ambientEnthalpyJKg }, nodes, march);
+    const { nodes, state } = stateWithOpenTraps({ file, geometries, tree, ambientEnthalpyJKg }, inCase, march);
     return assembleResult({
       file,
       caseId: operatingCase.id,
@@ -68,17 +69,6 @@ export function solveNetwork(file: NetworkFile, options: SolveOptions): SolveRes
 /** True where nothing was computed. */
 export function isRefusal(outcome: SolveResult | Refusal): outcome is Refusal {
   return 'refused' in outcome;
-}
-
-function operatingNodes(file: NetworkFile, operatingCase: FileCase): OperatingNode[] {
-  const overrides = new Map(operatingCase.overrides.map((override) => [override.node, override]));
-  return file.nodes.map((node, i) => {
-    try {
-      return operatingNode(node, file.site.atmosphericPressurePa, operatingCase, overrides.get(node.id));
-    } catch (error) {
-      throw atElement('node', node, i, error);
-    }
-  });
 }
 
 function unsolved(operatingCase: FileCase, { element, pointer, message }: ElementFailure): SolveResult {

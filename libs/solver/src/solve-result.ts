@@ -80,6 +80,8 @@ export interface TrapResult {
   readonly flashPa: number;
   readonly differentialPa: number;
   readonly handCheck: { readonly staticPa: number; readonly backPressurePa: number };
+  /** Of a trap that has failed open: what it blows on top of its load. */
+  readonly liveSteamKgS?: number;
   /** Pipe ids from the trap to its receiver or vessel. */
   readonly walk: readonly string[];
   readonly checks: readonly TrapCheck[];
