@@ -9,7 +9,7 @@ import { NetworkRepository } from '../../server/src/networks/network-repository'
 import { solverHashOf } from '../../server/src/networks/network-hashes';
 import { firstBrokenAuditRow } from '../../server/src/platform/db/audit';
 import { openDatabase } from '../../server/src/platform/db/database';
-import { batchOf } from './network-samples';
+import { batchOf } from '../api/network-samples';
 
 /** A round ends so many acknowledged edits and so many milliseconds after its start, each time at another point of a write. */
 const ROUNDS = [
