@@ -42,9 +42,9 @@ describe('POST /api/solve', () => {
   it.each([
     { name: 'an unknown key', file: { ...SMALL, colour: 'red' }, pointer: '/colour' },
     {
-      name: 'a method not computed yet',
-      file: { ...SMALL, method: { friction: 'friedel' } },
-      pointer: '/method/friction',
+      name: 'a trap that fails open through no known orifice',
+      file: { ...SMALL, cases: [{ id: 'open', name: 'Open', overrides: [{ node: 'T1', state: 'failedOpen' }] }] },
+      pointer: '/cases/0/overrides/0',
     },
     { name: 'a trap that reaches no receiver', file: { ...SMALL, pipes: [SMALL.pipes[0]] }, pointer: '/nodes/0' },
   ])('refuses what can be seen without computing: $name', async ({ file, pointer }) => {
