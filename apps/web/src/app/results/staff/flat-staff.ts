@@ -1,6 +1,14 @@
+import type { PressureBand } from '@riseback/contracts';
 import type { StaffModel, StaffPartKind } from './staff-model';
 
-export const FLAT = { height: 14, tubeTop: 5, tubeHeight: 6 } as const;
+/** The bands lie under the tube: a thin line for the spread, a broad one on it for the credible part. */
+export const FLAT = { height: 18, tubeTop: 5, tubeHeight: 6, bandY: 15.5 } as const;
+
+/** A stretch of the staff, from and to, px. */
+export interface FlatStretch {
+  readonly from: number;
+  readonly to: number;
+}
 
 export interface FlatStaff {
   readonly parts: readonly { readonly kind: StaffPartKind; readonly x: number; readonly width: number }[];
@@ -8,6 +16,8 @@ export interface FlatStaff {
   readonly inletX: number;
   readonly backX: number;
   readonly limitX: number | null;
+  readonly spread: FlatStretch | null;
+  readonly credible: FlatStretch | null;
 }
 
 /** Where everything of a flat staff stands: pressure runs to the right, from the foot to the scale's maximum. */
@@ -24,5 +34,11 @@ export function flatStaff(model: StaffModel, width: number, scaleMaximumPa: numb
     inletX: xOf(model.inletPa),
     backX: xOf(model.backPa),
     limitX: model.limitPa === undefined ? null : xOf(model.limitPa),
+    spread: stretch(model.spread, xOf),
+    credible: stretch(model.credible, xOf),
   };
+}
+
+function stretch(band: PressureBand | undefined, xOf: (pa: number) => number): FlatStretch | null {
+  return band === undefined ? null : { from: xOf(band.lowPa), to: xOf(band.highPa) };
 }

@@ -1,6 +1,7 @@
-import type { TrapResult } from '@riseback/contracts';
+import type { PressureBand, TrapResult } from '@riseback/contracts';
 import { DEFAULT_LIFT_RULE_PA_M } from '@riseback/network';
 import { type DisplayUnits, formatQuantity, roundCumulatively, toDisplay } from '@riseback/units';
+import { bandsOf, bandWords } from '../bands';
 
 export type StaffPartKind = 'receiver' | 'lift' | 'friction' | 'flash';
 
@@ -24,6 +25,10 @@ export interface StaffModel {
   readonly backPa: number;
   readonly differentialPa: number;
   readonly limitPa: number | undefined;
+  /** Lowest and highest by every method; undefined while it is not computed. */
+  readonly spread: PressureBand | undefined;
+  /** The part of it that suits the flow; undefined likewise. */
+  readonly credible: PressureBand | undefined;
   readonly parts: readonly StaffPart[];
   /** The whole staff in one sentence. */
   readonly sentence: string;
@@ -40,16 +45,25 @@ export function staffModel(
 ): StaffModel {
   const backPa = trap.backPressurePa;
   const parts = staffParts(trap, units, receiverName);
-  const footPa = Math.min(units.atmosphericPressurePa, trap.receiverPressurePa, backPa, inletPa);
+  const { spread, credible } = bandsOf(trap);
+  const footPa = Math.min(
+    units.atmosphericPressurePa,
+    trap.receiverPressurePa,
+    backPa,
+    inletPa,
+    spread?.lowPa ?? backPa,
+  );
   return {
     footPa,
     topPa: Math.max(inletPa, backPa, limitPa ?? footPa),
+    spread,
+    credible,
     inletPa,
     backPa,
     differentialPa: inletPa - backPa,
     limitPa,
     parts: visible(parts, trap.receiverPressurePa, footPa),
-    sentence: sentence(parts, { inletPa, backPa, limitPa }, units),
+    sentence: sentence(parts, { inletPa, backPa, limitPa }, bandWords(trap, units), units),
   };
 }
 
@@ -103,6 +117,7 @@ function visible(parts: readonly NamedPart[], receiverPa: number, footPa: number
 function sentence(
   parts: readonly NamedPart[],
   { inletPa, backPa, limitPa }: Pick<StaffModel, 'inletPa' | 'backPa' | 'limitPa'>,
+  bands: string,
   units: DisplayUnits,
 ): string {
   const pressure = (pa: number) => formatQuantity(pa, 'pressure', units, { withUnit: true });
@@ -111,5 +126,5 @@ function sentence(
     inletPa > backPa ? `${difference} of differential` : `no differential, it is ${difference} above the inlet`;
   const limit = limitPa === undefined ? '' : `; limit ${pressure(limitPa)}${backPa > limitPa ? ', exceeded' : ''}`;
   const made = parts.map(({ name, shown }) => `${name} ${shown}`).join('; ');
-  return `Back pressure ${pressure(backPa)} against ${pressure(inletPa)} at the steam inlet, ${across}${limit}. Made of: ${made}.`;
+  return `Back pressure ${pressure(backPa)} against ${pressure(inletPa)} at the steam inlet, ${across}${limit}. Made of: ${made}.${bands === '' ? '' : ` ${bands}`}`;
 }

@@ -1,4 +1,6 @@
+import type { PressureBand } from '@riseback/contracts';
 import { type DisplayUnits, displayUnit, formatQuantity, fromDisplay, toDisplay } from '@riseback/units';
+import { bandNumbers } from '../bands';
 import { niceTicks } from '../nice-ticks';
 import { spreadLabels } from './spread-labels';
 import type { StaffModel, StaffPartKind } from './staff-model';
@@ -12,7 +14,9 @@ export const TALL = {
   tickEnd: 48,
   tubeLeft: 56,
   tubeWidth: 26,
-  labelLeft: 122,
+  bandLeft: 88,
+  bandWidth: 10,
+  labelLeft: 126,
   valueRight: 296,
 } as const;
 const ROW = 18;
@@ -21,11 +25,11 @@ const BIG_ROW = 32;
 const LIMIT_LABEL_REACH = 22;
 
 export interface TallLabel {
-  readonly key: 'inlet' | 'differential' | 'back' | StaffPartKind;
+  readonly key: 'inlet' | 'differential' | 'back' | 'spread' | 'credible' | StaffPartKind;
   readonly name: string;
   readonly value: string;
   readonly y: number;
-  /** From the tube to the label. */
+  /** From the tube or the band to the label. */
   readonly leader: string;
 }
 
@@ -38,14 +42,27 @@ export interface TallStaff {
   readonly inletY: number;
   readonly backY: number;
   readonly limit: { readonly y: number; readonly text: string; readonly exceeded: boolean } | null;
+  /** At the right of the tube: the credible band, with the whole spread as its thin ends. */
+  readonly spread: TallStretch | null;
+  readonly credible: TallStretch | null;
   readonly labels: readonly TallLabel[];
+}
+
+/** A stretch of height, px from the top. */
+export interface TallStretch {
+  readonly top: number;
+  readonly bottom: number;
 }
 
 /** Where everything of a tall staff stands. */
 export function tallStaff(model: StaffModel, units: DisplayUnits, scaleMaximumPa: number | undefined): TallStaff {
   const shown = (pa: number) => toDisplay(pa, 'pressure', units);
   const pressure = (pa: number) => formatQuantity(pa, 'pressure', units);
-  const ticks = niceTicks(shown(model.footPa), shown(Math.max(model.topPa, scaleMaximumPa ?? model.topPa)), 5);
+  const ticks = niceTicks(
+    shown(model.footPa),
+    shown(Math.max(model.topPa, scaleMaximumPa ?? model.topPa, bandTopPa(model))),
+    5,
+  );
   const [low = 0, high = 1] = [ticks[0], ticks.at(-1)];
   const foot = TALL.height - TALL.bottom;
   const yOf = (pa: number) => foot - ((shown(pa) - low) / (high - low)) * (foot - TALL.top);
@@ -70,6 +87,8 @@ export function tallStaff(model: StaffModel, units: DisplayUnits, scaleMaximumPa
     inletY: yOf(model.inletPa),
     backY: yOf(model.backPa),
     limit,
+    spread: stretch(model.spread, yOf),
+    credible: stretch(model.credible, yOf),
     labels: labels(model, units, yOf),
   };
 }
@@ -84,6 +103,7 @@ function labels(model: StaffModel, units: DisplayUnits, yOf: (pa: number) => num
       value: formatQuantity(differentialPa, 'pressureDifference', units, { decimals: 1 }),
       pa: (inletPa + backPa) / 2,
     },
+    ...bandLabels(model, units),
     { key: 'back', name: 'Back pressure', value: formatQuantity(backPa, 'pressure', units), pa: backPa },
     // from the top of the pile down, so that parts of no height keep the order in which they lie
     ...model.parts.toReversed().map(({ kind, name, shown, fromPa, toPa }) => ({
@@ -93,17 +113,46 @@ function labels(model: StaffModel, units: DisplayUnits, yOf: (pa: number) => num
       pa: (fromPa + toPa) / 2,
     })),
   ];
-  const wishes = wanted.map(({ key, pa }) => ({ at: yOf(pa), height: key === 'back' ? BIG_ROW : ROW }));
+  const at = (pa: number) => Math.max(0, yOf(pa));
+  const wishes = wanted.map(({ key, pa }) => ({ at: at(pa), height: key === 'back' ? BIG_ROW : ROW }));
   const middles = spreadLabels(wishes, 0, TALL.height);
   return wanted.map(({ key, name, value, pa }, i) => {
     const y = middles[i] ?? 0;
-    return { key, name, value, y, leader: leader(yOf(pa), y) };
+    const onBand = key === 'spread' || key === 'credible';
+    return { key, name, value, y, leader: leader(at(pa), y, onBand ? BAND_RIGHT : TUBE_RIGHT) };
   });
 }
 
-/** Level out of the tube, slanting to the label's height, level to the label. */
-function leader(from: number, to: number): string {
-  const start = TALL.tubeLeft + TALL.tubeWidth;
+/** Named at their upper ends, which are what may turn a verdict. */
+function bandLabels(
+  { spread, credible }: StaffModel,
+  units: DisplayUnits,
+): (Omit<TallLabel, 'y' | 'leader'> & { pa: number })[] {
+  return [
+    ...(spread === undefined
+      ? []
+      : [{ key: 'spread' as const, name: 'Spread', value: bandNumbers(spread, units), pa: spread.highPa }]),
+    ...(credible === undefined
+      ? []
+      : [{ key: 'credible' as const, name: 'Credible', value: bandNumbers(credible, units), pa: credible.highPa }]),
+  ];
+}
+
+/** A spread far above the inlet would flatten what is of interest; it may take a third more than the rest, then runs off the top. */
+function bandTopPa({ footPa, topPa, spread, credible }: StaffModel): number {
+  const most = Math.max(credible?.highPa ?? topPa, Math.min(spread?.highPa ?? topPa, topPa + (topPa - footPa) / 3));
+  return Math.max(topPa, most);
+}
+
+function stretch(band: PressureBand | undefined, yOf: (pa: number) => number): TallStretch | null {
+  return band === undefined ? null : { top: Math.max(0, yOf(band.highPa)), bottom: yOf(band.lowPa) };
+}
+
+const TUBE_RIGHT = TALL.tubeLeft + TALL.tubeWidth;
+const BAND_RIGHT = TALL.bandLeft + TALL.bandWidth;
+
+/** Level out of the tube or the band, slanting to the label's height, level to the label. */
+function leader(from: number, to: number, start: number): string {
   const end = TALL.labelLeft - 4;
   return `M${start} ${from.toFixed(1)}H${start + 8}L${end - 8} ${to.toFixed(1)}H${end}`;
 }
