@@ -21,7 +21,7 @@ const VIEWS = [
   imports: [AppBar, ProblemBanner, RefusedEdits, RouterLink, RouterLinkActive, RouterOutlet, TitleBlock],
   providers: [NetworkStore, EditQueue, UndoStack],
   changeDetection: ChangeDetectionStrategy.OnPush,
-  host: { '(window:beforeunload)': 'warnBeforeLoss($event)' },
+  host: { '(window:beforeunload)': 'warnBeforeLoss($event)', '(window:online)': 'saveAfterOffline()' },
   templateUrl: './network-page.html',
   styleUrl: './network-page.scss',
 })
@@ -47,6 +47,11 @@ export class NetworkPage {
       const name = this.store.document()?.name;
       if (name !== undefined) this.title.setTitle(`${name} · Riseback`);
     });
+  }
+
+  /** The network is back: what could not be saved goes out without the person having to ask. */
+  protected saveAfterOffline(): void {
+    if (this.store.saveState() === 'notSaved') this.store.retrySave();
   }
 
   /** The browser asks before a tab with unsaved edits is closed. */
