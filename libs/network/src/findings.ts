@@ -1,6 +1,6 @@
 import { fromFile } from './document-file';
 import { jsonPointer } from './mistakes';
-import { compareIds, type NetworkDocument } from './network-document';
+import type { NetworkDocument } from './network-document';
 import type { NetworkFile } from './network-file';
 import { nodeFindings } from './node-findings';
 import { KIND_NAMES } from './override-keys';
@@ -27,8 +27,9 @@ export interface FileFinding extends TopologyFinding {
 /**
  * What stands in the way of a solve, and what else a person should know about the network as drawn; linear in its size.
  *
- * Reach is judged whatever way the arrows point: in a tree the flow runs to the receiver all the same, and the solver says where it
- * runs against an arrow. Nodes of fixed pressure cut the network into trees; what leaves a flash vessel starts the next tree.
+ * Reach is judged whatever way the arrows point: the flow runs to a receiver all the same, and the solver says where it runs
+ * against an arrow. Loops and second ways down are sound: the solver divides the flow between them. Nodes of fixed pressure cut the
+ * network; what leaves a flash vessel starts the next part.
  */
 export function findings(document: NetworkDocument): TopologyFinding[] {
   const pipes = pipesWithEnds(document);
@@ -39,7 +40,7 @@ export function findings(document: NetworkDocument): TopologyFinding[] {
     ...nodes.flatMap((node) => nodeFindings(node, atNodes)),
     ...cutOffNodes(document, pipes),
     ...pipes.flatMap(pipeFindings),
-    ...loops(pipes),
+    ...vesselLoops(pipes),
     ...gaugeFindings(document),
   ];
 }
@@ -109,35 +110,15 @@ function cutOffNodes(document: NetworkDocument, pipes: readonly PipeEnds[]): Top
     });
 }
 
-function loops(pipes: readonly PipeEnds[]): TopologyFinding[] {
-  return [
-    ...secondWays(pipes).map(({ pipe }): TopologyFinding => ({
-      code: 'loop',
-      severity: 'error',
-      element: { in: 'pipes', id: pipe.id },
-      what: `Pipe ${nameOf(pipe)} closes a loop or opens a second way down`,
-      why: 'With more than one way to a receiver the flow divides by itself; so far only trees, with one way down from each trap, are computed.',
-      remedy: 'Delete a pipe of the loop, or the one that is shut in operation.',
-    })),
-    ...vesselsInCircles(pipes).map((vessel): TopologyFinding => ({
-      code: 'loop',
-      severity: 'error',
-      element: { in: 'nodes', id: vessel.id },
-      what: `The liquid of flash vessel ${nameOf(vessel)} comes back to it`,
-      why: 'A vessel that feeds itself fills up: its liquid must end in a receiver.',
-      remedy: 'Lead the pipe that drains it to a receiver.',
-    })),
-  ];
-}
-
-/** The pipes that join what hangs together already. They are tried by id, so that the file's order names no other pipe. */
-function secondWays(pipes: readonly PipeEnds[]): PipeEnds[] {
-  const sets = new JoinedSets();
-  // a pipe from a node to itself, or out of a receiver, has its own finding
-  const plain = pipes.filter(({ pipe, from }) => pipe.from !== pipe.to && from.kind !== 'receiver');
-  if (plain.every((ends) => joinEnds(sets, ends))) return [];
-  const again = new JoinedSets();
-  return plain.sort((a, b) => compareIds(a.pipe.id, b.pipe.id)).filter((ends) => !joinEnds(again, ends));
+function vesselLoops(pipes: readonly PipeEnds[]): TopologyFinding[] {
+  return vesselsInCircles(pipes).map((vessel) => ({
+    code: 'loop',
+    severity: 'error',
+    element: { in: 'nodes', id: vessel.id },
+    what: `The liquid of flash vessel ${nameOf(vessel)} comes back to it`,
+    why: 'A vessel that feeds itself fills up: its liquid must end in a receiver.',
+    remedy: 'Lead the pipe that drains it to a receiver.',
+  }));
 }
 
 function indexesOf(list: readonly { readonly id: string }[]): Map<string, number> {

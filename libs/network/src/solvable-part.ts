@@ -21,7 +21,7 @@ export interface SolvablePart {
 /**
  * The nodes from which a fixed pressure is reached through sound pipes, and those pipes: what a live solve computes, leaving out the
  * rest. A pipe is sound when it has no finding by itself and stands the right way, and alone, at the trap, vessel or receiver where
- * it starts or ends. Loops are not taken out: whether they can be solved is for the solver to say.
+ * it starts or ends.
  */
 export function solvablePart(document: NetworkDocument): SolvablePart {
   const all = pipesWithEnds(document);

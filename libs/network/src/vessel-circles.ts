@@ -2,10 +2,11 @@ import type { FlashVessel } from './network-file';
 import { hasFixedPressure, JoinedSets, type PipeEnds } from './topology';
 
 /**
- * Flash vessels whose own liquid comes back to them, over other vessels or directly.
+ * Flash vessels whose own liquid comes back to them, over other vessels or directly, and can go nowhere else. Where a part leads to
+ * a receiver as well, the solver finds out which way the liquid takes.
  *
- * A graph of vessels and of the parts between fixed pressures is trimmed at both ends until only circles (and what lies between
- * two circles) are left: no recursion, linear in the pipes.
+ * A graph of vessels and of the parts between fixed pressures is cleared of all from which a receiver is reached, then trimmed at
+ * both ends until only circles (and what lies between two circles) are left: no recursion, linear in the pipes.
  */
 export function vesselsInCircles(pipes: readonly PipeEnds[]): FlashVessel[] {
   const parts = new JoinedSets();
@@ -14,16 +15,19 @@ export function vesselsInCircles(pipes: readonly PipeEnds[]): FlashVessel[] {
   const onwards = new Map<string, string[]>();
   const backwards = new Map<string, string[]>();
   const vessels = new Map<string, FlashVessel>();
+  const drained: string[] = [];
   for (const { from, to } of pipes) {
     for (const node of [from, to]) if (node.kind === 'flashVessel') vessels.set(node.id, node);
-    if (from.id === to.id || (from.kind !== 'flashVessel' && to.kind !== 'flashVessel')) continue;
-    if (from.kind === 'receiver' || to.kind === 'receiver') continue;
+    if (from.id === to.id || (!hasFixedPressure(from) && !hasFixedPressure(to))) continue;
+    if (from.kind === 'receiver') continue;
     const start = from.kind === 'flashVessel' ? from.id : partOf(parts, from.id);
-    const end = to.kind === 'flashVessel' ? to.id : partOf(parts, to.id);
+    const end = hasFixedPressure(to) ? to.id : partOf(parts, to.id);
+    if (to.kind === 'receiver') drained.push(to.id);
     link(onwards, start, end);
     link(backwards, end, start);
   }
   const left = new Set([...onwards.keys(), ...backwards.keys()]);
+  clear(left, drained, backwards);
   trim(left, onwards, backwards);
   trim(left, backwards, onwards);
   return [...vessels.values()].filter(({ id }) => left.has(id));
@@ -38,6 +42,13 @@ function link(links: Map<string, string[]>, a: string, b: string): void {
   const list = links.get(a);
   if (list === undefined) links.set(a, [b]);
   else list.push(b);
+}
+
+/** Takes away all that leads to one of the ends. */
+function clear(left: Set<string>, ends: string[], backwards: ReadonlyMap<string, readonly string[]>): void {
+  for (let item = ends.pop(); item !== undefined; item = ends.pop()) {
+    if (left.delete(item)) ends.push(...(backwards.get(item) ?? []));
+  }
 }
 
 /** Takes away, again and again, what nothing leads into. */

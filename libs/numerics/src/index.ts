@@ -9,3 +9,4 @@ export {
 } from './integrate-adaptive';
 export { relativeError } from './relative-error';
 export { findRootBracketed, type RootOptions } from './root-finding';
+export { solveLinearSystem } from './linear-system';

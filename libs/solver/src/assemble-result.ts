@@ -10,8 +10,8 @@ import type { OperatingNode } from './operating-case';
 import { checkPipe, vesselCannotDrain } from './pipe-checks';
 import type { PipeGeometry } from './pipe-geometry';
 import { pipeResult } from './pipe-result';
-import { pipeFlow, type PressureWalk } from './pressure-walk';
-import type { ReturnTree } from './return-tree';
+import { flowInPipe, type PressureWalk } from './pressure-walk';
+import { inletNode, outletNode, type ReturnTree } from './return-tree';
 import type { NodeResult, PipeResult, SolveResult, SolveWarning, TrapResult } from './solve-result';
 import { checkTrap, ISOLATED_UNCHECKED } from './trap-checks';
 
@@ -31,7 +31,6 @@ export interface Solved {
 export function assembleResult(solved: Solved): SolveResult {
   const { file, tree } = solved;
   const models = new Map(file.trapModels.map((model) => [model.id, model]));
-  const upstreamEnd = upstreamEnds(solved);
   const nodes: NodeResult[] = [];
   const pipes: PipeResult[] = [];
   const traps: TrapResult[] = [];
@@ -59,32 +58,21 @@ export function assembleResult(solved: Solved): SolveResult {
       leftOut.push(pipe.id);
       return;
     }
-    const upstream = upstreamEnd[index] as number;
     const result = pipeResult({
       pipe,
       index,
       geometry,
       marched,
-      flow: pipeFlow(upstream, geometry, solved.flows),
+      flow: flowInPipe(tree, index, geometry, solved.flows),
       arrow: tree.arrow[index] as number,
-      upstream: saturationAt(solved, upstream),
-      downstream: saturationAt(solved, tree.drainsTo[upstream] as number),
+      upstream: saturationAt(solved, inletNode(tree, index)),
+      downstream: saturationAt(solved, outletNode(tree, index)),
     });
     pipes.push(result);
     warnings.push(...pipeWarnings(solved, index, result));
   });
   const result = { case: solved.caseId, converged: true, iterations: 1, nodes, pipes, traps, warnings };
   return leftOut.length === 0 ? result : { ...result, partial: true, leftOut };
-}
-
-/** By pipe: the node whose way out it is, −1 where it is nobody's. */
-function upstreamEnds({ tree, file }: Solved): Int32Array {
-  const ends = new Int32Array(file.pipes.length).fill(-1);
-  for (const index of tree.downstreamFirst) {
-    const pipe = tree.outPipe[index] as number;
-    if (pipe !== -1) ends[pipe] = index;
-  }
-  return ends;
 }
 
 function nodeResult(solved: Solved, index: number): NodeResult {

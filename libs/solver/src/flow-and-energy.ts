@@ -2,7 +2,7 @@ import { liquidAtTemperature, saturationPressurePa, saturationState, saturationT
 import { atElement } from './element-failure';
 import type { OperatingNode } from './operating-case';
 import type { PipeGeometry } from './pipe-geometry';
-import type { ReturnTree } from './return-tree';
+import { inletNode, outletNode, type ReturnTree } from './return-tree';
 
 /** What flows into a pipe, and how it cools on its way. */
 export interface PipeFlow {
@@ -13,12 +13,19 @@ export interface PipeFlow {
   readonly ambientEnthalpyJKg: number;
 }
 
-/** By node of the tree, vessel outlets included. */
 export interface FlowAndEnergy {
-  /** Everything that comes to the node, which is what leaves it but for a vessel's vapour. */
+  /**
+   * By node of the tree, vessel outlets included: everything that comes to the node, which is what leaves it but for a vessel's
+   * vapour.
+   */
   readonly massFlowKgS: Float64Array;
   readonly enthalpyJKg: Float64Array;
+  /** By pipe, in the direction of its flow. */
+  readonly pipeFlowKgS: Float64Array;
 }
+
+/** Flow of each chord of a tree in the direction of its arrow; by pipe, 0 elsewhere. */
+export type ChordFlows = Float64Array;
 
 /** Colder than this, water in a return would freeze; the ambient enthalpy is not taken below it. */
 const COLDEST_WATER_K = 274.15;
@@ -30,6 +37,7 @@ export function ambientLiquidEnthalpyJKg(ambientTemperatureK: number): number {
 /**
  * Flows and enthalpies of a tree, from the traps down: h does not depend on pressure, so this needs no iteration.
  *     m = Σ m_i,   h = Σ m_i h_i / m;   a vessel's liquid goes on at h_l(p_v), (1 − x) m of it
+ * Chords take what they are given, and each node's way out the rest.
  * Kinetic and potential energy are left out (docs/methods/network-walk.md shows their size).
  * @throws ElementFailure where a trap, inlet or vessel stands outside the steam properties
  */
@@ -38,10 +46,13 @@ export function flowAndEnergy(
   nodes: readonly OperatingNode[],
   pipes: readonly (PipeGeometry | undefined)[],
   ambientEnthalpyJKg: number,
+  chordFlows?: ChordFlows,
 ): FlowAndEnergy {
   const massFlowKgS = new Float64Array(tree.nodeCount);
   const enthalpyJKg = new Float64Array(tree.nodeCount);
+  const pipeFlowKgS = new Float64Array(pipes.length);
   const enthalpyFlowW = new Float64Array(tree.nodeCount);
+  const chordsFrom = chordsByInlet(tree);
   const add = (index: number, flowKgS: number, h: number): void => {
     massFlowKgS[index] = (massFlowKgS[index] as number) + flowKgS;
     enthalpyFlowW[index] = (enthalpyFlowW[index] as number) + flowKgS * h;
@@ -57,15 +68,23 @@ export function flowAndEnergy(
     const flow = massFlowKgS[index] as number;
     const h = flow > 0 ? (enthalpyFlowW[index] as number) / flow : ambientEnthalpyJKg;
     enthalpyJKg[index] = h;
-    const pipe = pipes[tree.outPipe[index] as number];
-    if (pipe === undefined) continue;
-    const outlet = enthalpyAlong(
-      { massFlowKgS: flow, inletEnthalpyJKg: h, heatLossWM: pipe.heatLossWM, ambientEnthalpyJKg },
-      pipe.lengthM,
-    );
-    add(tree.drainsTo[index] as number, flow, outlet);
+    let rest = flow;
+    for (const chord of chordsFrom.get(index) ?? []) {
+      const taken = chordFlows?.[chord] ?? 0;
+      rest -= taken;
+      send(chord, outletNode(tree, chord), taken, h);
+    }
+    const out = tree.outPipe[index] as number;
+    if (out !== -1) send(out, tree.drainsTo[index] as number, rest, h);
   }
-  return { massFlowKgS, enthalpyJKg };
+  return { massFlowKgS, enthalpyJKg, pipeFlowKgS };
+
+  function send(index: number, to: number, flow: number, h: number): void {
+    const pipe = pipes[index];
+    if (pipe === undefined) return;
+    pipeFlowKgS[index] = flow;
+    add(to, flow, outletEnthalpyJKg(pipe, flow, h, ambientEnthalpyJKg));
+  }
 
   function addSource(index: number, node: OperatingNode): void {
     if (node.kind === 'trap') {
@@ -86,6 +105,27 @@ export function flowAndEnergy(
     if (h <= liquid) add(outlet, inflow, h);
     else add(outlet, inflow * Math.max(0, (vapour - h) / (vapour - liquid)), liquid);
   }
+}
+
+function chordsByInlet(tree: ReturnTree): Map<number, number[]> {
+  const chordsFrom = new Map<number, number[]>();
+  for (const chord of tree.chords) {
+    const node = inletNode(tree, chord);
+    const list = chordsFrom.get(node);
+    if (list === undefined) chordsFrom.set(node, [chord]);
+    else list.push(chord);
+  }
+  return chordsFrom;
+}
+
+/** Enthalpy of what leaves a pipe; see {@link enthalpyAlong}. */
+export function outletEnthalpyJKg(
+  { heatLossWM, lengthM }: Pick<PipeGeometry, 'heatLossWM' | 'lengthM'>,
+  massFlowKgS: number,
+  inletEnthalpyJKg: number,
+  ambientEnthalpyJKg: number,
+): number {
+  return enthalpyAlong({ massFlowKgS, inletEnthalpyJKg, heatLossWM, ambientEnthalpyJKg }, lengthM);
 }
 
 /**

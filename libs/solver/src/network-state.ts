@@ -1,5 +1,7 @@
 import type { NetworkFile } from '@riseback/network';
-import { flowAndEnergy, type FlowAndEnergy } from './flow-and-energy';
+import { closeMeshes, FlowCannotLeaveError } from './close-meshes';
+import { ElementFailure } from './element-failure';
+import { flowAndEnergy, type ChordFlows, type FlowAndEnergy } from './flow-and-energy';
 import type { OperatingNode } from './operating-case';
 import type { PipeGeometry } from './pipe-geometry';
 import type { MarchOptions } from './pipe-march';
@@ -25,14 +27,29 @@ export interface NetworkState {
 }
 
 /**
- * Solves a network with its nodes as they stand in one state.
+ * Solves a network with its nodes as they stand in one state: a tree by one walk, meshes by closing them first.
  * @throws ElementFailure where there is no solution
  */
 export function networkState(
-  { file, geometries, tree, ambientEnthalpyJKg }: PreparedNetwork,
+  prepared: PreparedNetwork,
   nodes: readonly OperatingNode[],
   march: MarchOptions,
 ): NetworkState {
-  const flows = { ...flowAndEnergy(tree, nodes, geometries, ambientEnthalpyJKg), ambientEnthalpyJKg };
-  return { tree, flows, walk: pressureWalk(file, tree, nodes, geometries, flows, march), iterations: 1 };
+  const { file, geometries, ambientEnthalpyJKg } = prepared;
+  const { tree, chordFlows, iterations } = directed(prepared, nodes, march);
+  const flows = { ...flowAndEnergy(tree, nodes, geometries, ambientEnthalpyJKg, chordFlows), ambientEnthalpyJKg };
+  return { tree, flows, walk: pressureWalk(file, tree, nodes, geometries, flows, march), iterations };
+}
+
+function directed(
+  prepared: PreparedNetwork,
+  nodes: readonly OperatingNode[],
+  march: MarchOptions,
+): { readonly tree: ReturnTree; readonly chordFlows?: ChordFlows; readonly iterations: number } {
+  const { file, tree } = prepared;
+  if (tree.chords.length > 0) return closeMeshes(prepared, nodes, march);
+  if (tree.upstreamFirst.length === tree.downstreamFirst.length) return { tree, iterations: 1 };
+  const vessel = tree.vesselOfOutlet.find((_, k) => tree.outPipe[file.nodes.length + k] !== -1) ?? 0;
+  const reason = new FlowCannotLeaveError('the liquid of this flash vessel comes back to it');
+  throw new ElementFailure((file.nodes[vessel] as { id: string }).id, `/nodes/${vessel}`, reason);
 }

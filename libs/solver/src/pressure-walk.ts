@@ -1,4 +1,4 @@
-import type { NetworkFile } from '@riseback/network';
+import type { NetworkFile, PipeRun } from '@riseback/network';
 import { saturationState, type SaturationState } from '@riseback/steam';
 import { atElement } from './element-failure';
 import type { FlowAndEnergy, PipeFlow } from './flow-and-energy';
@@ -6,7 +6,7 @@ import { handCheckLiftPa } from './hand-check';
 import type { OperatingNode } from './operating-case';
 import { piecesAgainstFlow, type PipeGeometry } from './pipe-geometry';
 import { PipeMarcher, type MarchedPipe, type MarchOptions } from './pipe-march';
-import type { ReturnTree } from './return-tree';
+import { inletNode, outletNode, type ReturnTree } from './return-tree';
 
 /** What stands at each node of the tree above the end of its walk, by index; untouched where no fixed pressure is reached. */
 export interface PressureWalk {
@@ -21,7 +21,8 @@ export interface PressureWalk {
 }
 
 /**
- * Pressures from the nodes of fixed pressure up, each pipe once, in the order in which the tree was found: no recursion.
+ * Pressures from the nodes of fixed pressure up, each pipe once, in the order in which the tree was found: no recursion. Each
+ * node's pressure comes up its way out; a chord is marched to the same node for itself, and meets it where its mesh is closed.
  * @throws ElementFailure where a pressure leaves the steam properties
  */
 export function pressureWalk(
@@ -46,6 +47,7 @@ export function pressureWalk(
       walkUpTo(index);
     }
   }
+  for (const chord of tree.chords) marched[chord] = marchChord(chord);
   return { saturation, pressurePa, staticPa, frictionPa, flashPa, handCheckPa, marched };
 
   function standAt(
@@ -62,37 +64,56 @@ export function pressureWalk(
 
   function walkUpTo(index: number): void {
     const pipeIndex = tree.outPipe[index] as number;
-    const pipe = file.pipes[pipeIndex];
     const geometry = geometries[pipeIndex];
-    if (pipe === undefined || geometry === undefined) return;
+    if (geometry === undefined) return;
     const below = tree.drainsTo[index] as number;
-    const pieces = piecesAgainstFlow(geometry.pieces, tree.arrow[pipeIndex] === 1);
-    const flow = pipeFlow(index, geometry, flows);
-    let up: MarchedPipe;
+    const up = march(pipeIndex, geometry, below);
     try {
-      up = marcher.march(geometry, flow, pieces, pressurePa[below] as number);
       saturation[index] = saturationState(up.upstreamPressurePa);
     } catch (error) {
-      throw atElement('pipe', pipe, pipeIndex, error);
+      throw atElement('pipe', file.pipes[pipeIndex] as PipeRun, pipeIndex, error);
     }
     marched[pipeIndex] = up;
     pressurePa[index] = up.upstreamPressurePa;
     staticPa[index] = (staticPa[below] as number) + up.staticPa;
     frictionPa[index] = (frictionPa[below] as number) + up.frictionPa;
     flashPa[index] = (flashPa[below] as number) + up.flashPa;
+    const pieces = piecesAgainstFlow(geometry.pieces, tree.arrow[pipeIndex] === 1);
     handCheckPa[index] = (handCheckPa[below] as number) + handCheckLiftPa(pieces);
+  }
+
+  /** A chord that flows is marched like any pipe; one that stands still holds whatever its ends differ by. */
+  function marchChord(chord: number): MarchedPipe | undefined {
+    const geometry = geometries[chord];
+    if (geometry === undefined) return undefined;
+    const below = outletNode(tree, chord);
+    const up = march(chord, geometry, below);
+    if (flows.pipeFlowKgS[chord] !== 0) return up;
+    const upstreamPressurePa = pressurePa[inletNode(tree, chord)] as number;
+    return { ...up, upstreamPressurePa, staticPa: upstreamPressurePa - (pressurePa[below] as number) };
+  }
+
+  function march(pipeIndex: number, geometry: PipeGeometry, below: number): MarchedPipe {
+    const pieces = piecesAgainstFlow(geometry.pieces, tree.arrow[pipeIndex] === 1);
+    const flow = flowInPipe(tree, pipeIndex, geometry, flows);
+    try {
+      return marcher.march(geometry, flow, pieces, pressurePa[below] as number);
+    } catch (error) {
+      throw atElement('pipe', file.pipes[pipeIndex] as PipeRun, pipeIndex, error);
+    }
   }
 }
 
-/** The flow in the pipe by which a node drains. */
-export function pipeFlow(
-  index: number,
+/** What flows into a pipe. */
+export function flowInPipe(
+  tree: ReturnTree,
+  pipe: number,
   { heatLossWM }: PipeGeometry,
-  { massFlowKgS, enthalpyJKg, ambientEnthalpyJKg }: FlowAndEnergy & { readonly ambientEnthalpyJKg: number },
+  { pipeFlowKgS, enthalpyJKg, ambientEnthalpyJKg }: FlowAndEnergy & { readonly ambientEnthalpyJKg: number },
 ): PipeFlow {
   return {
-    massFlowKgS: massFlowKgS[index] as number,
-    inletEnthalpyJKg: enthalpyJKg[index] as number,
+    massFlowKgS: pipeFlowKgS[pipe] as number,
+    inletEnthalpyJKg: enthalpyJKg[inletNode(tree, pipe)] as number,
     heatLossWM,
     ambientEnthalpyJKg,
   };

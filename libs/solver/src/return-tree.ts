@@ -1,23 +1,22 @@
 import { compareIds, type NetworkFile } from '@riseback/network';
-
-/** A pipe that closes a loop, or joins two nodes of fixed pressure, so that the network is not a tree. */
-export interface TreeBreak {
-  readonly pipe: number;
-  readonly why: 'loop' | 'parallelReceivers' | 'vesselCycle';
-}
+import { pipesAtNode } from './mesh-network';
 
 /**
- * The network as trees that drain to nodes of fixed pressure (receivers and flash vessels), by index in the file's order.
+ * The network as trees that drain to nodes of fixed pressure (receivers and flash vessels), by index in the file's order, and the
+ * chords that make meshes of them.
  * A flash vessel stands twice: as the end of what drains into it, and after all file nodes as the source of its leaving pipe.
  */
 export interface ReturnTree {
   /** File nodes and vessel outlets together. */
   readonly nodeCount: number;
-  /** Nodes that reach a fixed pressure, each after the node it drains to. */
+  /** By pipe: its ends, −1 where it is as if not there. What leaves a vessel starts at its outlet. */
+  readonly from: Int32Array;
+  readonly to: Int32Array;
+  /** Nodes that reach a fixed pressure, each after the nodes it drains to. */
   readonly downstreamFirst: readonly number[];
-  /** The same nodes, each after all that drain into it, vessels before what they feed. */
+  /** The same nodes, each after all that drain into it, vessels before what they feed; empty where vessels feed each other. */
   readonly upstreamFirst: readonly number[];
-  /** The pipe by which a node drains; −1 at the end of a walk and where nothing is reached. */
+  /** The pipe by which a node drains, that of its largest outflow; −1 at the end of a walk and where nothing is reached. */
   readonly outPipe: Int32Array;
   /** The node it drains to; −1 likewise. */
   readonly drainsTo: Int32Array;
@@ -25,125 +24,129 @@ export interface ReturnTree {
   readonly endOfWalk: Int32Array;
   /** By pipe: 1 where the flow runs with the arrow, −1 against it, 0 where it leads to no fixed pressure. */
   readonly arrow: Int8Array;
+  /** Pipes that are nobody's way out, by id: each closes a loop, or joins what drains to two fixed pressures. */
+  readonly chords: readonly number[];
   /** By vessel outlet (index less the number of file nodes): the vessel. */
   readonly vesselOfOutlet: readonly number[];
   /** By file node: the outlet of a vessel, −1 elsewhere. */
   readonly outletOfVessel: Int32Array;
-  readonly breaks: readonly TreeBreak[];
+}
+
+/** The node at which a pipe's flow enters it. */
+export function inletNode({ arrow, from, to }: ReturnTree, pipe: number): number {
+  return (arrow[pipe] === -1 ? to : from)[pipe] as number;
+}
+
+/** The node at which it leaves. */
+export function outletNode({ arrow, from, to }: ReturnTree, pipe: number): number {
+  return (arrow[pipe] === -1 ? from : to)[pipe] as number;
 }
 
 /**
- * Finds the trees, in time linear in nodes and pipes.
+ * Finds the trees, in time linear in nodes and pipes. No way leads against a check valve unless there is no other.
  * @param isSound by pipe; one that is not is as if not there. Left out, all are
  */
 export function returnTree(file: NetworkFile, isSound?: readonly boolean[]): ReturnTree {
   const { nodes, pipes } = file;
   const vesselOfOutlet: number[] = [];
   const outletOfVessel = new Int32Array(nodes.length).fill(-1);
-  const indexOf = new Map(nodes.map((node, i) => [node.id, i]));
+  const indexOf = new Map<string, number>();
   nodes.forEach((node, i) => {
+    indexOf.set(node.id, i);
     if (node.kind === 'flashVessel') outletOfVessel[i] = nodes.length + vesselOfOutlet.push(i) - 1;
   });
   const nodeCount = nodes.length + vesselOfOutlet.length;
-
-  const ends = pipes.map((pipe, i) =>
-    (isSound?.[i] ?? true) ? endsOf(pipe.from, pipe.to, indexOf, outletOfVessel) : undefined,
-  );
-  const touching = pipesByNode(nodeCount, ends);
+  const from = new Int32Array(pipes.length).fill(-1);
+  const to = new Int32Array(pipes.length).fill(-1);
+  pipes.forEach((pipe, i) => {
+    const start = indexOf.get(pipe.from);
+    const end = indexOf.get(pipe.to);
+    if (isSound?.[i] === false || start === undefined || end === undefined) return;
+    const outlet = outletOfVessel[start] as number;
+    from[i] = outlet === -1 ? start : outlet;
+    to[i] = end;
+  });
+  const at = pipesAtNode(nodeCount, from, to);
   // flows are summed in the order of the pipes' ids, so that the file's order changes no result, not even by rounding
-  for (const list of touching) list.sort((a, b) => compareIds(idOf(pipes, a), idOf(pipes, b)));
+  const byPipeId = (a: number, b: number): number => compareIds(idOf(pipes, a), idOf(pipes, b));
+  for (let node = 0; node < nodeCount; node++) at.pipes.subarray(at.first[node], at.first[node + 1]).sort(byPipeId);
   const outPipe = new Int32Array(nodeCount).fill(-1);
   const drainsTo = new Int32Array(nodeCount).fill(-1);
   const endOfWalk = new Int32Array(nodeCount).fill(-1);
   const arrow = new Int8Array(pipes.length);
-  const breaks: TreeBreak[] = [];
-  const fixed = nodes
+  const chords: number[] = [];
+  const againstValve: { readonly pipe: number; readonly node: number }[] = [];
+  const queue = nodes
     .flatMap((node, i) => (node.kind === 'receiver' || node.kind === 'flashVessel' ? [i] : []))
     .sort((a, b) => compareIds(idOf(nodes, a), idOf(nodes, b)));
-  for (const node of fixed) endOfWalk[node] = node;
+  for (const node of queue) endOfWalk[node] = node;
 
   // breadth first, all ends at once, so that each node is found from below and the queue is the order of the walk
-  const queue = [...fixed];
-  for (let head = 0; head < queue.length; head++) {
-    const node = queue[head] as number;
-    for (const pipe of touching[node] as number[]) {
-      if (arrow[pipe] !== 0) continue;
-      const { from, to } = ends[pipe] as PipeEnds;
-      const upstream = from === node ? to : from;
-      if (endOfWalk[upstream] !== -1) {
-        breaks.push({ pipe, why: endOfWalk[upstream] === endOfWalk[node] ? 'loop' : 'parallelReceivers' });
-        arrow[pipe] = 1;
-        continue;
-      }
-      arrow[pipe] = upstream === from ? 1 : -1;
-      outPipe[upstream] = pipe;
-      drainsTo[upstream] = node;
-      endOfWalk[upstream] = endOfWalk[node] as number;
-      queue.push(upstream);
-    }
-  }
-  const upstreamFirst = vesselsInOrder(queue, endOfWalk, vesselOfOutlet, nodes.length);
-  if (upstreamFirst === undefined) {
-    const pipe = vesselOfOutlet.map((_, k) => outPipe[nodes.length + k] as number).find((p) => p !== -1);
-    breaks.push({ pipe: pipe ?? 0, why: 'vesselCycle' });
+  let head = 0;
+  walkUp();
+  for (const { pipe, node } of againstValve) {
+    if (arrow[pipe] === 0) reach(pipe, node);
+    walkUp();
   }
   return {
     nodeCount,
+    from,
+    to,
     downstreamFirst: queue,
-    upstreamFirst: upstreamFirst ?? [],
+    upstreamFirst: vesselsInOrder(queue, endOfWalk, vesselOfOutlet, nodes.length),
     outPipe,
     drainsTo,
     endOfWalk,
     arrow,
+    chords: chords.sort(byPipeId),
     vesselOfOutlet,
     outletOfVessel,
-    breaks,
   };
+
+  function walkUp(): void {
+    for (; head < queue.length; head++) {
+      const node = queue[head] as number;
+      for (let i = at.first[node] as number; i < (at.first[node + 1] as number); i++) {
+        const pipe = at.pipes[i] as number;
+        if (arrow[pipe] !== 0) continue;
+        if (to[pipe] !== node && pipes[pipe]?.checkValve === true) againstValve.push({ pipe, node });
+        else reach(pipe, node);
+      }
+    }
+  }
+
+  /** Goes up a pipe from the node that it would drain to. */
+  function reach(pipe: number, node: number): void {
+    const withArrow = to[pipe] === node;
+    const upstream = (withArrow ? from : to)[pipe] as number;
+    if (endOfWalk[upstream] !== -1) {
+      chords.push(pipe);
+      arrow[pipe] = 1;
+      return;
+    }
+    arrow[pipe] = withArrow ? 1 : -1;
+    outPipe[upstream] = pipe;
+    drainsTo[upstream] = node;
+    endOfWalk[upstream] = endOfWalk[node] as number;
+    queue.push(upstream);
+  }
 }
 
 function idOf(elements: readonly { readonly id: string }[], index: number): string {
   return (elements[index] as { readonly id: string }).id;
 }
 
-interface PipeEnds {
-  readonly from: number;
-  readonly to: number;
-}
-
-/** A pipe that leaves a vessel starts at its outlet; one that enters it, or any other node, ends at the node itself. */
-function endsOf(
-  from: string,
-  to: string,
-  indexOf: ReadonlyMap<string, number>,
-  outletOfVessel: Int32Array,
-): PipeEnds | undefined {
-  const start = indexOf.get(from);
-  const end = indexOf.get(to);
-  if (start === undefined || end === undefined) return undefined;
-  const outlet = outletOfVessel[start] as number;
-  return { from: outlet === -1 ? start : outlet, to: end };
-}
-
-function pipesByNode(nodeCount: number, ends: readonly (PipeEnds | undefined)[]): number[][] {
-  const touching = Array.from({ length: nodeCount }, (): number[] => []);
-  ends.forEach((end, pipe) => {
-    if (end === undefined) return;
-    touching[end.from]?.push(pipe);
-    touching[end.to]?.push(pipe);
-  });
-  return touching;
-}
-
 /**
  * Each tree turned upstream first, and the trees so ordered that a vessel is full before its outlet is asked for.
- * @returns undefined where vessels feed each other in a circle
+ * @returns nothing where vessels feed each other in a circle
  */
 function vesselsInOrder(
   downstreamFirst: readonly number[],
   endOfWalk: Int32Array,
   vesselOfOutlet: readonly number[],
   fileNodes: number,
-): number[] | undefined {
+): number[] {
+  if (vesselOfOutlet.length === 0) return downstreamFirst.toReversed();
   const treeOf = new Map<number, number[]>();
   const waitingFor = new Map<number, number>();
   const feeds = new Map<number, number[]>();
@@ -169,5 +172,5 @@ function vesselsInOrder(
       if (waiting === 0) ready.push(fed);
     }
   }
-  return ordered.length === downstreamFirst.length ? ordered : undefined;
+  return ordered.length === downstreamFirst.length ? ordered : [];
 }

@@ -1,15 +1,11 @@
 import { fileFindings, fromFile, solvablePart, type NetworkFile } from '@riseback/network';
 import { insideDiameterM, type PipeGeometry } from './pipe-geometry';
-import { missing, type ProblemError } from './refusal';
-import type { ReturnTree, TreeBreak } from './return-tree';
+import type { ProblemError } from './refusal';
 
-/**
- * What a solve of the whole network cannot pass over, each with its place. Loops are told by {@link loopsIn}: they are sound
- * networks, only not computed yet.
- */
+/** What a solve of the whole network cannot pass over, each with its place. */
 export function mistakesIn(file: NetworkFile, geometries: readonly (PipeGeometry | undefined)[]): ProblemError[] {
   const found = fileFindings(file)
-    .filter(({ code, severity }) => severity === 'error' && code !== 'loop')
+    .filter(({ severity }) => severity === 'error')
     .map(({ pointer, what, remedy }) => ({ pointer, detail: `${what}. ${remedy}` }));
   return [...found, ...impossiblePipes(file, geometries)];
 }
@@ -19,17 +15,6 @@ export function soundPipes(file: NetworkFile, geometries: readonly (PipeGeometry
   const { pipes } = solvablePart(fromFile(file));
   return file.pipes.map(({ id }, i) => pipes.has(id) && geometries[i] !== undefined);
 }
-
-/** What makes the network more than a set of trees, by name. */
-export function loopsIn({ breaks }: ReturnTree): ProblemError[] {
-  return breaks.map(({ pipe, why }) => missing(`/pipes/${pipe}`, BREAK[why]));
-}
-
-const BREAK: Readonly<Record<TreeBreak['why'], string>> = {
-  loop: 'a loop (this pipe closes one)',
-  parallelReceivers: 'a second way down (this pipe joins what drains to two receivers or vessels)',
-  vesselCycle: 'a flash vessel whose liquid comes back to it (through this pipe)',
-};
 
 /** What keeps a pipe from being computed although it is drawn right. */
 function impossiblePipes(file: NetworkFile, geometries: readonly (PipeGeometry | undefined)[]): ProblemError[] {

@@ -268,18 +268,6 @@ describe('what is not computed yet is refused by name', () => {
     },
   );
 
-  it.each([true, false])('a loop and a second way down (live solve: %s)', (partial) => {
-    const nodes = [trap, { id: 'J1', kind: 'junction', elevationM: 0 }, receiver, { ...receiver, id: 'R2' }];
-    const start = { ...riser, to: 'J1' };
-    const down = { ...riser, id: 'L2', from: 'J1' };
-    expect(unavailable({ nodes, pipes: [start, down, { ...down, id: 'L3' }] }, { partial })[0]?.detail).toMatch(
-      /a loop.*not available yet/,
-    );
-    expect(
-      unavailable({ nodes, pipes: [start, down, { ...down, id: 'L3', to: 'R2' }] }, { partial })[0]?.detail,
-    ).toMatch(/second way/);
-  });
-
   it('a case that the file does not have, with those it has', () => {
     expect(unavailable({ cases: [{ id: 'a', name: 'A' }] }, { caseId: 'z' })).toEqual([
       { pointer: '/cases', detail: 'There is no case "z"; there are a.' },

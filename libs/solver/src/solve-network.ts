@@ -1,4 +1,5 @@
 import type { FileCase, NetworkFile } from '@riseback/network';
+import { NoConvergenceError } from '@riseback/numerics';
 import { assembleResult } from './assemble-result';
 import { limitsInForce } from './check-limits';
 import { ElementFailure } from './element-failure';
@@ -9,8 +10,9 @@ import { pipeGeometries } from './pipe-geometry';
 import { MARCH_TOLERANCE_PA, type GradientEvaluation } from './pipe-march';
 import { noSolution, notAvailable, notAvailableYet, unknownCase, unsolvable, type Refusal } from './refusal';
 import { returnTree } from './return-tree';
+import { shutValves } from './shut-valves';
 import type { SolveResult } from './solve-result';
-import { loopsIn, mistakesIn, soundPipes } from './solvability';
+import { mistakesIn, soundPipes } from './solvability';
 
 export interface SolveOptions {
   /** '' is the plain network; left out, the first case, or the plain network if the file has none. */
@@ -24,7 +26,7 @@ export interface SolveOptions {
 }
 
 /**
- * Back pressure at every trap of a network of trees, in one operating case.
+ * Back pressure at every trap of a network, in one operating case.
  * @returns a refusal for all that can be seen in the file without computing; else a result, which names a problem and has
  *   `converged: false` where computing found that there is no solution
  * Method: docs/methods/network-walk.md.
@@ -36,7 +38,7 @@ export function solveNetwork(file: NetworkFile, options: SolveOptions): SolveRes
   const mistakes = options.partial ? [] : mistakesIn(file, geometries);
   const isSound = mistakes.length === 0 && !options.partial ? undefined : soundPipes(file, geometries);
   const tree = returnTree(file, isSound);
-  const unavailable = [...notAvailableYet(file), ...loopsIn(tree)];
+  const unavailable = notAvailableYet(file);
   const openMistakes = openWithoutOrifice(file, operatingCase);
   if (mistakes.length + openMistakes.length > 0) return unsolvable([...mistakes, ...openMistakes, ...unavailable]);
   if (unavailable.length > 0) return notAvailable(unavailable);
@@ -50,7 +52,7 @@ export function solveNetwork(file: NetworkFile, options: SolveOptions): SolveRes
       onGradient: options.onGradient,
     };
     const { nodes, state } = stateWithOpenTraps({ file, geometries, tree, ambientEnthalpyJKg }, inCase, march);
-    return assembleResult({
+    const result = assembleResult({
       file,
       caseId: operatingCase.id,
       nodes,
@@ -60,6 +62,8 @@ export function solveNetwork(file: NetworkFile, options: SolveOptions): SolveRes
       walk: state.walk,
       limits: limitsInForce(file.limits),
     });
+    const warnings = [...result.warnings, ...shutValves(file, state)];
+    return { ...result, iterations: state.iterations, warnings };
   } catch (error) {
     if (!(error instanceof ElementFailure)) throw error;
     return unsolved(operatingCase, error);
@@ -71,15 +75,15 @@ export function isRefusal(outcome: SolveResult | Refusal): outcome is Refusal {
   return 'refused' in outcome;
 }
 
-function unsolved(operatingCase: FileCase, { element, pointer, message }: ElementFailure): SolveResult {
+function unsolved(operatingCase: FileCase, { element, pointer, reason }: ElementFailure): SolveResult {
   return {
     case: operatingCase.id,
     converged: false,
-    iterations: 1,
+    iterations: reason instanceof NoConvergenceError ? Math.max(1, reason.iterations) : 1,
     nodes: [],
     pipes: [],
     traps: [],
     warnings: [],
-    problem: noSolution(element, pointer, message),
+    problem: noSolution(element, pointer, reason.message),
   };
 }
