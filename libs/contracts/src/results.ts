@@ -12,6 +12,7 @@ export const FindingQuantity = z.enum([
   'massFlow',
   'velocity',
   'temperature',
+  'temperatureDifference',
   'pressureGradient',
   'momentumFlux',
   'fraction',
@@ -76,10 +77,6 @@ export const PipeResult = z.object({
 });
 export type PipeResult = z.infer<typeof PipeResult>;
 
-/** Lowest and highest back pressure over a set of methods, Pa absolute. */
-export const PressureBand = z.object({ lowPa: z.number(), highPa: z.number() });
-export type PressureBand = z.infer<typeof PressureBand>;
-
 export const TrapResult = z.object({
   id: z.string(),
   backPressurePa: z.number(),
@@ -90,10 +87,9 @@ export const TrapResult = z.object({
   differentialPa: z.number(),
   handCheck: z.object({ staticPa: z.number(), backPressurePa: z.number() }),
   liveSteamKgS: z.number().optional(),
+  basis: z.enum(['average', 'ownPeak', 'probable']).optional(),
+  /** Over every friction method and basis of lift; then over those that suit the flow in each pipe. */
   walk: z.array(z.string()),
-  /** Over every friction method and basis of lift; then over those that suit each pipe's flow. Absent while they are not computed. */
-  spread: PressureBand.optional(),
-  credible: PressureBand.optional(),
   checks: z.array(TrapCheck),
   notChecked: z.array(z.object({ code: z.string(), reason: z.string() })),
 });

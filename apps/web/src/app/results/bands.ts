@@ -1,10 +1,10 @@
-import type { PressureBand, TrapResult } from '@riseback/contracts';
+import type { Band, TrapResult } from '@riseback/contracts';
 import { type DisplayUnits, displayUnit, formatQuantity } from '@riseback/units';
 
 /** The two bands of a trap's back pressure: by every method, and by those that suit the flow in each pipe. */
 export interface Bands {
-  readonly spread: PressureBand | undefined;
-  readonly credible: PressureBand | undefined;
+  readonly spread: Band | undefined;
+  readonly credible: Band | undefined;
 }
 
 export function bandsOf({ spread, credible }: Pick<TrapResult, 'spread' | 'credible'>): Bands {
@@ -12,7 +12,7 @@ export function bandsOf({ spread, credible }: Pick<TrapResult, 'spread' | 'credi
 }
 
 /** "21.0 to 46.7", without a unit. */
-export function bandNumbers({ lowPa, highPa }: PressureBand, units: DisplayUnits): string {
+export function bandNumbers({ lowPa, highPa }: Band, units: DisplayUnits): string {
   const pressure = (pa: number) => formatQuantity(pa, 'pressure', units);
   return `${pressure(lowPa)} to ${pressure(highPa)}`;
 }

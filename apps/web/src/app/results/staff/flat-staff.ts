@@ -1,4 +1,4 @@
-import type { PressureBand } from '@riseback/contracts';
+import type { Band } from '@riseback/contracts';
 import type { StaffModel, StaffPartKind } from './staff-model';
 
 /** The bands lie under the tube: a thin line for the spread, a broad one on it for the credible part. */
@@ -39,6 +39,6 @@ export function flatStaff(model: StaffModel, width: number, scaleMaximumPa: numb
   };
 }
 
-function stretch(band: PressureBand | undefined, xOf: (pa: number) => number): FlatStretch | null {
+function stretch(band: Band | undefined, xOf: (pa: number) => number): FlatStretch | null {
   return band === undefined ? null : { from: xOf(band.lowPa), to: xOf(band.highPa) };
 }

@@ -1,4 +1,4 @@
-import type { PressureBand, TrapResult } from '@riseback/contracts';
+import type { Band, TrapResult } from '@riseback/contracts';
 import { DEFAULT_LIFT_RULE_PA_M } from '@riseback/network';
 import { type DisplayUnits, formatQuantity, roundCumulatively, toDisplay } from '@riseback/units';
 import { bandsOf, bandWords } from '../bands';
@@ -26,9 +26,9 @@ export interface StaffModel {
   readonly differentialPa: number;
   readonly limitPa: number | undefined;
   /** Lowest and highest by every method; undefined while it is not computed. */
-  readonly spread: PressureBand | undefined;
+  readonly spread: Band | undefined;
   /** The part of it that suits the flow; undefined likewise. */
-  readonly credible: PressureBand | undefined;
+  readonly credible: Band | undefined;
   readonly parts: readonly StaffPart[];
   /** The whole staff in one sentence. */
   readonly sentence: string;

@@ -1,4 +1,4 @@
-import type { PressureBand } from '@riseback/contracts';
+import type { Band } from '@riseback/contracts';
 import { type DisplayUnits, displayUnit, formatQuantity, fromDisplay, toDisplay } from '@riseback/units';
 import { bandNumbers } from '../bands';
 import { niceTicks } from '../nice-ticks';
@@ -144,7 +144,7 @@ function bandTopPa({ footPa, topPa, spread, credible }: StaffModel): number {
   return Math.max(topPa, most);
 }
 
-function stretch(band: PressureBand | undefined, yOf: (pa: number) => number): TallStretch | null {
+function stretch(band: Band | undefined, yOf: (pa: number) => number): TallStretch | null {
   return band === undefined ? null : { top: Math.max(0, yOf(band.highPa)), bottom: yOf(band.lowPa) };
 }
 
