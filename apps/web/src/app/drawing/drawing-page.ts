@@ -12,7 +12,7 @@ import {
 import { Router } from '@angular/router';
 import type { Position } from '@riseback/network';
 import { NetworkStore } from '../networks/network-store';
-import { allFindings } from '../results/finding-list';
+import { allFindings, findingsOfCases } from '../results/finding-list';
 import { FindingsList } from '../results/findings-list/findings-list';
 import { DrawingCommands } from './drawing-commands';
 import { DrawingScene } from './drawing-scene';
@@ -56,13 +56,15 @@ export class DrawingPage {
   protected readonly findings = computed(() => {
     const document = this.store.document();
     if (document === null) return [];
-    return allFindings({
-      document,
-      topology: this.store.topology(),
-      outcome: this.store.outcome(),
-      units: this.store.units(),
-    });
+    const sources = { document, topology: this.store.topology(), units: this.store.units() };
+    return this.store.showsWorst()
+      ? findingsOfCases({ ...sources, outcomes: this.store.caseOutcomes() })
+      : allFindings({ ...sources, outcome: this.store.outcome() });
   });
+  /** Said beside each finding where several cases stand together. */
+  protected readonly nameOfCase = computed(() =>
+    this.store.showsWorst() ? (caseId: string) => this.store.nameOfCase(caseId) : undefined,
+  );
   protected readonly zoneAt = computed(() => {
     const sheet = this.scene.sheet();
     return (position: Position) => zoneOf(position, sheet);

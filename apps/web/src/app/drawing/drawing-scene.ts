@@ -1,5 +1,6 @@
 import { computed, inject, Injectable } from '@angular/core';
 import type { SolveWarning } from '@riseback/contracts';
+import { overrideId } from '@riseback/network';
 import { NetworkStore } from '../networks/network-store';
 import { DrawingState } from './drawing-state';
 import { colourScale } from './model/colour-scale';
@@ -45,7 +46,8 @@ export class DrawingScene {
     }
     const isolated = new Set<string>();
     for (const [id, { value }] of this.store.document()?.overrides ?? []) {
-      if (value.state === 'isolated' && id.startsWith(`${this.store.caseId()}/`)) isolated.add(value.node);
+      if (value.state === 'isolated' && id === overrideId(this.store.caseOf(value.node), value.node))
+        isolated.add(value.node);
     }
     return {
       traps: this.store.trapResults(),
@@ -53,6 +55,7 @@ export class DrawingScene {
       pipes: this.store.pipeResults(),
       warnings,
       isolated,
+      caseNameOf: this.store.showsWorst() ? (id) => this.store.nameOfCase(this.store.caseOf(id)) : () => '',
     };
   });
 

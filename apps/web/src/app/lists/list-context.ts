@@ -13,11 +13,12 @@ interface Solved {
   readonly traps: ReadonlyMap<string, TrapResult>;
   readonly pipes: ReadonlyMap<string, PipeResult>;
   readonly nodes: ReadonlyMap<string, NodeResult>;
+  readonly caseNameOf?: ((id: string) => string) | undefined;
 }
 
 /** All that the cells of the lists are printed from. */
 export function listContext(solved: Solved): ListContext {
-  const { document, units, topology, result, traps, pipes, nodes } = solved;
+  const { document, units, topology, result, traps, pipes, nodes, caseNameOf } = solved;
   const findings = rowFindings(topology, result, units);
   const leftOut = new Set(result?.leftOut);
   return {
@@ -27,6 +28,7 @@ export function listContext(solved: Solved): ListContext {
     pipes,
     nodes,
     findings,
+    caseNameOf,
     staffTopPa: staffTopPa(result, units),
     waiting: (id) => {
       if (result === null) return withoutResult(solved.outcome);

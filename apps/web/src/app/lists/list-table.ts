@@ -89,10 +89,11 @@ export interface ListTable {
 const NOTHING: CellView = { text: '', derived: false, waiting: false, sentences: [] };
 
 export function tabulate<E extends ListedElement>(
-  columns: readonly Column<E>[],
+  allColumns: readonly Column<E>[],
   elements: readonly E[],
   context: ListContext,
 ): ListTable {
+  const columns = allColumns.filter(({ wanted }) => wanted === undefined || wanted(context));
   const elementOf = new Map(elements.map((element) => [element.id, element]));
   const columnOf = new Map(columns.map((column) => [column.key, column]));
   const firstResult = columns.find(({ group }) => group === 'result')?.key;

@@ -19,6 +19,7 @@ import { MatTabLink, MatTabNav, MatTabNavPanel } from '@angular/material/tabs';
 import { ActivatedRoute, Router, RouterLink } from '@angular/router';
 import { firstValueFrom } from 'rxjs';
 import { NetworkStore } from '../networks/network-store';
+import { UndoButtons, type UndoneStep } from '../networks/undo-buttons';
 import { backPressureLimit } from '../results/back-pressure-limit';
 import { BulkBar } from './bulk-bar/bulk-bar';
 import type { DialogName } from './columns/column';
@@ -36,9 +37,8 @@ const ADDRESS_DELAY_MS = 300;
 /** The elements of the network as tables: inputs to be edited in place, results beside them. */
 @Component({
   selector: 'app-lists-page',
-  imports: [BulkBar, ListGrid, MatButton, MatTabLink, MatTabNav, MatTabNavPanel, RouterLink],
+  imports: [BulkBar, ListGrid, MatButton, MatTabLink, MatTabNav, MatTabNavPanel, RouterLink, UndoButtons],
   changeDetection: ChangeDetectionStrategy.OnPush,
-  host: { '(document:keydown)': 'undoByKey($event)' },
   templateUrl: './lists-page.html',
   styleUrl: './lists-page.scss',
 })
@@ -89,6 +89,7 @@ export class ListsPage {
       traps: this.store.trapResults(),
       pipes: this.store.pipeResults(),
       nodes: this.store.nodeResults(),
+      caseNameOf: this.store.showsWorst() ? (id) => this.store.nameOfCase(this.store.caseOf(id)) : undefined,
     });
   });
   protected readonly table = computed(() => {
@@ -169,27 +170,6 @@ export class ListsPage {
     this.grid()?.focus();
   }
 
-  protected undo(): void {
-    const label = this.store.undoLabel();
-    this.afterStep(this.store.undo(), `Undone: ${label ?? ''}`);
-  }
-
-  protected redo(): void {
-    const label = this.store.redoLabel();
-    this.afterStep(this.store.redo(), `Done again: ${label ?? ''}`);
-  }
-
-  /** Not while a text is typed, where the browser's own undo belongs, nor behind a dialog. */
-  protected undoByKey(event: KeyboardEvent): void {
-    if (!(event.ctrlKey || event.metaKey) || event.altKey || !this.store.mayDraw()) return;
-    if (this.dialog.openDialogs.length > 0 || isTextBox(event.target)) return;
-    const key = event.key.toLowerCase();
-    if (key === 'z' && !event.shiftKey) this.undo();
-    else if (key === 'y' || (key === 'z' && event.shiftKey)) this.redo();
-    else return;
-    event.preventDefault();
-  }
-
   /** The address names the active row, so that the other views open at the same element and the link can be passed on. */
   protected nameInAddress(id: string): void {
     clearTimeout(this.addressTimer);
@@ -213,10 +193,10 @@ export class ListsPage {
     });
   }
 
-  private afterStep(touched: readonly string[] | null, words: string): void {
-    this.told.set(touched === null ? this.store.lastRefusal().join(' ') || 'Nothing to undo' : words);
+  protected afterStep({ touched, words }: UndoneStep): void {
+    this.told.set(words);
     const ids = new Set(this.table()?.ids);
-    const shown = touched?.find((id) => ids.has(id));
+    const shown = touched.find((id) => ids.has(id));
     if (shown !== undefined) this.showRowSoon(shown);
   }
 
@@ -240,10 +220,4 @@ function firstList(): ElementList {
   const [first] = ELEMENT_LISTS;
   if (first === undefined) throw new RangeError('There are no lists');
   return first;
-}
-
-function isTextBox(target: EventTarget | null): boolean {
-  return (
-    target instanceof HTMLInputElement || target instanceof HTMLTextAreaElement || target instanceof HTMLSelectElement
-  );
 }

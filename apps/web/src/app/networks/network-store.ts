@@ -11,9 +11,10 @@ import type {
   SolveResult,
   TrapResult,
 } from '@riseback/contracts';
-import { type EditOp, findings, type NetworkDocument } from '@riseback/network';
+import { type EditOp, findings, inOrder, type NetworkDocument, type OperatingCase } from '@riseback/network';
 import type { DisplayUnits } from '@riseback/units';
 import { catchError, EMPTY, expand, filter, map, type Observable, of, scan, switchMap, timer } from 'rxjs';
+import { WORST_OF_ALL, worstOfCases } from '../results/worst-of-cases';
 import { SessionStore } from '../session/session-store';
 import { toProblem } from '../shared/problem';
 import { EditQueue } from './edit-queue';
@@ -106,18 +107,43 @@ export class NetworkStore {
     return this.queue.saveState() === 'notSaved' ? { kind: 'stale' } : { kind: 'solving' };
   });
 
-  readonly cases = computed(() => [...(this.document()?.cases.values() ?? [])].map(({ value }) => value));
+  /** The operating cases in the file's order. */
+  readonly cases = computed((): readonly OperatingCase[] => {
+    const document = this.document();
+    return document === null ? [] : inOrder(document.cases).map(([, { value }]) => value);
+  });
+  /** Stands for the worst of all cases where a case's id stands; a case that took the word for itself keeps it. */
+  readonly worstCaseId = computed(() => (this.cases().some(({ id }) => id === WORST_OF_ALL) ? '~worst' : WORST_OF_ALL));
+  /** One case alone is its own worst. */
+  readonly hasWorst = computed(() => this.cases().length > 1);
   readonly caseId = computed(() => {
     const ids = this.cases().map(({ id }) => id);
     const wanted = this.wantedCaseId();
+    if (this.hasWorst() && wanted === this.worstCaseId()) return wanted;
     return ids.includes(wanted) ? wanted : (ids[0] ?? '');
   });
+  readonly showsWorst = computed(() => this.hasWorst() && this.caseId() === this.worstCaseId());
+  /** What the chosen case is called; '' for the plain network. */
+  readonly caseName = computed(() => (this.showsWorst() ? 'Worst of all' : this.nameOfCase(this.caseId())));
   readonly outcomes = computed(
     (): ReadonlyMap<string, CaseOutcome> =>
       new Map((this.finished()?.cases ?? []).map((outcome) => [outcome.caseId, outcome])),
   );
-  readonly outcome = computed((): CaseOutcome | null => this.outcomes().get(this.caseId()) ?? null);
-  /** The chosen case's result; null when there is none yet or the case is refused. */
+  /** Outcomes of the cases that there are, in their order. */
+  readonly caseOutcomes = computed(() => this.cases().flatMap(({ id }) => this.outcomes().get(id) ?? []));
+  /** The worst of all cases; null while none has a result. */
+  readonly worst = computed(() => worstOfCases(this.caseOutcomes()));
+  readonly outcome = computed((): CaseOutcome | null => {
+    if (!this.showsWorst()) return this.outcomes().get(this.caseId()) ?? null;
+    const worst = this.worst();
+    // without any result, the first refusal says why
+    if (worst === null) return this.caseOutcomes()[0] ?? null;
+    return { caseId: this.worstCaseId(), status: 'solved', result: worst.result };
+  });
+  /**
+   * The chosen case's result; null when there is none yet or the case is refused. For the worst of all it joins each element's own
+   * worst case, so an account along a way needs `resultAt`.
+   */
   readonly result = computed((): SolveResult | null => {
     const outcome = this.outcome();
     return outcome?.status === 'solved' ? outcome.result : null;
@@ -125,6 +151,21 @@ export class NetworkStore {
   readonly trapResults = computed((): ReadonlyMap<string, TrapResult> => byId(this.result()?.traps));
   readonly pipeResults = computed((): ReadonlyMap<string, PipeResult> => byId(this.result()?.pipes));
   readonly nodeResults = computed((): ReadonlyMap<string, NodeResult> => byId(this.result()?.nodes));
+
+  /** The case whose result is shown for an element: the chosen one, or the element's own worst. */
+  caseOf(elementId: string): string {
+    return this.showsWorst() ? (this.worst()?.caseOf.get(elementId) ?? '') : this.caseId();
+  }
+
+  /** The whole result of the case that is shown for an element. */
+  resultAt(elementId: string): SolveResult | null {
+    const outcome = this.outcomes().get(this.caseOf(elementId));
+    return outcome?.status === 'solved' ? outcome.result : null;
+  }
+
+  nameOfCase(caseId: string): string {
+    return this.document()?.cases.get(caseId)?.value.name ?? '';
+  }
 
   may(permission: Permission): boolean {
     return this.network()?.permissions.includes(permission) ?? false;

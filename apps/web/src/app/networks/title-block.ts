@@ -2,11 +2,24 @@ import { formatDate } from '@angular/common';
 import { ChangeDetectionStrategy, Component, computed, inject, LOCALE_ID } from '@angular/core';
 import { MatButton } from '@angular/material/button';
 import { Router, RouterLink } from '@angular/router';
-import { countVerdicts } from '../results/verdict';
+import type { CaseOutcome } from '@riseback/contracts';
+import { countVerdicts, type VerdictCounts } from '../results/verdict';
 import { SessionStore } from '../session/session-store';
 import { StatusMark } from '../shared/status-mark/status-mark';
 import { FRICTION_WORDS, STATIC_LIFT_WORDS } from './method-words';
 import { NetworkStore } from './network-store';
+
+interface CaseOption {
+  readonly id: string;
+  readonly name: string;
+  readonly worst: boolean;
+  readonly current: boolean;
+  /** Null while there is no result. */
+  readonly counts: VerdictCounts | null;
+  readonly refused: boolean;
+  /** What the counts leave out; '' when nothing. */
+  readonly note: string;
+}
 
 /** The ruled title block under the bar: site, network, cases, method, and whether all is saved and solved. */
 @Component({
@@ -22,18 +35,15 @@ export class TitleBlock {
   private readonly router = inject(Router);
   private readonly locale = inject(LOCALE_ID);
 
-  protected readonly cases = computed(() => {
+  /** The cases, and behind them the worst of all. */
+  protected readonly cases = computed((): CaseOption[] => {
     const outcomes = this.store.outcomes();
-    return this.store.cases().map(({ id, name }) => {
-      const outcome = outcomes.get(id);
-      return {
-        id,
-        name,
-        current: id === this.store.caseId(),
-        counts: outcome?.status === 'solved' && outcome.result.converged ? countVerdicts(outcome.result) : null,
-        refused: outcome !== undefined && (outcome.status === 'refused' || !outcome.result.converged),
-      };
-    });
+    const options = this.store.cases().map(({ id, name }) => ({ id, name, ...countsOf(outcomes.get(id)) }));
+    const worst = this.store.hasWorst() ? [this.worstOption()] : [];
+    return [...options.map((option) => ({ ...option, worst: false, note: '' })), ...worst].map((option) => ({
+      ...option,
+      current: option.id === this.store.caseId(),
+    }));
   });
   protected readonly trapCount = computed(
     () => [...(this.store.document()?.nodes.values() ?? [])].filter(({ value }) => value.kind === 'trap').length,
@@ -56,9 +66,27 @@ export class TitleBlock {
     }
   });
 
+  private worstOption(): Omit<CaseOption, 'current'> {
+    const worst = this.store.worst();
+    const missing = worst?.unanswered.length ?? 0;
+    return {
+      id: this.store.worstCaseId(),
+      name: 'Worst of all',
+      worst: true,
+      counts: worst === null ? null : countVerdicts(worst.result),
+      refused: worst === null && this.store.caseOutcomes().length > 0,
+      note: missing === 0 ? '' : `${String(missing)} without result`,
+    };
+  }
+
   protected chooseCase(id: string): void {
     void this.router.navigate([], { queryParams: { case: id }, queryParamsHandling: 'merge' });
   }
+}
+
+function countsOf(outcome: CaseOutcome | undefined): Pick<CaseOption, 'counts' | 'refused'> {
+  const solved = outcome?.status === 'solved' && outcome.result.converged ? outcome.result : null;
+  return { counts: solved === null ? null : countVerdicts(solved), refused: outcome !== undefined && solved === null };
 }
 
 /** The zone's offset at a time, as formatDate takes it: it knows offsets, not IANA names. */

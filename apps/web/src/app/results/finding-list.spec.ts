@@ -1,7 +1,7 @@
 import type { CaseOutcome, SolveResult, TrapResult } from '@riseback/contracts';
 import { emptyDocument, findings, fromFile, NetworkFileShape, type NetworkDocument } from '@riseback/network';
 import { describe, expect, it } from 'vitest';
-import { allFindings } from './finding-list';
+import { allFindings, findingsOfCases } from './finding-list';
 
 const units = { system: 'us', atmosphericPressurePa: 101_325 } as const;
 
@@ -140,5 +140,60 @@ describe('allFindings', () => {
     const list = said(null, emptyDocument('New'));
     expect(list).toMatchObject([{ severity: 'fail', code: 'noReceiver', element: null }]);
     expect(list[0]?.remedy).toContain('receiver');
+  });
+});
+
+describe('findingsOfCases', () => {
+  const check = (verdict: 'pass' | 'watch' | 'fail', code: string, words: string) => ({
+    code,
+    verdict,
+    message: '',
+    text: [words],
+  });
+  const inCase = (caseId: string, ...traps: TrapResult[]): CaseOutcome => ({ ...solved({ traps }), caseId });
+
+  it('keeps one thing at one trap together by its worst, and says in which case each is so', () => {
+    const list = findingsOfCases({
+      document,
+      topology: [],
+      units,
+      outcomes: [
+        inCase(
+          'design',
+          trap('T1', check('watch', 'capacity', 'Just enough.')),
+          trap('T2', check('fail', 'stall', 'Stalls.')),
+        ),
+        inCase('start-up', trap('T1', check('fail', 'capacity', 'Too small.'))),
+      ],
+    });
+    expect(list.map(({ tag, what, cases }) => [tag, what, cases])).toEqual([
+      ['TR-9', 'Too small.', ['start-up']],
+      ['TR-9', 'Just enough.', ['design']],
+      ['TR-10', 'Stalls.', ['design']],
+    ]);
+    expect(new Set(list.map(({ id }) => id)).size).toBe(3);
+  });
+
+  it('says once what several cases say in the same words', () => {
+    const rated = trap('T1', check('fail', 'bodyRating', 'The body is not rated for it.'));
+    const outcomes = [inCase('design', rated), inCase('start-up', rated)];
+    const list = findingsOfCases({ document, topology: [], units, outcomes });
+    expect(list).toHaveLength(1);
+    expect(list[0]?.cases).toEqual(['design', 'start-up']);
+  });
+
+  it('tells a refused case beside the findings of the drawing, which belong to no case', () => {
+    const problem = { type: '/problems/not-available', title: 'Not available', status: 400, detail: 'Not yet' };
+    const topology = findings({ ...document, pipes: new Map() });
+    const list = findingsOfCases({
+      document,
+      topology,
+      units,
+      outcomes: [{ caseId: 'design', status: 'refused', problem }],
+    });
+    expect(list.filter(({ code }) => code === 'refused').map(({ cases }) => cases)).toEqual([['design']]);
+    expect(list.filter(({ code }) => code !== 'refused').map(({ cases }) => cases)).toEqual(
+      topology.map(() => undefined),
+    );
   });
 });

@@ -31,6 +31,8 @@ export interface Finding {
   readonly what: string;
   readonly why?: string;
   readonly remedy?: string;
+  /** The cases it was found in, where the findings of several stand together; not set where it holds in whatever case. */
+  readonly cases?: readonly string[];
 }
 
 export interface FindingSources {
@@ -45,32 +47,76 @@ const ORDER: Readonly<Record<FindingSeverity, number>> = { fail: 0, watch: 1, no
 
 /** Every finding of a case, worst first; equal ones by tag, as a person counts (TR-9 before TR-10). */
 export function allFindings(sources: FindingSources): Finding[] {
-  const { document, topology, outcome, units } = sources;
-  const found = [
-    ...topology.map((finding) => ofTopology(document, finding)),
-    ...(outcome === null ? [] : ofOutcome(document, outcome, units)),
+  const { document, topology, outcome } = sources;
+  const drawn = topology.map((finding) => ofTopology(document, finding));
+  const found = outcome === null ? [] : foundIn(sources, drawn, outcome);
+  return numbered([...drawn, ...found].sort(worstFirst));
+}
+
+/**
+ * The findings of all cases, worst first. One thing at one element stands together whatever the case, by its worst; where the cases
+ * say the same of it in the same words, they share one entry.
+ */
+export function findingsOfCases(
+  sources: Omit<FindingSources, 'outcome'> & { readonly outcomes: readonly CaseOutcome[] },
+): Finding[] {
+  const { document, topology, outcomes } = sources;
+  const drawn = topology.map((finding) => ofTopology(document, finding));
+  const shared = new Map<string, Unnumbered & { cases: string[] }>();
+  for (const outcome of outcomes) {
+    for (const finding of foundIn(sources, drawn, outcome)) {
+      const { severity, what, remedy } = finding;
+      const key = JSON.stringify([subjectOf(finding), severity, what, remedy]);
+      const before = shared.get(key);
+      if (before === undefined) shared.set(key, { ...finding, cases: [outcome.caseId] });
+      else before.cases.push(outcome.caseId);
+    }
+  }
+  const bySubject = new Map<string, Unnumbered[]>();
+  for (const finding of shared.values()) {
+    const subject = subjectOf(finding);
+    bySubject.set(subject, [...(bySubject.get(subject) ?? []), finding]);
+  }
+  const groups = [
+    ...drawn.map((finding) => [finding]),
+    ...[...bySubject.values()].map((group) => group.sort(worstFirst)),
   ];
-  const covered = new Set(found.map(({ element }) => element?.id));
-  if (outcome?.status === 'solved') found.push(...leftOut(document, outcome.result, covered));
-  return numbered(
-    found.sort(
-      (a, b) =>
-        ORDER[a.severity] - ORDER[b.severity] ||
-        BY_TAG.compare(a.tag, b.tag) ||
-        compareIds(a.element?.id ?? '', b.element?.id ?? ''),
-    ),
-  );
+  return numbered(groups.sort(([a], [b]) => (a === undefined || b === undefined ? 0 : worstFirst(a, b))).flat());
 }
 
 const BY_TAG = new Intl.Collator('en', { numeric: true });
 type Unnumbered = Omit<Finding, 'id'>;
 
+function worstFirst(a: Unnumbered, b: Unnumbered): number {
+  return (
+    ORDER[a.severity] - ORDER[b.severity] ||
+    BY_TAG.compare(a.tag, b.tag) ||
+    compareIds(a.element?.id ?? '', b.element?.id ?? '')
+  );
+}
+
+/** What was found in one case, with what its solve left out unless the drawing or the case already says why. */
+function foundIn(
+  { document, units }: Pick<FindingSources, 'document' | 'units'>,
+  drawn: readonly Unnumbered[],
+  outcome: CaseOutcome,
+): Unnumbered[] {
+  const found = ofOutcome(document, outcome, units);
+  if (outcome.status === 'refused') return found;
+  const covered = new Set([...drawn, ...found].map(({ element }) => element?.id));
+  return [...found, ...leftOut(document, outcome.result, covered)];
+}
+
+/** What a finding is about, in whatever case: one code at one element. */
+function subjectOf({ element, code }: Unnumbered): string {
+  return `${element === null ? 'network' : `${element.in}/${element.id}`}/${code}`;
+}
+
 /** Two findings of one code at one element get different ids. */
 function numbered(findings: readonly Unnumbered[]): Finding[] {
   const seen = new Map<string, number>();
   return findings.map((finding) => {
-    const { element, code } = finding;
-    const id = `${element === null ? 'network' : `${element.in}/${element.id}`}/${code}`;
+    const id = subjectOf(finding);
     const count = (seen.get(id) ?? 0) + 1;
     seen.set(id, count);
     return { id: count === 1 ? id : `${id}/${count.toString()}`, ...finding };

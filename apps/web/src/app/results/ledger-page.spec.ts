@@ -53,7 +53,8 @@ function fakeStore() {
     units: () => ({ system: 'us', atmosphericPressurePa: 101_325 }) as const,
     topology: () => [],
     cases: () => [],
-    caseId: () => '',
+    caseName: () => '',
+    showsWorst: () => false,
     network: () => ({ siteName: 'North works' }),
   };
 }

@@ -6,7 +6,7 @@ import { ledger, liftProfile, type SolveResult as Solved } from '@riseback/solve
 import { NetworkStore } from '../networks/network-store';
 import { SessionStore } from '../session/session-store';
 import { ProblemBanner } from '../shared/problem-banner/problem-banner';
-import { allFindings } from './finding-list';
+import { allFindings, findingsOfCases } from './finding-list';
 import { FindingsList } from './findings-list/findings-list';
 import { LedgerSheet } from './ledger/ledger-sheet';
 import { groupTraps, trapOfElement } from './ledger/trap-groups';
@@ -64,13 +64,17 @@ export class LedgerPage {
     const view = this.view();
     const item = this.item();
     if (view === null || item === null) return null;
-    const [file, solved] = [toFile(view.document), asSolved(view.result)];
+    // of one case throughout: the worst of all joins cases, whose numbers would not add up
+    const result = this.store.showsWorst() ? this.store.resultAt(item.id) : view.result;
+    if (result === null) return null;
+    const [file, solved] = [toFile(view.document), asSolved(result)];
     return {
       item,
       document: view.document,
       entries: ledger(file, solved, item.id),
       points: liftProfile(file, solved, item.id),
-      nodeResult: view.result.nodes.find(({ id }) => id === item.id),
+      nodeResult: result.nodes.find(({ id }) => id === item.id),
+      caseName: this.store.showsWorst() ? this.store.nameOfCase(this.store.caseOf(item.id)) : this.store.caseName(),
     };
   });
 
@@ -84,13 +88,22 @@ export class LedgerPage {
   });
   private readonly findings = computed(() => {
     const document = this.store.document();
-    const { topology, outcome, units } = this.store;
-    return document === null ? [] : allFindings({ document, topology: topology(), outcome: outcome(), units: units() });
+    if (document === null) return [];
+    const sources = { document, topology: this.store.topology(), units: this.store.units() };
+    return this.store.showsWorst()
+      ? findingsOfCases({ ...sources, outcomes: this.store.caseOutcomes() })
+      : allFindings({ ...sources, outcome: this.store.outcome() });
   });
   /** What stands against this case as a whole: it asks for what is not computed, or has no solution. */
   protected readonly unanswered = computed(() => {
     const reasons = this.findings().filter(({ code }) => code === 'refused' || code === 'noSolution');
     return reasons.length === 0 ? null : reasons;
+  });
+  /** What has no result, as the beginning of a sentence. */
+  protected readonly whole = computed(() => {
+    if (this.store.showsWorst()) return 'No case has a result; the worst of all has';
+    const name = this.store.caseName();
+    return `${name === '' ? 'This network' : `Case “${name}”`} has`;
   });
   /** What an element without an account has against it. */
   protected readonly ofElement = computed(() => {
@@ -114,8 +127,8 @@ export class LedgerPage {
         return 'The last change could not be solved; these numbers belong to what stood before.';
     }
   });
-  protected readonly caseName = computed(
-    () => this.store.cases().find(({ id }) => id === this.store.caseId())?.name ?? '',
+  protected readonly nameOfCase = computed(() =>
+    this.store.showsWorst() ? (caseId: string) => this.store.nameOfCase(caseId) : undefined,
   );
   protected readonly solvedAt = computed(() => {
     const finished = this.store.finished();

@@ -2,6 +2,7 @@ import { ChangeDetectionStrategy, Component, computed, inject, input } from '@an
 import type { CaseOutcome, TrapResult } from '@riseback/contracts';
 import type { NetworkNode, PipeRun, Trap, TrapModel } from '@riseback/network';
 import { formatQuantity, type QuantityKind } from '@riseback/units';
+import { caseChangeWords } from '../../cases/case-changes';
 import { NetworkStore } from '../../networks/network-store';
 import { backPressureLimit } from '../../results/back-pressure-limit';
 import { Staff } from '../../results/staff/staff';
@@ -52,12 +53,17 @@ export class ResultTab {
     return node === undefined ? 'Receiver' : nameOf(node);
   });
   protected readonly byCase = computed(() =>
-    [...this.store.outcomes().values()].map((outcome) => ({
+    this.store.caseOutcomes().map((outcome) => ({
       id: outcome.caseId,
-      name: this.store.cases().find(({ id }) => id === outcome.caseId)?.name ?? 'Network',
-      current: outcome.caseId === this.store.caseId(),
+      name: this.store.nameOfCase(outcome.caseId),
+      current: outcome.caseId === this.store.caseOf(this.element().id),
       value: this.backPressureIn(outcome),
+      changes: this.changesIn(outcome.caseId),
     })),
+  );
+  /** Which case the result is of, where each element shows its own worst. */
+  protected readonly worstCase = computed(() =>
+    this.store.showsWorst() ? this.store.nameOfCase(this.store.caseOf(this.element().id)) : '',
   );
   protected readonly warnings = computed(() =>
     (this.store.result()?.warnings ?? []).filter(({ element }) => element === this.element().id),
@@ -106,6 +112,12 @@ export class ResultTab {
 
   private modelOf(trap: Trap): TrapModel | undefined {
     return trap.trapModel === undefined ? undefined : this.store.document()?.trapModels.get(trap.trapModel)?.value;
+  }
+
+  /** What a case sets apart at this element, in words; '' where it takes it as drawn. */
+  private changesIn(caseId: string): string {
+    const document = this.store.document();
+    return document === null ? '' : caseChangeWords(document, caseId, this.element().id, this.store.units()).join(', ');
   }
 
   private backPressureIn(outcome: CaseOutcome): string {

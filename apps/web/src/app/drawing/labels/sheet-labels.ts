@@ -29,7 +29,7 @@ export interface SheetLabel extends LabelRequest {
  * From which zoom on each kind of label shows; the text keeps its size, so there must be room for it. Values come before tags: what
  * stands against each trap is what the sheet is for, and four digits fit where a tag does not.
  */
-const FROM_ZOOM = { values: 0.45, lifts: 0.45, tags: 0.7, pipes: 1.4, flows: 2 } as const;
+const FROM_ZOOM = { values: 0.45, lifts: 0.45, tags: 0.7, pipes: 1.4, cases: 1.4, flows: 2 } as const;
 export const LINE_HEIGHT = 14;
 const MARK_WIDTH = 15;
 const GAP = 4;
@@ -138,6 +138,9 @@ function nodeLines(
   }
   if (value !== undefined && (chosen || node.kind !== 'junction' || zoom >= FROM_ZOOM.pipes)) {
     lines.push({ text: value, look: 'value', concern });
+  }
+  if (view.caseName !== '' && node.kind === 'trap' && (chosen || zoom >= FROM_ZOOM.cases)) {
+    lines.push({ text: view.caseName, look: 'tag', concern: null });
   }
   if (zoom >= FROM_ZOOM.flows && node.kind === 'trap') {
     lines.push({

@@ -10,17 +10,20 @@ export interface NodeFacts {
   /** Verdicts of warnings about this element, with their codes. */
   readonly warnings: readonly { readonly code: string; readonly verdict: Verdict }[];
   readonly selected: boolean;
+  /** The case that the result is of, where it is not the same for all elements. */
+  readonly caseName?: string;
 }
 
 /** What a screen reader says of a node: "TR-104, trap, elevation 4 ft, 31.2 psig behind it, differential fails, selected". */
 export function nodeName(node: NetworkNode, facts: NodeFacts, units: DisplayUnits): string {
-  const { trap, result, warnings, selected } = facts;
+  const { trap, result, warnings, selected, caseName } = facts;
   return [
     nameOf(node),
     KIND_WORDS[node.kind],
     `elevation ${formatQuantity(node.elevationM, 'length', units, { withUnit: true })}`,
     pressureWords(node, trap, result, units),
     ...findingWords([...(trap?.checks ?? []), ...warnings]),
+    caseWords(caseName),
     selected ? 'selected' : '',
   ]
     .filter((part) => part !== '')
@@ -33,11 +36,13 @@ export interface PipeFacts {
   readonly result: PipeResult | undefined;
   readonly warnings: readonly { readonly code: string; readonly verdict: Verdict }[];
   readonly selected: boolean;
+  /** The case that the result is of, where it is not the same for all elements. */
+  readonly caseName?: string;
 }
 
 /** "CR-15, pipe from TR-104 to J3, 12 ft of 1 in schedule 80, 31.2 to 30.9 psig, velocity fails". */
 export function pipeName(pipe: PipeRun, facts: PipeFacts, units: DisplayUnits): string {
-  const { from, to, result, warnings, selected } = facts;
+  const { from, to, result, warnings, selected, caseName } = facts;
   const ends = `pipe from ${from === undefined ? pipe.from : nameOf(from)} to ${to === undefined ? pipe.to : nameOf(to)}`;
   return [
     nameOf(pipe),
@@ -48,6 +53,7 @@ export function pipeName(pipe: PipeRun, facts: PipeFacts, units: DisplayUnits): 
       : `${formatQuantity(result.upstreamPressurePa, 'pressure', units)} to ${formatQuantity(result.downstreamPressurePa, 'pressure', units, { withUnit: true })}`,
     ...(result !== undefined && result.massFlowKgS < 0 ? ['flows against its arrow'] : []),
     ...findingWords(warnings),
+    caseWords(caseName),
     selected ? 'selected' : '',
   ]
     .filter((part) => part !== '')
@@ -72,6 +78,10 @@ function pressureWords(
     return `${formatQuantity(trap.backPressurePa, 'pressure', units, { withUnit: true })} behind it`;
   if (result !== undefined) return formatQuantity(result.pressurePa, 'pressure', units, { withUnit: true });
   return node.kind === 'trap' ? 'not solved' : '';
+}
+
+function caseWords(caseName = ''): string {
+  return caseName === '' ? '' : `in case ${caseName}`;
 }
 
 /** Failing checks before watched ones, each named once. */

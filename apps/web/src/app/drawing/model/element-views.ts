@@ -22,6 +22,8 @@ export interface NodeView {
   readonly pressurePa: number | undefined;
   /** What its label shows: the quantity that is coloured. */
   readonly shown: number | undefined;
+  /** The case its result is of, where each element shows its own worst; else ''. */
+  readonly caseName: string;
   /** Where the first pipe goes; labels keep to the other side. */
   readonly outlet: Side;
   /** Read out. */
@@ -60,6 +62,8 @@ export interface SceneResults {
   readonly pipes: ReadonlyMap<string, PipeResult>;
   readonly warnings: ReadonlyMap<string, readonly SolveWarning[]>;
   readonly isolated: ReadonlySet<string>;
+  /** The case that an element's result is of, where each element shows its own worst; else ''. */
+  readonly caseNameOf: (id: string) => string;
 }
 
 /** Rises lower than this get no staff beside them, m: 3 ft. */
@@ -90,7 +94,8 @@ export function nodeView(
     pressurePa: trap?.backPressurePa ?? result?.pressurePa,
     shown: coloured,
     outlet: outletSide(id, network),
-    name: nodeName(node, { trap, result, warnings, selected }, units),
+    caseName: results.caseNameOf(id),
+    name: nodeName(node, { trap, result, warnings, selected, caseName: results.caseNameOf(id) }, units),
   };
 }
 
@@ -123,7 +128,7 @@ export function pipeView(
     arrow: arrowOn(points, reversed, result !== undefined && result.massFlowKgS === 0, parts),
     checkValve: pipe.checkValve ? pointAt(points, 0.7) : null,
     lift: upright === undefined ? null : { piece: upright, riseM: rise },
-    name: pipeName(pipe, { from, to, result, warnings, selected }, units),
+    name: pipeName(pipe, { from, to, result, warnings, selected, caseName: results.caseNameOf(id) }, units),
   };
 }
 

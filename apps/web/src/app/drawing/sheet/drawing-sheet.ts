@@ -82,9 +82,6 @@ export class DrawingSheet {
     () =>
       `Drawing of ${this.store.document()?.name ?? 'the network'}. Arrows go from element to element, question mark lists the keys.`,
   );
-  protected readonly caseName = computed(
-    () => this.store.cases().find(({ id }) => id === this.store.caseId())?.name ?? '',
-  );
   protected readonly wayOf = computed(() => {
     const chosen = this.state.chosenId();
     const node = chosen === null ? undefined : this.scene.settled().nodes.get(chosen)?.node;

@@ -21,6 +21,8 @@ export interface ListContext {
   readonly findings: ReadonlyMap<string, readonly RowFinding[]>;
   /** Why the element has no result in the chosen case; null when it has one. */
   readonly waiting: (id: string) => Waiting | null;
+  /** The case that an element's result is of, where each element shows its own worst; absent where one case holds for all. */
+  readonly caseNameOf?: ((id: string) => string) | undefined;
   /** Right end of every staff in the list, Pa absolute. */
   readonly staffTopPa: number;
 }
@@ -78,6 +80,8 @@ export interface Column<E> {
   readonly unit?: string;
   /** Shown only when all inputs are wanted. */
   readonly minor?: true;
+  /** Left out of the table where this does not hold. */
+  readonly wanted?: (context: ListContext) => boolean;
   /** How the cell is drawn when not as text. */
   readonly face?: 'verdict' | 'staff' | 'drawingLink';
   /** What is sorted by, SI; printed by the column's quantity unless `show` says otherwise. */

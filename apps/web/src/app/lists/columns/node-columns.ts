@@ -1,7 +1,7 @@
 import { type FlashVessel, type Junction, type PumpedInlet, type Receiver, setOp } from '@riseback/network';
 import type { Column, Proposal } from './column';
 import { quantityColumn, resultColumn } from './column-kinds';
-import { elevationColumn, findingColumn, nameColumns, noteColumn } from './shared-columns';
+import { caseColumn, elevationColumn, findingColumn, nameColumns, noteColumn } from './shared-columns';
 
 type ListedNode = Junction | FlashVessel | Receiver | PumpedInlet;
 export type Vessel = FlashVessel | Receiver;
@@ -11,6 +11,7 @@ export const JUNCTION_COLUMNS: readonly Column<Junction>[] = [
   elevationColumn(),
   noteColumn('nodes'),
   ...stateColumns<Junction>(),
+  caseColumn(),
   findingColumn({ title: 'Finding', widthPx: 200 }, () => false),
 ];
 
@@ -27,6 +28,7 @@ export const PUMPED_INLET_COLUMNS: readonly Column<PumpedInlet>[] = [
   }),
   noteColumn('nodes'),
   ...stateColumns<PumpedInlet>(),
+  caseColumn(),
   findingColumn({ title: 'Finding', widthPx: 200 }, () => false),
 ];
 
@@ -73,6 +75,7 @@ export const VESSEL_COLUMNS: readonly Column<Vessel>[] = [
   },
   noteColumn('nodes'),
   ...stateColumns<Vessel>(),
+  caseColumn(),
   findingColumn({ title: 'Finding', widthPx: 200 }, () => false),
 ];
 

@@ -3,7 +3,7 @@ import { inOrder, type NetworkDocument, type PipeRun, setOp } from '@riseback/ne
 import { formatQuantity } from '@riseback/units';
 import type { Choice, Column, ListContext, Proposal } from './column';
 import { quantityColumn, resultColumn } from './column-kinds';
-import { findingColumn, nameColumns, noteColumn } from './shared-columns';
+import { caseColumn, findingColumn, nameColumns, noteColumn } from './shared-columns';
 
 /** For a pipe that is given by its bore and gets a nominal size: the usual one for condensate piping to begin with. */
 const FIRST_SCHEDULE = '80';
@@ -96,6 +96,7 @@ export const PIPE_COLUMNS: readonly Column<PipeRun>[] = [
     { title: 'Flash', widthPx: 72 },
     ({ id }, { pipes }) => pipes.get(id)?.flashPa,
   ),
+  caseColumn<PipeRun>(),
   findingColumn<PipeRun>({ title: 'Finding', widthPx: 160 }, () => false),
 ];
 

@@ -60,6 +60,18 @@ export function findingColumn<E extends Drawn>(
   };
 }
 
+/** Which case an element's result is of, while each shows its own worst. */
+export function caseColumn<E extends Drawn>(): Column<E> {
+  return {
+    key: 'case',
+    title: 'Case',
+    group: 'result',
+    widthPx: 128,
+    wanted: ({ caseNameOf }) => caseNameOf !== undefined,
+    value: ({ id }, { caseNameOf }) => caseNameOf?.(id) ?? '',
+  };
+}
+
 /** For suggestions: each text once, in the order of an index. */
 export function distinct(texts: Iterable<string | undefined>): string[] {
   return [...new Set([...texts].filter((text) => text !== undefined))].sort((a, b) => a.localeCompare(b));

@@ -1,7 +1,7 @@
 import { inOrder, type NetworkNode, setOp, type Trap } from '@riseback/network';
 import type { Choice, Column, ListContext } from './column';
 import { choiceColumn, keySet, quantityColumn, resultColumn, textColumn } from './column-kinds';
-import { distinct, elevationColumn, findingColumn, nameColumns, noteColumn } from './shared-columns';
+import { caseColumn, distinct, elevationColumn, findingColumn, nameColumns, noteColumn } from './shared-columns';
 import { TRAP_TYPE_WORDS } from '../../shared/element-words';
 import { CONTROL_WORDS, DISCHARGE_WORDS } from './trap-words';
 
@@ -88,6 +88,7 @@ export const TRAP_COLUMNS: readonly Column<Trap>[] = [
     { title: 'Differential', widthPx: 96 },
     ({ id }, { traps }) => traps.get(id)?.differentialPa,
   ),
+  caseColumn<Trap>(),
   findingColumn<Trap>(
     { title: 'Verdict', widthPx: 192 },
     ({ id }, { traps }) => (traps.get(id)?.checks.length ?? 0) > 0,

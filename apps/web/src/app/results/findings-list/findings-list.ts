@@ -22,6 +22,10 @@ export class FindingsList {
   readonly findings = input.required<readonly Finding[]>();
   /** The sheet's zone of a place; left out where no drawing is shown. */
   readonly zoneOf = input<(position: Position) => string>();
+  /** What a case is called; needed where findings of several cases stand together. */
+  readonly caseName = input<(caseId: string) => string>();
+  /** How many cases there are, so that what holds in all of them can say so. */
+  readonly caseCount = input(0);
   /** The element looked at now; its findings are marked. */
   readonly currentId = input('');
   /** No case has been solved yet, so that silence means nothing. */
@@ -36,9 +40,11 @@ export class FindingsList {
       ...MARKS[finding.severity],
       name: checkName(finding.code),
       zone: finding.position === null || zoneOf === undefined ? '' : zoneOf(finding.position),
+      cases: this.caseWords(finding),
       current: finding.element !== null && finding.element.id === this.currentId(),
     }));
   });
+  protected readonly byCase = computed(() => this.caseName() !== undefined);
   protected readonly counts = computed(() => {
     const count = (severity: FindingSeverity) =>
       this.findings().filter((finding) => finding.severity === severity).length;
@@ -49,4 +55,11 @@ export class FindingsList {
     ];
     return parts.join(', ');
   });
+
+  private caseWords({ cases }: Finding): string {
+    const caseName = this.caseName();
+    if (caseName === undefined) return '';
+    if (cases === undefined) return 'Any';
+    return cases.length > 1 && cases.length === this.caseCount() ? 'All cases' : cases.map(caseName).join(', ');
+  }
 }

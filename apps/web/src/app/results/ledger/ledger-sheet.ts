@@ -35,6 +35,8 @@ export class LedgerSheet {
   readonly ramp = input.required<PressureRamp>();
   readonly siteName = input('');
   readonly caseName = input('');
+  /** The case is the trap's own worst, not one chosen for all. */
+  readonly worstOfAll = input(false);
   readonly solvedAt = input('');
   /** Why this must not be printed now; '' when it may be. */
   readonly staleReason = input('');

@@ -1,0 +1,24 @@
+import { ChangeDetectionStrategy, Component, computed, input, signal } from '@angular/core';
+import { RouterLink } from '@angular/router';
+import { displayUnit, type DisplayUnits } from '@riseback/units';
+import { StatusMark } from '../shared/status-mark/status-mark';
+import { type Comparison, type ComparisonOrder, ordered } from './case-comparison';
+
+/** All cases side by side: back pressure and verdict of every trap in each of them, and its worst. */
+@Component({
+  selector: 'app-comparison-table',
+  imports: [RouterLink, StatusMark],
+  changeDetection: ChangeDetectionStrategy.OnPush,
+  templateUrl: './comparison-table.html',
+  styleUrl: './comparison-table.scss',
+})
+export class ComparisonTable {
+  readonly comparison = input.required<Comparison>();
+  readonly units = input.required<DisplayUnits>();
+  readonly stale = input(false);
+
+  protected readonly order = signal<ComparisonOrder>('worst');
+  protected readonly traps = computed(() => ordered(this.comparison().traps, this.order()));
+  protected readonly several = computed(() => this.comparison().heads.length > 1);
+  protected readonly unit = computed(() => displayUnit('pressure', this.units().system));
+}
