@@ -77,6 +77,14 @@ export const PipeResult = z.object({
 });
 export type PipeResult = z.infer<typeof PipeResult>;
 
+/** Absolute pressures between which methods put what stands behind a trap; the methods named have no solution there. */
+export const Band = z.object({
+  lowPa: z.number(),
+  highPa: z.number(),
+  withoutSolution: z.array(z.string()).optional(),
+});
+export type Band = z.infer<typeof Band>;
+
 export const TrapResult = z.object({
   id: z.string(),
   backPressurePa: z.number(),
@@ -89,6 +97,8 @@ export const TrapResult = z.object({
   liveSteamKgS: z.number().optional(),
   basis: z.enum(['average', 'ownPeak', 'probable']).optional(),
   /** Over every friction method and basis of lift; then over those that suit the flow in each pipe. */
+  spread: Band.optional(),
+  credible: Band.optional(),
   walk: z.array(z.string()),
   checks: z.array(TrapCheck),
   notChecked: z.array(z.object({ code: z.string(), reason: z.string() })),
