@@ -13,6 +13,8 @@ const VIEWS = [
   { path: 'drawing', word: 'Drawing' },
   { path: 'lists', word: 'Lists' },
   { path: 'ledger', word: 'Lift & ledger' },
+  { path: 'cases', word: 'Cases' },
+  { path: 'method', word: 'Method' },
 ] as const;
 
 /** The frame of one network: views, title block, and the view that the route names. */

@@ -1,4 +1,5 @@
 import type { Band, TrapResult } from '@riseback/contracts';
+import { FRICTION_WORDS } from '../networks/method-words';
 import { type DisplayUnits, displayUnit, formatQuantity } from '@riseback/units';
 
 /** The two bands of a trap's back pressure: by every method, and by those that suit the flow in each pipe. */
@@ -22,9 +23,16 @@ export function bandWords(trap: Pick<TrapResult, 'spread' | 'credible'>, units: 
   const { spread, credible } = bandsOf(trap);
   const unit = displayUnit('pressure', units.system);
   return [
-    credible === undefined ? '' : `Credible from ${bandNumbers(credible, units)} ${unit}.`,
-    spread === undefined ? '' : `By every method from ${bandNumbers(spread, units)} ${unit}.`,
+    credible === undefined ? '' : `Credible from ${bandNumbers(credible, units)} ${unit}${without(credible)}.`,
+    spread === undefined ? '' : `By every method from ${bandNumbers(spread, units)} ${unit}${without(spread)}.`,
   ]
     .filter((words) => words !== '')
     .join(' ');
+}
+
+/** Methods that the band leaves out because they find no solution: in truth it is wider. */
+export function without({ withoutSolution = [] }: Band): string {
+  if (withoutSolution.length === 0) return '';
+  const words: Readonly<Record<string, string>> = FRICTION_WORDS;
+  return `, ${withoutSolution.map((method) => words[method] ?? method).join(' and ')} without a solution`;
 }

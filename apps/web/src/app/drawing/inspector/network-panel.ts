@@ -1,9 +1,20 @@
 import { ChangeDetectionStrategy, Component, computed, inject, signal } from '@angular/core';
-import { FRICTION_METHODS, type Method, type SiteConditions, setNetworkOp, STATIC_LIFT_BASES } from '@riseback/network';
-import { FRICTION_WORDS, STATIC_LIFT_WORDS } from '../../networks/method-words';
+import { RouterLink } from '@angular/router';
+import { type Method, type SiteConditions, setNetworkOp } from '@riseback/network';
+import {
+  ACCELERATION_SENTENCE,
+  COINCIDENCE_WORDS,
+  DROP_CREDIT_SENTENCE,
+  FRICTION_WORDS,
+  METHOD_SENTENCES,
+  STATIC_LIFT_WORDS,
+  VOID_FRACTION_WORDS,
+} from '../../networks/method-words';
 import { NetworkStore } from '../../networks/network-store';
-import { ChoiceField } from '../../shared/fields/choice-field';
+import { StatusMark } from '../../shared/status-mark/status-mark';
 import type { FieldSpec } from './element-fields';
+import { LimitFields } from './limit-fields';
+import { MethodChoice } from './method-choice';
 import { type FieldChange, PropertyFields } from './property-fields';
 
 const SITE_FIELDS: readonly FieldSpec[] = [
@@ -16,33 +27,31 @@ const DROP_FIELD: FieldSpec = {
   key: 'dropCredit',
   label: 'Credit for falls',
   kind: 'fraction',
-  hint: 'Share of a fall’s head that counts',
 };
 
-/** What can be computed so far; the file keeps the others, and a solve with one of them is refused by name. */
-const COMPUTED_FRICTION: readonly Method['friction'][] = ['flashVapour'];
-const COMPUTED_LIFT: readonly Method['staticLift'][] = ['rule', 'liquidFull'];
+const WORDS = {
+  friction: FRICTION_WORDS,
+  staticLift: STATIC_LIFT_WORDS,
+  voidFraction: VOID_FRACTION_WORDS,
+  coincidence: COINCIDENCE_WORDS,
+} as const;
 
 /** The network as a whole: site conditions and method, shown while no element is selected. */
 @Component({
   selector: 'app-network-panel',
-  imports: [ChoiceField, PropertyFields],
+  imports: [LimitFields, MethodChoice, PropertyFields, RouterLink, StatusMark],
   changeDetection: ChangeDetectionStrategy.OnPush,
   templateUrl: './network-panel.html',
-  styleUrl: './inspector-tabs.scss',
+  styleUrls: ['./inspector-tabs.scss', './network-panel.scss'],
 })
 export class NetworkPanel {
   protected readonly store = inject(NetworkStore);
 
   protected readonly siteFields = SITE_FIELDS;
-  protected readonly frictionChoices = FRICTION_METHODS.map((value) => ({
-    value,
-    words: FRICTION_WORDS[value] + (COMPUTED_FRICTION.includes(value) ? '' : ' (not computed yet)'),
-  }));
-  protected readonly liftChoices = STATIC_LIFT_BASES.map((value) => ({
-    value,
-    words: STATIC_LIFT_WORDS[value] + (COMPUTED_LIFT.includes(value) ? '' : ' (not computed yet)'),
-  }));
+  protected readonly words = WORDS;
+  protected readonly noSlipWarning = METHOD_SENTENCES.voidFraction.homogeneous;
+  protected readonly dropCreditSentence = DROP_CREDIT_SENTENCE;
+  protected readonly accelerationSentence = ACCELERATION_SENTENCE;
   protected readonly fixed = computed(() => !this.store.mayDraw());
   protected readonly siteValues = computed((): Readonly<Record<string, unknown>> => ({
     ...this.store.document()?.site,

@@ -81,4 +81,17 @@ describe('staffModel', () => {
     expect(footPa).toBe(80_000);
     expect(parts[0]).toMatchObject({ fromPa: 80_000, toPa: 80_000, shown: '−3.09' });
   });
+
+  it('says both bands in words, and reaches down to the spread', () => {
+    const banded = {
+      ...trap,
+      spread: { lowPa: 95_000, highPa: 446_000 },
+      credible: { lowPa: 135_000, highPa: 170_000, withoutSolution: ['friedel'] },
+    };
+    const { footPa, sentence } = staffModel(banded, 618_000, US, NAMED);
+    expect(footPa).toBe(95_000);
+    // psig: (135,000 − 101,325)/6,894.757 = 4.9, 9.96; −0.9, 50.0
+    expect(sentence).toContain('Credible from 4.9 to 10.0 psig, Friedel without a solution.');
+    expect(sentence).toContain('By every method from −0.9 to 50.0 psig.');
+  });
 });

@@ -53,4 +53,18 @@ describe('Staff', () => {
       heights.forEach((y, i) => expect(y - (heights[i - 1] ?? -99)).toBeGreaterThan(15));
     }
   });
+
+  it('draws the bands beside the tube or under it, and only where they are computed', async () => {
+    const bands = { spread: { lowPa: 120_000, highPa: 446_000 }, credible: { lowPa: 135_000, highPa: 170_000 } };
+    for (const orientation of ['tall', 'flat']) {
+      const plain = await staff({ orientation });
+      expect(plain.querySelector('.spread, .credible')).toBeNull();
+      const banded = await staff({ orientation, trap: { ...trap, ...bands } });
+      expect(banded.querySelectorAll('path.spread, rect.credible, path.credible')).toHaveLength(2);
+    }
+    const tall = await staff({ orientation: 'tall', trap: { ...trap, ...bands } });
+    const words = [...tall.querySelectorAll('text')].map(({ textContent }) => textContent.trim());
+    // psig: 18,675/6,894.757 = 2.7, 344,675/6,894.757 = 50.0; 4.9, 10.0
+    expect(words).toEqual(expect.arrayContaining(['Spread', '2.7 to 50.0', 'Credible', '4.9 to 10.0']));
+  });
 });

@@ -1,0 +1,47 @@
+import { COINCIDENCES, FRICTION_METHODS, STATIC_LIFT_BASES, VOID_FRACTIONS } from '@riseback/network';
+import { CHECK_LIMITS } from '@riseback/solver';
+import { describe, expect, it } from 'vitest';
+import { LIMIT_WORDS, limitGroups } from '../networks/limit-rows';
+import { methodSectionId } from '../networks/method-words';
+import { formulaTree } from './formula/formula-tree';
+import { METHOD_SECTIONS } from './method-pages';
+
+const ids = METHOD_SECTIONS.map(({ id }) => id);
+
+describe('METHOD_SECTIONS', () => {
+  it.each([
+    ...FRICTION_METHODS.map((value) => methodSectionId('friction', value)),
+    ...STATIC_LIFT_BASES.map((value) => methodSectionId('staticLift', value)),
+    ...VOID_FRACTIONS.map((value) => methodSectionId('voidFraction', value)),
+    ...COINCIDENCES.map((value) => methodSectionId('coincidence', value)),
+    ...Object.keys(CHECK_LIMITS).map((code) => `check-${code}`),
+    'drop-credit',
+    'acceleration',
+    'spread',
+    'credible',
+  ])('explains %s', (id) => {
+    expect(ids).toContain(id);
+  });
+
+  it.each(METHOD_SECTIONS)('says of $id where it holds, what it does not know, and where it comes from', (section) => {
+    const limits = limitGroups({}).find(({ code }) => `check-${code}` === section.id)?.rows ?? [];
+    expect(section.range).not.toBe('');
+    expect(section.limits.length).toBeGreaterThan(0);
+    // a check's limits bring their own sources
+    expect(section.sources.length + limits.length).toBeGreaterThan(0);
+    for (const text of [...(section.equations ?? []), ...(section.symbols ?? []).map(([symbol]) => symbol)])
+      expect(() => formulaTree(text)).not.toThrow();
+    if (section.choice) expect(section.id).toBe(methodSectionId(section.choice.key, section.choice.value));
+  });
+
+  it('names each section once', () => {
+    expect(new Set(ids).size).toBe(ids.length);
+  });
+});
+
+describe('LIMIT_WORDS', () => {
+  it('has words for every limit that the solver knows', () => {
+    const keys = limitGroups({}).flatMap(({ code, rows }) => rows.map(({ key }) => `${code}.${key}`));
+    expect(keys.filter((key) => LIMIT_WORDS[key] === undefined)).toEqual([]);
+  });
+});

@@ -1,0 +1,65 @@
+import type { Limits } from '@riseback/network';
+import { CHECK_LIMITS, type CheckLimit } from '@riseback/solver';
+import type { QuantityKind } from '@riseback/units';
+
+/** One limit of a check as the form shows it. */
+export interface LimitRow {
+  readonly key: string;
+  readonly label: string;
+  readonly kind: QuantityKind;
+  readonly defaultSi: number;
+  readonly source: string;
+  /** The site's own; undefined where the default is in force. */
+  readonly own: number | undefined;
+}
+
+export interface LimitGroup {
+  /** The check's code. */
+  readonly code: string;
+  readonly rows: readonly LimitRow[];
+}
+
+/** What each limit bounds, by the check's code and the limit's key. */
+export const LIMIT_WORDS: Readonly<Record<string, string>> = {
+  'backPressureFraction.watchFraction': 'Watch above',
+  'backPressureFraction.failFraction': 'Fail above',
+  'backPressureFraction.minimumInletGaugePa': 'Least inlet',
+  'velocity.watchMS': 'Flashing: watch above',
+  'velocity.failMS': 'Flashing: fail above',
+  'velocity.liquidMS': 'Liquid: watch above',
+  'momentum.limitPa': 'Fail above',
+  'gradient.flashingPaM': 'Flashing: watch above',
+  'gradient.liquidPaM': 'Liquid: watch above',
+  'thermalShock.limitK': 'Watch above',
+  'stall.watchMargin': 'Watch within',
+};
+
+/** Every limit that the solver knows, with what the network says of it. */
+export function limitGroups(limits: Limits): LimitGroup[] {
+  const own: Readonly<Record<string, Readonly<Record<string, number | undefined>> | undefined>> = limits;
+  return Object.entries<Readonly<Record<string, CheckLimit>>>(CHECK_LIMITS).map(([code, ofCode]) => ({
+    code,
+    rows: Object.entries(ofCode).map(([key, { value, quantity, source }]) => ({
+      key,
+      label: LIMIT_WORDS[`${code}.${key}`] ?? key,
+      kind: kindOf(key, quantity),
+      defaultSi: value,
+      source,
+      own: own[code]?.[key],
+    })),
+  }));
+}
+
+/** The limits with one of them set, or given back to its default; a check without own limits has no entry. */
+export function withLimit(limits: Limits, code: string, key: string, to: number | undefined): Limits {
+  const own: Readonly<Record<string, Readonly<Record<string, number | undefined>> | undefined>> = limits;
+  const ofCode = { ...own[code], [key]: to };
+  const kept = Object.entries(ofCode).filter(([, value]) => value !== undefined);
+  const others = Object.entries(own).filter(([name]) => name !== code);
+  return Object.fromEntries([...others, ...(kept.length === 0 ? [] : [[code, Object.fromEntries(kept)] as const])]);
+}
+
+/** A finding's sentence says "10 psi"; a field takes what a person would type there, 10 psig. */
+function kindOf(key: string, quantity: CheckLimit['quantity']): QuantityKind {
+  return key.endsWith('GaugePa') ? 'gaugePressure' : quantity;
+}
