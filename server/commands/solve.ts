@@ -22,7 +22,7 @@ export function solveCommand(args: readonly string[]): SolveCommandOutcome {
   const read = readNetworkFile(json.value);
   if (!read.ok) return refused('The network file has mistakes', summary(read.errors), read.errors);
   const { caseId } = asked;
-  const solved = solveNetwork(read.file, { partial: false, ...(caseId === undefined ? {} : { caseId }) });
+  const solved = solveNetwork(read.file, { partial: false, bands: true, ...(caseId === undefined ? {} : { caseId }) });
   if (isRefusal(solved)) return { exitCode: 2, error: solved.problem };
   if (solved.problem !== undefined) return { exitCode: 3, error: solved.problem };
   return { exitCode: 0, output: solved };

@@ -1,38 +1,39 @@
 import { boreAreaM2 } from '@riseback/hydraulics';
-import type { NetworkFile, TrapModel } from '@riseback/network';
+import type { NetworkFile } from '@riseback/network';
 import type { SaturationState } from '@riseback/steam';
-import type { LimitsInForce } from './check-limits';
+import { limitsInForce, type LimitsInForce } from './check-limits';
+import { ownRuns, type AverageRun } from './coincidence';
 import { atElement } from './element-failure';
-import type { FlowAndEnergy } from './flow-and-energy';
+import { enthalpyAlong } from './flow-and-energy';
 import { fluidStateAt, vapourFraction, type FluidState } from './fluid-state';
+import { networkBands } from './network-bands';
 import { failedOpen } from './open-traps';
-import type { OperatingNode } from './operating-case';
 import { checkPipe, vesselCannotDrain } from './pipe-checks';
-import type { PipeGeometry } from './pipe-geometry';
-import { pipeResult } from './pipe-result';
-import { flowInPipe, type PressureWalk } from './pressure-walk';
-import { inletNode, outletNode, type ReturnTree } from './return-tree';
+import { pipeResult, type PieceEnd } from './pipe-result';
+import { flowInPipe } from './pressure-walk';
+import { inletNode, outletNode } from './return-tree';
 import type { NodeResult, PipeResult, SolveResult, SolveWarning, TrapResult } from './solve-result';
-import { checkTrap, ISOLATED_UNCHECKED } from './trap-checks';
+import { thermalShock, type Stream } from './thermal-shock';
+import { trapResult } from './trap-result';
 
-/** Everything a solve found, by index. */
-export interface Solved {
-  readonly file: NetworkFile;
+/** A network solved in one case, before its results are told. */
+export interface Solved extends AverageRun {
   readonly caseId: string;
-  readonly tree: ReturnTree;
-  readonly nodes: readonly OperatingNode[];
-  readonly geometries: readonly (PipeGeometry | undefined)[];
-  readonly flows: FlowAndEnergy & { readonly ambientEnthalpyJKg: number };
-  readonly walk: PressureWalk;
-  readonly limits: LimitsInForce;
+  /** Whether each trap is to have its spread and its credible band. */
+  readonly bands: boolean;
 }
 
-/** The result as it is handed out, elements in the file's order; what reaches no fixed pressure is listed as left out. */
+/**
+ * The result as it is handed out, elements in the file's order; what reaches no fixed pressure is listed as left out.
+ * @throws ElementFailure where a state outside the steam properties comes up, or a trap's own run has no solution
+ */
 export function assembleResult(solved: Solved): SolveResult {
-  const { file, tree } = solved;
+  const { file, tree, limits } = partsOf(solved);
+  const pipes = pipesOf(solved, limits);
+  const runs = ownRuns(solved, file.method.coincidence);
+  const bands = solved.bands ? networkBands({ ...solved, ends: pipes.ends, ownRuns: runs }) : undefined;
   const models = new Map(file.trapModels.map((model) => [model.id, model]));
   const nodes: NodeResult[] = [];
-  const pipes: PipeResult[] = [];
   const traps: TrapResult[] = [];
   const warnings: SolveWarning[] = [];
   const leftOut: string[] = [];
@@ -42,45 +43,105 @@ export function assembleResult(solved: Solved): SolveResult {
       return;
     }
     nodes.push(nodeResult(solved, index));
-    const node = solved.nodes[index];
-    if (node?.kind === 'trap') {
-      traps.push(trapResult(solved, node, index, models));
-      const blowing = failedOpen(node, solved.walk.pressurePa[index] as number);
-      if (blowing) warnings.push(blowing);
+    const trap = solved.nodes[index];
+    if (trap?.kind === 'trap') {
+      const model = trap.node.trapModel === undefined ? undefined : models.get(trap.node.trapModel);
+      const { walk } = solved.state;
+      const [ownRun, ofTrap] = [runs.get(index), bands?.get(index)];
+      traps.push(trapResult({ file, tree, walk, limits, trap, index, model, ownRun, bands: ofTrap }));
+      addTo(warnings, failedOpen(trap, walk.pressurePa[index] as number));
     }
-    const drain = vesselWarning(solved, index);
-    if (drain) warnings.push(drain);
+    addTo(warnings, vesselWarning(solved, index));
   });
+  for (const streams of pipes.streamsAt.values()) addTo(warnings, thermalShock(streams, limits));
+  const result = {
+    case: solved.caseId,
+    converged: true,
+    iterations: solved.state.iterations,
+    nodes,
+    pipes: pipes.results,
+    traps,
+    warnings: [...warnings, ...pipes.warnings],
+  };
+  const unreached = [...leftOut, ...pipes.leftOut];
+  return unreached.length === 0 ? result : { ...result, partial: true, leftOut: unreached };
+}
+
+function partsOf({ prepared: { file }, state: { tree } }: Solved): {
+  file: NetworkFile;
+  tree: AverageRun['state']['tree'];
+  limits: LimitsInForce;
+} {
+  return { file, tree, limits: limitsInForce(file.limits) };
+}
+
+function addTo(warnings: SolveWarning[], warning: SolveWarning | undefined): void {
+  if (warning !== undefined) warnings.push(warning);
+}
+
+interface Pipes {
+  readonly results: readonly PipeResult[];
+  readonly warnings: readonly SolveWarning[];
+  /** By pipe. */
+  readonly ends: readonly (readonly PieceEnd[] | undefined)[];
+  /** By junction: what flows into it. */
+  readonly streamsAt: ReadonlyMap<number, readonly Stream[]>;
+  readonly leftOut: readonly string[];
+}
+
+function pipesOf(solved: Solved, limits: LimitsInForce): Pipes {
+  const { file, geometries } = solved.prepared;
+  const { tree, flows, walk } = solved.state;
+  const results: PipeResult[] = [];
+  const warnings: SolveWarning[] = [];
+  const ends: (readonly PieceEnd[] | undefined)[] = [];
+  const streamsAt = new Map<number, Stream[]>();
+  const leftOut: string[] = [];
   file.pipes.forEach((pipe, index) => {
-    const marched = solved.walk.marched[index];
-    const geometry = solved.geometries[index];
+    const marched = walk.marched[index];
+    const geometry = geometries[index];
     if (marched === undefined || geometry === undefined) {
       leftOut.push(pipe.id);
+      ends.push(undefined);
       return;
     }
-    const result = pipeResult({
+    const flow = flowInPipe(tree, index, geometry, flows);
+    const below = outletNode(tree, index);
+    const downstream = saturationAt(solved, below);
+    const { result, ends: endsOfPipe } = pipeResult({
       pipe,
       index,
       geometry,
       marched,
-      flow: flowInPipe(tree, index, geometry, solved.flows),
+      flow,
       arrow: tree.arrow[index] as number,
       upstream: saturationAt(solved, inletNode(tree, index)),
-      downstream: saturationAt(solved, outletNode(tree, index)),
+      downstream,
     });
-    pipes.push(result);
-    warnings.push(...pipeWarnings(solved, index, result));
+    results.push(result);
+    ends.push(endsOfPipe);
+    if (flow.massFlowKgS > 0 && solved.nodes[below]?.kind === 'junction') {
+      const { temperatureK } = fluidStateAt(downstream, enthalpyAlong(flow, geometry.lengthM));
+      const streams = streamsAt.get(below);
+      if (streams === undefined) streamsAt.set(below, [{ pipe: pipe.id, temperatureK }]);
+      else streams.push({ pipe: pipe.id, temperatureK });
+    }
+    const massFluxKgM2S = flow.massFlowKgS / boreAreaM2(geometry.insideDiameterM);
+    const { lengthM } = geometry;
+    const { friction } = file.method;
+    const { checkValve } = pipe;
+    warnings.push(...checkPipe({ result, ends: endsOfPipe, friction, lengthM, massFluxKgM2S, checkValve, limits }));
   });
-  const result = { case: solved.caseId, converged: true, iterations: 1, nodes, pipes, traps, warnings };
-  return leftOut.length === 0 ? result : { ...result, partial: true, leftOut };
+  return { results, warnings, ends, streamsAt, leftOut };
 }
 
 function nodeResult(solved: Solved, index: number): NodeResult {
-  const { file, flows, walk } = solved;
-  const node = file.nodes[index] as NetworkFile['nodes'][number];
+  const { flows, walk } = solved.state;
+  const node = solved.prepared.file.nodes[index] as NetworkFile['nodes'][number];
+  const enthalpyJKg = flows.enthalpyJKg[index] as number;
   let state: FluidState;
   try {
-    state = stateAt(solved, index, flows.enthalpyJKg[index] as number);
+    state = fluidStateAt(saturationAt(solved, index), enthalpyJKg);
   } catch (error) {
     throw atElement('node', node, index, error);
   }
@@ -88,72 +149,21 @@ function nodeResult(solved: Solved, index: number): NodeResult {
     id: node.id,
     pressurePa: walk.pressurePa[index] as number,
     temperatureK: state.temperatureK,
-    enthalpyJKg: flows.enthalpyJKg[index] as number,
+    enthalpyJKg,
     quality: vapourFraction(state.quality),
     massFlowKgS: flows.massFlowKgS[index] as number,
   };
 }
 
-function stateAt(solved: Solved, index: number, enthalpyJKg: number): FluidState {
-  return fluidStateAt(saturationAt(solved, index), enthalpyJKg);
-}
-
-function saturationAt({ walk }: Solved, index: number): SaturationState {
-  const saturation = walk.saturation[index];
+function saturationAt({ state }: Solved, index: number): SaturationState {
+  const saturation = state.walk.saturation[index];
   if (saturation === undefined) throw new Error(`The walk left no state at node ${String(index)}`);
   return saturation;
 }
 
-function trapResult(
-  solved: Solved,
-  node: Extract<OperatingNode, { kind: 'trap' }>,
-  index: number,
-  models: ReadonlyMap<string, TrapModel>,
-): TrapResult {
-  const { file, tree, walk, limits } = solved;
-  const { node: trap, inletPressurePa, loadKgS } = node;
-  const backPressurePa = walk.pressurePa[index] as number;
-  const receiverPressurePa = walk.pressurePa[tree.endOfWalk[index] as number] as number;
-  const handStaticPa = walk.handCheckPa[index] as number;
-  const model = trap.trapModel === undefined ? undefined : models.get(trap.trapModel);
-  const { atmosphericPressurePa } = file.site;
-  const checked = node.isolated
-    ? { checks: [], notChecked: ISOLATED_UNCHECKED }
-    : checkTrap({ trap, model, inletPressurePa, backPressurePa, loadKgS, atmosphericPressurePa, limits });
-  return {
-    id: trap.id,
-    backPressurePa,
-    receiverPressurePa,
-    staticPa: walk.staticPa[index] as number,
-    frictionPa: walk.frictionPa[index] as number,
-    flashPa: walk.flashPa[index] as number,
-    differentialPa: inletPressurePa - backPressurePa,
-    handCheck: { staticPa: handStaticPa, backPressurePa: receiverPressurePa + handStaticPa },
-    ...(node.liveSteamKgS === undefined ? {} : { liveSteamKgS: node.liveSteamKgS }),
-    walk: walkFrom(index, solved),
-    ...checked,
-  };
-}
-
-function walkFrom(start: number, { tree, file }: Solved): string[] {
-  const ids: string[] = [];
-  for (let index = start; tree.outPipe[index] !== -1; index = tree.drainsTo[index] as number) {
-    ids.push((file.pipes[tree.outPipe[index] as number] as { id: string }).id);
-  }
-  return ids;
-}
-
-function vesselWarning({ tree, nodes, walk }: Solved, index: number): SolveWarning | undefined {
+function vesselWarning({ nodes, state: { tree, walk } }: Solved, index: number): SolveWarning | undefined {
   const node = nodes[index];
   const outlet = tree.outletOfVessel[index] as number;
   if (node?.kind !== 'fixedPressure' || outlet === -1 || tree.endOfWalk[outlet] === -1) return undefined;
   return vesselCannotDrain(node.node.id, node.pressurePa, walk.pressurePa[outlet] as number);
-}
-
-function pipeWarnings({ file, geometries, limits }: Solved, index: number, result: PipeResult): SolveWarning[] {
-  const geometry = geometries[index];
-  const pipe = file.pipes[index];
-  if (geometry === undefined || pipe === undefined) return [];
-  const massFluxKgM2S = Math.abs(result.massFlowKgS) / boreAreaM2(geometry.insideDiameterM);
-  return checkPipe({ result, lengthM: geometry.lengthM, massFluxKgM2S, checkValve: pipe.checkValve, limits });
 }

@@ -21,19 +21,25 @@ export const CHECK_LIMITS = {
   },
   velocity: {
     watchMS: { value: 25, quantity: 'velocity', source: 'Energy Management Handbook: 5,000 ft/min in returns' },
-    failMS: { value: 35.6, quantity: 'velocity', source: 'ASHRAE Handbook, Fundamentals, pipe sizing: 7,000 ft/min' },
+    failMS: { value: 35.56, quantity: 'velocity', source: 'ASHRAE Handbook, Fundamentals, pipe sizing: 7,000 ft/min' },
     liquidMS: { value: 2.1, quantity: 'velocity', source: 'common practice for liquid returns' },
   },
   momentum: {
-    limitPa: { value: 14_900, quantity: 'momentumFlux', source: 'API RP 14E with c = 122 in SI' },
+    limitPa: { value: 14_881.64, quantity: 'momentumFlux', source: 'API RP 14E with c = 100: 10,000 lb/(ft s²)' },
   },
   gradient: {
     flashingPaM: {
-      value: 226,
+      value: 226.206,
       quantity: 'pressureGradient',
       source: 'ASHRAE Handbook, Fundamentals, pipe sizing: 1 psi per 100 ft',
     },
     liquidPaM: { value: 140, quantity: 'pressureGradient', source: 'common practice for liquid returns' },
+  },
+  thermalShock: {
+    limitK: { value: 30, quantity: 'temperatureDifference', source: 'this program’s own' },
+  },
+  stall: {
+    watchMargin: { value: 0.15, quantity: 'fraction', source: 'this program’s own' },
   },
 } as const satisfies Record<string, Record<string, CheckLimit>>;
 
@@ -48,6 +54,8 @@ export function limitsInForce(limits: Limits): LimitsInForce {
     velocity: inForce(CHECK_LIMITS.velocity, limits.velocity),
     momentum: inForce(CHECK_LIMITS.momentum, limits.momentum),
     gradient: inForce(CHECK_LIMITS.gradient, limits.gradient),
+    thermalShock: inForce(CHECK_LIMITS.thermalShock, limits.thermalShock),
+    stall: inForce(CHECK_LIMITS.stall, limits.stall),
   };
 }
 

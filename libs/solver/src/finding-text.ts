@@ -39,6 +39,7 @@ const PLAIN: Readonly<Record<FindingQuantity, { readonly scale: number; readonly
   massFlow: { scale: 1, unit: ' kg/s' },
   velocity: { scale: 1, unit: ' m/s' },
   temperature: { scale: 1, unit: ' K' },
+  temperatureDifference: { scale: 1, unit: ' K' },
   pressureGradient: { scale: 1, unit: ' Pa/m' },
   momentumFlux: { scale: 1, unit: ' Pa' },
   fraction: { scale: 100, unit: ' %' },

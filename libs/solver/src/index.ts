@@ -7,6 +7,7 @@ export type { GradientEvaluation } from './pipe-march';
 export type { ProblemError, Refusal } from './refusal';
 export { isRefusal, solveNetwork, type SolveOptions } from './solve-network';
 export type {
+  Band,
   FindingQuantity,
   FindingText,
   FindingWords,
@@ -20,5 +21,6 @@ export type {
   UnmadeCheck,
   Verdict,
 } from './solve-result';
+export { stallCurve, stallFraction, type StallCurve } from './stall';
 export { trapCapacityKgS } from './trap-capacity';
 export type { WalkedResult } from './walk-of-trap';

@@ -20,6 +20,8 @@ export interface OperatingTrap {
   readonly inletPressurePa: number;
   readonly loadKgS: number;
   readonly isolated: boolean;
+  /** Of a modulating trap that follows its load: what its exchanger does in the case. */
+  readonly modulation?: { readonly fullLoadPressurePa: number; readonly loadFraction: number };
   /** Of a trap that has failed open: the hole that passes live steam. */
   readonly openOrificeM?: number;
   /** Live steam that it passes on top of its load, as open-traps.ts finds it. */
@@ -106,19 +108,24 @@ function operatingTrap(
 ): OperatingTrap {
   const isolated = override?.state === 'isolated';
   const loadKgS = override?.loadKgS ?? node.loadKgS * operatingCase.loadFactor;
-  const inletPressurePa = override?.inletPressurePa ?? servicePressurePa();
-  const trap: OperatingTrap = { kind: 'trap', node, inletPressurePa, loadKgS: isolated ? 0 : loadKgS, isolated };
+  const fullLoadPressurePa =
+    atmosphericPressurePa + operatingCase.inletPressureFactor * (node.inletPressurePa - atmosphericPressurePa);
+  const { service } = node;
+  // an isolated exchanger, or one drawn without a load, has no part load to follow
+  const modulates = service.kind === 'modulating' && !isolated && node.loadKgS > 0;
+  const loadFraction = loadKgS / node.loadKgS;
+  const servicePressurePa = (): number =>
+    modulates ? modulatedInletPressurePa(service, fullLoadPressurePa, loadFraction) : fullLoadPressurePa;
   const orificeM = override?.state === 'failedOpen' ? openOrificeM(node, override, models) : undefined;
-  return orificeM === undefined ? trap : { ...trap, openOrificeM: orificeM };
-
-  function servicePressurePa(): number {
-    const gaugePa = node.inletPressurePa - atmosphericPressurePa;
-    const fullLoadPa = atmosphericPressurePa + operatingCase.inletPressureFactor * gaugePa;
-    const { service } = node;
-    // an isolated exchanger, or one drawn without a load, has no part load to follow
-    if (service.kind === 'constant' || isolated || node.loadKgS === 0) return fullLoadPa;
-    return modulatedInletPressurePa(service, fullLoadPa, loadKgS / node.loadKgS);
-  }
+  return {
+    kind: 'trap',
+    node,
+    inletPressurePa: override?.inletPressurePa ?? servicePressurePa(),
+    loadKgS: isolated ? 0 : loadKgS,
+    isolated,
+    ...(modulates ? { modulation: { fullLoadPressurePa, loadFraction } } : {}),
+    ...(orificeM === undefined ? {} : { openOrificeM: orificeM }),
+  };
 }
 
 function openOrificeM(trap: Trap, override: Override, models: ReadonlyMap<string, TrapModel>): number | undefined {

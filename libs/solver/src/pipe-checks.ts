@@ -1,10 +1,16 @@
+import { DRAINING_QUALITY, type FlowPattern } from '@riseback/hydraulics';
+import type { FrictionMethod } from '@riseback/network';
 import type { LimitsInForce } from './check-limits';
 import { amount, findingWords, say } from './finding-text';
+import type { PieceEnd } from './pipe-result';
 import type { PipeResult, SolveWarning } from './solve-result';
 
 /** A pipe of the result, with what the checks need beside it. */
 export interface PipeUnderCheck {
   readonly result: PipeResult;
+  /** By piece of its route, from the outlet up. */
+  readonly ends: readonly PieceEnd[];
+  readonly friction: FrictionMethod;
   readonly lengthM: number;
   readonly massFluxKgM2S: number;
   readonly checkValve: boolean;
@@ -14,7 +20,16 @@ export interface PipeUnderCheck {
 type Check = (at: PipeUnderCheck) => SolveWarning | undefined;
 
 /** Every check at a pipe that carries a flow. */
-export const PIPE_CHECKS: readonly Check[] = [reversed, velocity, momentum, gradient];
+export const PIPE_CHECKS: readonly Check[] = [
+  reversed,
+  choked,
+  velocity,
+  momentum,
+  gradient,
+  slug,
+  uphillTwoPhase,
+  dryBasis,
+];
 
 /** What an engineer should know of a pipe; nothing of one that stands still. */
 export function checkPipe(at: PipeUnderCheck): SolveWarning[] {
@@ -71,6 +86,94 @@ function gradient({ result, lengthM, limits }: PipeUnderCheck): SolveWarning | u
   const text = say`${flashing ? 'Friction and flash steam cost' : 'Friction costs'} ${amount('pressureGradient', value)}, fittings included; above ${amount('pressureGradient', limit)} a return is small for its load, and every trap upstream pays for it.`;
   return { code: 'gradient', element: result.id, verdict: 'watch', value, limit, ...findingWords(text, LARGER_BORE) };
 }
+
+function choked({ result }: PipeUnderCheck): SolveWarning | undefined {
+  const { id, outletPressurePa, downstreamPressurePa } = result;
+  if (outletPressurePa === undefined) return undefined;
+  const text = say`The flow leaves at its critical velocity: the outlet stands at ${amount('pressure', outletPressurePa)}, ${amount('pressureDifference', outletPressurePa - downstreamPressurePa)} above what it discharges into, and nothing done downstream lowers that.`;
+  return {
+    code: 'choked',
+    element: id,
+    verdict: 'fail',
+    value: outletPressurePa,
+    limit: downstreamPressurePa,
+    ...findingWords(text, LARGER_BORE),
+  };
+}
+
+const SLUGGING: Readonly<Partial<Record<FlowPattern, string>>> = {
+  intermittent: 'plugs and slugs fill this run from time to time',
+  slug: 'slugs of condensate ride up this rise',
+  churn: 'condensate is thrown up this rise and falls back',
+};
+
+function slug({ result, ends }: PipeUnderCheck): SolveWarning | undefined {
+  for (const { pattern } of ends) {
+    const words = pattern === undefined ? undefined : SLUGGING[pattern];
+    if (words === undefined) continue;
+    const text = say`By its flow pattern ${words}: they strike bends and valves, and the pressure behind every trap upstream swings.`;
+    return { code: 'slug', element: result.id, verdict: 'watch', ...findingWords(text, LET_FLASH_GO) };
+  }
+  return undefined;
+}
+
+const LET_FLASH_GO = say`Let the flash steam go in a vessel before this pipe, lay the run to fall, or lift the condensate with a pump.`;
+
+function uphillTwoPhase({ result, ends }: PipeUnderCheck): SolveWarning | undefined {
+  const value = ends.reduce((riseM, end) => riseM + (isFlashingRise(end) ? end.riseM : 0), 0);
+  if (value === 0) return undefined;
+  const text = say`Condensate rises ${amount('length', value)} together with its flash steam: what the rise costs is the least certain part of the result, and at low load the steam slips past and lets the condensate fall back.`;
+  return { code: 'uphillTwoPhase', element: result.id, verdict: 'watch', value, ...findingWords(text, LET_FLASH_GO) };
+}
+
+/** Where the basis of dry, pitched returns is asked for more than it was made for. */
+function dryBasis({ result, ends, friction }: PipeUnderCheck): SolveWarning | undefined {
+  if (friction !== 'flashVapour') return undefined;
+  const base = { code: 'dryBasis', element: result.id, verdict: 'watch' } as const;
+  const remedy = say`Look at the trap’s credible band, or compute the network by a full-bore method or byPattern.`;
+  const rise = ends.find(isFlashingRise);
+  if (rise !== undefined) {
+    const text = say`The dry-return basis lets condensate drain along the bottom, but here it rises with ${amount('fraction', rise.quality)} of flash steam: friction may be several times what is told.`;
+    return { ...base, value: rise.quality, limit: DRAINING_QUALITY, ...findingWords(text, remedy) };
+  }
+  const torn = ends.find(
+    ({ quality, pattern }) => quality > DRAINING_QUALITY && pattern !== undefined && FILLS_BORE[pattern],
+  );
+  if (torn?.pattern === undefined) return undefined;
+  const text = say`The dry-return basis lets condensate drain along the bottom, but by its flow pattern (${PATTERN_WORDS[torn.pattern]}) the steam carries it along here: friction may be several times what is told.`;
+  return { ...base, ...findingWords(text, remedy) };
+}
+
+function isFlashingRise({ riseM, quality }: PieceEnd): boolean {
+  return riseM > 0 && quality > DRAINING_QUALITY;
+}
+
+const PATTERN_WORDS: Readonly<Record<FlowPattern, string>> = {
+  liquid: 'liquid',
+  vapour: 'vapour',
+  stratifiedSmooth: 'stratified, smooth',
+  stratifiedWavy: 'stratified, wavy',
+  intermittent: 'intermittent',
+  annular: 'annular',
+  dispersedBubble: 'dispersed bubbles',
+  bubbly: 'bubbly',
+  slug: 'slug',
+  churn: 'churn',
+};
+
+/** Patterns in which liquid does not run along the bottom. A single phase has the bore to itself by any method. */
+const FILLS_BORE: Readonly<Record<FlowPattern, boolean>> = {
+  liquid: false,
+  vapour: false,
+  stratifiedSmooth: false,
+  stratifiedWavy: false,
+  intermittent: true,
+  annular: true,
+  dispersedBubble: true,
+  bubbly: true,
+  slug: true,
+  churn: true,
+};
 
 /** A vessel whose leaving pipe needs more at its start than the vessel holds. */
 export function vesselCannotDrain(vessel: string, pressurePa: number, neededPa: number): SolveWarning | undefined {

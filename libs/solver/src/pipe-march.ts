@@ -35,6 +35,8 @@ export interface MarchedPipe {
   readonly upstreamPressurePa: number;
   /** What stands at the outlet: the node's pressure, or above it the critical pressure of a flow that chokes there. */
   readonly outletPressurePa: number;
+  /** What stands at the downstream end of each piece, from the outlet up; of a pipe of one piece that is the outlet alone. */
+  readonly pieceOutletsPa: readonly number[];
   readonly staticPa: number;
   readonly frictionPa: number;
   readonly flashPa: number;
@@ -156,7 +158,9 @@ export class PipeMarcher {
     totals.flashPa = pressurePa - nodePressurePa;
     // just above choking the gradient runs up without bound: the first few bores are marched by themselves
     let startM = criticalPa > 0 ? START_BORES * pipe.insideDiameterM : 0;
+    const pieceOutletsPa: number[] = [];
     for (const piece of piecesAgainstFlow) {
+      pieceOutletsPa.push(pressurePa);
       at.riseSlope = piece.riseM / piece.lengthM;
       flashing.fallSlope = -at.riseSlope;
       if (startM > 0 && startM < piece.lengthM) pressurePa = this.stretch(pressurePa, startM, totals);
@@ -165,7 +169,7 @@ export class PipeMarcher {
       startM = 0;
       onPieceEnd?.(piece, pressurePa);
     }
-    return { upstreamPressurePa: pressurePa, outletPressurePa, ...totals };
+    return { upstreamPressurePa: pressurePa, outletPressurePa, pieceOutletsPa, ...totals };
   }
 
   /** Marches up a stretch of one slope, and adds what it costs. @returns the pressure at its upstream end */

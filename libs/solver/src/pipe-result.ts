@@ -1,4 +1,4 @@
-import { boreAreaM2, flowPattern } from '@riseback/hydraulics';
+import { boreAreaM2, flowPattern, type FlowPattern } from '@riseback/hydraulics';
 import type { PipeRun } from '@riseback/network';
 import { saturationState, type SaturationState } from '@riseback/steam';
 import { atElement } from './element-failure';
@@ -21,15 +21,28 @@ export interface PipeAfterMarch {
   readonly downstream: SaturationState;
 }
 
-/** @throws ElementFailure where what leaves the pipe is outside the steam properties */
-export function pipeResult(at: PipeAfterMarch): PipeResult {
+/** How the flow stands at the downstream end of a piece of a pipe’s route. */
+export interface PieceEnd {
+  /** In the direction of flow. */
+  readonly riseM: number;
+  readonly quality: number;
+  /** Absent where no map answers. */
+  readonly pattern?: FlowPattern;
+}
+
+/**
+ * @returns what is told of the pipe, and how the flow stands at the end of each of its pieces, from the outlet up
+ * @throws ElementFailure where what leaves the pipe is outside the steam properties
+ */
+export function pipeResult(at: PipeAfterMarch): { readonly result: PipeResult; readonly ends: readonly PieceEnd[] } {
   const { pipe, index, geometry, marched, flow, arrow, upstream, downstream } = at;
   const choked = marched.outletPressurePa > downstream.pressurePa;
-  let saturation: SaturationState;
   let outlet: FluidState;
+  let ends: readonly PieceEnd[];
   try {
-    saturation = choked ? saturationState(marched.outletPressurePa) : downstream;
+    const saturation = choked ? saturationState(marched.outletPressurePa) : downstream;
     outlet = fluidStateAt(saturation, enthalpyAlong(flow, geometry.lengthM));
+    ends = pieceEnds(at, outlet);
   } catch (error) {
     throw atElement('pipe', pipe, index, error);
   }
@@ -37,17 +50,8 @@ export function pipeResult(at: PipeAfterMarch): PipeResult {
   const massFlowKgS = flow.massFlowKgS === 0 ? 0 : flow.massFlowKgS * arrow;
   const massFlux = massFlowKgS / boreAreaM2(geometry.insideDiameterM);
   const quality = vapourFraction(outlet.quality);
-  const [lastPiece] = piecesAgainstFlow(geometry.pieces, arrow === 1);
-  const pattern = flowPattern({
-    massFlowKgS: flow.massFlowKgS,
-    quality,
-    saturation,
-    insideDiameterM: geometry.insideDiameterM,
-    roughnessM: geometry.roughnessM,
-    lossCoefficientPerM: geometry.lossCoefficientPerM,
-    fallSlope: lastPiece === undefined ? 0 : -lastPiece.riseM / lastPiece.lengthM,
-  });
-  return {
+  const pattern = ends[0]?.pattern;
+  const result = {
     id: pipe.id,
     massFlowKgS,
     upstreamPressurePa: marched.upstreamPressurePa,
@@ -63,4 +67,24 @@ export function pipeResult(at: PipeAfterMarch): PipeResult {
     choked,
     ...(choked ? { outletPressurePa: marched.outletPressurePa } : {}),
   };
+  return { result, ends };
+}
+
+function pieceEnds({ geometry, marched, flow, arrow }: PipeAfterMarch, outlet: FluidState): PieceEnd[] {
+  let endM = geometry.lengthM;
+  return piecesAgainstFlow(geometry.pieces, arrow === 1).map(({ lengthM, riseM }, i) => {
+    const saturation = i === 0 ? outlet.saturation : saturationState(marched.pieceOutletsPa[i] as number);
+    const quality = i === 0 ? outlet.quality : thermodynamicQuality(saturation, enthalpyAlong(flow, endM));
+    endM -= lengthM;
+    const pattern = flowPattern({
+      massFlowKgS: flow.massFlowKgS,
+      quality,
+      saturation,
+      insideDiameterM: geometry.insideDiameterM,
+      roughnessM: geometry.roughnessM,
+      lossCoefficientPerM: geometry.lossCoefficientPerM,
+      fallSlope: -riseM / lengthM,
+    });
+    return { riseM, quality: vapourFraction(quality), ...(pattern === undefined ? {} : { pattern }) };
+  });
 }

@@ -1,4 +1,5 @@
 import type { NetworkFile } from '@riseback/network';
+import type { ReturnTree } from './return-tree';
 import type { SolveProblem } from './solve-result';
 
 /** Nothing was computed: the file shows that it cannot be, or it asks for what is not computed yet. */
@@ -36,14 +37,12 @@ export function noSolution(element: string, pointer: string, reason: string): So
   };
 }
 
-/** What a solve of the network would need and is not computed yet, each by name. */
-export function notAvailableYet(file: NetworkFile): ProblemError[] {
-  const { coincidence } = file.method;
-  return coincidence === 'average' ? [] : [missing('/method/coincidence', `coincidence ${coincidence}`)];
-}
-
-export function missing(pointer: string, what: string): ProblemError {
-  return { pointer, detail: `${what} is not available yet` };
+/** Probable coincidence sums what comes from upstream, which a mesh has no one answer to. */
+export function probableInMeshes(file: NetworkFile, tree: ReturnTree): ProblemError[] {
+  if (file.method.coincidence !== 'probable' || tree.chords.length === 0) return [];
+  const detail =
+    'Probable coincidence needs one way down for every trap, and this network has loops or second ways down: choose average or ownPeak.';
+  return [{ pointer: '/method/coincidence', detail }];
 }
 
 function refusal(type: string, title: string, errors: readonly ProblemError[]): Refusal {

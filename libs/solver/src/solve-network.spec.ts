@@ -256,20 +256,9 @@ describe('operating cases', () => {
   });
 });
 
-describe('what is not computed yet is refused by name', () => {
-  const unavailable = (parts: Record<string, unknown>, options?: Partial<SolveOptions>) =>
-    refusedAt(file(parts), options);
-
-  it.each([[{ coincidence: 'ownPeak' }, '/method/coincidence', 'coincidence ownPeak is not available yet']])(
-    '%j',
-    (method, pointer, detail) => {
-      expect(unavailable({ method })).toEqual([{ pointer, detail }]);
-      expect(unavailable({ method }, { partial: true })).toEqual([{ pointer, detail }]);
-    },
-  );
-
+describe('what is refused by name', () => {
   it('a case that the file does not have, with those it has', () => {
-    expect(unavailable({ cases: [{ id: 'a', name: 'A' }] }, { caseId: 'z' })).toEqual([
+    expect(refusedAt(file({ cases: [{ id: 'a', name: 'A' }] }), { caseId: 'z' })).toEqual([
       { pointer: '/cases', detail: 'There is no case "z"; there are a.' },
     ]);
   });

@@ -1,14 +1,13 @@
 import type { FileCase, NetworkFile } from '@riseback/network';
 import { NoConvergenceError } from '@riseback/numerics';
 import { assembleResult } from './assemble-result';
-import { limitsInForce } from './check-limits';
 import { ElementFailure } from './element-failure';
 import { ambientLiquidEnthalpyJKg } from './flow-and-energy';
 import { stateWithOpenTraps } from './open-traps';
 import { findCase, openWithoutOrifice, operatingNodes } from './operating-case';
 import { pipeGeometries } from './pipe-geometry';
 import { MARCH_TOLERANCE_PA, type GradientEvaluation } from './pipe-march';
-import { noSolution, notAvailable, notAvailableYet, unknownCase, unsolvable, type Refusal } from './refusal';
+import { noSolution, notAvailable, probableInMeshes, unknownCase, unsolvable, type Refusal } from './refusal';
 import { returnTree } from './return-tree';
 import { shutValves } from './shut-valves';
 import type { SolveResult } from './solve-result';
@@ -19,6 +18,8 @@ export interface SolveOptions {
   readonly caseId?: string;
   /** Leave out, and list, what cannot reach a receiver, instead of refusing the whole. */
   readonly partial: boolean;
+  /** Whether each trap is to have its spread and its credible band, which may turn a pass into a watch; false unless asked for. */
+  readonly bands?: boolean;
   /** Error allowed in each step of the march, Pa. */
   readonly marchTolerancePa?: number;
   /** Told of each gradient evaluated. */
@@ -38,7 +39,7 @@ export function solveNetwork(file: NetworkFile, options: SolveOptions): SolveRes
   const mistakes = options.partial ? [] : mistakesIn(file, geometries);
   const isSound = mistakes.length === 0 && !options.partial ? undefined : soundPipes(file, geometries);
   const tree = returnTree(file, isSound);
-  const unavailable = notAvailableYet(file);
+  const unavailable = probableInMeshes(file, tree);
   const openMistakes = openWithoutOrifice(file, operatingCase);
   if (mistakes.length + openMistakes.length > 0) return unsolvable([...mistakes, ...openMistakes, ...unavailable]);
   if (unavailable.length > 0) return notAvailable(unavailable);
@@ -51,19 +52,12 @@ export function solveNetwork(file: NetworkFile, options: SolveOptions): SolveRes
       tolerancePa: options.marchTolerancePa ?? MARCH_TOLERANCE_PA,
       onGradient: options.onGradient,
     };
-    const { nodes, state } = stateWithOpenTraps({ file, geometries, tree, ambientEnthalpyJKg }, inCase, march);
-    const result = assembleResult({
-      file,
-      caseId: operatingCase.id,
-      nodes,
-      geometries,
-      tree: state.tree,
-      flows: state.flows,
-      walk: state.walk,
-      limits: limitsInForce(file.limits),
-    });
+    const prepared = { file, geometries, tree, ambientEnthalpyJKg };
+    const { nodes, state } = stateWithOpenTraps(prepared, inCase, march);
+    const { bands = false } = options;
+    const result = assembleResult({ prepared, nodes, state, march, caseId: operatingCase.id, bands });
     const warnings = [...result.warnings, ...shutValves(file, state)];
-    return { ...result, iterations: state.iterations, warnings };
+    return { ...result, warnings };
   } catch (error) {
     if (!(error instanceof ElementFailure)) throw error;
     return unsolved(operatingCase, error);

@@ -40,6 +40,7 @@ export type FindingQuantity =
   | 'massFlow'
   | 'velocity'
   | 'temperature'
+  | 'temperatureDifference'
   | 'pressureGradient'
   | 'momentumFlux'
   | 'fraction'
@@ -71,8 +72,18 @@ export interface UnmadeCheck {
   readonly reason: string;
 }
 
+/** Absolute pressures between which methods put what stands behind a trap. */
+export interface Band {
+  readonly lowPa: number;
+  readonly highPa: number;
+  /** Methods that belong to the band and have no solution here, by name: the band leaves them out, and is wider in truth. */
+  readonly withoutSolution?: readonly string[];
+}
+
 export interface TrapResult {
   readonly id: string;
+  /** Which discharge its pressures are for; those of nodes and pipes are always for the average. */
+  readonly basis: 'average' | 'ownPeak' | 'probable';
   readonly backPressurePa: number;
   readonly receiverPressurePa: number;
   readonly staticPa: number;
@@ -82,6 +93,10 @@ export interface TrapResult {
   readonly handCheck: { readonly staticPa: number; readonly backPressurePa: number };
   /** Of a trap that has failed open: what it blows on top of its load. */
   readonly liveSteamKgS?: number;
+  /** Over all friction methods, with the rule and with two-phase risers; present where bands were asked for. */
+  readonly spread?: Band;
+  /** Over the methods that fit the flow patterns on its walk. */
+  readonly credible?: Band;
   /** Pipe ids from the trap to its receiver or vessel. */
   readonly walk: readonly string[];
   readonly checks: readonly TrapCheck[];

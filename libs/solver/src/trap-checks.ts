@@ -2,6 +2,8 @@ import type { Trap, TrapModel } from '@riseback/network';
 import { SATURATION_LINE_RANGE, saturationTemperatureK } from '@riseback/steam';
 import type { LimitsInForce } from './check-limits';
 import { amount, findingWords, say } from './finding-text';
+import type { OperatingTrap } from './operating-case';
+import { stallFraction } from './stall';
 import type { TrapCheck, UnmadeCheck } from './solve-result';
 import { trapCapacityKgS } from './trap-capacity';
 
@@ -12,11 +14,14 @@ export interface TrapUnderCheck {
   readonly inletPressurePa: number;
   readonly backPressurePa: number;
   readonly loadKgS: number;
+  /** Of a modulating trap that follows its load. */
+  readonly modulation?: OperatingTrap['modulation'];
   readonly atmosphericPressurePa: number;
   readonly limits: LimitsInForce;
 }
 
-type Check = (at: TrapUnderCheck) => TrapCheck | UnmadeCheck;
+/** undefined for a trap that the check has nothing to do with. */
+type Check = (at: TrapUnderCheck) => TrapCheck | UnmadeCheck | undefined;
 
 /** Every check at a trap by its code, in the order in which they are told. A new check is a function here and a part of docs/methods/checks.md. */
 export const TRAP_CHECKS = {
@@ -25,6 +30,7 @@ export const TRAP_CHECKS = {
   backPressureFraction,
   orificeRating,
   bodyRating,
+  stall,
 } as const satisfies Record<string, Check>;
 
 /** Makes each check that the trap's data allow, and says why the others are not made. */
@@ -33,6 +39,7 @@ export function checkTrap(at: TrapUnderCheck): { checks: TrapCheck[]; notChecked
   const notChecked: UnmadeCheck[] = [];
   for (const check of Object.values<Check>(TRAP_CHECKS)) {
     const outcome = check(at);
+    if (outcome === undefined) continue;
     if ('verdict' in outcome) checks.push(outcome);
     else notChecked.push(outcome);
   }
@@ -49,6 +56,8 @@ const FRACTION_PASSES = findingWords(say`The share of the inlet’s gauge pressu
 const CAPACITY_PASSES = findingWords(
   say`The model passes at this differential what the load needs with its sizing factor.`,
 );
+const STALL_PASSES = findingWords(say`The steam space stays above the return at this load, with room to spare.`);
+const DRAIN_AT_STALL = say`Drain it by gravity into a vented receiver, or with a pump trap; or lower what stands behind its trap.`;
 const SEAT_PASSES = findingWords(say`The seat opens against all that the safety valve lets come to it.`);
 const BODY_PASSES = findingWords(say`The body is rated for the safety valve’s setting.`);
 const BODY_PASSES_BY_PRESSURE = findingWords(
@@ -59,7 +68,11 @@ const BODY_PASSES_BY_TEMPERATURE = findingWords(
 );
 
 /** What a trap shut off in this case says in place of its checks. */
-export const ISOLATED_UNCHECKED: readonly UnmadeCheck[] = Object.keys(TRAP_CHECKS).map((code) => ({
+export function isolatedUnchecked({ service }: Trap): readonly UnmadeCheck[] {
+  return service.kind === 'modulating' ? ISOLATED_UNCHECKED : ISOLATED_UNCHECKED.filter(({ code }) => code !== 'stall');
+}
+
+const ISOLATED_UNCHECKED: readonly UnmadeCheck[] = Object.keys(TRAP_CHECKS).map((code) => ({
   code,
   reason: 'The trap is isolated in this case.',
 }));
@@ -171,6 +184,34 @@ function bodyRating({ trap, model }: TrapUnderCheck): TrapCheck | UnmadeCheck {
   if (bodyPressurePa === undefined) return { code, verdict: 'pass', ...BODY_PASSES_BY_TEMPERATURE };
   const words = bodyTemperatureK === undefined ? BODY_PASSES_BY_PRESSURE : BODY_PASSES;
   return { code, verdict: 'pass', value: pressurePa, limit: bodyPressurePa, ...words };
+}
+
+/** Of a modulated exchanger: at what load its steam space falls to the back pressure. */
+function stall({ trap, modulation, backPressurePa, limits }: TrapUnderCheck): TrapCheck | UnmadeCheck | undefined {
+  const code = 'stall';
+  if (trap.service.kind === 'constant') return undefined;
+  if (modulation === undefined)
+    return { code, reason: 'The exchanger is drawn without a load, so it has no part load.' };
+  const { fullLoadPressurePa, loadFraction: limit } = modulation;
+  const [lowestPa, highestPa] = SATURATION_LINE_RANGE.pressurePa;
+  // where the case gives the inlet itself, nothing has asked for the steam at full load yet
+  if (!(fullLoadPressurePa >= lowestPa && fullLoadPressurePa <= highestPa))
+    return { code, reason: 'The inlet’s pressure at full load lies outside the steam properties.' };
+  const value = stallFraction(trap.service, fullLoadPressurePa, backPressurePa);
+  if (value === undefined)
+    return {
+      code,
+      reason: 'The steam is not hotter than what leaves the exchanger, or that is colder than what enters it.',
+    };
+  if (value > limit) {
+    const text = say`The exchanger stalls below ${amount('fraction', value)} of its load and runs at ${amount('fraction', limit)}: its steam falls to the return’s pressure, condensate backs up into it, and its outlet swings, hammers and corrodes.`;
+    return { code, verdict: 'fail', value, limit, ...findingWords(text, DRAIN_AT_STALL) };
+  }
+  if (value > limit - limits.stall.watchMargin) {
+    const text = say`The exchanger stalls below ${amount('fraction', value)} of its load and runs at ${amount('fraction', limit)}: a little less load and condensate backs up into it.`;
+    return { code, verdict: 'watch', value, limit, ...findingWords(text, DRAIN_AT_STALL) };
+  }
+  return { code, verdict: 'pass', value, limit, ...STALL_PASSES };
 }
 
 /** A rating that just meets what is asked for passes: 600 lb/h and 3 × 200 lb/h differ in the last digits of a conversion. */

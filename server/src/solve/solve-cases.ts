@@ -13,7 +13,7 @@ type WithoutProblem = Omit<SolveResult, 'problem'>;
 /** Solves each case of a job. A case that is refused stands beside those that are solved. */
 export function solveCases({ file, caseIds, partial }: SolveJob): CaseOutcome[] {
   return caseIds.map((caseId) => {
-    const solved = solveNetwork(file, { caseId, partial });
+    const solved = solveNetwork(file, { caseId, partial, bands: true });
     if (isRefusal(solved)) return { caseId, status: 'refused', problem: toProblem(solved.problem) };
     const { problem, ...rest } = solved;
     const result = rest satisfies ReadOnly<WithoutProblem> as WithoutProblem;
