@@ -3,8 +3,10 @@ import { NoConvergenceError } from '@riseback/numerics';
 import { ElementFailure } from './element-failure';
 import type { ChordFlows } from './flow-and-energy';
 import { meshCore, type MeshCore } from './mesh-core';
-import { findRough, MarchedLaw, RoughLaw } from './mesh-law';
-import { closeMeshesByNewton, type MeshSolution } from './mesh-newton';
+import { treeFlows } from './mesh-division';
+import { findRough, MarchedLaw } from './mesh-law';
+import { MESH_CLOSED_PA, searchDivision } from './mesh-search';
+import type { MeshSolution } from './mesh-newton';
 import { MeshEvaluator, type MeshState } from './mesh-state';
 import type { PreparedNetwork } from './network-state';
 import type { OperatingNode } from './operating-case';
@@ -18,20 +20,24 @@ export interface ClosedMeshes {
   readonly tree: ReturnTree;
   readonly chordFlows: ChordFlows;
   readonly iterations: number;
+  /** How the pipes were marched, finer than asked for where the meshes needed it. */
+  readonly march: MarchOptions;
 }
 
-/** Every mesh closes within this. */
-export const MESH_CLOSED_PA = 1;
-/** Flows are polished until they move by less than this share of all that flows. */
-const POLISHED_SHARE = 1e-9;
-const ROUGHLY_CLOSED_SHARE = 1e-4;
-const MAXIMUM_ITERATIONS = 150;
+interface Search {
+  readonly march: MarchOptions;
+  readonly evaluator: MeshEvaluator;
+  readonly solution: MeshSolution;
+}
+
+/** A mesh that stays open by less than this may be open only by what the march leaves; then it is marched finer. */
+const WITHIN_MARCH_PA = 100;
+const FINER_MARCH_SHARE = 0.01;
+
 /** The last resort, so that nothing hangs: a network that takes longer is named as not converged. */
-const LONGEST_SEARCH_MS = 1500;
+const LONGEST_SEARCH_MS = 1200;
 /** More meshes than this are refused: the dense system alone would take longer than a solve may. */
 export const MOST_MESHES = 600;
-/** Pressure falls in a still pipe by its weight; above this the pipe counts as one whose pressure jumps as the flow turns. */
-const JUMP_PA = 1e-3;
 /** Of all that flows, the least share that a pipe is judged by before it is known what it carries. */
 const LEAST_REFERENCE_SHARE = 0.1;
 
@@ -42,8 +48,6 @@ export class FlowCannotLeaveError extends Error {
 
 /**
  * Divides the flow between meshes and receivers so that every mesh closes.
- * First with each pipe as a jump and a square law, which takes no march and always converges; from there with the pipes as they
- * are.
  * @throws ElementFailure where that cannot be, at the pipe or vessel where it shows
  * Method: docs/methods/loops.md.
  */
@@ -55,35 +59,25 @@ export function closeMeshes(
   const { file, tree, geometries } = prepared;
   refuseTooMany(file, tree);
   const core = meshCore(prepared, nodes);
-  const law = new MarchedLaw(
-    core.pipes.map((pipe) => geometries[pipe] as PipeGeometry),
-    prepared.ambientEnthalpyJKg,
-    march,
-  );
-  const evaluator = new MeshEvaluator(core.network, law);
-  const start = evaluator.start();
-  makeRough(law, evaluator, start);
-  const stops = core.network.oneWay.map((oneWay, pipe) => {
-    const { staticAgainstArrowPa, staticWithArrowPa } = law.rough;
-    const jumpPa = (staticWithArrowPa[pipe] as number) + (staticAgainstArrowPa[pipe] as number);
-    return oneWay === 1 || jumpPa > JUMP_PA ? 1 : 0;
-  });
+  const inCore = core.pipes.map((pipe) => geometries[pipe] as PipeGeometry);
   const endMs = Date.now() + LONGEST_SEARCH_MS;
-  const search = { maximumIterations: MAXIMUM_ITERATIONS, stops, isOver: () => Date.now() > endMs };
-  const roughly = closeMeshesByNewton(new MeshEvaluator(core.network, new RoughLaw(law.rough, law)), start, {
-    ...search,
-    closedPa: MESH_CLOSED_PA,
-    flowShare: ROUGHLY_CLOSED_SHARE,
-  });
-  const solution = closeMeshesByNewton(evaluator, roughly.state.flowKgS, {
-    ...search,
-    closedPa: MESH_CLOSED_PA / 2,
-    flowShare: POLISHED_SHARE,
-  });
+  const isOver = (): boolean => Date.now() > endMs;
+  const search = (options: MarchOptions): Search => {
+    const law = new MarchedLaw(inCore, prepared.ambientEnthalpyJKg, options);
+    const evaluator = new MeshEvaluator(core.network, law);
+    makeRough(law, evaluator);
+    return { march: options, evaluator, solution: searchDivision(evaluator, isOver) };
+  };
+  let found = search(march);
+  if (!found.solution.converged && found.solution.worstPa < WITHIN_MARCH_PA) {
+    // long lines of great pressure drop: the error that a march may leave is what keeps the mesh open
+    found = search({ ...march, tolerancePa: march.tolerancePa * FINER_MARCH_SHARE });
+  }
+  const { evaluator, solution } = found;
   refuseUnclosed(prepared, core, solution);
   refuseReturningLiquid(prepared, core, solution.state);
   refuseFeeding(prepared, core, evaluator, solution.state);
-  return { ...meshedTree(prepared, core, solution.state), iterations: solution.iterations };
+  return { ...meshedTree(prepared, core, solution.state), iterations: solution.iterations, march: found.march };
 }
 
 function refuseTooMany({ pipes }: NetworkFile, { chords }: ReturnTree): void {
@@ -96,7 +90,7 @@ function refuseTooMany({ pipes }: NetworkFile, { chords }: ReturnTree): void {
 }
 
 /** Each pipe is judged at what it carries at the start, at a mean enthalpy and at the pressure that its way leads to. */
-function makeRough(law: MarchedLaw, { network, scaleKgS }: MeshEvaluator, startKgS: Float64Array): void {
+function makeRough(law: MarchedLaw, { network, scaleKgS }: MeshEvaluator): void {
   const enthalpyJKg =
     scaleKgS > 0 ? network.inflowW.reduce((sum, w) => sum + w, 0) / scaleKgS : network.ambientEnthalpyJKg;
   const endPa = network.fixedPressurePa.slice();
@@ -107,7 +101,7 @@ function makeRough(law: MarchedLaw, { network, scaleKgS }: MeshEvaluator, startK
     endPa[node] = endPa[below] as number;
   }
   const least = LEAST_REFERENCE_SHARE * (scaleKgS || 1);
-  startKgS.forEach((flow, pipe) => {
+  treeFlows(network, network.inflowKgS).forEach((flow, pipe) => {
     const massFlowKgS = Math.max(Math.abs(flow), least);
     findRough(law, pipe, { massFlowKgS, enthalpyJKg, pressurePa: endPa[network.to[pipe] as number] as number });
   });
@@ -168,7 +162,7 @@ function meshedTree(
   { file, tree }: PreparedNetwork,
   core: MeshCore,
   state: MeshState,
-): Omit<ClosedMeshes, 'iterations'> {
+): Pick<ClosedMeshes, 'tree' | 'chordFlows'> {
   const [outPipe, drainsTo, endOfWalk, arrow] = [
     tree.outPipe.slice(),
     tree.drainsTo.slice(),

@@ -24,7 +24,7 @@ export interface MeshCore {
  */
 export function meshCore(prepared: PreparedNetwork, nodes: readonly OperatingNode[]): MeshCore {
   const { file, tree } = prepared;
-  const branches = branchNodes(tree, nodes);
+  const branches = branchNodes(tree, nodes, (a, b) => compareIds(idOf(file.nodes, a), idOf(file.nodes, b)));
   const isBranch = new Uint8Array(tree.nodeCount);
   for (const node of branches) isBranch[node] = 1;
   const pipes = indexes(file.pipes.length)
@@ -51,7 +51,11 @@ export function meshCore(prepared: PreparedNetwork, nodes: readonly OperatingNod
 }
 
 /** Nodes that hang on by one pipe, again and again, each after those that hang on it. */
-function branchNodes(tree: ReturnTree, nodes: readonly OperatingNode[]): number[] {
+function branchNodes(
+  tree: ReturnTree,
+  nodes: readonly OperatingNode[],
+  byId: (a: number, b: number) => number,
+): number[] {
   const { nodeCount, from, to, arrow, drainsTo, endOfWalk } = tree;
   const at = pipesAtNode(nodeCount, from, to);
   const left = new Int32Array(nodeCount);
@@ -62,7 +66,9 @@ function branchNodes(tree: ReturnTree, nodes: readonly OperatingNode[]): number[
   }
   const isFree = (node: number): boolean =>
     endOfWalk[node] !== -1 && node < nodes.length && nodes[node]?.kind !== 'fixedPressure';
-  const branches = indexes(nodeCount).filter((node) => isFree(node) && left[node] === 1);
+  const branches = indexes(nodeCount)
+    .filter((node) => isFree(node) && left[node] === 1)
+    .sort(byId);
   for (let head = 0; head < branches.length; head++) {
     const below = drainsTo[branches[head] as number] as number;
     left[below] = (left[below] as number) - 1;

@@ -53,24 +53,6 @@ export class MarchedLaw implements MeshLaw {
   }
 }
 
-/** Pipes as {@link RoughPipes} alone: the network nearly as it is, and solved without a march. */
-export class RoughLaw implements MeshLaw {
-  constructor(
-    readonly rough: RoughPipes,
-    private readonly marched: MeshLaw,
-  ) {}
-
-  inletPressurePa(pipe: number, withArrow: boolean, massFlowKgS: number, _h: number, outletPressurePa: number): number {
-    const { resistance, staticAgainstArrowPa, staticWithArrowPa } = this.rough;
-    const staticPa = (withArrow ? staticWithArrowPa : staticAgainstArrowPa)[pipe] as number;
-    return outletPressurePa + staticPa + (resistance[pipe] as number) * massFlowKgS * massFlowKgS;
-  }
-
-  outletEnthalpyJKg(pipe: number, massFlowKgS: number, inletEnthalpyJKg: number): number {
-    return this.marched.outletEnthalpyJKg(pipe, massFlowKgS, inletEnthalpyJKg);
-  }
-}
-
 /** What a pipe is asked to make a rough one of it. */
 export interface RoughReference {
   readonly massFlowKgS: number;

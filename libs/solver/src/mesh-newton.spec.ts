@@ -1,4 +1,5 @@
 import { describe, expect, it } from 'vitest';
+import { treeFlows } from './mesh-division';
 import { closeMeshesByNewton } from './mesh-newton';
 import type { MeshLaw, MeshNetwork } from './mesh-network';
 import { MeshEvaluator } from './mesh-state';
@@ -61,8 +62,9 @@ const PIPES = ['AB', 'BC', 'AD', 'BE', 'CF', 'DE', 'EF'];
 
 describe('closing meshes by Newton', () => {
   it.each(CASES)('divides the flow of $id as Hardy Cross does', ({ outflow, resistance, flow }) => {
-    const evaluator = new MeshEvaluator(reversedNetwork(PIPES, outflow), squareLaw(resistance));
-    const { converged, state, iterations } = closeMeshesByNewton(evaluator, evaluator.start(), {
+    const network = reversedNetwork(PIPES, outflow);
+    const evaluator = new MeshEvaluator(network, squareLaw(resistance));
+    const { converged, state, iterations } = closeMeshesByNewton(evaluator, treeFlows(network, network.inflowKgS), {
       closedPa: 1e-6,
       flowShare: 1e-12,
       maximumIterations: 50,

@@ -1,7 +1,7 @@
 import { solveLinearSystem } from '@riseback/numerics';
 import { MeshResponse } from './mesh-response';
 import { SlopeKeeper } from './mesh-slopes';
-import type { MeshEvaluator, MeshState } from './mesh-state';
+import type { MeshEvaluator, MeshState, VesselDrains } from './mesh-state';
 
 export interface MeshSolution {
   readonly state: MeshState;
@@ -23,6 +23,8 @@ export interface NewtonOptions {
   readonly stops: Uint8Array;
   /** Told before each state that is worked out; true ends the search where it is. */
   readonly isOver?: () => boolean;
+  /** What vessels drained before, for those whose liquid comes back to them. */
+  readonly drains?: VesselDrains | undefined;
 }
 
 /** A step is shortened while it overshoots by more than this share of what drove it. */
@@ -31,7 +33,7 @@ const SHORTENINGS = 8;
 /** A way out is brought this near to standstill, after which another pipe is its node's way out and this one a chord. */
 const NEARLY_STOPPED = 0.9;
 /** The search ends after so many states without a better one. */
-const PATIENCE = 30;
+const PATIENCE = 8;
 /** While polishing, a state must be better than the best by this factor to go on. */
 const POLISHING_GAIN = 0.5;
 
@@ -48,7 +50,7 @@ export function closeMeshesByNewton(
   options: NewtonOptions,
 ): MeshSolution {
   const slopes = new SlopeKeeper(evaluator);
-  let state = evaluator.evaluate(startKgS);
+  let state = evaluator.evaluate(startKgS, options.drains);
   let best = { state, ...worstOf(state) };
   let iterations = 1;
   let sinceBest = 0;

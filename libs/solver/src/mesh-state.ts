@@ -62,23 +62,6 @@ export class MeshEvaluator {
     this.scaleKgS = network.inflowKgS.reduce((sum, flow) => sum + flow, 0);
   }
 
-  /** Everything over the ways out of the start, nothing in any other pipe. */
-  start(): Float64Array {
-    const { from, inflowKgS, startOrder, startWayOut, to } = this.network;
-    const flowKgS = new Float64Array(from.length);
-    const passing = inflowKgS.slice();
-    for (const node of startOrder) {
-      const pipe = startWayOut[node] as number;
-      if (pipe < 0) continue;
-      const withArrow = from[pipe] === node;
-      const flow = passing[node] as number;
-      flowKgS[pipe] = withArrow ? flow : -flow;
-      const next = (withArrow ? to[pipe] : from[pipe]) as number;
-      passing[next] = (passing[next] as number) + flow;
-    }
-    return flowKgS;
-  }
-
   /**
    * @param wantedKgS flows along the arrows; each node's largest outflow is fitted so that mass balances to rounding
    * @param before what the vessels drained, for those whose liquid comes back to them

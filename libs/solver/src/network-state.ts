@@ -1,5 +1,5 @@
 import type { NetworkFile } from '@riseback/network';
-import { closeMeshes, FlowCannotLeaveError } from './close-meshes';
+import { closeMeshes, FlowCannotLeaveError, type ClosedMeshes } from './close-meshes';
 import { ElementFailure } from './element-failure';
 import { flowAndEnergy, type ChordFlows, type FlowAndEnergy } from './flow-and-energy';
 import type { OperatingNode } from './operating-case';
@@ -33,10 +33,10 @@ export interface NetworkState {
 export function networkState(
   prepared: PreparedNetwork,
   nodes: readonly OperatingNode[],
-  march: MarchOptions,
+  asked: MarchOptions,
 ): NetworkState {
   const { file, geometries, ambientEnthalpyJKg } = prepared;
-  const { tree, chordFlows, iterations } = directed(prepared, nodes, march);
+  const { tree, chordFlows, iterations, march } = directed(prepared, nodes, asked);
   const flows = { ...flowAndEnergy(tree, nodes, geometries, ambientEnthalpyJKg, chordFlows), ambientEnthalpyJKg };
   return { tree, flows, walk: pressureWalk(file, tree, nodes, geometries, flows, march), iterations };
 }
@@ -45,10 +45,10 @@ function directed(
   prepared: PreparedNetwork,
   nodes: readonly OperatingNode[],
   march: MarchOptions,
-): { readonly tree: ReturnTree; readonly chordFlows?: ChordFlows; readonly iterations: number } {
+): Omit<ClosedMeshes, 'chordFlows'> & { readonly chordFlows?: ChordFlows } {
   const { file, tree } = prepared;
   if (tree.chords.length > 0) return closeMeshes(prepared, nodes, march);
-  if (tree.upstreamFirst.length === tree.downstreamFirst.length) return { tree, iterations: 1 };
+  if (tree.upstreamFirst.length === tree.downstreamFirst.length) return { tree, iterations: 1, march };
   const vessel = tree.vesselOfOutlet.find((_, k) => tree.outPipe[file.nodes.length + k] !== -1) ?? 0;
   const reason = new FlowCannotLeaveError('the liquid of this flash vessel comes back to it');
   throw new ElementFailure((file.nodes[vessel] as { id: string }).id, `/nodes/${vessel}`, reason);
