@@ -1,5 +1,4 @@
 import type { Band, TrapResult } from '@riseback/contracts';
-import { FRICTION_WORDS } from '../networks/method-words';
 import { type DisplayUnits, displayUnit, formatQuantity } from '@riseback/units';
 
 /** The two bands of a trap's back pressure: by every method, and by those that suit the flow in each pipe. */
@@ -31,8 +30,6 @@ export function bandWords(trap: Pick<TrapResult, 'spread' | 'credible'>, units: 
 }
 
 /** Methods that the band leaves out because they find no solution: in truth it is wider. */
-export function without({ withoutSolution = [] }: Band): string {
-  if (withoutSolution.length === 0) return '';
-  const words: Readonly<Record<string, string>> = FRICTION_WORDS;
-  return `, ${withoutSolution.map((method) => words[method] ?? method).join(' and ')} without a solution`;
+function without({ withoutSolution = [] }: Band): string {
+  return withoutSolution.length === 0 ? '' : `, ${withoutSolution.join(' and ')} without a solution`;
 }

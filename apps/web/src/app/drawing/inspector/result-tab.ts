@@ -1,23 +1,21 @@
 import { ChangeDetectionStrategy, Component, computed, inject, input } from '@angular/core';
-import type { CaseOutcome, TrapResult } from '@riseback/contracts';
+import type { CaseOutcome } from '@riseback/contracts';
 import type { NetworkNode, PipeRun, Trap, TrapModel } from '@riseback/network';
-import { formatQuantity, type QuantityKind } from '@riseback/units';
+import { formatQuantity } from '@riseback/units';
 import { caseChangeWords } from '../../cases/case-changes';
 import { NetworkStore } from '../../networks/network-store';
 import { backPressureLimit } from '../../results/back-pressure-limit';
+import { StallChart } from '../../results/stall/stall-chart';
+import { stallFacts } from '../../results/stall/stall-facts';
 import { Staff } from '../../results/staff/staff';
 import { isPipe, nameOf } from '../../shared/element-words';
 import { CheckList } from './check-list';
-
-interface Row {
-  readonly name: string;
-  readonly value: string;
-}
+import { dropRows, nodeRows, pipeRows, type ResultRow, trapNotes, trapRows } from './result-rows';
 
 /** What came out for one element in the chosen case. */
 @Component({
   selector: 'app-result-tab',
-  imports: [CheckList, Staff],
+  imports: [CheckList, Staff, StallChart],
   changeDetection: ChangeDetectionStrategy.OnPush,
   templateUrl: './result-tab.html',
   styleUrl: './inspector-tabs.scss',
@@ -68,42 +66,31 @@ export class ResultTab {
   protected readonly warnings = computed(() =>
     (this.store.result()?.warnings ?? []).filter(({ element }) => element === this.element().id),
   );
-  protected readonly parts = computed((): Row[] => {
+  protected readonly parts = computed((): ResultRow[] => {
     const result = this.trapResult();
-    return result === null ? [] : this.breakdown(result);
+    return result === null ? [] : trapRows(result, this.receiverName(), this.store.units());
   });
-  protected readonly nodeRows = computed((): Row[] => {
+  protected readonly stall = computed(() => {
+    const [document, trap, result] = [this.store.document(), this.trap(), this.trapResult()];
+    if (document === null || trap === null || result === null) return null;
+    return stallFacts(document, this.store.caseOf(trap.id), trap, result);
+  });
+  protected readonly notes = computed(() => {
+    const result = this.trapResult();
+    return result === null ? [] : trapNotes(result, this.store.units());
+  });
+  protected readonly nodeRows = computed((): ResultRow[] => {
     const result = this.store.nodeResults().get(this.element().id);
-    if (result === undefined || this.trap() !== null) return [];
-    return [
-      this.row('Pressure', result.pressurePa, 'pressure'),
-      this.row('Temperature', result.temperatureK, 'temperature'),
-      this.row('Flash share', result.quality, 'quality'),
-      this.row('Flow', result.massFlowKgS, 'massFlow'),
-    ];
+    return result === undefined || this.trap() !== null ? [] : nodeRows(result, this.store.units());
   });
-  protected readonly pipeRows = computed((): Row[] => {
-    const result = this.store.pipeResults().get(this.element().id);
-    if (result === undefined) return [];
-    return [
-      this.row('Flow', result.massFlowKgS, 'massFlow'),
-      this.row('Pressure at its start', result.upstreamPressurePa, 'pressure'),
-      this.row('Pressure at its end', result.downstreamPressurePa, 'pressure'),
-      this.row('Flash share at its start', result.upstreamQuality, 'quality'),
-      this.row('Flash share at its end', result.downstreamQuality, 'quality'),
-      this.row('Velocity, as liquid', result.liquidVelocityMS, 'velocity'),
-      this.row('Velocity, with flash steam', result.mixtureVelocityMS, 'velocity'),
-    ];
+  private readonly pipeResult = computed(() => this.store.pipeResults().get(this.element().id) ?? null);
+  protected readonly pipeRows = computed((): ResultRow[] => {
+    const result = this.pipeResult();
+    return result === null ? [] : pipeRows(result, this.store.units());
   });
-  protected readonly dropRows = computed((): Row[] => {
-    const result = this.store.pipeResults().get(this.element().id);
-    if (result === undefined) return [];
-    return [
-      this.row('Lift', result.staticPa, 'pressureDifference'),
-      this.row('Friction of the liquid', result.frictionPa, 'pressureDifference'),
-      this.row('Added by flash steam', result.flashPa, 'pressureDifference'),
-      this.row('Drop together', result.upstreamPressurePa - result.downstreamPressurePa, 'pressureDifference'),
-    ];
+  protected readonly dropRows = computed((): ResultRow[] => {
+    const result = this.pipeResult();
+    return result === null ? [] : dropRows(result, this.store.units());
   });
   protected readonly refusal = computed(() => {
     const outcome = this.store.outcome();
@@ -127,19 +114,5 @@ export class ResultTab {
       outcome.result.traps.find((trap) => trap.id === id)?.backPressurePa ??
       outcome.result.nodes.find((node) => node.id === id)?.pressurePa;
     return pressurePa === undefined ? '–' : formatQuantity(pressurePa, 'pressure', this.store.units());
-  }
-
-  private breakdown(result: TrapResult): Row[] {
-    return [
-      this.row(this.receiverName(), result.receiverPressurePa, 'pressure'),
-      this.row('Lift', result.staticPa, 'pressureDifference'),
-      this.row('Friction of the liquid', result.frictionPa, 'pressureDifference'),
-      this.row('Added by flash steam', result.flashPa, 'pressureDifference'),
-      this.row('Back pressure', result.backPressurePa, 'pressure'),
-    ];
-  }
-
-  private row(name: string, si: number, kind: QuantityKind): Row {
-    return { name, value: formatQuantity(si, kind, this.store.units(), { withUnit: true }) };
   }
 }

@@ -52,6 +52,8 @@ export interface PipeView {
   readonly branch: boolean;
   readonly arrow: (PointOnLine & { readonly level: ColourClass | null }) | null;
   readonly checkValve: PointOnLine | null;
+  /** Where the double bar of a choked outlet stands; null where it is free. */
+  readonly choked: PointOnLine | null;
   readonly lift: LiftMark | null;
   readonly name: string;
 }
@@ -70,6 +72,9 @@ export interface SceneResults {
 const LEAST_LIFT_M = 0.9144;
 /** Shorter pieces have no room for an arrow, drawing units. */
 const LEAST_ARROW_PIECE = 36;
+
+/** Close to the end of the flow, clear of the symbol that it goes into. */
+const CHOKED_AT = 0.88;
 
 export function nodeView(
   { id, node, at }: DrawnNode,
@@ -127,6 +132,7 @@ export function pipeView(
     branch: from?.kind === 'trap' || from?.kind === 'pumpedInlet',
     arrow: arrowOn(points, reversed, result !== undefined && result.massFlowKgS === 0, parts),
     checkValve: pipe.checkValve ? pointAt(points, 0.7) : null,
+    choked: result?.choked === true ? pointAt(points, reversed ? 1 - CHOKED_AT : CHOKED_AT) : null,
     lift: upright === undefined ? null : { piece: upright, riseM: rise },
     name: pipeName(pipe, { from, to, result, warnings, selected, caseName: results.caseNameOf(id) }, units),
   };

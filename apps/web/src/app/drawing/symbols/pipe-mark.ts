@@ -14,7 +14,7 @@ const STAFF_OFFSET = 13;
 const TICK_M = 0.6096;
 const MOST_TICKS = 40;
 
-/** A pipe on the sheet: wash of the result, core of ink, arrow, check valve, lift staff; dashed and bare while it is not solved. */
+/** A pipe on the sheet: wash of the result, core of ink, arrow, check valve, choked outlet, lift staff; dashed and bare while it is not solved. */
 @Component({
   selector: '[appPipeMark]',
   changeDetection: ChangeDetectionStrategy.OnPush,

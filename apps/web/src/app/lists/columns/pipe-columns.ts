@@ -1,6 +1,7 @@
 import { FITTINGS, NOMINAL_SIZES, pipeBore, pipeSizes } from '@riseback/hydraulics';
 import { inOrder, type NetworkDocument, type PipeRun, setOp } from '@riseback/network';
 import { formatQuantity } from '@riseback/units';
+import { FLOW_PATTERN_WORDS } from '../../shared/flow-pattern-words';
 import type { Choice, Column, ListContext, Proposal } from './column';
 import { quantityColumn, resultColumn } from './column-kinds';
 import { caseColumn, findingColumn, nameColumns, noteColumn } from './shared-columns';
@@ -96,9 +97,36 @@ export const PIPE_COLUMNS: readonly Column<PipeRun>[] = [
     { title: 'Flash', widthPx: 72 },
     ({ id }, { pipes }) => pipes.get(id)?.flashPa,
   ),
+  patternColumn(),
+  outletColumn(),
   caseColumn<PipeRun>(),
   findingColumn<PipeRun>({ title: 'Finding', widthPx: 160 }, () => false),
 ];
+
+function patternColumn(): Column<PipeRun> {
+  return {
+    key: 'flowPattern',
+    title: 'Flow pattern',
+    group: 'result',
+    widthPx: 124,
+    value: ({ id }, { pipes }) => {
+      const pattern = pipes.get(id)?.flowPattern;
+      return pattern === undefined ? undefined : FLOW_PATTERN_WORDS[pattern];
+    },
+  };
+}
+
+/** Where a choked pipe's outlet stands; empty where it is free. */
+function outletColumn(): Column<PipeRun> {
+  return {
+    key: 'outletPressurePa',
+    title: 'Choked at',
+    group: 'result',
+    widthPx: 92,
+    quantity: 'pressure',
+    value: ({ id }, { pipes }) => pipes.get(id)?.outletPressurePa,
+  };
+}
 
 function endColumn(key: 'from' | 'to', title: string): Column<PipeRun> {
   return {

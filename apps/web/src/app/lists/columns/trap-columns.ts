@@ -1,4 +1,5 @@
 import { inOrder, type NetworkNode, setOp, type Trap } from '@riseback/network';
+import { bandNumbers } from '../../results/bands';
 import type { Choice, Column, ListContext } from './column';
 import { choiceColumn, keySet, quantityColumn, resultColumn, textColumn } from './column-kinds';
 import { caseColumn, distinct, elevationColumn, findingColumn, nameColumns, noteColumn } from './shared-columns';
@@ -82,6 +83,8 @@ export const TRAP_COLUMNS: readonly Column<Trap>[] = [
     { title: 'Back', widthPx: 76 },
     ({ id }, { traps }) => traps.get(id)?.backPressurePa,
   ),
+  bandColumn('credible', 'Credible'),
+  bandColumn('spread', 'Spread'),
   resultColumn<Trap>(
     'differentialPa',
     'pressureDifference',
@@ -94,6 +97,22 @@ export const TRAP_COLUMNS: readonly Column<Trap>[] = [
     ({ id }, { traps }) => (traps.get(id)?.checks.length ?? 0) > 0,
   ),
 ];
+
+/** Between what the methods put the back pressure; sorted by the upper end, which is what may turn a verdict. */
+function bandColumn(key: 'credible' | 'spread', title: string): Column<Trap> {
+  return {
+    key,
+    title,
+    group: 'result',
+    widthPx: 118,
+    quantity: 'pressure',
+    value: ({ id }, { traps }) => traps.get(id)?.[key]?.highPa,
+    show: ({ id }, { traps, units }) => {
+      const band = traps.get(id)?.[key];
+      return band === undefined ? '' : bandNumbers(band, units);
+    },
+  };
+}
 
 function trapModelColumn(): Column<Trap> {
   const nameOfModel = ({ trapModel }: Trap, { document }: ListContext): string | undefined =>

@@ -8,6 +8,7 @@ import { type DisplayUnits, formatQuantity } from '@riseback/units';
 import { ElementIcon } from '../../drawing/symbols/element-icon';
 import { FRICTION_WORDS, STATIC_LIFT_WORDS } from '../../networks/method-words';
 import { StatusMark } from '../../shared/status-mark/status-mark';
+import { bandNumbers } from '../bands';
 import type { PressureRamp } from '../pressure-ramp';
 import { endWords, trapTypeWords } from './element-text';
 import { ledgerModel } from './ledger-model';
@@ -94,6 +95,13 @@ export class LedgerSheet {
       back: formatQuantity(result.backPressurePa, 'pressure', this.units()),
       unit: this.model().titles.running,
     };
+  });
+  protected readonly bands = computed(() => {
+    const { spread, credible } = this.item().result;
+    return [
+      ...(spread === undefined ? [] : [{ name: 'Spread', numbers: bandNumbers(spread, this.units()) }]),
+      ...(credible === undefined ? [] : [{ name: 'Credible', numbers: bandNumbers(credible, this.units()) }]),
+    ];
   });
   protected readonly methodWords = computed(() => {
     const { friction, staticLift, dropCredit } = this.document().method;

@@ -11,11 +11,13 @@ import {
   signal,
   viewChild,
 } from '@angular/core';
+import type { Band } from '@riseback/contracts';
 import { type DisplayUnits, displayUnit, formatQuantity } from '@riseback/units';
 import type { ProfilePoint } from '@riseback/solver';
 import type { BackPressureLimit } from '../back-pressure-limit';
+import { bandWords } from '../bands';
 import type { PressureRamp } from '../pressure-ramp';
-import { PROFILE, profileFigure } from './profile-figure';
+import { type BandMark, PROFILE, profileFigure } from './profile-figure';
 
 /** Width on the A4 page, px, and the least in which its words still find room. */
 const FULL_WIDTH = 1056;
@@ -38,6 +40,8 @@ export class LiftProfile {
   readonly nameOfPipe = input.required<(pipeId: string) => string>();
   readonly limit = input<BackPressureLimit | null>(null);
   readonly exceeded = input(false);
+  readonly spread = input<Band>();
+  readonly credible = input<Band>();
 
   private readonly frame = viewChild.required<ElementRef<HTMLElement>>('frame');
 
@@ -57,6 +61,8 @@ export class LiftProfile {
       units: this.units(),
       ramp: this.ramp(),
       limitPa: this.limit()?.pressurePa,
+      spread: this.spread(),
+      credible: this.credible(),
       width: this.width(),
     }),
   );
@@ -73,11 +79,12 @@ export class LiftProfile {
     const { length, pressure } = this.titles();
     const { lifts } = this.figure();
     const way = formatQuantity(this.points().at(-1)?.distanceM ?? 0, 'length', this.units());
+    const bands = bandWords({ spread: this.spread(), credible: this.credible() }, this.units());
     const risen = lifts.map(({ text }) => text).filter((text) => text !== '');
     return (
       `Lift profile: over ${way} ${length} of way the pressure falls from ${this.ends().start} ${pressure} at ${this.trapName()} ` +
       `to ${this.ends().end} ${pressure} in ${this.endName()}${risen.length === 0 ? '' : `, with ${risen.join(' and ')}`}. ` +
-      'The table below has every number.'
+      `${bands === '' ? '' : `${bands} `}The table below has every number.`
     );
   });
   protected readonly sample = computed(() => {
@@ -128,6 +135,12 @@ export class LiftProfile {
     this.at.set(
       samples.reduce((best, { x: at }, i) => (Math.abs(at - x) < Math.abs((samples[best]?.x ?? 0) - x) ? i : best), 0),
     );
+  }
+
+  /** A line with a cap at each end that lies within the plot. */
+  protected whisker({ top, bottom, capped }: BandMark): string {
+    const cap = (y: number) => `M${PROFILE.left - 5} ${y}h10`;
+    return `M${PROFILE.left} ${top}V${bottom}${capped.top ? cap(top) : ''}${capped.bottom ? cap(bottom) : ''}`;
   }
 
   private pressureAt(index: number): string {

@@ -100,4 +100,27 @@ describe('profileFigure', () => {
     expect(JSON.stringify(made)).not.toMatch(/null,"y|NaN|Infinity/);
     expect(made.washes.length).toBeGreaterThan(0);
   });
+
+  it('marks the bands at the trap, whole where they fit and open where they run out', () => {
+    const { spread, credible, pressureTicks } = profileFigure({
+      points: POINTS,
+      nameOfPipe: (id) => id,
+      units,
+      ramp: pressureRamp([psig(0), psig(35)], units),
+      limitPa: undefined,
+      spread: { lowPa: psig(2), highPa: psig(90) },
+      credible: { lowPa: psig(21), highPa: psig(46.7) },
+      width: WIDTH,
+    });
+    expect(pressureTicks.map(({ text }) => text)).toEqual(['10', '20', '30', '40', '50']);
+    // ten psi to the step: 46.7 lies a third of a step below the top
+    const step = (PROFILE.pressureBottom - PROFILE.pressureTop) / 4;
+    expect(credible?.top).toBeCloseTo(PROFILE.pressureTop + 0.33 * step, 6);
+    expect(credible?.capped).toEqual({ top: true, bottom: true });
+    expect(spread).toEqual({
+      top: PROFILE.pressureTop,
+      bottom: PROFILE.pressureBottom,
+      capped: { top: false, bottom: false },
+    });
+  });
 });

@@ -1,3 +1,4 @@
+import type { Band } from '@riseback/contracts';
 import { type DisplayUnits, formatQuantity, toDisplay } from '@riseback/units';
 import type { ProfilePoint } from '@riseback/solver';
 import { area, line } from 'd3-shape';
@@ -56,7 +57,17 @@ export interface ProfileFigure {
   readonly start: Place;
   readonly end: Place;
   readonly limit: { readonly y: number; readonly labelY: number } | null;
+  /** The trap's bands, at its end of the way only: along it the other methods are not known. */
+  readonly spread: BandMark | null;
+  readonly credible: BandMark | null;
   readonly samples: readonly ProfileSample[];
+}
+
+/** A band as a stretch of height; an end that runs out of the plot has no cap. */
+export interface BandMark {
+  readonly top: number;
+  readonly bottom: number;
+  readonly capped: { readonly top: boolean; readonly bottom: boolean };
 }
 
 interface Tick {
@@ -71,12 +82,15 @@ export interface ProfileInput {
   readonly units: DisplayUnits;
   readonly ramp: PressureRamp;
   readonly limitPa: number | undefined;
+  readonly spread?: Band | undefined;
+  readonly credible?: Band | undefined;
   /** Of the whole figure, px. */
   readonly width: number;
 }
 
 /** Everything a lift profile draws, as numbers and paths: pressure upwards over elevation, flow from left to right. */
-export function profileFigure({ points, nameOfPipe, units, ramp, limitPa, width }: ProfileInput): ProfileFigure {
+export function profileFigure(input: ProfileInput): ProfileFigure {
+  const { points, nameOfPipe, units, ramp, limitPa, width } = input;
   const shown = points.map((point) => ({
     distance: toDisplay(point.distanceM, 'length', units),
     elevation: toDisplay(point.elevationM, 'length', units),
@@ -93,7 +107,9 @@ export function profileFigure({ points, nameOfPipe, units, ramp, limitPa, width 
   // a limit far off would flatten the line that the figure is about
   const limitInSight =
     limit !== undefined && Math.abs(limit - (shown[0]?.pressure ?? 0)) < 1.5 * Math.max(most - least, 1);
-  const reach = limitInSight ? [least, most, limit] : [least, most];
+  const inShown = (pa: number) => toDisplay(pa, 'pressure', units);
+  const credible = input.credible === undefined ? [] : [inShown(input.credible.lowPa), inShown(input.credible.highPa)];
+  const reach = [least, most, ...credible, ...(limitInSight ? [limit] : [])];
   const pressureTicks = niceTicks(Math.min(...reach), Math.max(...reach), 4);
   const elevations = shown.map(({ elevation }) => elevation);
   const elevationTicks = niceTicks(Math.min(...elevations), Math.max(...elevations), 3);
@@ -132,6 +148,8 @@ export function profileFigure({ points, nameOfPipe, units, ramp, limitPa, width 
     start,
     end,
     limit: limitY === undefined ? null : { y: limitY, labelY: limitY > start.pressureY ? limitY + 14 : limitY - 6 },
+    spread: bandMark(input.spread, (pa) => pressureY(inShown(pa))),
+    credible: bandMark(input.credible, (pa) => pressureY(inShown(pa))),
     samples: places.map((place, i) => ({ ...place, words: sampleWords(points[i], i, nameOfPipe, units) })),
   };
 }
@@ -139,6 +157,18 @@ export function profileFigure({ points, nameOfPipe, units, ramp, limitPa, width 
 function scaleOf(ticks: readonly number[], low: number, high: number): (value: number) => number {
   const [first = 0, last = 1] = [ticks[0], ticks.at(-1)];
   return (value) => low + ((value - first) / (last - first)) * (high - low);
+}
+
+function bandMark(band: Band | undefined, y: (pa: number) => number): BandMark | null {
+  if (band === undefined) return null;
+  const [top, bottom] = [y(band.highPa), y(band.lowPa)];
+  const { pressureTop, pressureBottom } = PROFILE;
+  return {
+    top: Math.min(pressureBottom, Math.max(pressureTop, top)),
+    bottom: Math.min(pressureBottom, Math.max(pressureTop, bottom)),
+    // but for the rounding of a conversion
+    capped: { top: top >= pressureTop - 0.01, bottom: bottom <= pressureBottom + 0.01 },
+  };
 }
 
 interface Shown {

@@ -86,7 +86,7 @@ describe('staffModel', () => {
     const banded = {
       ...trap,
       spread: { lowPa: 95_000, highPa: 446_000 },
-      credible: { lowPa: 135_000, highPa: 170_000, withoutSolution: ['friedel'] },
+      credible: { lowPa: 135_000, highPa: 170_000, withoutSolution: ['Friedel'] },
     };
     const { footPa, sentence } = staffModel(banded, 618_000, US, NAMED);
     expect(footPa).toBe(95_000);
