@@ -3,7 +3,8 @@ import { tmpdir } from 'node:os';
 import { join } from 'node:path';
 import Sqlite from 'better-sqlite3';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
-import { appendAudit, firstBrokenAuditRow } from '../../server/src/platform/db/audit';
+import { appendAudit } from '../../server/src/platform/db/audit';
+import { firstBrokenAuditRow } from '../../server/src/platform/db/audit-check';
 import { openDatabase, UnusableDatabaseError } from '../../server/src/platform/db/database';
 import { makeNetwork } from './network-samples';
 import { TestServer } from './test-server';
@@ -101,8 +102,8 @@ describe('the log', () => {
     { name: 'a changed row', tamper: "update audit set subject = 'x' where seq = 3", broken: 3 },
     { name: 'changed details', tamper: `update audit set details = '{"i":9}' where seq = 2`, broken: 2 },
     { name: 'a row with a hash of its own', tamper: "update audit set hash = 'ff' where seq = 4", broken: 4 },
-    { name: 'a removed row', tamper: 'delete from audit where seq = 2', broken: 3 },
-    { name: 'a removed first row', tamper: 'delete from audit where seq = 1', broken: 2 },
+    { name: 'a removed row', tamper: 'delete from audit where seq = 2', broken: 2 },
+    { name: 'a removed first row', tamper: 'delete from audit where seq = 1', broken: 1 },
     {
       name: 'two rows changed about',
       tamper:

@@ -3,7 +3,7 @@ import { applyBatch, fromFile, readNetworkFile, type EditOp } from '@riseback/ne
 import { eq } from 'drizzle-orm';
 import { afterAll, describe, expect, it } from 'vitest';
 import { audit, edits, nodes } from '../../server/src/platform/db/schema';
-import { firstBrokenAuditRow } from '../../server/src/platform/db/audit';
+import { firstBrokenAuditRow } from '../../server/src/platform/db/audit-check';
 import { batchOf, makeNetwork, raise, sendBatch, SMALL } from './network-samples';
 import { TestServer, type Client } from './test-server';
 

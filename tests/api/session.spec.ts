@@ -5,7 +5,7 @@ import jwt from 'jsonwebtoken';
 import request from 'supertest';
 import { afterEach, beforeEach, describe, expect, it } from 'vitest';
 import { PeopleRepository } from '../../server/src/people/people-repository';
-import { firstBrokenAuditRow } from '../../server/src/platform/db/audit';
+import { firstBrokenAuditRow } from '../../server/src/platform/db/audit-check';
 import { audit, people } from '../../server/src/platform/db/schema';
 import { Client, HOST, TestServer } from './test-server';
 

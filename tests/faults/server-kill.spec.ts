@@ -7,7 +7,7 @@ import { afterAll, beforeAll, expect, it } from 'vitest';
 import { DEMO_PASSWORD } from '../../server/demo/demo-people';
 import { NetworkRepository } from '../../server/src/networks/network-repository';
 import { solverHashOf } from '../../server/src/networks/network-hashes';
-import { firstBrokenAuditRow } from '../../server/src/platform/db/audit';
+import { firstBrokenAuditRow } from '../../server/src/platform/db/audit-check';
 import { openDatabase } from '../../server/src/platform/db/database';
 import { batchOf } from '../api/network-samples';
 

@@ -1,6 +1,7 @@
 import { createHash } from 'node:crypto';
 import { canonicalText } from '@riseback/network';
-import { asc, desc } from 'drizzle-orm';
+import { desc } from 'drizzle-orm';
+import { GENESIS_HASH } from './audit-head-log';
 import type { Queries } from './database';
 import { audit } from './schema';
 
@@ -19,10 +20,7 @@ export interface AuditEntry {
   readonly details?: Readonly<Record<string, unknown>>;
 }
 
-/** What the first row is chained to. */
-const GENESIS_HASH = '0'.repeat(64);
-
-type AuditRow = typeof audit.$inferSelect;
+export type AuditRow = typeof audit.$inferSelect;
 
 /**
  * Appends to the log, in the transaction of what it records, so that neither is ever stored without the other. Each row
@@ -46,22 +44,7 @@ export function appendAudit(tx: Queries, entry: AuditEntry): void {
     .run();
 }
 
-/**
- * The first row that does not follow from the one before it, or undefined when the whole chain holds. A tail cut off
- * leaves a chain that holds; only a head kept elsewhere shows that.
- */
-export function firstBrokenAuditRow(db: Queries): number | undefined {
-  let previousHash = GENESIS_HASH;
-  let seq = 0;
-  for (const { hash, ...row } of db.select().from(audit).orderBy(asc(audit.seq)).all()) {
-    seq += 1;
-    if (row.seq !== seq || row.previousHash !== previousHash || auditHash(row) !== hash) return row.seq;
-    previousHash = hash;
-  }
-  return undefined;
-}
-
 /** SHA-256 over the previous hash and the RFC 8785 text of the row. */
-function auditHash({ previousHash, ...row }: Omit<AuditRow, 'hash'>): string {
+export function auditHash({ previousHash, ...row }: Omit<AuditRow, 'hash'>): string {
   return createHash('sha256').update(previousHash).update(canonicalText(row)).digest('hex');
 }
