@@ -66,7 +66,7 @@ export const METHOD_SENTENCES: {
     average: 'Every trap at its load of the case, steady.',
     ownPeak: 'For each intermittent trap its own peak discharge, with all others at their load.',
     probable:
-      'Its own peak, and with it what the other intermittent traps upstream discharge together in 95 of 100 moments.',
+      'Its own peak, and with it what the other intermittent traps upstream discharge together in 95 of 100 moments; only without loops.',
   },
 };
 

@@ -16,7 +16,9 @@ export type FormulaNode =
 
 const PAIRS: Readonly<Record<string, string>> = { '(': ')', '[': ']', '{': '}' };
 const RAISED: Readonly<Record<string, string>> = { '²': '2', '³': '3', '⁴': '4' };
-const LOWERED: Readonly<Record<string, string>> = { '₁': '1', '₀': '0', '₂': '2' };
+const LOWERED: Readonly<Record<string, string>> = Object.fromEntries(
+  [...'₀₁₂₃₄₅₆₇₈₉'].map((digit, i) => [digit, String(i)]),
+);
 const TOKEN = /\s+|"[^"]*"|\d{1,3}(?:,\d{3})+(?:\.\d+)?|\d+(?:\.\d+)?(?:e[−-]?\d+)?|[A-Za-zÀ-ɏͰ-Ͽ]+′*|./gu;
 
 /**

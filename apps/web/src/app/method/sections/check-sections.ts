@@ -21,7 +21,6 @@ const AT_TRAPS: readonly Check[] = [
     code: 'capacity',
     summary:
       'What the trap model passes at that differential, against the sizing factor times the load of the case. Between the model’s points capacity is linear in the root of the differential, below the first it falls with the root to nothing, above the last it stays.',
-    equations: ['"capacity"(Δp) ≥ "sizing factor" · "load"'],
     range: 'Traps with a model that has capacities; never also on the peak.',
     limits: [
       'Published capacities are for cold or for boiling condensate as the maker says; the table is taken as given.',
@@ -58,13 +57,16 @@ const AT_TRAPS: readonly Check[] = [
     code: 'stall',
     summary:
       'The share of load at which the steam space of a modulated exchanger falls to the back pressure. Below it nothing drives the condensate out: the exchanger floods, hammers and corrodes.',
-    equations: ['φ = (T_b − T_2)/(T_s − T_2)', 'φ = LMTD(T_b)/LMTD(T_s)'],
+    equations: ['φ_stall = (T_b − T_2)/(T_s − T_2)', 'φ_stall = LMTD(T_b)/LMTD(T_s)'],
     symbols: [['T_b', 'boiling temperature at the back pressure']],
     range:
       'Traps of modulating service; the first is for varying inlet, the second for varying flow. 0 where T_b is not above T_2.',
-    limits: ['Constant coefficient of heat transfer; the back pressure is that of the case.'],
+    limits: [
+      'Constant coefficient of heat transfer, no subcooling in the exchanger.',
+      'The back pressure is that of the case; it does not fall along the curve with this trap’s load.',
+    ],
     sources: ['As for the steam space behind a control valve, above'],
-    page: 'operating-cases',
+    page: 'stall',
   },
 ];
 

@@ -41,7 +41,7 @@ export const FLUID_SECTIONS: readonly MethodSection[] = [
     title: 'Flash share',
     summary:
       'How much of the flow is steam at a place: what the enthalpy has above boiling liquid at the local pressure. It is taken to flash at once and without loss.',
-    equations: ['x = (h − h_l(p)) / (h_g(p) − h_l(p))'],
+    equations: ['x = (h − h_l(p))/(h_g(p) − h_l(p))'],
     range: 'x at or below 0 is liquid below boiling, above 1 superheated steam; both by their own properties.',
     limits: [
       'Flash in a short pipe lags behind equilibrium, so a little less steam is there than this says.',

@@ -84,14 +84,13 @@ export const FRICTION_SECTIONS: readonly MethodSection[] = [
     title: 'Flash vapour',
     summary:
       'The flash steam has the bore to itself; the liquid drains under it by the pitch of the line and needs pressure only for what the pitch does not give. It is the handbook’s basis of dry pitched returns.',
-    equations: [
-      'flash = (f_g/D + K/L) (x G)²/(2 ρ_g)',
-      'friction = w L(m) + (1 − w) max(0, L((1 − x) m) − ρ_l g i)',
-      `w = (1 − x/${printed(DRAINING_QUALITY)})²`,
-    ],
+    equations: ['flash = (f_g/D + K/L) (x G)²/(2 ρ_g)', 'friction = w L(m) + (1 − w) max(0, L((1 − x) m) − ρ_l g i)'],
     symbols: [
       ['L(m)', 'gradient of m as saturated liquid alone, fittings included'],
-      ['w', `share that still runs full, for 0 < x < ${printed(DRAINING_QUALITY)}; above that 0`],
+      [
+        'w',
+        `share that still runs full: (1 − x/${printed(DRAINING_QUALITY)})² for 0 < x < ${printed(DRAINING_QUALITY)}, above that 0`,
+      ],
       ['i', `fall per length, at least 1:${printed(1 / LEAST_PITCH)} in level and falling runs, 0 in rises`],
     ],
     range: 'Level and falling lines that stay stratified.',

@@ -20,8 +20,8 @@ export const LIFT_SECTIONS: readonly MethodSection[] = [
     id: 'staticLift-liquidFull',
     title: 'Liquid-full risers',
     summary:
-      'A rise carries saturated liquid at the local pressure, or the liquid’s own density where it is subcooled.',
-    equations: ['"static" = ρ_l g · "slope"'],
+      'Each metre of rise carries saturated liquid at the local pressure, or the liquid at its own density where it is subcooled:',
+    equations: ['ρ_l g'],
     range: 'Risers that fill: pumped lines, overloaded returns, low flow under high back pressure.',
     limits: ['In a riser with flash steam that flows freely it overstates the lift.'],
     sources: ['Hydrostatics; head of water by temperature as in any steam table'],
@@ -32,8 +32,8 @@ export const LIFT_SECTIONS: readonly MethodSection[] = [
   {
     id: 'staticLift-twoPhase',
     title: 'Two-phase risers',
-    summary: 'A rise carries the mixture: as much liquid as the void fraction leaves in the bore.',
-    equations: ['"static" = [α ρ_g + (1 − α) ρ_l] g · "slope"'],
+    summary: 'Each metre of rise carries the mixture, with as much liquid as the void fraction α leaves in the bore:',
+    equations: ['(α ρ_g + (1 − α) ρ_l) g'],
     range: 'Rises with flash steam that flows steadily.',
     limits: [
       'A riser that slugs is heavier for moments than any steady figure.',
@@ -49,7 +49,7 @@ export const LIFT_SECTIONS: readonly MethodSection[] = [
     title: 'Falls',
     summary:
       'A fall is not credited unless the network says so, and then never with more than the liquid weighs; not at all where the line is taken as stratified, since its slope is already in the level.',
-    equations: ['−"credit" · w · min("basis", ρ_l g) · "slope"'],
+    equations: ['−"dropCredit" × w × min("basis", ρ_l g) × "slope"'],
     symbols: [['w', 'share of the flow that fills the bore']],
     range: 'Falls that run full give their head back; draining ones do not.',
     limits: ['The program does not know which falls run full: the share is the engineer’s judgement.'],
@@ -61,7 +61,6 @@ export const LIFT_SECTIONS: readonly MethodSection[] = [
     id: 'hand-check',
     title: 'Hand check',
     summary: `What an engineer writes on the back of a drawing: the receiver and half a psi for each foot of every rise on the way, falls not credited. It stands beside every result, whatever the method.`,
-    equations: ['p = p_"receiver" + 0.5 "psi/ft" · Σ "rise"'],
     range: 'Every way.',
     limits: ['It leaves friction and flash steam out; the ledger says by how much.'],
     sources: ['Common practice'],

@@ -9,7 +9,7 @@ export const NETWORK_SECTIONS: readonly MethodSection[] = [
     title: 'Flow and energy',
     summary:
       'Steady state. Flows add up at every node and mix by their enthalpy. A trap gives liquid at the boiling temperature of its inlet, less its subcooling; a pumped inlet liquid at its temperature; a flash vessel passes on its liquid at the pressure it is held at.',
-    equations: ['m = Σ m_i', 'h = (Σ m_i h_i)/m'],
+    equations: ['m = Σ m_i', 'h = Σ m_i h_i / m'],
     range: 'Networks of traps, junctions, receivers, flash vessels and pumped inlets.',
     limits: [
       'Steady flow: no filling, no draining, no water hammer. A batch that starts is seen only through its case.',
