@@ -24,6 +24,11 @@ test('no axe findings on any page, in both themes', async ({ page }) => {
     empty,
     `${network}/lists`,
     `${network}/ledger?element=TR5`,
+    `${network}/cases?case=rt5open`,
+    `${network}/cases?show=compare`,
+    `${network}/drawing?case=worst&element=TR5`,
+    `${network}/lists?case=worst`,
+    empty.replace('/drawing', '/cases'),
     '/nowhere',
   ];
   for (const path of pages) {
@@ -38,7 +43,14 @@ test('no page is wider than a phone', async ({ page }) => {
   const network = await demoNetworkPath(page);
   for (const width of WIDTHS) {
     await page.setViewportSize({ width, height: 844 });
-    for (const path of ['/sites', `${network}/drawing`, `${network}/lists`, `${network}/ledger?element=TR5`]) {
+    for (const path of [
+      '/sites',
+      `${network}/drawing`,
+      `${network}/lists`,
+      `${network}/ledger?element=TR5`,
+      `${network}/cases?case=rt5open`,
+      `${network}/cases?show=compare`,
+    ]) {
       await page.goto(path);
       await page.waitForLoadState('networkidle');
       const overflow = await page.evaluate(() => document.documentElement.scrollWidth - innerWidth);

@@ -89,6 +89,9 @@ function screens({ siteId, networkId, elements }, empty) {
     { name: 'drawing-empty', path: `/sites/${siteId}/networks/${empty}/drawing` },
     { name: 'lists', path: `${network}/lists`, solved: true },
     { name: 'ledger', path: `${network}/ledger?element=${elements.trap}`, solved: true },
+    { name: 'cases', path: `${network}/cases?case=rt5open`, solved: true },
+    { name: 'cases-compare', path: `${network}/cases?show=compare`, solved: true },
+    { name: 'drawing-worst', path: `${network}/drawing?case=worst&element=${elements.trap}`, solved: true },
     { name: 'not-found', path: '/nowhere' },
   ];
 }

@@ -1,7 +1,7 @@
-import type { CaseOutcome, TrapResult } from '@riseback/contracts';
+import type { CaseOutcome, Verdict } from '@riseback/contracts';
 import { inOrder, type NetworkDocument, type OperatingCase } from '@riseback/network';
 import { type DisplayUnits, formatQuantity } from '@riseback/units';
-import { badness, countVerdicts, type VerdictCounts, worstVerdict } from '../results/verdict';
+import { badness, countVerdicts, trapVerdicts, type VerdictCounts } from '../results/verdict';
 import type { WorstOfCases } from '../results/worst-of-cases';
 import { nameOf } from '../shared/element-words';
 import type { Status } from '../shared/status-mark/status-mark';
@@ -48,38 +48,29 @@ export function compareCases(
   worst: WorstOfCases | null,
   units: DisplayUnits,
 ): Comparison {
-  const results = new Map(cases.map(({ id }) => [id, trapResults(outcomes.get(id))]));
+  const judged = new Map(cases.map(({ id }) => [id, judgedTraps(outcomes.get(id))]));
   const cellOf = (trapId: string, { id, name }: OperatingCase): ComparedCell => {
-    const trap = results.get(id)?.get(trapId);
+    const trap = judged.get(id)?.get(trapId);
     return {
       caseId: id,
       caseName: name,
-      status: statusOf(trap),
-      backPressure: trap === undefined ? '' : formatQuantity(trap.backPressurePa, 'pressure', units),
+      status: trap?.verdict ?? 'none',
+      backPressure: trap === undefined ? '' : formatQuantity(trap.pressurePa, 'pressure', units),
       changes: caseChangeWords(document, id, trapId, units).join(', '),
     };
+  };
+  const worstOf = (trapId: string): ComparedTrap['worst'] => {
+    const worstCase = cases.find(({ id }) => id === worst?.caseOf.get(trapId));
+    const trap = worstCase === undefined ? undefined : judged.get(worstCase.id)?.get(trapId);
+    if (worstCase === undefined || trap === undefined) return null;
+    return { ...cellOf(trapId, worstCase), badness: badness(trap.verdict), pressurePa: trap.pressurePa };
   };
   return {
     heads: cases.map((operatingCase) => headOf(operatingCase, outcomes.get(operatingCase.id), units)),
     traps: inOrder(document.nodes).flatMap(([id, { value: node }]) => {
       if (node.kind !== 'trap') return [];
-      const worstCase = cases.find((operatingCase) => operatingCase.id === worst?.caseOf.get(id));
-      const trap = worstCase === undefined ? undefined : results.get(worstCase.id)?.get(id);
-      return [
-        {
-          id,
-          tag: nameOf(node),
-          cells: cases.map((operatingCase) => cellOf(id, operatingCase)),
-          worst:
-            worstCase === undefined || trap === undefined
-              ? null
-              : {
-                  ...cellOf(id, worstCase),
-                  badness: badness(worstVerdict(trap.checks)),
-                  pressurePa: trap.backPressurePa,
-                },
-        },
-      ];
+      const cells = cases.map((operatingCase) => cellOf(id, operatingCase));
+      return [{ id, tag: nameOf(node), cells, worst: worstOf(id) }];
     }),
   };
 }
@@ -120,11 +111,18 @@ export function refusalOf(outcome: CaseOutcome | undefined): string {
   return outcome.result.problem?.detail ?? 'The network has no solution in this case.';
 }
 
-function trapResults(outcome: CaseOutcome | undefined): ReadonlyMap<string, TrapResult> {
-  const traps = outcome?.status === 'solved' && outcome.result.converged ? outcome.result.traps : [];
-  return new Map(traps.map((trap) => [trap.id, trap]));
+interface JudgedTrap {
+  readonly verdict: Verdict | null;
+  readonly pressurePa: number;
 }
 
-function statusOf(trap: TrapResult | undefined): Status {
-  return trap === undefined ? 'none' : (worstVerdict(trap.checks) ?? 'none');
+function judgedTraps(outcome: CaseOutcome | undefined): ReadonlyMap<string, JudgedTrap> {
+  if (outcome?.status !== 'solved' || !outcome.result.converged) return new Map();
+  const verdicts = trapVerdicts(outcome.result);
+  return new Map(
+    outcome.result.traps.map(({ id, backPressurePa }) => [
+      id,
+      { verdict: verdicts.get(id) ?? null, pressurePa: backPressurePa },
+    ]),
+  );
 }

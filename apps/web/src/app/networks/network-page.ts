@@ -56,6 +56,11 @@ export class NetworkPage {
     if (this.store.saveState() === 'notSaved') this.store.retrySave();
   }
 
+  /** On a phone the row of views is wider than the screen. */
+  protected bringIntoView(active: boolean, link: HTMLElement): void {
+    if (active) link.scrollIntoView({ block: 'nearest', inline: 'nearest' });
+  }
+
   /** The browser asks before a tab with unsaved edits is closed. */
   protected warnBeforeLoss(event: BeforeUnloadEvent): void {
     if (this.store.saveState() !== 'saved') event.preventDefault();

@@ -9,6 +9,9 @@ import { StatusMark } from '../shared/status-mark/status-mark';
 import { FRICTION_WORDS, STATIC_LIFT_WORDS } from './method-words';
 import { NetworkStore } from './network-store';
 
+/** More cases than these do not fit beside each other even on a wide screen, and fold into one menu. */
+const MOST_SIDE_BY_SIDE = 6;
+
 interface CaseOption {
   readonly id: string;
   readonly name: string;
@@ -45,6 +48,7 @@ export class TitleBlock {
       current: option.id === this.store.caseId(),
     }));
   });
+  protected readonly manyCases = computed(() => this.store.cases().length > MOST_SIDE_BY_SIDE);
   protected readonly trapCount = computed(
     () => [...(this.store.document()?.nodes.values() ?? [])].filter(({ value }) => value.kind === 'trap').length,
   );

@@ -21,9 +21,22 @@ export interface VerdictCounts {
   readonly watch: number;
 }
 
+/** Each trap's verdict: the worst of its checks and of what the solver found about it. Null where nothing was judged. */
+export function trapVerdicts({
+  traps,
+  warnings,
+}: Pick<SolveResult, 'traps' | 'warnings'>): ReadonlyMap<string, Verdict | null> {
+  const verdicts = new Map(traps.map(({ id, checks }) => [id, worstVerdict(checks)]));
+  for (const { element, verdict } of warnings) {
+    const before = verdicts.get(element);
+    if (before !== undefined && badness(verdict) > badness(before)) verdicts.set(element, verdict);
+  }
+  return verdicts;
+}
+
 /** How many traps fail and how many are to be watched. */
-export function countVerdicts(result: SolveResult): VerdictCounts {
-  const worst = result.traps.map(({ checks }) => worstVerdict(checks));
+export function countVerdicts(result: Pick<SolveResult, 'traps' | 'warnings'>): VerdictCounts {
+  const worst = [...trapVerdicts(result).values()];
   return {
     traps: worst.length,
     fail: worst.filter((verdict) => verdict === 'fail').length,

@@ -91,6 +91,16 @@ describe('worstOfCases', () => {
     ).toEqual({ T1: ['design', 2e5] });
   });
 
+  it('counts what the solver found about a trap with its checks', () => {
+    const outcomes = [
+      solved('design', { traps: [trap('T1', 3e5, 'pass')] }),
+      solved('open', { traps: [trap('T1', 2e5, 'pass')], warnings: [warning('T1', 'watch', 'blowThrough')] }),
+    ];
+    expect(standing(...outcomes)).toEqual({ T1: ['open', 2e5] });
+    const worst = worstOfCases(outcomes);
+    expect(worst === null ? null : countVerdicts(worst.result)).toEqual({ traps: 1, fail: 0, watch: 1 });
+  });
+
   it('counts each trap once, by its worst', () => {
     const worst = worstOfCases([
       solved('a', { traps: [trap('T1', 2e5, 'fail'), trap('T2', 2e5, 'pass'), trap('T3', 2e5, 'pass')] }),

@@ -1,5 +1,5 @@
 import type { CaseOutcome, NodeResult, PipeResult, SolveResult, SolveWarning, TrapResult } from '@riseback/contracts';
-import { badness, worstVerdict } from './verdict';
+import { badness, trapVerdicts, worstVerdict } from './verdict';
 
 /** What the worst of all cases is called where a case's id stands, in addresses as in results. */
 export const WORST_OF_ALL = 'worst';
@@ -26,7 +26,7 @@ interface Candidate<T> {
 
 /**
  * Joins the cases into the worst per element: the worst verdict counts first, then the highest pressure, then the order of the cases.
- * A trap goes by its checks and back pressure, and its node with it; other nodes and the pipes by what the solver found about them and
+ * A trap goes by its verdict and back pressure, and its node with it; other nodes and the pipes by what the solver found about them and
  * by their pressure (a pipe's at its higher end).
  * @returns null while no case has a result
  */
@@ -42,15 +42,11 @@ export function worstOfCases(outcomes: readonly CaseOutcome[]): WorstOfCases | n
   for (const result of results) {
     const warned = warningsByElement(result.warnings);
     const found = (id: string) => badness(worstVerdict(warned.get(id) ?? []));
+    const verdicts = trapVerdicts(result);
     const caseId = result.case;
     for (const value of result.traps) {
-      const candidate = {
-        caseId,
-        value,
-        badness: badness(worstVerdict(value.checks)),
-        pressurePa: value.backPressurePa,
-      };
-      keepWorse(traps, candidate);
+      const { id, backPressurePa: pressurePa } = value;
+      keepWorse(traps, { caseId, value, badness: badness(verdicts.get(id) ?? null), pressurePa });
     }
     for (const value of result.nodes) {
       keepWorse(nodes, { caseId, value, badness: found(value.id), pressurePa: value.pressurePa });

@@ -66,7 +66,7 @@ export function caseColumn<E extends Drawn>(): Column<E> {
     key: 'case',
     title: 'Case',
     group: 'result',
-    widthPx: 128,
+    widthPx: 150,
     wanted: ({ caseNameOf }) => caseNameOf !== undefined,
     value: ({ id }, { caseNameOf }) => caseNameOf?.(id) ?? '',
   };

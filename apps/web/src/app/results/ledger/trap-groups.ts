@@ -3,7 +3,7 @@ import { inOrder, type NetworkDocument, type NetworkNode, type Trap } from '@ris
 import { type DisplayUnits, formatQuantity } from '@riseback/units';
 import type { Status } from '../../shared/status-mark/status-mark';
 import { type BackPressureLimit, backPressureLimit } from '../back-pressure-limit';
-import { worstVerdict } from '../verdict';
+import { trapVerdicts } from '../verdict';
 import { endWords } from './element-text';
 import { nameOf } from '../../shared/element-words';
 
@@ -40,11 +40,12 @@ const BADNESS: Readonly<Record<Status, number>> = { fail: 0, watch: 1, pass: 2, 
 
 export function groupTraps(document: NetworkDocument, result: SolveResult, units: DisplayUnits): GroupedTraps {
   const results = new Map(result.traps.map((trap) => [trap.id, trap]));
+  const verdicts = trapVerdicts(result);
   const traps = inOrder(document.nodes).flatMap(([, { value }]) => (value.kind === 'trap' ? [value] : []));
   const items = traps
     .flatMap((trap) => {
       const found = results.get(trap.id);
-      return found === undefined ? [] : [trapItem(document, trap, found, units)];
+      return found === undefined ? [] : [trapItem(document, trap, found, verdicts.get(trap.id) ?? 'none', units)];
     })
     .sort(byBadness);
   const byEnd = new Map<string, TrapItem[]>();
@@ -87,7 +88,13 @@ export function trapOfElement(document: NetworkDocument, grouped: GroupedTraps, 
   );
 }
 
-function trapItem(document: NetworkDocument, trap: Trap, result: TrapResult, units: DisplayUnits): TrapItem {
+function trapItem(
+  document: NetworkDocument,
+  trap: Trap,
+  result: TrapResult,
+  status: Status,
+  units: DisplayUnits,
+): TrapItem {
   const model = trap.trapModel === undefined ? undefined : document.trapModels.get(trap.trapModel)?.value;
   return {
     id: trap.id,
@@ -96,7 +103,7 @@ function trapItem(document: NetworkDocument, trap: Trap, result: TrapResult, uni
     result,
     // as it stands in this case: factors, overrides and modulation included
     inletPa: result.backPressurePa + result.differentialPa,
-    status: worstVerdict(result.checks) ?? 'none',
+    status,
     backPressure: formatQuantity(result.backPressurePa, 'pressure', units),
     limit: backPressureLimit(result, trap, model, units),
     end: endOfWalk(document, result),
