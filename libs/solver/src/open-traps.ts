@@ -1,5 +1,6 @@
 import { CHOKED_PRESSURE_RATIO, napierOrificeFlowKgS, orificeSteamFlowKgS } from '@riseback/hydraulics';
 import { findRootBracketed, NoConvergenceError } from '@riseback/numerics';
+import { saturationState } from '@riseback/steam';
 import { atElement, ElementFailure } from './element-failure';
 import { amount, findingWords, say } from './finding-text';
 import { networkState, type NetworkState, type PreparedNetwork } from './network-state';
@@ -44,8 +45,15 @@ export function stateWithOpenTraps(
   let state = attempt();
   for (let round = 1; !open.every((one) => isSettled(one)); round++) {
     if (round > MAXIMUM_ROUNDS) throw unsettled(open);
-    for (const one of open) if (!isSettled(one)) settle(one);
-    state = attempt();
+    let moved = 0;
+    for (const one of open) {
+      const before = steamAt(one.index);
+      if (!isSettled(one)) settle(one);
+      moved = Math.max(moved, Math.abs(steamAt(one.index) - before) / one.chokedKgS);
+      state = attempt();
+    }
+    // close to the inlet's pressure the steam turns on a hair: there the march's own tolerance is felt in the residual
+    if (moved <= 10 * STEAM_TOLERANCE) break;
   }
   // the last attempt may have had no solution, for a reason of its own: told with its place
   return { nodes, state: state ?? networkState(prepared, nodes, march) };
@@ -109,11 +117,17 @@ export function stateWithOpenTraps(
   }
 }
 
+/** @throws ElementFailure where an inlet lies outside the steam properties */
 function openTraps(nodes: readonly OperatingNode[]): OpenTrap[] {
   return nodes.flatMap((trap, index) => {
     if (trap.kind !== 'trap' || trap.openOrificeM === undefined) return [];
-    const orificeM = trap.openOrificeM;
-    return [{ index, trap, orificeM, chokedKgS: napierOrificeFlowKgS(trap.inletPressurePa, orificeM) }];
+    const { openOrificeM: orificeM, inletPressurePa, node } = trap;
+    try {
+      saturationState(inletPressurePa);
+    } catch (error) {
+      throw atElement('node', node, index, error);
+    }
+    return [{ index, trap, orificeM, chokedKgS: napierOrificeFlowKgS(inletPressurePa, orificeM) }];
   });
 }
 
