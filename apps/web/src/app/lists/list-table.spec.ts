@@ -151,3 +151,12 @@ describe('the order of rows', () => {
     expect(arrangeRows(table('traps'), 'hall float', null)).toEqual([]);
   });
 });
+
+it('names the case of each result only while elements show their own worst', () => {
+  const titles = (change: object) => {
+    const traps = ELEMENT_LISTS.find(({ id }) => id === 'traps');
+    return traps?.table({ ...trialContext(document), ...change }).columns.map(({ title }) => title);
+  };
+  expect(titles({})).not.toContain('Case');
+  expect(titles({ caseNameOf: () => 'Design' })).toContain('Case');
+});

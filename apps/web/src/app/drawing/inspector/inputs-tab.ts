@@ -1,5 +1,7 @@
 import { ChangeDetectionStrategy, Component, computed, inject, input, linkedSignal, viewChild } from '@angular/core';
+import { RouterLink } from '@angular/router';
 import type { Fitting, NetworkNode, PipeRun, RoutePiece, Trap } from '@riseback/network';
+import { caseChangeWords } from '../../cases/case-changes';
 import { NetworkStore } from '../../networks/network-store';
 import { DrawingCommands } from '../drawing-commands';
 import { isPipe, nameOf } from '../../shared/element-words';
@@ -13,7 +15,7 @@ import { ServiceEditor } from './service-editor';
 /** Every property of one element. Each accepted field is one edit and one step of undo; a refusal stays at its field. */
 @Component({
   selector: 'app-inputs-tab',
-  imports: [FittingsEditor, PipeSizeField, PropertyFields, RouteEditor, ServiceEditor],
+  imports: [FittingsEditor, PipeSizeField, PropertyFields, RouteEditor, RouterLink, ServiceEditor],
   changeDetection: ChangeDetectionStrategy.OnPush,
   templateUrl: './inputs-tab.html',
   styleUrl: './inspector-tabs.scss',
@@ -59,6 +61,14 @@ export class InputsTab {
       return node === undefined ? id : nameOf(node);
     };
     return `From ${name(pipe.from)} to ${name(pipe.to)}`;
+  });
+  /** What the case whose result is shown sets at this element in place of what stands here; '' when nothing. */
+  protected readonly inCase = computed(() => {
+    const document = this.store.document();
+    const { id } = this.element();
+    const caseId = this.store.caseOf(id);
+    const changes = document === null ? [] : caseChangeWords(document, caseId, id, this.store.units());
+    return changes.length === 0 ? null : { caseId, name: this.store.nameOfCase(caseId), changes: changes.join(', ') };
   });
   /** Forgotten when another element is looked at. */
   protected readonly refusal = linkedSignal<string, { key: string; reason: string } | null>({

@@ -49,6 +49,20 @@ describe('FindingsList', () => {
     expect(element.querySelector('.count')?.textContent).toBe('1 fail, 0 watch, 1 note');
   });
 
+  it('says in which cases each is so, where the findings of several stand together', async () => {
+    const [first, second] = FINDINGS;
+    const of = (...cases: string[]) => ({ ...first, id: cases.join('+'), cases });
+    const caseName = (id: string) => ({ a: 'Design', b: 'Start-up', c: 'Turndown' })[id] ?? id;
+    await shown({ findings: [of('a', 'b', 'c'), of('a', 'c'), second], caseName, caseCount: 3 });
+    expect([...element.querySelectorAll('tbody .case')].map((cell) => cell.textContent)).toEqual([
+      'All cases',
+      'Design, Turndown',
+      'Any',
+    ]);
+    await shown({ findings: [], caseName, caseCount: 3 });
+    expect(element.textContent).toContain('No findings in any case');
+  });
+
   it('leads to the element', async () => {
     const fixture = await shown({ findings: FINDINGS, currentId: 'T1' });
     const opened: string[] = [];
