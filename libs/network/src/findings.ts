@@ -1,19 +1,18 @@
-import { fromFile } from './document-file';
 import { jsonPointer } from './mistakes';
 import type { NetworkDocument } from './network-document';
-import type { NetworkFile } from './network-file';
+import type { NetworkFile, NetworkNode } from './network-file';
 import { nodeFindings } from './node-findings';
 import { KIND_NAMES } from './override-keys';
 import { gaugeFindings, pipeFindings } from './pipe-findings';
 import {
-  GROUND,
+  elementsOf,
+  groundReached,
   hasFixedPressure,
   isSource,
-  joinEnds,
-  JoinedSets,
   nameOf,
-  pipesAtNodes,
+  PipesAtNodes,
   pipesWithEnds,
+  type DrawnElements,
   type PipeEnds,
   type TopologyFinding,
 } from './topology';
@@ -32,21 +31,13 @@ export interface FileFinding extends TopologyFinding {
  * network; what leaves a flash vessel starts the next part.
  */
 export function findings(document: NetworkDocument): TopologyFinding[] {
-  const pipes = pipesWithEnds(document);
-  const atNodes = pipesAtNodes(pipes);
-  const nodes = Array.from(document.nodes.values(), ({ value }) => value);
-  return [
-    ...wholeFindings(document),
-    ...nodes.flatMap((node) => nodeFindings(node, atNodes)),
-    ...cutOffNodes(document, pipes),
-    ...pipes.flatMap(pipeFindings),
-    ...vesselLoops(pipes),
-    ...gaugeFindings(document),
-  ];
+  return elementFindings(elementsOf(document));
 }
 
 /** {@link findings} of a file, each with its pointer into it. */
 export function fileFindings(file: NetworkFile): FileFinding[] {
+  const found = elementFindings(file);
+  if (found.length === 0) return [];
   const indexes = {
     nodes: indexesOf(file.nodes),
     pipes: indexesOf(file.pipes),
@@ -54,7 +45,7 @@ export function fileFindings(file: NetworkFile): FileFinding[] {
     cases: indexesOf(file.cases),
     gauges: indexesOf(file.gauges),
   };
-  return findings(fromFile(file)).map((finding) => {
+  return found.map((finding) => {
     const { element, key } = finding;
     // no finding is about an override; the whole network's are about its nodes
     if (element === null || element.in === 'overrides') return { ...finding, pointer: '/nodes' };
@@ -63,8 +54,21 @@ export function fileFindings(file: NetworkFile): FileFinding[] {
   });
 }
 
-function wholeFindings(document: NetworkDocument): TopologyFinding[] {
-  const nodes = Array.from(document.nodes.values(), ({ value }) => value);
+function elementFindings(elements: DrawnElements): TopologyFinding[] {
+  const { nodes } = elements;
+  const pipes = pipesWithEnds(elements);
+  const at = new PipesAtNodes(nodes.length, pipes);
+  return [
+    ...wholeFindings(nodes),
+    ...nodes.flatMap((node, index) => nodeFindings(node, index, at)),
+    ...cutOffNodes(nodes, pipes),
+    ...pipes.flatMap(pipeFindings),
+    ...vesselLoops(nodes.length, pipes),
+    ...gaugeFindings(elements),
+  ];
+}
+
+function wholeFindings(nodes: readonly NetworkNode[]): TopologyFinding[] {
   const found: TopologyFinding[] = [];
   if (!nodes.some(hasFixedPressure)) {
     found.push({
@@ -89,14 +93,12 @@ function wholeFindings(document: NetworkDocument): TopologyFinding[] {
   return found;
 }
 
-function cutOffNodes(document: NetworkDocument, pipes: readonly PipeEnds[]): TopologyFinding[] {
-  const nodes = Array.from(document.nodes.values(), ({ value }) => value);
+function cutOffNodes(nodes: readonly NetworkNode[], pipes: readonly PipeEnds[]): TopologyFinding[] {
   // without any receiver everything is cut off, which one finding says better than many
   if (!nodes.some(hasFixedPressure)) return [];
-  const sets = new JoinedSets();
-  for (const ends of pipes) joinEnds(sets, ends);
+  const reachesGround = groundReached(nodes.length, pipes);
   return nodes
-    .filter((node) => !hasFixedPressure(node) && !sets.areJoined(node.id, GROUND))
+    .filter((node, index) => !hasFixedPressure(node) && !reachesGround(index))
     .map((node) => {
       const kind = KIND_NAMES[node.kind];
       return {
@@ -110,8 +112,8 @@ function cutOffNodes(document: NetworkDocument, pipes: readonly PipeEnds[]): Top
     });
 }
 
-function vesselLoops(pipes: readonly PipeEnds[]): TopologyFinding[] {
-  return vesselsInCircles(pipes).map((vessel) => ({
+function vesselLoops(nodeCount: number, pipes: readonly PipeEnds[]): TopologyFinding[] {
+  return vesselsInCircles(nodeCount, pipes).map((vessel) => ({
     code: 'loop',
     severity: 'error',
     element: { in: 'nodes', id: vessel.id },

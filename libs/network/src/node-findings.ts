@@ -3,17 +3,19 @@ import type { FlashVessel, NetworkNode, PipeRun, Receiver } from './network-file
 import { nameOf, type PipesAtNodes, type TopologyFinding } from './topology';
 
 /** How many pipes may leave and enter a node, by its kind. A source without any pipe is cut off, which says enough. */
-export function nodeFindings(node: NetworkNode, pipes: PipesAtNodes): TopologyFinding[] {
-  const leaving = pipes.leaving.get(node.id) ?? [];
-  const entering = pipes.entering.get(node.id) ?? [];
+export function nodeFindings(node: NetworkNode, index: number, at: PipesAtNodes): TopologyFinding[] {
+  const leaving = at.leavingCount(index);
   switch (node.kind) {
     case 'trap':
-    case 'pumpedInlet':
-      return leaving.length + entering.length === 0 ? [] : sourceFindings(node, leaving, entering);
+    case 'pumpedInlet': {
+      const entering = at.enteringCount(index);
+      if (entering === 0 && leaving <= 1) return [];
+      return sourceFindings(node, at.leaving(index), at.entering(index));
+    }
     case 'receiver':
-      return leaving.length === 0 ? [] : [receiverPipes(node, leaving)];
+      return leaving === 0 ? [] : [receiverPipes(node, at.leaving(index))];
     case 'flashVessel':
-      return leaving.length === 1 ? [] : [vesselPipes(node, leaving)];
+      return leaving === 1 ? [] : [vesselPipes(node, at.leaving(index))];
     case 'junction':
       return [];
   }
@@ -24,7 +26,6 @@ function sourceFindings(
   leaving: readonly PipeRun[],
   entering: readonly PipeRun[],
 ): TopologyFinding[] {
-  if (leaving.length === 1 && entering.length === 0) return [];
   const name = `${capital(KIND_NAMES[node.kind])} ${nameOf(node)}`;
   const backwards = entering.length > 0;
   return [

@@ -1,6 +1,5 @@
-import type { NetworkDocument } from './network-document';
 import type { PipeRun } from './network-file';
-import { nameOf, type FindingText, type PipeEnds, type TopologyFinding } from './topology';
+import { nameOf, type DrawnElements, type FindingText, type PipeEnds, type TopologyFinding } from './topology';
 
 /** Lengths and rises agree within a millimetre or a thousandth: as good as a tape measure and a rounded foot. */
 export const ROUTE_TOLERANCE = { absoluteM: 1e-3, relative: 1e-3 } as const;
@@ -111,10 +110,13 @@ function routeFindings(pipe: PipeRun, riseM: number): TopologyFinding[] {
 }
 
 /** A gauge that stands further along than its pipe is long. */
-export function gaugeFindings(document: NetworkDocument): TopologyFinding[] {
+export function gaugeFindings({ gauges, pipes }: Pick<DrawnElements, 'gauges' | 'pipes'>): TopologyFinding[] {
+  if (gauges.length === 0) return [];
   const found: TopologyFinding[] = [];
-  for (const [id, { value: gauge }] of document.gauges) {
-    const pipe = gauge.pipe === undefined ? undefined : document.pipes.get(gauge.pipe)?.value;
+  const pipeOf = new Map(pipes.map((pipe) => [pipe.id, pipe]));
+  for (const gauge of gauges) {
+    const { id } = gauge;
+    const pipe = gauge.pipe === undefined ? undefined : pipeOf.get(gauge.pipe);
     if (pipe === undefined || gauge.distanceM === undefined) continue;
     if (gauge.distanceM <= pipe.lengthM + tolerance(pipe.lengthM)) continue;
     found.push({

@@ -1,15 +1,13 @@
 import type { NetworkDocument } from './network-document';
 import { pipeFindings } from './pipe-findings';
 import {
-  GROUND,
+  elementsOf,
+  groundReached,
   hasFixedPressure,
   isSource,
-  joinEnds,
-  JoinedSets,
-  pipesAtNodes,
+  PipesAtNodes,
   pipesWithEnds,
   type PipeEnds,
-  type PipesAtNodes,
 } from './topology';
 
 /** Ids of what a live solve can compute. */
@@ -24,22 +22,22 @@ export interface SolvablePart {
  * it starts or ends.
  */
 export function solvablePart(document: NetworkDocument): SolvablePart {
-  const all = pipesWithEnds(document);
-  const atNodes = pipesAtNodes(all);
-  const sound = all.filter((ends) => pipeFindings(ends).length === 0 && standsRight(ends, atNodes));
-  const sets = new JoinedSets();
-  for (const ends of sound) joinEnds(sets, ends);
+  const elements = elementsOf(document);
+  const all = pipesWithEnds(elements);
+  const at = new PipesAtNodes(elements.nodes.length, all);
+  const sound = all.filter((ends) => pipeFindings(ends).length === 0 && standsRight(ends, at));
+  const reachesGround = groundReached(elements.nodes.length, sound);
 
   const nodes = new Set<string>();
-  for (const [id, { value: node }] of document.nodes) {
-    if (hasFixedPressure(node) || sets.areJoined(id, GROUND)) nodes.add(id);
-  }
+  elements.nodes.forEach((node, index) => {
+    if (hasFixedPressure(node) || reachesGround(index)) nodes.add(node.id);
+  });
   const pipes = sound.filter(({ from, to }) => nodes.has(from.id) && nodes.has(to.id));
   return { nodes, pipes: new Set(pipes.map(({ pipe }) => pipe.id)) };
 }
 
-function standsRight({ pipe, from, to }: PipeEnds, atNodes: PipesAtNodes): boolean {
+function standsRight({ from, to, fromIndex }: PipeEnds, at: PipesAtNodes): boolean {
   if (from.kind === 'receiver' || isSource(to)) return false;
   const startsAlone = isSource(from) || from.kind === 'flashVessel';
-  return !startsAlone || (atNodes.leaving.get(pipe.from)?.length ?? 0) === 1;
+  return !startsAlone || at.leavingCount(fromIndex) === 1;
 }

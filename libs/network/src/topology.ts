@@ -1,5 +1,5 @@
 import type { CollectionName, NetworkDocument } from './network-document';
-import type { NetworkNode, PipeRun } from './network-file';
+import type { Gauge, NetworkNode, PipeRun } from './network-file';
 
 export type FindingCode =
   | 'noReceiver'
@@ -49,90 +49,144 @@ export function isSource(node: NetworkNode): boolean {
   return node.kind === 'trap' || node.kind === 'pumpedInlet';
 }
 
+/** What findings look at, be it of a document or of a file. */
+export interface DrawnElements {
+  readonly nodes: readonly NetworkNode[];
+  readonly pipes: readonly PipeRun[];
+  readonly gauges: readonly Gauge[];
+}
+
+export function elementsOf(document: NetworkDocument): DrawnElements {
+  const values = <T>(collection: ReadonlyMap<string, { readonly value: T }>): T[] =>
+    Array.from(collection.values(), ({ value }) => value);
+  return { nodes: values(document.nodes), pipes: values(document.pipes), gauges: values(document.gauges) };
+}
+
+/** A pipe with its two nodes, and their places in the list of nodes. */
 export interface PipeEnds {
   readonly pipe: PipeRun;
   readonly from: NetworkNode;
   readonly to: NetworkNode;
+  readonly fromIndex: number;
+  readonly toIndex: number;
 }
 
-/** The pipes with their two nodes, in the order of the document. */
-export function pipesWithEnds(document: NetworkDocument): PipeEnds[] {
+/** The pipes with their two nodes, in their order. */
+export function pipesWithEnds({ nodes, pipes }: Pick<DrawnElements, 'nodes' | 'pipes'>): PipeEnds[] {
+  const indexOf = new Map<string, number>();
+  nodes.forEach(({ id }, index) => indexOf.set(id, index));
   const ends: PipeEnds[] = [];
-  for (const { value: pipe } of document.pipes.values()) {
-    const from = document.nodes.get(pipe.from)?.value;
-    const to = document.nodes.get(pipe.to)?.value;
+  for (const pipe of pipes) {
+    const fromIndex = indexOf.get(pipe.from);
+    const toIndex = indexOf.get(pipe.to);
     // references hold in every document; a test may build one that breaks them
-    if (from !== undefined && to !== undefined) ends.push({ pipe, from, to });
+    if (fromIndex === undefined || toIndex === undefined) continue;
+    ends.push({
+      pipe,
+      from: nodes[fromIndex] as NetworkNode,
+      to: nodes[toIndex] as NetworkNode,
+      fromIndex,
+      toIndex,
+    });
   }
   return ends;
 }
 
-/** Pipes by the node that they leave and by the node that they enter; a pipe from a node to itself counts at neither. */
-export interface PipesAtNodes {
-  readonly leaving: ReadonlyMap<string, readonly PipeRun[]>;
-  readonly entering: ReadonlyMap<string, readonly PipeRun[]>;
-}
+/** How many pipes leave and enter each node, and which; a pipe from a node to itself counts at neither. */
+export class PipesAtNodes {
+  private readonly leavingCounts: Int32Array;
+  private readonly enteringCounts: Int32Array;
 
-export function pipesAtNodes(pipes: readonly PipeEnds[]): PipesAtNodes {
-  const leaving = new Map<string, PipeRun[]>();
-  const entering = new Map<string, PipeRun[]>();
-  for (const { pipe } of pipes) {
-    if (pipe.from === pipe.to) continue;
-    push(leaving, pipe.from, pipe);
-    push(entering, pipe.to, pipe);
+  constructor(
+    nodeCount: number,
+    private readonly pipes: readonly PipeEnds[],
+  ) {
+    this.leavingCounts = new Int32Array(nodeCount);
+    this.enteringCounts = new Int32Array(nodeCount);
+    for (const { fromIndex, toIndex } of pipes) {
+      if (fromIndex === toIndex) continue;
+      this.leavingCounts[fromIndex] = this.leavingCount(fromIndex) + 1;
+      this.enteringCounts[toIndex] = this.enteringCount(toIndex) + 1;
+    }
   }
-  return { leaving, entering };
+
+  leavingCount(index: number): number {
+    return this.leavingCounts[index] ?? 0;
+  }
+
+  enteringCount(index: number): number {
+    return this.enteringCounts[index] ?? 0;
+  }
+
+  leaving(index: number): readonly PipeRun[] {
+    return this.lists.leaving.get(index) ?? [];
+  }
+
+  entering(index: number): readonly PipeRun[] {
+    return this.lists.entering.get(index) ?? [];
+  }
+
+  private listed: { leaving: Map<number, PipeRun[]>; entering: Map<number, PipeRun[]> } | undefined;
+
+  /** Made when first asked for: a sound network needs the counts alone. */
+  private get lists(): { leaving: Map<number, PipeRun[]>; entering: Map<number, PipeRun[]> } {
+    if (this.listed !== undefined) return this.listed;
+    const [leaving, entering] = [new Map<number, PipeRun[]>(), new Map<number, PipeRun[]>()];
+    for (const { pipe, fromIndex, toIndex } of this.pipes) {
+      if (fromIndex === toIndex) continue;
+      push(leaving, fromIndex, pipe);
+      push(entering, toIndex, pipe);
+    }
+    return (this.listed = { leaving, entering });
+  }
 }
 
-function push<T>(lists: Map<string, T[]>, key: string, item: T): void {
+function push<K, T>(lists: Map<K, T[]>, key: K, item: T): void {
   const list = lists.get(key);
   if (list === undefined) lists.set(key, [item]);
   else list.push(item);
 }
 
-/** Sets of things that hang together, joined pair by pair (union-find with path halving; no recursion, so any size goes). */
+/** Sets of things that hang together, by index, joined pair by pair (union-find with path halving; no recursion, any size goes). */
 export class JoinedSets {
-  private readonly parents = new Map<string, string>();
+  private readonly parents: Int32Array;
 
-  /** @returns false when the two hung together before */
-  join(a: string, b: string): boolean {
-    const [rootA, rootB] = [this.rootOf(a), this.rootOf(b)];
-    if (rootA === rootB) return false;
-    this.parents.set(rootA, rootB);
-    return true;
+  constructor(count: number) {
+    this.parents = Int32Array.from({ length: count }, (_, index) => index);
   }
 
-  areJoined(a: string, b: string): boolean {
+  join(a: number, b: number): void {
+    this.parents[this.rootOf(a)] = this.rootOf(b);
+  }
+
+  areJoined(a: number, b: number): boolean {
     return this.rootOf(a) === this.rootOf(b);
   }
 
-  rootOf(item: string): string {
+  rootOf(item: number): number {
+    const { parents } = this;
     let at = item;
     for (;;) {
-      const parent = this.parents.get(at);
-      if (parent === undefined) return at;
-      const grandparent = this.parents.get(parent);
-      if (grandparent === undefined) return parent;
-      this.parents.set(at, grandparent);
+      const parent = parents[at] as number;
+      if (parent === at) return at;
+      const grandparent = parents[parent] as number;
+      parents[at] = grandparent;
       at = grandparent;
     }
   }
 }
 
-/** Stands for all nodes of fixed pressure as places where condensate ends. No element id holds a slash. */
-export const GROUND = '/ground';
-
 /**
- * The place that an end of a pipe joins. Fixed pressures cut the network: whatever enters one ends at the ground, and what leaves a
- * vessel starts there like a trap, joined to nothing else (undefined).
+ * What hangs together with a place where condensate ends. Fixed pressures cut the network: whatever enters one ends at the ground,
+ * and what leaves a vessel starts there like a trap, joined to nothing else.
+ * @returns by node: whether a fixed pressure is reached from it through these pipes
  */
-export function placeOf(node: NetworkNode, end: 'from' | 'to'): string | undefined {
-  if (!hasFixedPressure(node)) return node.id;
-  return node.kind === 'flashVessel' && end === 'from' ? undefined : GROUND;
-}
-
-/** Joins a pipe's ends. @returns false when they hung together before: the pipe gives a second way */
-export function joinEnds(sets: JoinedSets, { from, to }: PipeEnds): boolean {
-  const [start, end] = [placeOf(from, 'from'), placeOf(to, 'to')];
-  return start === undefined || end === undefined || sets.join(start, end);
+export function groundReached(nodeCount: number, pipes: readonly PipeEnds[]): (index: number) => boolean {
+  const ground = nodeCount;
+  const sets = new JoinedSets(nodeCount + 1);
+  for (const { from, to, fromIndex, toIndex } of pipes) {
+    if (from.kind === 'flashVessel') continue;
+    sets.join(hasFixedPressure(from) ? ground : fromIndex, hasFixedPressure(to) ? ground : toIndex);
+  }
+  return (index) => sets.areJoined(index, ground);
 }

@@ -8,20 +8,23 @@ import { hasFixedPressure, JoinedSets, type PipeEnds } from './topology';
  * A graph of vessels and of the parts between fixed pressures is cleared of all from which a receiver is reached, then trimmed at
  * both ends until only circles (and what lies between two circles) are left: no recursion, linear in the pipes.
  */
-export function vesselsInCircles(pipes: readonly PipeEnds[]): FlashVessel[] {
-  const parts = new JoinedSets();
-  for (const { from, to } of pipes) if (!hasFixedPressure(from) && !hasFixedPressure(to)) parts.join(from.id, to.id);
+export function vesselsInCircles(nodeCount: number, pipes: readonly PipeEnds[]): FlashVessel[] {
+  if (!pipes.some(({ from }) => from.kind === 'flashVessel')) return [];
+  const parts = new JoinedSets(nodeCount);
+  for (const { from, to, fromIndex, toIndex } of pipes) {
+    if (!hasFixedPressure(from) && !hasFixedPressure(to)) parts.join(fromIndex, toIndex);
+  }
 
   const onwards = new Map<string, string[]>();
   const backwards = new Map<string, string[]>();
   const vessels = new Map<string, FlashVessel>();
   const drained: string[] = [];
-  for (const { from, to } of pipes) {
+  for (const { from, to, fromIndex, toIndex } of pipes) {
     for (const node of [from, to]) if (node.kind === 'flashVessel') vessels.set(node.id, node);
     if (from.id === to.id || (!hasFixedPressure(from) && !hasFixedPressure(to))) continue;
     if (from.kind === 'receiver') continue;
-    const start = from.kind === 'flashVessel' ? from.id : partOf(parts, from.id);
-    const end = hasFixedPressure(to) ? to.id : partOf(parts, to.id);
+    const start = from.kind === 'flashVessel' ? from.id : partOf(parts, fromIndex);
+    const end = hasFixedPressure(to) ? to.id : partOf(parts, toIndex);
     if (to.kind === 'receiver') drained.push(to.id);
     link(onwards, start, end);
     link(backwards, end, start);
@@ -34,8 +37,8 @@ export function vesselsInCircles(pipes: readonly PipeEnds[]): FlashVessel[] {
 }
 
 /** No id holds a slash, so that a part is never taken for a vessel. */
-function partOf(parts: JoinedSets, nodeId: string): string {
-  return `part/${parts.rootOf(nodeId)}`;
+function partOf(parts: JoinedSets, node: number): string {
+  return `part/${parts.rootOf(node)}`;
 }
 
 function link(links: Map<string, string[]>, a: string, b: string): void {
