@@ -2,7 +2,6 @@ import {
   accelerationFactor,
   boreAreaM2,
   darcyGradientOf,
-  GRAVITY_M_S2,
   twoPhaseDensityKgM3,
   type FlashingFlow,
   type VoidFraction,
@@ -30,6 +29,7 @@ import {
   type FrictionLawName,
 } from './friction-laws';
 import type { PipeGeometry } from './pipe-geometry';
+import { staticGradient } from './static-gradient';
 
 export interface MarchedPipe {
   readonly upstreamPressurePa: number;
@@ -251,7 +251,7 @@ export class PipeMarcher {
     const alone = darcyGradientOf(massFlowKgS, density, viscosity, insideDiameterM, roughnessM, lossCoefficientPerM);
     parts[FRICTION] = isLiquid ? alone : 0;
     parts[FLASH] = isLiquid ? 0 : alone;
-    parts[STATIC] = this.staticGradient(fluid.liquidDensityKgM3, density, 1);
+    parts[STATIC] = staticGradient(this.options.method, this.at.riseSlope, fluid.liquidDensityKgM3, density, 1);
     return isLiquid ? sumOf(parts) : this.accelerated(saturation, enthalpyJKg, 1, parts);
   }
 
@@ -278,24 +278,7 @@ export class PipeMarcher {
     const liquidDensity = flashing.saturation.liquidDensityKgM3;
     const density =
       staticLift === 'twoPhase' ? twoPhaseDensityKgM3(flashing, this.voidFraction(flashing)) : liquidDensity;
-    return this.staticGradient(liquidDensity, density, fullBoreShare);
-  }
-
-  /**
-   * Static gradient in the direction of flow by the network's basis, of a still pipe too.
-   *     rise: basis × slope;   fall: −dropCredit × share that fills the bore × min(basis, ρ_l g) × slope
-   * @param densityKgM3 of what flows, for the two-phase basis
-   */
-  private staticGradient(liquidDensityKgM3: number, densityKgM3: number, fullBoreShare: number): number {
-    const { riseSlope } = this.at;
-    if (riseSlope === 0) return 0;
-    const { staticLift, liftRulePaM, dropCredit } = this.options.method;
-    const liquidPaM = liquidDensityKgM3 * GRAVITY_M_S2;
-    let basisPaM = liftRulePaM;
-    if (staticLift === 'liquidFull') basisPaM = liquidPaM;
-    else if (staticLift === 'twoPhase') basisPaM = densityKgM3 * GRAVITY_M_S2;
-    if (riseSlope > 0) return basisPaM * riseSlope;
-    return dropCredit * fullBoreShare * Math.min(basisPaM, liquidPaM) * riseSlope;
+    return staticGradient(this.options.method, at.riseSlope, liquidDensity, density, fullBoreShare);
   }
 
   private report(pressurePa: number, enthalpyJKg: number): void {
