@@ -4,9 +4,12 @@ import { readNetworkFile, type NetworkFile } from '@riseback/network';
 import { isRefusal, solveNetwork, type GradientEvaluation, type SolveOptions } from '@riseback/solver';
 import { saturationState, saturationStateDirect } from '@riseback/steam';
 
-const PIPES = [100, 200, 500, 1000, 2000, 5000, 10_000, 20_000] as const;
+const PIPES = [100, 200, 500, 1000, 2000, 5000, 10_000, 20_000, 50_000] as const;
 const RATIO_PIPES = 2000;
 const REPEATS = 15;
+const MESHED_PIPES = 1000;
+const GOAL_MESHES = 50;
+const MESHES = [1, GOAL_MESHES, 200] as const;
 
 /** What the solver costs, each figure as a ratio within this run, so that it means the same on any machine. */
 export function* solverBench(): Generator<string> {
@@ -14,6 +17,7 @@ export function* solverBench(): Generator<string> {
   yield saturationRatio();
   yield* wholeSolveRatio();
   yield bandsRatio();
+  yield* meshesRatio();
 }
 
 function* overPipes(): Generator<string> {
@@ -50,6 +54,17 @@ function* wholeSolveRatio(): Generator<string> {
   const perPipe = (ms: number): string => `${((1000 * ms) / RATIO_PIPES).toFixed(1)} µs a pipe`;
   yield `Whole solve of ${RATIO_PIPES} pipes: ${(wholeMs / bareMs).toFixed(2)} times its look-ups, friction and flow-pattern evaluations alone (goal: at most 2)`;
   yield `  ${evaluations.length} evaluations; whole ${perPipe(wholeMs)}, alone ${perPipe(bareMs)}`;
+}
+
+/** What meshes cost over a tree of as many pipes. */
+function* meshesRatio(): Generator<string> {
+  const tree = plant(MESHED_PIPES);
+  for (const meshes of MESHES) {
+    const meshed = withMeshes(plant(MESHED_PIPES - meshes), meshes);
+    const [treeMs = NaN, meshedMs = NaN] = leastTimesMs([() => solve(tree), () => solve(meshed)]);
+    const goal = meshes === GOAL_MESHES ? ' (goal: under 10)' : '';
+    yield `${MESHED_PIPES} pipes with ${meshes} meshes: ${(meshedMs / treeMs).toFixed(1)} times the tree${goal}`;
+  }
 }
 
 /** What both bands of every trap cost, in solves of the same plant. */
@@ -145,6 +160,19 @@ function plant(pipeCount: number): NetworkFile {
     { id: 'M1', name: 'Model', maximumDifferentialPa: 2e6, bodyPressurePa: 2e6, bodyTemperatureK: 500, capacity },
   ];
   const read = readNetworkFile({ format: 'riseback-network', version: 1, name: 'Bench', nodes, pipes, trapModels });
+  if (!read.ok) throw new Error(JSON.stringify(read.errors));
+  return read.file;
+}
+
+/** The same with more pipes, each from a junction of one hall to one of the next. */
+function withMeshes(file: NetworkFile, meshes: number): NetworkFile {
+  const junctions = file.nodes.filter(({ kind }) => kind === 'junction').map(({ id }) => id);
+  const cross = Array.from({ length: meshes }, (_, i) => {
+    const start = Math.floor(((i + 0.5) * junctions.length) / meshes);
+    const end = (start + 20 + (i % 7)) % junctions.length;
+    return { id: `X${i}`, from: junctions[start], to: junctions[end], lengthM: 25, insideDiameterM: 0.05 };
+  });
+  const read = readNetworkFile({ ...file, pipes: [...file.pipes, ...cross] });
   if (!read.ok) throw new Error(JSON.stringify(read.errors));
   return read.file;
 }

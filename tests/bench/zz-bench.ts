@@ -1,0 +1,208 @@
+import { readFileSync } from 'node:fs';
+import { flashVapourLiquidGradient, flashVapourSteamGradient, flowPattern } from '@riseback/hydraulics';
+import { readNetworkFile, type NetworkFile } from '@riseback/network';
+import { isRefusal, solveNetwork, type GradientEvaluation, type SolveOptions } from '@riseback/solver';
+import { saturationState, saturationStateDirect } from '@riseback/steam';
+
+const PIPES = [100, 200, 500, 1000, 2000, 5000, 10_000, 20_000, 50_000] as const;
+const RATIO_PIPES = 2000;
+const REPEATS = 15;
+const MESHED_PIPES = 1000;
+const GOAL_MESHES = 50;
+const MESHES = [1, GOAL_MESHES, 200] as const;
+
+/** What the solver costs, each figure as a ratio within this run, so that it means the same on any machine. */
+export function* solverBench(): Generator<string> {
+  yield* overPipes();
+  yield saturationRatio();
+  yield* wholeSolveRatio();
+  yield bandsRatio();
+  yield* meshesRatio();
+}
+
+function* overPipes(): Generator<string> {
+  const [first] = PIPES;
+  solve(plant(RATIO_PIPES));
+  const times = PIPES.map((pipes) => {
+    const file = plant(pipes);
+    return leastMs(() => solve(file));
+  });
+  const [reference = NaN] = times;
+  yield 'Whole solve over pipes (time of 100 pipes = 1)';
+  for (const [i, pipes] of PIPES.entries()) {
+    const ratio = (times[i] ?? NaN) / reference;
+    yield `  ${String(pipes).padStart(6)} pipes: ${ratio.toFixed(1).padStart(7)}, ${(ratio / (pipes / first)).toFixed(2)} per pipe`;
+  }
+  yield `  exponent of time over pipes: ${slopeOfLogs(PIPES, times).toFixed(2)} (goal: at most 1.1)`;
+}
+
+function saturationRatio(): string {
+  const pressures = Array.from({ length: 2000 }, (_, i) => 1e3 * 1e4 ** (i / 2000));
+  const sum = (state: typeof saturationState) => (): number =>
+    pressures.reduce((total, pressure) => total + state(pressure).liquidDensityKgM3, 0);
+  const ratio = leastMs(sum(saturationStateDirect)) / leastMs(sum(saturationState));
+  return `Saturation look-up: ${ratio.toFixed(1)} times as fast as the direct formulas (goal: 10)`;
+}
+
+function* wholeSolveRatio(): Generator<string> {
+  const file = plant(RATIO_PIPES);
+  const evaluations: GradientEvaluation[] = [];
+  solve(file, { onGradient: (evaluation) => evaluations.push(evaluation) });
+  const whole = (): void => solve(file);
+  const bare = (): number => evaluateAgain(evaluations);
+  const [wholeMs = NaN, bareMs = NaN] = leastTimesMs([whole, bare]);
+  const perPipe = (ms: number): string => `${((1000 * ms) / RATIO_PIPES).toFixed(1)} µs a pipe`;
+  yield `Whole solve of ${RATIO_PIPES} pipes: ${(wholeMs / bareMs).toFixed(2)} times its look-ups, friction and flow-pattern evaluations alone (goal: at most 2)`;
+  yield `  ${evaluations.length} evaluations; whole ${perPipe(wholeMs)}, alone ${perPipe(bareMs)}`;
+}
+
+/** What meshes cost over a tree of as many pipes. */
+function* meshesRatio(): Generator<string> {
+  const tree = plant(MESHED_PIPES);
+  for (const meshes of MESHES) {
+    const meshed = withMeshes(plant(MESHED_PIPES - meshes), meshes);
+    const [treeMs = NaN, meshedMs = NaN] = leastTimesMs([() => solve(tree), () => solve(meshed)]);
+    const goal = meshes === GOAL_MESHES ? ' (goal: under 10)' : '';
+    yield `${MESHED_PIPES} pipes with ${meshes} meshes: ${(meshedMs / treeMs).toFixed(1)} times the tree${goal}`;
+  }
+}
+
+/** What both bands of every trap cost, in solves of the same plant. */
+function bandsRatio(): string {
+  const text = readFileSync(new URL('../fixtures/tern-quay.json', import.meta.url), 'utf8');
+  const read = readNetworkFile(JSON.parse(text) as unknown);
+  if (!read.ok) throw new Error(JSON.stringify(read.errors));
+  const many = (options: Partial<SolveOptions>) => (): void => {
+    for (let i = 0; i < 20; i++) solve(read.file, options);
+  };
+  const [plainMs = NaN, bandsMs = NaN] = leastTimesMs([many({}), many({ bands: true })]);
+  return `Both bands of every trap of the demo plant: ${((bandsMs - plainMs) / plainMs).toFixed(1)} times its solve without (goal: under 30)`;
+}
+
+/**
+ * The look-ups, friction and flow-pattern evaluations of a solve by themselves, at the same places, in one object as the solver does it.
+ * A march looks at its outlet first, which is where the pipe's pattern is told.
+ */
+function evaluateAgain(evaluations: readonly GradientEvaluation[]): number {
+  const saturation = saturationState(1e5);
+  const sizes = { insideDiameterM: 0, roughnessM: 0, lossCoefficientPerM: 0 };
+  const flow = { massFlowKgS: 0, quality: 0, saturation, ...sizes, fallSlope: 0 };
+  let sum = 0;
+  let before: GradientEvaluation['pipe'] | undefined;
+  for (const { pipe, massFlowKgS, pressurePa, enthalpyJKg, riseSlope } of evaluations) {
+    const { liquidEnthalpyJKg, vapourEnthalpyJKg } = (flow.saturation = saturationState(pressurePa));
+    flow.massFlowKgS = massFlowKgS;
+    flow.quality = (enthalpyJKg - liquidEnthalpyJKg) / (vapourEnthalpyJKg - liquidEnthalpyJKg);
+    flow.insideDiameterM = pipe.insideDiameterM;
+    flow.roughnessM = pipe.roughnessM;
+    flow.lossCoefficientPerM = pipe.lossCoefficientPerM;
+    flow.fallSlope = -riseSlope;
+    sum += flashVapourLiquidGradient(flow) + flashVapourSteamGradient(flow);
+    if (pipe !== before && flowPattern(flow) === 'annular') sum++;
+    before = pipe;
+  }
+  return sum;
+}
+
+export function solve(file: NetworkFile, options: Partial<SolveOptions> = {}): void {
+  const outcome = solveNetwork(file, { partial: false, ...options });
+  if (isRefusal(outcome) || !outcome.converged) throw new Error('the bench network was not solved');
+}
+
+/** Halls of 40 pipes, each a header with a trap at every junction and a riser at its end, all led to one receiver. */
+export function plant(pipeCount: number): NetworkFile {
+  const nodes: object[] = [{ id: 'R', kind: 'receiver', elevationM: 4, pressurePa: 120_000 }];
+  const pipes: object[] = [];
+  for (let i = 0; i < pipeCount / 2; i++) {
+    const inHall = i % 20;
+    const [junction, trap] = [`J${i}`, `T${i}`];
+    nodes.push({ id: junction, kind: 'junction', elevationM: 0.5 });
+    nodes.push({
+      id: trap,
+      kind: 'trap',
+      elevationM: 1,
+      inletPressurePa: 5e5 + (i % 7) * 1e5,
+      loadKgS: 0.01 + (i % 5) * 0.004,
+      trapType: 'thermodynamic',
+      trapModel: 'M1',
+      maximumPressurePa: 1.2e6,
+    });
+    const riser = {
+      to: 'R',
+      lengthM: 20,
+      route: [
+        { lengthM: 5, riseM: 3.5 },
+        { lengthM: 15, riseM: 0 },
+      ],
+    };
+    const header = { to: `J${i - 1}`, lengthM: 8 };
+    pipes.push({
+      id: `H${i}`,
+      from: junction,
+      insideDiameterM: 0.08,
+      lossCoefficient: 1,
+      ...(inHall === 0 ? riser : header),
+    });
+    pipes.push({
+      id: `B${i}`,
+      from: trap,
+      to: junction,
+      lengthM: 3,
+      size: { nps: '1', schedule: '80' },
+      lossCoefficient: 2,
+    });
+  }
+  const capacity = [
+    { differentialPa: 1e5, flowKgS: 0.1 },
+    { differentialPa: 1e6, flowKgS: 0.3 },
+  ];
+  const trapModels = [
+    { id: 'M1', name: 'Model', maximumDifferentialPa: 2e6, bodyPressurePa: 2e6, bodyTemperatureK: 500, capacity },
+  ];
+  const read = readNetworkFile({ format: 'riseback-network', version: 1, name: 'Bench', nodes, pipes, trapModels });
+  if (!read.ok) throw new Error(JSON.stringify(read.errors));
+  return read.file;
+}
+
+/** The same with more pipes, each from a junction of one hall to one of the next. */
+function withMeshes(file: NetworkFile, meshes: number): NetworkFile {
+  const junctions = file.nodes.filter(({ kind }) => kind === 'junction').map(({ id }) => id);
+  const cross = Array.from({ length: meshes }, (_, i) => {
+    const start = Math.floor(((i + 0.5) * junctions.length) / meshes);
+    const end = (start + 20 + (i % 7)) % junctions.length;
+    return { id: `X${i}`, from: junctions[start], to: junctions[end], lengthM: 25, insideDiameterM: 0.05 };
+  });
+  const read = readNetworkFile({ ...file, pipes: [...file.pipes, ...cross] });
+  if (!read.ok) throw new Error(JSON.stringify(read.errors));
+  return read.file;
+}
+
+function leastMs(work: () => unknown): number {
+  return leastTimesMs([work])[0] ?? NaN;
+}
+
+/**
+ * The least of several timings, taken in turn, in processor time with the garbage collector's: what else the machine does then
+ * hardly counts.
+ */
+function leastTimesMs(works: readonly (() => unknown)[]): number[] {
+  const least = works.map(() => Infinity);
+  for (let repeat = 0; repeat < REPEATS; repeat++) {
+    for (const [i, work] of works.entries()) {
+      const start = process.cpuUsage();
+      work();
+      const { user, system } = process.cpuUsage(start);
+      least[i] = Math.min(least[i] ?? NaN, (user + system) / 1000);
+    }
+  }
+  return least;
+}
+
+/** Slope of the least-squares line through the logarithms. */
+function slopeOfLogs(xs: readonly number[], ys: readonly number[]): number {
+  const [lx, ly] = [xs.map(Math.log), ys.map(Math.log)];
+  const mean = (values: readonly number[]): number => values.reduce((a, b) => a + b, 0) / values.length;
+  const [mx, my] = [mean(lx), mean(ly)];
+  const over = lx.reduce((sum, x, i) => sum + (x - mx) * ((ly[i] ?? NaN) - my), 0);
+  return over / lx.reduce((sum, x) => sum + (x - mx) ** 2, 0);
+}
