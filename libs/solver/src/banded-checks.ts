@@ -1,5 +1,5 @@
 import { amount, findingWords, say } from './finding-text';
-import type { Band, TrapCheck } from './solve-result';
+import type { Band, SolveWarning, TrapCheck } from './solve-result';
 import { checkTrap, type TrapUnderCheck } from './trap-checks';
 
 /**
@@ -45,3 +45,10 @@ function unsolved(check: TrapCheck, names: readonly string[]): TrapCheck {
 
 const NO_DIFFERENTIAL = say`nothing is left across the trap to drive its condensate out.`;
 const MEASURE = say`Measure the return’s pressure at this trap, or leave room for what the higher methods say.`;
+
+/** What a result says in place of its bands where a caller has no time for them, so that their absence is not taken for certainty. */
+export function bandsLeftOut(): SolveWarning {
+  const text = say`This network is too large for its bands to be computed while somebody waits: each trap shows the chosen method alone, and its verdicts know no other.`;
+  const remedy = say`Solve it from the command line, which takes the time, or divide it at its flash vessels.`;
+  return { code: 'bandsLeftOut', element: '', verdict: 'watch', ...findingWords(text, remedy) };
+}

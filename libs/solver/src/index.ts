@@ -1,4 +1,5 @@
 export { ledger, type LedgerEntry } from './back-pressure-ledger';
+export { bandsLeftOut } from './banded-checks';
 export { CHECK_LIMITS, limitsInForce, type CheckLimit, type LimitsInForce } from './check-limits';
 export { plainText } from './finding-text';
 export { liftProfile, type ProfilePoint } from './lift-profile';

@@ -1,5 +1,5 @@
 import type { CaseOutcome, Problem, SolveResult } from '@riseback/contracts';
-import { isRefusal, solveNetwork, type SolveProblem } from '@riseback/solver';
+import { bandsLeftOut, isRefusal, solveNetwork, type SolveProblem } from '@riseback/solver';
 import type { SolveJob } from './solve-port';
 
 /** The solver answers read-only objects, the contract's are plain; nothing else may differ between the two. */
@@ -10,12 +10,20 @@ type ReadOnly<T> = T extends readonly (infer Item)[]
     : T;
 type WithoutProblem = Omit<SolveResult, 'problem'>;
 
+/**
+ * Pipes over all cases up to which both bands of every trap are computed: beyond, they would take the solve past its time. A pipe's bands
+ * cost some 20 of its solves.
+ */
+const PIPES_WITH_BANDS = 8000;
+
 /** Solves each case of a job. A case that is refused stands beside those that are solved. */
 export function solveCases({ file, caseIds, partial }: SolveJob): CaseOutcome[] {
+  const bands = file.pipes.length * caseIds.length <= PIPES_WITH_BANDS;
   return caseIds.map((caseId) => {
-    const solved = solveNetwork(file, { caseId, partial, bands: true });
+    const solved = solveNetwork(file, { caseId, partial, bands });
     if (isRefusal(solved)) return { caseId, status: 'refused', problem: toProblem(solved.problem) };
-    const { problem, ...rest } = solved;
+    const { problem, ...told } = solved;
+    const rest = bands ? told : { ...told, warnings: [...told.warnings, bandsLeftOut()] };
     const result = rest satisfies ReadOnly<WithoutProblem> as WithoutProblem;
     return {
       caseId,
