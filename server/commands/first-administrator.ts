@@ -4,10 +4,11 @@ import { Writable } from 'node:stream';
 import { PeopleRepository } from '../src/people/people-repository';
 import { FirstAdministratorService } from '../src/people/first-administrator-service';
 import { Passwords } from '../src/platform/auth/passwords';
-import { databasePathOf } from '../src/platform/config';
-import { openDatabase } from '../src/platform/db/database';
+import { openDatabase, type Database } from '../src/platform/db/database';
+import { DatabaseInUseError, holdExclusively } from '../src/platform/exclusive-use';
 import { ProblemError } from '../src/platform/problem';
 import { SiteRepository } from '../src/sites/site-repository';
+import { databasePath } from './command-line';
 
 const USAGE = `Makes the person who administers this installation, and their first site.
   npm run first-administrator -- EMAIL "NAME" "SITE"
@@ -20,8 +21,7 @@ async function firstAdministrator([email, name, siteName, ...rest]: readonly str
     process.stderr.write(USAGE);
     return 2;
   }
-  // eslint-disable-next-line no-restricted-syntax -- read here once, as main.ts does for the server
-  const db = openDatabase(databasePathOf(process.env));
+  const db = openBesideServer(databasePath());
   try {
     const service = new FirstAdministratorService(
       new PeopleRepository(db),
@@ -40,6 +40,21 @@ async function firstAdministrator([email, name, siteName, ...rest]: readonly str
     return 1;
   } finally {
     db.$client.close();
+  }
+}
+
+/** A server may be running, and be an older program than this command: then its database is not migrated under it. */
+function openBesideServer(path: string): Database {
+  try {
+    const hold = holdExclusively(path);
+    try {
+      return openDatabase(path);
+    } finally {
+      hold.release();
+    }
+  } catch (error) {
+    if (!(error instanceof DatabaseInUseError)) throw error;
+    return openDatabase(path, { mayMigrate: false });
   }
 }
 

@@ -9,6 +9,7 @@ import { seedDemo } from '../demo/seed-demo';
 import { buildApp } from './app';
 import { PeopleRepository } from './people/people-repository';
 import { Passwords } from './platform/auth/passwords';
+import { keepBackups } from './platform/backup/keep-backups';
 import { ConfigError, readConfig, type Config } from './platform/config';
 import { openDatabase, UnusableDatabaseError } from './platform/db/database';
 import { DatabaseInUseError, holdExclusively } from './platform/exclusive-use';
@@ -33,7 +34,8 @@ async function start(): Promise<void> {
   say('Opening the database …');
   if (config.databasePath !== ':memory:') mkdirSync(dirname(config.databasePath), { recursive: true, mode: 0o700 });
   const hold = holdExclusively(config.databasePath);
-  const db = openDatabase(config.databasePath);
+  const report = (error: unknown) => log.error({ err: error }, 'database');
+  const db = openDatabase(config.databasePath, { report });
   const solver = new SolveThread({ report: (error) => log.error({ err: error }, 'solver') });
   const now = () => new Date();
   const app = buildApp({ db, config, log, newId: randomUUID, now, solver, webFolder: builtPages() });
@@ -46,9 +48,10 @@ async function start(): Promise<void> {
     if (seeded) say('The database is new: the demo site is in it.');
   }
 
+  const keeper = await keepBackups({ config, source: db.$client, now, log });
   const server = createServer(app.handler);
   shutDownGracefully(server, log, async () => {
-    await solver.close();
+    await Promise.all([solver.close(), keeper.stop()]);
     db.$client.close();
     hold.release();
   });
@@ -56,6 +59,8 @@ async function start(): Promise<void> {
   const address = addressOf(server, config);
   log.info({ address, production: config.production }, 'listening');
   if (logFile !== undefined) say(`Requests are logged in ${logFile}`);
+  if (config.production && config.backups === undefined)
+    say('No backups are taken: name a folder in RISEBACK_BACKUP_FOLDER.');
   if (config.production) sayFirstAdministrator(people);
   else saySignIns(people);
   say(`Riseback: ${address}`);

@@ -1,6 +1,7 @@
 import { isIP } from 'node:net';
 import { dirname, join, resolve } from 'node:path';
 import * as z from 'zod';
+import type { ScheduleSettings } from './backup/backup-schedule';
 import { findSessionSecret, secretMistake } from './session-secret';
 
 /** Every setting the server reads, once, at its start; docs/configuration.md lists them. */
@@ -18,6 +19,8 @@ export interface Config {
   /** Of one session; a stop for runaway scripts. */
   readonly requestsPerMinute: number;
   readonly logLevel: 'debug' | 'info' | 'warn' | 'error' | 'silent';
+  /** Undefined = nobody asked for backups by schedule. */
+  readonly backups: ScheduleSettings | undefined;
 }
 
 /** A setting that cannot be used. Stops the start; the message names the setting and says what it must be. */
@@ -39,6 +42,9 @@ const Settings = z.object({
   TRUST_PROXY: z.string().optional(),
   RISEBACK_REQUESTS_PER_MINUTE: z.coerce.number().int().min(60).max(1e9).default(6_000),
   RISEBACK_LOG_LEVEL: z.enum(['debug', 'info', 'warn', 'error', 'silent']).default('info'),
+  RISEBACK_BACKUP_FOLDER: z.string().min(1).optional(),
+  RISEBACK_BACKUP_EVERY_HOURS: z.coerce.number().min(0.1).max(168).default(24),
+  RISEBACK_BACKUP_KEEP: z.coerce.number().int().min(1).max(10_000).default(14),
 });
 type Settings = z.infer<typeof Settings>;
 
@@ -54,6 +60,9 @@ const MUST_BE: Readonly<Record<keyof Settings, string>> = {
   TRUST_PROXY: 'a number of proxies, or their addresses separated by commas',
   RISEBACK_REQUESTS_PER_MINUTE: 'a whole number, 60 at least',
   RISEBACK_LOG_LEVEL: 'debug, info, warn, error or silent',
+  RISEBACK_BACKUP_FOLDER: 'the path of a folder for backups',
+  RISEBACK_BACKUP_EVERY_HOURS: 'a number of hours, 168 at most',
+  RISEBACK_BACKUP_KEEP: 'a whole number, 1 at least',
 };
 
 /** @throws ConfigError naming the first setting that cannot be used */
@@ -72,12 +81,22 @@ export function readConfig(env: Readonly<Record<string, string | undefined>>): C
     trustProxy: readTrustProxy(settings.TRUST_PROXY),
     requestsPerMinute: settings.RISEBACK_REQUESTS_PER_MINUTE,
     logLevel: settings.RISEBACK_LOG_LEVEL,
+    backups: readBackups(settings),
   };
 }
 
 /** The one setting that commands on the machine share with the server. @throws ConfigError as readConfig */
 export function databasePathOf(env: Readonly<Record<string, string | undefined>>): string {
   return resolveDatabase(parseSettings(env));
+}
+
+function readBackups(settings: Settings): ScheduleSettings | undefined {
+  if (settings.RISEBACK_BACKUP_FOLDER === undefined) return undefined;
+  return {
+    folder: resolve(settings.RISEBACK_BACKUP_FOLDER),
+    everyHours: settings.RISEBACK_BACKUP_EVERY_HOURS,
+    keep: settings.RISEBACK_BACKUP_KEEP,
+  };
 }
 
 function resolveDatabase({ RISEBACK_DB: path }: Settings): string {

@@ -1,4 +1,5 @@
-import { Worker } from 'node:worker_threads';
+import type { Worker } from 'node:worker_threads';
+import { startWorker } from '../platform/start-worker';
 import type { SolveEnd, SolveJob, SolvePort } from './solve-port';
 
 /** What the worker posts back; `broke` carries the error's text for the log. */
@@ -89,7 +90,7 @@ export class SolveThread implements SolvePort {
   }
 
   private startWorker(): Worker {
-    const worker = workerAt(this.workerUrl);
+    const worker = startWorker(this.workerUrl);
     // the server's socket keeps the process alive, not its solver
     worker.unref();
     worker.on('message', (answer: SolveAnswer) => this.take(answer));
@@ -130,13 +131,6 @@ export class SolveThread implements SolvePort {
     this.running.resolve(end);
     this.running = undefined;
   }
-}
-
-/** A worker does not inherit tsx's loader, nor take it from `--import`, so a worker in TypeScript registers it first. */
-function workerAt(url: URL): Worker {
-  if (!url.pathname.endsWith('.ts')) return new Worker(url);
-  const script = `import('tsx/esm/api').then(({ register }) => { register(); return import(${JSON.stringify(url.href)}); })`;
-  return new Worker(script, { eval: true });
 }
 
 /** TypeScript through tsx while developing; beside the server's bundle once built. */
