@@ -1,5 +1,9 @@
 import cookieParser from 'cookie-parser';
+import { roleMay } from '@riseback/contracts';
 import express, { type Express } from 'express';
+import { eventRoutes } from './events/event-routes';
+import { EventService } from './events/event-service';
+import { NetworkStreams } from './events/network-streams';
 import { NetworkRepository } from './networks/network-repository';
 import { networkRoutes } from './networks/network-routes';
 import { NetworkService } from './networks/network-service';
@@ -7,7 +11,7 @@ import { accountRoutes } from './people/account-routes';
 import { OwnAccountService } from './people/own-account-service';
 import { PeopleRepository } from './people/people-repository';
 import { SignInService } from './people/sign-in-service';
-import { AccessRules } from './platform/auth/access';
+import { AccessRules, type NetworkAccess } from './platform/auth/access';
 import { MembershipRepository } from './platform/auth/membership-repository';
 import { Passwords } from './platform/auth/passwords';
 import { SessionGate } from './platform/auth/session-gate';
@@ -51,6 +55,8 @@ export interface AppParts {
   readonly solver: SolvePort;
   /** The browser build; undefined while developing, when the pages come from their own server. */
   readonly webFolder: string | undefined;
+  /** Between two signs of life on an open stream; each also checks that its reader may still see the network. */
+  readonly heartbeatMs?: number;
 }
 
 export interface App {
@@ -59,6 +65,8 @@ export interface App {
   readonly routes: readonly Route[];
   /** For the demo, which makes its network without a request. */
   readonly networks: NetworkService;
+  /** Ends the open streams, which would otherwise keep a stopping server waiting. */
+  readonly endStreams: () => void;
 }
 
 export function buildApp(parts: AppParts): App {
@@ -72,8 +80,29 @@ export function buildApp(parts: AppParts): App {
   const account = new OwnAccountService(people, sessions);
   const sites = new SiteService(new SiteRepository(db));
   const report = (error: unknown) => log.error({ err: error }, 'solve failed');
-  const live = new LiveSolves(new SolveRepository(db), solver, { engineVersion: ENGINE_VERSION, newId, now, report });
-  const networks = new NetworkService(new NetworkRepository(db), live, newId, now);
+  const memberships = new MembershipRepository(db);
+  const stillAllowed = ({ person, siteId }: NetworkAccess): boolean => {
+    const role = sessions.isLive(person.sessionId) ? memberships.roleAtSite(person.id, siteId) : undefined;
+    return role !== undefined && roleMay(role, 'view');
+  };
+  const { heartbeatMs } = parts;
+  const streams = new NetworkStreams({ stillAllowed, now, ...(heartbeatMs === undefined ? {} : { heartbeatMs }) });
+  const live = new LiveSolves(new SolveRepository(db), solver, {
+    engineVersion: ENGINE_VERSION,
+    newId,
+    now,
+    ended: (networkId, solverHash, state) => streams.solveEnded(networkId, solverHash, state),
+    report,
+  });
+  const networks = new NetworkService(new NetworkRepository(db), live, streams, newId, now);
+  const events = new EventService(
+    {
+      headOf: (access) => networks.headOf(access),
+      editsSince: (access, version) => networks.editsSince(access, version),
+      solveState: (networkId, solverHash) => live.state(networkId, solverHash),
+    },
+    streams,
+  );
   const results = new ResultService(networks, live, solver, { engineVersion: ENGINE_VERSION, newId });
   const readiness = new ReadinessCheck(db, new SolverProbe(() => solvesOnePipe(solver), now));
 
@@ -84,6 +113,7 @@ export function buildApp(parts: AppParts): App {
     ...siteRoutes(sites),
     ...networkRoutes(networks),
     ...solveRoutes(results),
+    ...eventRoutes(events),
   ];
 
   const app = express();
@@ -99,7 +129,7 @@ export function buildApp(parts: AppParts): App {
     next();
   });
   app.use('/api', apiRateLimit(config.requestsPerMinute, gate));
-  app.use(registerRoutes(routes, gate, new AccessRules(new MembershipRepository(db))));
+  app.use(registerRoutes(routes, gate, new AccessRules(memberships)));
   app.use('/api', () => {
     throw notFound('There is nothing at this address of the API; /api/openapi.json lists what there is.');
   });
@@ -108,5 +138,5 @@ export function buildApp(parts: AppParts): App {
     throw notFound('There is nothing at this address.');
   });
   app.use(problemHandler(log));
-  return { handler: app, routes, networks };
+  return { handler: app, routes, networks, endStreams: () => streams.close() };
 }

@@ -22,7 +22,7 @@ function partsWith(db: Database) {
     summary: () => ({ state: 'stale' as const }),
   };
   const now = () => new Date('2026-03-02T08:00:00.000Z');
-  const networks = new NetworkService(new NetworkRepository(db), solves, randomUUID, now);
+  const networks = new NetworkService(new NetworkRepository(db), solves, { edited: () => undefined }, randomUUID, now);
   const hashPassword = () => Promise.resolve('hash');
   return { changed, parts: { db, networks, hashPassword, newId: randomUUID, now } };
 }

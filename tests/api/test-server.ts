@@ -29,6 +29,7 @@ export interface TestServerOptions {
   readonly config?: Partial<Config>;
   readonly solver?: SolvePort;
   readonly webFolder?: string;
+  readonly heartbeatMs?: number;
 }
 
 /** The application on a database in memory, with a clock that the test moves and everything it logs. */
@@ -62,6 +63,7 @@ export class TestServer {
       now,
       solver: options.solver ?? inThread,
       webFolder: options.webFolder,
+      ...(options.heartbeatMs === undefined ? {} : { heartbeatMs: options.heartbeatMs }),
     });
     this.tokens = new SessionTokens(this.config.sessionSecret);
     this.sessions = new Sessions(new SessionRepository(this.db), this.tokens, randomUUID, now);

@@ -51,7 +51,7 @@ export const EditRequest = EditBatch;
 export const EditAccepted = z.object({ version: z.number().int(), solverHash: z.string() });
 export type EditAccepted = z.infer<typeof EditAccepted>;
 
-/** A batch that someone else saved: in the answer 412 (`batches`) and in GET /api/networks/:networkId/edits?since=N. */
+/** A batch that was saved: in the answer 412 (`batches`), in GET /api/networks/:networkId/edits?since=N and as an event. */
 export const SavedBatch = z.object({
   version: z.number().int(),
   batchId: z.string(),
@@ -60,6 +60,8 @@ export const SavedBatch = z.object({
   at: z.iso.datetime(),
   label: z.string(),
   ops: z.array(EditOp),
+  /** Of the network after it. */
+  solverHash: z.string(),
 });
 export type SavedBatch = z.infer<typeof SavedBatch>;
 

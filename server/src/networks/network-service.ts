@@ -35,6 +35,11 @@ export interface NetworkSolves {
   summary(networkId: string, solverHash: string, firstCaseId: string): SolveSummary;
 }
 
+/** What is told of what was saved, to those who have the network open. */
+export interface NetworkAnnouncer {
+  edited(networkId: string, batch: SavedBatch): void;
+}
+
 /** Documents kept in memory, so that an edit does not read a whole network again. */
 const CACHED_DOCUMENTS = 16;
 
@@ -44,6 +49,7 @@ export class NetworkService {
   constructor(
     private readonly networks: NetworkRepository,
     private readonly solves: NetworkSolves,
+    private readonly announcer: NetworkAnnouncer,
     private readonly newId: () => string,
     private readonly now: () => Date,
   ) {}
@@ -109,6 +115,11 @@ export class NetworkService {
     return toFile(this.documentOf(this.networks, this.head(access.networkId)));
   }
 
+  /** The newest version and the hash of what its solve takes. */
+  headOf(access: NetworkAccess): { readonly version: number; readonly solverHash: string } {
+    return this.head(access.networkId);
+  }
+
   editsSince(access: NetworkAccess, version: number): SavedBatch[] {
     return savedBatches(this.networks, access.networkId, version);
   }
@@ -144,12 +155,15 @@ export class NetworkService {
    *   collection needs another role; 422 the batch does not fit the network
    */
   edit(access: NetworkAccess, onVersion: number, batch: EditBatch): EditAccepted {
+    const { networkId } = access;
     const { answer, changed } = this.networks.transaction((networks) =>
       this.editWithin(networks, access, onVersion, batch),
     );
     if (changed !== undefined) {
-      this.remember(access.networkId, answer.version, changed);
-      this.solves.changed({ networkId: access.networkId, solverHash: answer.solverHash, document: changed });
+      const { document, saved } = changed;
+      this.remember(networkId, answer.version, document);
+      this.announcer.edited(networkId, saved);
+      this.solves.changed({ networkId, solverHash: answer.solverHash, document });
     }
     return answer;
   }
@@ -159,7 +173,10 @@ export class NetworkService {
     access: NetworkAccess,
     onVersion: number,
     batch: EditBatch,
-  ): { readonly answer: EditAccepted; readonly changed?: NetworkDocument } {
+  ): {
+    readonly answer: EditAccepted;
+    readonly changed?: { readonly document: NetworkDocument; readonly saved: SavedBatch };
+  } {
     const { networkId, person } = access;
     const known = networks.editByBatch(batch.batchId);
     if (known !== undefined) return { answer: firstAnswer(known, access, batch) };
@@ -174,7 +191,7 @@ export class NetworkService {
     const solverHash = solverHashOf(document);
     const at = this.now();
     networks.update(networkId, version, document, solverHash, touchedBy(batch.ops));
-    networks.insertEdit({
+    const edit: StoredEdit = {
       networkId,
       version,
       batchId: batch.batchId,
@@ -184,7 +201,8 @@ export class NetworkService {
       forward: batch.ops,
       inverse: applied.inverse,
       solverHash,
-    });
+    };
+    networks.insertEdit(edit);
     networks.audit({
       at,
       personId: person.id,
@@ -194,7 +212,10 @@ export class NetworkService {
       subject: networkId,
       details: { version, batchId: batch.batchId, label: batch.label },
     });
-    return { answer: { version, solverHash }, changed: document };
+    return {
+      answer: { version, solverHash },
+      changed: { document, saved: savedBatch({ ...edit, personName: person.name }) },
+    };
   }
 
   private networkOf(access: SiteAccess, networkId: string): Network {
@@ -281,15 +302,12 @@ function requirePermissions(access: NetworkAccess, batch: EditBatch): void {
 }
 
 function savedBatches(networks: NetworkRepository, networkId: string, since: number): SavedBatch[] {
-  return networks.editsSince(networkId, since).map((edit) => ({
-    version: edit.version,
-    batchId: edit.batchId,
-    personId: edit.personId,
-    personName: edit.personName,
-    at: edit.at,
-    label: edit.label,
-    ops: [...edit.forward],
-  }));
+  return networks.editsSince(networkId, since).map(savedBatch);
+}
+
+function savedBatch(edit: StoredEdit & { readonly personName: string }): SavedBatch {
+  const { version, batchId, personId, personName, at, label, forward, solverHash } = edit;
+  return { version, batchId, personId, personName, at, label, ops: [...forward], solverHash };
 }
 
 function sessionOf(by: { readonly sessionId?: string }): { sessionId?: string } {

@@ -7,9 +7,15 @@ const SWEEP_MS = 50;
 
 /**
  * Ends the process in order: no new connections, requests under way are answered, then `release` closes the rest.
+ * @param endStreams ends the answers that would not end by themselves
  * @param release closes worker and database
  */
-export function shutDownGracefully(server: Server, log: Log, release: () => Promise<void>): void {
+export function shutDownGracefully(
+  server: Server,
+  log: Log,
+  endStreams: () => void,
+  release: () => Promise<void>,
+): void {
   let stopping = false;
   // An answered connection that its client keeps open would hold the server until it idles out.
   server.on('request', (_req, res) => {
@@ -19,6 +25,7 @@ export function shutDownGracefully(server: Server, log: Log, release: () => Prom
     if (stopping) return;
     stopping = true;
     log.info({ signal }, 'stopping');
+    endStreams();
     const sweep = setInterval(() => server.closeIdleConnections(), SWEEP_MS);
     const lastResort = setTimeout(() => {
       log.warn('requests under way took too long and were cut off');

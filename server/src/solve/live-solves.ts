@@ -15,6 +15,8 @@ export interface LiveSolvesOptions {
   readonly engineVersion: string;
   readonly newId: () => string;
   readonly now: () => Date;
+  /** Told of every solve that has ended, also of one that was stored before. */
+  readonly ended: (networkId: string, solverHash: string, state: 'finished' | 'failed') => void;
   /** Told of what nobody waits for and yet went wrong. */
   readonly report: (error: unknown) => void;
 }
@@ -67,9 +69,17 @@ export class LiveSolves {
     return counts === undefined ? { state: 'failed' } : { state: 'solved', ...counts };
   }
 
+  /** How far the solve of this input is. */
+  state(networkId: string, solverHash: string): 'waiting' | 'finished' | 'failed' {
+    const overview = this.solves.overview(this.keyOf({ networkId, solverHash }));
+    if (overview === undefined) return 'waiting';
+    return overview === 'failed' ? 'failed' : 'finished';
+  }
+
   private async startUnlessStored(input: VersionedInput): Promise<void> {
     const overview = this.solves.overview(this.keyOf(input));
     if (overview === undefined || overview === 'failed') await this.start(input.networkId, input);
+    else this.options.ended(input.networkId, input.solverHash, 'finished');
   }
 
   private start(key: string, input: VersionedInput): Promise<void> {
@@ -94,6 +104,7 @@ export class LiveSolves {
       const overview = { solveMs: ended.solveMs, cases: ended.outcomes.map(verdictsOf) };
       this.solves.storeFinished(solve, overview, ended.outcomes);
     }
+    this.options.ended(input.networkId, input.solverHash, ended.end);
   }
 
   private keyOf({ networkId, solverHash }: Omit<VersionedInput, 'document'>): SolveInput {

@@ -65,6 +65,11 @@ export class Sessions {
     return { person: live.person, renewed: this.renew(live.session, now) };
   }
 
+  /** Whether a session that was checked before may still be used; for what outlives a request. */
+  isLive(sessionId: string): boolean {
+    return this.repository.findLive(sessionId, this.now().toISOString()) !== undefined;
+  }
+
   /** @returns false when the person has no such live session */
   end(sessionId: string, person: SignedInPerson, why: SessionEnd): boolean {
     const at = this.now();
