@@ -50,7 +50,7 @@ async function start(): Promise<void> {
 
   const keeper = await keepBackups({ config, source: db.$client, now, log });
   const server = createServer(app.handler);
-  shutDownGracefully(server, log, async () => {
+  shutDownGracefully(server, log, app.endStreams, async () => {
     await Promise.all([solver.close(), keeper.stop()]);
     db.$client.close();
     hold.release();
