@@ -4,6 +4,9 @@ import express, { type Express } from 'express';
 import { eventRoutes } from './events/event-routes';
 import { EventService } from './events/event-service';
 import { NetworkStreams } from './events/network-streams';
+import { AuditRepository } from './audit/audit-repository';
+import { auditRoutes } from './audit/audit-routes';
+import { AuditService } from './audit/audit-service';
 import { NetworkRepository } from './networks/network-repository';
 import { networkRoutes } from './networks/network-routes';
 import { NetworkService } from './networks/network-service';
@@ -76,8 +79,9 @@ export function buildApp(parts: AppParts): App {
   const sessions = new Sessions(new SessionRepository(db), tokens, newId, now);
   const gate = new SessionGate(sessions, tokens, config.origin, now);
   const people = new PeopleRepository(db);
-  const signIn = new SignInService(people, new Passwords(), new SignInGuard(now), sessions);
+  const signIn = new SignInService(people, new Passwords(), new SignInGuard(now), sessions, now);
   const account = new OwnAccountService(people, sessions);
+  const auditLog = new AuditService(new AuditRepository(db));
   const sites = new SiteService(new SiteRepository(db));
   const report = (error: unknown) => log.error({ err: error }, 'solve failed');
   const memberships = new MembershipRepository(db);
@@ -111,6 +115,7 @@ export function buildApp(parts: AppParts): App {
     openApiRoute(() => routes),
     ...accountRoutes(signIn, account, gate),
     ...siteRoutes(sites),
+    ...auditRoutes(auditLog),
     ...networkRoutes(networks),
     ...solveRoutes(results),
     ...eventRoutes(events),

@@ -1,3 +1,4 @@
+export * from './audit';
 export * from './events';
 export * from './networks';
 export * from './problem';

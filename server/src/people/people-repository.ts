@@ -63,6 +63,11 @@ export class PeopleRepository {
     });
   }
 
+  /** For the log alone: nothing else of a refused sign-in is kept. */
+  noteRefusedSignIn(audit: AuditEntry): void {
+    this.db.transaction((tx) => appendAudit(tx, audit));
+  }
+
   /** Gives a role at a site, or changes it; a changed one ends the person's sessions. */
   giveRole(personId: string, siteId: string, role: Role, grantedBy: string | null, audit: AuditEntry): void {
     const grantedAt = audit.at.toISOString();

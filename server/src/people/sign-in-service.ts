@@ -17,18 +17,28 @@ export class SignInService {
     private readonly passwords: Passwords,
     private readonly guard: SignInGuard,
     private readonly sessions: Sessions,
+    private readonly now: () => Date,
   ) {}
 
   /** @throws ProblemError 401 in the same words and time whatever was wrong; 429 when guessing */
   async signIn(input: SignIn, from: SignInOrigin): Promise<{ person: PersonRow; issued: IssuedSession }> {
-    const person = await this.guard.guard(input.email, from.address, () => this.recognise(input));
+    const person = await this.guard.guard(input.email, from.address, () => this.recognise(input, from.address));
     if (person === undefined) throw wrongCredentials();
     return { person, issued: this.sessions.start(person.id, from.agent) };
   }
 
-  private async recognise(input: SignIn): Promise<PersonRow | undefined> {
+  private async recognise(input: SignIn, address: string): Promise<PersonRow | undefined> {
     const person = this.people.findByEmail(input.email);
     const matches = await this.passwords.matches(input.password, person?.passwordHash);
-    return matches && person?.disabledAt === null ? person : undefined;
+    if (matches && person?.disabledAt === null) return person;
+    this.noteRefusal(person, matches, address);
+    return undefined;
+  }
+
+  /** Never what was typed as an address: it may be a password that went into the wrong box. */
+  private noteRefusal(person: PersonRow | undefined, matches: boolean, address: string): void {
+    const known = person === undefined ? { subject: 'unknown' } : { personId: person.id, subject: person.id };
+    const why = person === undefined ? 'unknownAccount' : matches ? 'disabled' : 'wrongPassword';
+    this.people.noteRefusedSignIn({ at: this.now(), ...known, action: 'session.refuse', details: { why, address } });
   }
 }
