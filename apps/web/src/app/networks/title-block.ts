@@ -62,7 +62,7 @@ export class TitleBlock {
       case 'solving':
         return 'Solving';
       case 'stale':
-        return 'Stale: not saved yet';
+        return `Stale: ${this.store.saveProblem()?.title ?? 'not saved yet'}`;
       case 'failed':
         return `No solution: ${state.problem.detail ?? state.problem.title}`;
       case 'solved':

@@ -83,8 +83,6 @@ export const TRAP_COLUMNS: readonly Column<Trap>[] = [
     { title: 'Back', widthPx: 76 },
     ({ id }, { traps }) => traps.get(id)?.backPressurePa,
   ),
-  bandColumn('credible', 'Credible'),
-  bandColumn('spread', 'Spread'),
   resultColumn<Trap>(
     'differentialPa',
     'pressureDifference',
@@ -96,6 +94,9 @@ export const TRAP_COLUMNS: readonly Column<Trap>[] = [
     { title: 'Verdict', widthPx: 192 },
     ({ id }, { traps }) => (traps.get(id)?.checks.length ?? 0) > 0,
   ),
+  // after the verdict, which must be in sight on a usual screen
+  bandColumn('credible', 'Credible'),
+  bandColumn('spread', 'Spread'),
 ];
 
 /** Between what the methods put the back pressure; sorted by the upper end, which is what may turn a verdict. */
