@@ -10,3 +10,4 @@ export {
 export { relativeError } from './relative-error';
 export { findRootBracketed, type RootOptions } from './root-finding';
 export { solveLinearSystem } from './linear-system';
+export { SparseSymmetric } from './sparse-symmetric';

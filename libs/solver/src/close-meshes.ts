@@ -24,13 +24,10 @@ export interface ClosedMeshes {
   readonly march: MarchOptions;
 }
 
-interface Search {
-  readonly march: MarchOptions;
-  readonly evaluator: MeshEvaluator;
-  readonly solution: MeshSolution;
-}
-
-/** A mesh that stays open by less than this may be open only by what the march leaves; then it is marched finer. */
+/**
+ * A mesh that stays open by less than this may be open only by what the march leaves, in long lines of great pressure drop; then all
+ * is marched finer.
+ */
 const WITHIN_MARCH_PA = 100;
 const FINER_MARCH_SHARE = 0.01;
 
@@ -62,16 +59,17 @@ export function closeMeshes(
   const inCore = core.pipes.map((pipe) => geometries[pipe] as PipeGeometry);
   const endMs = Date.now() + LONGEST_SEARCH_MS;
   const isOver = (): boolean => Date.now() > endMs;
-  const search = (options: MarchOptions): Search => {
-    const law = new MarchedLaw(inCore, prepared.ambientEnthalpyJKg, options);
-    const evaluator = new MeshEvaluator(core.network, law);
-    makeRough(law, evaluator);
-    return { march: options, evaluator, solution: searchDivision(evaluator, isOver) };
-  };
-  let found = search(march);
+  const law = new MarchedLaw(inCore, prepared.ambientEnthalpyJKg, march);
+  const usual = new MeshEvaluator(core.network, law);
+  makeRough(law, usual);
+  let found = { march, evaluator: usual, solution: searchDivision(usual, { isOver, stallsBelowPa: WITHIN_MARCH_PA }) };
   if (!found.solution.converged && found.solution.worstPa < WITHIN_MARCH_PA) {
-    // long lines of great pressure drop: the error that a march may leave is what keeps the mesh open
-    found = search({ ...march, tolerancePa: march.tolerancePa * FINER_MARCH_SHARE });
+    const finer = { ...march, tolerancePa: march.tolerancePa * FINER_MARCH_SHARE };
+    const finerLaw = new MarchedLaw(inCore, prepared.ambientEnthalpyJKg, finer, law.rough);
+    const evaluator = new MeshEvaluator(core.network, finerLaw);
+    const startKgS = found.solution.state.flowKgS;
+    const solution = searchDivision(evaluator, { isOver, startKgS, stallsBelowPa: 0 });
+    if (solution.worstPa < found.solution.worstPa) found = { march: finer, evaluator, solution };
   }
   const { evaluator, solution } = found;
   refuseUnclosed(prepared, core, solution);

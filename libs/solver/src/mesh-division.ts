@@ -1,4 +1,4 @@
-import { solveLinearSystem } from '@riseback/numerics';
+import { SparseSymmetric } from '@riseback/numerics';
 import type { MeshNetwork } from './mesh-network';
 
 /**
@@ -14,88 +14,142 @@ export interface RisingPipes {
 
 /** The jump at rest is spread over this share of all that flows, stage by stage down to the last. */
 const STAGES = [1e-1, 1e-3, 1e-5, 1e-7] as const;
+const LAST_STAGE = STAGES[STAGES.length - 1] as number;
 /** What stands against a flow that a pipe does not let through, over the width of the stage. */
 const SHUT_PA = 1e7;
 const STEPS_PER_STAGE = 60;
-/** A stage is done when the way down along a step is this small against scale and pressure. */
-const DONE_SHARE = 1e-9;
+/** A stage is done when no flow moves by more than this share of its width. */
+const DONE_WIDTHS = 0.1;
 const LINE_TRIALS = 30;
+/** A step is gone whole where it ends below this share of what drove it; a shorter one is searched to within the second. */
+const WHOLE_STEP_SHARE = 0.1;
+const SEARCHED_SHARE = 0.3;
 /** Flows below this many widths of the last stage count as none where the pressure jumps. */
 const STILL_WIDTHS = 30;
 
-/**
- * Divides the flow so that all meshes close, for pipes whose pressure always rises with flow: there is one such division, the
- * least of a convex potential, and Newton's method with a search along each step finds it from anywhere.
- *     least of Σ ∫ Δp_k dm_k + Σ p_fixed m_into   over the chord flows of one spanning tree
- * @param inflowKgS by node, with what vessels drain
- * @param startKgS flows by pipe to begin with, in balance
- * @returns flows by pipe; to the bit 0 where a pipe stands still although a slight push would not move it
- */
-export function divideFlow(
-  network: MeshNetwork,
-  pipes: RisingPipes,
-  inflowKgS: Float64Array,
-  scaleKgS: number,
-  startKgS?: Float64Array,
-): Float64Array {
-  const tree = new CycleTree(network, inflowKgS);
-  const chordKgS = Float64Array.from(tree.chords, (chord) => startKgS?.[chord] ?? 0);
-  for (const stage of STAGES)
-    settle(tree, new SpreadPipes(pipes, network.oneWay, stage * scaleKgS), chordKgS, scaleKgS);
-  const flowKgS = tree.flows(chordKgS);
-  const [last] = STAGES.slice(-1);
-  const stillKgS = STILL_WIDTHS * (last ?? 0) * scaleKgS;
-  return flowKgS.map((flow, pipe) => {
-    const jumpPa = (pipes.staticWithArrowPa[pipe] as number) + (pipes.staticAgainstArrowPa[pipe] as number);
-    const turned = network.oneWay[pipe] === 1 && flow < 0;
-    return turned || ((jumpPa > 0 || network.oneWay[pipe] === 1) && Math.abs(flow) < stillKgS) ? 0 : flow;
-  });
-}
+/** Divides flows in one network again and again. */
+export class FlowDivider {
+  private readonly system: SparseSymmetric;
+  /** By node: its row, −1 at fixed pressures. By edge of the system: its pipe. */
+  private readonly rowOf: Int32Array;
+  private readonly pipeOfEdge: Int32Array;
+  private readonly rows: number;
 
-/** Newton's method in one stage; changes `chordKgS`. */
-function settle(tree: CycleTree, pipes: SpreadPipes, chordKgS: Float64Array, scaleKgS: number): void {
-  const n = chordKgS.length;
-  for (let count = 0; count < STEPS_PER_STAGE; count++) {
-    const flowKgS = tree.flows(chordKgS);
-    const open = tree.mismatches(flowKgS, pipes);
-    const step = open.map((mismatch) => -mismatch);
-    const matrix = tree.matrix(flowKgS, pipes);
-    // a trace of stiffness keeps meshes of still water from dividing nothing by nothing
-    for (let i = 0; i < n; i++) matrix[i * n + i] = (matrix[i * n + i] as number) * (1 + 1e-12) + 1e-12;
-    if (!solveLinearSystem(matrix, step) || !step.every(Number.isFinite)) return;
-    const slope = dot(open, step);
-    if (!(slope < -DONE_SHARE * scaleKgS)) return;
-    const share = shareOfStep(tree, pipes, chordKgS, step, slope);
-    for (let i = 0; i < n; i++) chordKgS[i] = (chordKgS[i] as number) + share * (step[i] as number);
+  constructor(
+    private readonly network: MeshNetwork,
+    private readonly scaleKgS: number,
+    private readonly isOver: () => boolean,
+  ) {
+    const { fixedPressurePa, from, to } = network;
+    let rows = 0;
+    this.rowOf = Int32Array.from(fixedPressurePa, (pressure) => (Number.isNaN(pressure) ? rows++ : -1));
+    this.rows = rows;
+    const isFree = (node: number): boolean => (this.rowOf[node] as number) >= 0;
+    this.pipeOfEdge = from
+      .map((_, pipe) => pipe)
+      .filter((pipe) => isFree(from[pipe] as number) && isFree(to[pipe] as number));
+    const row = (ends: Int32Array): Int32Array =>
+      this.pipeOfEdge.map((pipe) => this.rowOf[ends[pipe] as number] as number);
+    this.system = new SparseSymmetric(rows, row(from), row(to));
+  }
+
+  /**
+   * Divides the flow so that all meshes close, for pipes whose pressure always rises with flow: there is one such division, the
+   * least of a convex potential, and Newton's method with a search along each step finds it from anywhere.
+   *     least of Σ ∫ Δp_k dm_k + Σ p_fixed m_into   over all flows in balance
+   * @param inflowKgS by node, with what vessels drain
+   * @param startKgS flows by pipe to begin with
+   * @returns flows by pipe; to the bit 0 where a pipe stands still although a slight push would not move it
+   */
+  divide(pipes: RisingPipes, inflowKgS: Float64Array, startKgS?: Float64Array): Float64Array {
+    const { oneWay } = this.network;
+    const flowKgS = treeFlows(this.network, inflowKgS, startKgS);
+    for (const stage of STAGES) this.settle(new SpreadPipes(pipes, oneWay, stage * this.scaleKgS), flowKgS, stage);
+    const stillKgS = STILL_WIDTHS * LAST_STAGE * this.scaleKgS;
+    return flowKgS.map((flow, pipe) => {
+      const jumpPa = (pipes.staticWithArrowPa[pipe] as number) + (pipes.staticAgainstArrowPa[pipe] as number);
+      if (oneWay[pipe] === 1 && flow < stillKgS) return 0;
+      return jumpPa > 0 && Math.abs(flow) < stillKgS ? 0 : flow;
+    });
+  }
+
+  /** Newton's method in one stage; changes the flows. */
+  private settle(pipes: SpreadPipes, flowKgS: Float64Array, stage: number): void {
+    for (let count = 0; count < STEPS_PER_STAGE && !this.isOver(); count++) {
+      const step = this.step(pipes, flowKgS);
+      if (step === undefined) return;
+      const share = shareOfStep(pipes, flowKgS, step);
+      let most = 0;
+      step.changes.forEach((change, pipe) => {
+        flowKgS[pipe] = (flowKgS[pipe] as number) + share * change;
+        most = Math.max(most, Math.abs(share * change));
+      });
+      if (most <= DONE_WIDTHS * stage * this.scaleKgS) return;
+    }
+  }
+
+  /**
+   * The step that would close everything if pressures were straight in flow, by way of the nodes' pressures:
+   *     Σ (p_i − p_j − Δp_k)/Δp_k′ = 0 at each node,   δm_k = (p_i − p_j − Δp_k)/Δp_k′
+   */
+  private step(pipes: SpreadPipes, flowKgS: Float64Array): Step | undefined {
+    const { fixedPressurePa, from, to } = this.network;
+    const drops = flowKgS.map((flow, pipe) => pipes.dropPa(pipe, flow));
+    const eases = flowKgS.map((flow, pipe) => 1 / pipes.slope(pipe, flow));
+    const diagonal = new Float64Array(this.rows);
+    const pressures = new Float64Array(this.rows);
+    const add = (values: Float64Array, node: number, value: number): void => {
+      const row = this.rowOf[node] as number;
+      if (row >= 0) values[row] = (values[row] as number) + value;
+    };
+    const fixed = (node: number): number => (this.rowOf[node] === -1 ? (fixedPressurePa[node] as number) : 0);
+    for (let pipe = 0; pipe < flowKgS.length; pipe++) {
+      const [start, end, ease] = [from[pipe] as number, to[pipe] as number, eases[pipe] as number];
+      add(diagonal, start, ease);
+      add(diagonal, end, ease);
+      add(pressures, start, ease * ((drops[pipe] as number) + fixed(end)));
+      add(pressures, end, ease * (fixed(start) - (drops[pipe] as number)));
+    }
+    const off = Float64Array.from(this.pipeOfEdge, (pipe) => -(eases[pipe] as number));
+    if (!this.system.solve(diagonal, off, pressures)) return undefined;
+    const at = (node: number): number => {
+      const row = this.rowOf[node] as number;
+      return row >= 0 ? (pressures[row] as number) : (fixedPressurePa[node] as number);
+    };
+    const lossPa = flowKgS.map((_, pipe) => at(from[pipe] as number) - at(to[pipe] as number));
+    const changes = lossPa.map((loss, pipe) => (loss - (drops[pipe] as number)) * (eases[pipe] as number));
+    return changes.every(Number.isFinite) ? { changes, lossPa } : undefined;
   }
 }
 
+interface Step {
+  /** By pipe; in balance. */
+  readonly changes: Float64Array;
+  /** Pressure lost along each pipe between the nodes' pressures. */
+  readonly lossPa: Float64Array;
+}
+
 /** How much of a step to go: as far as the potential falls, or nearly. Its slope rises all along the step. */
-function shareOfStep(
-  tree: CycleTree,
-  pipes: SpreadPipes,
-  chordKgS: Float64Array,
-  step: Float64Array,
-  slope: number,
-): number {
-  const slopeAt = (share: number): number =>
-    dot(tree.mismatches(tree.flows(chordKgS.map((flow, i) => flow + share * (step[i] as number))), pipes), step);
-  if (slopeAt(1) <= -0.1 * slope) return 1;
+function shareOfStep(pipes: SpreadPipes, flowKgS: Float64Array, { changes, lossPa }: Step): number {
+  const slopeAt = (share: number): number => {
+    let sum = 0;
+    for (let pipe = 0; pipe < flowKgS.length; pipe++) {
+      const change = changes[pipe] as number;
+      sum += (pipes.dropPa(pipe, (flowKgS[pipe] as number) + share * change) - (lossPa[pipe] as number)) * change;
+    }
+    return sum;
+  };
+  const slope = slopeAt(0);
+  if (slopeAt(1) <= -WHOLE_STEP_SHARE * slope) return 1;
   let [low, high] = [0, 1];
   for (let trial = 0; trial < LINE_TRIALS; trial++) {
     const middle = (low + high) / 2;
     const found = slopeAt(middle);
-    if (Math.abs(found) <= -0.3 * slope) return middle;
+    if (Math.abs(found) <= -SEARCHED_SHARE * slope) return middle;
     if (found < 0) low = middle;
     else high = middle;
   }
   return low > 0 ? low : high;
-}
-
-function dot(a: Float64Array, b: Float64Array): number {
-  let sum = 0;
-  for (let i = 0; i < a.length; i++) sum += (a[i] as number) * (b[i] as number);
-  return sum;
 }
 
 /** The jump at rest spread over a width of flow, so that there is a slope everywhere. */
@@ -121,7 +175,8 @@ class SpreadPipes {
     const root = Math.hypot(flow, this.widthKgS);
     const turning = ((ahead + back) / 2) * ((this.widthKgS / root) ** 2 / root);
     const shut = this.oneWay[pipe] === 1 && flow < 0 ? SHUT_PA / this.widthKgS : 0;
-    return turning + (linear[pipe] as number) + 2 * (square[pipe] as number) * Math.abs(flow) + shut;
+    // of a square law at rest as well, or a step from there would know no bounds
+    return turning + (linear[pipe] as number) + 2 * (square[pipe] as number) * root + shut;
   }
 
   /** Where lighter water stands on one side the jump may be the wrong way round: then there is none, but their mean. */
@@ -133,120 +188,30 @@ class SpreadPipes {
   }
 }
 
-/** One spanning tree, that of the start, and the cycle that each other pipe makes with it. */
-class CycleTree {
-  readonly chords: readonly number[];
-  /** By chord: pipes of its cycle, and whether the chord's flow runs with their arrows. */
-  private readonly cycles: readonly { readonly pipes: Int32Array; readonly signs: Int8Array }[];
-  private readonly baseKgS: Float64Array;
-  private readonly fixedPa: Float64Array;
-
-  constructor(
-    private readonly network: MeshNetwork,
-    inflowKgS: Float64Array,
-  ) {
-    const { from, startWayOut } = network;
-    const isWayOut = new Uint8Array(from.length);
-    for (const pipe of startWayOut) if (pipe >= 0) isWayOut[pipe] = 1;
-    const chords: number[] = [];
-    isWayOut.forEach((is, pipe) => {
-      if (is === 0) chords.push(pipe);
-    });
-    this.chords = chords;
-    this.baseKgS = treeFlows(network, inflowKgS);
-    const depth = new Int32Array(network.nodeCount);
-    for (let i = network.startOrder.length - 1; i >= 0; i--) {
-      const node = network.startOrder[i] as number;
-      if ((startWayOut[node] as number) >= 0) depth[node] = (depth[this.below(node)] as number) + 1;
-    }
-    this.fixedPa = new Float64Array(chords.length);
-    this.cycles = chords.map((chord, i) => this.cycleOf(chord, i, depth));
-  }
-
-  flows(chordKgS: Float64Array): Float64Array {
-    const flowKgS = this.baseKgS.slice();
-    this.cycles.forEach(({ pipes, signs }, i) => {
-      const flow = chordKgS[i] as number;
-      if (flow === 0) return;
-      for (let k = 0; k < pipes.length; k++) {
-        const pipe = pipes[k] as number;
-        flowKgS[pipe] = (flowKgS[pipe] as number) + (signs[k] as number) * flow;
-      }
-    });
-    return flowKgS;
-  }
-
-  /** Pressure lost around each cycle. */
-  mismatches(flowKgS: Float64Array, law: SpreadPipes): Float64Array {
-    const dropPa = flowKgS.map((flow, pipe) => law.dropPa(pipe, flow));
-    return Float64Array.from(this.cycles, ({ pipes, signs }, i) => {
-      let sum = this.fixedPa[i] as number;
-      for (let k = 0; k < pipes.length; k++) sum += (signs[k] as number) * (dropPa[pipes[k] as number] as number);
-      return sum;
-    });
-  }
-
-  /** d mismatch over d chord flow: what two cycles share. */
-  matrix(flowKgS: Float64Array, law: SpreadPipes): Float64Array {
-    const n = this.chords.length;
-    const slopes = flowKgS.map((flow, pipe) => law.slope(pipe, flow));
-    const matrix = new Float64Array(n * n);
-    const shared = new Float64Array(flowKgS.length);
-    this.cycles.forEach((cycle, column) => {
-      cycle.pipes.forEach((pipe, k) => (shared[pipe] = (cycle.signs[k] as number) * (slopes[pipe] as number)));
-      for (let row = 0; row <= column; row++) {
-        const { pipes, signs } = this.cycles[row] as (typeof this.cycles)[number];
-        let sum = 0;
-        for (let k = 0; k < pipes.length; k++) sum += (signs[k] as number) * (shared[pipes[k] as number] as number);
-        matrix[row * n + column] = sum;
-        matrix[column * n + row] = sum;
-      }
-      cycle.pipes.forEach((pipe) => (shared[pipe] = 0));
-    });
-    return matrix;
-  }
-
-  private below(node: number): number {
-    const { from, to, startWayOut } = this.network;
-    const pipe = startWayOut[node] as number;
-    return (from[pipe] === node ? to[pipe] : from[pipe]) as number;
-  }
-
-  /** The chord, down the ways out from its end, and back up to its start, as far as they do not share the way. */
-  private cycleOf(chord: number, index: number, depth: Int32Array): { pipes: Int32Array; signs: Int8Array } {
-    const { from, to, startWayOut, fixedPressurePa } = this.network;
-    const pipes = [chord];
-    const signs = [1];
-    let [start, end] = [from[chord] as number, to[chord] as number];
-    const isBottom = (node: number): boolean => (startWayOut[node] as number) < 0;
-    while (start !== end && !(isBottom(start) && isBottom(end))) {
-      const goesDown = isBottom(start) || (!isBottom(end) && (depth[end] as number) >= (depth[start] as number));
-      const node = goesDown ? end : start;
-      const pipe = startWayOut[node] as number;
-      const withFlow = from[pipe] === node ? 1 : -1;
-      pipes.push(pipe);
-      signs.push(goesDown ? withFlow : -withFlow);
-      if (goesDown) end = this.below(end);
-      else start = this.below(start);
-    }
-    if (start !== end) this.fixedPa[index] = (fixedPressurePa[end] as number) - (fixedPressurePa[start] as number);
-    return { pipes: Int32Array.from(pipes), signs: Int8Array.from(signs) };
-  }
-}
-
-/** Everything over the ways out of the start, nothing in any other pipe. */
-export function treeFlows(network: MeshNetwork, inflowKgS: Float64Array): Float64Array {
+/**
+ * Flows in balance: the ways out of the start carry what other pipes leave.
+ * @param otherKgS what those carry, by pipe; nothing by default
+ */
+export function treeFlows(network: MeshNetwork, inflowKgS: Float64Array, otherKgS?: Float64Array): Float64Array {
   const { from, startOrder, startWayOut, to } = network;
-  const flowKgS = new Float64Array(from.length);
+  const flowKgS = otherKgS?.slice() ?? new Float64Array(from.length);
   const passing = inflowKgS.slice();
+  const move = (node: number, flow: number): void => {
+    passing[node] = (passing[node] as number) + flow;
+  };
+  for (const pipe of startWayOut) if (pipe >= 0) flowKgS[pipe] = 0;
+  flowKgS.forEach((flow, pipe) => {
+    if (flow === 0) return;
+    move(from[pipe] as number, -flow);
+    move(to[pipe] as number, flow);
+  });
   for (const node of startOrder) {
     const pipe = startWayOut[node] as number;
     if (pipe < 0) continue;
     const withArrow = from[pipe] === node;
     const flow = passing[node] as number;
     flowKgS[pipe] = withArrow ? flow : -flow;
-    const next = (withArrow ? to[pipe] : from[pipe]) as number;
-    passing[next] = (passing[next] as number) + flow;
+    move((withArrow ? to[pipe] : from[pipe]) as number, flow);
   }
   return flowKgS;
 }

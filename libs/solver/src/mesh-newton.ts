@@ -32,10 +32,9 @@ const OVERSHOOT_SHARE = 0.3;
 const SHORTENINGS = 8;
 /** A way out is brought this near to standstill, after which another pipe is its node's way out and this one a chord. */
 const NEARLY_STOPPED = 0.9;
-/** The search ends after so many states without a better one. */
-const PATIENCE = 8;
-/** While polishing, a state must be better than the best by this factor to go on. */
-const POLISHING_GAIN = 0.5;
+/** The search ends after so many steps that have not brought the mismatch down by this factor; while polishing, after one. */
+const PATIENCE = 3;
+const GAIN = 0.5;
 
 /**
  * Closes every mesh: Newton's method on the flows of the chords, each step shortened where it overshoots.
@@ -53,19 +52,21 @@ export function closeMeshesByNewton(
   let state = evaluator.evaluate(startKgS, options.drains);
   let best = { state, ...worstOf(state) };
   let iterations = 1;
-  let sinceBest = 0;
-  while (iterations < options.maximumIterations && sinceBest < PATIENCE && options.isOver?.() !== true) {
+  let gainedFrom = best.worstPa;
+  let sinceGain = 0;
+  while (iterations < options.maximumIterations && sinceGain < PATIENCE && options.isOver?.() !== true) {
     slopes.update(state);
     const step = newtonStep(new MeshResponse(evaluator, state, slopes), state, options.stops);
     const closed = best.worstPa <= options.closedPa;
     if (step === undefined || (closed && largest(step.changes) <= options.flowShare * evaluator.scaleKgS)) break;
-    const next = shortened(evaluator, state, step, options, () => iterations++);
-    state = next;
+    state = shortened(evaluator, state, step, options, () => iterations++);
     const worst = worstOf(state);
-    sinceBest++;
-    if (worst.worstPa < best.worstPa * (closed ? POLISHING_GAIN : 1)) sinceBest = 0;
-    else if (closed) break;
     if (worst.worstPa < best.worstPa) best = { state, ...worst };
+    sinceGain++;
+    if (best.worstPa <= GAIN * gainedFrom) {
+      gainedFrom = best.worstPa;
+      sinceGain = 0;
+    } else if (closed) break;
   }
   return { ...best, iterations, converged: best.worstPa <= options.closedPa };
 }

@@ -1,4 +1,4 @@
-import { divideFlow, type RisingPipes } from './mesh-division';
+import { FlowDivider, type RisingPipes } from './mesh-division';
 import { closeMeshesByNewton, type MeshSolution } from './mesh-newton';
 import { SlopeKeeper } from './mesh-slopes';
 import type { MeshEvaluator, MeshState, VesselDrains } from './mesh-state';
@@ -13,26 +13,40 @@ const ACCEPTED_PA = 0.9 * MESH_CLOSED_PA;
 const POLISHED_SHARE = 1e-9;
 /** Each time Newton's method is tried it may take so many states. */
 const NEWTON_STATES = 30;
-const MAXIMUM_ROUNDS = 12;
+const MAXIMUM_ROUNDS = 30;
+/** After so many a search may be found to stall. */
+const ROUNDS_TO_STALL = 4;
 /** From here on a round goes only half of its way, for networks that swing. */
-const CALMER_ROUNDS = 4;
+const CALMER_ROUNDS = 6;
 /** Above this the pressure of a pipe counts as jumping as its flow turns. */
 const JUMP_PA = 1e-3;
+
+export interface SearchOptions {
+  /** Whether to be content with the best so far. */
+  readonly isOver: () => boolean;
+  /** Flows to begin with; by default a first division is made. */
+  readonly startKgS?: Float64Array;
+  /** A search that has come this near and goes on no better is ended. */
+  readonly stallsBelowPa: number;
+}
 
 /**
  * Finds the division of the flow that closes every mesh.
  * In rounds: pipes that rise with their flow and have the value and slope of the true ones at the present flows are divided, which
  * always succeeds; from there Newton's method with the true pipes closes the meshes, or does not, and the next round begins.
- * @param isOver whether to be content with the best so far
  */
-export function searchDivision(evaluator: MeshEvaluator, isOver: () => boolean): MeshSolution {
+export function searchDivision(
+  evaluator: MeshEvaluator,
+  { isOver, startKgS, stallsBelowPa }: SearchOptions,
+): MeshSolution {
   const { network, scaleKgS } = evaluator;
   const rough = risingPipes(evaluator);
   const stops = network.oneWay.map((oneWay, pipe) => {
     const jumpPa = (rough.staticWithArrowPa[pipe] as number) + (rough.staticAgainstArrowPa[pipe] as number);
     return oneWay === 1 || jumpPa > JUMP_PA ? 1 : 0;
   });
-  let flowKgS = divideFlow(network, rough, network.inflowKgS, scaleKgS);
+  const divider = new FlowDivider(network, scaleKgS, isOver);
+  let flowKgS = startKgS ?? divider.divide(rough, network.inflowKgS);
   let drains: VesselDrains | undefined;
   let best: MeshSolution | undefined;
   let iterations = 0;
@@ -41,13 +55,14 @@ export function searchDivision(evaluator: MeshEvaluator, isOver: () => boolean):
     const solution = closeMeshesByNewton(evaluator, flowKgS, { ...options, drains });
     iterations += solution.iterations;
     if (best === undefined || solution.converged || solution.worstPa < best.worstPa) best = solution;
-    if (solution.converged || round === MAXIMUM_ROUNDS || isOver()) {
+    const stalls = round >= ROUNDS_TO_STALL && best.worstPa < stallsBelowPa;
+    if (solution.converged || stalls || round === MAXIMUM_ROUNDS || isOver()) {
       return { ...best, iterations, converged: best.worstPa <= ACCEPTED_PA };
     }
     const state = evaluator.evaluate(flowKgS, drains);
     drains = state.drains;
     refit(rough, evaluator, state);
-    const next = divideFlow(network, rough, withDrains(evaluator, state), scaleKgS, state.flowKgS);
+    const next = divider.divide(rough, withDrains(evaluator, state), state.flowKgS);
     flowKgS = round < CALMER_ROUNDS ? next : next.map((flow, pipe) => (flow + (state.flowKgS[pipe] as number)) / 2);
   }
 }
