@@ -26,6 +26,9 @@ test('no axe findings on any page, in both themes', async ({ page }) => {
     `${network}/ledger?element=TR5`,
     `${network}/cases?case=rt5open`,
     `${network}/cases?show=compare`,
+    `${network}/drawing?element=TE1`,
+    `${network}/method`,
+    `${network}/method#check-stall`,
     `${network}/drawing?case=worst&element=TR5`,
     `${network}/lists?case=worst`,
     empty.replace('/drawing', '/cases'),
@@ -50,6 +53,7 @@ test('no page is wider than a phone', async ({ page }) => {
       `${network}/ledger?element=TR5`,
       `${network}/cases?case=rt5open`,
       `${network}/cases?show=compare`,
+      `${network}/method`,
     ]) {
       await page.goto(path);
       await page.waitForLoadState('networkidle');

@@ -89,6 +89,9 @@ function screens({ siteId, networkId, elements }, empty) {
     { name: 'drawing-empty', path: `/sites/${siteId}/networks/${empty}/drawing` },
     { name: 'lists', path: `${network}/lists`, solved: true },
     { name: 'ledger', path: `${network}/ledger?element=${elements.trap}`, solved: true },
+    { name: 'drawing-exchanger', path: `${network}/drawing?element=${elements.exchanger}`, solved: true },
+    { name: 'method', path: `${network}/method` },
+    { name: 'method-section', path: `${network}/method#friction-friedel` },
     { name: 'cases', path: `${network}/cases?case=rt5open`, solved: true },
     { name: 'cases-compare', path: `${network}/cases?show=compare`, solved: true },
     { name: 'drawing-worst', path: `${network}/drawing?case=worst&element=${elements.trap}`, solved: true },
@@ -105,6 +108,7 @@ async function demoNetwork(context) {
     networkId: network.id,
     elements: {
       trap: file.nodes.find(({ tag }) => tag === 'BL-2').id,
+      exchanger: file.nodes.find(({ service }) => service?.kind === 'modulating').id,
       pipe: file.pipes.find(({ route }) => route !== undefined).id,
     },
   };

@@ -25,11 +25,12 @@ import { NetworkStore } from '../networks/network-store';
 import { Formula } from './formula/formula';
 import { METHOD_GROUPS, SUBSCRIPTS, SYMBOLS } from './method-pages';
 import type { MethodSection } from './method-section';
+import { MethodText } from './method-text';
 
 /** Method: the equations, ranges, sources and limits of all that is computed, and which of it this network uses. */
 @Component({
   selector: 'app-method-page',
-  imports: [Formula, MatButton, RouterLink],
+  imports: [Formula, MatButton, MethodText, RouterLink],
   changeDetection: ChangeDetectionStrategy.OnPush,
   templateUrl: './method-page.html',
   styleUrl: './method-page.scss',
@@ -41,6 +42,8 @@ export class MethodPage {
   private readonly article = viewChild.required<ElementRef<HTMLElement>>('article');
   private readonly contents = viewChild.required<ElementRef<HTMLDetailsElement>>('contents');
 
+  /** Under this width the contents lie above the text, and are closed until they are asked for. */
+  protected readonly narrow = globalThis.innerWidth < 960;
   protected readonly symbols = SYMBOLS;
   protected readonly subscripts = SUBSCRIPTS;
   protected readonly groups = computed(() => {
@@ -100,9 +103,9 @@ export class MethodPage {
     });
   }
 
-  /** On a phone the contents lie over the text until one is chosen. */
+  /** Where the contents lie above the text, they make room for what was chosen. */
   protected closeContents(): void {
-    if (globalThis.matchMedia('(width < 960px)').matches) this.contents().nativeElement.open = false;
+    if (globalThis.innerWidth < 960) this.contents().nativeElement.open = false;
   }
 
   protected print(): void {

@@ -5,6 +5,22 @@ import { LIMIT_WORDS, limitGroups } from '../networks/limit-rows';
 import { methodSectionId } from '../networks/method-words';
 import { formulaTree } from './formula/formula-tree';
 import { METHOD_SECTIONS } from './method-pages';
+import type { MethodSection } from './method-section';
+
+/** Its equations, letters, and what stands between backquotes in its text. */
+function formulasOf(section: MethodSection): string[] {
+  const { equations = [], symbols = [], notes = [], table, summary, range, limits } = section;
+  const texts = [
+    summary,
+    range,
+    ...limits,
+    ...notes,
+    ...symbols.map(([, meaning]) => meaning),
+    ...(table?.rows.flat() ?? []),
+  ];
+  const inline = texts.flatMap((text) => text.split('`').filter((_, i) => i % 2 === 1));
+  return [...equations, ...symbols.flatMap(([symbol]) => symbol.split(', ')), ...inline];
+}
 
 const ids = METHOD_SECTIONS.map(({ id }) => id);
 
@@ -29,8 +45,7 @@ describe('METHOD_SECTIONS', () => {
     expect(section.limits.length).toBeGreaterThan(0);
     // a check's limits bring their own sources
     expect(section.sources.length + limits.length).toBeGreaterThan(0);
-    for (const text of [...(section.equations ?? []), ...(section.symbols ?? []).map(([symbol]) => symbol)])
-      expect(() => formulaTree(text)).not.toThrow();
+    for (const text of formulasOf(section)) expect(() => formulaTree(text)).not.toThrow();
     if (section.choice) expect(section.id).toBe(methodSectionId(section.choice.key, section.choice.value));
   });
 

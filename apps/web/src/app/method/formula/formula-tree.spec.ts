@@ -34,6 +34,11 @@ describe('formulaTree', () => {
     ['Re^−0.2', 'Re^{−0.2}'],
     ['11,310.297 Pa', '11,310.297 Pa'],
     ['f(a, 5)', 'f(a, 5)'],
+    ['f(a)/f(b)', '<f(a) over f(b)>'],
+    ['ln(2 r)/ln 4', '<ln(2 r) over ln 4>'],
+    ['g cos β + 1', 'g cos β + 1'],
+    ['V (d + 1)/2', 'V <d + 1 over 2>'],
+    ['3.33/C0 − v_g′', '<3.33 over C0> − v_{g}^{′}'],
     ['"sizing factor" · m', 'sizing factor · m'],
   ])('reads %s', (text, expected) => {
     expect(shape(formulaTree(text))).toBe(expected);

@@ -15,11 +15,14 @@ export type FormulaNode =
     };
 
 const PAIRS: Readonly<Record<string, string>> = { '(': ')', '[': ']', '{': '}' };
-const RAISED: Readonly<Record<string, string>> = { '²': '2', '³': '3', '⁴': '4' };
+const RAISED: Readonly<Record<string, string>> = { '²': '2', '³': '3', '⁴': '4', '′': '′' };
 const LOWERED: Readonly<Record<string, string>> = Object.fromEntries(
   [...'₀₁₂₃₄₅₆₇₈₉'].map((digit, i) => [digit, String(i)]),
 );
-const TOKEN = /\s+|"[^"]*"|\d{1,3}(?:,\d{3})+(?:\.\d+)?|\d+(?:\.\d+)?(?:e[−-]?\d+)?|[A-Za-zÀ-ɏͰ-Ͽ]+′*|./gu;
+/** Functions that take the next factor without brackets. */
+const WORDED: ReadonlySet<string> = new Set(['ln', 'log', 'sin', 'cos']);
+const TOKEN =
+  /\s+|"[^"]*"|\d{1,3}(?:,\d{3})+(?:\.\d+)?|\d+(?:\.\d+)?(?:e[−-]?\d+)?|[A-Za-zÀ-ɏͰ-Ͽ][A-Za-zÀ-ɏͰ-Ͽ\d]*|./gu;
 
 /**
  * Takes apart an equation as the pages in docs/methods write it: `_` and `^` for what stands below and above, `√`, `/` for a
@@ -91,7 +94,17 @@ class FormulaReader {
       else if (raised !== undefined) above = { kind: 'number', text: raised };
       else if (lowered !== undefined) below = lowerDigit(below, lowered);
     }
-    return below === null && above === null ? base : { kind: 'script', base, below, above };
+    const factor: FormulaNode = below === null && above === null ? base : { kind: 'script', base, below, above };
+    return base.kind === 'name' ? this.applied(factor, base.text) : factor;
+  }
+
+  /** A name with what it is applied to: brackets close behind it, or, for `ln` and its like, the next factor. */
+  private applied(name: FormulaNode, text: string): FormulaNode {
+    const next = this.tokens[this.at] ?? '';
+    if (next === '(' || next === '[') return { kind: 'row', items: [name, this.atom()] };
+    if (!WORDED.has(text) || next.trim() !== '' || this.tokens[this.at + 1] === undefined) return name;
+    this.at += 1;
+    return { kind: 'row', items: [name, { kind: 'gap' }, this.factor()] };
   }
 
   /** What stands above or below: an atom, or a minus and an atom. */

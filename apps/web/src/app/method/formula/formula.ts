@@ -1,4 +1,13 @@
-import { ChangeDetectionStrategy, Component, DOCUMENT, effect, ElementRef, inject, input } from '@angular/core';
+import {
+  ChangeDetectionStrategy,
+  Component,
+  DOCUMENT,
+  effect,
+  ElementRef,
+  inject,
+  input,
+  ViewEncapsulation,
+} from '@angular/core';
 import { type FormulaNode, formulaTree, linePieces } from './formula-tree';
 
 const MATHML = 'http://www.w3.org/1998/Math/MathML';
@@ -12,6 +21,8 @@ const MATHML = 'http://www.w3.org/1998/Math/MathML';
   changeDetection: ChangeDetectionStrategy.OnPush,
   template: '',
   styleUrl: './formula.scss',
+  // what is built node by node carries none of the attributes that encapsulated styles look for
+  encapsulation: ViewEncapsulation.None,
   host: { '[class.block]': 'block()' },
 })
 export class Formula {
@@ -27,7 +38,9 @@ export class Formula {
     effect(() => {
       const tree = formulaTree(this.text());
       const pieces = this.block() ? linePieces(tree) : [tree];
-      this.host.nativeElement.replaceChildren(...pieces.flatMap((piece) => [this.math(piece), ' ']));
+      this.host.nativeElement.replaceChildren(
+        ...pieces.flatMap((piece, i) => (i === 0 ? [this.math(piece)] : [' ', this.math(piece)])),
+      );
     });
   }
 

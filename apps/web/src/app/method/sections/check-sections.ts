@@ -60,7 +60,7 @@ const AT_TRAPS: readonly Check[] = [
     equations: ['φ_stall = (T_b − T_2)/(T_s − T_2)', 'φ_stall = LMTD(T_b)/LMTD(T_s)'],
     symbols: [['T_b', 'boiling temperature at the back pressure']],
     range:
-      'Traps of modulating service; the first is for varying inlet, the second for varying flow. 0 where T_b is not above T_2.',
+      'Traps of modulating service; the first is for varying inlet, the second for varying flow. 0 where `T_b` is not above `T_2`.',
     limits: [
       'Constant coefficient of heat transfer, no subcooling in the exchanger.',
       'The back pressure is that of the case; it does not fall along the curve with this trap’s load.',

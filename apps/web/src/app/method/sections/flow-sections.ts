@@ -20,7 +20,7 @@ export const FLOW_SECTIONS: readonly MethodSection[] = [
       ['x′', 'change of the flash share with pressure along the boiling line, at constant enthalpy'],
     ],
     notes: [
-      'It chokes where the bracket is 0. By the flash method the vapour alone counts: 1 + (x G)² v_g′. The jump at a choked outlet is counted as flash.',
+      'It chokes where the bracket is 0. By the flash method the vapour alone counts: `1 + (x G)² v_g′`. The jump at a choked outlet is counted as flash.',
     ],
     range: 'Phases in equilibrium: pipes of many bores’ length.',
     limits: ['Short pipes and orifices flash late and pass more.'],
@@ -33,12 +33,12 @@ export const FLOW_SECTIONS: readonly MethodSection[] = [
     title: 'Patterns in level runs',
     summary: `Stratified smooth or wavy, intermittent, annular, or dispersed bubbles, from the level of the stratified balance; within ${LEVEL_DEG}° of level.`,
     equations: ['K² = Re_ls ρ_g j_g²/((ρ_l − ρ_g) g D cos β)'],
-    symbols: [['K', 'waves form where it reaches 2/(√ũ (u_g/j_g) √0.01)']],
+    symbols: [['K', 'waves form where it reaches `2/(√ũ (u_g/j_g) √0.01)`']],
     table: {
       head: ['Pattern', 'Where'],
       rows: [
-        ['stratified', 'r_A below 1; wavy above the bound of K'],
-        ['annular', 'r_A at 1 or above and the level below half the bore'],
+        ['stratified', '`r_A` below 1; wavy above the bound of `K`'],
+        ['annular', '`r_A` at 1 or above and the level below half the bore'],
         ['dispersed bubble', 'above that, where turbulence outweighs buoyancy'],
         ['intermittent', 'else'],
       ],
@@ -65,10 +65,12 @@ export const FLOW_SECTIONS: readonly MethodSection[] = [
     symbols: [
       ['d', 'difference of the densities'],
       ['j', 'both superficial velocities together'],
-      ['V', '√(d g D/ρ_l)'],
+      ['V', '`√(d g D/ρ_l)`'],
       ['a_m', 'void fraction at which slugs break up into churn'],
     ],
-    notes: ['The first is bubbly flow, the second annular; between them churn above a_m, slug below.'],
+    notes: [
+      'The first is bubbly flow, the second annular; between them churn with a above `a_m`, slug below, where `a = j_g/(C0 j + 0.35 V)` and `C0 = 1.2 − 0.2 √(ρ_g/ρ_l)`.',
+    ],
     range: `Rises steeper than ${LEVEL_DEG}°.`,
     limits: ['Made for upright pipes; used for every steep rise.'],
     sources: ['Mishima & Ishii, Int. J. Heat Mass Transfer 27 (1984) 723-737'],
@@ -120,7 +122,7 @@ export const FLOW_SECTIONS: readonly MethodSection[] = [
     id: 'coincidence-ownPeak',
     title: 'Each at its own peak',
     summary:
-      'For each intermittent trap its walk is computed with that trap at its load times its peak factor F, and all others at their load.',
+      'For each intermittent trap its walk is computed with that trap at its load times its peak factor `F`, and all others at their load.',
     equations: ['m′ = m + (F − 1) m_i'],
     range: 'Networks with intermittent traps; where there are loops the whole network is solved for each.',
     limits: [
@@ -136,7 +138,7 @@ export const FLOW_SECTIONS: readonly MethodSection[] = [
     id: 'coincidence-probable',
     title: 'Own peak and probable others',
     summary:
-      'For each trap its own peak, with its batch, and in every pipe of its walk what the other intermittent traps upstream give together in 95 of 100 moments: each at its peak for one part in F of the time and nothing else, independently, but traps of one batch together.',
+      'For each trap its own peak, with its batch, and in every pipe of its walk what the other intermittent traps upstream give together in 95 of 100 moments: each at its peak for one part in `F` of the time and nothing else, independently, but traps of one batch together.',
     equations: ['m′ = m + ("own batch: peak − average") + max(0, Q₉₅("others") − "average of others")'],
     range:
       'Trees; refused in loops. Counted out exactly for up to 16 sources; of more the 16 largest, the rest as normally distributed.',

@@ -42,7 +42,7 @@ export const FRICTION_SECTIONS: readonly MethodSection[] = [
     title: 'Liquid or steam alone',
     summary: 'Darcy and Weisbach, with the factor for smooth and rough pipes and every flow from laminar up.',
     equations: ['−dp/ds = (f/D + K/L) ρv²/2', '1/√f = −2 log₁₀[ k/3.7 + 2.51/(Re √f) ]'],
-    symbols: [['k', 'roughness over bore, ε/D']],
+    symbols: [['k', 'roughness over bore, `ε/D`']],
     table: {
       head: ['Re', 'Darcy factor f'],
       rows: [
@@ -68,7 +68,7 @@ export const FRICTION_SECTIONS: readonly MethodSection[] = [
     equations: ['Δp = K ρv²/2', 'K = (L/D) f_T'],
     table: { head: ['Fitting', 'Loss', 'Source'], rows: fittingRows() },
     notes: [
-      'Liquid and steam together, by the full-bore methods: K on the velocity head of the mixture without slip, K G²/(2 ρ_l) · [1 + x (ρ_l/ρ_g − 1)].',
+      'Liquid and steam together, by the full-bore methods: K on the velocity head of the mixture without slip, `K G²/(2 ρ_l) · [1 + x (ρ_l/ρ_g − 1)]`.',
     ],
     range: 'Printed for 1/2 to 24 in; valves fully open and full bore.',
     limits: [
@@ -89,7 +89,7 @@ export const FRICTION_SECTIONS: readonly MethodSection[] = [
       ['L(m)', 'gradient of m as saturated liquid alone, fittings included'],
       [
         'w',
-        `share that still runs full: (1 − x/${printed(DRAINING_QUALITY)})² for 0 < x < ${printed(DRAINING_QUALITY)}, above that 0`,
+        `share that still runs full: \`(1 − x/${printed(DRAINING_QUALITY)})²\` for x from 0 to ${printed(DRAINING_QUALITY)}, above that 0`,
       ],
       ['i', `fall per length, at least 1:${printed(1 / LEAST_PITCH)} in level and falling runs, 0 in rises`],
     ],
@@ -110,7 +110,7 @@ export const FRICTION_SECTIONS: readonly MethodSection[] = [
     equations: ['−dp/ds = (f/D + K/L) G²/(2 ρ_h)', '1/ρ_h = x/ρ_g + (1 − x)/ρ_l', '1/μ = x/μ_g + (1 − x)/μ_l'],
     symbols: [
       ['ρ_h', 'density of the mixture without slip'],
-      ['f', 'factor at Re = G D/μ'],
+      ['f', 'factor at `Re = G D/μ`'],
     ],
     range: `Full bore, bubbles or mist, high mass flux. ${BELOW_LINE}`,
     limits: [
@@ -205,14 +205,14 @@ export const FRICTION_SECTIONS: readonly MethodSection[] = [
     ],
     symbols: [
       ['h', 'level of the liquid over the bore, the lowest that balances'],
-      ['A_k, S_k', 'cross-section and wetted wall of each phase; S_i the surface between them'],
-      ['τ_k', 'shear of each phase at its wall, f_k ρ_k u_k²/8, and of the steam on the surface'],
+      ['A_k, S_k', 'cross-section and wetted wall of each phase; `S_i` the surface between them'],
+      ['τ_k', 'shear of each phase at its wall, `f_k ρ_k u_k²/8`, and of the steam on the surface'],
       ['r_A', 'how far the flow is from leaving stratified flow: it leaves at 1'],
-      ['S', '3 t² − 2 t³ between 0 and 1'],
+      ['S(t)', '`3 t² − 2 t³` between 0 and 1'],
     ],
     range: 'Falls up to 10° as stratified; rises, steeper falls and liquid by the full-bore figure.',
     limits: [
-      'The blend runs over r_A from 0.5 to 2 and is this program’s own.',
+      'The blend runs over `r_A` from 0.5 to 2 and is this program’s own.',
       'In wet steep falls the gradient rises quickly over a third more load, though without a jump.',
       'Waves on the liquid are shown only in the credible band.',
     ],

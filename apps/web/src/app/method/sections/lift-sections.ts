@@ -32,7 +32,7 @@ export const LIFT_SECTIONS: readonly MethodSection[] = [
   {
     id: 'staticLift-twoPhase',
     title: 'Two-phase risers',
-    summary: 'Each metre of rise carries the mixture, with as much liquid as the void fraction α leaves in the bore:',
+    summary: 'Each metre of rise carries the mixture, with as much liquid as the void fraction `α` leaves in the bore:',
     equations: ['(α ρ_g + (1 − α) ρ_l) g'],
     range: 'Rises with flash steam that flows steadily.',
     limits: [

@@ -69,7 +69,7 @@ export const NETWORK_SECTIONS: readonly MethodSection[] = [
     id: 'modulating-inlet',
     title: 'Steam space behind a control valve',
     summary:
-      'Behind a control valve the steam space follows the load. Its temperature is the one at which the exchanger gives just the load’s share φ of its full duty.',
+      'Behind a control valve the steam space follows the load. Its temperature is the one at which the exchanger gives just the load’s share `φ` of its full duty.',
     equations: ['p = p_sat(T_2 + φ (T_s − T_2))', 'LMTD(T) = (T_2 − T_1)/ln[(T − T_1)/(T − T_2)]'],
     symbols: [
       ['T_1', 'temperature of the secondary fluid where it enters'],
@@ -77,9 +77,9 @@ export const NETWORK_SECTIONS: readonly MethodSection[] = [
       ['T_s', 'boiling temperature of the steam at full load'],
     ],
     notes: [
-      'The first equation is for constant secondary flow and varying inlet. For varying flow the pressure is that at which LMTD = φ LMTD(T_s).',
+      'The first equation is for constant secondary flow and varying inlet. For varying flow the pressure is that at which the mean temperature difference is `φ LMTD(T_s)`.',
     ],
-    range: 'φ from 0 to 1; from full load up the valve stands open.',
+    range: '`φ` from 0 to 1; from full load up the valve stands open.',
     limits: [
       'The coefficient of heat transfer is taken as constant, and an exchanger that floods is not followed further.',
     ],
@@ -103,7 +103,7 @@ export const NETWORK_SECTIONS: readonly MethodSection[] = [
       ['r', 'back pressure over inlet pressure, both absolute'],
     ],
     notes: [
-      `Choked up to r = ${printed(CHOKED_PRESSURE_RATIO, 3)}; above that the flow falls with G at r over G at the limit.`,
+      `Choked up to \`r = ${printed(CHOKED_PRESSURE_RATIO, 3)}\`; above that the flow falls as \`G\` at \`r\` does from \`G\` at that limit, with Zeuner’s exponent \`n\` for dry saturated steam.`,
     ],
     range: 'Saturated steam; an orifice diameter of the trap model or of the case is needed.',
     limits: [

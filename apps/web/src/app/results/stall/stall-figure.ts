@@ -4,7 +4,7 @@ import { niceTicks } from '../nice-ticks';
 import type { StallFacts } from './stall-facts';
 
 /** The figure's own measures, px at full size. */
-export const STALL = { width: 332, height: 190, left: 44, right: 322, top: 20, bottom: 152 } as const;
+export const STALL = { width: 332, height: 190, left: 44, right: 308, top: 20, bottom: 152 } as const;
 /** Load fractions that the table beside the figure gives. */
 const TABLE_LOADS = [0, 0.25, 0.5, 0.75, 1] as const;
 
@@ -26,6 +26,8 @@ export interface StallFigure {
   readonly loadTicks: readonly Tick[];
   readonly backY: number;
   readonly back: string;
+  /** Above its line where there is room. */
+  readonly backLabelY: number;
   /** Where the steam space falls to the back pressure; null where it does not between no load and full load. */
   readonly stall: { readonly x: number; readonly text: string } | null;
   /** From no load to the stall load: where nothing drives the condensate out. */
@@ -61,6 +63,7 @@ export function stallFigure({ curve, loadFraction }: StallFacts, units: DisplayU
     loadTicks: TABLE_LOADS.map((load) => ({ at: x(load), text: share(load) })),
     backY: y(shown(backPressurePa)),
     back: pressure(backPressurePa),
+    backLabelY: y(shown(backPressurePa)) + (y(shown(backPressurePa)) - STALL.top < 16 ? 14 : -5),
     stall: within ? { x: x(stallFraction), text: share(stallFraction) } : null,
     stalledWidth: x(stallFraction) - STALL.left,
     load: { x: x(loadFraction), y: y(shown(at(loadFraction))), stalled },
