@@ -51,7 +51,7 @@ function reversed({ result, checkValve }: PipeUnderCheck): SolveWarning | undefi
     const text = say`The only way to the receiver is against the check valve in this pipe: nothing behind it can drain.`;
     return { ...warning, verdict: 'fail', ...findingWords(text, say`Turn the pipe’s ends round, or the check valve.`) };
   }
-  const text = say`The flow runs against the arrow, since that is the only way to the receiver; a check valve or a pitch laid by the arrow would be the wrong way round.`;
+  const text = say`The flow runs against the arrow, for that is the way the pressures drive it; a check valve or a pitch laid by the arrow would be the wrong way round.`;
   return { ...warning, verdict: 'watch', ...findingWords(text, say`Turn the pipe’s ends round.`) };
 }
 
