@@ -93,21 +93,17 @@ export class Pressures {
   private judgeStill(pipe: number): void {
     const { from, to, oneWay } = this.evaluator.network;
     const { wayOut, pressurePa, direction, mismatchPa } = this.state;
-    const [start, end] = [from[pipe] as number, to[pipe] as number];
-    for (const [node, sign] of [
-      [start, 1],
-      [end, -1],
-    ] as const) {
-      if (wayOut[node] === pipe) {
-        direction[pipe] = sign;
-        return;
-      }
+    const ends = [
+      { node: from[pipe] as number, sign: 1 },
+      { node: to[pipe] as number, sign: -1 },
+    ];
+    const stoodOn = ends.find(({ node }) => wayOut[node] === pipe);
+    if (stoodOn !== undefined) {
+      direction[pipe] = stoodOn.sign;
+      return;
     }
     let least = -HELD_PA;
-    for (const [node, sign] of [
-      [start, 1],
-      [end, -1],
-    ] as const) {
+    for (const { node, sign } of ends) {
       if (sign < 0 && oneWay[pipe] === 1) continue;
       const mismatch = this.inletPa(pipe, node, this.creepKgS) - (pressurePa[node] as number);
       if (!(mismatch < least)) continue;

@@ -82,19 +82,17 @@ function refit(rising: RisingPipes, evaluator: MeshEvaluator, state: MeshState):
   const { network, law } = evaluator;
   const slopes = new SlopeKeeper(evaluator);
   slopes.update(state);
+  const failed = new Set(state.failed);
   for (let pipe = 0; pipe < network.from.length; pipe++) {
     const flow = Math.abs(state.flowKgS[pipe] as number);
-    const statics = state.direction[pipe] === 1 ? rising.staticWithArrowPa : rising.staticAgainstArrowPa;
-    const atRest = state.direction[pipe] === 1 ? law.rough.staticWithArrowPa : law.rough.staticAgainstArrowPa;
-    if (flow === 0 || state.failed.includes(pipe)) continue;
-    const [up, down] = (state.direction[pipe] === 1 ? [network.from, network.to] : [network.to, network.from]) as [
-      Int32Array,
-      Int32Array,
-    ];
-    const dropPa =
-      (state.pressurePa[up[pipe] as number] as number) +
-      (state.mismatchPa[pipe] as number) -
-      (state.pressurePa[down[pipe] as number] as number);
+    if (flow === 0 || failed.has(pipe)) continue;
+    const withArrow = state.direction[pipe] === 1;
+    const statics = withArrow ? rising.staticWithArrowPa : rising.staticAgainstArrowPa;
+    const atRest = withArrow ? law.rough.staticWithArrowPa : law.rough.staticAgainstArrowPa;
+    const inlet = (withArrow ? network.from : network.to)[pipe] as number;
+    const outlet = (withArrow ? network.to : network.from)[pipe] as number;
+    const inletPa = (state.pressurePa[inlet] as number) + (state.mismatchPa[pipe] as number);
+    const dropPa = inletPa - (state.pressurePa[outlet] as number);
     const slope = Math.max(0, slopes.perFlow[pipe] as number);
     // a riser that grows lighter as it flows stands higher at rest than it flows: then it is fitted where it is
     const movingPa = Math.max(dropPa - (atRest[pipe] as number), (slope * flow) / 2);

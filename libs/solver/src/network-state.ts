@@ -1,12 +1,14 @@
-import type { NetworkFile } from '@riseback/network';
+import type { NetworkFile, PipeRun } from '@riseback/network';
+import { NoConvergenceError } from '@riseback/numerics';
 import { closeMeshes, FlowCannotLeaveError, type ClosedMeshes } from './close-meshes';
 import { ElementFailure } from './element-failure';
 import { flowAndEnergy, type ChordFlows, type FlowAndEnergy } from './flow-and-energy';
+import { MESH_CLOSED_PA } from './mesh-search';
 import type { OperatingNode } from './operating-case';
 import type { PipeGeometry } from './pipe-geometry';
 import type { MarchOptions } from './pipe-march';
 import { pressureWalk, type PressureWalk } from './pressure-walk';
-import type { ReturnTree } from './return-tree';
+import { inletNode, type ReturnTree } from './return-tree';
 
 /** What stays the same however often a network is solved: in other cases, with other loads, by other methods. */
 export interface PreparedNetwork {
@@ -38,7 +40,21 @@ export function networkState(
   const { file, geometries, ambientEnthalpyJKg } = prepared;
   const { tree, chordFlows, iterations, march } = directed(prepared, nodes, asked);
   const flows = { ...flowAndEnergy(tree, nodes, geometries, ambientEnthalpyJKg, chordFlows), ambientEnthalpyJKg };
-  return { tree, flows, walk: pressureWalk(file, tree, nodes, geometries, flows, march), iterations };
+  const walk = pressureWalk(file, tree, nodes, geometries, flows, march);
+  proveClosed(file, { tree, flows, walk, iterations });
+  return { tree, flows, walk, iterations };
+}
+
+/** The last walk is marched anew: what it gives is what is handed out, so that is where meshes have to be closed. */
+function proveClosed({ pipes }: NetworkFile, { tree, flows, walk, iterations }: NetworkState): void {
+  for (const chord of tree.chords) {
+    if (flows.pipeFlowKgS[chord] === 0) continue;
+    const nodePa = walk.pressurePa[inletNode(tree, chord)] as number;
+    const openPa = Math.abs((walk.marched[chord]?.upstreamPressurePa ?? NaN) - nodePa);
+    if (openPa <= MESH_CLOSED_PA) continue;
+    const reason = new NoConvergenceError('the mesh that this pipe closes', iterations, openPa);
+    throw new ElementFailure((pipes[chord] as PipeRun).id, `/pipes/${chord}`, reason);
+  }
 }
 
 function directed(
