@@ -24,30 +24,34 @@ describe.each([
   ['as plants have them', USUAL],
   ['of extreme sizes and loads', EXTREME],
 ] as const)('random networks with several ways down, %s', (_name, reach) => {
-  it('close every mesh and balance every node, or are refused by name; none hangs, none answers NaN', () => {
-    let solved = 0;
-    fc.assert(
-      fc.property(loopedNetworks(reach), (file) => {
-        const start = performance.now();
-        const outcome = solveNetwork(file, { partial: false });
-        expect(performance.now() - start).toBeLessThan(LONGEST_MS);
-        if (isRefusal(outcome) || !outcome.converged) {
-          const { problem } = outcome;
-          expect(PROBLEMS).toContain(problem?.type);
-          expect(problem?.errors[0]?.pointer).toMatch(/^\/(nodes|pipes)\/\d+/);
-          return;
-        }
-        solved++;
-        expect(JSON.stringify(outcome)).not.toContain('null');
-        expectClosed(file, outcome);
-        expectBalanced(file, outcome);
-        expectLargestOutflows(file, outcome);
-      }),
-      { numRuns: RUNS, seed: SEED },
-    );
-    // most of them: else the rest would say little
-    expect(solved).toBeGreaterThan(RUNS * 0.6);
-  }, TIMEOUT_MS);
+  it(
+    'close every mesh and balance every node, or are refused by name; none hangs, none answers NaN',
+    () => {
+      let solved = 0;
+      fc.assert(
+        fc.property(loopedNetworks(reach), (file) => {
+          const start = performance.now();
+          const outcome = solveNetwork(file, { partial: false });
+          expect(performance.now() - start).toBeLessThan(LONGEST_MS);
+          if (isRefusal(outcome) || !outcome.converged) {
+            const { problem } = outcome;
+            expect(PROBLEMS).toContain(problem?.type);
+            expect(problem?.errors[0]?.pointer).toMatch(/^\/(nodes|pipes)\/\d+/);
+            return;
+          }
+          solved++;
+          expect(JSON.stringify(outcome)).not.toContain('null');
+          expectClosed(file, outcome);
+          expectBalanced(file, outcome);
+          expectLargestOutflows(file, outcome);
+        }),
+        { numRuns: RUNS, seed: SEED },
+      );
+      // most of them: else the rest would say little
+      expect(solved).toBeGreaterThan(RUNS * 0.6);
+    },
+    TIMEOUT_MS,
+  );
 });
 
 /** Each pipe meets the pressures of its two nodes, and its parts add up; a check valve holds. */
