@@ -30,11 +30,13 @@ export interface TestServerOptions {
   readonly solver?: SolvePort;
   readonly webFolder?: string;
   readonly heartbeatMs?: number;
+  /** One on a disk, where that matters. */
+  readonly db?: Database;
 }
 
 /** The application on a database in memory, with a clock that the test moves and everything it logs. */
 export class TestServer {
-  readonly db: Database = openDatabase(':memory:');
+  readonly db: Database;
   readonly config: Config;
   readonly app: App;
   readonly sessions: Sessions;
@@ -45,6 +47,7 @@ export class TestServer {
   private time = START.getTime();
 
   constructor(options: TestServerOptions = {}) {
+    this.db = options.db ?? openDatabase(':memory:');
     const secret = randomBytes(48).toString('base64');
     const env = { NODE_ENV: 'test', RISEBACK_DB: ':memory:', RISEBACK_SESSION_SECRET: secret };
     this.config = { ...readConfig(env), ...options.config };

@@ -1,64 +1,38 @@
-import { spawn, type ChildProcess } from 'node:child_process';
 import { mkdtempSync, rmSync } from 'node:fs';
 import { tmpdir } from 'node:os';
 import { join } from 'node:path';
 import { applyBatch, type EditOp } from '@riseback/network';
 import { afterAll, beforeAll, expect, it } from 'vitest';
-import { DEMO_PASSWORD } from '../../server/demo/demo-people';
 import { NetworkRepository } from '../../server/src/networks/network-repository';
 import { solverHashOf } from '../../server/src/networks/network-hashes';
-import { firstBrokenAuditRow } from '../../server/src/platform/db/audit-check';
-import { openDatabase } from '../../server/src/platform/db/database';
-import { batchOf } from '../api/network-samples';
+import { checkAudit } from '../../server/src/platform/db/audit-check';
+import { auditHeadLogOf, readAuditHeads } from '../../server/src/platform/db/audit-head-log';
+import { openDatabase, type Database } from '../../server/src/platform/db/database';
+import { batchOf, SMALL } from '../api/network-samples';
+import { demoNetwork, signIn, startServer, type ServerProcess } from './server-process';
+import { FULL, randomFrom, seedOfRun } from './test-form';
 
+const ROUNDS = FULL ? 200 : 3;
 /** A round ends so many acknowledged edits and so many milliseconds after its start, each time at another point of a write. */
-const ROUNDS = [
-  { edits: 12, thenMs: 1 },
-  { edits: 25, thenMs: 4 },
-  { edits: 40, thenMs: 9 },
-];
+const MOST_EDITS = 40;
+const MOST_MS = 12;
 
 let folder = '';
-let child: ChildProcess | undefined;
+let server: ServerProcess | undefined;
 beforeAll(() => {
   folder = mkdtempSync(join(tmpdir(), 'riseback-kill-'));
 });
 afterAll(() => {
-  child?.kill('SIGKILL');
+  server?.child.kill('SIGKILL');
   rmSync(folder, { recursive: true, force: true });
 });
 
-/** @returns the server's address, once it listens */
-function startServer(path: string): Promise<string> {
-  const started = spawn(process.execPath, ['--import', 'tsx', 'server/src/main.ts'], {
-    env: { PATH: process.env['PATH'] ?? '', RISEBACK_DB: path, PORT: '0', RISEBACK_REQUESTS_PER_MINUTE: '100000' },
-  });
-  child = started;
-  return new Promise((resolve, reject) => {
-    let output = '';
-    const take = (chunk: Buffer): void => {
-      output += chunk.toString();
-      const address = /^Riseback: (http\S+)$/m.exec(output)?.[1];
-      if (address !== undefined) resolve(address);
-    };
-    started.stdout.on('data', take);
-    started.stderr.on('data', take);
-    started.once('exit', () => {
-      reject(new Error(`the server ended: ${output}`));
-    });
-  });
-}
-
-async function signIn(address: string): Promise<Record<string, string>> {
-  const answer = await fetch(`${address}/api/session`, {
-    method: 'POST',
-    headers: { 'Content-Type': 'application/json' },
-    body: JSON.stringify({ email: 'designer@ternquay.example', password: DEMO_PASSWORD }),
-  });
-  expect(answer.status).toBeLessThan(300);
-  const cookies = answer.headers.getSetCookie().map((cookie) => cookie.split(';')[0] ?? '');
-  const proof = cookies.find((cookie) => cookie.startsWith('XSRF-TOKEN='))?.slice('XSRF-TOKEN='.length) ?? '';
-  return { Cookie: cookies.join('; '), 'X-XSRF-TOKEN': decodeURIComponent(proof), 'Content-Type': 'application/json' };
+/** What the server's answers said is stored, over all rounds. */
+interface Acknowledged {
+  version: number;
+  note: string | undefined;
+  readonly batches: string[];
+  readonly networks: string[];
 }
 
 /**
@@ -85,60 +59,101 @@ function noteOf(version: number): string {
   return `version ${version}`;
 }
 
-it('keeps every acknowledged edit through kill -9, and never half a one', async () => {
-  const path = join(folder, 'riseback.db');
-  let note: string | undefined;
-  for (const round of ROUNDS) {
-    const address = await startServer(path);
-    const headers = await signIn(address);
-    const get = async (url: string): Promise<unknown> => (await fetch(address + url, { headers })).json();
-    const [site] = (await get('/api/sites')) as { id: string }[];
-    const [network] = (await get(`/api/sites/${site?.id}/networks`)) as { id: string; version: number }[];
-    if (network === undefined) throw new Error('the demo has a network');
-
-    let { version } = network;
-    const acknowledged: string[] = [];
-    try {
-      for (;;) {
-        const batch = batchOf(opsFor(version, note));
-        const answer = await fetch(`${address}/api/networks/${network.id}/edits`, {
-          method: 'POST',
-          headers: { ...headers, 'If-Match': `"${version}"` },
-          body: JSON.stringify(batch),
-        });
-        expect(answer.status, await answer.text()).toBe(200);
-        acknowledged.push(batch.batchId);
-        if (acknowledged.length === round.edits) setTimeout(() => child?.kill('SIGKILL'), round.thenMs);
-        if (version % 2 === 1) note = noteOf(version);
-        version += 1;
-      }
-    } catch (error) {
-      // the connection broke: the server is dead
-      if (!(error instanceof TypeError)) throw error;
-    }
-
-    const db = openDatabase(path);
-    expect(db.$client.pragma('integrity_check', { simple: true })).toBe('ok');
-    expect(db.$client.pragma('foreign_key_check')).toEqual([]);
-    expect(firstBrokenAuditRow(db)).toBeUndefined();
-    const networks = new NetworkRepository(db);
-    expect(acknowledged.length).toBeGreaterThanOrEqual(round.edits);
-    for (const batchId of acknowledged) expect(networks.editByBatch(batchId)).toBeDefined();
-    const head = networks.head(network.id);
-    // the last one may have been stored and its answer lost
-    expect([version, version + 1]).toContain(head?.version);
-    const stored = networks.document(network.id);
-    if (stored === undefined) throw new Error('the network is stored');
-    expect(head?.solverHash).toBe(solverHashOf(stored));
-    const edits = networks.editsSince(network.id, 1);
-    expect(edits.map((edit) => edit.version)).toEqual(edits.map((_, i) => i + 2));
-    const first = edits.toReversed().reduce((document, { inverse }) => {
-      const undone = applyBatch(document, inverse);
-      if (!undone.ok) throw new Error(JSON.stringify(undone.errors));
-      return undone.document;
-    }, stored);
-    expect(solverHashOf(first)).toBe(networks.edit(network.id, 1)?.solverHash);
-    note = stored.nodes.get('TR1')?.value.note;
-    db.$client.close();
+/** Runs until the connection breaks, which it does when the server is dead. */
+async function untilBroken(work: () => Promise<void>): Promise<void> {
+  try {
+    for (;;) await work();
+  } catch (error) {
+    if (!(error instanceof TypeError)) throw error;
   }
-}, 120_000);
+}
+
+/** Edits of one network, new networks and profile changes side by side, until the server is killed among them. */
+async function writeUntilKilled(
+  { address, child }: ServerProcess,
+  known: Acknowledged,
+  kill: { readonly afterEdits: number; readonly thenMs: number },
+): Promise<string> {
+  const headers = await signIn(address);
+  const network = await demoNetwork(address, headers);
+  const send = (method: string, path: string, body: object, more: object = {}) =>
+    fetch(address + path, { method, headers: { ...headers, ...more }, body: JSON.stringify(body) });
+  known.version = network.version;
+  let edits = 0;
+  const editing = untilBroken(async () => {
+    const { version } = known;
+    const batch = batchOf(opsFor(version, known.note));
+    const answer = await send('POST', `/api/networks/${network.id}/edits`, batch, { 'If-Match': `"${version}"` });
+    expect(answer.status, await answer.text()).toBe(200);
+    known.batches.push(batch.batchId);
+    if (version % 2 === 1) known.note = noteOf(version);
+    known.version += 1;
+    edits += 1;
+    if (edits === kill.afterEdits) setTimeout(() => child.kill('SIGKILL'), kill.thenMs);
+  });
+  const making = untilBroken(async () => {
+    const answer = await send('POST', `/api/sites/${network.siteId}/networks`, SMALL);
+    expect(answer.status).toBe(201);
+    known.networks.push(((await answer.json()) as { id: string }).id);
+  });
+  const changing = untilBroken(async () => {
+    await send('PATCH', '/api/profile', { theme: edits % 2 === 0 ? 'dark' : 'light' });
+  });
+  await Promise.all([editing, making, changing]);
+  return network.id;
+}
+
+/** Everything that was acknowledged, whole; what was on its way may be there or not, but never in half. */
+function demandAllThere(db: Database, networkId: string, known: Acknowledged, lastVersion: number): void {
+  expect(db.$client.pragma('integrity_check', { simple: true })).toBe('ok');
+  expect(db.$client.pragma('foreign_key_check')).toEqual([]);
+  const networks = new NetworkRepository(db);
+  for (const batchId of known.batches) expect(networks.editByBatch(batchId)).toBeDefined();
+  for (const id of known.networks) {
+    const document = networks.document(id);
+    expect(document === undefined ? undefined : solverHashOf(document)).toBe(networks.head(id)?.solverHash);
+  }
+  const head = networks.head(networkId);
+  // the last one may have been stored and its answer lost
+  expect([known.version, known.version + 1]).toContain(head?.version);
+  const stored = networks.document(networkId);
+  if (stored === undefined) throw new Error('the network is stored');
+  expect(head?.solverHash).toBe(solverHashOf(stored));
+  const edits = networks.editsSince(networkId, lastVersion);
+  expect(edits.map((edit) => edit.version)).toEqual(edits.map((_, i) => lastVersion + i + 1));
+  const before = edits.toReversed().reduce((document, { inverse }) => {
+    const undone = applyBatch(document, inverse);
+    if (!undone.ok) throw new Error(JSON.stringify(undone.errors));
+    return undone.document;
+  }, stored);
+  expect(solverHashOf(before)).toBe(networks.edit(networkId, lastVersion)?.solverHash);
+  known.note = stored.nodes.get('TR1')?.value.note;
+}
+
+it(
+  'keeps every acknowledged write through kill -9, and never half a one',
+  async () => {
+    const random = randomFrom(seedOfRun('killed servers'));
+    const path = join(folder, 'riseback.db');
+    const known: Acknowledged = { version: 1, note: undefined, batches: [], networks: [] };
+    for (let round = 0; round < ROUNDS; round += 1) {
+      server = await startServer(path);
+      const lastVersion = round === 0 ? 1 : known.version;
+      const kill = { afterEdits: 5 + Math.floor(random() * MOST_EDITS), thenMs: random() * MOST_MS };
+      const networkId = await writeUntilKilled(server, known, kill);
+      await server.ended();
+      expect(known.batches.length).toBeGreaterThan(0);
+
+      const heads = readAuditHeads(auditHeadLogOf(path));
+      const db = openDatabase(path);
+      expect(checkAudit(db, heads).mismatch).toBeUndefined();
+      demandAllThere(db, networkId, known, lastVersion);
+      known.version = new NetworkRepository(db).head(networkId)?.version ?? 0;
+      db.$client.close();
+    }
+    process.stdout.write(
+      `${ROUNDS} kills: ${known.batches.length} edits and ${known.networks.length} networks acknowledged, all there\n`,
+    );
+  },
+  FULL ? 3_600_000 : 120_000,
+);

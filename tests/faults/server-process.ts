@@ -1,6 +1,7 @@
 import { spawn, type ChildProcess } from 'node:child_process';
 import { join } from 'node:path';
 import { DEMO_PASSWORD } from '../../server/demo/demo-people';
+import ternQuay from '../../server/demo/tern-quay.json';
 
 const ROOT = join(import.meta.dirname, '../..');
 const TSX = ['--import', 'tsx'];
@@ -62,7 +63,8 @@ export async function demoNetwork(
 ): Promise<{ id: string; siteId: string; version: number }> {
   const get = async (path: string): Promise<unknown> => (await fetch(address + path, { headers })).json();
   const [site] = (await get('/api/sites')) as { id: string }[];
-  const [network] = (await get(`/api/sites/${site?.id}/networks`)) as { id: string; version: number }[];
+  const networks = (await get(`/api/sites/${site?.id}/networks`)) as { id: string; name: string; version: number }[];
+  const network = networks.find(({ name }) => name === ternQuay.name);
   if (site === undefined || network === undefined) throw new Error('the demo has a site with a network');
   return { id: network.id, siteId: site.id, version: network.version };
 }

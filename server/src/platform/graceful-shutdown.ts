@@ -1,9 +1,13 @@
 import type { Server } from 'node:http';
+import { Server as NetServer } from 'node:net';
 import type { Log } from './log';
+import { OpenConnections } from './open-connections';
 
 /** Supervisors kill after ten seconds; what is not done by then would be cut off in the middle. */
 const PATIENCE_MS = 8_000;
 const SWEEP_MS = 50;
+/** A client that is at work sends its next request within this time, and is told with its answer that it was the last. */
+const IDLE_MS = 500;
 
 /**
  * Ends the process in order: no new connections, requests under way are answered, then `release` closes the rest.
@@ -16,6 +20,7 @@ export function shutDownGracefully(
   endStreams: () => void,
   release: () => Promise<void>,
 ): void {
+  const connections = new OpenConnections(server);
   let stopping = false;
   // An answered connection that its client keeps open would hold the server until it idles out.
   server.on('request', (_req, res) => {
@@ -26,12 +31,12 @@ export function shutDownGracefully(
     stopping = true;
     log.info({ signal }, 'stopping');
     endStreams();
-    const sweep = setInterval(() => server.closeIdleConnections(), SWEEP_MS);
+    const sweep = setInterval(() => connections.closeIdleFor(IDLE_MS), SWEEP_MS);
     const lastResort = setTimeout(() => {
       log.warn('requests under way took too long and were cut off');
       server.closeAllConnections();
     }, PATIENCE_MS);
-    server.close(() => {
+    const finish = (): void => {
       clearInterval(sweep);
       clearTimeout(lastResort);
       release().then(
@@ -44,7 +49,10 @@ export function shutDownGracefully(
           process.exit(1);
         },
       );
-    });
+    };
+    // After the connections that arrived with the signal were taken on. The close of net.Server, since that of
+    // http.Server first destroys what it holds for idle, with requests that are on their way.
+    setImmediate(() => NetServer.prototype.close.call(server, finish));
   };
   process.on('SIGTERM', stop);
   process.on('SIGINT', stop);

@@ -14,6 +14,8 @@ export interface SolveMessage {
 export interface SolveThreadOptions {
   /** A solve that takes longer is stopped and fails. */
   readonly limitMs?: number;
+  /** A solve that needs more ends its thread and fails. */
+  readonly memoryMb?: number;
   readonly workerUrl?: URL;
   /** Told of every crash and every stopped solve. */
   readonly report: (error: unknown) => void;
@@ -29,6 +31,8 @@ interface Running extends Waiting {
 }
 
 const LIMIT_MS = 10_000;
+/** Some ten times what 50,000 pipes take. */
+const MEMORY_MB = 1_024;
 /** Beyond this many networks at once a person had better try again than wait. */
 const MOST_WAITING = 100;
 const BROKE = 'The solver broke on this network. Its data is safe; undo the last change, or report the network.';
@@ -42,6 +46,7 @@ const BUSY = 'The solver has too much to do at the moment. Try again in a few se
 export class SolveThread implements SolvePort {
   private readonly waiting = new Map<string, Waiting>();
   private readonly limitMs: number;
+  private readonly memoryMb: number;
   private readonly workerUrl: URL;
   private readonly report: (error: unknown) => void;
   private worker: Worker | undefined;
@@ -49,8 +54,14 @@ export class SolveThread implements SolvePort {
   private lastJobId = 0;
   private closed = false;
 
-  constructor({ limitMs = LIMIT_MS, workerUrl = defaultWorkerUrl(), report }: SolveThreadOptions) {
+  constructor({
+    limitMs = LIMIT_MS,
+    memoryMb = MEMORY_MB,
+    workerUrl = defaultWorkerUrl(),
+    report,
+  }: SolveThreadOptions) {
     this.limitMs = limitMs;
+    this.memoryMb = memoryMb;
     this.workerUrl = workerUrl;
     this.report = report;
   }
@@ -90,7 +101,7 @@ export class SolveThread implements SolvePort {
   }
 
   private startWorker(): Worker {
-    const worker = startWorker(this.workerUrl);
+    const worker = startWorker(this.workerUrl, { resourceLimits: { maxOldGenerationSizeMb: this.memoryMb } });
     // the server's socket keeps the process alive, not its solver
     worker.unref();
     worker.on('message', (answer: SolveAnswer) => this.take(answer));
