@@ -52,5 +52,6 @@ describe('formulaTree', () => {
 
   it('may end a line before a sum or a relation, but in no bracket', () => {
     expect(linePieces(formulaTree('y = (a + b) + c, d')).map(shape)).toEqual(['y', '= (a + b)', '+ c,', 'd']);
+    expect(linePieces(formulaTree('[a] (b/c)² d')).map(shape)).toEqual(['[a]', '(<b over c>)^{2} d']);
   });
 });

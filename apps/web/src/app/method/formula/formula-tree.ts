@@ -33,13 +33,14 @@ export function formulaTree(text: string): FormulaNode {
   return new FormulaReader(text).row(null);
 }
 
-/** Where a line may end: before a relation or a sum, after a comma, each outside all brackets. */
+/** Where a line may end: before a relation or a sum, after a comma, before a factor in brackets; each outside all brackets. */
 export function linePieces(tree: FormulaNode): FormulaNode[] {
   if (tree.kind !== 'row') return [tree];
   const pieces: FormulaNode[][] = [[]];
   tree.items.forEach((item, i) => {
     const [before, after] = [tree.items[i - 1], tree.items[i + 1]];
-    if (item.kind === 'gap' && (isSign(after, '=+−≥<>') || isSign(before, ',;'))) pieces.push([]);
+    const atFactor = before?.kind !== 'sign' && isBracketed(after);
+    if (item.kind === 'gap' && (isSign(after, '=+−≥<>') || isSign(before, ',;') || atFactor)) pieces.push([]);
     else pieces.at(-1)?.push(item);
   });
   return pieces.map((items) => ({ kind: 'row', items }));
@@ -47,6 +48,10 @@ export function linePieces(tree: FormulaNode): FormulaNode[] {
 
 function isSign(node: FormulaNode | undefined, among: string): boolean {
   return node?.kind === 'sign' && among.includes(node.text);
+}
+
+function isBracketed(node: FormulaNode | undefined): boolean {
+  return node?.kind === 'bracket' || (node?.kind === 'script' && node.base.kind === 'bracket');
 }
 
 class FormulaReader {

@@ -9,7 +9,7 @@ const BAR_PA = 1e5;
 export const FLUID_SECTIONS: readonly MethodSection[] = [
   {
     id: 'water-and-steam',
-    title: 'Water and steam',
+    title: 'Properties',
     summary:
       'Every property comes from the international formulations for water and steam; the walk reads them from a table in ln p that is made from those formulations when the program starts.',
     table: {
