@@ -141,6 +141,15 @@ const AT_PIPES: readonly Check[] = [
     sources: ['Definition'],
   },
   {
+    code: 'checkValveShut',
+    summary:
+      'A check valve is held shut by the higher pressure beyond it: its pipe carries nothing, and what comes to it goes another way.',
+    range: 'Pipes with a check valve where there is another way down.',
+    limits: ['A valve that leaks or chatters is not thought of.'],
+    sources: ['Definition'],
+    page: 'loops',
+  },
+  {
     code: 'vesselCannotDrain',
     summary:
       'A flash vessel’s outlet needs more pressure at its start than the vessel holds: its liquid cannot leave, and goes out with the steam.',
