@@ -1,6 +1,6 @@
 import cookieParser from 'cookie-parser';
 import { roleMay } from '@riseback/contracts';
-import express, { type Express } from 'express';
+import express, { type Express, type RequestHandler } from 'express';
 import { eventRoutes } from './events/event-routes';
 import { EventService } from './events/event-service';
 import { NetworkStreams } from './events/network-streams';
@@ -58,6 +58,8 @@ export interface AppParts {
   readonly solver: SolvePort;
   /** The browser build; undefined while developing, when the pages come from their own server. */
   readonly webFolder: string | undefined;
+  /** Sees every request first; counts, for one. */
+  readonly observe?: RequestHandler;
   /** Between two signs of life on an open stream; each also checks that its reader may still see the network. */
   readonly heartbeatMs?: number;
 }
@@ -126,6 +128,7 @@ export function buildApp(parts: AppParts): App {
   app.set('etag', false);
   app.set('trust proxy', config.trustProxy);
   app.set('query parser', 'simple');
+  if (parts.observe !== undefined) app.use(parts.observe);
   app.use(requestLog(log));
   app.use(securityHeaders(config.origin?.protocol === 'https:'));
   app.use(cookieParser());

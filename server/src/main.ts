@@ -15,6 +15,8 @@ import { openDatabase, UnusableDatabaseError } from './platform/db/database';
 import { DatabaseInUseError, holdExclusively } from './platform/exclusive-use';
 import { exitOnUncaught, shutDownGracefully } from './platform/graceful-shutdown';
 import { createLog, logDestination, logFileOf } from './platform/log';
+import { Metrics } from './platform/metrics/metrics';
+import { serveMetrics } from './platform/metrics/metrics-server';
 import { SolveThread } from './solve/solve-thread';
 
 /** For the person at the terminal; the log has its own place and form. */
@@ -36,9 +38,12 @@ async function start(): Promise<void> {
   const hold = holdExclusively(config.databasePath);
   const report = (error: unknown) => log.error({ err: error }, 'database');
   const db = openDatabase(config.databasePath, { report });
-  const solver = new SolveThread({ report: (error) => log.error({ err: error }, 'solver') });
+  const metrics = new Metrics(config.databasePath);
+  const thread = new SolveThread({ report: (error) => log.error({ err: error }, 'solver') });
+  const solver = metrics.timed(thread);
   const now = () => new Date();
-  const app = buildApp({ db, config, log, newId: randomUUID, now, solver, webFolder: builtPages() });
+  const observe = metrics.requestTimer();
+  const app = buildApp({ db, config, log, newId: randomUUID, now, solver, webFolder: builtPages(), observe });
   const people = new PeopleRepository(db);
   if (config.production) {
     refuseDemoPeople(people);
@@ -48,14 +53,16 @@ async function start(): Promise<void> {
     if (seeded) say('The database is new: the demo site is in it.');
   }
 
-  const keeper = await keepBackups({ config, source: db.$client, now, log });
+  const ended = (madeAt: Date | undefined) => metrics.backupEnded(madeAt);
+  const keeper = await keepBackups({ config, source: db.$client, now, log, ended });
   const server = createServer(app.handler);
   shutDownGracefully(server, log, app.endStreams, async () => {
-    await Promise.all([solver.close(), keeper.stop()]);
+    await Promise.all([thread.close(), keeper.stop()]);
     db.$client.close();
     hold.release();
   });
   await listen(server, config);
+  if (config.metrics !== undefined) sayMetrics(await serveMetrics(metrics, config.metrics, log));
   const address = addressOf(server, config);
   log.info({ address, production: config.production }, 'listening');
   if (logFile !== undefined) say(`Requests are logged in ${logFile}`);
@@ -86,6 +93,11 @@ function saySignIns(people: PeopleRepository): void {
   if (known.length === 0) return;
   say(`Sign in with the password ${DEMO_PASSWORD} as`);
   for (const { email, role } of known) say(`  ${email.padEnd(32)} ${role ?? 'no role at any site'}`);
+}
+
+function sayMetrics(server: Server): void {
+  const { address, port } = server.address() as AddressInfo;
+  say(`Figures for Prometheus: http://${address}:${String(port)}/metrics`);
 }
 
 /** Beside the bundle once built; while developing, the pages come from the web's own server. */

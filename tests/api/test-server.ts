@@ -1,6 +1,7 @@
 import { randomBytes, randomUUID } from 'node:crypto';
 import { Writable } from 'node:stream';
 import { ROLES, type Role } from '@riseback/contracts';
+import type { RequestHandler } from 'express';
 import request from 'supertest';
 import { buildApp, type App } from '../../server/src/app';
 import { SessionRepository } from '../../server/src/platform/auth/session-repository';
@@ -32,6 +33,7 @@ export interface TestServerOptions {
   readonly heartbeatMs?: number;
   /** One on a disk, where that matters. */
   readonly db?: Database;
+  readonly observe?: RequestHandler;
 }
 
 /** The application on a database in memory, with a clock that the test moves and everything it logs. */
@@ -66,6 +68,7 @@ export class TestServer {
       now,
       solver: options.solver ?? inThread,
       webFolder: options.webFolder,
+      ...(options.observe === undefined ? {} : { observe: options.observe }),
       ...(options.heartbeatMs === undefined ? {} : { heartbeatMs: options.heartbeatMs }),
     });
     this.tokens = new SessionTokens(this.config.sessionSecret);

@@ -2,6 +2,7 @@ import { isIP } from 'node:net';
 import { dirname, join, resolve } from 'node:path';
 import * as z from 'zod';
 import type { ScheduleSettings } from './backup/backup-schedule';
+import type { MetricsAddress } from './metrics/metrics-server';
 import { findSessionSecret, secretMistake } from './session-secret';
 
 /** Every setting the server reads, once, at its start; docs/configuration.md lists them. */
@@ -21,6 +22,8 @@ export interface Config {
   readonly logLevel: 'debug' | 'info' | 'warn' | 'error' | 'silent';
   /** Undefined = nobody asked for backups by schedule. */
   readonly backups: ScheduleSettings | undefined;
+  /** Undefined = figures are not served. */
+  readonly metrics: MetricsAddress | undefined;
 }
 
 /** A setting that cannot be used. Stops the start; the message names the setting and says what it must be. */
@@ -45,6 +48,8 @@ const Settings = z.object({
   RISEBACK_BACKUP_FOLDER: z.string().min(1).optional(),
   RISEBACK_BACKUP_EVERY_HOURS: z.coerce.number().min(0.1).max(168).default(24),
   RISEBACK_BACKUP_KEEP: z.coerce.number().int().min(1).max(10_000).default(14),
+  RISEBACK_METRICS_PORT: port.optional(),
+  RISEBACK_METRICS_HOST: z.string().min(1).default('127.0.0.1'),
 });
 type Settings = z.infer<typeof Settings>;
 
@@ -63,6 +68,8 @@ const MUST_BE: Readonly<Record<keyof Settings, string>> = {
   RISEBACK_BACKUP_FOLDER: 'the path of a folder for backups',
   RISEBACK_BACKUP_EVERY_HOURS: 'a number of hours, 168 at most',
   RISEBACK_BACKUP_KEEP: 'a whole number, 1 at least',
+  RISEBACK_METRICS_PORT: 'a port number from 0 (any free one) to 65535',
+  RISEBACK_METRICS_HOST: 'an address or a host name',
 };
 
 /** @throws ConfigError naming the first setting that cannot be used */
@@ -82,6 +89,10 @@ export function readConfig(env: Readonly<Record<string, string | undefined>>): C
     requestsPerMinute: settings.RISEBACK_REQUESTS_PER_MINUTE,
     logLevel: settings.RISEBACK_LOG_LEVEL,
     backups: readBackups(settings),
+    metrics:
+      settings.RISEBACK_METRICS_PORT === undefined
+        ? undefined
+        : { host: settings.RISEBACK_METRICS_HOST, port: settings.RISEBACK_METRICS_PORT },
   };
 }
 

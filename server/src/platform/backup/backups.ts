@@ -10,6 +10,8 @@ export interface BackupsParts {
   readonly source: Sqlite.Database;
   readonly seal: (path: string, madeAt: string) => BackupFacts | Promise<BackupFacts>;
   readonly now: () => Date;
+  /** Told of each: when it was made, or undefined for one that failed. */
+  readonly ended?: (madeAt: Date | undefined) => void;
 }
 
 /** Takes backups, one at a time. */
@@ -27,7 +29,10 @@ export class Backups {
    */
   make(path: string): Promise<BackupFacts> {
     const made = this.last.then(() => this.copy(path));
-    this.last = made.catch(() => undefined);
+    this.last = made.then(
+      ({ madeAt }) => this.parts.ended?.(new Date(madeAt)),
+      () => this.parts.ended?.(undefined),
+    );
     return made;
   }
 

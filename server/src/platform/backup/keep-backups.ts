@@ -11,12 +11,19 @@ export interface KeepBackupsParts {
   readonly source: Sqlite.Database;
   readonly now: () => Date;
   readonly log: Log;
+  readonly ended: (madeAt: Date | undefined) => void;
 }
 
 /** A running server's backups: by schedule where a folder is set, and by the command at any time. */
-export async function keepBackups({ config, source, now, log }: KeepBackupsParts): Promise<{ stop(): Promise<void> }> {
+export async function keepBackups({
+  config,
+  source,
+  now,
+  log,
+  ended,
+}: KeepBackupsParts): Promise<{ stop(): Promise<void> }> {
   if (config.databasePath === ':memory:') return { stop: () => Promise.resolve() };
-  const backups = new Backups({ source, seal: sealAside, now });
+  const backups = new Backups({ source, seal: sealAside, now, ended });
   const schedule =
     config.backups === undefined
       ? undefined
