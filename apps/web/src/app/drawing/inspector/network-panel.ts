@@ -6,7 +6,6 @@ import {
   COINCIDENCE_WORDS,
   DROP_CREDIT_SENTENCE,
   FRICTION_WORDS,
-  METHOD_SENTENCES,
   STATIC_LIFT_WORDS,
   VOID_FRACTION_WORDS,
 } from '../../networks/method-words';
@@ -49,7 +48,6 @@ export class NetworkPanel {
 
   protected readonly siteFields = SITE_FIELDS;
   protected readonly words = WORDS;
-  protected readonly noSlipWarning = METHOD_SENTENCES.voidFraction.homogeneous;
   protected readonly dropCreditSentence = DROP_CREDIT_SENTENCE;
   protected readonly accelerationSentence = ACCELERATION_SENTENCE;
   protected readonly fixed = computed(() => !this.store.mayDraw());
