@@ -25,6 +25,11 @@ export const routes: Routes = [
         loadComponent: () => import('./networks/network-list-page').then((m) => m.NetworkListPage),
       },
       {
+        path: ':siteId/audit',
+        title: 'Log of the site · Riseback',
+        loadComponent: () => import('./audit/audit-page').then((m) => m.AuditPage),
+      },
+      {
         path: ':siteId/networks/:networkId',
         loadComponent: () => import('./networks/network-page').then((m) => m.NetworkPage),
         children: [

@@ -64,6 +64,8 @@ export class NetworkListPage {
   });
   protected readonly mayDraw = computed(() => this.site()?.permissions.includes('draw') ?? false);
 
+  protected readonly mayReadLog = computed(() => this.site()?.permissions.includes('people') ?? false);
+
   protected startNaming(): void {
     this.naming.set(true);
     setTimeout(() => this.nameBox()?.nativeElement.focus());
