@@ -4,7 +4,7 @@ import type { DisplayUnits } from '@riseback/units';
 import { nodeName, pipeName } from './accessible-name';
 import { classOf, type ColourClass, type ColourScale, type Stretch, stretches } from './colour-scale';
 import type { DrawnNetwork, DrawnNode, DrawnPipe } from './drawn-network';
-import { cutLine, longestPiece, pointAt, type PointOnLine } from './geometry';
+import { cutLine, lineLength, longestPiece, pointAt, type PointOnLine } from './geometry';
 
 export type Side = 'up' | 'down' | 'left' | 'right';
 export type Concern = Exclude<Verdict, 'pass'>;
@@ -73,8 +73,8 @@ const LEAST_LIFT_M = 0.9144;
 /** Shorter pieces have no room for an arrow, drawing units. */
 const LEAST_ARROW_PIECE = 36;
 
-/** Close to the end of the flow, clear of the symbol that it goes into. */
-const CHOKED_AT = 0.88;
+/** A choked outlet's bar keeps so far from the end of the line, drawing units: a receiver reaches 46 from its middle. */
+const CHOKED_FROM_END = 58;
 
 export function nodeView(
   { id, node, at }: DrawnNode,
@@ -132,7 +132,7 @@ export function pipeView(
     branch: from?.kind === 'trap' || from?.kind === 'pumpedInlet',
     arrow: arrowOn(points, reversed, result !== undefined && result.massFlowKgS === 0, parts),
     checkValve: pipe.checkValve ? pointAt(points, 0.7) : null,
-    choked: result?.choked === true ? pointAt(points, reversed ? 1 - CHOKED_AT : CHOKED_AT) : null,
+    choked: result?.choked === true ? chokedAt(points, reversed) : null,
     lift: upright === undefined ? null : { piece: upright, riseM: rise },
     name: pipeName(pipe, { from, to, result, warnings, selected, caseName: results.caseNameOf(id) }, units),
   };
@@ -168,6 +168,12 @@ function pipeStretches(scale: ColourScale, result: PipeResult): Stretch[] {
     case 'velocity':
       return stretches(result.mixtureVelocityMS, result.mixtureVelocityMS, scale);
   }
+}
+
+/** Towards the end of the flow; on a short line not past its last third, so that it is still seen which end is meant. */
+function chokedAt(points: readonly Position[], reversed: boolean): PointOnLine {
+  const share = Math.min(1 / 3, CHOKED_FROM_END / Math.max(lineLength(points), 1));
+  return pointAt(points, reversed ? share : 1 - share);
 }
 
 /** On the longest piece, off its middle, so that the arrow keeps clear of tags and lift marks. */
