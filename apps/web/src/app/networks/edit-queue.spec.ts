@@ -5,6 +5,7 @@ import type { Network, SavedBatch } from '@riseback/contracts';
 import { type EditOp, setOp, type NetworkDocument } from '@riseback/network';
 import { beforeEach, describe, expect, it } from 'vitest';
 import { EditQueue } from './edit-queue';
+import { UndoStack } from './undo-stack';
 
 const network: Network = {
   id: 'n1',
@@ -40,13 +41,16 @@ const network: Network = {
   },
 };
 const EDITS = '/api/networks/n1/edits';
+const elevation30: EditOp = { op: 'set', in: 'nodes', id: 'J1', key: 'elevationM', from: 1, to: 30 };
 
 describe('EditQueue', () => {
   let queue: EditQueue;
   let server: HttpTestingController;
 
   beforeEach(() => {
-    TestBed.configureTestingModule({ providers: [EditQueue, provideHttpClient(), provideHttpClientTesting()] });
+    TestBed.configureTestingModule({
+      providers: [EditQueue, UndoStack, provideHttpClient(), provideHttpClientTesting()],
+    });
     queue = TestBed.inject(EditQueue);
     server = TestBed.inject(HttpTestingController);
     queue.open(network);
@@ -104,18 +108,80 @@ describe('EditQueue', () => {
     expect(queue.saveState()).toBe('saved');
   });
 
-  it('keeps what the person wanted in sight when another changed the same thing', async () => {
+  it('asks when another changed the same thing, and sends nothing of it before the choice', async () => {
     queue.add('mine', [elevation('J1', 3)]);
-    server
-      .expectOne(EDITS)
-      .flush(staleAnswer([{ op: 'set', in: 'nodes', id: 'J1', key: 'elevationM', from: 1, to: 30 }]), {
-        status: 412,
-        statusText: 'Precondition Failed',
-      });
+    server.expectOne(EDITS).flush(staleAnswer([elevation30]), { status: 412, statusText: 'Precondition Failed' });
     await settle();
     expect(elevationOf('J1')).toBe(30);
-    expect(queue.refused().map(({ batch }) => batch.label)).toEqual(['mine']);
-    expect(queue.refused()[0]?.reasons[0]).toContain('Ada Other');
+    expect(queue.conflicts()).toMatchObject([{ who: 'Ada Other', before: { value: 1 }, mine: { value: 3 } }]);
+    expect(queue.unsaved()?.conflicts).toHaveLength(1);
+    expect(queue.solverHash()).toBe('hash 8');
+    server.expectNone(EDITS);
+    queue.add('mine after all', [elevation('J1', 3)]);
+    expect(queue.conflicts()).toEqual([]);
+    server.expectOne(EDITS).flush({ version: 9, solverHash: 'h' });
+    await settle();
+    expect(queue.unsaved()).toBeNull();
+  });
+
+  it('does not send again and again what a server that was put back to an earlier state cannot take', async () => {
+    queue.add('mine', [elevation('J1', 3)]);
+    const behind = { ...staleAnswer([]), currentVersion: 5, batches: [] };
+    server.expectOne(EDITS).flush(behind, { status: 412, statusText: 'Precondition Failed' });
+    await settle();
+    server.expectNone(EDITS);
+    expect([queue.saveState(), elevationOf('J1')]).toEqual(['notSaved', 3]);
+  });
+
+  it('takes another person’s edit from the stream at once, and knows who changed what', async () => {
+    await queue.receive(staleAnswer([elevation30]).batches);
+    expect([elevationOf('J1'), queue.version(), queue.solverHash()]).toEqual([30, 8, 'hash 8']);
+    expect(queue.heard().map(({ label }) => label)).toEqual(['theirs']);
+    expect(queue.changedBy([elevation('J1', 2)], 7)).toBe('Ada Other');
+    expect(queue.changedBy([elevation('J1', 2)], 8)).toBeUndefined();
+  });
+
+  it('hears of its own edit from the stream before the answer comes, and applies it once', async () => {
+    queue.add('mine', [elevation('J1', 3)]);
+    const request = server.expectOne(EDITS);
+    const [saved] = staleAnswer([elevation('J1', 3)]).batches;
+    if (saved === undefined) throw new Error('no batch');
+    const { batchId, ops } = request.request.body as { batchId: string; ops: EditOp[] };
+    await queue.receive([{ ...saved, batchId, ops }]);
+    expect([queue.version(), queue.pendingCount(), elevationOf('J1')]).toEqual([8, 0, 3]);
+    request.flush({ version: 8, solverHash: 'hash 8' });
+    await settle();
+    expect([queue.version(), queue.saveState(), queue.heard().length]).toEqual([8, 'saved', 0]);
+  });
+
+  it('asks for what is missing when the stream has skipped a version', async () => {
+    const [last] = staleAnswer([{ op: 'set', in: 'nodes', id: 'J2', key: 'elevationM', from: 2, to: 9 }]).batches;
+    const [first] = staleAnswer([elevation30]).batches;
+    if (first === undefined || last === undefined) throw new Error('no batch');
+    const received = queue.receive([{ ...last, version: 9 }]);
+    server.expectOne(`${EDITS}?since=7`).flush([first, { ...last, version: 9 }]);
+    await received;
+    expect([elevationOf('J1'), elevationOf('J2'), queue.version()]).toEqual([30, 9, 9]);
+  });
+
+  it('brings in work that was left behind, saves it once, and asks where it no longer fits', async () => {
+    const base = present();
+    const batch = (ops: EditOp[]) => ({ batchId: crypto.randomUUID(), label: 'left behind', ops });
+    const arrived = batch([elevation('J2', 4)]);
+    const pending = [arrived, batch([elevation('J1', 5)]), batch([{ ...elevation('J2', 6), from: 4 } as EditOp])];
+    const [saved] = staleAnswer([elevation30]).batches;
+    if (saved === undefined) throw new Error('no batch');
+    const brought = queue.bringIn({ networkId: 'n1', base, version: 7, pending, conflicts: [] }, []);
+    server.expectOne(`${EDITS}?since=7`).flush([
+      { ...saved, batchId: arrived.batchId, ops: arrived.ops },
+      { ...saved, version: 9 },
+    ]);
+    await brought;
+    const sent = server.expectOne(EDITS);
+    expect(sent.request.headers.get('If-Match')).toBe('"9"');
+    expect(sent.request.body).toEqual(pending[2]);
+    expect([elevationOf('J1'), elevationOf('J2')]).toEqual([30, 6]);
+    expect(queue.conflicts()).toMatchObject([{ mine: { value: 5 } }]);
   });
 
   it('keeps the edit through a failing server and sends the same batch again', async () => {
@@ -162,6 +228,7 @@ function staleAnswer(ops: EditOp[]) {
     at: '2026-03-01T08:00:00.000Z',
     label: 'theirs',
     ops,
+    solverHash: 'hash 8',
   };
   return {
     type: '/problems/stale-version',

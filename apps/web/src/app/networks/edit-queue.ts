@@ -1,11 +1,15 @@
 import { HttpErrorResponse } from '@angular/common/http';
 import { computed, inject, Injectable, signal } from '@angular/core';
-import { type Network, type Problem, StaleVersion } from '@riseback/contracts';
-import { applyBatch, type EditBatch, type EditOp, type NetworkDocument } from '@riseback/network';
+import { type Network, type Problem, type SavedBatch, StaleVersion } from '@riseback/contracts';
+import { applyBatch, type EditBatch, type EditOp, jsonEqual, type NetworkDocument } from '@riseback/network';
 import { firstValueFrom } from 'rxjs';
+import { SessionStore } from '../session/session-store';
 import { toProblem } from '../shared/problem';
+import { type Conflict, placeKey, replayOver, sideOf } from './conflicts';
 import { NetworkApi } from './network-api';
 import { toDocument } from './stored-document';
+import { type Touch, touchedSince, touchesOf } from './touches';
+import { UndoStack, type UndoStep } from './undo-stack';
 
 export type SaveState = 'saved' | 'saving' | 'notSaved';
 
@@ -14,6 +18,19 @@ export interface RefusedEdit {
   readonly batch: EditBatch;
   readonly reasons: readonly string[];
 }
+
+/** What of a person's work is not in the server's keeping yet, and the document it was made on. */
+export interface Unsaved {
+  readonly networkId: string;
+  readonly base: NetworkDocument;
+  readonly version: number;
+  readonly pending: readonly EditBatch[];
+  readonly conflicts: readonly Conflict[];
+}
+
+export type Added =
+  | { readonly ok: true; readonly inverse: EditOp[]; readonly batchId: string; readonly version: number }
+  | { readonly ok: false; readonly reasons: string[] };
 
 interface QueueState {
   readonly networkId: string;
@@ -25,16 +42,22 @@ interface QueueState {
   readonly pending: readonly EditBatch[];
   /** base with pending applied. */
   readonly present: NetworkDocument;
+  /** What was set aside of `pending` until the person has chosen. */
+  readonly conflicts: readonly Conflict[];
 }
 
 /** base + pending = present, always by `applyBatch`; one batch is in flight at a time (docs/data.md, "The client"). */
 @Injectable()
 export class EditQueue {
   private readonly api = inject(NetworkApi);
+  private readonly session = inject(SessionStore);
+  private readonly undoStack = inject(UndoStack);
 
   private readonly state = signal<QueueState | null>(null);
   private readonly failure = signal<Problem | null>(null);
   private readonly refusals = signal<readonly RefusedEdit[]>([]);
+  private readonly lastHeard = signal<readonly SavedBatch[]>([]);
+  private touches = new Map<string, Touch>();
   private sending = false;
 
   readonly present = computed(() => this.state()?.present ?? null);
@@ -43,6 +66,20 @@ export class EditQueue {
   readonly pendingCount = computed(() => this.state()?.pending.length ?? 0);
   readonly problem = this.failure.asReadonly();
   readonly refused = this.refusals.asReadonly();
+  /** What others saved, as it last arrived. */
+  readonly heard = this.lastHeard.asReadonly();
+  /** Conflicts that still differ from what stands in the document. */
+  readonly conflicts = computed(() => {
+    const state = this.state();
+    return state?.conflicts.filter(({ place, mine }) => !jsonEqual(mine, sideOf(state.present, place))) ?? [];
+  });
+  readonly unsaved = computed((): Unsaved | null => {
+    const state = this.state();
+    if (state === null) return null;
+    const { networkId, base, version, pending } = state;
+    const conflicts = this.conflicts();
+    return pending.length === 0 && conflicts.length === 0 ? null : { networkId, base, version, pending, conflicts };
+  });
   readonly saveState = computed((): SaveState => {
     if (this.failure() !== null) return 'notSaved';
     return this.pendingCount() > 0 ? 'saving' : 'saved';
@@ -52,6 +89,8 @@ export class EditQueue {
     const base = toDocument(network.document);
     this.failure.set(null);
     this.refusals.set([]);
+    this.lastHeard.set([]);
+    this.touches = new Map();
     this.state.set({
       networkId: network.id,
       base,
@@ -59,11 +98,12 @@ export class EditQueue {
       solverHash: network.solverHash,
       pending: [],
       present: base,
+      conflicts: [],
     });
   }
 
   /** Applies the edit here at once and sends it. The inverse, or the reasons why it cannot be made. */
-  add(label: string, ops: readonly EditOp[]): { ok: true; inverse: EditOp[] } | { ok: false; reasons: string[] } {
+  add(label: string, ops: readonly EditOp[]): Added {
     const state = this.state();
     if (state === null) return { ok: false, reasons: ['The network is not loaded yet.'] };
     const applied = applyBatch(state.present, ops);
@@ -71,7 +111,12 @@ export class EditQueue {
     const batch: EditBatch = { batchId: crypto.randomUUID(), label, ops: [...ops] };
     this.state.set({ ...state, pending: [...state.pending, batch], present: applied.document });
     void this.send();
-    return { ok: true, inverse: applied.inverse };
+    return { ok: true, inverse: applied.inverse, batchId: batch.batchId, version: state.version };
+  }
+
+  /** Who, after a version, changed what these operations act on; undefined when nobody else did. */
+  changedBy(ops: readonly EditOp[], sinceVersion: number): string | undefined {
+    return touchedSince(this.touches, ops, sinceVersion);
   }
 
   /** After a failure: the same batches again. A batch that did arrive is known to the server by its id. */
@@ -82,6 +127,53 @@ export class EditQueue {
 
   dismissRefusals(): void {
     this.refusals.set([]);
+  }
+
+  /** The person has chosen. */
+  dropConflicts(settled: readonly Conflict[]): void {
+    const keys = new Set(settled.map(({ place }) => placeKey(place)));
+    this.state.update((state) =>
+      state === null
+        ? null
+        : { ...state, conflicts: state.conflicts.filter(({ place }) => !keys.has(placeKey(place))) },
+    );
+  }
+
+  /** Far behind: everything since at once. */
+  async readOn(): Promise<void> {
+    const state = this.state();
+    if (state !== null) this.moveBase(await firstValueFrom(this.api.editsSince(state.networkId, state.version)));
+  }
+
+  /** Batches that were saved, one's own among them, as events bring them. What is missing between is asked for. */
+  async receive(batches: readonly SavedBatch[]): Promise<void> {
+    const state = this.state();
+    const first = batches.find(({ version }) => version > (state?.version ?? 0));
+    if (state === null || first === undefined) return;
+    if (first.version === state.version + 1) this.moveBase(batches);
+    else await this.readOn();
+  }
+
+  /** Puts work that was left behind on top of what is here, by the same rule as any other pending work. */
+  async bringIn(draft: Unsaved, undo: readonly UndoStep[]): Promise<void> {
+    const { networkId } = draft;
+    const since = await firstValueFrom(this.api.editsSince(networkId, draft.version));
+    await this.receive(since);
+    const state = this.state();
+    if (state?.networkId !== networkId) return;
+    this.undoStack.restore(undo);
+    const arrived = new Set(since.map(({ batchId }) => batchId));
+    const own = new Set(draft.pending.map(({ batchId }) => batchId));
+    const before = since
+      .filter(({ batchId }) => own.has(batchId))
+      .reduce((document, { ops }) => mustApply(document, ops), draft.base);
+    const others = since.filter(({ batchId }) => !own.has(batchId));
+    this.layOver(
+      { ...state, conflicts: [...state.conflicts, ...draft.conflicts] },
+      { before, after: state.present, others, pending: draft.pending.filter(({ batchId }) => !arrived.has(batchId)) },
+      state.pending,
+    );
+    void this.send();
   }
 
   private async send(): Promise<void> {
@@ -101,16 +193,28 @@ export class EditQueue {
   private async sendOne(state: QueueState, batch: EditBatch): Promise<void> {
     try {
       const accepted = await firstValueFrom(this.api.edit(state.networkId, state.version, batch));
-      this.acknowledge(batch, accepted.version, accepted.solverHash);
+      if (this.isPending(state, batch)) this.acknowledge(batch, accepted.version, accepted.solverHash);
     } catch (error) {
       const stale =
         error instanceof HttpErrorResponse && error.status === 412 ? StaleVersion.safeParse(error.error) : null;
       const problem = toProblem(error);
-      if (stale?.success === true) this.moveBase(stale.data);
-      else if (problem.status >= 400 && problem.status < 500 && problem.status !== 401 && problem.status !== 429)
+      if (stale?.success === true && this.catchUp(state, stale.data)) return;
+      if (problem.status >= 400 && problem.status < 500 && ![401, 412, 429].includes(problem.status))
         this.refuse(batch, problem);
       else this.failure.set(problem);
     }
+  }
+
+  /** @returns whether the next try has another version to be made on; a database that was put back has none */
+  private catchUp(sent: QueueState, { batches }: StaleVersion): boolean {
+    this.moveBase(batches);
+    return this.state()?.version !== sent.version;
+  }
+
+  /** An event may have said it first, or the page may show another network by now. */
+  private isPending(sent: QueueState, batch: EditBatch): boolean {
+    const state = this.state();
+    return state?.networkId === sent.networkId && state.pending.some(({ batchId }) => batchId === batch.batchId);
   }
 
   private acknowledge(batch: EditBatch, version: number, solverHash: string): void {
@@ -129,45 +233,72 @@ export class EditQueue {
   }
 
   /** Others saved first: their batches go under ours, and ours are replayed on top. */
-  private moveBase({ batches, currentVersion }: StaleVersion): void {
+  private moveBase(received: readonly SavedBatch[]): void {
     const state = this.state();
-    if (state === null) return;
+    const batches = received.filter(({ version }) => version > (state?.version ?? 0));
+    const last = batches.at(-1);
+    if (state === null || last === undefined) return;
+    const pendingIds = new Set(state.pending.map(({ batchId }) => batchId));
+    const own = batches.filter(({ batchId }) => pendingIds.has(batchId));
+    const others = batches.filter(({ batchId }) => !pendingIds.has(batchId));
     const base = batches.reduce((document, { ops }) => mustApply(document, ops), state.base);
-    const own = new Set(batches.map(({ batchId }) => batchId));
-    this.replay(
-      { ...state, base, version: currentVersion },
-      state.pending.filter(({ batchId }) => !own.has(batchId)),
-      batches.at(-1)?.personName,
+    // an own batch among them was accepted on the version that it was made on, before any of the others
+    const before = own.reduce((document, { ops }) => mustApply(document, ops), state.base);
+    const saved = new Set(own.map(({ batchId }) => batchId));
+    this.layOver(
+      { ...state, base, version: last.version, solverHash: last.solverHash },
+      { before, after: base, others, pending: state.pending.filter(({ batchId }) => !saved.has(batchId)) },
+      [],
     );
+    if (others.length > 0) this.lastHeard.set(others);
   }
 
-  private refuse(batch: EditBatch, problem: Problem): void {
+  private layOver(
+    state: QueueState,
+    work: {
+      readonly before: NetworkDocument;
+      readonly after: NetworkDocument;
+      readonly others: readonly SavedBatch[];
+      readonly pending: readonly EditBatch[];
+    },
+    ahead: readonly EditBatch[],
+  ): void {
+    const touches = touchesOf(work.others, (batch) => this.authorOf(batch));
+    for (const [key, touch] of touches) this.touches.set(key, touch);
+    const others = [...new Set(work.others.map((batch) => this.authorOf(batch)))].join(', ');
+    const replayed = replayOver({ ...work, touches, others: others === '' ? 'You, since' : others });
+    this.undoStack.follow(replayed.fates, replayed.renamed);
+    const conflicts = new Map(state.conflicts.map((conflict) => [placeKey(conflict.place), conflict]));
+    for (const conflict of replayed.conflicts) {
+      const key = placeKey(conflict.place);
+      conflicts.set(key, { ...conflict, before: conflicts.get(key)?.before ?? conflict.before });
+    }
+    const { present, pending } = replayed;
+    this.state.set({ ...state, present, pending: [...ahead, ...pending], conflicts: [...conflicts.values()] });
+  }
+
+  private authorOf({ personId, personName }: SavedBatch): string {
+    return personId === this.session.person()?.id ? 'You, in another window' : personName;
+  }
+
+  private refuse(refused: EditBatch, problem: Problem): void {
     const state = this.state();
     if (state === null) return;
     const reasons = problem.errors?.map(({ detail }) => detail) ?? [problem.detail ?? problem.title];
-    this.refusals.update((refused) => [...refused, { batch, reasons }]);
-    this.replay(
-      state,
-      state.pending.filter(({ batchId }) => batchId !== batch.batchId),
-      undefined,
-    );
-  }
-
-  private replay(state: QueueState, batches: readonly EditBatch[], other: string | undefined): void {
+    const refusals: RefusedEdit[] = [{ batch: refused, reasons }];
     let present = state.base;
     const pending: EditBatch[] = [];
-    for (const batch of batches) {
+    for (const batch of state.pending.filter(({ batchId }) => batchId !== refused.batchId)) {
       const applied = applyBatch(present, batch.ops);
       if (applied.ok) {
         present = applied.document;
         pending.push(batch);
       } else {
-        const reasons = applied.errors.map(({ detail }) =>
-          other === undefined ? detail : `${other} changed it meanwhile: ${detail}`,
-        );
-        this.refusals.update((refused) => [...refused, { batch, reasons }]);
+        refusals.push({ batch, reasons: applied.errors.map(({ detail }) => detail) });
       }
     }
+    this.refusals.update((before) => [...before, ...refusals]);
+    this.undoStack.follow(new Map(refusals.map(({ batch }) => [batch.batchId, null])), new Map());
     this.state.set({ ...state, pending, present });
   }
 }

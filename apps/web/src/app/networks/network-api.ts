@@ -53,6 +53,11 @@ export class NetworkApi {
       );
   }
 
+  /** What this person has selected, for the others on the network. */
+  present(networkId: string, selected: readonly string[]): Observable<unknown> {
+    return this.http.post<unknown>(`/api/networks/${networkId}/presence`, { selected });
+  }
+
   results(networkId: string, version: number): Observable<NetworkResults> {
     return this.http
       .get<unknown>(`/api/networks/${networkId}/results`, { params: new HttpParams({ fromObject: { version } }) })

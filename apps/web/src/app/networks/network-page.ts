@@ -3,6 +3,11 @@ import { Title } from '@angular/platform-browser';
 import { RouterLink, RouterLinkActive, RouterOutlet } from '@angular/router';
 import { ProblemBanner } from '../shared/problem-banner/problem-banner';
 import { AppBar } from '../shell/app-bar';
+import { Company } from './company';
+import { CompanyStrip } from './company-strip';
+import { ConflictNotice } from './conflict-notice';
+import { DraftKeeper } from './draft-keeper';
+import { DraftOffer } from './draft-offer';
 import { EditQueue } from './edit-queue';
 import { NetworkStore } from './network-store';
 import { RefusedEdits } from './refused-edits';
@@ -20,27 +25,60 @@ const VIEWS = [
 /** The frame of one network: views, title block, and the view that the route names. */
 @Component({
   selector: 'app-network-page',
-  imports: [AppBar, ProblemBanner, RefusedEdits, RouterLink, RouterLinkActive, RouterOutlet, TitleBlock],
-  providers: [NetworkStore, EditQueue, UndoStack],
+  imports: [
+    AppBar,
+    CompanyStrip,
+    ConflictNotice,
+    DraftOffer,
+    ProblemBanner,
+    RefusedEdits,
+    RouterLink,
+    RouterLinkActive,
+    RouterOutlet,
+    TitleBlock,
+  ],
+  providers: [NetworkStore, Company, DraftKeeper, EditQueue, UndoStack],
   changeDetection: ChangeDetectionStrategy.OnPush,
-  host: { '(window:beforeunload)': 'warnBeforeLoss($event)', '(window:online)': 'saveAfterOffline()' },
+  host: {
+    '(window:beforeunload)': 'warnBeforeLoss($event)',
+    '(window:online)': 'saveAfterOffline()',
+    '(window:pagehide)': 'drafts.flush()',
+    '(document:visibilitychange)': 'drafts.flush()',
+  },
   templateUrl: './network-page.html',
   styleUrl: './network-page.scss',
 })
 export class NetworkPage {
   protected readonly store = inject(NetworkStore);
+  protected readonly drafts = inject(DraftKeeper);
+  private readonly company = inject(Company);
   private readonly title = inject(Title);
 
   readonly siteId = input.required<string>();
   readonly networkId = input.required<string>();
   readonly case = input<string>();
+  readonly element = input<string>();
 
   protected readonly views = VIEWS;
 
   constructor() {
     effect(() => {
       const networkId = this.networkId();
-      untracked(() => this.store.open(networkId));
+      untracked(() => {
+        this.drafts.open(networkId);
+        this.store.open(networkId);
+      });
+    });
+    effect(() => {
+      const networkId = this.store.network()?.id;
+      if (networkId !== undefined) untracked(() => this.company.open(networkId));
+    });
+    effect(() => {
+      const element = this.element();
+      untracked(() => this.company.select(element === undefined ? [] : [element]));
+    });
+    effect(() => {
+      if (this.company.reloadAsked() > 0) untracked(() => this.store.readOn());
     });
     effect(() => {
       this.store.wantedCaseId.set(this.case() ?? '');

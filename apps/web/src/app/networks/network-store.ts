@@ -17,9 +17,11 @@ import { catchError, EMPTY, expand, filter, map, type Observable, of, scan, swit
 import { WORST_OF_ALL, worstOfCases } from '../results/worst-of-cases';
 import { SessionStore } from '../session/session-store';
 import { toProblem } from '../shared/problem';
-import { EditQueue } from './edit-queue';
+import { choiceOfMine } from './conflict-choice';
+import type { Conflict } from './conflicts';
+import { type Added, EditQueue } from './edit-queue';
 import { NetworkApi } from './network-api';
-import { UndoStack } from './undo-stack';
+import { UndoStack, type UndoStep } from './undo-stack';
 
 type Load = { status: 'loading' } | { status: 'ready'; network: Network } | { status: 'failed'; problem: Problem };
 
@@ -59,6 +61,8 @@ export class NetworkStore {
   readonly saveProblem = this.queue.problem;
   /** Edits that could not be kept, each with its reasons. */
   readonly refusedEdits = this.queue.refused;
+  /** What two people changed at once, until the person has chosen. */
+  readonly conflicts = this.queue.conflicts;
   /** Why the last edit was refused on the spot; empty when it was taken. */
   readonly lastRefusal = this.refusal.asReadonly();
   readonly undoLabel = computed(() => this.undoStack.nextUndo()?.label ?? null);
@@ -191,7 +195,7 @@ export class NetworkStore {
     if (ops.length === 0) return true;
     const added = this.queue.add(label, ops);
     this.refusal.set(added.ok ? [] : added.reasons);
-    if (added.ok) this.undoStack.edited({ label, ops: added.inverse });
+    if (added.ok) this.undoStack.edited(inverseStep(label, added));
     return added.ok;
   }
 
@@ -199,27 +203,37 @@ export class NetworkStore {
   undo(): readonly string[] | null {
     const step = this.undoStack.nextUndo();
     if (step === null) return null;
-    const added = this.queue.add(`undo ${step.label}`.slice(0, 120), step.ops);
-    this.refusal.set(added.ok ? [] : added.reasons);
-    if (!added.ok) {
-      this.undoStack.dropUndo();
-      return null;
-    }
-    this.undoStack.undone({ label: step.label, ops: added.inverse });
-    return touchedIds(step.ops);
+    const redo = this.stepBack('undo', step);
+    if (redo === null) this.undoStack.dropUndo();
+    else this.undoStack.undone(redo);
+    return redo === null ? null : touchedIds(step.ops);
   }
 
   redo(): readonly string[] | null {
     const step = this.undoStack.nextRedo();
     if (step === null) return null;
-    const added = this.queue.add(`redo ${step.label}`.slice(0, 120), step.ops);
-    this.refusal.set(added.ok ? [] : added.reasons);
-    if (!added.ok) {
-      this.undoStack.dropRedo();
-      return null;
-    }
-    this.undoStack.redone({ label: step.label, ops: added.inverse });
-    return touchedIds(step.ops);
+    const undo = this.stepBack('redo', step);
+    if (undo === null) this.undoStack.dropRedo();
+    else this.undoStack.redone(undo);
+    return undo === null ? null : touchedIds(step.ops);
+  }
+
+  /** Gives this person's side of some conflicts and leaves the others' in the rest; what no longer fits stays open. */
+  settle(mine: readonly Conflict[], theirs: readonly Conflict[]): readonly Conflict[] {
+    const document = this.document();
+    if (document === null) return mine;
+    const { ops, settled, unfit } = choiceOfMine(document, mine);
+    const [first] = settled;
+    const label = settled.length === 1 && first !== undefined ? `own value at ${first.name}` : 'own values kept';
+    if (!this.edit(label.slice(0, 120), ops)) return mine;
+    this.queue.dropConflicts([...settled, ...theirs]);
+    return unfit;
+  }
+
+  /** Too far behind for edits one by one: read anew, unless that would cost unsaved work. */
+  readOn(): void {
+    if (this.queue.unsaved() === null) this.open(this.networkId());
+    else this.queue.readOn().catch(() => undefined);
   }
 
   retrySave(): void {
@@ -229,6 +243,24 @@ export class NetworkStore {
   dismissRefusals(): void {
     this.refusal.set([]);
     this.queue.dismissRefusals();
+  }
+
+  /** Takes one step back or forth; null when it is left out, which `lastRefusal` explains. */
+  private stepBack(word: 'undo' | 'redo', step: UndoStep): UndoStep | null {
+    const changedBy = this.queue.changedBy(step.ops, step.version);
+    const removes = step.ops.some(({ op }) => op === 'remove');
+    // a removal has nothing to compare: whoever changed the element since is asked for instead
+    const added =
+      changedBy !== undefined && removes
+        ? { ok: false as const, reasons: [] }
+        : this.queue.add(`${word} ${step.label}`.slice(0, 120), step.ops);
+    if (added.ok) {
+      this.refusal.set([]);
+      return inverseStep(step.label, added);
+    }
+    const why = changedBy === undefined ? added.reasons.join(' ') : `${changedBy} changed it meanwhile.`;
+    this.refusal.set([`“${step.label}” was left out of ${word}: ${why}`]);
+    return null;
   }
 
   /** Asks until the results of the saved version are there; the server holds each question for up to five seconds. */
@@ -248,6 +280,10 @@ function pick<S extends Load['status']>(load: Load, status: S): Extract<Load, { 
 
 function byId<T extends { id: string }>(items: readonly T[] | undefined): ReadonlyMap<string, T> {
   return new Map((items ?? []).map((item) => [item.id, item]));
+}
+
+function inverseStep(label: string, { inverse, batchId, version }: Extract<Added, { ok: true }>): UndoStep {
+  return { label, ops: inverse, batchId, version };
 }
 
 function touchedIds(ops: readonly EditOp[]): string[] {

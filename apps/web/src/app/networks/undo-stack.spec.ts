@@ -1,7 +1,7 @@
 import { describe, expect, it } from 'vitest';
 import { UndoStack, type UndoStep } from './undo-stack';
 
-const step = (label: string): UndoStep => ({ label, ops: [] });
+const step = (label: string): UndoStep => ({ label, ops: [], batchId: label, version: 1 });
 
 describe('UndoStack', () => {
   it('offers the last edit first, then what was taken back', () => {
@@ -31,5 +31,18 @@ describe('UndoStack', () => {
       held += 1;
     }
     expect(held).toBe(200);
+  });
+
+  it('follows batches that were put on top of others’', () => {
+    const stack = new UndoStack();
+    stack.edited(step('gone'));
+    stack.edited(step('split'));
+    const inverse: UndoStep['ops'] = [{ op: 'remove', in: 'nodes', id: 'T1' }];
+    const fates = new Map([
+      ['gone', null],
+      ['split', { batchId: 'new', inverse }],
+    ]);
+    stack.follow(fates, new Map());
+    expect(stack.steps()).toEqual([{ label: 'split', ops: inverse, batchId: 'new', version: 1 }]);
   });
 });

@@ -1,0 +1,106 @@
+import { computed, DestroyRef, inject, Injectable, signal } from '@angular/core';
+import type { PersonHere } from '@riseback/contracts';
+import type { Subscription } from 'rxjs';
+import { SessionStore } from '../session/session-store';
+import { nameOf } from '../shared/element-words';
+import { EditQueue } from './edit-queue';
+import { NetworkApi } from './network-api';
+import { networkEvents } from './network-events';
+
+/** Someone else who has the network open. */
+export interface Companion {
+  readonly personId: string;
+  readonly name: string;
+  /** Tags of what they have selected. */
+  readonly selected: readonly string[];
+}
+
+const TELL_AFTER_MS = 250;
+
+/** The others on the network: what they save arrives here, and who they are. In the network page's `providers`. */
+@Injectable()
+export class Company {
+  private readonly api = inject(NetworkApi);
+  private readonly queue = inject(EditQueue);
+  private readonly session = inject(SessionStore);
+
+  private readonly people = signal<readonly PersonHere[]>([]);
+  private readonly reload = signal(0);
+  private networkId = '';
+  private stream: Subscription | undefined;
+  private selected: readonly string[] = [];
+  private telling: ReturnType<typeof setTimeout> | undefined;
+
+  /** Counted up when the page is too far behind and must read the network again. */
+  readonly reloadAsked = this.reload.asReadonly();
+  readonly others = computed((): Companion[] => {
+    const own = this.session.person()?.id;
+    const document = this.queue.present();
+    return this.people()
+      .filter(({ personId }) => personId !== own)
+      .map(({ personId, name, selected }) => ({
+        personId,
+        name,
+        selected: selected.flatMap((id) => {
+          const element = document?.nodes.get(id)?.value ?? document?.pipes.get(id)?.value;
+          return element === undefined ? [] : [nameOf(element)];
+        }),
+      }));
+  });
+  /** Of others' edits as they arrive, for the polite live region. */
+  readonly said = computed(() => {
+    const own = this.session.person()?.id;
+    const heard = this.queue.heard();
+    const last = heard.at(-1);
+    if (last === undefined) return '';
+    const who = last.personId === own ? 'You, in another window,' : last.personName;
+    const more = heard.length > 1 ? `, and ${String(heard.length - 1)} more` : '';
+    return `${who} changed: ${last.label}${more}`;
+  });
+
+  constructor() {
+    inject(DestroyRef).onDestroy(() => this.leave());
+  }
+
+  /** Listens from the version that the page has just loaded. */
+  open(networkId: string): void {
+    this.leave();
+    this.networkId = networkId;
+    this.stream = networkEvents(networkId, () => this.queue.version()).subscribe((event) => {
+      switch (event.kind) {
+        case 'open':
+          this.tellSoon();
+          break;
+        case 'edit':
+          void this.queue.receive([event.batch]).catch(() => undefined);
+          break;
+        case 'people':
+          this.people.set(event.people);
+          break;
+        case 'reload':
+          this.reload.update((count) => count + 1);
+      }
+    });
+  }
+
+  /** What this person looks at, for the others. */
+  select(ids: readonly string[]): void {
+    this.selected = ids;
+    this.tellSoon();
+  }
+
+  private tellSoon(): void {
+    clearTimeout(this.telling);
+    if (this.networkId === '') return;
+    this.telling = setTimeout(() => {
+      // nobody waits for it: the next selection is told anew
+      this.api.present(this.networkId, this.selected).subscribe({ error: () => undefined });
+    }, TELL_AFTER_MS);
+  }
+
+  private leave(): void {
+    clearTimeout(this.telling);
+    this.stream?.unsubscribe();
+    this.people.set([]);
+  }
+}
