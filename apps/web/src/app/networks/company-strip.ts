@@ -39,6 +39,11 @@ import { Company } from './company';
     .said {
       margin-left: auto;
     }
+    @media (width < 720px) {
+      .said {
+        display: none;
+      }
+    }
   `,
 })
 export class CompanyStrip {

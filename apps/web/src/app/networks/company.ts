@@ -1,3 +1,4 @@
+import { HttpErrorResponse } from '@angular/common/http';
 import { computed, DestroyRef, inject, Injectable, signal } from '@angular/core';
 import type { PersonHere } from '@riseback/contracts';
 import type { Subscription } from 'rxjs';
@@ -72,7 +73,10 @@ export class Company {
           this.tellSoon();
           break;
         case 'edit':
-          void this.queue.receive([event.batch]).catch(() => undefined);
+          this.queue.receive([event.batch]).catch((error: unknown) => {
+            // what could not be fetched comes with the next edit; what does not apply means that the two sides differ
+            if (!(error instanceof HttpErrorResponse)) this.reload.update((count) => count + 1);
+          });
           break;
         case 'people':
           this.people.set(event.people);
