@@ -57,6 +57,16 @@ describe('edits', () => {
     expect(viewer.of('solve').every((event) => event.id === undefined)).toBe(true);
   });
 
+  it('come after the state of the solve, which says no more than that', async () => {
+    const viewer = await open(server.as('viewer'));
+    await viewer.until(() => viewer.of('solve').length > 0, 'the state of the solve');
+    expect(viewer.of('solve')[0]?.data).toEqual({
+      version: 1,
+      solverHash: expect.any(String) as string,
+      state: 'finished',
+    });
+  });
+
   it('of another network are not heard, nor one that was refused', async () => {
     const viewer = await open(server.as('viewer'), { since: 1 });
     const other = await makeNetwork(designer, server.siteId);

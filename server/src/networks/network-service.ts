@@ -117,7 +117,8 @@ export class NetworkService {
 
   /** The newest version and the hash of what its solve takes. */
   headOf(access: NetworkAccess): { readonly version: number; readonly solverHash: string } {
-    return this.head(access.networkId);
+    const { version, solverHash } = this.head(access.networkId);
+    return { version, solverHash };
   }
 
   editsSince(access: NetworkAccess, version: number): SavedBatch[] {
