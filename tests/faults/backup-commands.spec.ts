@@ -32,9 +32,9 @@ it('backs up while edits go on, refuses to restore under a running server, and b
   const { id } = (await (await post(`/api/sites/${siteId}/networks`, SMALL)).json()) as { id: string };
 
   let version = 1;
-  let ordering = true;
+  const ordering = new AbortController();
   const editing = (async () => {
-    while (ordering) {
+    while (!ordering.signal.aborted) {
       const answer = await post(`/api/networks/${id}/edits`, batchOf([raise(version, version - 1)]), {
         'If-Match': `"${version}"`,
       });
@@ -43,7 +43,7 @@ it('backs up while edits go on, refuses to restore under a running server, and b
     }
   })();
   const taken = await runCommand(path, 'backup', [backup]);
-  ordering = false;
+  ordering.abort();
   await editing;
   expect(taken.code, taken.output).toBe(0);
   const { contentHash: hash } = verifyBackup(backup);

@@ -112,6 +112,8 @@ export class DrawingPage {
   }
 
   private writeAddress(element: string | null): void {
+    // the person is on the way to another view: writing this one's address would call that off
+    if (this.router.currentNavigation() !== null) return;
     void this.router.navigate([], { queryParams: { element }, queryParamsHandling: 'merge', replaceUrl: true });
   }
 }

@@ -175,6 +175,8 @@ export class ListsPage {
     clearTimeout(this.addressTimer);
     if (this.current().collection === 'trapModels') return;
     this.addressTimer = setTimeout(() => {
+      // the person is on the way to another view: writing this one's address would call that off
+      if (this.router.currentNavigation() !== null) return;
       void this.router.navigate([], {
         relativeTo: this.route,
         queryParams: { element: id, list: this.current().id },
