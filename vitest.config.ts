@@ -4,6 +4,7 @@ import { defineConfig } from 'vitest/config';
 export default defineConfig({
   test: {
     include: ['libs/**/*.spec.ts', 'server/**/*.spec.ts', 'tests/{api,validation,properties,faults}/**/*.spec.ts'],
+    setupFiles: ['tests/seeded-samples.ts'],
     testTimeout: 30_000,
     hookTimeout: 60_000,
   },

@@ -75,7 +75,9 @@ test('two people see who is there, and each other’s edits and solves within a 
   await field(other, 'Load').fill('777 lb/h');
   await field(other, 'Load').press('Enter');
   await expect(field(page, 'Load')).toHaveValue('777', { timeout: WITHIN_MS });
-  await expect(page.locator('app-company-strip [role=status]')).toContainText('changed: load of', { timeout: 200 });
+  await expect(page.locator('app-company-strip [role=status]')).toContainText('changed: load of', {
+    timeout: WITHIN_MS,
+  });
   await savedAndSolved(page);
   expect(solvedBefore).not.toBeNull();
   await expectNoFindings(page);

@@ -72,12 +72,13 @@ export function replayOver({ before, after, pending, touches, others }: ReplayIn
   const renamed = renamesFor(before, after, pending);
   const batches = pending.map((batch) => ({ ...batch, ops: renameInOps(batch.ops, renamed) }));
   const aside = new Map<string, AsidePlace>();
+  const agreed = new Set<string>();
   const fates = new Map<string, BatchFate | null>();
   const kept: EditBatch[] = [];
   let mine = before;
   let present = after;
   for (const [index, batch] of batches.entries()) {
-    const split = splitBatch(batch.ops, { mine, present, touches, aside });
+    const split = splitBatch(batch.ops, { mine, present, touches, aside, agreed });
     mine = split.mine;
     present = split.present;
     const unchanged = jsonEqual(split.ops, pending[index]?.ops);
@@ -114,6 +115,8 @@ interface SplitState {
   readonly present: NetworkDocument;
   readonly touches: Touches;
   readonly aside: Map<string, AsidePlace>;
+  /** Properties that both set to the same value: what this person does to them next was not done on what the other saved. */
+  readonly agreed: Set<string>;
 }
 interface Split {
   readonly ops: EditOp[];
@@ -123,7 +126,7 @@ interface Split {
 }
 
 /** What of one batch still applies; the rest goes to `aside`, unless the other did the very same. */
-function splitBatch(given: readonly EditOp[], { mine, present, touches, aside }: SplitState): Split {
+function splitBatch(given: readonly EditOp[], { mine, present, touches, aside, agreed }: SplitState): Split {
   const own = applyBatch(mine, given);
   if (!own.ok) throw new Error(`A pending edit does not apply: ${own.errors.map(({ detail }) => detail).join('; ')}`);
   const setAside = (op: EditOp): void => {
@@ -131,9 +134,22 @@ function splitBatch(given: readonly EditOp[], { mine, present, touches, aside }:
     aside.set(placeKey(place), { place, who: touchedPlace(touches, place, present) });
   };
   const removals = removalsInDispute(given, mine, present, touches);
+  const inQuestion = (op: EditOp): boolean => {
+    if (op.op !== 'set' || op.in === 'network') return false;
+    const key = placeKey(op);
+    return agreed.has(key) || aside.has(key);
+  };
   let ops = given
-    .flatMap((op) => restated(op, present))
+    .flatMap((op) => {
+      const rest = inQuestion(op) ? [op] : restated(op, present);
+      for (const place of placesLeftToTheirs(op, rest)) agreed.add(placeKey(place));
+      return rest;
+    })
     .filter((op) => {
+      if (inQuestion(op)) {
+        setAside(op);
+        return false;
+      }
       if (op.op !== 'remove' || !removals.all.has(op)) return true;
       if (removals.named.has(op)) setAside(op);
       return false;
@@ -169,6 +185,17 @@ function restated(op: EditOp, present: NetworkDocument): EditOp[] {
   }
   const side = sideOf(present, op);
   return side.there && jsonEqual(side.value, op.to) && !jsonEqual(op.from, op.to) ? [] : [op];
+}
+
+/** The properties that an operation no longer sets since they stand as it wants them. */
+function placesLeftToTheirs(op: EditOp, rest: readonly EditOp[]): Place[] {
+  if (op.op === 'set' && op.in !== 'network') return rest.length === 0 ? [op] : [];
+  const { id } = op.op === 'add' ? op : {};
+  if (op.op !== 'add' || op.in !== 'overrides' || id === undefined || rest.includes(op)) return [];
+  const left = new Set(rest.map((one) => (one.op === 'set' ? one.key : '')));
+  return Object.keys(op.value)
+    .filter((key) => !left.has(key))
+    .map((key) => ({ in: op.in, id, key }));
 }
 
 /**
