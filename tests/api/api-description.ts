@@ -8,7 +8,7 @@ export type JsonSchema = Parameters<typeof z.fromJSONSchema>[0] & object;
 type Content = Record<string, { readonly schema: JsonSchema }>;
 
 /** The types and statuses of docs/problems.md. */
-const PROBLEMS = new Map(
+const PROBLEMS = new Map<string, number>(
   [...readFileSync('docs/problems.md', 'utf8').matchAll(/^\| `([a-z-]+)` +\| (\d{3}) /gm)].map(
     ([, type, status]) => [`/problems/${String(type)}`, Number(status)] as const,
   ),
