@@ -22,7 +22,7 @@ export function fromFile(file: NetworkFile): NetworkDocument {
   };
 }
 
-/** The file of a document: what `fromFile` took comes out equal. */
+/** The file of a document: what `fromFile` took comes out equal. Where a trap model was copied from stays behind. */
 export function toFile(document: NetworkDocument): NetworkFile {
   const overrides = overridesByCase(document);
   return {
@@ -34,7 +34,7 @@ export function toFile(document: NetworkDocument): NetworkFile {
     limits: document.limits,
     nodes: values(document.nodes),
     pipes: values(document.pipes),
-    trapModels: values(document.trapModels),
+    trapModels: values(document.trapModels).map(({ libraryId: _i, libraryVersion: _v, ...model }) => model),
     cases: values(document.cases).map((operatingCase) => ({
       ...operatingCase,
       overrides: overrides.get(operatingCase.id) ?? [],

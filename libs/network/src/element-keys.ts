@@ -4,6 +4,7 @@ import {
   CapacityPoint,
   FileCase,
   FileTrap,
+  FileTrapModel,
   Fitting,
   FlashVessel,
   Gauge,
@@ -17,7 +18,6 @@ import {
   Receiver,
   RoutePiece,
   Trap,
-  TrapModel,
 } from './network-file';
 
 /** Whether a file must give a key, may leave it out for good, or gets a default in its place. */
@@ -45,7 +45,7 @@ export const FILE_PARTS = {
   size: PipeSize,
   fitting: Fitting,
   routePiece: RoutePiece,
-  trapModel: TrapModel,
+  trapModel: FileTrapModel,
   capacityPoint: CapacityPoint,
   case: FileCase,
   override: Override,

@@ -221,7 +221,8 @@ export const CapacityPoint = z.strictObject({
   differentialPa: z.number().positive().max(2.5e7),
   flowKgS: z.number().positive().max(10_000),
 });
-export const TrapModel = z.strictObject({
+/** A trap model as a file gives it. */
+export const FileTrapModel = z.strictObject({
   id: ElementId,
   name: z.string().trim().min(1).max(120),
   orificeDiameterM: z.number().positive().max(1).optional(),
@@ -240,6 +241,23 @@ export const TrapModel = z.strictObject({
     )
     .optional(),
 });
+export type FileTrapModel = z.infer<typeof FileTrapModel>;
+
+/**
+ * The network's own copy of a trap model. A copy from the site's library says which version it is of; a file never does, since a
+ * library belongs to one site of one installation (docs/decisions/0090-library-copies.md).
+ */
+export const TrapModel = z
+  .strictObject({
+    ...FileTrapModel.shape,
+    libraryId: z.uuid().optional(),
+    libraryVersion: z.number().int().min(1).max(1e9).optional(),
+  })
+  .refine((model) => (model.libraryId === undefined) === (model.libraryVersion === undefined), {
+    ...beside,
+    path: ['libraryVersion'],
+    error: 'A copy of a library model says both which model and which version',
+  });
 export type TrapModel = z.infer<typeof TrapModel>;
 
 const overrideShape = {
@@ -322,7 +340,7 @@ export const NetworkFileShape = z.strictObject({
   limits: Limits.default({}),
   nodes: z.array(FileNode).max(MAXIMUM_ELEMENTS.nodes).default([]),
   pipes: z.array(PipeRun).max(MAXIMUM_ELEMENTS.pipes).default([]),
-  trapModels: z.array(TrapModel).max(MAXIMUM_ELEMENTS.trapModels).default([]),
+  trapModels: z.array(FileTrapModel).max(MAXIMUM_ELEMENTS.trapModels).default([]),
   cases: z.array(FileCase).max(MAXIMUM_ELEMENTS.cases).default([]),
   gauges: z.array(Gauge).max(MAXIMUM_ELEMENTS.gauges).default([]),
 });

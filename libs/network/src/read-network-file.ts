@@ -4,11 +4,11 @@ import { jsonPointer, mistakesOf, quoted, type FileMistake } from './mistakes';
 import {
   FileCase,
   FileNode,
+  FileTrapModel,
   Gauge,
   MAXIMUM_ELEMENTS,
   NetworkFileShape,
   PipeRun,
-  TrapModel,
   type NetworkFile,
   type NodeKind,
 } from './network-file';
@@ -20,7 +20,13 @@ export const MAXIMUM_MISTAKES = 100;
 export type ReadNetworkFile =
   { readonly ok: true; readonly file: NetworkFile } | { readonly ok: false; readonly errors: FileMistake[] };
 
-const ELEMENTS = { nodes: FileNode, pipes: PipeRun, trapModels: TrapModel, cases: FileCase, gauges: Gauge } as const;
+const ELEMENTS = {
+  nodes: FileNode,
+  pipes: PipeRun,
+  trapModels: FileTrapModel,
+  cases: FileCase,
+  gauges: Gauge,
+} as const;
 type FileCollection = keyof typeof ELEMENTS;
 type Elements = { [C in FileCollection]: z.infer<(typeof ELEMENTS)[C]>[] };
 

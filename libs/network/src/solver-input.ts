@@ -2,12 +2,12 @@ import { canonicalText, sortedBy } from './canonical-text';
 import { overridesByCase } from './document-file';
 import type { NetworkDocument, Placed } from './network-document';
 import type { Limits, Method, SiteConditions } from './file-settings';
-import type { NetworkNode, OperatingCase, Override, PipeRun, TrapModel } from './network-file';
+import type { FileTrapModel, NetworkNode, OperatingCase, Override, PipeRun } from './network-file';
 
 type WithoutKeys<T, K extends PropertyKey> = T extends unknown ? Omit<T, K> : never;
 type SolverNode = WithoutKeys<NetworkNode, 'tag' | 'position' | 'area' | 'note'>;
 type SolverPipe = Omit<PipeRun, 'tag' | 'bends' | 'area' | 'note'>;
-type SolverTrapModel = Omit<TrapModel, 'name'>;
+type SolverTrapModel = Omit<FileTrapModel, 'name'>;
 type SolverCase = Omit<OperatingCase, 'name'> & { readonly overrides: readonly Override[] };
 
 /** What can change a number of a solve, and nothing else. */
@@ -33,7 +33,9 @@ export function solverInput(document: NetworkDocument): SolverInput {
     limits: document.limits,
     nodes: sortedBy(values(document.nodes), 'id').map(({ tag: _t, position: _p, area: _a, note: _n, ...node }) => node),
     pipes: sortedBy(values(document.pipes), 'id').map(({ tag: _t, bends: _b, area: _a, note: _n, ...pipe }) => pipe),
-    trapModels: sortedBy(values(document.trapModels), 'id').map(({ name: _, ...model }) => model),
+    trapModels: sortedBy(values(document.trapModels), 'id').map(
+      ({ name: _n, libraryId: _i, libraryVersion: _v, ...model }) => model,
+    ),
     cases: sortedBy(values(document.cases), 'id').map(({ name: _, ...operatingCase }) => ({
       ...operatingCase,
       overrides: sortedBy(overrides.get(operatingCase.id) ?? [], 'node'),

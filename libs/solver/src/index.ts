@@ -24,4 +24,5 @@ export type {
 } from './solve-result';
 export { stallCurve, stallFraction, type StallCurve } from './stall';
 export { trapCapacityKgS } from './trap-capacity';
+export { checkTrap, type TrapUnderCheck } from './trap-checks';
 export type { WalkedResult } from './walk-of-trap';

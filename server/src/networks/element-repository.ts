@@ -70,7 +70,7 @@ export class ElementRepository {
   }
 }
 
-/** An upsert, not a delete and an insert, so that columns which are no key of the element (a trap model's library) stay. */
+/** An upsert, not a delete and an insert, so that what points at a row never sees it gone. */
 function upsert(
   db: Queries,
   table: ElementTable<unknown>,

@@ -46,7 +46,12 @@ export const ELEMENT_TABLES: { readonly [C in CollectionName]: ElementTable<Coll
     table: trapModels,
     schema: TrapModel,
     idColumns: { id: trapModels.id },
-    columns: { id: trapModels.id, name: trapModels.name },
+    columns: {
+      id: trapModels.id,
+      name: trapModels.name,
+      libraryId: trapModels.libraryId,
+      libraryVersion: trapModels.libraryVersion,
+    },
   },
   cases: {
     table: cases,
