@@ -6,7 +6,7 @@ import { editEvent, solveEvent, type NetworkStreams } from './network-streams';
 /** What the events need of the networks and their solves. */
 export interface EventSources {
   headOf(access: NetworkAccess): { readonly version: number; readonly solverHash: string };
-  editsSince(access: NetworkAccess, version: number): SavedBatch[];
+  editsSince(access: NetworkAccess, version: number): { readonly batches: SavedBatch[]; readonly more: boolean };
   solveState(networkId: string, solverHash: string): SolveEvent['state'];
 }
 
@@ -30,11 +30,13 @@ export class EventService {
     const head = this.sources.headOf(access);
     const behind = since === undefined ? 0 : head.version - since;
     // ahead of the newest version: the database was put back to an earlier state
-    const reload = behind > MOST_BEHIND || behind < 0;
-    const missed = reload || behind === 0 ? [] : this.sources.editsSince(access, head.version - behind);
+    const tooFar = behind > MOST_BEHIND || behind < 0;
+    const none = { batches: [], more: false };
+    const missed = tooFar || behind === 0 ? none : this.sources.editsSince(access, head.version - behind);
     const stream = begin();
-    if (reload) stream.send({ event: 'reload', data: { currentVersion: head.version } satisfies ReloadEvent });
-    for (const batch of missed) stream.send(editEvent(batch));
+    if (tooFar || missed.more) {
+      stream.send({ event: 'reload', data: { currentVersion: head.version } satisfies ReloadEvent });
+    } else for (const batch of missed.batches) stream.send(editEvent(batch));
     stream.send(solveEvent({ ...head, state: this.sources.solveState(access.networkId, head.solverHash) }));
     this.streams.join(access, stream, head);
   }

@@ -1,8 +1,9 @@
 import { EditOp, Limits, Method, SiteConditions, type CollectionName, type NetworkDocument } from '@riseback/network';
-import { and, asc, eq, gt, isNull, sql } from 'drizzle-orm';
+import { and, asc, eq, gt, isNull, lte, sql } from 'drizzle-orm';
 import * as z from 'zod';
 import { appendAudit, type AuditEntry } from '../platform/db/audit';
 import type { Queries } from '../platform/db/database';
+import { onFirstUse } from '../platform/db/on-first-use';
 import { cases, edits, networks, people, sites } from '../platform/db/schema';
 import { ElementRepository, type Touched } from './element-repository';
 
@@ -46,12 +47,21 @@ export interface NewNetwork {
   readonly createdAt: string;
 }
 
+/** So much of a network's history as one answer carries. */
+export interface EditPage {
+  readonly edits: (StoredEdit & { readonly personName: string })[];
+  /** Whether there are later ones. */
+  readonly more: boolean;
+}
+
 /** The networks' rows, their elements and their edits, through the connection or one transaction on it. */
 export class NetworkRepository {
   private readonly elements: ElementRepository;
+  private readonly headQuery;
 
   constructor(private readonly db: Queries) {
     this.elements = new ElementRepository(db);
+    this.headQuery = onFirstUse(() => prepareHead(db));
   }
 
   /**
@@ -69,19 +79,7 @@ export class NetworkRepository {
   }
 
   head(networkId: string): NetworkHead | undefined {
-    return this.db
-      .select({
-        id: networks.id,
-        siteId: networks.siteId,
-        siteName: sites.name,
-        name: networks.name,
-        version: networks.version,
-        solverHash: networks.solverHash,
-      })
-      .from(networks)
-      .innerJoin(sites, eq(sites.id, networks.siteId))
-      .where(eq(networks.id, networkId))
-      .get();
+    return this.headQuery().get({ networkId });
   }
 
   /** The networks of a site that are not archived, by name. */
@@ -165,17 +163,59 @@ export class NetworkRepository {
     return row === undefined ? undefined : editOf(row);
   }
 
-  /** The accepted batches after a version, oldest first, with their authors' names. */
-  editsSince(networkId: string, version: number): (StoredEdit & { readonly personName: string })[] {
+  /** The accepted batches after a version (up to another), oldest first, with their authors' names. */
+  editsSince(
+    networkId: string,
+    version: number,
+    upTo = Number.MAX_SAFE_INTEGER,
+  ): (StoredEdit & { readonly personName: string })[] {
     return this.db
       .select({ edit: edits, personName: people.name })
       .from(edits)
       .innerJoin(people, eq(people.id, edits.personId))
-      .where(and(eq(edits.networkId, networkId), gt(edits.version, version)))
+      .where(and(eq(edits.networkId, networkId), gt(edits.version, version), lte(edits.version, upTo)))
       .orderBy(asc(edits.version))
       .all()
       .map(({ edit, personName }) => ({ ...editOf(edit), personName }));
   }
+
+  /** As `editsSince`, at most so many and so large together, but one at least. */
+  editPage(networkId: string, version: number, { most, bytes }: { most: number; bytes: number }): EditPage {
+    // octet_length reads no content, so that a long history costs nothing here
+    const sizes = this.db
+      .select({ version: edits.version, bytes: sql<number>`octet_length(${edits.forward})` })
+      .from(edits)
+      .where(and(eq(edits.networkId, networkId), gt(edits.version, version)))
+      .orderBy(asc(edits.version))
+      .limit(most + 1)
+      .all();
+    let [end, room] = [0, bytes];
+    while (end < Math.min(most, sizes.length) && (end === 0 || (sizes[end]?.bytes ?? 0) <= room)) {
+      room -= sizes[end]?.bytes ?? 0;
+      end += 1;
+    }
+    const last = sizes[end - 1];
+    return {
+      edits: last === undefined ? [] : this.editsSince(networkId, version, last.version),
+      more: end < sizes.length,
+    };
+  }
+}
+
+function prepareHead(db: Queries) {
+  return db
+    .select({
+      id: networks.id,
+      siteId: networks.siteId,
+      siteName: sites.name,
+      name: networks.name,
+      version: networks.version,
+      solverHash: networks.solverHash,
+    })
+    .from(networks)
+    .innerJoin(sites, eq(sites.id, networks.siteId))
+    .where(eq(networks.id, sql.placeholder('networkId')))
+    .prepare();
 }
 
 function settingsRow(document: NetworkDocument) {

@@ -41,8 +41,8 @@ export function networkRoutes(service: NetworkService): Route[] {
       permission: 'view',
       answers: { 200: Network },
       handler: ({ access, res }) => {
-        const network = service.get(access) satisfies Network;
-        res.set('ETag', versionETag(network.version)).json(network);
+        const { version, json } = service.text(access);
+        res.set('ETag', versionETag(version)).type('json').send(json);
       },
     }),
     networkRoute({
@@ -61,12 +61,18 @@ export function networkRoutes(service: NetworkService): Route[] {
     networkRoute({
       method: 'get',
       path: '/api/networks/:networkId/edits',
-      summary: 'The batches accepted after a version, oldest first',
+      summary:
+        'The batches accepted after a version, oldest first, 500 at most; while there are more, Link names the next',
       permission: 'view',
       query: SinceQuery,
       answers: { 200: z.array(SavedBatch) },
       handler: ({ access, query, res }) => {
-        res.json(service.editsSince(access, query.since) satisfies SavedBatch[]);
+        const { batches, more } = service.editsSince(access, query.since);
+        const last = batches.at(-1);
+        if (more && last !== undefined) {
+          res.links({ next: `/api/networks/${access.networkId}/edits?since=${String(last.version)}` });
+        }
+        res.json(batches satisfies SavedBatch[]);
       },
     }),
     networkRoute({

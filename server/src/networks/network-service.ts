@@ -21,6 +21,7 @@ import {
 import type { NetworkAccess, SiteAccess } from '../platform/auth/access';
 import { badRequest, conflict, notFound, staleVersion, unprocessable } from '../platform/problem';
 import { creationOps } from './creation-ops';
+import { DocumentCache } from './document-cache';
 import { solverHashOf } from './network-hashes';
 import { touchedBy, type NetworkHead, type NetworkRepository, type StoredEdit } from './network-repository';
 import { toStoredDocument } from './stored-document';
@@ -40,11 +41,11 @@ export interface NetworkAnnouncer {
   edited(networkId: string, batch: SavedBatch): void;
 }
 
-/** Documents kept in memory, so that an edit does not read a whole network again. */
-const CACHED_DOCUMENTS = 16;
+/** What one answer tells of a network's history: whoever is further behind asks again from there. */
+export const EDIT_PAGE = { most: 500, bytes: 4 * 1024 * 1024 } as const;
 
 export class NetworkService {
-  private readonly documents = new Map<string, { readonly version: number; readonly document: NetworkDocument }>();
+  private readonly documents = new DocumentCache();
 
   constructor(
     private readonly networks: NetworkRepository,
@@ -102,13 +103,17 @@ export class NetworkService {
         details: { name: document.name },
       });
     });
-    this.remember(id, 1, document);
+    this.documents.remember(id, 1, document);
     this.solves.changed({ networkId: id, solverHash, document });
     return id;
   }
 
-  get(access: NetworkAccess): Network {
-    return this.networkOf(access, access.networkId);
+  /** The JSON text of a `Network`. */
+  text(access: NetworkAccess): { readonly version: number; readonly json: string } {
+    const head = this.head(access.networkId);
+    const around = { ...head, role: access.role, permissions: [...access.permissions] };
+    const start = JSON.stringify(around satisfies Omit<Network, 'document'>);
+    return { version: head.version, json: `${start.slice(0, -1)},"document":${this.documentText(head)}}` };
   }
 
   file(access: NetworkAccess): NetworkFile {
@@ -121,13 +126,15 @@ export class NetworkService {
     return { version, solverHash };
   }
 
-  editsSince(access: NetworkAccess, version: number): SavedBatch[] {
+  /** What was saved after a version, oldest first; `more`: there are later ones, to be asked for from the last of these. */
+  editsSince(access: NetworkAccess, version: number): { readonly batches: SavedBatch[]; readonly more: boolean } {
     return savedBatches(this.networks, access.networkId, version);
   }
 
   /**
-   * The network as it stood after a version (by default the newest), with the hash of what its solve takes.
-   * @throws ProblemError 404 where it never had this version
+   * The network as it stood after a version (by default the newest), with the hash of what its solve takes. `document` is worked out when
+   * it is asked for, which most never do: the results of a hash are stored.
+   * @throws ProblemError 404 where it never had this version; from `document` 422 where it is too long ago
    */
   atVersion(
     access: NetworkAccess,
@@ -140,14 +147,21 @@ export class NetworkService {
   } {
     const { networkId } = access;
     const head = this.head(networkId);
-    const document = this.documentOf(this.networks, head);
+    const present = () => this.documentOf(this.networks, head);
     if (version === undefined || version === head.version) {
-      return { networkId, version: head.version, solverHash: head.solverHash, document };
+      return lazily({ networkId, version: head.version, solverHash: head.solverHash }, present);
     }
     const edit = this.networks.edit(networkId, version);
     if (edit === undefined) throw notFound(`The network has no version ${version}; its newest is ${head.version}.`);
-    const later = this.networks.editsSince(networkId, version);
-    return { networkId, version, solverHash: edit.solverHash, document: undone(document, later) };
+    return lazily({ networkId, version, solverHash: edit.solverHash }, () => {
+      const { edits, more } = this.networks.editPage(networkId, version, EDIT_PAGE);
+      if (more) {
+        throw unprocessable(
+          `Version ${version} is too long ago (the newest is ${head.version}) to be worked out once more; ask for a newer one.`,
+        );
+      }
+      return undone(present(), edits);
+    });
   }
 
   /**
@@ -162,7 +176,7 @@ export class NetworkService {
     );
     if (changed !== undefined) {
       const { document, saved } = changed;
-      this.remember(networkId, answer.version, document);
+      this.documents.remember(networkId, answer.version, document);
       this.announcer.edited(networkId, saved);
       this.solves.changed({ networkId, solverHash: answer.solverHash, document });
     }
@@ -236,19 +250,17 @@ export class NetworkService {
   }
 
   private documentOf(networks: NetworkRepository, { id, version }: NetworkHead): NetworkDocument {
-    const cached = this.documents.get(id);
-    if (cached?.version === version) return cached.document;
+    const cached = this.documents.find(id, version);
+    if (cached !== undefined) return cached;
     const document = networks.document(id);
     if (document === undefined) throw new Error(`network ${id} has a version but no document`);
-    this.remember(id, version, document);
+    this.documents.remember(id, version, document);
     return document;
   }
 
-  private remember(networkId: string, version: number, document: NetworkDocument): void {
-    this.documents.delete(networkId);
-    this.documents.set(networkId, { version, document });
-    const [oldest] = this.documents.keys();
-    if (this.documents.size > CACHED_DOCUMENTS && oldest !== undefined) this.documents.delete(oldest);
+  private documentText(head: NetworkHead): string {
+    const document = this.documentOf(this.networks, head);
+    return this.documents.text(head.id, head.version) ?? JSON.stringify(toStoredDocument(document));
   }
 }
 
@@ -282,7 +294,11 @@ function firstAnswer(known: StoredEdit, access: NetworkAccess, batch: EditBatch)
 function stale(networks: NetworkRepository, head: NetworkHead, onVersion: number): Error {
   return staleVersion(
     `The network is at version ${head.version}, the change was made on version ${onVersion}: apply the batches since, then send it again.`,
-    { currentVersion: head.version, batches: savedBatches(networks, head.id, onVersion) } satisfies StaleVersion,
+    // of many the first: they bring the sender on, and the next try is told of the rest
+    {
+      currentVersion: head.version,
+      batches: savedBatches(networks, head.id, onVersion).batches,
+    } satisfies StaleVersion,
   );
 }
 
@@ -302,8 +318,16 @@ function requirePermissions(access: NetworkAccess, batch: EditBatch): void {
   if (batch.ops.some((op) => op.in !== 'gauges')) access.require('draw');
 }
 
-function savedBatches(networks: NetworkRepository, networkId: string, since: number): SavedBatch[] {
-  return networks.editsSince(networkId, since).map(savedBatch);
+function savedBatches(networks: NetworkRepository, networkId: string, since: number) {
+  const { edits, more } = networks.editPage(networkId, since, EDIT_PAGE);
+  return { batches: edits.map(savedBatch), more };
+}
+
+function lazily<T extends object>(
+  known: T,
+  document: () => NetworkDocument,
+): T & { readonly document: NetworkDocument } {
+  return Object.defineProperty(known, 'document', { get: document }) as T & { readonly document: NetworkDocument };
 }
 
 function savedBatch(edit: StoredEdit & { readonly personName: string }): SavedBatch {

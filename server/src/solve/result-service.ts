@@ -1,8 +1,10 @@
 import type { NetworkResults, SolveResult } from '@riseback/contracts';
 import { readNetworkFile } from '@riseback/network';
 import type { NetworkAccess, PersonAccess } from '../platform/auth/access';
+import type { ReadyJson } from '../platform/http/ready-json';
 import { badRequest, ProblemError } from '../platform/problem';
 import { solveFailed, type LiveSolves, type VersionedInput } from './live-solves';
+import { ResultTexts } from './result-texts';
 import { caseIdsOf } from './solve-cases';
 import type { SolvePort } from './solve-port';
 
@@ -21,7 +23,11 @@ export interface ResultServiceOptions {
 
 const WAIT_MS = 5_000;
 
+export type Unfinished = Exclude<NetworkResults, { state: 'finished' }>;
+
 export class ResultService {
+  private readonly texts = new ResultTexts();
+
   constructor(
     private readonly networks: VersionedNetworks,
     private readonly live: LiveSolves,
@@ -29,23 +35,16 @@ export class ResultService {
     private readonly options: ResultServiceOptions,
   ) {}
 
-  /** The results of a version (by default the newest) in all its cases. */
-  async results(access: NetworkAccess, asked: number | undefined): Promise<NetworkResults> {
-    const { version, ...input } = this.networks.atVersion(access, asked);
+  /** The results of a version (by default the newest) in all its cases; finished ones as text that lies ready. */
+  async results(access: NetworkAccess, asked: number | undefined): Promise<Unfinished | ReadyJson> {
+    const input = this.networks.atVersion(access, asked);
+    const { version, solverHash } = input;
     const stored = await this.live.results(input, this.options.waitMs ?? WAIT_MS);
     if (stored === undefined) return { state: 'waiting', version };
     if (stored.state === 'failed') return { state: 'failed', version, problem: stored.problem };
-    const { finishedAt, solveMs, outcomes } = stored;
+    const { finishedAt, solveMs } = stored;
     const { engineVersion } = this.options;
-    return {
-      state: 'finished',
-      version,
-      solverHash: input.solverHash,
-      engineVersion,
-      finishedAt,
-      solveMs,
-      cases: outcomes,
-    };
+    return this.texts.of({ state: 'finished', version, solverHash, engineVersion, finishedAt, solveMs }, stored);
   }
 
   /**

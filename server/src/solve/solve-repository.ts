@@ -1,7 +1,8 @@
-import { CaseOutcome, Problem } from '@riseback/contracts';
-import { and, asc, desc, eq, inArray } from 'drizzle-orm';
+import { Problem, type CaseOutcome } from '@riseback/contracts';
+import { and, asc, desc, eq, inArray, sql } from 'drizzle-orm';
 import * as z from 'zod';
 import type { Queries } from '../platform/db/database';
+import { onFirstUse } from '../platform/db/on-first-use';
 import { solveResults, solves } from '../platform/db/schema';
 
 /** How many traps of a case fail or need watching, by the worst check of each; absent counts mean a refused or unsolved case. */
@@ -24,9 +25,11 @@ export interface SolveInput {
 export type StoredSolve =
   | {
       readonly state: 'finished';
+      readonly id: string;
       readonly finishedAt: string;
       readonly solveMs: number;
-      readonly outcomes: CaseOutcome[];
+      /** Reads the outcomes of the cases: the JSON text of a list of `CaseOutcome`, as it was stored. */
+      readonly casesText: () => string;
     }
   | { readonly state: 'failed'; readonly finishedAt: string; readonly problem: Problem };
 
@@ -40,21 +43,20 @@ export interface EndedSolve extends SolveInput {
 export const KEPT_SOLVES = 20;
 
 export class SolveRepository {
-  constructor(private readonly db: Queries) {}
+  private readonly rowQuery;
+
+  constructor(private readonly db: Queries) {
+    this.rowQuery = onFirstUse(() => prepareRow(db));
+  }
 
   find(input: SolveInput): StoredSolve | undefined {
     const row = this.row(input);
     if (row === undefined) return undefined;
     const { finishedAt } = row;
     if (row.state === 'failed') return { state: 'failed', finishedAt, problem: Problem.parse(row.problem) };
-    const outcomes = this.db
-      .select({ result: solveResults.result })
-      .from(solveResults)
-      .where(eq(solveResults.solveId, row.id))
-      .orderBy(asc(solveResults.ordinal))
-      .all()
-      .map(({ result }) => CaseOutcome.parse(result));
-    return { state: 'finished', finishedAt, solveMs: SolveOverview.parse(row.summary).solveMs, outcomes };
+    const { id } = row;
+    const { solveMs } = SolveOverview.parse(row.summary);
+    return { state: 'finished', id, finishedAt, solveMs, casesText: () => this.casesText(id) };
   }
 
   /** The state and the verdicts alone, without the results. */
@@ -87,7 +89,19 @@ export class SolveRepository {
   }
 
   private row(input: SolveInput) {
-    return this.db.select().from(solves).where(isInput(input)).get();
+    const { networkId, solverHash, engineVersion } = input;
+    return this.rowQuery().get({ networkId, solverHash, engineVersion });
+  }
+
+  private casesText(solveId: string): string {
+    const texts = this.db
+      .select({ text: sql<string>`${solveResults.result}` })
+      .from(solveResults)
+      .where(eq(solveResults.solveId, solveId))
+      .orderBy(asc(solveResults.ordinal))
+      .all()
+      .map(({ text }) => text);
+    return `[${texts.join(',')}]`;
   }
 
   private replace(row: typeof solves.$inferInsert): void {
@@ -113,10 +127,11 @@ export class SolveRepository {
   }
 }
 
-function isInput({ networkId, solverHash, engineVersion }: SolveInput) {
-  return and(
-    eq(solves.networkId, networkId),
-    eq(solves.solverHash, solverHash),
-    eq(solves.engineVersion, engineVersion),
+function prepareRow(db: Queries) {
+  const isInput = and(
+    eq(solves.networkId, sql.placeholder('networkId')),
+    eq(solves.solverHash, sql.placeholder('solverHash')),
+    eq(solves.engineVersion, sql.placeholder('engineVersion')),
   );
+  return db.select().from(solves).where(isInput).prepare();
 }

@@ -1,5 +1,6 @@
 import { NetworkResults, SolveResult } from '@riseback/contracts';
 import * as z from 'zod';
+import { sendReadyJson } from '../platform/http/ready-json';
 import { NETWORK_FILE_LIMIT_BYTES, networkRoute, signedInRoute, type Route } from '../platform/routes/route-table';
 import type { ResultService } from './result-service';
 
@@ -29,9 +30,10 @@ export function solveRoutes(service: ResultService): Route[] {
       permission: 'view',
       query: VersionQuery,
       answers: { 200: NetworkResults, 202: NetworkResults },
-      handler: async ({ access, query, res }) => {
-        const results = (await service.results(access, query.version)) satisfies NetworkResults;
-        res.status(results.state === 'waiting' ? 202 : 200).json(results);
+      handler: async ({ access, query, req, res }) => {
+        const results = await service.results(access, query.version);
+        if ('json' in results) sendReadyJson(req, res, results);
+        else res.status(results.state === 'waiting' ? 202 : 200).json(results satisfies NetworkResults);
       },
     }),
   ];

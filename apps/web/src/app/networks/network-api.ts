@@ -2,7 +2,7 @@ import { HttpClient, HttpParams } from '@angular/common/http';
 import { inject, Injectable } from '@angular/core';
 import { EditAccepted, Network, NetworkResults, NetworkSummary, SavedBatch } from '@riseback/contracts';
 import type { EditBatch, NetworkFile } from '@riseback/network';
-import { map, type Observable, retry, throwError, timer } from 'rxjs';
+import { EMPTY, expand, map, type Observable, reduce, retry, throwError, timer } from 'rxjs';
 import { isTransient } from '../shared/problem';
 
 @Injectable({ providedIn: 'root' })
@@ -44,13 +44,15 @@ export class NetworkApi {
       );
   }
 
+  /** All that was saved after a version, however many answers the server tells it in. */
   editsSince(networkId: string, version: number): Observable<SavedBatch[]> {
-    return this.http
-      .get<unknown>(`/api/networks/${networkId}/edits`, { params: new HttpParams({ fromObject: { since: version } }) })
-      .pipe(
-        retryTransient(),
-        map((body) => SavedBatch.array().parse(body)),
-      );
+    return this.editPage(networkId, version).pipe(
+      expand(({ batches, more }) => {
+        const last = batches.at(-1);
+        return more && last !== undefined ? this.editPage(networkId, last.version) : EMPTY;
+      }),
+      reduce((all: SavedBatch[], { batches }) => [...all, ...batches], []),
+    );
   }
 
   /** What this person has selected, for the others on the network. */
@@ -65,6 +67,15 @@ export class NetworkApi {
         retryTransient(),
         map((body) => NetworkResults.parse(body)),
       );
+  }
+
+  /** Of a long history the server tells the first part, and in the header Link that there is more. */
+  private editPage(networkId: string, version: number): Observable<{ batches: SavedBatch[]; more: boolean }> {
+    const params = new HttpParams({ fromObject: { since: version } });
+    return this.http.get<unknown>(`/api/networks/${networkId}/edits`, { params, observe: 'response' }).pipe(
+      retryTransient(),
+      map(({ body, headers }) => ({ batches: SavedBatch.array().parse(body), more: headers.has('Link') })),
+    );
   }
 }
 
