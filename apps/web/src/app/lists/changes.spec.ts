@@ -51,6 +51,10 @@ describe('deleting rows', () => {
     expect(applyBatch(document, deletion.ops).ok).toBe(true);
   });
 
+  it('does not count a gauge as going along with itself', () => {
+    expect(deletionOf(document, list('gauges'), ['G1'])).toMatchObject({ title: 'Delete gauge G1?', along: [] });
+  });
+
   it('tells of traps that lose their model', () => {
     const { along, ops } = deletionOf(document, list('trap-models'), ['M1']);
     expect(along).toEqual(['1 trap then has no model: TR-2']);
@@ -68,6 +72,8 @@ describe('a new element', () => {
     ['pumpedInlet', { elevationM: 1, flowKgS: 1, temperatureK: 350 }],
     ['pipe', { from: 'TR-10', to: 'J1', lengthM: 5, nps: '1', schedule: '80' }],
     ['trapModel', { name: 'Pell F20', orificeDiameterM: 0.006 }],
+    ['gauge', { tag: 'PI-2', place: 'TR-10', elevationM: 2, rangeLowPa: 0, rangeHighPa: 7e5, accuracy: 0.01 }],
+    ['gauge', { place: 'cr-1', distanceM: 3, elevationM: 2 }],
   ])('%s is taken by the reducer with %o', (kind, values) => {
     const form = newElementForm(kind, document);
     expect(form.judge(values)).toBe('');

@@ -30,7 +30,7 @@ export function deletionOf(
         'pipes',
       ),
       ...counted(going.overrides.length, 'setting of an operating case', 'settings of operating cases'),
-      ...counted(going.gauges.length, 'gauge', 'gauges'),
+      ...counted(collection === 'gauges' ? 0 : going.gauges.length, 'gauge', 'gauges'),
       ...(collection === 'trapModels' ? forgetting(document, gone) : []),
     ],
     label: `delete ${what}`,

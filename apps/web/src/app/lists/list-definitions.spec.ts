@@ -6,7 +6,11 @@ import { trialContext, trialDocument } from './testing/trial-document';
 /** Not for a table: what names the element, and where it lies on the drawing. */
 const ELSEWHERE = new Set(['id', 'kind', 'position', 'bends']);
 /** The key's own column has another name where two keys share a cell or one key fills two. */
-const COLUMNS_OF: Readonly<Record<string, readonly string[]>> = { size: ['nps', 'schedule'] };
+const COLUMNS_OF: Readonly<Record<string, readonly string[]>> = {
+  size: ['nps', 'schedule'],
+  node: ['place'],
+  pipe: ['place', 'distanceM'],
+};
 
 describe('the lists', () => {
   it.each<[ListId, FilePart]>([
@@ -16,6 +20,7 @@ describe('the lists', () => {
     ['vessels', 'receiver'],
     ['vessels', 'flashVessel'],
     ['pumped-inlets', 'pumpedInlet'],
+    ['gauges', 'gauge'],
     ['trap-models', 'trapModel'],
   ])('%s: every key of a %s that is not of the drawing can be edited', (id, part) => {
     const columns = ELEMENT_LISTS.find((list) => list.id === id)?.table(trialContext()).columns ?? [];
@@ -30,7 +35,7 @@ describe('the lists', () => {
 
   it('hold every element once', () => {
     const document = trialDocument();
-    expect(ELEMENT_LISTS.map(({ count }) => count(document))).toEqual([2, 2, 1, 2, 1, 1]);
+    expect(ELEMENT_LISTS.map(({ count }) => count(document))).toEqual([2, 2, 1, 2, 1, 1, 1]);
     for (const id of document.nodes.keys()) {
       expect(ELEMENT_LISTS.filter(({ holds }) => holds(document, id))).toHaveLength(1);
     }

@@ -1,5 +1,7 @@
+import type { Permission } from '@riseback/contracts';
 import {
   type FlashVessel,
+  type Gauge,
   inOrder,
   type Junction,
   type NetworkDocument,
@@ -9,19 +11,20 @@ import {
   type TrapModel,
 } from '@riseback/network';
 import type { Column, ListContext, ListedElement } from './columns/column';
+import { GAUGE_COLUMNS } from './columns/gauge-columns';
 import { JUNCTION_COLUMNS, PUMPED_INLET_COLUMNS, VESSEL_COLUMNS, type Vessel } from './columns/node-columns';
 import { PIPE_COLUMNS } from './columns/pipe-columns';
 import { isTrap, TRAP_COLUMNS } from './columns/trap-columns';
 import { TRAP_MODEL_COLUMNS } from './columns/trap-model-columns';
 import { type ListTable, tabulate } from './list-table';
 
-export const LIST_IDS = ['traps', 'pipes', 'junctions', 'vessels', 'pumped-inlets', 'trap-models'] as const;
+export const LIST_IDS = ['traps', 'pipes', 'junctions', 'vessels', 'pumped-inlets', 'gauges', 'trap-models'] as const;
 export type ListId = (typeof LIST_IDS)[number];
 
-export type ListedCollection = 'nodes' | 'pipes' | 'trapModels';
+export type ListedCollection = 'nodes' | 'pipes' | 'trapModels' | 'gauges';
 
 /** What can be added from a list's own button. */
-export type NewKind = NetworkNode['kind'] | 'pipe' | 'trapModel';
+export type NewKind = NetworkNode['kind'] | 'pipe' | 'trapModel' | 'gauge';
 
 export interface ListFacts {
   readonly id: ListId;
@@ -31,6 +34,8 @@ export interface ListFacts {
   readonly one: string;
   readonly many: string;
   readonly collection: ListedCollection;
+  /** What a role must be allowed to change here. */
+  readonly permission: Permission;
   readonly additions: readonly { readonly kind: NewKind; readonly word: string }[];
 }
 
@@ -50,6 +55,7 @@ export const ELEMENT_LISTS: readonly ElementList[] = [
       one: 'trap',
       many: 'traps',
       collection: 'nodes',
+      permission: 'draw',
       additions: [{ kind: 'trap', word: 'Add a trap' }],
     },
     (document) => nodes(document).filter(isTrap),
@@ -63,6 +69,7 @@ export const ELEMENT_LISTS: readonly ElementList[] = [
       one: 'pipe',
       many: 'pipes',
       collection: 'pipes',
+      permission: 'draw',
       additions: [{ kind: 'pipe', word: 'Add a pipe' }],
     },
     (document): PipeRun[] => inOrder(document.pipes).map(([, { value }]) => value),
@@ -76,6 +83,7 @@ export const ELEMENT_LISTS: readonly ElementList[] = [
       one: 'junction',
       many: 'junctions',
       collection: 'nodes',
+      permission: 'draw',
       additions: [{ kind: 'junction', word: 'Add a junction' }],
     },
     (document) => nodes(document).filter((node): node is Junction => node.kind === 'junction'),
@@ -89,6 +97,7 @@ export const ELEMENT_LISTS: readonly ElementList[] = [
       one: 'vessel',
       many: 'vessels',
       collection: 'nodes',
+      permission: 'draw',
       additions: [
         { kind: 'receiver', word: 'Add a receiver' },
         { kind: 'flashVessel', word: 'Add a flash vessel' },
@@ -105,10 +114,25 @@ export const ELEMENT_LISTS: readonly ElementList[] = [
       one: 'pumped inlet',
       many: 'pumped inlets',
       collection: 'nodes',
+      permission: 'draw',
       additions: [{ kind: 'pumpedInlet', word: 'Add a pumped inlet' }],
     },
     (document) => nodes(document).filter((node): node is PumpedInlet => node.kind === 'pumpedInlet'),
     PUMPED_INLET_COLUMNS,
+  ),
+  elementList(
+    {
+      id: 'gauges',
+      word: 'Gauges',
+      head: 'Gauge',
+      one: 'gauge',
+      many: 'gauges',
+      collection: 'gauges',
+      permission: 'readings',
+      additions: [{ kind: 'gauge', word: 'Add a gauge' }],
+    },
+    (document): Gauge[] => inOrder(document.gauges).map(([, { value }]) => value),
+    GAUGE_COLUMNS,
   ),
   elementList(
     {
@@ -118,6 +142,7 @@ export const ELEMENT_LISTS: readonly ElementList[] = [
       one: 'trap model',
       many: 'trap models',
       collection: 'trapModels',
+      permission: 'draw',
       additions: [{ kind: 'trapModel', word: 'Add a trap model' }],
     },
     (document): TrapModel[] => inOrder(document.trapModels).map(([, { value }]) => value),
@@ -136,6 +161,11 @@ function elementList<E extends ListedElement>(
     holds: (document, elementId) => elements(document).some(({ id }) => id === elementId),
     table: (context) => tabulate(columns, elements(context.document), context),
   };
+}
+
+/** Ids of nodes and pipes stand in the address and lead to the drawing; those of gauges and models are numbered apart. */
+export function isDrawn({ collection }: ListFacts): boolean {
+  return collection === 'nodes' || collection === 'pipes';
 }
 
 function nodes(document: NetworkDocument): NetworkNode[] {

@@ -2,7 +2,8 @@ import { applyBatch, type EditOp, type NetworkDocument } from '@riseback/network
 import { describe, expect, it } from 'vitest';
 import { arrangeRows, nextSorting } from './arrange-rows';
 import { ELEMENT_LISTS, type ListId } from './list-definitions';
-import type { CellEditor, ListTable } from './list-table';
+import type { CellEditor } from './cell-editor';
+import type { ListTable } from './list-table';
 import { trialContext, trialDocument } from './testing/trial-document';
 
 const document = trialDocument();
@@ -75,6 +76,12 @@ describe('typed cells', () => {
     expect(reasonFor('traps', 'T1', 'subcoolingK', '600')).toBe('Subcooling must be at most 540 °F.');
   });
 
+  it('take a date only as year, month and day', () => {
+    expect(opsOf('gauges', 'G1', 'calibratedOn', '2026-3-1')).toMatchObject([{ to: '2026-03-01' }]);
+    for (const text of ['3/1/2026', '2026-02-30', '1 March'])
+      expect(reasonFor('gauges', 'G1', 'calibratedOn', text)).toContain('is not a date');
+  });
+
   it('find the ends of a pipe by tag or id', () => {
     expect(opsOf('pipes', 'L1', 'from', 'tr-10')).toMatchObject([{ key: 'from', from: 'T1', to: 'T2' }]);
     expect(opsOf('pipes', 'L1', 'to', 'R1')).toMatchObject([{ key: 'to', to: 'R1' }]);
@@ -83,6 +90,14 @@ describe('typed cells', () => {
 });
 
 describe('keys that exclude each other change in one batch', () => {
+  it('a gauge between an element and a pipe', () => {
+    const onPipe = after(opsOf('gauges', 'G1', 'place', 'cr-2')).gauges.get('G1')?.value;
+    expect(onPipe).toMatchObject({ pipe: 'L2', distanceM: 0 });
+    expect(onPipe).not.toHaveProperty('node');
+    expect(reasonFor('gauges', 'G1', 'distanceM', '3 ft')).toContain('Put it on a pipe first');
+    expect(reasonFor('gauges', 'G1', 'place', 'XX')).toContain('Nothing in this network is called XX');
+  });
+
   it('a receiver between its pressure and its vent', () => {
     const closed = after(opsOf('vessels', 'R1', 'pressurePa', '5 psig')).nodes.get('R1')?.value;
     expect(closed).not.toHaveProperty('vented');

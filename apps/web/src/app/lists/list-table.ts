@@ -1,26 +1,8 @@
 import type { TrapResult } from '@riseback/contracts';
-import { applyBatch, type EditOp, jsonEqual } from '@riseback/network';
-import {
-  displayUnit,
-  type DisplayUnits,
-  formatForEditing,
-  formatQuantity,
-  parseQuantity,
-  type QuantityKind,
-  unitsAccepted,
-} from '@riseback/units';
+import { displayUnit, type DisplayUnits, formatQuantity } from '@riseback/units';
 import type { Status } from '../shared/status-mark/status-mark';
-import type {
-  Choice,
-  Column,
-  ColumnEditor,
-  ColumnGroup,
-  DialogName,
-  ListContext,
-  ListedElement,
-  Proposal,
-  Waiting,
-} from './columns/column';
+import { type CellEditor, cellEditor } from './cell-editor';
+import type { Column, ColumnGroup, ListContext, ListedElement, Waiting } from './columns/column';
 
 /** A column as the grid sees it. */
 export interface TableColumn {
@@ -48,33 +30,6 @@ export interface CellView {
   /** Said in full when the cell is the active one. */
   readonly sentences: readonly string[];
 }
-
-/** An editor bound to one cell. `propose` judges a text without changing anything. */
-export type CellEditor =
-  | {
-      readonly by: 'quantity';
-      readonly initial: string;
-      readonly optional: boolean;
-      readonly units: readonly string[];
-      readonly propose: (text: string) => Proposal;
-      /** How the text is understood; '' while it is not. */
-      readonly echo: (text: string) => string;
-    }
-  | {
-      readonly by: 'text';
-      readonly initial: string;
-      readonly optional: boolean;
-      readonly maxLength: number;
-      readonly suggestions: readonly string[];
-      readonly propose: (text: string) => Proposal;
-    }
-  | {
-      readonly by: 'choice';
-      readonly choices: readonly Choice[];
-      readonly chosen: string;
-      readonly propose: (value: string) => Proposal;
-    }
-  | { readonly by: 'dialog'; readonly dialog: DialogName };
 
 /** Rows and columns of one list at one moment. The elements' own types stay inside. */
 export interface ListTable {
@@ -111,7 +66,8 @@ export function tabulate<E extends ListedElement>(
       at(
         id,
         key,
-        ({ editor, title }, element) => (editor === undefined ? null : bound(editor, title, key, element, context)),
+        ({ editor, title, quantity }, element) =>
+          editor === undefined ? null : cellEditor(editor, { title, key, quantity }, element, context),
         null,
       ),
     sortValue: (id, key) => at(id, key, (column, element) => column.value(element, context), undefined),
@@ -179,115 +135,6 @@ function printed<E>(column: Column<E>, element: E, context: ListContext): string
   if (value === undefined) return '';
   if (typeof value === 'string') return value;
   return column.quantity === undefined ? String(value) : formatQuantity(value, column.quantity, context.units);
-}
-
-function bound<E extends ListedElement>(
-  editor: ColumnEditor<E>,
-  title: string,
-  key: string,
-  element: E,
-  context: ListContext,
-): CellEditor {
-  const empty = (): Proposal => ({ ok: false, reason: `${title} cannot be empty.` });
-  switch (editor.by) {
-    case 'dialog':
-      return editor;
-    case 'choice':
-      return {
-        by: 'choice',
-        choices: editor.choices(element, context),
-        chosen: editor.chosen(element, context),
-        propose: (value) => tried(editor.propose(value, element, context), title, key, undefined, context),
-      };
-    case 'text': {
-      const initial = textOf(element, key, context);
-      return {
-        by: 'text',
-        initial,
-        optional: editor.optional,
-        maxLength: editor.maxLength,
-        suggestions: editor.suggestions?.(context) ?? [],
-        propose: (text) => {
-          const typed = text.trim();
-          if (typed === '' && !editor.optional) return empty();
-          return tried(
-            editor.propose(typed === '' ? undefined : typed, element, context),
-            title,
-            key,
-            undefined,
-            context,
-          );
-        },
-      };
-    }
-    case 'quantity': {
-      const { quantity, optional } = editor;
-      const si = editor.si(element, context);
-      const initial = si === undefined ? '' : formatForEditing(si, quantity, context.units);
-      return {
-        by: 'quantity',
-        initial,
-        optional,
-        units: unitsAccepted(quantity).slice(0, 4),
-        propose: (text) => {
-          const typed = text.trim();
-          // what was not touched is not rounded
-          if (typed === initial) return { ok: true, ops: [] };
-          if (typed === '') {
-            return optional
-              ? tried(editor.propose(undefined, element, context), title, key, quantity, context)
-              : empty();
-          }
-          const parsed = parseQuantity(typed, quantity, context.units);
-          return parsed.ok ? tried(editor.propose(parsed.si, element, context), title, key, quantity, context) : parsed;
-        },
-        echo: (text) => {
-          const parsed = text.trim() === '' ? undefined : parseQuantity(text, quantity, context.units);
-          return parsed?.ok === true ? parsed.echo : '';
-        },
-      };
-    }
-  }
-}
-
-/** The reducer's own judgement before the edit is made, so that a refusal stands at the cell; ops that change nothing fall away. */
-function tried(
-  proposal: Proposal,
-  title: string,
-  key: string,
-  quantity: QuantityKind | undefined,
-  { document, units }: ListContext,
-): Proposal {
-  if (!proposal.ok) return proposal;
-  const ops = proposal.ops.filter(changesSomething);
-  const applied = applyBatch(document, ops);
-  if (applied.ok) return { ok: true, ops };
-  const reasons = applied.errors.map(({ detail }) => inWords(detail, title, key, quantity, units));
-  return { ok: false, reason: reasons.join(' ') };
-}
-
-function changesSomething(op: EditOp): boolean {
-  return op.op !== 'set' || !jsonEqual(op.from, op.to);
-}
-
-/** "subcoolingK must be at most 300" as the column's title with the bound in the person's unit. */
-function inWords(
-  detail: string,
-  title: string,
-  key: string,
-  quantity: QuantityKind | undefined,
-  units: DisplayUnits,
-): string {
-  const named = detail.replace(new RegExp(`^${key}\\b`), title);
-  if (quantity === undefined || named === detail) return `${named}.`;
-  return `${named.replace(/(?<= )-?\d[\d.e+]*$/, (si) => formatQuantity(Number(si), quantity, units, { withUnit: true }))}.`;
-}
-
-/** What a text cell holds while it is edited: a pipe's ends by tag, everything else as stored. */
-function textOf(element: ListedElement, key: string, { document }: ListContext): string {
-  const value = new Map<string, unknown>(Object.entries(element)).get(key);
-  if (typeof value !== 'string') return '';
-  return key === 'from' || key === 'to' ? (document.nodes.get(value)?.value.tag ?? value) : value;
 }
 
 function nameOf(element: ListedElement | undefined, id: string): string {

@@ -26,9 +26,10 @@ import type { DialogName } from './columns/column';
 import { deletionOf } from './deletion';
 import { CellDialogs } from './dialogs/cell-dialogs';
 import { DeleteDialog, type DeleteDialogData } from '../shared/delete-dialog/delete-dialog';
-import { type CellEdit, ListGrid } from './grid/list-grid';
+import type { CellEdit } from './grid/cell-editing';
+import { ListGrid } from './grid/list-grid';
 import { listContext } from './list-context';
-import { ELEMENT_LISTS, type ElementList, type NewKind } from './list-definitions';
+import { ELEMENT_LISTS, type ElementList, isDrawn, type NewKind } from './list-definitions';
 import { newElementForm } from './new-element';
 
 /** How long the active row must stand before the address names it. */
@@ -106,6 +107,7 @@ export class ListsPage {
       return backPressureLimit(result, trap, model, context.units)?.pressurePa;
     };
   });
+  protected readonly mayEdit = computed(() => this.store.may(this.current().permission));
   protected readonly hasMinor = computed(() => this.table()?.columns.some(({ minor }) => minor) ?? false);
   protected readonly emptyWords = computed(() =>
     this.filter().trim() === ''
@@ -173,7 +175,7 @@ export class ListsPage {
   /** The address names the active row, so that the other views open at the same element and the link can be passed on. */
   protected nameInAddress(id: string): void {
     clearTimeout(this.addressTimer);
-    if (this.current().collection === 'trapModels') return;
+    if (!isDrawn(this.current())) return;
     this.addressTimer = setTimeout(() => {
       // the person is on the way to another view: writing this one's address would call that off
       if (this.router.currentNavigation() !== null) return;
@@ -210,7 +212,7 @@ export class ListsPage {
   private listOf(element: string | undefined): ElementList | undefined {
     const document = this.store.document();
     if (element === undefined || document === null) return undefined;
-    return ELEMENT_LISTS.find(({ collection, holds }) => collection !== 'trapModels' && holds(document, element));
+    return ELEMENT_LISTS.find((list) => isDrawn(list) && list.holds(document, element));
   }
 }
 

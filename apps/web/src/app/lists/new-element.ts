@@ -8,7 +8,9 @@ import {
   type PipeRun,
   type Position,
 } from '@riseback/network';
-import { GRID, nearestFreePoint, nextTag } from '../drawing/model/placement';
+import { nextTag } from '../shared/next-tag';
+import { GRID, nearestFreePoint } from '../shared/placement';
+import { findPlace, gaugePlaces } from './columns/gauge-columns';
 import { findNode, nodeName } from './columns/pipe-columns';
 import { type Field, type FieldValues, numberOf, optionalText, textOf } from './dialogs/field';
 import type { NewKind } from './list-definitions';
@@ -23,7 +25,7 @@ export interface NewElementForm {
   readonly make: (values: FieldValues) => { readonly label: string; readonly op: AddOp; readonly id: string };
 }
 
-type NodeKind = Exclude<NewKind, 'pipe' | 'trapModel'>;
+type NodeKind = Exclude<NewKind, 'pipe' | 'trapModel' | 'gauge'>;
 
 const NODE_PARTS: Readonly<Record<NodeKind, { prefix: string; word: string; fields: readonly Field[] }>> = {
   trap: {
@@ -59,6 +61,7 @@ const NODE_PARTS: Readonly<Record<NodeKind, { prefix: string; word: string; fiel
 
 export function newElementForm(kind: NewKind, document: NetworkDocument): NewElementForm {
   if (kind === 'pipe') return newPipeForm(document);
+  if (kind === 'gauge') return newGaugeForm(document);
   return kind === 'trapModel' ? newTrapModelForm(document) : newNodeForm(kind, document);
 }
 
@@ -188,6 +191,66 @@ function newTrapModelForm(document: NetworkDocument): NewElementForm {
       };
     },
   };
+}
+
+function newGaugeForm(document: NetworkDocument): NewElementForm {
+  const onPipe = (values: FieldValues): boolean => 'pipe' in (placeFrom(values, document) ?? {});
+  return {
+    title: 'Add a gauge',
+    note: 'Its own height counts: with a water leg the column of water between tap and gauge is part of what it reads.',
+    fields: [
+      { key: 'tag', title: 'Tag', by: 'text', maxLength: 64, optional: true },
+      { key: 'place', title: 'On', by: 'text', maxLength: 64, suggestions: gaugePlaces(document) },
+      { key: 'distanceM', title: 'From the pipe’s start', by: 'quantity', quantity: 'length', when: onPipe },
+      { key: 'elevationM', title: 'Elevation of the gauge', by: 'quantity', quantity: 'length' },
+      { key: 'rangeLowPa', title: 'Range from', by: 'quantity', quantity: 'gaugePressure', optional: true },
+      { key: 'rangeHighPa', title: 'Range to', by: 'quantity', quantity: 'gaugePressure', optional: true },
+      { key: 'accuracy', title: 'Accuracy, of span', by: 'quantity', quantity: 'fraction', optional: true },
+    ],
+    values: { tag: nextGaugeTag(document) },
+    judge: (values) =>
+      placeFrom(values, document) === undefined
+        ? `Nothing in this network is called ${textOf(values, 'place')}.`
+        : rangeEndsAboveStart(values),
+    make: (values) => {
+      const id = newElementId(document, 'G');
+      const place = placeFrom(values, document) ?? {};
+      const numbers = ['rangeLowPa', 'rangeHighPa', 'accuracy'].filter((key) => typeof values[key] === 'number');
+      return {
+        id,
+        label: `add gauge ${nameFrom(values, id)}`,
+        op: {
+          op: 'add',
+          in: 'gauges',
+          ordinal: nextOrdinal(document, 'gauges'),
+          value: {
+            id,
+            ...optionalText(values, 'tag'),
+            ...place,
+            ...('pipe' in place ? { distanceM: numberOf(values, 'distanceM') } : {}),
+            elevationM: numberOf(values, 'elevationM'),
+            ...Object.fromEntries(numbers.map((key) => [key, numberOf(values, key)])),
+          },
+        },
+      };
+    },
+  };
+}
+
+function placeFrom(values: FieldValues, document: NetworkDocument): ReturnType<typeof findPlace> {
+  const place = values['place'];
+  return typeof place === 'string' ? findPlace(place, document) : undefined;
+}
+
+function rangeEndsAboveStart({ rangeLowPa, rangeHighPa }: FieldValues): string {
+  return typeof rangeLowPa === 'number' && typeof rangeHighPa === 'number' && rangeHighPa <= rangeLowPa
+    ? 'A gauge’s range ends above its start.'
+    : '';
+}
+
+function nextGaugeTag(document: NetworkDocument): string {
+  const tags = inOrder(document.gauges).flatMap(([, { value }]) => value.tag ?? []);
+  return nextTag('gauge', tags, new Set(tags));
 }
 
 function nameFrom(values: FieldValues, id: string): string {

@@ -1,6 +1,6 @@
 import { inOrder, type NetworkDocument, type NetworkNode, type NodeKind, type PipeRun } from '@riseback/network';
 import { nameOf } from '../../shared/element-words';
-import { nextTag } from '../model/placement';
+import { nextTag } from '../../shared/next-tag';
 
 /** What a new element's fields are filled with, and where from: nothing is assumed silently. */
 export interface DraftDefaults {

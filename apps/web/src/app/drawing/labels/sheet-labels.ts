@@ -3,7 +3,7 @@ import { type DisplayUnits, formatQuantity, type QuantityKind } from '@riseback/
 import { sizeWords } from '../model/accessible-name';
 import { nameOf } from '../../shared/element-words';
 import type { Concern, NodeView, PipeView, Side } from '../model/element-views';
-import { longestPiece, middle, pieces } from '../model/geometry';
+import { longestPiece, middle, pieces } from '../../shared/geometry';
 import type { AreaOutline } from '../sheet/area-outlines';
 import { symbolScale } from '../model/viewport';
 import type { Box, LabelRequest } from './label-placement';

@@ -6,7 +6,7 @@ import {
   type PipeRun,
   type Position,
 } from '@riseback/network';
-import { type Axis, pointAt, rightAngled } from './geometry';
+import { type Axis, pointAt, rightAngled } from '../../shared/geometry';
 
 /** A node with its place on the sheet. */
 export interface DrawnNode {

@@ -4,7 +4,7 @@ import type { DisplayUnits } from '@riseback/units';
 import { nodeName, pipeName } from './accessible-name';
 import { classOf, type ColourClass, type ColourScale, type Stretch, stretches } from './colour-scale';
 import type { DrawnNetwork, DrawnNode, DrawnPipe } from './drawn-network';
-import { cutLine, lineLength, longestPiece, pointAt, type PointOnLine } from './geometry';
+import { cutLine, lineLength, longestPiece, pointAt, type PointOnLine } from '../../shared/geometry';
 
 export type Side = 'up' | 'down' | 'left' | 'right';
 export type Concern = Exclude<Verdict, 'pass'>;

@@ -5,7 +5,7 @@ import { DrawingState, IDLE } from '../drawing-state';
 import { KIND_WORDS } from '../../shared/element-words';
 import { FIELD } from '../model/sheet-zones';
 import { placeOf } from '../model/navigation';
-import { GRID, nearestFreePoint, snapPoint } from '../model/placement';
+import { GRID, nearestFreePoint, snapPoint } from '../../shared/placement';
 
 /** How far from the focused element a new one is put, before it looks for free room. */
 const BESIDE = 6 * GRID;

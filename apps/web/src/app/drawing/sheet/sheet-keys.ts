@@ -17,7 +17,7 @@ import {
   trapAbove,
   upstreamOf,
 } from '../model/navigation';
-import { GRID } from '../model/placement';
+import { GRID } from '../../shared/placement';
 import { DeletePrompt } from './delete-prompt';
 import { NodePlacing } from './node-placing';
 

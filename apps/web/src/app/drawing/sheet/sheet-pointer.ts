@@ -6,7 +6,7 @@ import { DrawingScene } from '../drawing-scene';
 import { DrawingState, IDLE } from '../drawing-state';
 import { movableBends, shiftBend, shiftNodes } from '../model/displacement';
 import { NOTHING_DISPLACED } from '../model/drawn-network';
-import { snapPoint } from '../model/placement';
+import { snapPoint } from '../../shared/placement';
 import { toSheet, type Viewport } from '../model/viewport';
 import { NodePlacing } from './node-placing';
 import { SheetKeys } from './sheet-keys';

@@ -2,7 +2,7 @@ import { ChangeDetectionStrategy, Component, computed, input } from '@angular/co
 import type { Position } from '@riseback/network';
 import { shownBends } from '../model/drawn-network';
 import type { PipeView } from '../model/element-views';
-import { cutLine } from '../model/geometry';
+import { cutLine } from '../../shared/geometry';
 import { linePath } from '../model/line-path';
 
 /** Room between a pipe and what frames it, drawing units. */

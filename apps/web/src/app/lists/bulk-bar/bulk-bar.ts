@@ -1,6 +1,6 @@
 import { ChangeDetectionStrategy, Component, computed, input, linkedSignal, output, signal } from '@angular/core';
 import { MatButton } from '@angular/material/button';
-import type { CellEdit } from '../grid/list-grid';
+import type { CellEdit } from '../grid/cell-editing';
 import type { ListTable } from '../list-table';
 import { bulkProposal, namesOf } from './bulk-edit';
 

@@ -1,9 +1,9 @@
 import type { NodeResult, PipeResult, TrapResult } from '@riseback/contracts';
-import type { EditOp, NetworkDocument, NetworkNode, PipeRun, TrapModel } from '@riseback/network';
+import type { EditOp, Gauge, NetworkDocument, NetworkNode, PipeRun, TrapModel } from '@riseback/network';
 import type { DisplayUnits, QuantityKind } from '@riseback/units';
 import type { RowFinding } from '../row-findings';
 
-export type ListedElement = NetworkNode | PipeRun | TrapModel;
+export type ListedElement = NetworkNode | PipeRun | TrapModel | Gauge;
 
 /** In a few words for the table, and in a sentence for who asks. */
 export interface Waiting {
@@ -53,6 +53,8 @@ export type ColumnEditor<E> =
       readonly by: 'text';
       readonly optional: boolean;
       readonly maxLength: number;
+      /** What the cell holds while it is edited, where that is not the element's own key. */
+      readonly initial?: (element: E, context: ListContext) => string;
       /** Texts to offer while typing. */
       readonly suggestions?: (context: ListContext) => readonly string[];
       readonly propose: (text: string | undefined, element: E, context: ListContext) => Proposal;
@@ -64,6 +66,12 @@ export type ColumnEditor<E> =
       readonly propose: (value: string, element: E, context: ListContext) => Proposal;
     }
   | { readonly by: 'dialog'; readonly dialog: DialogName };
+
+/** How a cell stands in a spreadsheet where its print would not read back. */
+export interface SheetForm<E> {
+  readonly write: (element: E, context: ListContext) => string | undefined;
+  readonly read: (text: string, element: E, context: ListContext) => Proposal;
+}
 
 export const COLUMN_GROUPS = ['element', 'inputs', 'result'] as const;
 export type ColumnGroup = (typeof COLUMN_GROUPS)[number];
@@ -90,4 +98,5 @@ export interface Column<E> {
   /** Set off from typed inputs: worked out from something else. */
   readonly derived?: (element: E) => boolean;
   readonly editor?: ColumnEditor<E>;
+  readonly sheet?: SheetForm<E>;
 }

@@ -139,6 +139,7 @@ function endColumn(key: 'from' | 'to', title: string): Column<PipeRun> {
       by: 'text',
       optional: false,
       maxLength: 64,
+      initial: (pipe, { document }) => nodeName(pipe[key], document),
       suggestions: ({ document }) => inOrder(document.nodes).map(([id]) => nodeName(id, document)),
       propose: (text, { id }, { document }) => {
         const node = text === undefined ? undefined : findNode(text, document);
@@ -277,8 +278,12 @@ function routeWords({ route }: PipeRun, { units }: ListContext): string {
 /** An element by its tag, else by its id; a tag that two share names the first. */
 export function findNode(text: string, document: NetworkDocument): string | undefined {
   const wanted = text.trim().toLowerCase();
-  for (const [id, { value }] of inOrder(document.nodes)) if (value.tag?.toLowerCase() === wanted) return id;
-  return [...document.nodes.keys()].find((id) => id.toLowerCase() === wanted);
+  let first: { readonly id: string; readonly ordinal: number } | undefined;
+  for (const [id, { ordinal, value }] of document.nodes) {
+    if (value.tag?.toLowerCase() === wanted && (first === undefined || ordinal < first.ordinal))
+      first = { id, ordinal };
+  }
+  return first?.id ?? [...document.nodes.keys()].find((id) => id.toLowerCase() === wanted);
 }
 
 export function nodeName(id: string, document: NetworkDocument): string {

@@ -15,7 +15,7 @@ import { firstValueFrom, type Observable } from 'rxjs';
 import type { DialogName } from '../columns/column';
 import { riseM } from '../columns/pipe-columns';
 import { CONTROL_WORDS } from '../columns/trap-words';
-import type { CellEdit } from '../grid/list-grid';
+import type { CellEdit } from '../grid/cell-editing';
 import { type Field, type FieldValues, numberOf, textOf } from './field';
 import { FieldsDialog, type FieldsDialogData } from './fields-dialog';
 import { RowsDialog, type RowsDialogData } from './rows-dialog';

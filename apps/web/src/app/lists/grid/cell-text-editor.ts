@@ -11,7 +11,7 @@ import {
   viewChild,
 } from '@angular/core';
 import type { Proposal } from '../columns/column';
-import type { CellEditor } from '../list-table';
+import type { CellEditor } from '../cell-editor';
 import type { RefusedText } from './cell-drafts';
 import { StatusMark } from '../../shared/status-mark/status-mark';
 

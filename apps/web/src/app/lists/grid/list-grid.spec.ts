@@ -6,7 +6,8 @@ import { applyBatch, type NetworkDocument } from '@riseback/network';
 import { beforeEach, describe, expect, it } from 'vitest';
 import { ELEMENT_LISTS } from '../list-definitions';
 import { trialContext, trialDocument } from '../testing/trial-document';
-import { type CellEdit, ListGrid } from './list-grid';
+import type { CellEdit } from './cell-editing';
+import { ListGrid } from './list-grid';
 
 @Component({
   imports: [ListGrid],

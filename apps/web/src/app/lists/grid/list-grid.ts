@@ -19,7 +19,6 @@ import {
   untracked,
   viewChild,
 } from '@angular/core';
-import type { EditOp } from '@riseback/network';
 import { displayUnit, type DisplayUnits, formatQuantity } from '@riseback/units';
 import { Staff } from '../../results/staff/staff';
 import { StatusMark } from '../../shared/status-mark/status-mark';
@@ -27,24 +26,12 @@ import type { Sorting } from '../arrange-rows';
 import type { DialogName } from '../columns/column';
 import type { CellView, ListTable, TableColumn } from '../list-table';
 import { CellChoiceEditor } from './cell-choice-editor';
-import { CellDrafts, type RefusedText } from './cell-drafts';
+import { type CellEdit, CellEditing } from './cell-editing';
 import { type CellPosition, cellAfterKey, HEAD_ROW } from './cell-navigation';
-import { type AcceptedText, type AfterEdit, CellTextEditor } from './cell-text-editor';
+import { type AfterEdit, CellTextEditor } from './cell-text-editor';
 import { pressedCell, ROW_HEIGHT_PX, rowsInSight, showCell } from './grid-region';
 import { GridState } from './grid-state';
 import { extendRows, NO_ROWS, type RowSelection, toggleAllRows, toggleRow } from './row-selection';
-
-interface Editing {
-  readonly id: string;
-  readonly key: string;
-  readonly start: string;
-  readonly selectAll: boolean;
-}
-
-export interface CellEdit {
-  readonly label: string;
-  readonly ops: readonly EditOp[];
-}
 
 let gridCount = 0;
 
@@ -106,9 +93,19 @@ export class ListGrid {
     { originX: 'end', originY: 'top', overlayX: 'end', overlayY: 'bottom', offsetY: -4 },
   ];
   protected readonly state = new GridState(this);
-  protected readonly editing = signal<Editing | null>(null);
+  protected readonly editing = new CellEditing({
+    table: this.table,
+    mayEdit: this.mayEdit,
+    activeId: this.state.activeId,
+    activeCell: this.state.activeCell,
+    edited: (edit) => this.edited.emit(edit),
+    dialogWanted: (asked) => this.dialogWanted.emit(asked),
+    told: (words) => this.told.emit(words),
+    left: (then) => this.moveAfterEdit(then),
+    // at once, so that the next key typed already falls into the box
+    opened: () => this.changeDetector.detectChanges(),
+  });
   protected readonly focused = signal(false);
-  private readonly drafts = new CellDrafts();
 
   protected readonly activeCellId = computed(() => {
     const { row, column } = this.state.active();
@@ -161,21 +158,6 @@ export class ListGrid {
     return this.table().cell(id, column.key);
   }
 
-  protected draft(id: string, column: TableColumn): RefusedText | undefined {
-    return this.drafts.of({ id, key: column.key });
-  }
-
-  protected editorOf(id: string, column: TableColumn) {
-    const editing = this.editing();
-    if (editing?.id !== id || editing.key !== column.key) return null;
-    const editor = this.table().editor(id, column.key);
-    return editor === null || editor.by === 'dialog' ? null : { ...editing, editor };
-  }
-
-  protected cellLabel(id: string, column: TableColumn): string {
-    return `${column.title} of ${this.table().nameOf(id)}`;
-  }
-
   protected sortDirection(column: TableColumn): Sorting['direction'] | null {
     const sorting = this.state.sorting();
     return sorting?.key === column.key ? sorting.direction : null;
@@ -206,61 +188,16 @@ export class ListGrid {
     else if (cell === undefined || id === undefined) return;
     else if (cell.kind === 'tick') this.tick(id, event.shiftKey);
     else if (cell.column.face === 'drawingLink') this.drawingWanted.emit(id);
-    else if (again) this.startEditing(null);
+    else if (again) this.editing.start(null);
   }
 
   protected onKey(event: KeyboardEvent): void {
-    if (this.editing() !== null || event.altKey || event.isComposing) return;
+    if (this.editing.open() !== null || event.altKey || event.isComposing) return;
     const ctrl = event.ctrlKey || event.metaKey;
     if (this.moveByKey(event, ctrl) || this.actByKey(event, ctrl)) {
       event.preventDefault();
       event.stopPropagation();
     }
-  }
-
-  protected acceptText({ proposal, then }: AcceptedText): void {
-    const editing = this.editing();
-    if (editing === null) return;
-    this.editing.set(null);
-    this.drafts.drop(editing);
-    this.emitEdit(editing, proposal.ops);
-    this.moveAfterEdit(then);
-  }
-
-  protected cancelEditing(): void {
-    const editing = this.editing();
-    this.editing.set(null);
-    if (editing !== null) this.drafts.drop(editing);
-    this.focus();
-  }
-
-  protected keepDraft(refused: RefusedText): void {
-    const editing = this.editing();
-    if (editing === null) return;
-    this.editing.set(null);
-    this.drafts.keep(editing, refused);
-  }
-
-  protected pick(value: string): void {
-    const editing = this.editing();
-    const editor = editing === null ? null : this.table().editor(editing.id, editing.key);
-    if (editing === null || editor?.by !== 'choice') return;
-    const proposal = editor.propose(value);
-    if (proposal.ok) {
-      this.drafts.drop(editing);
-      this.emitEdit(editing, proposal.ops);
-    } else {
-      this.keepDraft({
-        text: editor.choices.find((choice) => choice.value === value)?.word ?? value,
-        reason: proposal.reason,
-      });
-      this.told.emit(proposal.reason);
-    }
-  }
-
-  protected endPicking(): void {
-    this.editing.set(null);
-    this.focus();
   }
 
   protected tickAll(): void {
@@ -293,8 +230,8 @@ export class ListGrid {
     if (!this.mayEdit()) return false;
     if (key === ' ') return this.tick(id, event.shiftKey);
     if (ctrl) return key.toLowerCase() === 'a' && this.selectAllRows();
-    if (key === 'Delete' || key === 'Backspace') return this.emptyCell(id);
-    return key.length === 1 && this.startEditing(key);
+    if (key === 'Delete' || key === 'Backspace') return this.editing.empty();
+    return key.length === 1 && this.editing.start(key);
   }
 
   private pressHead(): boolean {
@@ -311,14 +248,12 @@ export class ListGrid {
       this.drawingWanted.emit(id);
       return true;
     }
-    return this.startEditing(null);
+    return this.editing.start(null);
   }
 
   private escape(id: string): boolean {
-    const cell = this.state.activeCell();
-    if (cell?.kind === 'column' && this.draft(id, cell.column) !== undefined)
-      this.drafts.drop({ id, key: cell.column.key });
-    else if (this.state.selection().ids.size > 0) this.clearSelection();
+    if (this.editing.dropDraft(id)) return true;
+    if (this.state.selection().ids.size > 0) this.clearSelection();
     else return false;
     return true;
   }
@@ -344,57 +279,11 @@ export class ListGrid {
     this.told.emit(count === 0 ? 'No rows selected' : `${String(count)} ${count === 1 ? 'row' : 'rows'} selected`);
   }
 
-  /** @param firstKey what the person typed on the closed cell, which begins a new text; null keeps the old one */
-  private startEditing(firstKey: string | null): boolean {
-    const cell = this.state.activeCell();
-    const id = this.state.activeId();
-    if (id === null || cell?.kind !== 'column') return false;
-    const { key } = cell.column;
-    const editor = this.mayEdit() ? this.table().editor(id, key) : null;
-    if (editor === null) {
-      if (firstKey === null) this.told.emit(`${this.cellLabel(id, cell.column)} cannot be changed here`);
-      return firstKey === null;
-    }
-    if (editor.by === 'dialog') {
-      if (firstKey === null) this.dialogWanted.emit({ id, dialog: editor.dialog });
-      return firstKey === null;
-    }
-    const initial = editor.by === 'choice' ? '' : editor.initial;
-    this.editing.set({
-      id,
-      key,
-      start: firstKey ?? this.draft(id, cell.column)?.text ?? initial,
-      selectAll: firstKey === null,
-    });
-    // at once, so that the next key typed already falls into the box
-    this.changeDetector.detectChanges();
-    return true;
-  }
-
-  private emptyCell(id: string): boolean {
-    const cell = this.state.activeCell();
-    if (cell?.kind !== 'column') return false;
-    const { key } = cell.column;
-    const editor = this.table().editor(id, key);
-    if (editor === null || editor.by === 'dialog' || editor.by === 'choice') return false;
-    const proposal = editor.propose('');
-    if (proposal.ok) this.emitEdit({ id, key }, proposal.ops);
-    else this.told.emit(proposal.reason);
-    return true;
-  }
-
-  private emitEdit({ id, key }: Pick<Editing, 'id' | 'key'>, ops: readonly EditOp[]): void {
-    const column = this.table().columns.find((each) => each.key === key);
-    if (column === undefined || ops.length === 0) return;
-    this.edited.emit({ label: `set ${column.title.toLowerCase()} of ${this.table().nameOf(id)}`, ops });
-  }
-
   private moveAfterEdit(then: AfterEdit): void {
-    if (then === 'stay') return;
     const { row, column } = this.state.active();
     const down = then === 'down' ? 1 : then === 'up' ? -1 : 0;
     const right = then === 'right' ? 1 : then === 'left' ? -1 : 0;
-    this.moveTo({ row: Math.max(0, row + down), column: column + right });
+    if (down !== 0 || right !== 0) this.moveTo({ row: Math.max(0, row + down), column: column + right });
     this.focus();
   }
 

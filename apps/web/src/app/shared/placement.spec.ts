@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest';
-import { GRID, nearestFreePoint, nextTag, snapPoint } from './placement';
+import { GRID, nearestFreePoint, snapPoint } from './placement';
 
 describe('nearestFreePoint', () => {
   it('takes the place itself, on the grid, where it is free', () => {
@@ -31,23 +31,5 @@ describe('nearestFreePoint', () => {
 
   it('snaps both ways', () => {
     expect(snapPoint({ x: 29, y: -31 })).toEqual({ x: 20, y: -40 });
-  });
-});
-
-describe('nextTag', () => {
-  it('counts up the last tag, keeping its letters and width', () => {
-    expect(nextTag('trap', ['TR-008', 'TR-009'], new Set(['TR-008', 'TR-009']))).toBe('TR-010');
-    expect(nextTag('trap', ['RT-1', 'DL75-3'], new Set(['RT-1', 'DL75-3']))).toBe('DL75-4');
-  });
-
-  it('passes over tags that something else has', () => {
-    expect(nextTag('pipe', ['CR-1'], new Set(['CR-1', 'CR-2', 'CR-3']))).toBe('CR-4');
-  });
-
-  it('starts each kind somewhere, but leaves junctions nameless until one has a tag', () => {
-    expect(nextTag('trap', [], new Set())).toBe('TR-101');
-    expect(nextTag('receiver', ['North'], new Set(['North']))).toBe('R-1');
-    expect(nextTag('junction', [], new Set())).toBe('');
-    expect(nextTag('junction', ['H7'], new Set(['H7']))).toBe('H8');
   });
 });
