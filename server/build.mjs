@@ -109,6 +109,7 @@ async function buildServer(outdir) {
     entryPoints: {
       main: 'server/src/main.ts',
       'solve-worker': 'server/workers/solve-worker.ts',
+      'hash-worker': 'server/workers/hash-worker.ts',
       'seal-copy-worker': 'server/workers/seal-copy-worker.ts',
     },
     outdir,

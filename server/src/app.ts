@@ -11,12 +11,18 @@ import { NetworkRepository } from './networks/network-repository';
 import { networkRoutes } from './networks/network-routes';
 import { NetworkService } from './networks/network-service';
 import { accountRoutes } from './people/account-routes';
+import { IdentityCheck } from './people/identity-check';
 import { OwnAccountService } from './people/own-account-service';
+import { OwnSecurityService } from './people/own-security-service';
 import { PeopleRepository } from './people/people-repository';
+import { securityRoutes } from './people/security-routes';
 import { SignInService } from './people/sign-in-service';
 import { AccessRules, type NetworkAccess } from './platform/auth/access';
 import { MembershipRepository } from './platform/auth/membership-repository';
-import { Passwords } from './platform/auth/passwords';
+import { OneTimeCodes } from './platform/auth/one-time-codes';
+import { OneTimeRepository } from './platform/auth/one-time-repository';
+import { SecretSeal } from './platform/auth/one-time-secret';
+import { Passwords, type Hasher } from './platform/auth/passwords';
 import { SessionGate } from './platform/auth/session-gate';
 import { SessionRepository } from './platform/auth/session-repository';
 import { SessionTokens } from './platform/auth/session-token';
@@ -56,6 +62,8 @@ export interface AppParts {
   readonly newId: () => string;
   readonly now: () => Date;
   readonly solver: SolvePort;
+  /** Absent = passwords are hashed in this thread. */
+  readonly hasher?: Hasher;
   /** The browser build; undefined while developing, when the pages come from their own server. */
   readonly webFolder: string | undefined;
   /** Sees every request first; counts, for one. */
@@ -81,8 +89,13 @@ export function buildApp(parts: AppParts): App {
   const sessions = new Sessions(new SessionRepository(db), tokens, newId, now);
   const gate = new SessionGate(sessions, tokens, config.origin, now);
   const people = new PeopleRepository(db);
-  const signIn = new SignInService(people, new Passwords(), new SignInGuard(now), sessions, now);
-  const account = new OwnAccountService(people, sessions);
+  const passwords = new Passwords(parts.hasher);
+  const guard = new SignInGuard(now);
+  const codes = new OneTimeCodes(new OneTimeRepository(db), new SecretSeal(config.sessionSecret), guard, now);
+  const signIn = new SignInService(people, passwords, codes, guard, sessions, now);
+  const account = new OwnAccountService(people, sessions, now);
+  const identity = new IdentityCheck(people, passwords, codes, guard, now);
+  const security = new OwnSecurityService(people, passwords, codes, identity, sessions, now);
   const auditLog = new AuditService(new AuditRepository(db));
   const sites = new SiteService(new SiteRepository(db));
   const report = (error: unknown) => log.error({ err: error }, 'solve failed');
@@ -116,6 +129,7 @@ export function buildApp(parts: AppParts): App {
     ...healthRoutes(readiness),
     openApiRoute(() => routes),
     ...accountRoutes(signIn, account, gate),
+    ...securityRoutes(security, gate),
     ...siteRoutes(sites),
     ...auditRoutes(auditLog),
     ...networkRoutes(networks),

@@ -8,7 +8,8 @@ import { DEMO_PASSWORD, DEMO_PEOPLE } from '../demo/demo-people';
 import { seedDemo } from '../demo/seed-demo';
 import { buildApp } from './app';
 import { PeopleRepository } from './people/people-repository';
-import { Passwords } from './platform/auth/passwords';
+import { PasswordThreads } from './platform/auth/password-threads';
+import { HASHES_AT_ONCE, Passwords } from './platform/auth/passwords';
 import { keepBackups } from './platform/backup/keep-backups';
 import { ConfigError, readConfig, type Config } from './platform/config';
 import { openDatabase, UnusableDatabaseError } from './platform/db/database';
@@ -41,14 +42,18 @@ async function start(): Promise<void> {
   const metrics = new Metrics(config.databasePath);
   const thread = new SolveThread({ report: (error) => log.error({ err: error }, 'solver') });
   const solver = metrics.timed(thread);
+  const hasher = new PasswordThreads({
+    count: HASHES_AT_ONCE,
+    report: (error) => log.error({ err: error }, 'hashing'),
+  });
   const now = () => new Date();
   const observe = metrics.requestTimer();
-  const app = buildApp({ db, config, log, newId: randomUUID, now, solver, webFolder: builtPages(), observe });
+  const app = buildApp({ db, config, log, newId: randomUUID, now, solver, hasher, webFolder: builtPages(), observe });
   const people = new PeopleRepository(db);
   if (config.production) {
     refuseDemoPeople(people);
   } else {
-    const hashPassword = (password: string) => new Passwords().hash(password);
+    const hashPassword = (password: string) => new Passwords(hasher).hash(password);
     const seeded = await seedDemo({ db, networks: app.networks, hashPassword, newId: randomUUID, now });
     if (seeded) say('The database is new: the demo site is in it.');
   }
@@ -57,7 +62,7 @@ async function start(): Promise<void> {
   const keeper = await keepBackups({ config, source: db.$client, now, log, ended });
   const server = createServer(app.handler);
   shutDownGracefully(server, log, app.endStreams, async () => {
-    await Promise.all([thread.close(), keeper.stop()]);
+    await Promise.all([thread.close(), hasher.close(), keeper.stop()]);
     db.$client.close();
     hold.release();
   });

@@ -47,7 +47,7 @@ describe('/api/openapi.json', () => {
   it('describes bodies by the contract, unknown keys refused', async () => {
     const { paths } = await describeApi();
     const schema = paths['/api/session']?.['post']?.requestBody?.content['application/json']?.schema;
-    expect(Object.keys(schema?.properties ?? {})).toEqual(['email', 'password']);
+    expect(Object.keys(schema?.properties ?? {})).toEqual(['email', 'password', 'code']);
     expect(schema?.additionalProperties).toBe(false);
   });
 

@@ -190,7 +190,7 @@ describe('a session', () => {
     const repository = new PeopleRepository(server.db);
     const entry = (action: string) => ({ at: server.now(), action, subject: 'viewer' });
     const changes: (() => void)[] = [
-      () => repository.changePassword('viewer', CHEAP_HASH, entry('person.password')),
+      () => repository.changePassword('viewer', { to: CHEAP_HASH }, entry('person.password')),
       () => repository.giveRole('viewer', server.siteId, 'designer', null, entry('person.role')),
       () => repository.disable('viewer', entry('person.disable')),
     ];
@@ -247,6 +247,19 @@ describe('a session', () => {
 });
 
 describe('the profile', () => {
+  it('takes a name, which the log remembers, and refuses one that plays tricks on those who read it', async () => {
+    const client = server.as('viewer');
+    const changed = await client.send('patch', '/api/profile').send({ name: '  Nóra Ács-Őri ' }).expect(200);
+    expect(changed.body).toMatchObject({ name: 'Nóra Ács-Őri' });
+    await client.send('patch', '/api/profile').send({ name: 'Nóra Ács-Őri', units: 'si' }).expect(200);
+    const renamings = server.db.select().from(audit).where(eq(audit.action, 'person.rename')).all();
+    expect(renamings).toMatchObject([{ personId: 'viewer', details: { from: 'viewer', to: 'Nóra Ács-Őri' } }]);
+    for (const name of ['', '   ', 'x'.repeat(81), 'two\nlines', 'turned \u202e round']) {
+      const refused = await client.send('patch', '/api/profile').send({ name }).expect(400);
+      expect(refused.body).toMatchObject({ errors: [{ pointer: '/name' }] });
+    }
+  });
+
   it('takes units, theme and a known time zone, and refuses others with the pointer', async () => {
     const client = server.as('viewer');
     const changed = await client
@@ -256,7 +269,17 @@ describe('the profile', () => {
     expect(changed.body).toMatchObject({ units: 'si', theme: 'system', timeZone: 'Europe/Lisbon' });
     const zone = await client.send('patch', '/api/profile').send({ timeZone: 'Mars/Olympus' }).expect(400);
     expect(zone.body).toMatchObject({ errors: [{ pointer: '/timeZone' }] });
-    const key = await client.send('patch', '/api/profile').send({ name: 'Somebody Else' }).expect(400);
-    expect(key.body).toMatchObject({ errors: [{ pointer: '/name' }] });
+    // What is not one's own to choose is no key of the contract.
+    for (const [key, value] of Object.entries({
+      email: 'x@y.example',
+      administersInstallation: true,
+      id: 'designer',
+    })) {
+      const refused = await client
+        .send('patch', '/api/profile')
+        .send({ [key]: value })
+        .expect(400);
+      expect(refused.body).toMatchObject({ errors: [{ pointer: `/${key}` }] });
+    }
   });
 });

@@ -4,6 +4,7 @@ import { ROLES, type Role } from '@riseback/contracts';
 import type { RequestHandler } from 'express';
 import request from 'supertest';
 import { buildApp, type App } from '../../server/src/app';
+import type { Hasher } from '../../server/src/platform/auth/passwords';
 import { SessionRepository } from '../../server/src/platform/auth/session-repository';
 import { SessionTokens } from '../../server/src/platform/auth/session-token';
 import { Sessions, type IssuedSession } from '../../server/src/platform/auth/sessions';
@@ -29,6 +30,7 @@ const inThread: SolvePort = {
 export interface TestServerOptions {
   readonly config?: Partial<Config>;
   readonly solver?: SolvePort;
+  readonly hasher?: Hasher;
   readonly webFolder?: string;
   readonly heartbeatMs?: number;
   /** One on a disk, where that matters. */
@@ -67,6 +69,7 @@ export class TestServer {
       newId: randomUUID,
       now,
       solver: options.solver ?? inThread,
+      ...(options.hasher === undefined ? {} : { hasher: options.hasher }),
       webFolder: options.webFolder,
       ...(options.observe === undefined ? {} : { observe: options.observe }),
       ...(options.heartbeatMs === undefined ? {} : { heartbeatMs: options.heartbeatMs }),

@@ -3,6 +3,8 @@ import * as z from 'zod';
 export const SignIn = z.strictObject({
   email: z.string().trim().min(3).max(254),
   password: z.string().min(1).max(1_000),
+  /** One-time or recovery code of a person who turned codes on; asked for once the password was right. */
+  code: z.string().trim().min(1).max(64).optional(),
 });
 export type SignIn = z.infer<typeof SignIn>;
 
@@ -22,9 +24,18 @@ export type Person = z.infer<typeof Person>;
 export const Session = z.object({ person: Person });
 export type Session = z.infer<typeof Session>;
 
+/** Neither control characters nor marks that turn the direction of what stands beside the name. */
+export const PersonName = z
+  .string()
+  .trim()
+  .min(1)
+  .max(80)
+  .regex(/^[^\p{Cc}\u202A-\u202E\u2066-\u2069]*$/u, 'leave out control characters');
+
 /** What a person may change of their own profile. */
 export const ProfileChange = z
   .strictObject({
+    name: PersonName,
     units: z.enum(UNIT_SYSTEMS),
     theme: z.enum(THEMES),
     timeZone: z.string().min(1).max(64),

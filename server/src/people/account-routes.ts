@@ -1,8 +1,9 @@
-import { OwnSession, Person, ProfileChange, Session, SignIn } from '@riseback/contracts';
+import { OwnSession, Person, ProfileChange, Session, SessionsEnded, SignIn } from '@riseback/contracts';
 import * as z from 'zod';
 import type { SessionGate } from '../platform/auth/session-gate';
 import { publicRoute, signedInRoute, type Route } from '../platform/routes/route-table';
 import { personOf, type OwnAccountService } from './own-account-service';
+import { originOf } from './security-routes';
 import type { SignInService } from './sign-in-service';
 
 export function accountRoutes(signIn: SignInService, account: OwnAccountService, gate: SessionGate): Route[] {
@@ -10,14 +11,11 @@ export function accountRoutes(signIn: SignInService, account: OwnAccountService,
     publicRoute({
       method: 'post',
       path: '/api/session',
-      summary: 'Sign in. Sets the session cookie and XSRF-TOKEN.',
+      summary: 'Sign in, with a one-time or recovery code where codes are on. Sets the session cookie and XSRF-TOKEN.',
       body: SignIn,
       answers: { 200: Session },
       handler: async ({ body, req, res }) => {
-        const { person, issued } = await signIn.signIn(body, {
-          address: req.ip ?? '',
-          agent: req.get('user-agent') ?? '',
-        });
+        const { person, issued } = await signIn.signIn(body, originOf(req));
         gate.give(res, issued);
         res.json({ person: personOf(person) } satisfies Session);
       },
@@ -45,7 +43,7 @@ export function accountRoutes(signIn: SignInService, account: OwnAccountService,
     signedInRoute({
       method: 'patch',
       path: '/api/profile',
-      summary: "Change one's own units, theme or time zone.",
+      summary: "Change one's own name, units, theme or time zone.",
       body: ProfileChange,
       answers: { 200: Person },
       handler: ({ access, body, res }) => {
@@ -59,6 +57,15 @@ export function accountRoutes(signIn: SignInService, account: OwnAccountService,
       answers: { 200: z.array(OwnSession) },
       handler: ({ access, res }) => {
         res.json(account.ownSessions(access) satisfies OwnSession[]);
+      },
+    }),
+    signedInRoute({
+      method: 'delete',
+      path: '/api/own-sessions',
+      summary: "End all of one's own sessions but this one.",
+      answers: { 200: SessionsEnded },
+      handler: ({ access, res }) => {
+        res.json({ ended: account.endOtherSessions(access) } satisfies SessionsEnded);
       },
     }),
     signedInRoute({

@@ -1,5 +1,6 @@
+import { passwordMistake, personalWords } from '@riseback/contracts';
 import type { SiteRepository } from '../sites/site-repository';
-import { passwordMistake, type Passwords } from '../platform/auth/passwords';
+import type { Passwords } from '../platform/auth/passwords';
 import { badRequest, conflict } from '../platform/problem';
 import type { PeopleRepository } from './people-repository';
 
@@ -34,7 +35,7 @@ export class FirstAdministratorService {
       throw badRequest(`"${email}" is not an e-mail address.`);
     if (name.trim() === '') throw badRequest('The name is empty.');
     if (siteName.trim() === '') throw badRequest("The site's name is empty.");
-    const weak = passwordMistake(password, [...name.split(/\s+/), ...email.split(/[@.]/)]);
+    const weak = passwordMistake(password, personalWords({ name, email }));
     if (weak !== undefined) throw badRequest(weak);
     const passwordHash = await this.passwords.hash(password);
 

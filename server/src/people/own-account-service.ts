@@ -1,6 +1,7 @@
 import type { OwnSession, Person, ProfileChange } from '@riseback/contracts';
 import type { PersonAccess } from '../platform/auth/access';
 import type { Sessions } from '../platform/auth/sessions';
+import type { AuditEntry } from '../platform/db/audit';
 import { badRequest, notFound } from '../platform/problem';
 import type { PeopleRepository, PersonRow } from './people-repository';
 
@@ -9,6 +10,7 @@ export class OwnAccountService {
   constructor(
     private readonly people: PeopleRepository,
     private readonly sessions: Sessions,
+    private readonly now: () => Date,
   ) {}
 
   person(access: PersonAccess): Person {
@@ -18,18 +20,19 @@ export class OwnAccountService {
   }
 
   changeProfile(access: PersonAccess, change: ProfileChange): Person {
-    const { units, theme, timeZone } = change;
+    const { name, units, theme, timeZone } = change;
     if (timeZone !== undefined && !isTimeZone(timeZone)) {
       throw badRequest('This time zone is not known.', [
         { pointer: '/timeZone', detail: 'give a name of the IANA time zone database, such as Europe/Lisbon' },
       ]);
     }
     const columns = {
+      ...(name === undefined ? {} : { name }),
       ...(units === undefined ? {} : { units }),
       ...(theme === undefined ? {} : { theme }),
       ...(timeZone === undefined ? {} : { timeZone }),
     };
-    const row = this.people.changeProfile(access.person.id, columns);
+    const row = this.people.changeProfile(access.person.id, columns, this.renaming(access, name));
     if (row === undefined) throw notFound('This person is not known any more.');
     return personOf(row);
   }
@@ -44,10 +47,21 @@ export class OwnAccountService {
     this.sessions.end(access.person.sessionId, access.person, 'signedOut');
   }
 
+  endOtherSessions(access: PersonAccess): number {
+    return this.sessions.endOthers(access.person);
+  }
+
   endOwnSession(access: PersonAccess, sessionId: string): void {
     if (!this.sessions.end(sessionId, access.person, 'endedByOwner')) {
       throw notFound('You have no such session; it may have ended already.');
     }
+  }
+
+  /** Only a name is for the log: it stands in what others read. */
+  private renaming({ person }: PersonAccess, to: string | undefined): AuditEntry | undefined {
+    if (to === undefined || to === person.name) return undefined;
+    const { id, name: from, sessionId } = person;
+    return { at: this.now(), personId: id, sessionId, action: 'person.rename', subject: id, details: { from, to } };
   }
 }
 

@@ -6,7 +6,7 @@ import type { Database } from '../platform/db/database';
 import { memberships, people } from '../platform/db/schema';
 
 export type PersonRow = typeof people.$inferSelect;
-type ProfileColumns = Partial<Pick<PersonRow, 'units' | 'theme' | 'timeZone'>>;
+type ProfileColumns = Partial<Pick<PersonRow, 'name' | 'units' | 'theme' | 'timeZone'>>;
 
 export class PeopleRepository {
   constructor(private readonly db: Database) {}
@@ -39,18 +39,29 @@ export class PeopleRepository {
     });
   }
 
-  changeProfile(id: string, change: ProfileColumns): PersonRow | undefined {
+  /** @param audit of what others see of the change, if anything */
+  changeProfile(id: string, change: ProfileColumns, audit?: AuditEntry): PersonRow | undefined {
     if (Object.keys(change).length === 0) return this.find(id);
-    return this.db.update(people).set(change).where(eq(people.id, id)).returning().get();
+    return this.db.transaction((tx) => {
+      if (audit !== undefined) appendAudit(tx, audit);
+      return tx.update(people).set(change).where(eq(people.id, id)).returning().get();
+    });
   }
 
-  /** A new password ends every session of the person, the one that asked for it too. */
-  changePassword(id: string, passwordHash: string, audit: AuditEntry): void {
+  /**
+   * A new password ends every session of the person, the one that asked for it too.
+   * @param from the hash it takes the place of, where that was checked
+   * @returns false when another password has taken its place meanwhile
+   */
+  changePassword(id: string, { from, to }: { from?: string; to: string }, audit: AuditEntry): boolean {
     const at = audit.at.toISOString();
-    this.db.transaction((tx) => {
-      tx.update(people).set({ passwordHash, passwordChangedAt: at }).where(eq(people.id, id)).run();
+    return this.db.transaction((tx) => {
+      const unchanged = and(eq(people.id, id), from === undefined ? undefined : eq(people.passwordHash, from));
+      const change = { passwordHash: to, passwordChangedAt: at };
+      if (tx.update(people).set(change).where(unchanged).run().changes === 0) return false;
       endAllSessions(tx, id, at, 'passwordChanged');
       appendAudit(tx, audit);
+      return true;
     });
   }
 
@@ -63,8 +74,8 @@ export class PeopleRepository {
     });
   }
 
-  /** For the log alone: nothing else of a refused sign-in is kept. */
-  noteRefusedSignIn(audit: AuditEntry): void {
+  /** For the log alone: nothing else of a refused attempt is kept. */
+  noteRefusal(audit: AuditEntry): void {
     this.db.transaction((tx) => appendAudit(tx, audit));
   }
 

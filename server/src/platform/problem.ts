@@ -23,6 +23,8 @@ export const PROBLEM_TYPES = {
   'bad-request': { status: 400, title: 'The request cannot be understood' },
   'not-signed-in': { status: 401, title: 'Not signed in' },
   'wrong-credentials': { status: 401, title: 'Signing in failed' },
+  'code-needed': { status: 401, title: 'A code is needed too' },
+  'wrong-code': { status: 401, title: 'Signing in failed' },
   forbidden: { status: 403, title: 'Not allowed' },
   'forged-request': { status: 403, title: 'The request does not prove where it comes from' },
   'not-found': { status: 404, title: 'Not found' },
@@ -56,6 +58,19 @@ export function notSignedIn(): ProblemError {
 export function wrongCredentials(): ProblemError {
   return new ProblemError(problemOf('wrong-credentials', 'The e-mail address or the password is wrong.'));
 }
+
+/** Said only when the password was right. */
+export function codeNeeded(): ProblemError {
+  return new ProblemError(
+    problemOf('code-needed', 'Give the code of your authenticator, or one of your recovery codes.'),
+  );
+}
+
+export function wrongCode(): ProblemError {
+  return new ProblemError(problemOf('wrong-code', WRONG_CODE));
+}
+
+export const WRONG_CODE = 'This code is not right, or was used already. Wait for the next one.';
 
 export function forbidden(detail: string): ProblemError {
   return new ProblemError(problemOf('forbidden', detail));

@@ -1,50 +1,42 @@
+import { MOST_PASSWORD_BYTES, normalPassword, passwordBytes } from '@riseback/contracts';
 import { compare, hash } from 'bcryptjs';
 import { tooManyRequests } from '../problem';
 
+/** Does the work that takes a third of a second of a processor. */
+export interface Hasher {
+  hash(text: string, cost: number): Promise<string>;
+  matches(text: string, hash: string): Promise<boolean>;
+}
+
+/** In the thread that asks, in slices of 100 ms: for commands and tests, which nobody else waits for. */
+export const HASHES_HERE: Hasher = { hash, matches: compare };
+
 const COST = 12;
-/** Each takes about 0.4 s of the one thread that also answers everybody else. */
-const HASHES_AT_ONCE = 2;
-/** About a minute of waiting: more than people wait for. */
+/** As many threads hash in the server. */
+export const HASHES_AT_ONCE = 2;
+/** About half a minute of waiting: more than people wait for. */
 const LONGEST_QUEUE = 200;
-/** bcrypt reads 72 bytes and drops the rest without a word. */
-const MOST_BYTES = 72;
-const FEWEST_BYTES = 12;
 
 /** A hash of no known password, at the same cost: comparing with it takes as long as with a real one. */
 const NOBODYS_HASH = '$2b$12$1h2QML05PlPMhVNt1.9kJeTH1grGyOCmmO/OBTGdqlLCHBetW4dHa';
 
-/** What people pick when they must fill twelve characters. */
-const TOO_COMMON = [
-  '123456789012',
-  '1234567890123',
-  'password1234',
-  'passwordpassword',
-  'qwertyuiop12',
-  'qwertyqwerty',
-  'administrator',
-  'letmeinletmein',
-  'iloveyou1234',
-  'changeme1234',
-  'welcome12345',
-  'abcdefghijkl',
-  'abc123abc123',
-  'steamsteamsteam',
-  'condensate123',
-];
-
-/** Hashes and compares, two at a time. */
+/** Hashes and compares passwords in their normal form, two at a time. `passwordMistake` says which may be chosen. */
 export class Passwords {
   private running = 0;
   private readonly waiting: (() => void)[] = [];
 
+  constructor(private readonly hasher: Hasher = HASHES_HERE) {}
+
   async hash(password: string): Promise<string> {
-    return this.inTurn(() => hash(password, COST));
+    return this.inTurn(() => this.hasher.hash(normalPassword(password), COST));
   }
 
   /** @param known the account's hash; without one (no such account) it answers no after the same work */
   async matches(password: string, known: string | undefined): Promise<boolean> {
-    const usable = known !== undefined && Buffer.byteLength(password) <= MOST_BYTES;
-    const same = await this.inTurn(() => compare(password, usable ? known : NOBODYS_HASH));
+    // bcrypt reads 72 bytes and drops the rest: a longer text would match the password that it begins with
+    const usable = known !== undefined && passwordBytes(password) <= MOST_PASSWORD_BYTES;
+    const text = normalPassword(password);
+    const same = await this.inTurn(() => this.hasher.matches(text, usable ? known : NOBODYS_HASH));
     return usable && same;
   }
 
@@ -62,19 +54,4 @@ export class Passwords {
       else next();
     }
   }
-}
-
-/** Why a new password is refused, or undefined when it is good. No rules of composition: length is what counts. */
-export function passwordMistake(password: string, personal: readonly string[]): string | undefined {
-  const bytes = Buffer.byteLength(password);
-  if (bytes < FEWEST_BYTES)
-    return `The password needs at least ${String(FEWEST_BYTES)} characters; a few words do well.`;
-  if (bytes > MOST_BYTES) return `The password may hold ${String(MOST_BYTES)} bytes at most.`;
-  const lower = password.toLowerCase();
-  if (TOO_COMMON.includes(lower) || new Set(lower).size < 5)
-    return 'That password is among the first that others would try.';
-  if (personal.some((word) => word.length > 3 && lower.includes(word.toLowerCase()))) {
-    return 'The password must not contain your name or your e-mail address.';
-  }
-  return undefined;
 }

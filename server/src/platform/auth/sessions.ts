@@ -1,3 +1,4 @@
+import type { AuditEntry } from '../db/audit';
 import type { SignedInPerson } from './access';
 import type { SessionEnd, SessionRepository, SessionRow } from './session-repository';
 import type { SessionTokens } from './session-token';
@@ -33,7 +34,8 @@ export class Sessions {
     private readonly now: () => Date,
   ) {}
 
-  start(personId: string, agent: string): IssuedSession {
+  /** @param details how the person proved who they are, for the log */
+  start(personId: string, agent: string, details: AuditEntry['details'] = {}): IssuedSession {
     const now = this.now();
     const endsAt = after(now, LONGEST_SESSION_MS);
     const idleUntil = after(now, IDLE_LIMIT_MS);
@@ -50,7 +52,7 @@ export class Sessions {
       endedWhy: null,
       agent: agent.slice(0, LONGEST_AGENT),
     };
-    this.repository.start(row, { at: now, personId, sessionId: id, action: 'session.start', subject: id });
+    this.repository.start(row, { at: now, personId, sessionId: id, action: 'session.start', subject: id, details });
     return { sessionId: id, token: this.tokens.sign(id, now, idleUntil), expiresAt: idleUntil };
   }
 
@@ -71,10 +73,16 @@ export class Sessions {
   }
 
   /** @returns false when the person has no such live session */
-  end(sessionId: string, person: SignedInPerson, why: SessionEnd): boolean {
-    const at = this.now();
+  end(sessionId: string, person: SignedInPerson, why: SessionEnd, at = this.now()): boolean {
     const audit = { at, personId: person.id, sessionId: person.sessionId, action: 'session.end', subject: sessionId };
     return this.repository.end(sessionId, person.id, why, audit);
+  }
+
+  /** Ends all of the person's sessions but the one they ask from. @returns how many there were */
+  endOthers(person: SignedInPerson): number {
+    const now = this.now();
+    const others = this.listOf(person.id).filter(({ id }) => id !== person.sessionId);
+    return others.filter(({ id }) => this.end(id, person, 'endedByOwner', now)).length;
   }
 
   listOf(personId: string): SessionRow[] {

@@ -82,6 +82,32 @@ export const sessions = sqliteTable(
   (table) => [index('sessions_person').on(table.personId), oneOf('sessions_ended_why', 'ended_why', SESSION_ENDS)],
 );
 
+/** What a person's one-time codes are made of, sealed. Without `confirmed_at` no code has shown yet that somebody holds it. */
+export const oneTimeSecrets = sqliteTable('one_time_secrets', {
+  personId: text('person_id')
+    .primaryKey()
+    .references(() => people.id),
+  sealedSecret: text('sealed_secret').notNull(),
+  createdAt: text('created_at').notNull(),
+  confirmedAt: text('confirmed_at'),
+  /** The half-minute of the last code that was taken: none of it or before is taken again. */
+  lastStep: integer('last_step'),
+});
+
+/** Codes for who has lost what makes the others; each counts once. */
+export const recoveryCodes = sqliteTable(
+  'recovery_codes',
+  {
+    personId: text('person_id')
+      .notNull()
+      .references(() => people.id),
+    codeHash: text('code_hash').notNull(),
+    createdAt: text('created_at').notNull(),
+    usedAt: text('used_at'),
+  },
+  (table) => [primaryKey({ columns: [table.personId, table.codeHash] })],
+);
+
 export const sites = sqliteTable(
   'sites',
   {
