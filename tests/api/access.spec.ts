@@ -20,9 +20,14 @@ const EVERYONE: readonly (Who | 'anonymous')[] = ['anonymous', 'stranger', 'outs
 
 const server = new TestServer();
 let networkId = '';
+let otherNetworkId = '';
 beforeAll(async () => {
-  const made = await server.as('designer').post(`/api/sites/${server.siteId}/networks`, NETWORK_FILE).expect(201);
-  networkId = (made.body as { id: string }).id;
+  const make = async (who: Who, siteId: string) => {
+    const made = await server.as(who).post(`/api/sites/${siteId}/networks`, NETWORK_FILE).expect(201);
+    return (made.body as { id: string }).id;
+  };
+  networkId = await make('designer', server.siteId);
+  otherNetworkId = await make('outsider', server.otherSiteId);
 });
 afterAll(() => {
   server.close();
@@ -30,6 +35,18 @@ afterAll(() => {
 
 function pathOf(route: Route, ids: { siteId: string; networkId: string }): string {
   return route.path.replace(':siteId', ids.siteId).replace(':networkId', ids.networkId).replaceAll(/:\w+/g, 'some-id');
+}
+
+/** All that the other site holds. */
+function rowsElsewhere(): string {
+  const ofNetwork = ['nodes', 'pipes', 'trap_models', 'cases', 'case_overrides', 'gauges', 'edits', 'solves'];
+  const all = (sql: string, id: string) => server.db.$client.prepare(sql).all(id);
+  return JSON.stringify([
+    ...ofNetwork.map((table) => all(`select * from ${table} where network_id = ?`, otherNetworkId)),
+    ...['networks', 'memberships', 'audit'].map((table) =>
+      all(`select * from ${table} where site_id = ?`, server.otherSiteId),
+    ),
+  ]);
 }
 
 /** What the rule of the route alone makes of this person; undefined = let through. */
@@ -72,6 +89,38 @@ describe('the access matrix, made of the route table', () => {
     expect(
       server.app.routes.filter(({ rule, mutates }) => rule.kind === 'public' && mutates).map(({ path }) => path),
     ).toEqual(['/api/session']);
+  });
+});
+
+describe('a role at one site', () => {
+  const scoped = rows.filter(({ route, who }) => 'anyOf' in route.rule && (ROLES as readonly string[]).includes(who));
+
+  it.each(scoped)('opens nothing at another, by the path: $name, $who', async ({ route, who }) => {
+    const path = pathOf(route, { siteId: server.otherSiteId, networkId: otherNetworkId });
+    const response = await server.as(who).send(route.method, path);
+    expect(response.status).toBe(404);
+    expect(response.headers['content-type']).toContain('application/problem+json');
+  });
+
+  const changes = scoped.filter(({ route, refusal }) => route.body !== undefined && refusal === undefined);
+
+  it.each(changes)('changes nothing at another, by the body: $name, $who', async ({ route, who }) => {
+    const before = rowsElsewhere();
+    const theirs = { siteId: server.otherSiteId, networkId: otherNetworkId };
+    for (const body of [
+      { ...NETWORK_FILE, ...theirs, id: otherNetworkId },
+      { batchId: crypto.randomUUID(), label: 'reach', ...theirs, ops: [{ op: 'remove', in: 'nodes', id: 'T1' }] },
+      { ...theirs, selected: ['T1'] },
+      theirs,
+    ]) {
+      const response = await server
+        .as(who)
+        .send(route.method, pathOf(route, { siteId: server.siteId, networkId }))
+        .set('If-Match', '"1"')
+        .send(body);
+      expect(response.status).toBe(400);
+    }
+    expect(rowsElsewhere()).toBe(before);
   });
 });
 
