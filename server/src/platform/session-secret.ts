@@ -1,5 +1,5 @@
 import { randomBytes } from 'node:crypto';
-import { existsSync, mkdirSync, readFileSync, statSync, writeFileSync } from 'node:fs';
+import { closeSync, existsSync, fstatSync, mkdirSync, openSync, readFileSync, writeFileSync } from 'node:fs';
 import { dirname } from 'node:path';
 
 export interface SecretSources {
@@ -19,6 +19,8 @@ export interface FoundSecret {
 const LEAST_BYTES = 32;
 /** Below this many different characters a text of 32 is a word repeated, not random. */
 const LEAST_DIFFERENT = 10;
+/** What stands in examples and is put in by hand. In 64 random base64 characters the shortest turns up once in ten million. */
+const WORDS_OF_EXAMPLES = ['secret', 'password', 'changeme', 'change-me', 'change_me', 'riseback', 'example'];
 
 export function findSessionSecret({ secret, file, generatedFile }: SecretSources): FoundSecret {
   if (secret !== undefined && file !== undefined) {
@@ -39,18 +41,47 @@ export function secretMistake(secret: string): string | undefined {
   const bytes = Buffer.byteLength(secret);
   if (bytes < LEAST_BYTES) return `must hold at least ${String(LEAST_BYTES)} random bytes; it holds ${String(bytes)}`;
   if (new Set(secret).size < LEAST_DIFFERENT) return 'must be random; it repeats a few characters';
+  if (isRepeatedPiece(secret)) return 'must be random; it repeats itself';
+  if (isMostlyInSequence(secret)) return 'must be random; its characters follow one another';
+  const lower = secret.toLowerCase();
+  if (WORDS_OF_EXAMPLES.some((word) => lower.includes(word)))
+    return 'must be random; it holds a word that examples use';
   return undefined;
 }
 
+/** Others who may write the file choose the secret; others who may read it sign themselves in as anyone. */
+export function secretFileMistake(file: { mode: number; uid: number }, ownUid: number): string | undefined {
+  if ((file.mode & 0o077) !== 0) return 'others may read the file; allow its owner only (chmod 600).';
+  if (file.uid !== ownUid && file.uid !== 0)
+    return 'the file belongs to another account; give it to the one that the server runs as (chown).';
+  return undefined;
+}
+
+function isRepeatedPiece(text: string): boolean {
+  // A text made of one piece over and over is found again inside itself, off by the piece.
+  return (text + text).indexOf(text, 1) <= text.length / 2;
+}
+
+/** Such as 0123… or abcd…, up or down. */
+function isMostlyInSequence(text: string): boolean {
+  const codes = Array.from(text, (character) => character.codePointAt(0) ?? 0);
+  const following = codes.slice(1).filter((code, i) => Math.abs(code - (codes[i] ?? 0)) <= 1);
+  return following.length > text.length / 2;
+}
+
 function readSecretFile(path: string, setting: string): FoundSecret {
-  let text: string;
+  let open: number | undefined;
   try {
-    // Windows has no such mode bits: there the folder's own rights protect the file.
-    const readableByOthers = process.platform !== 'win32' && (statSync(path).mode & 0o077) !== 0;
-    if (readableByOthers) return { mistake: `${setting}: others may read the file; allow its owner only (chmod 600).` };
-    text = readFileSync(path, 'utf8').trim();
+    // Opened once, so that what is read is the very file whose rights were looked at.
+    open = openSync(path, 'r');
+    // Windows has no such owner and mode bits: there the folder's own rights protect the file.
+    const ownUid = process.getuid?.();
+    const mistake = ownUid === undefined ? undefined : secretFileMistake(fstatSync(open), ownUid);
+    if (mistake !== undefined) return { mistake: `${setting}: ${mistake}` };
+    return { secret: readFileSync(open, 'utf8').trim(), setting };
   } catch {
-    return { mistake: `${setting}: the file cannot be read.` };
+    return { mistake: `${setting}: the file cannot be read; check its path and that the server's account owns it.` };
+  } finally {
+    if (open !== undefined) closeSync(open);
   }
-  return { secret: text, setting };
 }
