@@ -18,7 +18,7 @@ import { exitOnUncaught, shutDownGracefully } from './platform/graceful-shutdown
 import { createLog, logDestination, logFileOf } from './platform/log';
 import { Metrics } from './platform/metrics/metrics';
 import { serveMetrics } from './platform/metrics/metrics-server';
-import { SolveThread } from './solve/solve-thread';
+import { SolveThreads } from './solve/solve-threads';
 
 /** For the person at the terminal; the log has its own place and form. */
 function say(line: string): void {
@@ -40,8 +40,8 @@ async function start(): Promise<void> {
   const report = (error: unknown) => log.error({ err: error }, 'database');
   const db = openDatabase(config.databasePath, { report });
   const metrics = new Metrics(config.databasePath);
-  const thread = new SolveThread({ report: (error) => log.error({ err: error }, 'solver') });
-  const solver = metrics.timed(thread);
+  const threads = new SolveThreads({ report: (error) => log.error({ err: error }, 'solver') });
+  const solver = metrics.timed(threads);
   const hasher = new PasswordThreads({
     count: HASHES_AT_ONCE,
     report: (error) => log.error({ err: error }, 'hashing'),
@@ -62,7 +62,7 @@ async function start(): Promise<void> {
   const keeper = await keepBackups({ config, source: db.$client, now, log, ended });
   const server = createServer(app.handler);
   shutDownGracefully(server, log, app.endStreams, async () => {
-    await Promise.all([thread.close(), hasher.close(), keeper.stop()]);
+    await Promise.all([threads.close(), hasher.close(), keeper.stop()]);
     db.$client.close();
     hold.release();
   });

@@ -1,19 +1,29 @@
+import { setImmediate as nextTurn } from 'node:timers/promises';
 import { parentPort } from 'node:worker_threads';
-import { solveCases } from '../src/solve/solve-cases';
-import type { SolveAnswer, SolveMessage } from '../src/solve/solve-thread';
+import type { CaseOutcome } from '@riseback/contracts';
+import { solveCase } from '../src/solve/solve-cases';
+import type { DropMessage, SolveAnswer, SolveMessage } from '../src/solve/solve-thread';
 
 /** The thread behind SolveThread: a network file comes in, the outcomes of its cases go out. It never opens the database. */
 const port = parentPort;
 if (port === null) throw new Error('solve-worker runs as a worker thread');
 
-port.on('message', ({ jobId, job }: SolveMessage) => {
-  port.postMessage(answer(jobId, job));
+let dropped = 0;
+port.on('message', (message: SolveMessage | DropMessage) => {
+  if ('drop' in message) dropped = message.drop;
+  else void answer(message).then((answered) => port.postMessage(answered));
 });
 
-function answer(jobId: number, job: SolveMessage['job']): SolveAnswer {
+async function answer({ jobId, job }: SolveMessage): Promise<SolveAnswer> {
   try {
     const start = performance.now();
-    const outcomes = solveCases(job);
+    const outcomes: CaseOutcome[] = [];
+    for (const caseId of job.caseIds) {
+      outcomes.push(solveCase(job, caseId));
+      // between two turns a message comes in that calls the rest off
+      if (outcomes.length < job.caseIds.length) await nextTurn();
+      if (dropped === jobId) return { jobId, ended: { end: 'superseded' } };
+    }
     return { jobId, ended: { end: 'finished', outcomes, solveMs: performance.now() - start } };
   } catch (error) {
     return { jobId, broke: error instanceof Error ? (error.stack ?? error.message) : String(error) };

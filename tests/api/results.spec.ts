@@ -7,14 +7,27 @@ import { KEPT_SOLVES } from '../../server/src/solve/solve-repository';
 import { batchOf, makeNetwork, raise, sendBatch, SMALL } from './network-samples';
 import { TestServer, type Client } from './test-server';
 
-/** A solver whose jobs end when the test says so; `jobs` holds all that it was ever given. */
+interface HeldJob {
+  readonly key: string;
+  readonly job: SolveJob;
+  readonly end: (end?: SolveEnd) => void;
+}
+
+/**
+ * A solver whose jobs end when the test says so: `jobs` holds all for pressures that it was ever given, `bandJobs` those for bands, which
+ * end at once unless they are held too.
+ */
 class HeldSolver implements SolvePort {
-  readonly jobs: { key: string; job: SolveJob; end: (end?: SolveEnd) => void }[] = [];
+  readonly jobs: HeldJob[] = [];
+  readonly bandJobs: HeldJob[] = [];
+  holdsBands = false;
 
   solve(key: string, job: SolveJob): Promise<SolveEnd> {
     return new Promise((resolve) => {
-      const solved = (): SolveEnd => ({ end: 'finished', outcomes: solveCases(job), solveMs: 2 });
-      this.jobs.push({ key, job, end: (end = solved()) => resolve(end) });
+      const solved = (): SolveEnd => ({ end: 'finished', outcomes: solveCases(job), solveMs: job.bands ? 40 : 2 });
+      const held = { key, job, end: (end = solved()) => resolve(end) };
+      (job.bands ? this.bandJobs : this.jobs).push(held);
+      if (job.bands && !this.holdsBands) held.end();
     });
   }
 }
@@ -33,6 +46,10 @@ function withHeldSolver(): { server: TestServer; solver: HeldSolver; designer: C
 
 function resultsPath(id: string, version?: number): string {
   return `/api/networks/${id}/results${version === undefined ? '' : `?version=${version}`}`;
+}
+
+async function until(condition: () => boolean): Promise<void> {
+  while (!condition()) await new Promise((resolve) => setTimeout(resolve, 5));
 }
 
 const MOVE: EditOp = { op: 'set', in: 'nodes', id: 'T1', key: 'position', from: { x: 0, y: 0 }, to: { x: 40, y: 20 } };
@@ -113,6 +130,69 @@ describe('results', () => {
     const trap = solver.jobs[2]?.job.file.nodes.find((node) => node.id === 'T1');
     expect(trap?.elevationM).toBe(0);
     expect(solver.jobs[2]?.key).not.toBe(id);
+  });
+});
+
+describe('bands that are to come', () => {
+  const pressures = (id: string) => `${resultsPath(id, 1)}&bands=later`;
+  const trapOf = (body: unknown) => {
+    const results = body as NetworkResults;
+    const outcome = results.state === 'finished' ? results.cases[0] : undefined;
+    return outcome?.status === 'solved' ? outcome.result.traps[0] : undefined;
+  };
+
+  it('hold up nobody who asks for pressures, and are there for who asks for the whole', async () => {
+    const { server, solver, designer } = withHeldSolver();
+    solver.holdsBands = true;
+    const id = await makeNetwork(designer, server.siteId);
+    solver.jobs[0]?.end();
+    const first = await designer.get(pressures(id)).expect(200);
+    expect(first.body).toMatchObject({ state: 'finished', version: 1, solveMs: 2, bandsToCome: true });
+    expect(trapOf(first.body)).not.toHaveProperty('spread');
+    const asked = designer.get(resultsPath(id, 1)).expect(200);
+    setTimeout(() => solver.bandJobs[0]?.end(), 50);
+    const whole = (await asked).body as NetworkResults;
+    expect(whole).not.toHaveProperty('bandsToCome');
+    expect(whole).toMatchObject({ solveMs: 2 });
+    expect(trapOf(whole)?.backPressurePa).toBe(trapOf(first.body)?.backPressurePa);
+    expect(trapOf(whole)?.credible).toBeDefined();
+    // whoever asks for pressures once the whole is there gets the whole
+    expect((await designer.get(pressures(id)).expect(200)).body).toEqual(whole);
+    expect([solver.jobs.length, solver.bandJobs.length]).toEqual([1, 1]);
+  });
+
+  it('are never stored half: what is superseded before them is solved again for whoever asks', async () => {
+    const { server, solver, designer } = withHeldSolver();
+    solver.holdsBands = true;
+    const id = await makeNetwork(designer, server.siteId);
+    solver.jobs[0]?.end();
+    const asked = designer.get(resultsPath(id, 1)).expect(202);
+    await until(() => solver.bandJobs.length === 1);
+    setTimeout(() => solver.bandJobs[0]?.end({ end: 'superseded' }), 50);
+    expect((await asked).body).toEqual({ state: 'waiting', version: 1 });
+    expect(server.db.$client.prepare('select count(*) from solves').pluck().get()).toBe(0);
+    const again = designer
+      .get(resultsPath(id, 1))
+      .expect(200)
+      .then((answer) => answer);
+    await until(() => solver.jobs.length === 2);
+    solver.holdsBands = false;
+    solver.jobs[1]?.end();
+    expect(trapOf((await again).body)?.spread).toBeDefined();
+  });
+
+  it('and fail leave the pressures, which say so', async () => {
+    const { server, solver, designer } = withHeldSolver();
+    solver.holdsBands = true;
+    const id = await makeNetwork(designer, server.siteId);
+    solver.jobs[0]?.end();
+    await until(() => solver.bandJobs.length === 1);
+    solver.bandJobs[0]?.end({ end: 'failed', detail: 'Too slow.' });
+    const body: unknown = (await designer.get(resultsPath(id, 1)).expect(200)).body;
+    expect(body).toMatchObject({ state: 'finished', cases: [{ status: 'solved' }] });
+    const [outcome] = (body as Extract<NetworkResults, { state: 'finished' }>).cases;
+    const warnings = outcome?.status === 'solved' ? outcome.result.warnings : [];
+    expect(warnings.map(({ code }) => code)).toContain('bandsLeftOut');
   });
 });
 

@@ -5,10 +5,11 @@ import { afterEach, describe, expect, it } from 'vitest';
 import ternQuay from '../../server/demo/tern-quay.json';
 import { solveCases } from '../../server/src/solve/solve-cases';
 import { SolveThread, type SolveThreadOptions } from '../../server/src/solve/solve-thread';
+import { SolveThreads } from '../../server/src/solve/solve-threads';
 import { makeNetwork, SMALL } from './network-samples';
 import { TestServer } from './test-server';
 
-const threads: SolveThread[] = [];
+const threads: { close(): Promise<void> }[] = [];
 afterEach(async () => {
   await Promise.all(threads.splice(0).map((thread) => thread.close()));
 });
@@ -28,12 +29,12 @@ function fileOf(json: unknown): NetworkFile {
 
 /** A worker that does what the job's first case says: `spin`, `throw`, `exit`; anything else it answers at once. */
 const WORKER = pathToFileURL('tests/api/unruly-worker.mjs');
-const job = (...caseIds: string[]) => ({ file: fileOf(SMALL), caseIds, partial: true });
+const job = (...caseIds: string[]) => ({ file: fileOf(SMALL), caseIds, partial: true, bands: false });
 
 describe('the solver’s thread', () => {
   it('answers what the solver answers in the same thread', async () => {
     const { thread, reports } = startThread();
-    const plant = { file: fileOf(ternQuay), caseIds: ['design', 'turndown', 'rt5open'], partial: true };
+    const plant = { file: fileOf(ternQuay), caseIds: ['design', 'turndown', 'rt5open'], partial: true, bands: true };
     const ended = await thread.solve('a', plant);
     expect(reports).toEqual([]);
     expect(ended).toMatchObject({ end: 'finished', outcomes: solveCases(plant) });
@@ -70,6 +71,46 @@ describe('the solver’s thread', () => {
     const { thread } = startThread({ workerUrl: WORKER });
     const ends = await Promise.all(Array.from({ length: 103 }, (_, i) => thread.solve(`network ${i}`, job('1'))));
     expect(ends.filter(({ end }) => end === 'failed')).toHaveLength(2);
+  });
+});
+
+describe('bands', () => {
+  const plant = (bands: boolean, cases = 3) => ({
+    file: fileOf(ternQuay),
+    caseIds: Array.from({ length: cases }, () => 'design'),
+    partial: true,
+    bands,
+  });
+  function startThreads(): SolveThreads {
+    const both = new SolveThreads({ report: () => undefined });
+    threads.push(both);
+    return both;
+  }
+
+  it('never hold up pressures, and are called off by a newer job of their network', async () => {
+    const both = startThreads();
+    const order: string[] = [];
+    const told = async (name: string, key: string, bands: boolean, cases?: number) => {
+      const { end } = await both.solve(key, plant(bands, cases));
+      order.push(`${name} ${end}`);
+    };
+    const bandsOfA = told('bands of a', 'a', true, 200);
+    await told('pressures of b', 'b', false, 1);
+    const newer = told('pressures of a', 'a', false, 1);
+    await Promise.all([bandsOfA, newer]);
+    expect(order[0]).toBe('pressures of b finished');
+    expect(order).toContain('bands of a superseded');
+    expect(order).toContain('pressures of a finished');
+  });
+
+  it('that wait their turn are called off as well', async () => {
+    const both = startThreads();
+    const ends = Promise.all([
+      both.solve('a', plant(true)),
+      both.solve('b', plant(true)),
+      both.solve('b', plant(false)),
+    ]);
+    expect((await ends).map(({ end }) => end)).toEqual(['finished', 'superseded', 'finished']);
   });
 });
 

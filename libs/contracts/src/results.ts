@@ -137,7 +137,7 @@ export const CaseOutcome = z.discriminatedUnion('status', [
 ]);
 export type CaseOutcome = z.infer<typeof CaseOutcome>;
 
-/** GET /api/networks/:networkId/results?version=N: 200 finished or failed, 202 waiting. */
+/** GET /api/networks/:networkId/results?version=N&bands=later: 200 finished or failed, 202 waiting. */
 export const NetworkResults = z.discriminatedUnion('state', [
   z.object({ state: z.literal('waiting'), version: z.number().int() }),
   z.object({
@@ -146,7 +146,13 @@ export const NetworkResults = z.discriminatedUnion('state', [
     solverHash: z.string(),
     engineVersion: z.string(),
     finishedAt: z.iso.datetime(),
+    /** How long the pressures took. */
     solveMs: z.number(),
+    /**
+     * Only where asked for with `bands=later`: traps have no `spread` and `credible` yet, and a check that passes may yet have to be
+     * watched. Ask again without.
+     */
+    bandsToCome: z.literal(true).optional(),
     cases: z.array(CaseOutcome),
   }),
   z.object({ state: z.literal('failed'), version: z.number().int(), problem: Problem }),

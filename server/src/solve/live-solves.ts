@@ -1,8 +1,8 @@
 import type { CaseOutcome, Problem, SolveSummary } from '@riseback/contracts';
 import { toFile, type NetworkDocument } from '@riseback/network';
-import { caseIdsOf } from './solve-cases';
-import type { SolvePort } from './solve-port';
-import type { CaseVerdicts, SolveInput, SolveRepository, StoredSolve } from './solve-repository';
+import { bandsInTime, caseIdsOf, withoutBands } from './solve-cases';
+import type { SolveJob, SolvePort } from './solve-port';
+import type { CaseVerdicts, EndedSolve, SolveInput, SolveRepository, StoredSolve } from './solve-repository';
 
 /** A network as it stood after one of its versions. */
 export interface VersionedInput {
@@ -21,13 +21,30 @@ export interface LiveSolvesOptions {
   readonly report: (error: unknown) => void;
 }
 
+/** What is there before the bands are: each trap's pressures and checks by the chosen method alone. Kept in memory, never stored. */
+export interface Pressures {
+  readonly state: 'bandsToCome';
+  readonly startedAt: string;
+  readonly finishedAt: string;
+  readonly solveMs: number;
+  readonly outcomes: readonly CaseOutcome[];
+}
+
+interface UnderWay {
+  /** Undefined: there will be none, or what there is lies stored. */
+  readonly pressures: Promise<Pressures | undefined>;
+  /** Never rejects: what goes wrong is reported. */
+  readonly whole: Promise<void>;
+}
+
 /**
  * Keeps every network solved: an accepted edit starts a solve, whose results are stored under the hash of what was
- * solved. Results of a hash that was solved before are found at once, and a moved symbol starts nothing.
+ * solved. Results of a hash that was solved before are found at once, and a moved symbol starts nothing. Pressures come
+ * first, then the whole with its bands; only the whole is stored.
  */
 export class LiveSolves {
   /** Solves under way, by network and hash. */
-  private readonly underWay = new Map<string, Promise<void>>();
+  private readonly underWay = new Map<string, UnderWay>();
 
   constructor(
     private readonly solves: SolveRepository,
@@ -37,22 +54,40 @@ export class LiveSolves {
 
   /** Starts a solve where none is stored; one that failed is tried again. The newest version of a network wins. */
   changed(input: VersionedInput): void {
-    // the edit is stored already: whatever goes wrong here must not make its answer look like a refusal
-    this.startUnlessStored(input).catch(this.options.report);
+    try {
+      this.startUnlessStored(input);
+    } catch (error) {
+      // the edit is stored already: whatever goes wrong here must not make its answer look like a refusal
+      this.options.report(error);
+    }
   }
 
-  /** What is stored for this input, waiting so long for a solve to end. Undefined: it has not ended yet. */
-  async results(input: VersionedInput, waitMs: number): Promise<StoredSolve | undefined> {
+  /**
+   * What there is for this input, waiting so long for it. Undefined: it is not there yet.
+   * @param awaited `pressures` is content with those while the bands are to come; `whole` is what will be stored
+   */
+  async results(
+    input: VersionedInput,
+    awaited: 'pressures' | 'whole',
+    waitMs: number,
+  ): Promise<StoredSolve | Pressures | undefined> {
     let timer: NodeJS.Timeout | undefined;
     const giveUp = new Promise<'late'>((resolve) => {
       timer = setTimeout(() => resolve('late'), waitMs);
     });
     try {
       // twice: a solve that a newer version superseded is started again, under a key of its own, because someone asks for it
-      for (let attempt = 1, late = false; attempt <= 2 && !late; attempt += 1) {
+      for (let attempt = 1; attempt <= 2; attempt += 1) {
         const stored = this.solves.find(this.keyOf(input));
         if (stored !== undefined) return stored;
-        late = (await Promise.race([this.start(`${input.networkId} ${input.solverHash}`, input), giveUp])) === 'late';
+        const { pressures, whole } = this.start(`${input.networkId} ${input.solverHash}`, input);
+        const first = await Promise.race([pressures, giveUp]);
+        if (first === 'late') break;
+        if (first === undefined) continue;
+        if (awaited === 'pressures') return first;
+        // not started again when its bands are superseded: whoever waited so long has most likely gone on to the newer version
+        await Promise.race([whole, giveUp]);
+        break;
       }
       return this.solves.find(this.keyOf(input));
     } finally {
@@ -76,35 +111,72 @@ export class LiveSolves {
     return overview === 'failed' ? 'failed' : 'finished';
   }
 
-  private async startUnlessStored(input: VersionedInput): Promise<void> {
+  private startUnlessStored(input: VersionedInput): void {
     const overview = this.solves.overview(this.keyOf(input));
-    if (overview === undefined || overview === 'failed') await this.start(input.networkId, input);
+    if (overview === undefined || overview === 'failed') this.start(input.networkId, input);
     else this.options.ended(input.networkId, input.solverHash, 'finished');
   }
 
-  private start(key: string, input: VersionedInput): Promise<void> {
+  private start(key: string, input: VersionedInput): UnderWay {
     const place = `${input.networkId} ${input.solverHash}`;
     const present = this.underWay.get(place);
     if (present !== undefined) return present;
-    const solve = this.solveAndStore(key, input).finally(() => this.underWay.delete(place));
+    const file = toFile(input.document);
+    const job = { file, caseIds: caseIdsOf(file), partial: true };
+    const pressures = this.solvePressures(key, input, job);
+    const whole = pressures
+      .then((first) => (first === undefined ? undefined : this.solveBands(key, input, job, first)))
+      .catch(this.options.report)
+      .finally(() => this.underWay.delete(place));
+    const solve = { pressures, whole };
     this.underWay.set(place, solve);
     return solve;
   }
 
-  private async solveAndStore(key: string, input: VersionedInput): Promise<void> {
-    const { newId, now } = this.options;
-    const file = toFile(input.document);
-    const startedAt = now().toISOString();
-    const ended = await this.port.solve(key, { file, caseIds: caseIdsOf(file), partial: true });
-    if (ended.end === 'superseded') return;
-    const solve = { ...this.keyOf(input), id: newId(), startedAt, finishedAt: now().toISOString() };
+  private async solvePressures(
+    key: string,
+    input: VersionedInput,
+    job: Omit<SolveJob, 'bands'>,
+  ): Promise<Pressures | undefined> {
+    const startedAt = this.time();
+    const ended = await this.port.solve(key, { ...job, bands: false });
+    if (ended.end === 'superseded') return undefined;
     if (ended.end === 'failed') {
-      this.solves.storeFailed(solve, solveFailed(ended.detail));
-    } else {
-      const overview = { solveMs: ended.solveMs, cases: ended.outcomes.map(verdictsOf) };
-      this.solves.storeFinished(solve, overview, ended.outcomes);
+      this.solves.storeFailed(this.ended(input, startedAt), solveFailed(ended.detail));
+      this.options.ended(input.networkId, input.solverHash, 'failed');
+      return undefined;
     }
-    this.options.ended(input.networkId, input.solverHash, ended.end);
+    const { outcomes, solveMs } = ended;
+    const first: Pressures = { state: 'bandsToCome', startedAt, finishedAt: this.time(), solveMs, outcomes };
+    if (bandsInTime(job)) return first;
+    this.store(input, first, withoutBands(outcomes));
+    return undefined;
+  }
+
+  private async solveBands(
+    key: string,
+    input: VersionedInput,
+    job: Omit<SolveJob, 'bands'>,
+    first: Pressures,
+  ): Promise<void> {
+    const ended = await this.port.solve(key, { ...job, bands: true });
+    if (ended.end === 'superseded') return;
+    // pressures are not lost with the bands
+    this.store(input, first, ended.end === 'failed' ? withoutBands(first.outcomes) : ended.outcomes);
+  }
+
+  private store(input: VersionedInput, { startedAt, solveMs }: Pressures, outcomes: readonly CaseOutcome[]): void {
+    const overview = { solveMs, cases: outcomes.map(verdictsOf) };
+    this.solves.storeFinished(this.ended(input, startedAt), overview, outcomes);
+    this.options.ended(input.networkId, input.solverHash, 'finished');
+  }
+
+  private ended(input: VersionedInput, startedAt: string): EndedSolve {
+    return { ...this.keyOf(input), id: this.options.newId(), startedAt, finishedAt: this.time() };
+  }
+
+  private time(): string {
+    return this.options.now().toISOString();
   }
 
   private keyOf({ networkId, solverHash }: Omit<VersionedInput, 'document'>): SolveInput {

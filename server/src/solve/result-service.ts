@@ -5,7 +5,7 @@ import type { ReadyJson } from '../platform/http/ready-json';
 import { badRequest, ProblemError } from '../platform/problem';
 import { solveFailed, type LiveSolves, type VersionedInput } from './live-solves';
 import { ResultTexts } from './result-texts';
-import { caseIdsOf } from './solve-cases';
+import { bandsInTime, caseIdsOf, withoutBands } from './solve-cases';
 import type { SolvePort } from './solve-port';
 
 /** What the results need of the networks. */
@@ -23,8 +23,6 @@ export interface ResultServiceOptions {
 
 const WAIT_MS = 5_000;
 
-export type Unfinished = Exclude<NetworkResults, { state: 'finished' }>;
-
 export class ResultService {
   private readonly texts = new ResultTexts();
 
@@ -35,16 +33,25 @@ export class ResultService {
     private readonly options: ResultServiceOptions,
   ) {}
 
-  /** The results of a version (by default the newest) in all its cases; finished ones as text that lies ready. */
-  async results(access: NetworkAccess, asked: number | undefined): Promise<Unfinished | ReadyJson> {
+  /**
+   * The results of a version (by default the newest) in all its cases; stored ones as text that lies ready.
+   * @param awaited `pressures` is content with those while the bands are to come
+   */
+  async results(
+    access: NetworkAccess,
+    asked: number | undefined,
+    awaited: 'pressures' | 'whole',
+  ): Promise<NetworkResults | ReadyJson> {
     const input = this.networks.atVersion(access, asked);
     const { version, solverHash } = input;
-    const stored = await this.live.results(input, this.options.waitMs ?? WAIT_MS);
+    const stored = await this.live.results(input, awaited, this.options.waitMs ?? WAIT_MS);
     if (stored === undefined) return { state: 'waiting', version };
     if (stored.state === 'failed') return { state: 'failed', version, problem: stored.problem };
     const { finishedAt, solveMs } = stored;
     const { engineVersion } = this.options;
-    return this.texts.of({ state: 'finished', version, solverHash, engineVersion, finishedAt, solveMs }, stored);
+    const head = { state: 'finished', version, solverHash, engineVersion, finishedAt, solveMs } as const;
+    if (stored.state === 'finished') return this.texts.of(head, stored);
+    return { ...head, bandsToCome: true, cases: [...stored.outcomes] };
   }
 
   /**
@@ -55,13 +62,12 @@ export class ResultService {
     const read = readNetworkFile(json);
     if (!read.ok) throw badRequest('The network file has mistakes.', read.errors);
     const [first = ''] = caseIdsOf(read.file);
-    const ended = await this.port.solve(this.options.newId(), {
-      file: read.file,
-      caseIds: [caseId ?? first],
-      partial: false,
-    });
+    const job = { file: read.file, caseIds: [caseId ?? first], partial: false };
+    const bands = bandsInTime(job);
+    const ended = await this.port.solve(this.options.newId(), { ...job, bands });
     if (ended.end === 'failed') throw new ProblemError(solveFailed(ended.detail));
-    const outcome = ended.end === 'finished' ? ended.outcomes[0] : undefined;
+    const outcomes = ended.end === 'finished' ? ended.outcomes : [];
+    const [outcome] = bands ? outcomes : withoutBands(outcomes);
     if (outcome === undefined)
       throw new ProblemError(solveFailed('The server is shutting down. Try again in a moment.'));
     if (outcome.status === 'refused') throw new ProblemError({ ...outcome.problem, status: 400 });

@@ -16,21 +16,37 @@ type WithoutProblem = Omit<SolveResult, 'problem'>;
  */
 const PIPES_WITH_BANDS = 8000;
 
+/** Whether there is time for the bands of these cases while somebody waits. */
+export function bandsInTime({ file, caseIds }: Pick<SolveJob, 'file' | 'caseIds'>): boolean {
+  return file.pipes.length * caseIds.length <= PIPES_WITH_BANDS;
+}
+
 /** Solves each case of a job. A case that is refused stands beside those that are solved. */
-export function solveCases({ file, caseIds, partial }: SolveJob): CaseOutcome[] {
-  const bands = file.pipes.length * caseIds.length <= PIPES_WITH_BANDS;
-  return caseIds.map((caseId) => {
-    const solved = solveNetwork(file, { caseId, partial, bands });
-    if (isRefusal(solved)) return { caseId, status: 'refused', problem: toProblem(solved.problem) };
-    const { problem, ...told } = solved;
-    const rest = bands ? told : { ...told, warnings: [...told.warnings, bandsLeftOut()] };
-    const result = rest satisfies ReadOnly<WithoutProblem> as WithoutProblem;
-    return {
-      caseId,
-      status: 'solved',
-      result: problem === undefined ? result : { ...result, problem: toProblem(problem) },
-    };
-  });
+export function solveCases(job: SolveJob): CaseOutcome[] {
+  return job.caseIds.map((caseId) => solveCase(job, caseId));
+}
+
+export function solveCase({ file, partial, bands }: Omit<SolveJob, 'caseIds'>, caseId: string): CaseOutcome {
+  const solved = solveNetwork(file, { caseId, partial, bands });
+  if (isRefusal(solved)) return { caseId, status: 'refused', problem: toProblem(solved.problem) };
+  const { problem, ...rest } = solved;
+  const result = rest satisfies ReadOnly<WithoutProblem> as WithoutProblem;
+  return {
+    caseId,
+    status: 'solved',
+    result: problem === undefined ? result : { ...result, problem: toProblem(problem) },
+  };
+}
+
+/** Outcomes whose bands will not come say so. */
+export function withoutBands(outcomes: readonly CaseOutcome[]): CaseOutcome[] {
+  const { text, remedy, ...warning } = bandsLeftOut();
+  const told = { ...warning, text: [...text], ...(remedy === undefined ? {} : { remedy: [...remedy] }) };
+  return outcomes.map((outcome) =>
+    outcome.status === 'refused'
+      ? outcome
+      : { ...outcome, result: { ...outcome.result, warnings: [...outcome.result.warnings, told] } },
+  );
 }
 
 /** The cases of a network, or the plain network when it has none. */

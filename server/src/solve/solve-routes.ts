@@ -7,7 +7,11 @@ import type { ResultService } from './result-service';
 /** Read by `readNetworkFile` in the service, whose mistakes point further than a schema's. */
 const AnyNetworkFile = z.unknown().meta({ description: 'A network file, format riseback-network version 1' });
 const CaseQuery = z.object({ case: z.string().max(64).optional() });
-const VersionQuery = z.object({ version: z.coerce.number().int().min(1).optional() });
+const ResultsQuery = z.object({
+  version: z.coerce.number().int().min(1).optional(),
+  /** `later`: answers as soon as there are pressures, marked `bandsToCome` where each trap's bands and what hangs on them are not. */
+  bands: z.enum(['later']).optional(),
+});
 
 export function solveRoutes(service: ResultService): Route[] {
   return [
@@ -28,10 +32,10 @@ export function solveRoutes(service: ResultService): Route[] {
       path: '/api/networks/:networkId/results',
       summary: 'The results of a version in all its cases; 202 while they are being computed',
       permission: 'view',
-      query: VersionQuery,
+      query: ResultsQuery,
       answers: { 200: NetworkResults, 202: NetworkResults },
       handler: async ({ access, query, req, res }) => {
-        const results = await service.results(access, query.version);
+        const results = await service.results(access, query.version, query.bands === 'later' ? 'pressures' : 'whole');
         if ('json' in results) sendReadyJson(req, res, results);
         else res.status(results.state === 'waiting' ? 202 : 200).json(results satisfies NetworkResults);
       },

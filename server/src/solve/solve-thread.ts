@@ -4,11 +4,15 @@ import type { SolveEnd, SolveJob, SolvePort } from './solve-port';
 
 /** What the worker posts back; `broke` carries the error's text for the log. */
 export type SolveAnswer =
-  | { readonly jobId: number; readonly ended: Extract<SolveEnd, { end: 'finished' }> }
+  | { readonly jobId: number; readonly ended: Exclude<SolveEnd, { end: 'failed' }> }
   | { readonly jobId: number; readonly broke: string };
 export interface SolveMessage {
   readonly jobId: number;
   readonly job: SolveJob;
+}
+/** Nobody waits for this job any longer: the worker leaves off at its next case. */
+export interface DropMessage {
+  readonly drop: number;
 }
 
 export interface SolveThreadOptions {
@@ -26,6 +30,7 @@ interface Waiting {
   readonly resolve: (end: SolveEnd) => void;
 }
 interface Running extends Waiting {
+  readonly key: string;
   readonly jobId: number;
   readonly timer: NodeJS.Timeout;
 }
@@ -79,6 +84,14 @@ export class SolveThread implements SolvePort {
     });
   }
 
+  /** Calls off what is under way under a key; it counts as superseded. A job that is done all the same is answered. */
+  drop(key: string): void {
+    this.waiting.get(key)?.resolve({ end: 'superseded' });
+    this.waiting.delete(key);
+    if (this.running?.key !== key) return;
+    this.worker?.postMessage({ drop: this.running.jobId } satisfies DropMessage);
+  }
+
   /** Ends the thread; what waits or runs counts as superseded, for nobody is left to ask for it. */
   async close(): Promise<void> {
     this.closed = true;
@@ -96,7 +109,7 @@ export class SolveThread implements SolvePort {
     this.waiting.delete(key);
     this.worker ??= this.startWorker();
     const jobId = (this.lastJobId += 1);
-    this.running = { jobId, job, resolve, timer: setTimeout(() => this.stopOverrun(), this.limitMs) };
+    this.running = { key, jobId, job, resolve, timer: setTimeout(() => this.stopOverrun(), this.limitMs) };
     this.worker.postMessage({ jobId, job } satisfies SolveMessage);
   }
 

@@ -18,7 +18,7 @@ const ONE_PIPE = {
 export async function solvesOnePipe(solver: SolvePort): Promise<boolean> {
   const read = readNetworkFile(ONE_PIPE);
   if (!read.ok) return false;
-  const ended = await solver.solve('readiness', { file: read.file, caseIds: [''], partial: false });
+  const ended = await solver.solve('readiness', { file: read.file, caseIds: [''], partial: false, bands: false });
   const outcome = ended.end === 'finished' ? ended.outcomes[0] : undefined;
   return outcome?.status === 'solved' && outcome.result.converged;
 }
