@@ -1,4 +1,6 @@
 import { fromFile, layoutMissingPositions, readNetworkFile, type NetworkDocument } from '@riseback/network';
+import { LibraryRepository } from '../src/library/library-repository';
+import { LibraryService } from '../src/library/library-service';
 import type { NetworkService } from '../src/networks/network-service';
 import { PeopleRepository } from '../src/people/people-repository';
 import { appendAudit } from '../src/platform/db/audit';
@@ -6,6 +8,7 @@ import type { Database } from '../src/platform/db/database';
 import { people } from '../src/platform/db/schema';
 import { SiteRepository } from '../src/sites/site-repository';
 import { DEMO_PASSWORD, DEMO_PEOPLE } from './demo-people';
+import { seedLibrary } from './demo-library';
 import ternQuay from './tern-quay.json';
 
 export interface DemoParts {
@@ -17,7 +20,7 @@ export interface DemoParts {
 }
 
 /**
- * Fills a new database with the demo: one site, one person for each role, one network, whose solve starts at once. All of
+ * Fills a new database with the demo: one site, one person for each role, a trap library, one network, whose solve starts at once. All of
  * it or nothing; a database that holds a site or a person already is left as it is.
  * @returns whether it was filled
  */
@@ -31,7 +34,9 @@ export async function seedDemo({ db, networks, hashPassword, newId, now }: DemoP
       if (!isNew(db)) return false;
       const siteId = seedSite(db, newId(), now());
       const [designerId] = seedPeople(db, siteId, passwordHash, newId, now());
-      networks.createFor(siteId, { id: designerId }, demoNetwork());
+      const library = new LibraryService(new LibraryRepository(db), newId, now);
+      const plant = seedLibrary(library, siteId, { id: designerId }, demoNetwork());
+      networks.createFor(siteId, { id: designerId }, plant);
       return true;
     },
     { behavior: 'immediate' },

@@ -7,6 +7,9 @@ import { NetworkStreams } from './events/network-streams';
 import { AuditRepository } from './audit/audit-repository';
 import { auditRoutes } from './audit/audit-routes';
 import { AuditService } from './audit/audit-service';
+import { LibraryRepository } from './library/library-repository';
+import { libraryRoutes } from './library/library-routes';
+import { LibraryService } from './library/library-service';
 import { NetworkRepository } from './networks/network-repository';
 import { networkRoutes } from './networks/network-routes';
 import { NetworkService } from './networks/network-service';
@@ -98,6 +101,7 @@ export function buildApp(parts: AppParts): App {
   const security = new OwnSecurityService(people, passwords, codes, identity, sessions, now);
   const auditLog = new AuditService(new AuditRepository(db));
   const sites = new SiteService(new SiteRepository(db));
+  const library = new LibraryService(new LibraryRepository(db), newId, now);
   const report = (error: unknown) => log.error({ err: error }, 'solve failed');
   const memberships = new MembershipRepository(db);
   const stillAllowed = ({ person, siteId }: NetworkAccess): boolean => {
@@ -132,6 +136,7 @@ export function buildApp(parts: AppParts): App {
     ...securityRoutes(security, gate),
     ...siteRoutes(sites),
     ...auditRoutes(auditLog),
+    ...libraryRoutes(library),
     ...networkRoutes(networks),
     ...solveRoutes(results),
     ...eventRoutes(events),

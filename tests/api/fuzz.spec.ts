@@ -118,7 +118,8 @@ function pathOf(route: Route, odd: string): string {
   const path = route.path
     .replace(':siteId', siteId)
     .replace(':networkId', networkIds[odd.length % networkIds.length] ?? '');
-  return path.replaceAll(/:\w+/g, encodeURIComponent(odd));
+  // an empty last part is another route's address
+  return path.replaceAll(/:\w+/g, encodeURIComponent(odd === '' ? '-' : odd));
 }
 
 async function call(route: Route, who: Who | 'anonymous', sent: unknown, odd: string): Promise<Response> {

@@ -234,6 +234,28 @@ export const trapModels = sqliteTable(
   (table) => [primaryKey({ columns: [table.networkId, table.id] }), isJson('trap_models_properties', 'properties')],
 );
 
+/** A site's trap models: one row a version, never changed (by trigger), so that a network can name the one it copied. */
+export const libraryModels = sqliteTable(
+  'library_models',
+  {
+    siteId: text('site_id')
+      .notNull()
+      .references(() => sites.id),
+    id: text('id').notNull(),
+    version: integer('version').notNull(),
+    name: text('name').notNull(),
+    properties: json('properties').notNull(),
+    createdBy: text('created_by')
+      .notNull()
+      .references(() => people.id),
+    createdAt: text('created_at').notNull(),
+  },
+  (table) => [
+    primaryKey({ columns: [table.siteId, table.id, table.version] }),
+    isJson('library_models_properties', 'properties'),
+  ],
+);
+
 export const cases = sqliteTable(
   'cases',
   { ...element, id: text('id').notNull(), name: text('name').notNull() },
