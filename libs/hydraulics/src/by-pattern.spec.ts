@@ -5,7 +5,8 @@ import { describe, expect, it } from 'vitest';
 import { byPatternGradient } from './by-pattern';
 import type { FlashingFlow } from './flash-vapour';
 import { mullerSteinhagenHeckGradient } from './mueller-steinhagen-heck';
-import { stratifiedFlow, type LiquidSurface } from './stratified-flow';
+import { stratifiedFlow } from './stratified-flow';
+import type { LiquidSurface } from './stratified-forces';
 import { liquidOnlyGradient, vapourOnlyGradient } from './two-phase-point';
 
 /** 3 in schedule 40. */

@@ -1,6 +1,7 @@
 import type { FlashingFlow } from './flash-vapour';
 import { mullerSteinhagenHeckGradient } from './mueller-steinhagen-heck';
-import { STRATIFIED_SLOPE_LIMIT, stratifiedFlow, type LiquidSurface } from './stratified-flow';
+import { STRATIFIED_SLOPE_LIMIT, stratifiedFlow } from './stratified-flow';
+import type { LiquidSurface } from './stratified-forces';
 import { vapourOnlyGradient, vapourShare } from './two-phase-point';
 
 export interface PatternedGradient {

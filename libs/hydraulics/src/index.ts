@@ -42,13 +42,8 @@ export {
   voidFractionZivi,
   type VoidFraction,
 } from './void-fraction';
-export {
-  STRATIFIED_SLOPE_LIMIT,
-  stratifiedFlow,
-  type FrictionLaw,
-  type LiquidSurface,
-  type StratifiedFlow,
-} from './stratified-flow';
+export { STRATIFIED_SLOPE_LIMIT, stratifiedFlow, type StratifiedFlow } from './stratified-flow';
+export type { FrictionLaw, LiquidSurface } from './stratified-forces';
 export { byPatternGradient, type PatternedGradient } from './by-pattern';
 export { flowPattern, type FlowPattern } from './flow-pattern';
 export { levelFlowPattern, type LevelFlowPattern } from './level-flow-pattern';

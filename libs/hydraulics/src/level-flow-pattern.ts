@@ -1,15 +1,15 @@
+import { certainLevelPattern } from './certain-level-pattern';
 import { GRAVITY_M_S2 } from './darcy-gradient';
 import type { FlashingFlow } from './flash-vapour';
-import { LAMINAR_LIMIT_RE } from './friction-factor';
+import { darcyFrictionFactor, LAMINAR_LIMIT_RE } from './friction-factor';
 import { fullSection } from './level-section';
 import { stratifiedFlow } from './stratified-flow';
+import { stratifiedForces } from './stratified-forces';
 import { liquidPipeGradient, massFluxOf } from './two-phase-point';
+import { waveGrowth, waveNumber, WAVES_FROM } from './wave-criterion';
 
 /** What a level or nearly level pipe can show, in Taitel and Dukler's words. */
 export type LevelFlowPattern = 'stratifiedSmooth' | 'stratifiedWavy' | 'intermittent' | 'annular' | 'dispersedBubble';
-
-/** Jeffreys' sheltering coefficient: how much of the vapour's pressure a wave takes up. */
-const SHELTERING = 0.01;
 
 /**
  * Flow pattern of liquid and vapour in a level or nearly level pipe, from the level that the stratified balance gives.
@@ -23,6 +23,11 @@ const SHELTERING = 0.01;
  * Source: Taitel & Dukler, AIChE J. 22 (1976) 47-55; see docs/methods/flow-patterns.md.
  */
 export function levelFlowPattern(flow: FlashingFlow): LevelFlowPattern {
+  return certainLevelPattern(flow) ?? patternAtLevel(flow);
+}
+
+/** The same by solving for the level, which `certainLevelPattern` spares where it can. */
+export function patternAtLevel(flow: FlashingFlow): LevelFlowPattern {
   const stratified = stratifiedFlow(flow);
   const section = stratified?.section ?? fullSection();
   const leaves = stratified === undefined || stratified.leaveRatio >= 1;
@@ -30,19 +35,16 @@ export function levelFlowPattern(flow: FlashingFlow): LevelFlowPattern {
 
   const { quality, massFlowKgS, insideDiameterM: D, saturation, fallSlope } = flow;
   const { liquidDensityKgM3, vapourDensityKgM3, liquidViscosityPaS } = saturation;
-  const massFlux = massFluxOf(flow);
-  const weightPaM = (liquidDensityKgM3 - vapourDensityKgM3) * GRAVITY_M_S2 * Math.sqrt(1 - fallSlope * fallSlope);
-  const liquidRe = (massFlux * (1 - quality) * D) / liquidViscosityPaS;
-  const { liquidSpeedUp, vapourSpeedUp, liquidHydraulicDiameter, surfaceWidth, vapourArea } = section;
+  const { liquidSpeedUp, liquidHydraulicDiameter, surfaceWidth, vapourArea } = section;
   if (leaves) {
+    const liquidRe = (massFluxOf(flow) * (1 - quality) * D) / liquidViscosityPaS;
     const n = liquidRe <= LAMINAR_LIMIT_RE ? 1 : 0.2;
+    const weightPaM = (liquidDensityKgM3 - vapourDensityKgM3) * GRAVITY_M_S2 * Math.sqrt(1 - fallSlope * fallSlope);
     const turbulence = liquidPipeGradient(flow, (1 - quality) * massFlowKgS) / weightPaM;
     const friction = (liquidSpeedUp * liquidHydraulicDiameter) ** -n;
     const disperses = (8 * vapourArea) / (surfaceWidth * liquidSpeedUp * liquidSpeedUp * friction);
     return turbulence >= disperses ? 'dispersedBubble' : 'intermittent';
   }
-  const vapourSpeedMS = (massFlux * quality) / vapourDensityKgM3;
-  const K = Math.sqrt((liquidRe * vapourDensityKgM3 * vapourSpeedMS * vapourSpeedMS) / (weightPaM * D));
-  const raisesWaves = 2 / (Math.sqrt(liquidSpeedUp) * vapourSpeedUp * Math.sqrt(SHELTERING));
-  return K >= raisesWaves ? 'stratifiedWavy' : 'stratifiedSmooth';
+  const K = waveNumber(stratifiedForces(flow, 'smooth', darcyFrictionFactor));
+  return K * waveGrowth(section) >= WAVES_FROM ? 'stratifiedWavy' : 'stratifiedSmooth';
 }

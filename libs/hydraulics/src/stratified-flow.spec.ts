@@ -6,7 +6,8 @@ import { boreAreaM2, GRAVITY_M_S2 } from './darcy-gradient';
 import type { FlashingFlow } from './flash-vapour';
 import { darcyFrictionFactor } from './friction-factor';
 import { pipeBore } from './pipe-catalogue';
-import { STRATIFIED_SLOPE_LIMIT, stratifiedFlow, type FrictionLaw, type LiquidSurface } from './stratified-flow';
+import { STRATIFIED_SLOPE_LIMIT, stratifiedFlow } from './stratified-flow';
+import type { FrictionLaw, LiquidSurface } from './stratified-forces';
 
 /** 2 in schedule 40. */
 const LINE: FlashingFlow = {

@@ -1,14 +1,18 @@
 import { findRootBracketed, NonPhysicalInputError } from '@riseback/numerics';
-import { GRAVITY_M_S2 } from './darcy-gradient';
 import type { FlashingFlow } from './flash-vapour';
 import { darcyFrictionFactor } from './friction-factor';
 import { FULLEST_LOGIT, logitOfLevel, sectionAtLogit, type LevelSection } from './level-section';
-import { massFluxOf } from './two-phase-point';
-
-/** Smooth: the vapour rubs on the liquid as on a wall. Wavy: waves raised by a fast vapour hold it back several times as much. */
-export type LiquidSurface = 'smooth' | 'wavy';
-/** Darcy factor of a phase from Re and ε/D at its own hydraulic diameter. */
-export type FrictionLaw = (Re: number, relativeRoughness: number) => number;
+import {
+  isCreep,
+  leaveFactor,
+  lnForceRatio,
+  stratifiedForces,
+  vapourFrictionPaM,
+  velocityHeadPa,
+  type FrictionLaw,
+  type LiquidSurface,
+  type StratifiedForces,
+} from './stratified-forces';
 
 /** Liquid along the bottom of a level or nearly level pipe, its vapour above. */
 export interface StratifiedFlow {
@@ -23,20 +27,17 @@ export interface StratifiedFlow {
 export const STRATIFIED_SLOPE_LIMIT = Math.sin(Math.PI / 18);
 
 /** A film thinner than this share of the bore is taken at it: it changes the gradient by less than 1e-6 there. */
-const THINNEST_FILM = logitOfLevel(1e-5);
+export const THINNEST_FILM_LEVEL = 1e-5;
+const THINNEST_FILM = logitOfLevel(THINNEST_FILM_LEVEL);
 /**
  * Up to this level the pull on the liquid falls steadily with depth in level and falling runs, so a change of sign below it is the lowest
  * root. Above it, near the depth at which a channel carries most, the balance may turn back and have three roots.
  */
-const STEADY_UP_TO = logitOfLevel(0.88);
+export const STEADY_UP_TO_LEVEL = 0.88;
+const STEADY_UP_TO = logitOfLevel(STEADY_UP_TO_LEVEL);
 /** Search step in the logit where there may be several roots. */
 const SEARCH_STEP = 0.2;
 const LOGIT_TOLERANCE = 1e-9;
-/** A film shallower than the grains of its wall: Colebrook-White ends at ε/D = 1, and means little long before. */
-const GREATEST_RELATIVE_ROUGHNESS = 0.9;
-/** Superficial velocity at which the vapour starts to raise waves, at 1.2 kg/m³ [m/s]. */
-const WAVES_FROM_M_S = 5;
-const WAVES_AT_KG_M3 = 1.2;
 
 /**
  * Level and friction of stratified flow by Taitel and Dukler's balance of forces, in dimensional form:
@@ -58,64 +59,26 @@ export function stratifiedFlow(
   surface: LiquidSurface = 'smooth',
   friction: FrictionLaw = darcyFrictionFactor,
 ): StratifiedFlow | undefined {
-  const { quality, massFlowKgS, fallSlope, insideDiameterM: D, saturation } = flow;
-  if (!(quality > 0 && quality < 1 && massFlowKgS > 0 && D > 0 && Math.abs(fallSlope) <= STRATIFIED_SLOPE_LIMIT)) {
-    throw new NonPhysicalInputError('stratifiedFlow', { quality, massFlowKgS, insideDiameterM: D, fallSlope });
+  const { quality, massFlowKgS, fallSlope, insideDiameterM, saturation } = flow;
+  const isNearlyLevel = Math.abs(fallSlope) <= STRATIFIED_SLOPE_LIMIT;
+  if (!(quality > 0 && quality < 1 && massFlowKgS > 0 && insideDiameterM > 0 && isNearlyLevel)) {
+    throw new NonPhysicalInputError('stratifiedFlow', { quality, massFlowKgS, insideDiameterM, fallSlope });
   }
-  const forces = forcesOf(flow, surface, friction);
-  // a creep whose velocity head vanishes in floating point has no forces to balance
-  if (forces.liquidSpeedMS ** 2 === 0 || forces.vapourSpeedMS ** 2 === 0) return undefined;
-  const logit = lowestLevel(forces, fallSlope);
+  const forces = stratifiedForces(flow, surface, friction);
+  const logit = isCreep(forces) ? undefined : lowestLevel(forces, fallSlope);
   if (logit === undefined) return undefined;
   const section = sectionAtLogit(logit);
-  const vapourHeadPa = velocityHeadPa(forces.vapourSpeedMS, saturation.vapourDensityKgM3);
-  const { wall, surface: onSurface } = vapourDrag(forces, section);
-  const weight = forces.weightPaM * D * Math.sqrt(1 - fallSlope * fallSlope);
-  const gapSquared = (1 - section.levelFraction) ** 2;
+  const fittingsPaM = flow.lossCoefficientPerM * velocityHeadPa(forces.vapourSpeedMS, saturation.vapourDensityKgM3);
   return {
     section,
-    gradientPaM: (wall + onSurface) / section.vapourArea + flow.lossCoefficientPerM * vapourHeadPa,
-    leaveRatio:
-      ((2 * vapourHeadPa) / weight) *
-      ((section.vapourSpeedUp * section.vapourSpeedUp * section.surfaceWidth) / (section.vapourArea * gapSquared)),
+    gradientPaM: vapourFrictionPaM(forces, section) + fittingsPaM,
+    leaveRatio: forces.vapourPull * leaveFactor(section),
   };
-}
-
-/** What the balance needs and the level does not change. */
-interface Forces {
-  readonly flow: FlashingFlow;
-  readonly friction: FrictionLaw;
-  /** Superficial velocities j_l, j_g. */
-  readonly liquidSpeedMS: number;
-  readonly vapourSpeedMS: number;
-  /** 15 (j_g/j_t − 1) on a wavy surface, else 0: f_i/f_g = 1 + this × √h. */
-  readonly waveFactor: number;
-  /** (ρ_l − ρ_g) g. */
-  readonly weightPaM: number;
-}
-
-function forcesOf(flow: FlashingFlow, surface: LiquidSurface, friction: FrictionLaw): Forces {
-  const { liquidDensityKgM3, vapourDensityKgM3 } = flow.saturation;
-  const massFlux = massFluxOf(flow);
-  const vapourSpeedMS = (massFlux * flow.quality) / vapourDensityKgM3;
-  const wavesFromMS = WAVES_FROM_M_S * Math.sqrt(WAVES_AT_KG_M3 / vapourDensityKgM3);
-  return {
-    flow,
-    friction,
-    liquidSpeedMS: (massFlux * (1 - flow.quality)) / liquidDensityKgM3,
-    vapourSpeedMS,
-    waveFactor: surface === 'wavy' ? 15 * Math.max(0, vapourSpeedMS / wavesFromMS - 1) : 0,
-    weightPaM: (liquidDensityKgM3 - vapourDensityKgM3) * GRAVITY_M_S2,
-  };
-}
-
-function velocityHeadPa(speedMS: number, densityKgM3: number): number {
-  return (densityKgM3 * speedMS * speedMS) / 2;
 }
 
 /** Lowest logit at which the forces balance, within the levels solved for; undefined for a full pipe. */
-function lowestLevel(forces: Forces, fallSlope: number): number | undefined {
-  const balance = (logit: number): number => lnForceRatio(forces, logit);
+function lowestLevel(forces: StratifiedForces, fallSlope: number): number | undefined {
+  const balance = (logit: number): number => lnForceRatio(forces, sectionAtLogit(logit));
   if (balance(THINNEST_FILM) <= 0) return THINNEST_FILM;
   let from = THINNEST_FILM;
   if (fallSlope >= 0) {
@@ -132,45 +95,4 @@ function lowestLevel(forces: Forces, fallSlope: number): number | undefined {
   function root(low: number, high: number): number {
     return findRootBracketed(balance, low, high, { xTolerance: LOGIT_TOLERANCE, where: 'the stratified level' });
   }
-}
-
-/**
- * ln of what holds the liquid back over what drives it, per metre: above 0 where the liquid would stand deeper. As a ratio of sums of
- * positive terms it runs over both ends without overflow; a rise holds back, a fall drives.
- */
-function lnForceRatio(forces: Forces, logit: number): number {
-  const { flow, friction, liquidSpeedMS, weightPaM } = forces;
-  const { insideDiameterM: D, roughnessM, fallSlope } = flow;
-  const { liquidDensityKgM3, liquidViscosityPaS } = flow.saturation;
-  const section = sectionAtLogit(logit);
-  const speedMS = liquidSpeedMS * section.liquidSpeedUp;
-  const liquidDiameterM = D * section.liquidHydraulicDiameter;
-  const Re = (liquidDensityKgM3 * speedMS * liquidDiameterM) / liquidViscosityPaS;
-  const stressPa =
-    (friction(Re, wallRoughness(roughnessM, liquidDiameterM)) * velocityHeadPa(speedMS, liquidDensityKgM3)) / 4;
-  const { wall, surface } = vapourDrag(forces, section);
-  const heldBack = (stressPa * section.liquidPerimeter) / (D * section.liquidArea);
-  const driven = wall / section.vapourArea + surface * (1 / section.liquidArea + 1 / section.vapourArea);
-  const weightAlong = weightPaM * fallSlope;
-  return Math.log((heldBack + Math.max(0, -weightAlong)) / (driven + Math.max(0, weightAlong)));
-}
-
-/** Drag of the vapour on its wall and on the liquid's surface, τ S/D² [Pa/m]. */
-function vapourDrag(forces: Forces, section: LevelSection): { wall: number; surface: number } {
-  const { flow, friction, vapourSpeedMS, waveFactor } = forces;
-  const { vapourDensityKgM3, vapourViscosityPaS } = flow.saturation;
-  const speedMS = vapourSpeedMS * section.vapourSpeedUp;
-  const vapourDiameterM = flow.insideDiameterM * section.vapourHydraulicDiameter;
-  const Re = (vapourDensityKgM3 * speedMS * vapourDiameterM) / vapourViscosityPaS;
-  const f = friction(Re, wallRoughness(flow.roughnessM, vapourDiameterM));
-  const stressPaM = (f * velocityHeadPa(speedMS, vapourDensityKgM3)) / (4 * flow.insideDiameterM);
-  const surfaceFactor = waveFactor === 0 ? 1 : 1 + waveFactor * Math.sqrt(section.levelFraction);
-  return {
-    wall: stressPaM * section.vapourPerimeter,
-    surface: stressPaM * surfaceFactor * section.surfaceWidth,
-  };
-}
-
-function wallRoughness(roughnessM: number, hydraulicDiameterM: number): number {
-  return Math.min(roughnessM / hydraulicDiameterM, GREATEST_RELATIVE_ROUGHNESS);
 }
