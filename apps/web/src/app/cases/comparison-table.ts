@@ -1,6 +1,7 @@
-import { ChangeDetectionStrategy, Component, computed, input, signal } from '@angular/core';
+import { ChangeDetectionStrategy, Component, computed, inject, input, signal } from '@angular/core';
 import { RouterLink } from '@angular/router';
 import { displayUnit, type DisplayUnits } from '@riseback/units';
+import { BANDS_TO_COME } from '../shared/bands-to-come';
 import { StatusMark } from '../shared/status-mark/status-mark';
 import { type Comparison, type ComparisonOrder, ordered } from './case-comparison';
 
@@ -17,6 +18,7 @@ export class ComparisonTable {
   readonly units = input.required<DisplayUnits>();
   readonly stale = input(false);
 
+  protected readonly bandsToCome = inject(BANDS_TO_COME, { optional: true }) ?? (() => false);
   protected readonly order = signal<ComparisonOrder>('worst');
   protected readonly traps = computed(() => ordered(this.comparison().traps, this.order()));
   protected readonly several = computed(() => this.comparison().heads.length > 1);

@@ -60,13 +60,13 @@ export class NetworkApi {
     return this.http.post<unknown>(`/api/networks/${networkId}/presence`, { selected });
   }
 
-  results(networkId: string, version: number): Observable<NetworkResults> {
-    return this.http
-      .get<unknown>(`/api/networks/${networkId}/results`, { params: new HttpParams({ fromObject: { version } }) })
-      .pipe(
-        retryTransient(),
-        map((body) => NetworkResults.parse(body)),
-      );
+  /** @param bands `later`: answered as soon as there are pressures, perhaps with `bandsToCome` */
+  results(networkId: string, version: number, bands?: 'later'): Observable<NetworkResults> {
+    const params = new HttpParams({ fromObject: bands === undefined ? { version } : { version, bands } });
+    return this.http.get<unknown>(`/api/networks/${networkId}/results`, { params }).pipe(
+      retryTransient(),
+      map((body) => NetworkResults.parse(body)),
+    );
   }
 
   /** Of a long history the server tells the first part, and in the header Link that there is more. */

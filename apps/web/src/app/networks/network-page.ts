@@ -1,6 +1,7 @@
 import { ChangeDetectionStrategy, Component, effect, inject, input, untracked } from '@angular/core';
 import { Title } from '@angular/platform-browser';
 import { RouterLink, RouterLinkActive, RouterOutlet } from '@angular/router';
+import { BANDS_TO_COME } from '../shared/bands-to-come';
 import { ProblemBanner } from '../shared/problem-banner/problem-banner';
 import { AppBar } from '../shell/app-bar';
 import { Company } from './company';
@@ -37,7 +38,14 @@ const VIEWS = [
     RouterOutlet,
     TitleBlock,
   ],
-  providers: [NetworkStore, Company, DraftKeeper, EditQueue, UndoStack],
+  providers: [
+    NetworkStore,
+    Company,
+    DraftKeeper,
+    EditQueue,
+    UndoStack,
+    { provide: BANDS_TO_COME, useFactory: () => inject(NetworkStore).bandsToCome },
+  ],
   changeDetection: ChangeDetectionStrategy.OnPush,
   host: {
     '(window:beforeunload)': 'warnBeforeLoss($event)',
@@ -75,7 +83,7 @@ export class NetworkPage {
     });
     effect(() => {
       const element = this.element();
-      untracked(() => this.company.select(element === undefined ? [] : [element]));
+      untracked(() => this.company.lookAt(element));
     });
     effect(() => {
       if (this.company.reloadAsked() > 0) untracked(() => this.store.readOn());

@@ -14,6 +14,7 @@ import type {
 import { type EditOp, findings, inOrder, type NetworkDocument, type OperatingCase } from '@riseback/network';
 import type { DisplayUnits } from '@riseback/units';
 import { catchError, EMPTY, expand, filter, map, type Observable, of, scan, switchMap, timer } from 'rxjs';
+import { withBandsBefore } from '../results/bands-before';
 import { WORST_OF_ALL, worstOfCases } from '../results/worst-of-cases';
 import { SessionStore } from '../session/session-store';
 import { toProblem } from '../shared/problem';
@@ -28,15 +29,19 @@ type Load = { status: 'loading' } | { status: 'ready'; network: Network } | { st
 export type SolveState =
   | { kind: 'solving' }
   | { kind: 'stale' }
-  | { kind: 'solved'; at: string; ms: number }
+  /** `bandsToCome`: pressures stand, what the bands may do to verdicts does not. */
+  | { kind: 'solved'; at: string; ms: number; bandsToCome: boolean }
   | { kind: 'failed'; problem: Problem };
 
 interface Answers {
   readonly networkId: string;
   readonly latest: NetworkResults | null;
-  readonly finished: Extract<NetworkResults, { state: 'finished' }> | null;
+  readonly finished: Finished | null;
+  /** The last that had its bands. */
+  readonly whole: Finished | null;
 }
-const NO_ANSWERS: Answers = { networkId: '', latest: null, finished: null };
+type Finished = Extract<NetworkResults, { state: 'finished' }>;
+const NO_ANSWERS: Answers = { networkId: '', latest: null, finished: null, whole: null };
 
 /** The network of the page: what it is, what was drawn, what came out. In the network page's `providers`. */
 @Injectable()
@@ -88,25 +93,24 @@ export class NetworkStore {
     toObservable(this.savedInput).pipe(
       filter(({ networkId }) => networkId !== ''),
       switchMap(({ networkId }) => this.resultsWhenReady(networkId).pipe(map((latest) => ({ networkId, latest })))),
-      scan(
-        (before: Answers, { networkId, latest }): Answers => ({
-          networkId,
-          latest,
-          finished: latest.state === 'finished' ? latest : before.networkId === networkId ? before.finished : null,
-        }),
-        NO_ANSWERS,
-      ),
+      scan((all: Answers, { networkId, latest }): Answers => {
+        const before = all.networkId === networkId ? all : NO_ANSWERS;
+        if (latest.state !== 'finished') return { ...before, networkId, latest };
+        const finished = withBandsBefore(latest, before.whole);
+        return { networkId, latest, finished, whole: latest.bandsToCome === true ? before.whole : latest };
+      }, NO_ANSWERS),
     ),
     { initialValue: NO_ANSWERS },
   );
 
-  /** The newest finished results; they stay on screen while newer ones are computed. */
+  /** The newest finished results; they stay on screen while newer ones are computed, and lend those their bands until they have their own. */
   readonly finished = computed(() => this.answers().finished);
+  readonly bandsToCome = computed(() => this.finished()?.bandsToCome === true);
   readonly solveState = computed((): SolveState => {
     const { latest, finished } = this.answers();
     if (latest?.state === 'failed') return { kind: 'failed', problem: latest.problem };
     if (finished?.solverHash === this.queue.solverHash() && this.queue.pendingCount() === 0) {
-      return { kind: 'solved', at: finished.finishedAt, ms: finished.solveMs };
+      return { kind: 'solved', at: finished.finishedAt, ms: finished.solveMs, bandsToCome: this.bandsToCome() };
     }
     return this.queue.saveState() === 'notSaved' ? { kind: 'stale' } : { kind: 'solving' };
   });
@@ -263,12 +267,18 @@ export class NetworkStore {
     return null;
   }
 
-  /** Asks until the results of the saved version are there; the server holds each question for up to five seconds. */
+  /** Asks for pressures, then for the whole, until each is there; the server holds every question for up to five seconds. */
   private resultsWhenReady(networkId: string): Observable<NetworkResults> {
     const version = this.queue.version();
-    const ask = () => this.api.results(networkId, version);
+    let bands: 'later' | undefined = 'later';
+    const ask = () => this.api.results(networkId, version, bands);
     return ask().pipe(
-      expand((results) => (results.state === 'waiting' ? timer(200).pipe(switchMap(ask)) : EMPTY)),
+      expand((results) => {
+        if (results.state === 'waiting') return timer(200).pipe(switchMap(ask));
+        if (results.state === 'failed' || results.bandsToCome !== true) return EMPTY;
+        bands = undefined;
+        return ask();
+      }),
       catchError((error: unknown) => of<NetworkResults>({ state: 'failed', version, problem: toProblem(error) })),
     );
   }

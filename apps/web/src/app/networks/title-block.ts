@@ -65,8 +65,12 @@ export class TitleBlock {
         return `Stale: ${this.store.saveProblem()?.title ?? 'not saved yet'}`;
       case 'failed':
         return `No solution: ${state.problem.detail ?? state.problem.title}`;
-      case 'solved':
-        return `Solved ${formatDate(state.at, 'HH:mm', this.locale, zoneOffset(this.session.timeZone(), state.at))} in ${Math.max(1, Math.round(state.ms)).toString()} ms`;
+      case 'solved': {
+        const at = formatDate(state.at, 'HH:mm', this.locale, zoneOffset(this.session.timeZone(), state.at));
+        return state.bandsToCome
+          ? `Solved ${at}, spread to come`
+          : `Solved ${at} in ${Math.max(1, Math.round(state.ms)).toString()} ms`;
+      }
     }
   });
 

@@ -1,12 +1,15 @@
 import { ChangeDetectionStrategy, Component, computed, input } from '@angular/core';
 import type { SolveWarning, TrapCheck } from '@riseback/contracts';
 import type { DisplayUnits } from '@riseback/units';
+import { BANDED_CHECKS } from '../../results/bands-before';
 import { checkName, findingWords } from '../../results/finding-words';
 import { type Status, StatusMark } from '../../shared/status-mark/status-mark';
 
 interface CheckRow {
   readonly key: string;
   readonly status: Status;
+  /** Whether no band can change it. */
+  readonly final: boolean;
   readonly name: string;
   readonly words: string;
   readonly remedy: string;
@@ -23,7 +26,7 @@ const ORDER: Readonly<Record<Status, number>> = { fail: 0, watch: 1, pass: 2, no
     <ul class="checks">
       @for (row of rows(); track row.key) {
         <li>
-          <app-status-mark [status]="row.status" />
+          <app-status-mark [status]="row.status" [final]="row.final" />
           <h4>{{ row.name }}</h4>
           <p>{{ row.words }}</p>
           @if (row.remedy) {
@@ -45,6 +48,7 @@ export class CheckList {
       .map((check, i) => ({
         key: `${check.code}/${String(i)}`,
         status: check.verdict,
+        final: !BANDED_CHECKS.has(check.code),
         name: checkName(check.code),
         words: findingWords(check.text, this.units()),
         remedy: check.remedy === undefined ? '' : findingWords(check.remedy, this.units()),
@@ -53,6 +57,7 @@ export class CheckList {
     ...this.unmade().map(({ code, reason }) => ({
       key: `unmade/${code}`,
       status: 'none' as const,
+      final: true,
       name: checkName(code),
       words: reason,
       remedy: '',

@@ -9,9 +9,14 @@ export interface ResultRow {
 }
 
 /** What makes up the back pressure of a trap, and between what the methods put it. */
-export function trapRows(result: TrapResult, receiverName: string, units: DisplayUnits): ResultRow[] {
+export function trapRows(
+  result: TrapResult,
+  receiverName: string,
+  units: DisplayUnits,
+  bandsToCome = false,
+): ResultRow[] {
   const row = rowIn(units);
-  const bands = bandWords(result, units);
+  const bands = bandsToCome ? 'Spread to come' : bandWords(result, units);
   return [
     row(receiverName, result.receiverPressurePa, 'pressure'),
     row('Lift', result.staticPa, 'pressureDifference'),

@@ -68,7 +68,7 @@ export class ResultTab {
   );
   protected readonly parts = computed((): ResultRow[] => {
     const result = this.trapResult();
-    return result === null ? [] : trapRows(result, this.receiverName(), this.store.units());
+    return result === null ? [] : trapRows(result, this.receiverName(), this.store.units(), this.store.bandsToCome());
   });
   protected readonly stall = computed(() => {
     const [document, trap, result] = [this.store.document(), this.trap(), this.trapResult()];

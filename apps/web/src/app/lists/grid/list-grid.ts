@@ -21,6 +21,7 @@ import {
 } from '@angular/core';
 import { displayUnit, type DisplayUnits, formatQuantity } from '@riseback/units';
 import { Staff } from '../../results/staff/staff';
+import { BANDS_TO_COME } from '../../shared/bands-to-come';
 import { StatusMark } from '../../shared/status-mark/status-mark';
 import type { Sorting } from '../arrange-rows';
 import type { DialogName } from '../columns/column';
@@ -84,6 +85,7 @@ export class ListGrid {
 
   private readonly region = viewChild.required<ElementRef<HTMLElement>>('region');
 
+  protected readonly bandsToCome = inject(BANDS_TO_COME, { optional: true }) ?? (() => false);
   protected readonly gridId = `list-${String(++gridCount)}`;
   protected readonly ROW_HEIGHT_PX = ROW_HEIGHT_PX;
   protected readonly HEAD_ROW = HEAD_ROW;

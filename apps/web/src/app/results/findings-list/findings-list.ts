@@ -1,6 +1,8 @@
-import { ChangeDetectionStrategy, Component, computed, input, output } from '@angular/core';
+import { ChangeDetectionStrategy, Component, computed, inject, input, output } from '@angular/core';
 import type { Position } from '@riseback/network';
+import { BANDS_TO_COME } from '../../shared/bands-to-come';
 import { type Status, StatusMark } from '../../shared/status-mark/status-mark';
+import { BANDED_CHECKS } from '../bands-before';
 import type { Finding, FindingSeverity } from '../finding-list';
 import { checkName } from '../finding-words';
 
@@ -33,11 +35,13 @@ export class FindingsList {
   /** The id of the element that a finding leads to. */
   readonly opened = output<string>();
 
+  private readonly bandsToCome = inject(BANDS_TO_COME, { optional: true });
   protected readonly rows = computed(() => {
     const zoneOf = this.zoneOf();
     return this.findings().map((finding) => ({
       finding,
       ...MARKS[finding.severity],
+      final: !BANDED_CHECKS.has(finding.code),
       name: checkName(finding.code),
       zone: finding.position === null || zoneOf === undefined ? '' : zoneOf(finding.position),
       cases: this.caseWords(finding),
@@ -50,7 +54,7 @@ export class FindingsList {
       this.findings().filter((finding) => finding.severity === severity).length;
     const parts = [
       `${count('fail').toString()} fail`,
-      `${count('watch').toString()} watch`,
+      `${count('watch').toString()} watch${this.bandsToCome?.() === true ? ' so far' : ''}`,
       ...(count('note') > 0 ? [`${count('note').toString()} ${count('note') === 1 ? 'note' : 'notes'}`] : []),
     ];
     return parts.join(', ');

@@ -1,4 +1,4 @@
-import { ChangeDetectionStrategy, Component, computed, input } from '@angular/core';
+import { ChangeDetectionStrategy, Component, computed, inject, input } from '@angular/core';
 import { MatButton } from '@angular/material/button';
 import { RouterLink } from '@angular/router';
 import type { NodeResult } from '@riseback/contracts';
@@ -7,6 +7,7 @@ import type { LedgerEntry, ProfilePoint } from '@riseback/solver';
 import { type DisplayUnits, formatQuantity } from '@riseback/units';
 import { ElementIcon } from '../../drawing/symbols/element-icon';
 import { FRICTION_WORDS, STATIC_LIFT_WORDS } from '../../networks/method-words';
+import { BANDS_TO_COME } from '../../shared/bands-to-come';
 import { StatusMark } from '../../shared/status-mark/status-mark';
 import { bandNumbers } from '../bands';
 import type { PressureRamp } from '../pressure-ramp';
@@ -42,6 +43,12 @@ export class LedgerSheet {
   /** Why this must not be printed now; '' when it may be. */
   readonly staleReason = input('');
 
+  protected readonly bandsToCome = inject(BANDS_TO_COME, { optional: true }) ?? (() => false);
+  /** What a print would say that is not so, or not yet; '' when it may be printed. */
+  protected readonly whyNoPrint = computed(() => {
+    if (this.staleReason() !== '') return `Not while the ledger is stale. ${this.staleReason()}`;
+    return this.bandsToCome() ? 'Not before its spread is there.' : '';
+  });
   protected readonly model = computed(() =>
     ledgerModel(this.entries(), this.item().result, this.document(), this.units()),
   );

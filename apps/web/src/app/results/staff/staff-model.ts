@@ -37,11 +37,18 @@ export interface StaffModel {
 /** Decimals of the parts, one more than the pressure's own, so that small shares show. */
 export const PART_DECIMALS = 2;
 
+export interface StaffNotes {
+  readonly receiverName: string;
+  readonly limitPa: number | undefined;
+  /** The bands are of the solve before. */
+  readonly bandsToCome?: boolean;
+}
+
 export function staffModel(
   trap: TrapResult,
   inletPa: number,
   units: DisplayUnits,
-  { receiverName, limitPa }: { readonly receiverName: string; readonly limitPa: number | undefined },
+  { receiverName, limitPa, bandsToCome = false }: StaffNotes,
 ): StaffModel {
   const backPa = trap.backPressurePa;
   const parts = staffParts(trap, units, receiverName);
@@ -63,7 +70,12 @@ export function staffModel(
     differentialPa: inletPa - backPa,
     limitPa,
     parts: visible(parts, trap.receiverPressurePa, footPa),
-    sentence: sentence(parts, { inletPa, backPa, limitPa }, bandWords(trap, units), units),
+    sentence: sentence(
+      parts,
+      { inletPa, backPa, limitPa },
+      bandsToCome ? 'Spread to come.' : bandWords(trap, units),
+      units,
+    ),
   };
 }
 

@@ -1,6 +1,7 @@
-import { ChangeDetectionStrategy, Component, computed, input } from '@angular/core';
+import { ChangeDetectionStrategy, Component, computed, inject, input } from '@angular/core';
 import type { TrapResult } from '@riseback/contracts';
 import type { DisplayUnits } from '@riseback/units';
+import { BANDS_TO_COME } from '../../shared/bands-to-come';
 import { FLAT, flatStaff } from './flat-staff';
 import { staffModel } from './staff-model';
 import { TALL, tallStaff } from './tall-staff';
@@ -14,7 +15,7 @@ let staffCount = 0;
 @Component({
   selector: 'app-staff',
   changeDetection: ChangeDetectionStrategy.OnPush,
-  host: { '[class]': 'orientation()' },
+  host: { '[class]': 'orientation()', '[class.bands-to-come]': 'bandsToCome()' },
   templateUrl: './staff.html',
   styleUrl: './staff.scss',
 })
@@ -46,10 +47,12 @@ export class Staff {
     flash: `url(#${this.dots})`,
   } as const;
 
+  protected readonly bandsToCome = inject(BANDS_TO_COME, { optional: true }) ?? (() => false);
   protected readonly model = computed(() =>
     staffModel(this.trap(), this.inletPressurePa(), this.units(), {
       receiverName: this.receiverName(),
       limitPa: this.limitPa(),
+      bandsToCome: this.bandsToCome(),
     }),
   );
   protected readonly tall = computed(() =>

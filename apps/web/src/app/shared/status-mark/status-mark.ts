@@ -1,14 +1,19 @@
-import { ChangeDetectionStrategy, Component, computed, input } from '@angular/core';
+import { ChangeDetectionStrategy, Component, computed, inject, input } from '@angular/core';
+
+import { BANDS_TO_COME } from '../bands-to-come';
 
 export type Status = 'fail' | 'watch' | 'pass' | 'none';
 
 const WORDS: Readonly<Record<Status, string>> = { fail: 'Fail', watch: 'Watch', pass: 'Pass', none: 'Not checked' };
 
-/** A verdict as shape and word: solid diamond, open triangle, ring with tick, dashed ring. Colour only repeats them. */
+/**
+ * A verdict as shape and word: solid diamond, open triangle, ring with tick, dashed ring. Colour only repeats them. While bands are to come
+ * a pass and a watch are pale and say that they hold so far.
+ */
 @Component({
   selector: 'app-status-mark',
   changeDetection: ChangeDetectionStrategy.OnPush,
-  host: { '[class]': 'status()' },
+  host: { '[class]': 'status()', '[class.so-far]': 'soFar()' },
   template: `
     <svg viewBox="0 0 14 14" width="14" height="14" aria-hidden="true" focusable="false">
       @switch (status()) {
@@ -40,5 +45,14 @@ export class StatusMark {
   /** Leaves the word to the screen reader where a neighbour says it in print. */
   readonly wordless = input(false);
 
-  protected readonly shownWord = computed(() => this.word() ?? WORDS[this.status()]);
+  /** Whether no band can change it. */
+  readonly final = input(false);
+
+  private readonly bandsToCome = inject(BANDS_TO_COME, { optional: true });
+  protected readonly soFar = computed(
+    () => this.bandsToCome?.() === true && !this.final() && (this.status() === 'pass' || this.status() === 'watch'),
+  );
+  protected readonly shownWord = computed(
+    () => this.word() ?? (this.soFar() ? `${WORDS[this.status()]} so far` : WORDS[this.status()]),
+  );
 }
