@@ -16,6 +16,17 @@ import { JUNCTION_COLUMNS, PUMPED_INLET_COLUMNS, VESSEL_COLUMNS, type Vessel } f
 import { PIPE_COLUMNS } from './columns/pipe-columns';
 import { isTrap, TRAP_COLUMNS } from './columns/trap-columns';
 import { TRAP_MODEL_COLUMNS } from './columns/trap-model-columns';
+import { type BlockTarget, blockTarget } from './exchange/block-target';
+import {
+  GAUGE_ROWS,
+  JUNCTION_ROWS,
+  PIPE_ROWS,
+  PUMPED_INLET_ROWS,
+  type RowRules,
+  TRAP_MODEL_ROWS,
+  TRAP_ROWS,
+  VESSEL_ROWS,
+} from './exchange/row-rules';
 import { type ListTable, tabulate } from './list-table';
 
 export const LIST_IDS = ['traps', 'pipes', 'junctions', 'vessels', 'pumped-inlets', 'gauges', 'trap-models'] as const;
@@ -44,6 +55,8 @@ export interface ElementList extends ListFacts {
   readonly count: (document: NetworkDocument) => number;
   readonly holds: (document: NetworkDocument, elementId: string) => boolean;
   readonly table: (context: ListContext) => ListTable;
+  /** For spreadsheets, both ways. */
+  readonly block: (context: ListContext) => BlockTarget;
 }
 
 export const ELEMENT_LISTS: readonly ElementList[] = [
@@ -60,6 +73,7 @@ export const ELEMENT_LISTS: readonly ElementList[] = [
     },
     (document) => nodes(document).filter(isTrap),
     TRAP_COLUMNS,
+    TRAP_ROWS,
   ),
   elementList(
     {
@@ -74,6 +88,7 @@ export const ELEMENT_LISTS: readonly ElementList[] = [
     },
     (document): PipeRun[] => inOrder(document.pipes).map(([, { value }]) => value),
     PIPE_COLUMNS,
+    PIPE_ROWS,
   ),
   elementList(
     {
@@ -88,6 +103,7 @@ export const ELEMENT_LISTS: readonly ElementList[] = [
     },
     (document) => nodes(document).filter((node): node is Junction => node.kind === 'junction'),
     JUNCTION_COLUMNS,
+    JUNCTION_ROWS,
   ),
   elementList(
     {
@@ -105,6 +121,7 @@ export const ELEMENT_LISTS: readonly ElementList[] = [
     },
     (document) => nodes(document).filter(isVessel),
     VESSEL_COLUMNS,
+    VESSEL_ROWS,
   ),
   elementList(
     {
@@ -119,6 +136,7 @@ export const ELEMENT_LISTS: readonly ElementList[] = [
     },
     (document) => nodes(document).filter((node): node is PumpedInlet => node.kind === 'pumpedInlet'),
     PUMPED_INLET_COLUMNS,
+    PUMPED_INLET_ROWS,
   ),
   elementList(
     {
@@ -133,6 +151,7 @@ export const ELEMENT_LISTS: readonly ElementList[] = [
     },
     (document): Gauge[] => inOrder(document.gauges).map(([, { value }]) => value),
     GAUGE_COLUMNS,
+    GAUGE_ROWS,
   ),
   elementList(
     {
@@ -147,6 +166,7 @@ export const ELEMENT_LISTS: readonly ElementList[] = [
     },
     (document): TrapModel[] => inOrder(document.trapModels).map(([, { value }]) => value),
     TRAP_MODEL_COLUMNS,
+    TRAP_MODEL_ROWS,
   ),
 ];
 
@@ -154,12 +174,19 @@ function elementList<E extends ListedElement>(
   facts: ListFacts,
   elements: (document: NetworkDocument) => E[],
   columns: readonly Column<E>[],
+  rules: RowRules<E>,
 ): ElementList {
   return {
     ...facts,
     count: (document) => elements(document).length,
     holds: (document, elementId) => elements(document).some(({ id }) => id === elementId),
     table: (context) => tabulate(columns, elements(context.document), context),
+    block: (context) => {
+      const listed = elements(context.document);
+      const { cell } = tabulate(columns, listed, context);
+      const { collection, one } = facts;
+      return blockTarget({ collection, one, columns, elements: listed, rules }, context, cell);
+    },
   };
 }
 

@@ -6,6 +6,13 @@ import { caseColumn, elevationColumn, findingColumn, nameColumns, noteColumn } f
 type ListedNode = Junction | FlashVessel | Receiver | PumpedInlet;
 export type Vessel = FlashVessel | Receiver;
 
+const VESSEL_WORDS: Readonly<Record<Vessel['kind'], string>> = { receiver: 'Receiver', flashVessel: 'Flash vessel' };
+
+export function vesselKind(text: string): Vessel['kind'] | undefined {
+  const written = text.trim().toLowerCase().replace(/\s/g, '');
+  return written === 'receiver' ? 'receiver' : written === 'flashvessel' ? 'flashVessel' : undefined;
+}
+
 export const JUNCTION_COLUMNS: readonly Column<Junction>[] = [
   ...nameColumns<Junction>('nodes'),
   elevationColumn(),
@@ -39,7 +46,21 @@ export const VESSEL_COLUMNS: readonly Column<Vessel>[] = [
     title: 'Kind',
     group: 'element',
     widthPx: 110,
-    value: ({ kind }) => (kind === 'receiver' ? 'Receiver' : 'Flash vessel'),
+    value: ({ kind }) => VESSEL_WORDS[kind],
+    sheet: {
+      write: ({ kind }) => VESSEL_WORDS[kind],
+      read: (text, { kind }) => {
+        const named = vesselKind(text);
+        if (named === kind) return { ok: true, ops: [] };
+        return {
+          ok: false,
+          reason:
+            named === undefined
+              ? `The kind is ${VESSEL_WORDS.receiver} or ${VESSEL_WORDS.flashVessel}.`
+              : 'A vessel never changes its kind. Delete it and add another.',
+        };
+      },
+    },
   },
   elevationColumn(),
   {

@@ -4,10 +4,11 @@ import { formatQuantity } from '@riseback/units';
 import { FLOW_PATTERN_WORDS } from '../../shared/flow-pattern-words';
 import type { Choice, Column, ListContext, Proposal } from './column';
 import { quantityColumn, resultColumn } from './column-kinds';
+import { FITTINGS_IN_WORDS, ROUTE_IN_WORDS } from './sheet-forms';
 import { caseColumn, findingColumn, nameColumns, noteColumn } from './shared-columns';
 
 /** For a pipe that is given by its bore and gets a nominal size: the usual one for condensate piping to begin with. */
-const FIRST_SCHEDULE = '80';
+export const FIRST_SCHEDULE = '80';
 
 export const PIPE_COLUMNS: readonly Column<PipeRun>[] = [
   ...nameColumns<PipeRun>('pipes').map((column) =>
@@ -26,6 +27,7 @@ export const PIPE_COLUMNS: readonly Column<PipeRun>[] = [
     widthPx: 120,
     value: ({ fittings }) => fittings.map(({ kind, count }) => `${String(count)} ${FITTINGS[kind].name}`).join('; '),
     editor: { by: 'dialog', dialog: 'fittings' },
+    sheet: FITTINGS_IN_WORDS,
   },
   quantityColumn<PipeRun>('pipes', 'lossCoefficient', 'factor', { title: 'Loss K', widthPx: 64, optional: true }),
   {
@@ -46,6 +48,7 @@ export const PIPE_COLUMNS: readonly Column<PipeRun>[] = [
     value: ({ route }) => route?.length,
     show: (pipe, context) => routeWords(pipe, context),
     editor: { by: 'dialog', dialog: 'route' },
+    sheet: ROUTE_IN_WORDS,
   },
   quantityColumn<PipeRun>('pipes', 'roughnessM', 'roughness', {
     title: 'Roughness',
@@ -172,6 +175,15 @@ function nominalSizeColumn(): Column<PipeRun> {
       chosen: ({ size }) => size?.nps ?? '',
       propose: (nps, pipe, { document }) => sizeSet(pipe, nps, pipe.size?.schedule ?? FIRST_SCHEDULE, document),
     },
+    sheet: {
+      write: ({ size }) => size?.nps,
+      read: (text, pipe, { document }) => {
+        const nps = nominalSize(text);
+        return nps === undefined
+          ? { ok: false, reason: `${text} is not a nominal size. Write it in inches as in 1-1/2, or as DN 40.` }
+          : sizeSet(pipe, nps, pipe.size?.schedule ?? FIRST_SCHEDULE, document);
+      },
+    },
   };
 }
 
@@ -245,6 +257,27 @@ function checkValveColumn(): Column<PipeRun> {
       }),
     },
   };
+}
+
+/** The nominal size that a text names: "1-1/2", "1 1/2 in", "1.5" or "DN 40". */
+export function nominalSize(text: string): string | undefined {
+  const written = text
+    .trim()
+    .toLowerCase()
+    .replace(/\s*(?:in|inch|inches|")$/, '')
+    .replace(/\s+/g, '-');
+  const dn = /^dn-?(\d+)$/.exec(written)?.[1];
+  const sizes = Object.entries(NOMINAL_SIZES);
+  if (dn !== undefined) return sizes.find(([, each]) => each === Number(dn))?.[0];
+  const inches = inchesOf(written);
+  return sizes.find(([nps]) => nps === written || inchesOf(nps) === inches)?.[0];
+}
+
+/** "1-1/2" as 1.5; NaN, which equals nothing, where it is no number. */
+function inchesOf(text: string): number {
+  const [, whole = '0', above, below = '1'] = /^(?:(\d+)-)?(\d+)\/(\d+)$/.exec(text) ?? [];
+  if (above !== undefined) return Number(whole) + Number(above) / Number(below);
+  return text === '' ? NaN : Number(text);
 }
 
 /** A pipe has a size or a bore, never both, so the bore goes with the same batch. */

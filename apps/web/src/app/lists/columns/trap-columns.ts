@@ -2,6 +2,7 @@ import { inOrder, type NetworkNode, setOp, type Trap } from '@riseback/network';
 import { bandNumbers } from '../../results/bands';
 import type { Choice, Column, ListContext } from './column';
 import { choiceColumn, keySet, quantityColumn, resultColumn, textColumn } from './column-kinds';
+import { SERVICE_IN_WORDS } from './sheet-forms';
 import { caseColumn, distinct, elevationColumn, findingColumn, nameColumns, noteColumn } from './shared-columns';
 import { TRAP_TYPE_WORDS } from '../../shared/element-words';
 import { CONTROL_WORDS, DISCHARGE_WORDS } from './trap-words';
@@ -26,6 +27,7 @@ export const TRAP_COLUMNS: readonly Column<Trap>[] = [
     widthPx: 86,
     value: ({ service }) => (service.kind === 'constant' ? 'Constant' : 'Modulating'),
     editor: { by: 'dialog', dialog: 'service' },
+    sheet: SERVICE_IN_WORDS,
   },
   ...modulatingColumns(),
   quantityColumn<Trap>('nodes', 'subcoolingK', 'temperatureDifference', {

@@ -1,6 +1,7 @@
 import type { TrapModel } from '@riseback/network';
 import { formatQuantity } from '@riseback/units';
 import type { Column, ListContext } from './column';
+import { CAPACITY_IN_WORDS } from './sheet-forms';
 import { quantityColumn, textColumn } from './column-kinds';
 
 export const TRAP_MODEL_COLUMNS: readonly Column<TrapModel>[] = [
@@ -44,6 +45,7 @@ export const TRAP_MODEL_COLUMNS: readonly Column<TrapModel>[] = [
     value: ({ capacity }) => capacity?.length,
     show: ({ capacity }, context) => capacityWords(capacity, context),
     editor: { by: 'dialog', dialog: 'capacity' },
+    sheet: CAPACITY_IN_WORDS,
   },
   {
     key: 'usedBy',
