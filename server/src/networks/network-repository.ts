@@ -58,21 +58,30 @@ export interface EditPage {
 export class NetworkRepository {
   private readonly elements: ElementRepository;
   private readonly headQuery;
+  private readonly listQuery;
+  private readonly sizesQuery;
+  private readonly editByBatchQuery;
+  private readonly insertEditQuery;
 
   constructor(private readonly db: Queries) {
     this.elements = new ElementRepository(db);
     this.headQuery = onFirstUse(() => prepareHead(db));
+    this.listQuery = onFirstUse(() => prepareList(db));
+    this.sizesQuery = onFirstUse(() => prepareSizes(db));
+    this.editByBatchQuery = onFirstUse(() => prepareEditByBatch(db));
+    this.insertEditQuery = onFirstUse(() => prepareInsertEdit(db));
   }
 
   /**
-   * Runs a change as one transaction, by the repository it is handed. References are checked at its end, so that the
+   * Runs a change as one transaction. References are checked at its end, so that the
    * order of a batch's steps does not matter.
    */
   transaction<T>(change: (networks: NetworkRepository) => T): T {
+    // one connection: what goes through it while the transaction is open is part of it, prepared statements too
     return this.db.transaction(
-      (tx) => {
-        tx.run(sql`pragma defer_foreign_keys = on`);
-        return change(new NetworkRepository(tx));
+      () => {
+        this.db.run(sql`pragma defer_foreign_keys = on`);
+        return change(this);
       },
       { behavior: 'immediate' },
     );
@@ -84,24 +93,7 @@ export class NetworkRepository {
 
   /** The networks of a site that are not archived, by name. */
   list(siteId: string): ListedNetwork[] {
-    const firstCaseId = sql<string>`coalesce((select ${cases.id} from ${cases} where ${cases.networkId} = ${networks.id} order by ${cases.ordinal}, ${cases.id} limit 1), '')`;
-    return this.db
-      .select({
-        id: networks.id,
-        siteId: networks.siteId,
-        name: networks.name,
-        version: networks.version,
-        solverHash: networks.solverHash,
-        changedAt: edits.at,
-        changedBy: people.name,
-        firstCaseId,
-      })
-      .from(networks)
-      .innerJoin(edits, and(eq(edits.networkId, networks.id), eq(edits.version, networks.version)))
-      .innerJoin(people, eq(people.id, edits.personId))
-      .where(and(eq(networks.siteId, siteId), isNull(networks.archivedAt)))
-      .orderBy(sql`${networks.name} collate nocase`, asc(networks.id))
-      .all();
+    return this.listQuery().all({ siteId });
   }
 
   document(networkId: string): NetworkDocument | undefined {
@@ -142,7 +134,7 @@ export class NetworkRepository {
   }
 
   insertEdit(edit: StoredEdit): void {
-    this.db.insert(edits).values(edit).run();
+    this.insertEditQuery().run({ ...edit });
   }
 
   audit(entry: AuditEntry): void {
@@ -150,7 +142,7 @@ export class NetworkRepository {
   }
 
   editByBatch(batchId: string): StoredEdit | undefined {
-    const row = this.db.select().from(edits).where(eq(edits.batchId, batchId)).get();
+    const row = this.editByBatchQuery().get({ batchId });
     return row === undefined ? undefined : editOf(row);
   }
 
@@ -181,14 +173,7 @@ export class NetworkRepository {
 
   /** As `editsSince`, at most so many and so large together, but one at least. */
   editPage(networkId: string, version: number, { most, bytes }: { most: number; bytes: number }): EditPage {
-    // octet_length reads no content, so that a long history costs nothing here
-    const sizes = this.db
-      .select({ version: edits.version, bytes: sql<number>`octet_length(${edits.forward})` })
-      .from(edits)
-      .where(and(eq(edits.networkId, networkId), gt(edits.version, version)))
-      .orderBy(asc(edits.version))
-      .limit(most + 1)
-      .all();
+    const sizes = this.sizesQuery().all({ networkId, version, limit: most + 1 });
     let [end, room] = [0, bytes];
     while (end < Math.min(most, sizes.length) && (end === 0 || (sizes[end]?.bytes ?? 0) <= room)) {
       room -= sizes[end]?.bytes ?? 0;
@@ -200,6 +185,63 @@ export class NetworkRepository {
       more: end < sizes.length,
     };
   }
+}
+
+function prepareEditByBatch(db: Queries) {
+  return db
+    .select()
+    .from(edits)
+    .where(eq(edits.batchId, sql.placeholder('batchId')))
+    .prepare();
+}
+
+function prepareInsertEdit(db: Queries) {
+  return db
+    .insert(edits)
+    .values({
+      networkId: sql.placeholder('networkId'),
+      version: sql.placeholder('version'),
+      batchId: sql.placeholder('batchId'),
+      personId: sql.placeholder('personId'),
+      at: sql.placeholder('at'),
+      label: sql.placeholder('label'),
+      forward: sql.placeholder('forward'),
+      inverse: sql.placeholder('inverse'),
+      solverHash: sql.placeholder('solverHash'),
+    })
+    .prepare();
+}
+
+function prepareList(db: Queries) {
+  const firstCaseId = sql<string>`coalesce((select ${cases.id} from ${cases} where ${cases.networkId} = ${networks.id} order by ${cases.ordinal}, ${cases.id} limit 1), '')`;
+  return db
+    .select({
+      id: networks.id,
+      siteId: networks.siteId,
+      name: networks.name,
+      version: networks.version,
+      solverHash: networks.solverHash,
+      changedAt: edits.at,
+      changedBy: people.name,
+      firstCaseId,
+    })
+    .from(networks)
+    .innerJoin(edits, and(eq(edits.networkId, networks.id), eq(edits.version, networks.version)))
+    .innerJoin(people, eq(people.id, edits.personId))
+    .where(and(eq(networks.siteId, sql.placeholder('siteId')), isNull(networks.archivedAt)))
+    .orderBy(sql`${networks.name} collate nocase`, asc(networks.id))
+    .prepare();
+}
+
+function prepareSizes(db: Queries) {
+  // octet_length reads no content, so that a long history costs nothing here
+  return db
+    .select({ version: edits.version, bytes: sql<number>`octet_length(${edits.forward})` })
+    .from(edits)
+    .where(and(eq(edits.networkId, sql.placeholder('networkId')), gt(edits.version, sql.placeholder('version'))))
+    .orderBy(asc(edits.version))
+    .limit(sql.placeholder('limit'))
+    .prepare();
 }
 
 function prepareHead(db: Queries) {

@@ -1,6 +1,7 @@
 import type { Role } from '@riseback/contracts';
 import { and, count, eq, isNull, sql } from 'drizzle-orm';
 import type { Queries } from '../platform/db/database';
+import { onFirstUse } from '../platform/db/on-first-use';
 import { memberships, networks, sites } from '../platform/db/schema';
 
 /** A site as one of its people sees it. */
@@ -22,13 +23,15 @@ export interface NewSite {
 }
 
 export class SiteRepository {
-  constructor(private readonly db: Queries) {}
+  private readonly ofPerson;
+
+  constructor(private readonly db: Queries) {
+    this.ofPerson = onFirstUse(() => prepareSitesOfPerson(db));
+  }
 
   /** The sites where a person has a role, by name. */
   sitesOf(personId: string): SiteOfPerson[] {
-    return this.ofPerson(personId)
-      .orderBy(sql`${sites.name} collate nocase`, sites.id)
-      .all();
+    return this.ofPerson().all({ personId });
   }
 
   siteOf(personId: string, siteId: string): SiteOfPerson | undefined {
@@ -45,26 +48,28 @@ export class SiteRepository {
       .values({ ...site, limits: {}, tagPattern: null })
       .run();
   }
+}
 
-  private ofPerson(personId: string) {
-    const networkCount = this.db
-      .select({ siteId: networks.siteId, networkCount: count().as('network_count') })
-      .from(networks)
-      .where(isNull(networks.archivedAt))
-      .groupBy(networks.siteId)
-      .as('counted');
-    return this.db
-      .select({
-        id: sites.id,
-        name: sites.name,
-        role: memberships.role,
-        atmosphericPressurePa: sites.atmosphericPressurePa,
-        ambientTemperatureK: sites.ambientTemperatureK,
-        networkCount: sql<number>`coalesce(${networkCount.networkCount}, 0)`,
-      })
-      .from(sites)
-      .innerJoin(memberships, and(eq(memberships.siteId, sites.id), eq(memberships.personId, personId)))
-      .leftJoin(networkCount, eq(networkCount.siteId, sites.id))
-      .$dynamic();
-  }
+function prepareSitesOfPerson(db: Queries) {
+  const networkCount = db
+    .select({ siteId: networks.siteId, networkCount: count().as('network_count') })
+    .from(networks)
+    .where(isNull(networks.archivedAt))
+    .groupBy(networks.siteId)
+    .as('counted');
+  const ownMembership = and(eq(memberships.siteId, sites.id), eq(memberships.personId, sql.placeholder('personId')));
+  return db
+    .select({
+      id: sites.id,
+      name: sites.name,
+      role: memberships.role,
+      atmosphericPressurePa: sites.atmosphericPressurePa,
+      ambientTemperatureK: sites.ambientTemperatureK,
+      networkCount: sql<number>`coalesce(${networkCount.networkCount}, 0)`,
+    })
+    .from(sites)
+    .innerJoin(memberships, ownMembership)
+    .leftJoin(networkCount, eq(networkCount.siteId, sites.id))
+    .orderBy(sql`${sites.name} collate nocase`, sites.id)
+    .prepare();
 }

@@ -36,7 +36,7 @@ export function solveRoutes(service: ResultService): Route[] {
       answers: { 200: NetworkResults, 202: NetworkResults },
       handler: async ({ access, query, req, res }) => {
         const results = await service.results(access, query.version, query.bands === 'later' ? 'pressures' : 'whole');
-        if ('json' in results) sendReadyJson(req, res, results);
+        if ('json' in results) await sendReadyJson(req, res, results);
         else res.status(results.state === 'waiting' ? 202 : 200).json(results satisfies NetworkResults);
       },
     }),
