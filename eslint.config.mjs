@@ -3,16 +3,40 @@ import tseslint from 'typescript-eslint';
 import angular from 'angular-eslint';
 import drizzle from 'eslint-plugin-drizzle';
 
+/** Packages that are not to come in, each with the reason and what to take in its place; docs/security.md says why at all. */
+const BANNED_PACKAGES = [
+  [['xlsx', 'exceljs'], 'No release on the registry that is still mended: take read-excel-file and write-excel-file.'],
+  [
+    ['bcrypt', 'argon2'],
+    'A second native build to trust and compile: take bcryptjs through platform/auth/passwords.ts.',
+  ],
+  [['moment', 'moment-timezone'], 'In maintenance only, and its dates change under one: take Date in UTC and Intl.'],
+  [
+    ['lodash', 'lodash.*', 'lodash-es', 'underscore'],
+    'Deep merges pollute prototypes: the language has the rest by now.',
+  ],
+  [['request', 'node-fetch', 'axios', 'got', 'superagent'], 'Node and browsers have fetch; pages use HttpClient.'],
+  [['uuid', 'nanoid', 'shortid'], 'Take crypto.randomUUID().'],
+  [['crypto-js', 'md5', 'sha.js', 'tweetnacl'], 'Take node:crypto, or crypto.subtle in the pages.'],
+  [['body-parser', 'multer', 'formidable'], 'Bodies are read by platform/http/read-json-body.ts, which bounds them.'],
+  [['express-session', 'csurf', 'passport', 'passport-*'], 'Sessions and proofs are those of platform/auth.'],
+  [['vm2', 'node-serialize', 'serialize-javascript'], 'Nothing that comes in is ever run: take JSON and a schema.'],
+];
+
 // A later block replaces an earlier one's options of the same rule, so every block states all that holds for its files.
 const restrictImports = (...groups) => [
   'error',
   {
-    patterns: [...groups, [['@riseback/*/**'], 'Use the library door.']].map(([group, message]) => ({
-      group,
-      message,
-    })),
+    patterns: [
+      ...[...groups, [['@riseback/*/**'], 'Use the library door.']].map(([group, message]) => ({ group, message })),
+      // By regular expression: a gitignore-like group of `uuid` would also refuse our own `./uuid`.
+      ...BANNED_PACKAGES.map(([names, message]) => ({ regex: `^(${names.map(wholePackage).join('|')})$`, message })),
+    ],
   },
 ];
+function wholePackage(name) {
+  return `${name.replaceAll('.', '\\.').replaceAll('*', '[^/]*')}(/.*)?`;
+}
 const noDefault = { selector: 'ExportDefaultDeclaration', message: 'Named exports only.' };
 const noEnv = {
   selector: "MemberExpression[object.name='process'][property.name='env']",
@@ -30,6 +54,49 @@ const routerMethods = {
   selector:
     'CallExpression[callee.object.name=/^(app|router)$/][callee.property.name=/^(get|post|put|patch|delete)$/][arguments.length>1]',
   message: 'A route is an entry of the route table, which carries its access rule.',
+};
+
+const openPrograms = [
+  ['node:child_process', 'child_process', 'node:cluster', 'cluster', 'node:vm', 'vm', 'node:repl', 'node:inspector*'],
+  'The server starts no program and runs no text. A place that must is named here, with its reason in docs/security.md.',
+];
+const rawSql = [
+  {
+    selector: "MemberExpression[object.name='sql'][property.name='raw']",
+    message: 'A text put into SQL as it stands: bind it with sql`${value}`.',
+  },
+  {
+    selector: 'CallExpression[callee.property.name=/^(prepare|exec)$/] > TemplateLiteral[expressions.length>0]',
+    message: 'SQL is not put together from pieces: bind values with ?.',
+  },
+];
+/** Where SQL is made of names of our own tables and columns, which cannot be bound. No request's text reaches them. */
+const RAW_SQL_PLACES = [
+  'server/src/platform/db/schema.ts',
+  'server/src/platform/db/content-hash.ts',
+  'server/src/platform/backup/sealed-copy.ts',
+  'server/src/platform/backup/restore.ts',
+  'server/src/networks/element-repository.ts',
+];
+const noMarkup = {
+  selector:
+    'MemberExpression[property.name=/^(innerHTML|outerHTML|insertAdjacentHTML|srcdoc|createContextualFragment|bypassSecurityTrust\\w*)$/]',
+  message: 'Text is shown as text: bind it, or set textContent. Markup from data is how scripts get in.',
+};
+const noDocumentWrite = {
+  selector: "MemberExpression[object.name='document'][property.name=/^(write|writeln)$/]",
+  message: 'Text is shown as text: bind it in a template.',
+};
+const noMarkupBinding = {
+  selector: 'BoundAttribute[name=/^(innerHTML|outerHTML|srcdoc)$/]',
+  message: 'Text is shown as text: {{ }} or [textContent]. Markup from data is how scripts get in.',
+};
+/** Values that someone could guess. */
+const noGuessable = {
+  'no-restricted-properties': [
+    'error',
+    { object: 'Math', property: 'random', message: 'Predictable: randomUUID() or randomBytes() of node:crypto.' },
+  ],
 };
 
 const outer = ['@angular/*', 'express', 'drizzle-orm*', 'better-sqlite3', 'rxjs*', 'node:*'];
@@ -66,6 +133,11 @@ export default tseslint.config(
     languageOptions: { parserOptions: { projectService: true, tsconfigRootDir: import.meta.dirname } },
     rules: {
       'no-restricted-syntax': ['error', noDefault],
+      'no-restricted-imports': restrictImports(),
+      'no-eval': 'error',
+      'no-new-func': 'error',
+      'no-script-url': 'error',
+      '@typescript-eslint/no-implied-eval': 'error',
       eqeqeq: ['error', 'smart'],
       '@typescript-eslint/no-unused-vars': ['error', { ignoreRestSiblings: true }],
       '@typescript-eslint/no-floating-promises': 'error',
@@ -115,13 +187,18 @@ export default tseslint.config(
     rules: {
       'drizzle/enforce-delete-with-where': ['error', { drizzleObjectName: ['db', 'tx'] }],
       'drizzle/enforce-update-with-where': ['error', { drizzleObjectName: ['db', 'tx'] }],
-      'no-restricted-imports': restrictImports([
-        ['@angular/*', '**/apps/**'],
-        'The server does not import the web app.',
-      ]),
-      'no-restricted-syntax': ['error', noDefault, noEnv, syncTransaction, routerMethods],
+      'no-restricted-imports': restrictImports(
+        [['@angular/*', '**/apps/**'], 'The server does not import the web app.'],
+        openPrograms,
+      ),
+      'no-restricted-syntax': ['error', noDefault, noEnv, syncTransaction, routerMethods, ...rawSql],
       'no-console': 'error',
+      ...noGuessable,
     },
+  },
+  {
+    files: RAW_SQL_PLACES,
+    rules: { 'no-restricted-syntax': ['error', noDefault, noEnv, syncTransaction, routerMethods] },
   },
   {
     files: ['server/src/*/*-service.ts', 'server/src/*/*-routes.ts'],
@@ -129,8 +206,14 @@ export default tseslint.config(
       'no-restricted-imports': restrictImports(
         [['@angular/*', '**/apps/**'], 'The server does not import the web app.'],
         [['drizzle-orm*', 'better-sqlite3'], 'SQL lives in repositories.'],
+        openPrograms,
       ),
     },
+  },
+  {
+    files: ['apps/**/*.ts'],
+    ignores: ['**/*.spec.ts'],
+    rules: { 'no-restricted-syntax': ['error', noDefault, noMarkup, noDocumentWrite] },
   },
   {
     files: ['apps/**/*.ts'],
@@ -157,6 +240,7 @@ export default tseslint.config(
     languageOptions: { parser: angular.templateParser },
     plugins: { '@angular-eslint/template': angular.templatePlugin },
     rules: {
+      'no-restricted-syntax': ['error', noMarkupBinding],
       '@angular-eslint/template/prefer-control-flow': 'error',
       '@angular-eslint/template/button-has-type': 'error',
       '@angular-eslint/template/no-negated-async': 'error',
