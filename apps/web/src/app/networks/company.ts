@@ -5,6 +5,7 @@ import type { Subscription } from 'rxjs';
 import { SessionStore } from '../session/session-store';
 import { nameOf } from '../shared/element-words';
 import { EditQueue } from './edit-queue';
+import { initialsOf } from './initials';
 import { NetworkApi } from './network-api';
 import { networkEvents } from './network-events';
 
@@ -12,11 +13,19 @@ import { networkEvents } from './network-events';
 export interface Companion {
   readonly personId: string;
   readonly name: string;
-  /** Tags of what they have selected. */
+  /** Stands for them where a name has no room; no two have the same. */
+  readonly initials: string;
+  /** Counts the others from 0: which kind of outline is theirs. */
+  readonly place: number;
+  /** Elements that they have selected and that are there. */
+  readonly selectedIds: readonly string[];
+  /** Their tags. */
   readonly selected: readonly string[];
 }
 
 const TELL_AFTER_MS = 250;
+/** As many as the contract takes. */
+const MOST_TOLD = 100;
 
 /** The others on the network: what they save arrives here, and who they are. In the network page's `providers`. */
 @Injectable()
@@ -29,7 +38,8 @@ export class Company {
   private readonly reload = signal(0);
   private networkId = '';
   private stream: Subscription | undefined;
-  private selected: readonly string[] = [];
+  private lookedAt: readonly string[] = [];
+  private chosen: readonly string[] | null = null;
   private telling: ReturnType<typeof setTimeout> | undefined;
 
   /** Counted up when the page is too far behind and must read the network again. */
@@ -37,16 +47,30 @@ export class Company {
   readonly others = computed((): Companion[] => {
     const own = this.session.person()?.id;
     const document = this.queue.present();
-    return this.people()
-      .filter(({ personId }) => personId !== own)
-      .map(({ personId, name, selected }) => ({
+    const others = this.people().filter(({ personId }) => personId !== own);
+    const initials = initialsOf(others.map(({ name }) => name));
+    return others.map(({ personId, name, selected }, place) => {
+      const found = selected.flatMap((id) => {
+        const element = document?.nodes.get(id)?.value ?? document?.pipes.get(id)?.value;
+        return element === undefined ? [] : [{ id, tag: nameOf(element) }];
+      });
+      return {
         personId,
         name,
-        selected: selected.flatMap((id) => {
-          const element = document?.nodes.get(id)?.value ?? document?.pipes.get(id)?.value;
-          return element === undefined ? [] : [nameOf(element)];
-        }),
-      }));
+        initials: initials[place] ?? '',
+        place,
+        selectedIds: found.map(({ id }) => id),
+        selected: found.map(({ tag }) => tag),
+      };
+    });
+  });
+  /** Who else has an element selected; without an entry nobody has. */
+  readonly selecting = computed((): ReadonlyMap<string, readonly Companion[]> => {
+    const selecting = new Map<string, Companion[]>();
+    for (const other of this.others()) {
+      for (const id of other.selectedIds) selecting.set(id, [...(selecting.get(id) ?? []), other]);
+    }
+    return selecting;
   });
   /** Of others' edits as they arrive, for the polite live region. */
   readonly said = computed(() => {
@@ -87,10 +111,24 @@ export class Company {
     });
   }
 
-  /** What this person looks at, for the others. */
-  select(ids: readonly string[]): void {
-    this.selected = ids;
+  /** The element that the address names: what this person has selected where a view does not say more. */
+  lookAt(id: string | undefined): void {
+    this.lookedAt = id === undefined ? [] : [id];
     this.tellSoon();
+  }
+
+  /** What is selected in the view that is open; null when none is that knows. */
+  choose(ids: readonly string[] | null): void {
+    this.chosen = ids?.slice(0, MOST_TOLD) ?? null;
+    this.tellSoon();
+  }
+
+  /** Read out after an element's name: "also selected by Ana Reyes"; '' where nobody else has it. */
+  wordsFor(id: string): string {
+    const names = this.selecting()
+      .get(id)
+      ?.map(({ name }) => name);
+    return names === undefined ? '' : `also selected by ${names.join(' and ')}`;
   }
 
   private tellSoon(): void {
@@ -98,7 +136,7 @@ export class Company {
     if (this.networkId === '') return;
     this.telling = setTimeout(() => {
       // nobody waits for it: the next selection is told anew
-      this.api.present(this.networkId, this.selected).subscribe({ error: () => undefined });
+      this.api.present(this.networkId, this.chosen ?? this.lookedAt).subscribe({ error: () => undefined });
     }, TELL_AFTER_MS);
   }
 

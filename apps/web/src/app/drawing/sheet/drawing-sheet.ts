@@ -4,6 +4,7 @@ import {
   ChangeDetectionStrategy,
   Component,
   computed,
+  DestroyRef,
   effect,
   inject,
   linkedSignal,
@@ -12,6 +13,7 @@ import {
   viewChild,
 } from '@angular/core';
 import type { Position } from '@riseback/network';
+import { Company } from '../../networks/company';
 import { NetworkStore } from '../../networks/network-store';
 import { DrawingScene } from '../drawing-scene';
 import { DrawingState } from '../drawing-state';
@@ -19,7 +21,7 @@ import { GraphCanvas } from '../graph-canvas/graph-canvas';
 import { LabelLayer } from '../labels/label-layer';
 import { type Box, placeLabels } from '../labels/label-placement';
 import { labelObstacles, type SheetLabel, sheetLabels } from '../labels/sheet-labels';
-import type { NodeView } from '../model/element-views';
+import type { NodeView, PipeView } from '../model/element-views';
 import { linePath } from '../model/line-path';
 import { placeOf } from '../model/navigation';
 import { centreToShow, fitView, symbolScale, toScreen } from '../model/viewport';
@@ -28,6 +30,7 @@ import { NodeSymbol } from '../symbols/node-symbol';
 import { PipeMark } from '../symbols/pipe-mark';
 import { areaOutlines } from './area-outlines';
 import { ColourLegend } from './colour-legend';
+import { companyOutlines } from './company-outlines';
 import { SheetKeys } from './sheet-keys';
 import { SheetPointer } from './sheet-pointer';
 import { ZoneFrame } from './zone-frame';
@@ -58,6 +61,7 @@ export class DrawingSheet {
   protected readonly scene = inject(DrawingScene);
   protected readonly pointer = inject(SheetPointer);
   private readonly keys = inject(SheetKeys);
+  private readonly others = inject(Company);
 
   private readonly canvas = viewChild.required(GraphCanvas);
   private readonly surface = viewChild.required<ElementRef<HTMLElement>>('surface');
@@ -112,9 +116,18 @@ export class DrawingSheet {
       this.store.units(),
     ),
   );
-  private readonly obstacles = computed(() =>
-    labelObstacles(this.scene.nodeViews().values(), this.scene.pipeViews().values(), this.viewport().zoom),
+  /** What others have selected. */
+  protected readonly company = computed(() =>
+    companyOutlines(
+      this.others.selecting(),
+      { nodes: this.scene.nodeViews(), pipes: this.scene.pipeViews() },
+      this.viewport().zoom,
+    ),
   );
+  private readonly obstacles = computed(() => [
+    ...labelObstacles(this.scene.nodeViews().values(), this.scene.pipeViews().values(), this.viewport().zoom),
+    ...this.company().map(({ tag }) => tag),
+  ]);
   protected readonly placed = linkedSignal<LabelSubject, ReadonlyMap<string, number>>({
     source: () => ({ labels: this.labels(), obstacles: this.obstacles(), zoom: this.viewport().zoom }),
     // at another zoom there is other room, so only there do labels look for their best place again
@@ -158,6 +171,10 @@ export class DrawingSheet {
     effect(() => {
       this.state.zoom.set(this.viewport().zoom);
     });
+    effect(() => {
+      this.others.choose([...this.state.selection()]);
+    });
+    inject(DestroyRef).onDestroy(() => this.others.choose(null));
     effect(() => {
       // until the person looks for themselves everything is shown, however large the sheet becomes while the page fills
       this.size();
@@ -211,6 +228,12 @@ export class DrawingSheet {
   protected activeBend(id: string): number {
     const mode = this.state.mode();
     return mode.kind === 'moving' && mode.ids[0] === id ? mode.bend : -1;
+  }
+
+  /** What is read out: the element, and who else has it selected. */
+  protected spoken({ id, name }: NodeView | PipeView): string {
+    const also = this.others.wordsFor(id);
+    return also === '' ? name : `${name}, ${also}`;
   }
 
   protected shiftOf(view: NodeView): string {
