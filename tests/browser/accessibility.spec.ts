@@ -32,6 +32,7 @@ test('no axe findings on any page, in both themes', async ({ page }) => {
     `${network}/drawing?case=worst&element=TR5`,
     `${network}/lists?case=worst`,
     empty.replace('/drawing', '/cases'),
+    '/account',
     '/nowhere',
   ];
   for (const path of pages) {

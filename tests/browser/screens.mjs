@@ -95,6 +95,7 @@ function screens({ siteId, networkId, elements }, empty) {
     { name: 'cases', path: `${network}/cases?case=rt5open`, solved: true },
     { name: 'cases-compare', path: `${network}/cases?show=compare`, solved: true },
     { name: 'drawing-worst', path: `${network}/drawing?case=worst&element=${elements.trap}`, solved: true },
+    { name: 'account', path: '/account' },
     { name: 'not-found', path: '/nowhere' },
   ];
 }

@@ -9,6 +9,12 @@ export const routes: Routes = [
     loadComponent: () => import('./sign-in/sign-in-page').then((m) => m.SignInPage),
   },
   {
+    path: 'account',
+    title: 'Your account · Riseback',
+    canActivate: [signedInGuard],
+    loadComponent: () => import('./account/account-page').then((m) => m.AccountPage),
+  },
+  {
     path: 'sites',
     canActivate: [signedInGuard],
     children: [

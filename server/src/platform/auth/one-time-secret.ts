@@ -21,6 +21,8 @@ export function authenticatorAddress(secret: string, email: string): string {
 
 /** @returns the half-minute that the six digits belong to, counted from 1970; undefined when they are of none near `at` */
 export function stepOfCode(secret: string, digits: string, at: Date): number | undefined {
+  // otpauth compares buffers, and throws for six characters that are no ASCII digits
+  if (!/^[0-9]{6}$/.test(digits)) return undefined;
   const timestamp = at.getTime();
   const delta = generatorOf(secret).validate({ token: digits, timestamp, window: STEPS_EITHER_WAY });
   return delta === null ? undefined : Math.floor(timestamp / (PERIOD_S * 1000)) + delta;

@@ -2,9 +2,20 @@ import type { AuditRecord } from '@riseback/contracts';
 
 /** What an entry tells, in words; an action that this page does not know yet keeps its own name. */
 const WORDS: Readonly<Record<string, string>> = {
+  'codes.off': 'turned one-time codes off',
+  'codes.on': 'turned one-time codes on',
+  'codes.recoveryRenew': 'made new recovery codes',
+  'codes.recoveryUse': 'used a recovery code',
+  'library.add': 'added a trap model to the library',
+  'library.reinstate': 'took a trap model into use again',
+  'library.retire': 'retired a trap model',
+  'library.save': 'saved a trap model of the library',
   'network.create': 'made a network',
   'network.edit': 'edited a network',
   'person.create': 'added a person',
+  'person.password': 'changed their password',
+  'person.refuse': 'did not prove who they are',
+  'person.rename': 'changed their name',
   'role.give': 'gave a role',
   'session.start': 'signed in',
   'session.end': 'ended a session',
@@ -14,6 +25,8 @@ const WORDS: Readonly<Record<string, string>> = {
 
 const REASONS: Readonly<Record<string, string>> = {
   wrongPassword: 'wrong password',
+  wrongCode: 'wrong code',
+  tooManyAttempts: 'too many attempts',
   disabled: 'the person is disabled',
   signedOut: 'signed out',
   endedByOwner: 'ended from another session',
