@@ -221,6 +221,7 @@ export const CapacityPoint = z.strictObject({
   differentialPa: z.number().positive().max(2.5e7),
   flowKgS: z.number().positive().max(10_000),
 });
+export type CapacityPoint = z.infer<typeof CapacityPoint>;
 /** A trap model as a file gives it. */
 export const FileTrapModel = z.strictObject({
   id: ElementId,

@@ -1,70 +1,48 @@
-import { ChangeDetectionStrategy, Component, computed, inject, input } from '@angular/core';
-import type { TrapModel } from '@riseback/network';
-import { displayUnit, formatQuantity, type QuantityKind } from '@riseback/units';
+import { ChangeDetectionStrategy, Component, computed, inject, input, linkedSignal } from '@angular/core';
+import { MatButton } from '@angular/material/button';
+import type { Trap, TrapModel } from '@riseback/network';
+import { CapacityChart } from '../../library/capacity-chart';
+import { CopyNews } from '../../library/copy-news';
+import { ModelChoice } from '../../library/model-choice';
+import { ratingRows } from '../../library/model-facts';
+import { trapDemand } from '../../library/model-judgement';
 import { NetworkStore } from '../../networks/network-store';
+import { DrawingState } from '../drawing-state';
 
-/** The chosen model of a trap: its ratings and its capacities, as the network holds them. */
+/** The model of the chosen trap as the network holds it, what the trap needs of it, and the models it might have instead. */
 @Component({
   selector: 'app-model-tab',
+  imports: [CapacityChart, CopyNews, MatButton, ModelChoice],
   changeDetection: ChangeDetectionStrategy.OnPush,
-  template: `
-    <h3>{{ model().name }}</h3>
-    <dl>
-      @for (row of rows(); track row.name) {
-        <dt>{{ row.name }}</dt>
-        <dd>{{ row.value }}</dd>
-      }
-    </dl>
-    @if (capacity().length > 0) {
-      <table class="table">
-        <caption class="rb-visually-hidden">
-          Capacity by differential
-        </caption>
-        <thead>
-          <tr>
-            <th scope="col">Differential, {{ differentialUnit() }}</th>
-            <th scope="col">Capacity, {{ flowUnit() }}</th>
-          </tr>
-        </thead>
-        <tbody>
-          @for (point of capacity(); track point.differential) {
-            <tr>
-              <td>{{ point.differential }}</td>
-              <td>{{ point.flow }}</td>
-            </tr>
-          }
-        </tbody>
-      </table>
-    }
-  `,
+  templateUrl: './model-tab.html',
   styleUrl: './inspector-tabs.scss',
 })
 export class ModelTab {
-  private readonly store = inject(NetworkStore);
+  protected readonly store = inject(NetworkStore);
+  private readonly state = inject(DrawingState);
 
-  readonly model = input.required<TrapModel>();
+  /** Null where the trap has none yet. */
+  readonly model = input.required<TrapModel | null>();
 
-  protected readonly differentialUnit = computed(() => displayUnit('pressureDifference', this.store.units().system));
-  protected readonly flowUnit = computed(() => displayUnit('massFlow', this.store.units().system));
-  protected readonly rows = computed(() => {
-    const { orificeDiameterM, maximumDifferentialPa, bodyPressurePa, bodyTemperatureK, maximumBackPressureFraction } =
-      this.model();
-    return [
-      this.row('Orifice', orificeDiameterM, 'diameter'),
-      this.row('Largest differential', maximumDifferentialPa, 'pressureDifference'),
-      this.row('Body pressure', bodyPressurePa, 'pressure'),
-      this.row('at', bodyTemperatureK, 'temperature'),
-      this.row('Largest back-pressure fraction', maximumBackPressureFraction, 'fraction'),
-    ].flat();
+  protected readonly trap = computed((): Trap | null => {
+    const element = this.store.document()?.nodes.get(this.state.chosenId() ?? '')?.value;
+    return element?.kind === 'trap' ? element : null;
   });
-  protected readonly capacity = computed(() =>
-    (this.model().capacity ?? []).map(({ differentialPa, flowKgS }) => ({
-      differential: formatQuantity(differentialPa, 'pressureDifference', this.store.units()),
-      flow: formatQuantity(flowKgS, 'massFlow', this.store.units()),
-    })),
-  );
+  /** Without a model there is nothing else to do here than to choose one. */
+  protected readonly choosing = linkedSignal({ source: this.state.chosenId, computation: () => this.model() === null });
+  protected readonly rows = computed(() => {
+    const model = this.model();
+    return model === null ? [] : ratingRows(model, this.store.units());
+  });
+  protected readonly need = computed(() => {
+    const [document, trap] = [this.store.document(), this.trap()];
+    const result = trap === null ? undefined : this.store.trapResults().get(trap.id);
+    if (document === null || trap === null || result === undefined) return null;
+    return trapDemand(document, this.store.caseOf(trap.id), trap, result);
+  });
 
-  private row(name: string, si: number | undefined, kind: QuantityKind): { name: string; value: string }[] {
-    return si === undefined ? [] : [{ name, value: formatQuantity(si, kind, this.store.units(), { withUnit: true }) }];
+  protected took(name: string): void {
+    this.choosing.set(false);
+    this.state.say(`${name} chosen`);
   }
 }
