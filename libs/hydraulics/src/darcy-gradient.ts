@@ -4,16 +4,20 @@ import { darcyFrictionFactor } from './friction-factor';
 /** Standard gravity, m/s² (CGPM 1901, exact by definition). */
 export const GRAVITY_M_S2 = 9.80665;
 
-/** One phase that fills the bore: liquid, or steam. */
-export interface SinglePhaseFlow {
-  readonly massFlowKgS: number;
-  readonly densityKgM3: number;
-  /** Dynamic viscosity. */
-  readonly viscosityPaS: number;
+/** What a pipe's friction depends on beside its flow. */
+export interface Bore {
   readonly insideDiameterM: number;
   readonly roughnessM: number;
   /** K of all fittings over the length of the pipe, K/L: fittings are spread evenly. */
   readonly lossCoefficientPerM: number;
+}
+
+/** One phase that fills the bore: liquid, or steam. */
+export interface SinglePhaseFlow extends Bore {
+  readonly massFlowKgS: number;
+  readonly densityKgM3: number;
+  /** Dynamic viscosity. */
+  readonly viscosityPaS: number;
 }
 
 /**
@@ -25,24 +29,15 @@ export interface SinglePhaseFlow {
  * Source: Weisbach 1845, Darcy 1857; see docs/methods/liquid-friction.md.
  */
 export function darcyGradient(flow: SinglePhaseFlow): number {
-  return darcyGradientOf(
-    flow.massFlowKgS,
-    flow.densityKgM3,
-    flow.viscosityPaS,
-    flow.insideDiameterM,
-    flow.roughnessM,
-    flow.lossCoefficientPerM,
-  );
+  return darcyGradientOf(flow.massFlowKgS, flow.densityKgM3, flow.viscosityPaS, flow);
 }
 
-/** The same with plain numbers, for inner loops that should not build an object at every step. */
+/** The same for a phase in a given bore, for inner loops that should not build an object at every step. */
 export function darcyGradientOf(
   massFlowKgS: number,
   densityKgM3: number,
   viscosityPaS: number,
-  insideDiameterM: number,
-  roughnessM: number,
-  lossCoefficientPerM: number,
+  { insideDiameterM, roughnessM, lossCoefficientPerM }: Bore,
 ): number {
   if (!(
     massFlowKgS >= 0 &&

@@ -54,14 +54,7 @@ export function flashVapourSteamGradient(flow: FlashingFlow): number {
   const { quality, saturation } = flow;
   if (!(quality <= 1)) throw new NonPhysicalInputError('flashVapourSteamGradient', { quality });
   if (quality <= 0) return 0;
-  return darcyGradientOf(
-    quality * flow.massFlowKgS,
-    saturation.vapourDensityKgM3,
-    saturation.vapourViscosityPaS,
-    flow.insideDiameterM,
-    flow.roughnessM,
-    flow.lossCoefficientPerM,
-  );
+  return darcyGradientOf(quality * flow.massFlowKgS, saturation.vapourDensityKgM3, saturation.vapourViscosityPaS, flow);
 }
 
 /** The liquid's part of {@link flashVapourGradient}, Pa/m. */
@@ -91,12 +84,6 @@ export function fullLineShare(quality: number): number {
 }
 
 function liquidGradient(flow: FlashingFlow, massFlowKgS: number): number {
-  return darcyGradientOf(
-    massFlowKgS,
-    flow.saturation.liquidDensityKgM3,
-    flow.saturation.liquidViscosityPaS,
-    flow.insideDiameterM,
-    flow.roughnessM,
-    flow.lossCoefficientPerM,
-  );
+  const { liquidDensityKgM3, liquidViscosityPaS } = flow.saturation;
+  return darcyGradientOf(massFlowKgS, liquidDensityKgM3, liquidViscosityPaS, flow);
 }

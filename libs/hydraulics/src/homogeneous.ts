@@ -17,8 +17,6 @@ export function homogeneousGradient(flow: FlashingFlow): number {
     flow.massFlowKgS,
     1 / (x / vapourDensityKgM3 + (1 - x) / liquidDensityKgM3),
     1 / (x / vapourViscosityPaS + (1 - x) / liquidViscosityPaS),
-    flow.insideDiameterM,
-    flow.roughnessM,
-    flow.lossCoefficientPerM,
+    flow,
   );
 }

@@ -34,28 +34,16 @@ export function vapourOnlyGradient(flow: FlashingFlow): number {
 export function liquidPipeGradient(flow: FlashingFlow, massFlowKgS: number, lossCoefficientPerM = 0): number {
   const { liquidDensityKgM3, liquidViscosityPaS } = flow.saturation;
   const { insideDiameterM, roughnessM } = flow;
-  return darcyGradientOf(
-    massFlowKgS,
-    liquidDensityKgM3,
-    liquidViscosityPaS,
-    insideDiameterM,
-    roughnessM,
-    lossCoefficientPerM,
-  );
+  const bore = { insideDiameterM, roughnessM, lossCoefficientPerM };
+  return darcyGradientOf(massFlowKgS, liquidDensityKgM3, liquidViscosityPaS, bore);
 }
 
 /** The same for saturated vapour. */
 export function vapourPipeGradient(flow: FlashingFlow, massFlowKgS: number, lossCoefficientPerM = 0): number {
   const { vapourDensityKgM3, vapourViscosityPaS } = flow.saturation;
   const { insideDiameterM, roughnessM } = flow;
-  return darcyGradientOf(
-    massFlowKgS,
-    vapourDensityKgM3,
-    vapourViscosityPaS,
-    insideDiameterM,
-    roughnessM,
-    lossCoefficientPerM,
-  );
+  const bore = { insideDiameterM, roughnessM, lossCoefficientPerM };
+  return darcyGradientOf(massFlowKgS, vapourDensityKgM3, vapourViscosityPaS, bore);
 }
 
 /**

@@ -5,7 +5,7 @@ import { limitsInForce, type LimitsInForce } from './check-limits';
 import { ownRuns, type AverageRun } from './coincidence';
 import { atElement } from './element-failure';
 import { enthalpyAlong } from './flow-and-energy';
-import { fluidStateAt, vapourFraction, type FluidState } from './fluid-state';
+import { temperatureAtK, thermodynamicQuality, vapourFraction } from './fluid-state';
 import { networkBands } from './network-bands';
 import { failedOpen } from './open-traps';
 import { checkPipe, vesselCannotDrain } from './pipe-checks';
@@ -13,7 +13,7 @@ import { pipeResult, type PieceEnd } from './pipe-result';
 import { flowInPipe } from './pressure-walk';
 import { inletNode, outletNode } from './return-tree';
 import type { NodeResult, PipeResult, SolveResult, SolveWarning, TrapResult } from './solve-result';
-import { thermalShock, type Stream } from './thermal-shock';
+import { MeetingStreams } from './thermal-shock';
 import { trapResult } from './trap-result';
 
 /** A network solved in one case, before its results are told. */
@@ -53,7 +53,9 @@ export function assembleResult(solved: Solved): SolveResult {
     }
     addTo(warnings, vesselWarning(solved, index));
   });
-  for (const streams of pipes.streamsAt.values()) addTo(warnings, thermalShock(streams, limits));
+  for (let index = 0; index < file.nodes.length; index++) {
+    addTo(warnings, pipes.streams.thermalShock(index, file.pipes, limits));
+  }
   const result = {
     case: solved.caseId,
     converged: true,
@@ -84,8 +86,8 @@ interface Pipes {
   readonly warnings: readonly SolveWarning[];
   /** By pipe. */
   readonly ends: readonly (readonly PieceEnd[] | undefined)[];
-  /** By junction: what flows into it. */
-  readonly streamsAt: ReadonlyMap<number, readonly Stream[]>;
+  /** What flows into junctions. */
+  readonly streams: MeetingStreams;
   readonly leftOut: readonly string[];
 }
 
@@ -95,7 +97,7 @@ function pipesOf(solved: Solved, limits: LimitsInForce): Pipes {
   const results: PipeResult[] = [];
   const warnings: SolveWarning[] = [];
   const ends: (readonly PieceEnd[] | undefined)[] = [];
-  const streamsAt = new Map<number, Stream[]>();
+  const streams = new MeetingStreams(file.nodes.length);
   const leftOut: string[] = [];
   file.pipes.forEach((pipe, index) => {
     const marched = walk.marched[index];
@@ -121,36 +123,35 @@ function pipesOf(solved: Solved, limits: LimitsInForce): Pipes {
     results.push(result);
     ends.push(endsOfPipe);
     if (flow.massFlowKgS > 0 && solved.nodes[below]?.kind === 'junction') {
-      const { temperatureK } = fluidStateAt(downstream, enthalpyAlong(flow, geometry.lengthM));
-      const streams = streamsAt.get(below);
-      if (streams === undefined) streamsAt.set(below, [{ pipe: pipe.id, temperatureK }]);
-      else streams.push({ pipe: pipe.id, temperatureK });
+      streams.add(below, index, temperatureAtK(downstream, enthalpyAlong(flow, geometry.lengthM)));
     }
     const massFluxKgM2S = flow.massFlowKgS / boreAreaM2(geometry.insideDiameterM);
     const { lengthM } = geometry;
     const { friction } = file.method;
     const { checkValve } = pipe;
-    warnings.push(...checkPipe({ result, ends: endsOfPipe, friction, lengthM, massFluxKgM2S, checkValve, limits }));
+    const found = checkPipe({ result, ends: endsOfPipe, friction, lengthM, massFluxKgM2S, checkValve, limits });
+    for (const warning of found) warnings.push(warning);
   });
-  return { results, warnings, ends, streamsAt, leftOut };
+  return { results, warnings, ends, streams, leftOut };
 }
 
 function nodeResult(solved: Solved, index: number): NodeResult {
   const { flows, walk } = solved.state;
   const node = solved.prepared.file.nodes[index] as NetworkFile['nodes'][number];
   const enthalpyJKg = flows.enthalpyJKg[index] as number;
-  let state: FluidState;
+  const saturation = saturationAt(solved, index);
+  let temperatureK: number;
   try {
-    state = fluidStateAt(saturationAt(solved, index), enthalpyJKg);
+    temperatureK = temperatureAtK(saturation, enthalpyJKg);
   } catch (error) {
     throw atElement('node', node, index, error);
   }
   return {
     id: node.id,
     pressurePa: walk.pressurePa[index] as number,
-    temperatureK: state.temperatureK,
+    temperatureK,
     enthalpyJKg,
-    quality: vapourFraction(state.quality),
+    quality: vapourFraction(thermodynamicQuality(saturation, enthalpyJKg)),
     massFlowKgS: flows.massFlowKgS[index] as number,
   };
 }

@@ -32,6 +32,12 @@ export function fluidStateAt(saturation: SaturationState, enthalpyJKg: number): 
   };
 }
 
+/** Temperature alone of {@link fluidStateAt}: that of boiling where liquid and vapour stand together. */
+export function temperatureAtK(saturation: SaturationState, enthalpyJKg: number): number {
+  const quality = thermodynamicQuality(saturation, enthalpyJKg);
+  return quality >= 0 && quality <= 1 ? saturation.temperatureK : fluidStateAt(saturation, enthalpyJKg).temperatureK;
+}
+
 /** Mass fraction of vapour: x within 0 and 1. */
 export function vapourFraction(quality: number): number {
   return Math.min(1, Math.max(0, quality));

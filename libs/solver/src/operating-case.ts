@@ -64,6 +64,7 @@ export function operatingNodes(file: NetworkFile, operatingCase: FileCase): Oper
 
 /** The traps that a case has fail open and that have no hole to say how much steam they then pass. */
 export function openWithoutOrifice(file: NetworkFile, operatingCase: FileCase): ProblemError[] {
+  if (!operatingCase.overrides.some(({ state }) => state === 'failedOpen')) return [];
   const models = new Map(file.trapModels.map((model) => [model.id, model]));
   const traps = new Map(file.nodes.flatMap((node) => (node.kind === 'trap' ? [[node.id, node]] : [])));
   const caseIndex = file.cases.indexOf(operatingCase);

@@ -31,13 +31,15 @@ export const PIPE_CHECKS: readonly Check[] = [
   dryBasis,
 ];
 
+const NO_WARNINGS: readonly SolveWarning[] = [];
+
 /** What an engineer should know of a pipe; nothing of one that stands still. */
-export function checkPipe(at: PipeUnderCheck): SolveWarning[] {
-  if (at.result.massFlowKgS === 0) return [];
-  const warnings: SolveWarning[] = [];
+export function checkPipe(at: PipeUnderCheck): readonly SolveWarning[] {
+  if (at.result.massFlowKgS === 0) return NO_WARNINGS;
+  let warnings = NO_WARNINGS;
   for (const check of PIPE_CHECKS) {
     const warning = check(at);
-    if (warning) warnings.push(warning);
+    if (warning !== undefined) warnings = [...warnings, warning];
   }
   return warnings;
 }
@@ -126,22 +128,30 @@ function uphillTwoPhase({ result, ends }: PipeUnderCheck): SolveWarning | undefi
   return { code: 'uphillTwoPhase', element: result.id, verdict: 'watch', value, ...findingWords(text, LET_FLASH_GO) };
 }
 
+const ANOTHER_METHOD = say`Look at the trap’s credible band, or compute the network by a full-bore method or byPattern.`;
+
 /** Where the basis of dry, pitched returns is asked for more than it was made for. */
 function dryBasis({ result, ends, friction }: PipeUnderCheck): SolveWarning | undefined {
   if (friction !== 'flashVapour') return undefined;
-  const base = { code: 'dryBasis', element: result.id, verdict: 'watch' } as const;
-  const remedy = say`Look at the trap’s credible band, or compute the network by a full-bore method or byPattern.`;
+  const code = 'dryBasis';
   const rise = ends.find(isFlashingRise);
   if (rise !== undefined) {
     const text = say`The dry-return basis lets condensate drain along the bottom, but here it rises with ${amount('fraction', rise.quality)} of flash steam: friction may be several times what is told.`;
-    return { ...base, value: rise.quality, limit: DRAINING_QUALITY, ...findingWords(text, remedy) };
+    return {
+      code,
+      element: result.id,
+      verdict: 'watch',
+      value: rise.quality,
+      limit: DRAINING_QUALITY,
+      ...findingWords(text, ANOTHER_METHOD),
+    };
   }
   const torn = ends.find(
     ({ quality, pattern }) => quality > DRAINING_QUALITY && pattern !== undefined && FILLS_BORE[pattern],
   );
   if (torn?.pattern === undefined) return undefined;
   const text = say`The dry-return basis lets condensate drain along the bottom, but by its flow pattern (${PATTERN_WORDS[torn.pattern]}) the steam carries it along here: friction may be several times what is told.`;
-  return { ...base, ...findingWords(text, remedy) };
+  return { code, element: result.id, verdict: 'watch', ...findingWords(text, ANOTHER_METHOD) };
 }
 
 function isFlashingRise({ riseM, quality }: PieceEnd): boolean {

@@ -14,7 +14,13 @@ import {
   type IntegrationOptions,
   type IntegrationResult,
 } from '@riseback/numerics';
-import { SATURATION_RANGE_PA, saturationState, type SaturationState } from '@riseback/steam';
+import {
+  blankSaturation,
+  fillSaturation,
+  SATURATION_RANGE_PA,
+  saturationState,
+  type SaturationState,
+} from '@riseback/steam';
 import { chokedOutletPa } from './choking';
 import { enthalpyAlong, type PipeFlow } from './flow-and-energy';
 import { fluidStateAt, thermodynamicQuality } from './fluid-state';
@@ -87,8 +93,8 @@ type Writable<T> = { -readonly [Key in keyof T]: T[Key] };
  * Marches pipes against their flow, from the pressure at the outlet to the pressure at the inlet.
  *     −dp/ds = static + friction + flash      (docs/methods/network-walk.md)
  * with what acceleration takes counted as flash, (static + friction + flash)/[1 + G² (dv/dp)_h] in all.
- * One marcher serves a whole solve. It holds the piece of pipe that it is at, so that a step makes nothing new but the state of
- * the water: making closures and objects for each pipe once cost as much as all its physics.
+ * One marcher serves a whole solve. It holds the piece of pipe that it is at and the state of the water there, so that a step makes
+ * nothing new: making closures and objects for each pipe once cost as much as all its physics.
  */
 export class PipeMarcher {
   private readonly at: Place = {
@@ -102,7 +108,8 @@ export class PipeMarcher {
   private readonly law: FrictionLaw;
   private readonly voidFraction: VoidFraction;
   private readonly accelerates: boolean;
-  /** Filled in anew for each gradient. */
+  /** Both filled in anew for each gradient; the flow stands at this saturation. */
+  private readonly saturation = blankSaturation();
   private readonly flashing: Writable<FlashingFlow>;
   private readonly integration: IntegrationOptions;
 
@@ -121,16 +128,14 @@ export class PipeMarcher {
         this.at.reachedPa = pressurePa;
       },
     };
-    const saturation = saturationState(LOWEST_PA);
-    const { insideDiameterM, roughnessM, lossCoefficientPerM } = this.at.pipe;
     this.flashing = {
-      massFlowKgS: 0,
-      quality: 0,
-      saturation,
-      insideDiameterM,
-      roughnessM,
-      lossCoefficientPerM,
-      fallSlope: 0,
+      massFlowKgS: NaN,
+      quality: NaN,
+      saturation: this.saturation,
+      insideDiameterM: NaN,
+      roughnessM: NaN,
+      lossCoefficientPerM: NaN,
+      fallSlope: NaN,
     };
   }
 
@@ -158,18 +163,20 @@ export class PipeMarcher {
     totals.flashPa = pressurePa - nodePressurePa;
     // just above choking the gradient runs up without bound: the first few bores are marched by themselves
     let startM = criticalPa > 0 ? START_BORES * pipe.insideDiameterM : 0;
-    const pieceOutletsPa: number[] = [];
+    const pieceOutletsPa = [pressurePa];
+    const uppermost = piecesAgainstFlow.at(-1);
     for (const piece of piecesAgainstFlow) {
-      pieceOutletsPa.push(pressurePa);
       at.riseSlope = piece.riseM / piece.lengthM;
       flashing.fallSlope = -at.riseSlope;
       if (startM > 0 && startM < piece.lengthM) pressurePa = this.stretch(pressurePa, startM, totals);
       else startM = 0;
       pressurePa = this.stretch(pressurePa, piece.lengthM - startM, totals);
       startM = 0;
+      if (piece !== uppermost) pieceOutletsPa.push(pressurePa);
       onPieceEnd?.(piece, pressurePa);
     }
-    return { upstreamPressurePa: pressurePa, outletPressurePa, pieceOutletsPa, ...totals };
+    const { staticPa, frictionPa, flashPa } = totals;
+    return { upstreamPressurePa: pressurePa, outletPressurePa, pieceOutletsPa, staticPa, frictionPa, flashPa };
   }
 
   /** Marches up a stretch of one slope, and adds what it costs. @returns the pressure at its upstream end */
@@ -220,7 +227,8 @@ export class PipeMarcher {
     const { flow, outletM } = this.at;
     const enthalpyJKg = enthalpyAlong(flow, outletM - distanceM);
     this.report(pressurePa, enthalpyJKg);
-    const saturation = saturationState(pressurePa);
+    const { saturation } = this;
+    fillSaturation(saturation, pressurePa);
     const quality = thermodynamicQuality(saturation, enthalpyJKg);
     return quality > 0 && quality <= 1
       ? this.twoPhaseGradient(saturation, quality, enthalpyJKg, parts)
@@ -234,7 +242,6 @@ export class PipeMarcher {
     parts: Float64Array,
   ): number {
     const { flashing } = this;
-    flashing.saturation = saturation;
     flashing.quality = quality;
     const fullBoreShare = this.law.write(flashing, parts);
     parts[STATIC] = this.twoPhaseStaticGradient(fullBoreShare);
@@ -247,8 +254,7 @@ export class PipeMarcher {
     const isLiquid = fluid.quality <= 0;
     const density = isLiquid ? fluid.liquidDensityKgM3 : fluid.vapourDensityKgM3;
     const viscosity = isLiquid ? fluid.liquidViscosityPaS : fluid.vapourViscosityPaS;
-    const { massFlowKgS, insideDiameterM, roughnessM, lossCoefficientPerM } = this.flashing;
-    const alone = darcyGradientOf(massFlowKgS, density, viscosity, insideDiameterM, roughnessM, lossCoefficientPerM);
+    const alone = darcyGradientOf(this.flashing.massFlowKgS, density, viscosity, this.flashing);
     parts[FRICTION] = isLiquid ? alone : 0;
     parts[FLASH] = isLiquid ? 0 : alone;
     parts[STATIC] = staticGradient(this.options.method, this.at.riseSlope, fluid.liquidDensityKgM3, density, 1);

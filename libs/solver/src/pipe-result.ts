@@ -1,9 +1,9 @@
-import { boreAreaM2, flowPattern, type FlowPattern } from '@riseback/hydraulics';
+import { boreAreaM2, flowPattern, type FlashingFlow, type FlowPattern } from '@riseback/hydraulics';
 import type { PipeRun } from '@riseback/network';
-import { saturationState, type SaturationState } from '@riseback/steam';
+import { blankSaturation, saturationState, type SaturationState } from '@riseback/steam';
 import { atElement } from './element-failure';
 import { enthalpyAlong, type PipeFlow } from './flow-and-energy';
-import { fluidStateAt, thermodynamicQuality, vapourFraction, type FluidState } from './fluid-state';
+import { fluidStateAt, thermodynamicQuality, vapourFraction } from './fluid-state';
 import { piecesAgainstFlow, type PipeGeometry } from './pipe-geometry';
 import type { MarchedPipe } from './pipe-march';
 import type { PipeResult } from './solve-result';
@@ -37,21 +37,21 @@ export interface PieceEnd {
 export function pipeResult(at: PipeAfterMarch): { readonly result: PipeResult; readonly ends: readonly PieceEnd[] } {
   const { pipe, index, geometry, marched, flow, arrow, upstream, downstream } = at;
   const choked = marched.outletPressurePa > downstream.pressurePa;
-  let outlet: FluidState;
+  let outlet: OutletState;
   let ends: readonly PieceEnd[];
   try {
     const saturation = choked ? saturationState(marched.outletPressurePa) : downstream;
-    outlet = fluidStateAt(saturation, enthalpyAlong(flow, geometry.lengthM));
-    ends = pieceEnds(at, outlet);
+    outlet = outletState(saturation, enthalpyAlong(flow, geometry.lengthM));
+    ends = pieceEnds(at, saturation);
   } catch (error) {
     throw atElement('pipe', pipe, index, error);
   }
   // a still pipe whose arrow runs the other way has no −0
   const massFlowKgS = flow.massFlowKgS === 0 ? 0 : flow.massFlowKgS * arrow;
   const massFlux = massFlowKgS / boreAreaM2(geometry.insideDiameterM);
+  const { liquidDensityKgM3, vapourDensityKgM3 } = outlet.phases;
   const quality = vapourFraction(outlet.quality);
-  const pattern = ends[0]?.pattern;
-  const result = {
+  const result: Writable<PipeResult> = {
     id: pipe.id,
     massFlowKgS,
     upstreamPressurePa: marched.upstreamPressurePa,
@@ -61,30 +61,53 @@ export function pipeResult(at: PipeAfterMarch): { readonly result: PipeResult; r
     flashPa: marched.flashPa,
     upstreamQuality: vapourFraction(thermodynamicQuality(upstream, flow.inletEnthalpyJKg)),
     downstreamQuality: quality,
-    liquidVelocityMS: massFlux / outlet.liquidDensityKgM3,
-    mixtureVelocityMS: massFlux * (quality / outlet.vapourDensityKgM3 + (1 - quality) / outlet.liquidDensityKgM3),
-    ...(pattern === undefined ? {} : { flowPattern: pattern }),
+    liquidVelocityMS: massFlux / liquidDensityKgM3,
+    mixtureVelocityMS: massFlux * (quality / vapourDensityKgM3 + (1 - quality) / liquidDensityKgM3),
     choked,
-    ...(choked ? { outletPressurePa: marched.outletPressurePa } : {}),
   };
+  const pattern = ends[0]?.pattern;
+  if (pattern !== undefined) result.flowPattern = pattern;
+  if (choked) result.outletPressurePa = marched.outletPressurePa;
   return { result, ends };
 }
 
-function pieceEnds({ geometry, marched, flow, arrow }: PipeAfterMarch, outlet: FluidState): PieceEnd[] {
+type Writable<T> = { -readonly [Key in keyof T]: T[Key] };
+
+interface OutletState {
+  readonly quality: number;
+  readonly phases: Pick<SaturationState, 'liquidDensityKgM3' | 'vapourDensityKgM3'>;
+}
+
+/** A boiling mixture has the densities of saturation; only a single phase has its own to be found. */
+function outletState(saturation: SaturationState, enthalpyJKg: number): OutletState {
+  const quality = thermodynamicQuality(saturation, enthalpyJKg);
+  return { quality, phases: quality >= 0 && quality <= 1 ? saturation : fluidStateAt(saturation, enthalpyJKg) };
+}
+
+/** Filled in anew for each piece: `flowPattern` keeps nothing of it. */
+const flashing: Writable<FlashingFlow> = {
+  massFlowKgS: NaN,
+  quality: NaN,
+  saturation: blankSaturation(),
+  insideDiameterM: NaN,
+  roughnessM: NaN,
+  lossCoefficientPerM: NaN,
+  fallSlope: NaN,
+};
+
+function pieceEnds({ geometry, marched, flow, arrow }: PipeAfterMarch, outlet: SaturationState): PieceEnd[] {
+  flashing.massFlowKgS = flow.massFlowKgS;
+  flashing.insideDiameterM = geometry.insideDiameterM;
+  flashing.roughnessM = geometry.roughnessM;
+  flashing.lossCoefficientPerM = geometry.lossCoefficientPerM;
   let endM = geometry.lengthM;
   return piecesAgainstFlow(geometry.pieces, arrow === 1).map(({ lengthM, riseM }, i) => {
-    const saturation = i === 0 ? outlet.saturation : saturationState(marched.pieceOutletsPa[i] as number);
-    const quality = i === 0 ? outlet.quality : thermodynamicQuality(saturation, enthalpyAlong(flow, endM));
+    flashing.saturation = i === 0 ? outlet : saturationState(marched.pieceOutletsPa[i] as number);
+    flashing.quality = thermodynamicQuality(flashing.saturation, enthalpyAlong(flow, endM));
+    flashing.fallSlope = -riseM / lengthM;
     endM -= lengthM;
-    const pattern = flowPattern({
-      massFlowKgS: flow.massFlowKgS,
-      quality,
-      saturation,
-      insideDiameterM: geometry.insideDiameterM,
-      roughnessM: geometry.roughnessM,
-      lossCoefficientPerM: geometry.lossCoefficientPerM,
-      fallSlope: -riseM / lengthM,
-    });
-    return { riseM, quality: vapourFraction(quality), ...(pattern === undefined ? {} : { pattern }) };
+    const pattern = flowPattern(flashing);
+    const quality = vapourFraction(flashing.quality);
+    return pattern === undefined ? { riseM, quality } : { riseM, quality, pattern };
   });
 }

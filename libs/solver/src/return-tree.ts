@@ -69,7 +69,10 @@ export function returnTree(file: NetworkFile, isSound?: readonly boolean[]): Ret
   const at = pipesAtNode(nodeCount, from, to);
   // flows are summed in the order of the pipes' ids, so that the file's order changes no result, not even by rounding
   const byPipeId = (a: number, b: number): number => compareIds(idOf(pipes, a), idOf(pipes, b));
-  for (let node = 0; node < nodeCount; node++) at.pipes.subarray(at.first[node], at.first[node + 1]).sort(byPipeId);
+  for (let node = 0; node < nodeCount; node++) {
+    const [first, end] = [at.first[node] as number, at.first[node + 1] as number];
+    if (end - first > 1) at.pipes.subarray(first, end).sort(byPipeId);
+  }
   const outPipe = new Int32Array(nodeCount).fill(-1);
   const drainsTo = new Int32Array(nodeCount).fill(-1);
   const endOfWalk = new Int32Array(nodeCount).fill(-1);

@@ -2,29 +2,51 @@ import type { LimitsInForce } from './check-limits';
 import { amount, findingWords, say } from './finding-text';
 import type { SolveWarning } from './solve-result';
 
-/** What comes to a junction by one of its pipes, before it mixes. */
-export interface Stream {
-  readonly pipe: string;
-  readonly temperatureK: number;
-}
+/** The hottest and the coldest of the streams that come to each junction, before they mix. */
+export class MeetingStreams {
+  private readonly hottestK: Float64Array;
+  private readonly coldestK: Float64Array;
+  /** By node: the pipe that each comes by. */
+  private readonly hottestPipe: Int32Array;
+  private readonly coldestPipe: Int32Array;
 
-/**
- * Streams of different temperature that meet at a junction: flash steam that comes upon colder condensate collapses at once.
- * @param streams all that flow into one junction
- * @returns a finding at the pipe of the hottest stream
- */
-export function thermalShock(streams: readonly Stream[], limits: LimitsInForce): SolveWarning | undefined {
-  const [first] = streams;
-  if (first === undefined) return undefined;
-  let [hottest, coldest] = [first, first];
-  for (const stream of streams) {
-    if (stream.temperatureK > hottest.temperatureK) hottest = stream;
-    if (stream.temperatureK < coldest.temperatureK) coldest = stream;
+  constructor(nodeCount: number) {
+    this.hottestK = new Float64Array(nodeCount).fill(-Infinity);
+    this.coldestK = new Float64Array(nodeCount).fill(Infinity);
+    this.hottestPipe = new Int32Array(nodeCount);
+    this.coldestPipe = new Int32Array(nodeCount);
   }
-  const value = hottest.temperatureK - coldest.temperatureK;
-  const limit = limits.thermalShock.limitK;
-  if (value <= limit) return undefined;
-  const text = say`Where this pipe ends its flow, at ${amount('temperature', hottest.temperatureK)}, meets that of ${coldest.pipe}, ${amount('temperatureDifference', value)} colder: above ${amount('temperatureDifference', limit)} its steam collapses with hammer, and the metal is strained.`;
-  const remedy = say`Bring the hot stream in from above through a sparge or a flash vessel, or give it a return of its own.`;
-  return { code: 'thermalShock', element: hottest.pipe, verdict: 'watch', value, limit, ...findingWords(text, remedy) };
+
+  add(node: number, pipe: number, temperatureK: number): void {
+    if (temperatureK > (this.hottestK[node] as number)) {
+      this.hottestK[node] = temperatureK;
+      this.hottestPipe[node] = pipe;
+    }
+    if (temperatureK < (this.coldestK[node] as number)) {
+      this.coldestK[node] = temperatureK;
+      this.coldestPipe[node] = pipe;
+    }
+  }
+
+  /**
+   * Streams of different temperature that meet at a junction: flash steam that comes upon colder condensate collapses at once.
+   * @param pipes of the file, by index
+   * @returns a finding at the pipe of the hottest stream
+   */
+  thermalShock(
+    node: number,
+    pipes: readonly { readonly id: string }[],
+    limits: LimitsInForce,
+  ): SolveWarning | undefined {
+    const hottestK = this.hottestK[node] as number;
+    const value = hottestK - (this.coldestK[node] as number);
+    const limit = limits.thermalShock.limitK;
+    // nothing that flows in leaves −∞ and ∞
+    if (!(value > limit)) return undefined;
+    const idOf = (pipe: number | undefined): string => (pipes[pipe as number] as { readonly id: string }).id;
+    const text = say`Where this pipe ends its flow, at ${amount('temperature', hottestK)}, meets that of ${idOf(this.coldestPipe[node])}, ${amount('temperatureDifference', value)} colder: above ${amount('temperatureDifference', limit)} its steam collapses with hammer, and the metal is strained.`;
+    const remedy = say`Bring the hot stream in from above through a sparge or a flash vessel, or give it a return of its own.`;
+    const element = idOf(this.hottestPipe[node]);
+    return { code: 'thermalShock', element, verdict: 'watch', value, limit, ...findingWords(text, remedy) };
+  }
 }

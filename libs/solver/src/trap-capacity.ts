@@ -11,13 +11,13 @@ type CapacityPoints = NonNullable<TrapModel['capacity']>;
 export function trapCapacityKgS(points: CapacityPoints, differentialPa: number): number {
   if (!(differentialPa > 0)) return 0;
   const root = Math.sqrt(differentialPa);
-  let below = { root: 0, flowKgS: 0 };
-  for (const point of points) {
-    const above = { root: Math.sqrt(point.differentialPa), flowKgS: point.flowKgS };
-    if (root <= above.root) {
-      return below.flowKgS + ((root - below.root) / (above.root - below.root)) * (above.flowKgS - below.flowKgS);
-    }
-    below = above;
+  let belowRoot = 0;
+  let belowKgS = 0;
+  for (const { differentialPa: abovePa, flowKgS: aboveKgS } of points) {
+    const aboveRoot = Math.sqrt(abovePa);
+    if (root <= aboveRoot) return belowKgS + ((root - belowRoot) / (aboveRoot - belowRoot)) * (aboveKgS - belowKgS);
+    belowRoot = aboveRoot;
+    belowKgS = aboveKgS;
   }
-  return below.flowKgS;
+  return belowKgS;
 }

@@ -4,7 +4,7 @@ import type { LimitsInForce } from './check-limits';
 import { amount, findingWords, say } from './finding-text';
 import type { OperatingTrap } from './operating-case';
 import { stallFraction } from './stall';
-import type { TrapCheck, UnmadeCheck } from './solve-result';
+import type { FindingWords, TrapCheck, UnmadeCheck } from './solve-result';
 import { trapCapacityKgS } from './trap-capacity';
 
 /** A trap in one case, with the return it was found to stand against. */
@@ -33,11 +33,13 @@ export const TRAP_CHECKS = {
   stall,
 } as const satisfies Record<string, Check>;
 
+const CHECKS = Object.values<Check>(TRAP_CHECKS);
+
 /** Makes each check that the trap's data allow, and says why the others are not made. */
 export function checkTrap(at: TrapUnderCheck): { checks: TrapCheck[]; notChecked: UnmadeCheck[] } {
   const checks: TrapCheck[] = [];
   const notChecked: UnmadeCheck[] = [];
-  for (const check of Object.values<Check>(TRAP_CHECKS)) {
+  for (const check of CHECKS) {
     const outcome = check(at);
     if (outcome === undefined) continue;
     if ('verdict' in outcome) checks.push(outcome);
@@ -80,7 +82,7 @@ const ISOLATED_UNCHECKED: readonly UnmadeCheck[] = Object.keys(TRAP_CHECKS).map(
 function differential({ inletPressurePa, backPressurePa }: TrapUnderCheck): TrapCheck {
   const value = inletPressurePa - backPressurePa;
   if (value > 0) {
-    return { code: 'differential', verdict: 'pass', value, limit: 0, ...DIFFERENTIAL_PASSES };
+    return passes('differential', value, 0, DIFFERENTIAL_PASSES);
   }
   const text = say`The return stands at ${amount('pressure', backPressurePa)} against ${amount('pressure', inletPressurePa)} at the inlet: nothing drives the condensate out, and it backs up into the steam space, where it costs heat and can hammer.`;
   return { code: 'differential', verdict: 'fail', value, limit: 0, ...findingWords(text, LESS_BEHIND_OR_PUMP) };
@@ -96,7 +98,7 @@ function capacity({ trap, model, inletPressurePa, backPressurePa, loadKgS }: Tra
   const value = trapCapacityKgS(points, differentialPa);
   const limit = trap.sizingFactor * loadKgS;
   if (isAtLeast(value, limit)) {
-    return { code, verdict: 'pass', value, limit, ...CAPACITY_PASSES };
+    return passes(code, value, limit, CAPACITY_PASSES);
   }
   const text = say`At ${amount('pressureDifference', differentialPa)} across it the model passes ${amount('massFlow', value)}, but ${amount('factor', trap.sizingFactor)} times its load needs ${amount('massFlow', limit)}: at start-up and at peaks condensate backs up.`;
   const remedy = say`Choose a model or seat that passes ${amount('massFlow', limit)} at this differential, or lower what stands behind the trap.`;
@@ -142,7 +144,7 @@ function backPressureFraction(at: TrapUnderCheck): TrapCheck | UnmadeCheck {
       ...findingWords(text, say`Use a float or inverted bucket trap at so low a pressure.`),
     };
   }
-  return { code, verdict: 'pass', value, limit: watchAbove, ...FRACTION_PASSES };
+  return passes(code, value, watchAbove, FRACTION_PASSES);
 }
 
 function orificeRating({ trap, model, atmosphericPressurePa }: TrapUnderCheck): TrapCheck | UnmadeCheck {
@@ -154,7 +156,7 @@ function orificeRating({ trap, model, atmosphericPressurePa }: TrapUnderCheck): 
     return { code, reason: 'The trap’s maximumPressurePa, the safety valve’s setting, is not given.' };
   const value = trap.maximumPressurePa - atmosphericPressurePa;
   if (isAtLeast(limit, value)) {
-    return { code, verdict: 'pass', value, limit, ...SEAT_PASSES };
+    return passes(code, value, limit, SEAT_PASSES);
   }
   const text = say`Up to the safety valve’s setting ${amount('pressureDifference', value)} can stand across the seat, which is rated for ${amount('pressureDifference', limit)}: above that the trap stays shut and floods.`;
   const remedy = say`Choose a smaller seat or a model rated for ${amount('pressureDifference', value)}.`;
@@ -183,7 +185,7 @@ function bodyRating({ trap, model }: TrapUnderCheck): TrapCheck | UnmadeCheck {
   }
   if (bodyPressurePa === undefined) return { code, verdict: 'pass', ...BODY_PASSES_BY_TEMPERATURE };
   const words = bodyTemperatureK === undefined ? BODY_PASSES_BY_PRESSURE : BODY_PASSES;
-  return { code, verdict: 'pass', value: pressurePa, limit: bodyPressurePa, ...words };
+  return passes(code, pressurePa, bodyPressurePa, words);
 }
 
 /** Of a modulated exchanger: at what load its steam space falls to the back pressure. */
@@ -211,7 +213,11 @@ function stall({ trap, modulation, backPressurePa, limits }: TrapUnderCheck): Tr
     const text = say`The exchanger stalls below ${amount('fraction', value)} of its load and runs at ${amount('fraction', limit)}: a little less load and condensate backs up into it.`;
     return { code, verdict: 'watch', value, limit, ...findingWords(text, DRAIN_AT_STALL) };
   }
-  return { code, verdict: 'pass', value, limit, ...STALL_PASSES };
+  return passes(code, value, limit, STALL_PASSES);
+}
+
+function passes(code: string, value: number, limit: number, { message, text }: FindingWords): TrapCheck {
+  return { code, verdict: 'pass', value, limit, message, text };
 }
 
 /** A rating that just meets what is asked for passes: 600 lb/h and 3 × 200 lb/h differ in the last digits of a conversion. */

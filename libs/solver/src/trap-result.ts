@@ -7,7 +7,6 @@ import type { OperatingTrap } from './operating-case';
 import type { PressureWalk } from './pressure-walk';
 import type { ReturnTree } from './return-tree';
 import type { TrapResult } from './solve-result';
-import { stepsFrom } from './steps-of-walk';
 import { checkTrap, isolatedUnchecked, type TrapUnderCheck } from './trap-checks';
 
 /** A trap of a solved network. */
@@ -26,31 +25,35 @@ export interface SolvedTrap {
 export function trapResult(solved: SolvedTrap): TrapResult {
   const { file, tree, walk, trap, index, ownRun, bands } = solved;
   const { inletPressurePa, liveSteamKgS } = trap;
-  const stands = ownRun ?? {
-    basis: 'average',
-    backPressurePa: walk.pressurePa[index] as number,
-    staticPa: walk.staticPa[index] as number,
-    frictionPa: walk.frictionPa[index] as number,
-    flashPa: walk.flashPa[index] as number,
-  };
-  const { basis, backPressurePa, staticPa, frictionPa, flashPa } = stands;
+  const backPressurePa = ownRun?.backPressurePa ?? (walk.pressurePa[index] as number);
   const receiverPressurePa = walk.pressurePa[tree.endOfWalk[index] as number] as number;
   const handStaticPa = walk.handCheckPa[index] as number;
-  return {
+  const { checks, notChecked } = checksOf(solved, backPressurePa);
+  const result: TrapResult = {
     id: trap.node.id,
-    basis,
+    basis: ownRun?.basis ?? 'average',
     backPressurePa,
     receiverPressurePa,
-    staticPa,
-    frictionPa,
-    flashPa,
+    staticPa: ownRun?.staticPa ?? (walk.staticPa[index] as number),
+    frictionPa: ownRun?.frictionPa ?? (walk.frictionPa[index] as number),
+    flashPa: ownRun?.flashPa ?? (walk.flashPa[index] as number),
     differentialPa: inletPressurePa - backPressurePa,
     handCheck: { staticPa: handStaticPa, backPressurePa: receiverPressurePa + handStaticPa },
-    ...(liveSteamKgS === undefined ? {} : { liveSteamKgS }),
-    ...bands,
-    walk: stepsFrom(tree, index).map(({ pipe }) => (file.pipes[pipe] as { id: string }).id),
-    ...checksOf(solved, backPressurePa),
+    walk: idsOfWalk(file, tree, index),
+    checks,
+    notChecked,
   };
+  // most traps have neither, and copying a result once more would cost as much as making it
+  if (liveSteamKgS === undefined && bands === undefined) return result;
+  return { ...result, ...(liveSteamKgS === undefined ? {} : { liveSteamKgS }), ...bands };
+}
+
+function idsOfWalk({ pipes }: NetworkFile, { outPipe, drainsTo }: ReturnTree, start: number): string[] {
+  const ids: string[] = [];
+  for (let node = start; outPipe[node] !== -1; node = drainsTo[node] as number) {
+    ids.push((pipes[outPipe[node] as number] as { id: string }).id);
+  }
+  return ids;
 }
 
 function checksOf(
