@@ -1,12 +1,23 @@
-import { mkdirSync, mkdtempSync, rmSync, writeFileSync } from 'node:fs';
-import { tmpdir } from 'node:os';
-import { join } from 'node:path';
-import { brotliCompressSync, gzipSync } from 'node:zlib';
+import { once } from 'node:events';
+import { createServer } from 'node:http';
+import { connect, type AddressInfo } from 'node:net';
+import { gzipSync } from 'node:zlib';
+import { eq } from 'drizzle-orm';
 import request from 'supertest';
-import { afterAll, afterEach, beforeAll, beforeEach, describe, expect, it } from 'vitest';
+import { afterEach, beforeEach, describe, expect, it } from 'vitest';
 import * as z from 'zod';
+import { people } from '../../server/src/platform/db/schema';
 import { findSyntaxError } from '../../server/src/platform/http/json-syntax';
 import { HOST, TestServer } from './test-server';
+
+const EMPTY_NETWORK = {
+  format: 'riseback-network',
+  version: 1,
+  name: 'x',
+  site: { atmosphericPressurePa: 101_325, ambientTemperatureK: 293.15 },
+  nodes: [],
+  pipes: [],
+};
 
 let server: TestServer;
 beforeEach(() => {
@@ -15,6 +26,13 @@ beforeEach(() => {
 afterEach(() => {
   server.close();
 });
+
+/** All that is stored but sessions, the log and what solves leave behind. */
+function stored(): string {
+  const named = server.db.$client.prepare(`select name from sqlite_schema where type = 'table'`).all();
+  const tables = (named as { name: string }[]).filter(({ name }) => !/^(sqlite|__|sessions$|audit|solve)/.test(name));
+  return JSON.stringify(tables.map(({ name }) => server.db.$client.prepare(`select * from "${name}"`).all()));
+}
 
 describe('a change', () => {
   const change = { units: 'si' };
@@ -109,6 +127,16 @@ describe('a body', () => {
   });
 });
 
+describe('a session', () => {
+  it('older than the password is dead, though nobody ended it', async () => {
+    const client = server.as('viewer');
+    await client.get('/api/session').expect(200);
+    const passwordChangedAt = new Date(server.now().getTime() + 1000).toISOString();
+    server.db.update(people).set({ passwordChangedAt }).where(eq(people.id, 'viewer')).run();
+    await client.get('/api/session').expect(401);
+  });
+});
+
 describe('findSyntaxError', () => {
   it.each([
     ['', 1, 1],
@@ -142,14 +170,7 @@ describe('findSyntaxError', () => {
 describe('a fault of ours', () => {
   const secretive = (error: Error) =>
     new TestServer({ solver: { solve: () => Promise.reject(error) }, config: { logLevel: 'info' } });
-  const file = {
-    format: 'riseback-network',
-    version: 1,
-    name: 'x',
-    site: { atmosphericPressurePa: 101_325, ambientTemperatureK: 293.15 },
-    nodes: [],
-    pipes: [],
-  };
+  const file = EMPTY_NETWORK;
 
   it.each([
     new Error('SELECT * FROM people; at /srv/riseback/server.js:12'),
@@ -217,7 +238,90 @@ describe('the address', () => {
   });
 });
 
+describe('a request', () => {
+  /** What the server answers to bytes that no well-meaning client sends. */
+  async function answerTo(text: string): Promise<string> {
+    const listening = createServer(server.app.handler).listen(0, '127.0.0.1');
+    await once(listening, 'listening');
+    const socket = connect((listening.address() as AddressInfo).port, '127.0.0.1');
+    socket.end(text.replaceAll('\n', '\r\n'));
+    let answer = '';
+    for await (const chunk of socket) answer += String(chunk);
+    listening.close();
+    return answer;
+  }
+
+  it('whose length is told in two ways is refused, so that no second one hides in it', async () => {
+    const head = `POST /api/session HTTP/1.1\nHost: ${HOST}\nContent-Type: application/json\n`;
+    const both = await answerTo(
+      `${head}Content-Length: 4\nTransfer-Encoding: chunked\n\n0\n\nGET /healthz HTTP/1.1\nHost: ${HOST}\n\n`,
+    );
+    expect(both).toMatch(/^HTTP\/1\.1 400 /);
+    const two = await answerTo(
+      `${head}Content-Length: 2\nContent-Length: 40\n\n{}GET /healthz HTTP/1.1\nHost: ${HOST}\n\n`,
+    );
+    expect(two).toMatch(/^HTTP\/1\.1 400 /);
+    for (const answer of [both, two]) expect(answer).not.toContain('alive');
+  });
+
+  it.each(['TRACE', 'OPTIONS', 'CONNECT', 'PROPFIND'])(
+    'by the method %s changes and echoes nothing',
+    async (method) => {
+      const answer = await answerTo(
+        `${method} /api/session HTTP/1.1\nHost: ${HOST}\nX-Echo: an-echo\nConnection: close\n\n`,
+      );
+      expect(answer).not.toMatch(/^HTTP\/1\.1 2/);
+      expect(answer).not.toContain('an-echo');
+    },
+  );
+
+  it('that reads stores nothing, whatever the route', async () => {
+    const made = await server.as('designer').post(`/api/sites/${server.siteId}/networks`, EMPTY_NETWORK).expect(201);
+    const ids = { siteId: server.siteId, networkId: (made.body as { id: string }).id };
+    const before = stored();
+    const reads = server.app.routes.filter(({ mutates }) => !mutates);
+    expect(reads.length).toBeGreaterThan(8);
+    for (const { path } of reads) {
+      const address = path.replace(':siteId', ids.siteId).replace(':networkId', ids.networkId).replaceAll(/:\w+/g, 'x');
+      await server
+        .as('administrator')
+        .get(`${address}?delete=1&_method=delete`)
+        .set('X-HTTP-Method-Override', 'DELETE');
+    }
+    expect(stored()).toBe(before);
+  });
+
+  it('that names a parameter twice, or one of the body in the address, is refused or not listened to', async () => {
+    const made = await server.as('designer').post(`/api/sites/${server.siteId}/networks`, EMPTY_NETWORK).expect(201);
+    const { id } = made.body as { id: string };
+    await server.as('viewer').get(`/api/networks/${id}/results?version=1&version=2`).expect(400);
+    await server.as('viewer').get(`/api/networks/${id}/edits?since=0&since=1`).expect(400);
+    const inTheAddress = server.as('anonymous').send('post', '/api/session?email=viewer@ternquay.example&password=x');
+    const { errors } = (await inTheAddress.send({}).expect(400)).body as { errors: { pointer: string }[] };
+    expect(errors.map(({ pointer }) => pointer).sort()).toEqual(['/email', '/password']);
+  });
+
+  it('that would break a line of the log stays in its own', async () => {
+    server.log.length = 0;
+    await server.as('viewer').get('/api/none%0d%0a%7b%22level%22:%22error%22%7d').expect(404);
+    expect(server.log).toHaveLength(1);
+    const [line = ''] = server.log;
+    expect(line.trimEnd()).not.toMatch(/[\r\n]/);
+    expect(JSON.parse(line)).toMatchObject({ level: 'info', status: 404, time: expect.stringMatching(/Z$/) as string });
+  });
+});
+
 describe('headers', () => {
+  it('let no other origin read an answer, whatever it claims to be', async () => {
+    for (const origin of ['https://elsewhere.example', 'null', `http://${HOST}`]) {
+      const { headers } = await server.as('viewer').get('/api/session').set('Origin', origin).expect(200);
+      expect(Object.keys(headers).filter((name) => name.startsWith('access-control-'))).toEqual([]);
+      expect(headers['cross-origin-resource-policy']).toBe('same-origin');
+      expect(headers['cross-origin-opener-policy']).toBe('same-origin');
+      expect(headers['content-type']).toBe('application/json; charset=utf-8');
+    }
+  });
+
   it('of the API forbid storing, sniffing, framing and referring', async () => {
     const { headers } = await server.as('viewer').get('/api/session').expect(200);
     expect(headers['cache-control']).toBe('no-store');
@@ -233,91 +337,5 @@ describe('headers', () => {
     const { headers } = await secure.as('anonymous').get('/healthz').expect(200);
     expect(headers['strict-transport-security']).toMatch(/max-age=\d{7,}/);
     secure.close();
-  });
-});
-
-describe('the pages', () => {
-  let folder = '';
-  let pages: TestServer;
-  beforeAll(() => {
-    folder = mkdtempSync(join(tmpdir(), 'riseback-pages-'));
-    writeFileSync(join(folder, 'index.html'), '<app-root ngCspNonce="CSP_NONCE"></app-root>');
-    writeFileSync(join(folder, 'main-ABCD2345.js'), '1;');
-    writeFileSync(join(folder, 'main-ABCD2345.js.br'), brotliCompressSync('1;'));
-    writeFileSync(join(folder, 'mark.svg'), '<svg/>');
-    mkdirSync(join(folder, 'media'));
-    pages = new TestServer({ webFolder: folder });
-  });
-  afterAll(() => {
-    pages.close();
-    rmSync(folder, { recursive: true });
-  });
-  const open = (path: string) =>
-    pages.as('anonymous').get(path).set('Accept', 'text/html,application/xhtml+xml,*/*;q=0.8');
-
-  it.each(['/', '/sites/a/networks/b/drawing?case=design&element=T1.2', '/index.html'])(
-    '%s is index.html',
-    async (path) => {
-      const response = await open(path);
-      if (path === '/index.html') {
-        expect(response.headers['cache-control']).not.toContain('immutable');
-        return;
-      }
-      expect(response.status).toBe(200);
-      expect(response.headers['cache-control']).toBe('no-store');
-    },
-  );
-
-  it('carry a nonce of their own, in the page and in the policy, and allow no inline script', async () => {
-    const nonces = new Set<string>();
-    for (let i = 0; i < 3; i += 1) {
-      const response = await open('/').expect(200);
-      const nonce = /ngCspNonce="([^"]+)"/.exec(response.text)?.[1] ?? '';
-      expect(nonce.length).toBeGreaterThanOrEqual(22);
-      nonces.add(nonce);
-      const policy = String(response.headers['content-security-policy']);
-      expect(policy).toContain(`style-src 'self' 'nonce-${nonce}'`);
-      expect(policy).toContain("default-src 'none'");
-      expect(policy).toContain("script-src 'self';");
-      expect(policy).toContain("require-trusted-types-for 'script'");
-      expect(policy).not.toContain('unsafe');
-    }
-    expect(nonces.size).toBe(3);
-  });
-
-  it('keep hashed files for good and others not', async () => {
-    const hashed = await pages.as('anonymous').get('/main-ABCD2345.js').expect(200);
-    expect(hashed.headers['cache-control']).toBe('public, max-age=31536000, immutable');
-    const plain = await pages.as('anonymous').get('/mark.svg').expect(200);
-    expect(plain.headers['cache-control']).toBe('no-cache');
-  });
-
-  it('are sent compressed to those who take that, under the type of the file', async () => {
-    const open = (encodings: string) =>
-      pages.as('anonymous').get('/main-ABCD2345.js').set('Accept-Encoding', encodings).buffer(true).expect(200);
-    const plain = await open('identity');
-    expect(plain.headers['content-encoding']).toBeUndefined();
-    const packed = await open('gzip, br');
-    expect(packed.headers['content-encoding']).toBe('br');
-    for (const { headers, text } of [plain, packed]) {
-      expect(text).toBe('1;');
-      expect(headers['content-type']).toContain('javascript');
-      expect(headers['vary']).toContain('Accept-Encoding');
-      expect(headers['cache-control']).toContain('immutable');
-    }
-  });
-
-  it.each(['/main-GONE2345.js', '/media/none.woff2', '/../package.json', '/%2e%2e/package.json', '/.env'])(
-    'a missing file is 404, never a page: %s',
-    async (path) => {
-      const response = await open(path);
-      expect(response.status).toBe(404);
-      expect(response.headers['content-type']).toContain('application/problem+json');
-    },
-  );
-
-  it('are not given to a script that asks for JSON, nor to a change', async () => {
-    await pages.as('anonymous').get('/sites').set('Accept', 'application/json').expect(404);
-    await pages.as('anonymous').send('post', '/sites').expect(404);
   });
 });
