@@ -1,6 +1,6 @@
 import { HttpErrorResponse } from '@angular/common/http';
 import { computed, DestroyRef, inject, Injectable, signal } from '@angular/core';
-import type { PersonHere } from '@riseback/contracts';
+import type { PersonHere, SolveEvent } from '@riseback/contracts';
 import type { Subscription } from 'rxjs';
 import { SessionStore } from '../session/session-store';
 import { nameOf } from '../shared/element-words';
@@ -36,6 +36,7 @@ export class Company {
 
   private readonly people = signal<readonly PersonHere[]>([]);
   private readonly reload = signal(0);
+  private readonly solve = signal<SolveEvent | null>(null);
   private networkId = '';
   private stream: Subscription | undefined;
   private lookedAt: readonly string[] = [];
@@ -44,6 +45,8 @@ export class Company {
 
   /** Counted up when the page is too far behind and must read the network again. */
   readonly reloadAsked = this.reload.asReadonly();
+  /** How far the newest solve is, as it was last told. */
+  readonly solveTold = this.solve.asReadonly();
   readonly others = computed((): Companion[] => {
     const own = this.session.person()?.id;
     const document = this.queue.present();
@@ -95,12 +98,17 @@ export class Company {
       switch (event.kind) {
         case 'open':
           this.tellSoon();
+          // the server is there again, which no event of the browser's says where only the server was away
+          if (this.queue.problem() !== null) this.queue.retry();
           break;
         case 'edit':
           this.queue.receive([event.batch]).catch((error: unknown) => {
             // what could not be fetched comes with the next edit; what does not apply means that the two sides differ
             if (!(error instanceof HttpErrorResponse)) this.reload.update((count) => count + 1);
           });
+          break;
+        case 'solve':
+          this.solve.set(event.solve);
           break;
         case 'people':
           this.people.set(event.people);
@@ -144,5 +152,6 @@ export class Company {
     clearTimeout(this.telling);
     this.stream?.unsubscribe();
     this.people.set([]);
+    this.solve.set(null);
   }
 }

@@ -38,7 +38,7 @@ const asked = (conflicts: readonly Conflict[], place: { in: string; id: string; 
   );
 const runs = { numRuns: 300 };
 
-describe('whatever two people do at once', () => {
+describe('whatever two people do at once', { timeout: 60_000 }, () => {
   const deeds = fc.array(deed, { maxLength: 12 });
 
   it('is merged, or asked about; nothing of either is lost', () => {

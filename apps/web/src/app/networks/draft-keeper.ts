@@ -22,6 +22,7 @@ export class DraftKeeper {
 
   private readonly offers = signal<readonly OfferedDraft[]>([]);
   private readonly trouble = signal('');
+  private readonly underWay = new Set<OfferedDraft>();
   private key: DraftKey | null = null;
   private release: () => void = () => undefined;
   private timer: ReturnType<typeof setTimeout> | undefined;
@@ -73,10 +74,22 @@ export class DraftKeeper {
     if (this.timer !== undefined) this.write();
   }
 
+  /** Once and in one tab only: what is brought in twice would add everything twice. */
   async bringIn(offer: OfferedDraft): Promise<void> {
-    const { draft } = offer;
+    if (this.underWay.has(offer)) return;
+    this.underWay.add(offer);
+    await this.bringInOnce(offer);
+    this.underWay.delete(offer);
+  }
+
+  async leaveOut(offer: OfferedDraft): Promise<void> {
+    await this.drafts.remove(offer.key);
+    this.offers.update((offers) => offers.filter((other) => other !== offer));
+  }
+
+  private async bringInOnce(offer: OfferedDraft): Promise<void> {
     try {
-      await this.queue.bringIn(draft, draft.undo);
+      if (await this.drafts.has(offer.key)) await this.queue.bringIn(offer.draft, offer.draft.undo);
     } catch {
       this.trouble.set('The server cannot be reached, so the unsaved work stays where it is. Try again later.');
       return;
@@ -86,11 +99,6 @@ export class DraftKeeper {
     this.write();
     await this.last;
     await this.leaveOut(offer);
-  }
-
-  async leaveOut(offer: OfferedDraft): Promise<void> {
-    await this.drafts.remove(offer.key);
-    this.offers.update((offers) => offers.filter((other) => other !== offer));
   }
 
   private write(): void {

@@ -1,6 +1,6 @@
 import { Injectable } from '@angular/core';
 import { type DBSchema, type IDBPDatabase, openDB } from 'idb';
-import type { Unsaved } from './edit-queue';
+import type { Unsaved } from './queue-state';
 import type { UndoStep } from './undo-stack';
 
 /** Whose work it is, on which network, in which tab. */
@@ -30,6 +30,11 @@ export class Drafts {
 
   async remove(key: DraftKey): Promise<void> {
     await (await this.database()).delete('drafts', [...key]);
+  }
+
+  /** Whether it is still there: another tab may have brought it in. */
+  async has(key: DraftKey): Promise<boolean> {
+    return (await (await this.database()).getKey('drafts', [...key])) !== undefined;
   }
 
   /** Drafts of a person on a network whose tabs have gone, the oldest first. */

@@ -1,50 +1,29 @@
 import { HttpErrorResponse } from '@angular/common/http';
 import { computed, inject, Injectable, signal } from '@angular/core';
-import { type Network, type Problem, type SavedBatch, StaleVersion } from '@riseback/contracts';
+import { type EditAccepted, type Network, type Problem, type SavedBatch, StaleVersion } from '@riseback/contracts';
 import { applyBatch, type EditBatch, type EditOp, jsonEqual, type NetworkDocument } from '@riseback/network';
 import { firstValueFrom } from 'rxjs';
 import { SessionStore } from '../session/session-store';
 import { toProblem } from '../shared/problem';
 import { type Conflict, placeKey, replayOver, sideOf } from './conflicts';
 import { NetworkApi } from './network-api';
-import { toDocument } from './stored-document';
+import {
+  acknowledged,
+  mustApply,
+  openedState,
+  type QueueState,
+  type RefusedEdit,
+  type Unsaved,
+  withoutRefused,
+} from './queue-state';
 import { type Touch, touchedSince, touchesOf } from './touches';
 import { UndoStack, type UndoStep } from './undo-stack';
 
 export type SaveState = 'saved' | 'saving' | 'notSaved';
 
-/** An edit that did not take: shown with what it was, so that nothing typed is lost in silence. */
-export interface RefusedEdit {
-  readonly batch: EditBatch;
-  readonly reasons: readonly string[];
-}
-
-/** What of a person's work is not in the server's keeping yet, and the document it was made on. */
-export interface Unsaved {
-  readonly networkId: string;
-  readonly base: NetworkDocument;
-  readonly version: number;
-  readonly pending: readonly EditBatch[];
-  readonly conflicts: readonly Conflict[];
-}
-
 export type Added =
   | { readonly ok: true; readonly inverse: EditOp[]; readonly batchId: string; readonly version: number }
   | { readonly ok: false; readonly reasons: string[] };
-
-interface QueueState {
-  readonly networkId: string;
-  /** The document at `version`, as the server has it. */
-  readonly base: NetworkDocument;
-  readonly version: number;
-  readonly solverHash: string;
-  /** Not acknowledged yet; the first may be on its way. */
-  readonly pending: readonly EditBatch[];
-  /** base with pending applied. */
-  readonly present: NetworkDocument;
-  /** What was set aside of `pending` until the person has chosen. */
-  readonly conflicts: readonly Conflict[];
-}
 
 /** base + pending = present, always by `applyBatch`; one batch is in flight at a time (docs/data.md, "The client"). */
 @Injectable()
@@ -86,20 +65,11 @@ export class EditQueue {
   });
 
   open(network: Network): void {
-    const base = toDocument(network.document);
     this.failure.set(null);
     this.refusals.set([]);
     this.lastHeard.set([]);
     this.touches = new Map();
-    this.state.set({
-      networkId: network.id,
-      base,
-      version: network.version,
-      solverHash: network.solverHash,
-      pending: [],
-      present: base,
-      conflicts: [],
-    });
+    this.state.set(openedState(network));
   }
 
   /** Applies the edit here at once and sends it. The inverse, or the reasons why it cannot be made. */
@@ -193,7 +163,7 @@ export class EditQueue {
   private async sendOne(state: QueueState, batch: EditBatch): Promise<void> {
     try {
       const accepted = await firstValueFrom(this.api.edit(state.networkId, state.version, batch));
-      if (this.isPending(state, batch)) this.acknowledge(batch, accepted.version, accepted.solverHash);
+      await this.take(state, batch, accepted);
     } catch (error) {
       const stale =
         error instanceof HttpErrorResponse && error.status === 412 ? StaleVersion.safeParse(error.error) : null;
@@ -203,6 +173,14 @@ export class EditQueue {
         this.refuse(batch, problem);
       else this.failure.set(problem);
     }
+  }
+
+  private async take(sent: QueueState, batch: EditBatch, accepted: EditAccepted): Promise<void> {
+    const state = this.state();
+    if (state === null || !this.isPending(sent, batch)) return;
+    // saved from another window a while ago, as a draft that both brought in: others' edits lie between
+    if (accepted.version !== state.version + 1) await this.readOn();
+    else this.state.set(acknowledged(state, batch, accepted));
   }
 
   /** @returns whether the next try has another version to be made on; a database that was put back has none */
@@ -215,21 +193,6 @@ export class EditQueue {
   private isPending(sent: QueueState, batch: EditBatch): boolean {
     const state = this.state();
     return state?.networkId === sent.networkId && state.pending.some(({ batchId }) => batchId === batch.batchId);
-  }
-
-  private acknowledge(batch: EditBatch, version: number, solverHash: string): void {
-    const state = this.state();
-    if (state === null) return;
-    const base = mustApply(state.base, batch.ops);
-    const pending = state.pending.filter(({ batchId }) => batchId !== batch.batchId);
-    this.state.set({
-      ...state,
-      base,
-      version,
-      solverHash,
-      pending,
-      present: pending.length === 0 ? base : state.present,
-    });
   }
 
   /** Others saved first: their batches go under ours, and ours are replayed on top. */
@@ -285,28 +248,9 @@ export class EditQueue {
     const state = this.state();
     if (state === null) return;
     const reasons = problem.errors?.map(({ detail }) => detail) ?? [problem.detail ?? problem.title];
-    const refusals: RefusedEdit[] = [{ batch: refused, reasons }];
-    let present = state.base;
-    const pending: EditBatch[] = [];
-    for (const batch of state.pending.filter(({ batchId }) => batchId !== refused.batchId)) {
-      const applied = applyBatch(present, batch.ops);
-      if (applied.ok) {
-        present = applied.document;
-        pending.push(batch);
-      } else {
-        refusals.push({ batch, reasons: applied.errors.map(({ detail }) => detail) });
-      }
-    }
+    const { state: rest, refusals } = withoutRefused(state, { batch: refused, reasons });
     this.refusals.update((before) => [...before, ...refusals]);
     this.undoStack.follow(new Map(refusals.map(({ batch }) => [batch.batchId, null])), new Map());
-    this.state.set({ ...state, pending, present });
+    this.state.set(rest);
   }
-}
-
-/** For batches that the server has accepted: a refusal here means that the two sides no longer hold the same document. */
-function mustApply(document: NetworkDocument, ops: readonly EditOp[]): NetworkDocument {
-  const applied = applyBatch(document, ops);
-  if (!applied.ok)
-    throw new Error(`A saved edit does not apply: ${applied.errors.map(({ detail }) => detail).join('; ')}`);
-  return applied.document;
 }

@@ -1,10 +1,11 @@
-import { PeopleEvent, type PersonHere, SavedBatch } from '@riseback/contracts';
+import { PeopleEvent, type PersonHere, SavedBatch, SolveEvent } from '@riseback/contracts';
 import { Observable } from 'rxjs';
 
 export type NetworkEvent =
   /** A stream has been opened, the first or another one. */
   | { readonly kind: 'open' }
   | { readonly kind: 'edit'; readonly batch: SavedBatch }
+  | { readonly kind: 'solve'; readonly solve: SolveEvent }
   | { readonly kind: 'people'; readonly people: readonly PersonHere[] }
   | { readonly kind: 'reload' };
 
@@ -35,6 +36,7 @@ export function networkEvents(networkId: string, since: () => number): Observabl
         });
       };
       on('edit', (data) => ({ kind: 'edit', batch: SavedBatch.parse(data) }));
+      on('solve', (data) => ({ kind: 'solve', solve: SolveEvent.parse(data) }));
       on('people', (data) => ({ kind: 'people', people: PeopleEvent.parse(data).people }));
       on('reload', () => ({ kind: 'reload' }));
       source.addEventListener('open', () => subscriber.next({ kind: 'open' }));

@@ -89,6 +89,10 @@ export class NetworkPage {
       if (this.company.reloadAsked() > 0) untracked(() => this.store.readOn());
     });
     effect(() => {
+      const solve = this.company.solveTold();
+      if (solve !== null) untracked(() => this.store.hearOfSolve(solve));
+    });
+    effect(() => {
       this.store.wantedCaseId.set(this.case() ?? '');
     });
     effect(() => {

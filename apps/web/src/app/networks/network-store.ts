@@ -8,6 +8,7 @@ import type {
   Permission,
   PipeResult,
   Problem,
+  SolveEvent,
   SolveResult,
   TrapResult,
 } from '@riseback/contracts';
@@ -85,9 +86,11 @@ export class NetworkStore {
     return document === null ? [] : findings(document);
   });
 
+  private readonly askedAgain = signal(0);
   private readonly savedInput = computed(() => ({
     networkId: this.network()?.id ?? '',
     solverHash: this.queue.solverHash(),
+    again: this.askedAgain(),
   }));
   private readonly answers = toSignal(
     toObservable(this.savedInput).pipe(
@@ -238,6 +241,12 @@ export class NetworkStore {
   readOn(): void {
     if (this.queue.unsaved() === null) this.open(this.networkId());
     else this.queue.readOn().catch(() => undefined);
+  }
+
+  /** A question for results stays open until it is answered; one that failed is asked anew when the server speaks of the solve. */
+  hearOfSolve({ solverHash, state }: SolveEvent): void {
+    const failed = this.answers().latest?.state === 'failed';
+    if (failed && state !== 'failed' && solverHash === this.queue.solverHash()) this.askedAgain.update((n) => n + 1);
   }
 
   retrySave(): void {
