@@ -93,6 +93,41 @@ test('a case is made, changed, compared, copied, deleted and taken back', async 
   });
 });
 
+test('a case is made for one trap out of the present one, and taken back in one step', async ({ page }) => {
+  await signIn(page, 'designer');
+  const network = await demoNetworkPath(page);
+  await page.goto(`${network}/drawing?case=turndown&element=TR1`);
+  await savedAndSolved(page);
+  const inspector = page.getByRole('complementary', { name: 'Inspector' });
+  const make = async (setting: RegExp) => {
+    await inspector.getByRole('button', { name: 'Make a case' }).click();
+    await page.getByRole('menuitem', { name: setting }).click();
+  };
+
+  await test.step('failed open: its editor stands open, with what the present case sets', async () => {
+    await make(/^Failed open/);
+    await expect(page.getByLabel('Name', { exact: true })).toHaveValue('RT-1 failed open');
+    await expect(page.getByLabel('Name', { exact: true })).toBeFocused();
+    await expect(page.getByLabel('State of RT-1', { exact: true })).toHaveValue('failedOpen');
+    await expect(caseRow(page, 'RT-1 failed open')).toContainText('50 %');
+    await expect(caseRow(page, 'RT-1 failed open')).toContainText(/\d fail/);
+    await page.getByRole('button', { name: 'Undo' }).click();
+    await expect(caseRow(page, 'RT-1 failed open')).toHaveCount(0);
+    await expect(page.getByRole('button', { name: 'Undo' })).toBeDisabled();
+  });
+
+  await test.step('its own load: begins as what it is there, ready to be typed over', async () => {
+    await page.goto(`${network}/drawing?case=turndown&element=TR1`);
+    await make(/^Own load/);
+    // half of 600 lb/h
+    await expect(page.getByLabel('Load of RT-1', { exact: true })).toHaveValue('300');
+    await expect(page.getByLabel('Load of RT-1', { exact: true })).toBeFocused();
+    await page.getByRole('button', { name: 'Undo' }).click();
+    await expect(caseRow(page, 'RT-1 at its own load')).toHaveCount(0);
+    await savedAndSolved(page);
+  });
+});
+
 test('the worst of all cases shows each trap in the case that is worst for it', async ({ page }) => {
   await signIn(page, 'designer');
   const network = await demoNetworkPath(page);

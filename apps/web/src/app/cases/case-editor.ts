@@ -10,7 +10,7 @@ import {
 } from '@angular/core';
 import { MatButton } from '@angular/material/button';
 import { RouterLink } from '@angular/router';
-import type { OperatingCase } from '@riseback/network';
+import type { OperatingCase, OverrideKey } from '@riseback/network';
 import { NetworkStore } from '../networks/network-store';
 import { TextField } from '../shared/fields/text-field';
 import { QuantityField } from '../shared/quantity-field/quantity-field';
@@ -36,6 +36,7 @@ export class CaseEditor {
   readonly deleteWanted = output();
 
   private readonly nameField = viewChild.required(TextField);
+  private readonly changes = viewChild.required(ChangeTable);
 
   protected readonly fixed = computed(() => !this.store.mayDraw());
   protected readonly noResult = computed(() => refusalOf(this.store.outcomes().get(this.operatingCase().id)));
@@ -47,6 +48,10 @@ export class CaseEditor {
 
   focusName(): void {
     this.nameField().focus();
+  }
+
+  focusSetting(nodeId: string, key: OverrideKey): void {
+    this.changes().focus(nodeId, key);
   }
 
   protected rename(name: string | undefined): void {

@@ -24,24 +24,41 @@ export type NewCase = CaseEdit & { readonly id: string };
 const MAXIMUM_NAME_LENGTH = 80;
 
 /** A case at full load, everything else as drawn. */
-export function newCase(document: NetworkDocument): NewCase {
-  const name = freeName(document, (count) => `Case ${String(document.cases.size + count)}`);
+export function newCase(document: NetworkDocument, wanted?: string): NewCase {
+  const name =
+    wanted === undefined
+      ? freeName(document, (count) => `Case ${String(document.cases.size + count)}`)
+      : freeCaseName(document, wanted);
   return made(document, { name, loadFactor: 1, inletPressureFactor: 1 }, `case ${name} made`);
 }
 
 /** The same factors and settings under a name of its own. */
-export function copyOfCase(document: NetworkDocument, { id: from, ...source }: OperatingCase): NewCase {
-  const name = freeName(document, (count) => {
-    const ending = count === 1 ? ', copy' : `, copy ${String(count)}`;
-    return `${source.name.slice(0, MAXIMUM_NAME_LENGTH - ending.length).trimEnd()}${ending}`;
-  });
-  const { id, label, ops } = made(document, { ...source, name }, `case ${source.name} copied`);
+export function copyOfCase(document: NetworkDocument, source: OperatingCase): NewCase {
+  const name = freeCaseName(document, source.name, ', copy');
+  return copyUnderName(document, source, name, `case ${source.name} copied`);
+}
+
+export function copyUnderName(
+  document: NetworkDocument,
+  { id: from, ...source }: OperatingCase,
+  name: string,
+  words: string,
+): NewCase {
+  const { id, label, ops } = made(document, { ...source, name }, words);
   const overrides = inOrder(document.overrides)
     .filter(([existing]) => splitOverrideId(existing).caseId === from)
     .map(([, { ordinal, value }]): EditOp => {
       return { op: 'add', in: 'overrides', id: overrideId(id, value.node), ordinal, value: { ...value } };
     });
   return { id, label, ops: [...ops, ...overrides] };
+}
+
+/** A name that no case has: the stem with its ending, and a number from the second on. */
+export function freeCaseName(document: NetworkDocument, stem: string, ending = ''): string {
+  return freeName(document, (count) => {
+    const end = count === 1 ? ending : `${ending} ${String(count)}`;
+    return `${stem.slice(0, MAXIMUM_NAME_LENGTH - end.length).trimEnd()}${end}`;
+  });
 }
 
 /** Gives a case another name, or says why it cannot have it: two cases of one name could not be told apart in a result. */

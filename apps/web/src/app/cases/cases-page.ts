@@ -22,6 +22,7 @@ import { type CaseEdit, copyOfCase, deletionOfCase, newCase } from './case-edits
 import { CaseEditor } from './case-editor';
 import { CaseList } from './case-list';
 import { ComparisonTable } from './comparison-table';
+import { madeCaseOf } from './made-case';
 
 const TABS = [
   { id: 'settings', word: 'Settings' },
@@ -72,6 +73,16 @@ export class CasesPage {
     return compareCases(document, this.store.cases(), this.store.outcomes(), this.store.worst(), this.store.units());
   });
   protected readonly stale = computed(() => this.store.solveState().kind !== 'solved');
+
+  constructor() {
+    const made = madeCaseOf(this.router.currentNavigation());
+    if (made === null) return;
+    this.told.set(`Done: ${made.madeCase}`);
+    afterNextRender(() => {
+      if (made.loadOf === null) this.editor()?.focusName();
+      else this.editor()?.focusSetting(made.loadOf, 'loadKgS');
+    });
+  }
 
   protected edit({ label, ops }: CaseEdit): boolean {
     const taken = this.store.edit(label, ops);

@@ -1,4 +1,13 @@
-import { ChangeDetectionStrategy, Component, computed, inject, input, linkedSignal, output } from '@angular/core';
+import {
+  ChangeDetectionStrategy,
+  Component,
+  computed,
+  inject,
+  input,
+  linkedSignal,
+  output,
+  viewChildren,
+} from '@angular/core';
 import { MatButton } from '@angular/material/button';
 import { RouterLink } from '@angular/router';
 import type { OperatingCase, OverrideKey } from '@riseback/network';
@@ -22,6 +31,8 @@ export class ChangeTable {
   readonly operatingCase = input.required<OperatingCase>();
   readonly edited = output<CaseEdit>();
 
+  private readonly quantityFields = viewChildren(QuantityField);
+
   protected readonly stateChoices = STATE_CHOICES;
   protected readonly fixed = computed(() => !this.store.mayDraw());
   protected readonly rows = computed(() => {
@@ -41,6 +52,12 @@ export class ChangeTable {
     source: () => this.operatingCase().id,
     computation: () => null,
   });
+
+  /** To the field of a number that the case sets. */
+  focus(nodeId: string, key: OverrideKey): void {
+    const numbers = this.rows().filter(({ quantity }) => quantity !== null);
+    this.quantityFields()[numbers.findIndex(({ id }) => id === `${nodeId}/${key}`)]?.focus();
+  }
 
   protected set(nodeId: string, key: OverrideKey, to: number | string | undefined): void {
     const document = this.store.document();

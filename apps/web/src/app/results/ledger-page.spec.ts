@@ -43,7 +43,7 @@ function fakeStore() {
   return {
     document,
     outcome,
-    solveState: signal<SolveState>({ kind: 'solved', at: '2026-12-01T14:02:00.000Z', ms: 4 }),
+    solveState: signal<SolveState>({ kind: 'solved', at: '2026-12-01T14:02:00.000Z', ms: 4, bandsToCome: false }),
     result: () => {
       const found = outcome();
       return found?.status === 'solved' ? found.result : null;

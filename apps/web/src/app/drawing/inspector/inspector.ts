@@ -12,6 +12,7 @@ import {
 } from '@angular/core';
 import { MatButton } from '@angular/material/button';
 import { RouterLink } from '@angular/router';
+import { MakeCase } from '../../cases/make-case';
 import { NetworkStore } from '../../networks/network-store';
 import { type Status, StatusMark } from '../../shared/status-mark/status-mark';
 import { DrawingScene } from '../drawing-scene';
@@ -34,6 +35,7 @@ type Tab = keyof typeof TABS;
   imports: [
     ElementIcon,
     InputsTab,
+    MakeCase,
     MatButton,
     ModelTab,
     NetworkPanel,
@@ -89,16 +91,18 @@ export class Inspector {
     return this.store.trapResults().has(chosen) ? 'pass' : null;
   });
   protected readonly model = computed(() => {
-    const element = this.element();
-    if (element === null || isPipe(element) || element.kind !== 'trap' || element.trapModel === undefined) return null;
-    return this.store.document()?.trapModels.get(element.trapModel)?.value ?? null;
+    const model = this.trap()?.trapModel;
+    return model === undefined ? null : (this.store.document()?.trapModels.get(model)?.value ?? null);
   });
   protected readonly tabs = computed(() =>
-    (Object.keys(TABS) as Tab[]).filter((tab) => tab !== 'model' || this.model() !== null),
+    (Object.keys(TABS) as Tab[]).filter((tab) => tab !== 'model' || this.trap() !== null),
   );
   protected readonly tab = computed(() => (this.tabs().includes(this.wantedTab()) ? this.wantedTab() : 'result'));
   protected readonly words = TABS;
-  protected readonly isTrap = computed(() => this.head()?.kind === 'trap');
+  protected readonly trap = computed(() => {
+    const element = this.element();
+    return element === null || isPipe(element) || element.kind !== 'trap' ? null : element;
+  });
 
   constructor() {
     const injector = inject(Injector);

@@ -6,10 +6,17 @@ import { MethodChoice } from './method-choice';
 
 describe('MethodChoice', () => {
   const accepted: string[] = [];
-  const opened = async (disabled = false) => {
+  const opened = async (disabled = false, blocked: Readonly<Record<string, string>> = {}) => {
     TestBed.configureTestingModule({ providers: [provideRouter([])] });
     const fixture = TestBed.createComponent(MethodChoice);
-    const inputs = { key: 'friction', label: 'Friction', words: FRICTION_WORDS, value: 'flashVapour', disabled };
+    const inputs = {
+      key: 'friction',
+      label: 'Friction',
+      words: FRICTION_WORDS,
+      value: 'flashVapour',
+      disabled,
+      blocked,
+    };
     for (const [name, value] of Object.entries(inputs)) fixture.componentRef.setInput(name, value);
     fixture.componentInstance.accepted.subscribe((value) => accepted.push(value));
     await fixture.whenStable();
@@ -39,6 +46,23 @@ describe('MethodChoice', () => {
     expect([accepted, details?.open]).toEqual([['friedel'], false]);
     press(FRICTION_WORDS.flashVapour);
     expect(accepted).toEqual(['friedel']);
+  });
+
+  it('does not take what cannot be computed here, and says why beside it', async () => {
+    const { element } = await opened(false, { friedel: 'Not in this network.' });
+    const friedel = [...element.querySelectorAll('button')].find((button) => button.textContent.trim() === 'Friedel');
+    friedel?.click();
+    expect(accepted).toEqual([]);
+    expect(friedel?.getAttribute('aria-disabled')).toBe('true');
+    const reason = element.querySelector(`#${friedel?.getAttribute('aria-describedby') ?? ''}`);
+    expect(reason?.textContent).toBe('Not in this network.');
+  });
+
+  it('says that nothing is computed where the network has such a choice already', async () => {
+    const { element } = await opened(false, { flashVapour: 'Not in this network.' });
+    expect(element.querySelector('.note')?.textContent).toContain(
+      'Not computed with this choice. Not in this network.',
+    );
   });
 
   it('only explains to whoever may not draw', async () => {

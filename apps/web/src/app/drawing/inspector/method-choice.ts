@@ -22,6 +22,8 @@ export class MethodChoice {
   readonly value = input.required<string>();
   readonly disabled = input(false);
   readonly refusal = input('');
+  /** Options that cannot be computed here, each with the reason. */
+  readonly blocked = input<Readonly<Record<string, string>>>({});
   readonly accepted = output<string>();
 
   private readonly details = viewChild.required<ElementRef<HTMLDetailsElement>>('details');
@@ -34,12 +36,16 @@ export class MethodChoice {
       words: words.charAt(0).toUpperCase() + words.slice(1),
       sentence: sentences[value] ?? '',
       used: value === this.value(),
+      blocked: this.blocked()[value] ?? '',
+      reasonId: `${this.key()}-${value}-blocked`,
       section: methodSectionId(this.key(), value),
     }));
   });
   protected readonly used = computed(() => this.options().find(({ used }) => used));
 
   protected choose(value: string): void {
+    // it can be reached, so that its reason can be read, and does nothing
+    if (value !== this.value() && (this.blocked()[value] ?? '') !== '') return;
     this.details().nativeElement.open = false;
     this.summary().nativeElement.focus();
     if (value !== this.value()) this.accepted.emit(value);

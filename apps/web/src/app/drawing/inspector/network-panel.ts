@@ -15,6 +15,7 @@ import type { FieldSpec } from './element-fields';
 import { LimitFields } from './limit-fields';
 import { MethodChoice } from './method-choice';
 import { type FieldChange, PropertyFields } from './property-fields';
+import { hasSecondWays } from './second-ways';
 
 const SITE_FIELDS: readonly FieldSpec[] = [
   { type: 'quantity', key: 'atmosphericPressurePa', label: 'Atmosphere', kind: 'absolutePressure' },
@@ -60,6 +61,12 @@ export class NetworkPanel {
   protected readonly methodFields = computed(() =>
     this.store.document()?.method.staticLift === 'rule' ? [RULE_FIELD, DROP_FIELD] : [DROP_FIELD],
   );
+  protected readonly blockedCoincidence = computed((): Readonly<Record<string, string>> => {
+    const document = this.store.document();
+    return document !== null && hasSecondWays(document)
+      ? { probable: 'It needs one way down for every trap, and this network has loops or second ways down.' }
+      : {};
+  });
   protected readonly counts = computed(() => {
     const document = this.store.document();
     if (document === null) return '';
