@@ -6,10 +6,11 @@ import { eq } from 'drizzle-orm';
 import request from 'supertest';
 import { afterEach, beforeEach, describe, expect, it } from 'vitest';
 import * as z from 'zod';
-import { people } from '../../server/src/platform/db/schema';
+import { people, sessions } from '../../server/src/platform/db/schema';
 import { findSyntaxError } from '../../server/src/platform/http/json-syntax';
 import { HOST, TestServer } from './test-server';
 
+const HOUR_MS = 3_600_000;
 const EMPTY_NETWORK = {
   format: 'riseback-network',
   version: 1,
@@ -134,6 +135,25 @@ describe('a session', () => {
     const passwordChangedAt = new Date(server.now().getTime() + 1000).toISOString();
     server.db.update(people).set({ passwordChangedAt }).where(eq(people.id, 'viewer')).run();
     await client.get('/api/session').expect(401);
+  });
+
+  it.each([
+    { limit: 'idle', hours: 12, kept: {} },
+    { limit: 'absolute', hours: 7 * 24, kept: { idleUntil: '2027-01-01T00:00:00.000Z' } },
+  ])('over its $limit limit is dead by its row, however fresh the token', async ({ hours, kept }) => {
+    const { sessionId } = server.session('viewer');
+    if ('idleUntil' in kept) server.db.update(sessions).set(kept).where(eq(sessions.id, sessionId)).run();
+    const withFreshToken = () => {
+      const token = server.tokens.sign(sessionId, server.now(), new Date(server.now().getTime() + HOUR_MS));
+      return request(server.app.handler)
+        .get('/api/session')
+        .set('Host', HOST)
+        .set('Cookie', `riseback-session=${token}`);
+    };
+    server.pass(hours * HOUR_MS - 1_000);
+    await withFreshToken().expect(200);
+    server.pass(2_000);
+    await withFreshToken().expect(401);
   });
 });
 
