@@ -91,8 +91,20 @@ const noMarkupBinding = {
   selector: 'BoundAttribute[name=/^(innerHTML|outerHTML|srcdoc)$/]',
   message: 'Text is shown as text: {{ }} or [textContent]. Markup from data is how scripts get in.',
 };
-/** Values that someone could guess. */
-const noGuessable = {
+const weakHash = {
+  selector: 'CallExpression[callee.name=/^create(Hash|Hmac)$/]:not([arguments.0.value=/^sha(256|384|512)$/])',
+  message: 'SHA-256 or longer, named as a literal.',
+};
+const builtExpression = {
+  selector: ':matches(NewExpression, CallExpression)[callee.name="RegExp"]:not([arguments.0.type="Literal"])',
+  message: 'No regular expression is made of a text that comes in: compare texts.',
+};
+/** Values that someone could guess, and places that someone could send the server to. */
+const noGuessNorCall = {
+  'no-restricted-globals': [
+    'error',
+    { name: 'fetch', message: 'The server asks nobody for anything (docs/security.md).' },
+  ],
   'no-restricted-properties': [
     'error',
     { object: 'Math', property: 'random', message: 'Predictable: randomUUID() or randomBytes() of node:crypto.' },
@@ -191,14 +203,25 @@ export default tseslint.config(
         [['@angular/*', '**/apps/**'], 'The server does not import the web app.'],
         openPrograms,
       ),
-      'no-restricted-syntax': ['error', noDefault, noEnv, syncTransaction, routerMethods, ...rawSql],
+      'no-restricted-syntax': [
+        'error',
+        noDefault,
+        noEnv,
+        syncTransaction,
+        routerMethods,
+        weakHash,
+        builtExpression,
+        ...rawSql,
+      ],
       'no-console': 'error',
-      ...noGuessable,
+      ...noGuessNorCall,
     },
   },
   {
     files: RAW_SQL_PLACES,
-    rules: { 'no-restricted-syntax': ['error', noDefault, noEnv, syncTransaction, routerMethods] },
+    rules: {
+      'no-restricted-syntax': ['error', noDefault, noEnv, syncTransaction, routerMethods, weakHash, builtExpression],
+    },
   },
   {
     files: ['server/src/*/*-service.ts', 'server/src/*/*-routes.ts'],

@@ -113,6 +113,19 @@ describe('what must not be done', () => {
       text: `import { DomSanitizer } from '@angular/platform-browser';\nexport const a = (s: DomSanitizer, t: string) => s.bypassSecurityTrustHtml(t);`,
     },
     { what: 'a written document', file: PAGES, text: `export const a = (t: string) => { document.write(t); };` },
+    { what: 'an address that runs', file: PAGES, text: `export const a = 'javascript:alert(1)';` },
+    {
+      what: 'a weak hash',
+      file: SERVER,
+      text: `import { createHash } from 'node:crypto';\nexport const a = createHash('md5');`,
+    },
+    {
+      what: 'a hash by a name that comes in',
+      file: SERVER,
+      text: `import { createHmac } from 'node:crypto';\nexport const a = (n: string) => createHmac(n, 'k');`,
+    },
+    { what: 'an expression from a text', file: SERVER, text: `export const a = (t: string) => new RegExp(t);` },
+    { what: 'a request of its own', file: SERVER, text: `export const a = (u: string) => fetch(u);` },
     { what: 'settings read anywhere', file: SERVER, text: `export const a = process.env['HOME'];` },
     {
       what: 'a route without its rule',
@@ -121,7 +134,9 @@ describe('what must not be done', () => {
     },
   ])('$what, in $file: $text', async ({ file, text }) => {
     const found = await complaints(`${text}\n`, file);
-    expect(found.join('\n')).toMatch(/no-restricted-(imports|syntax|properties)|no-eval|no-new-func/);
+    expect(found.join('\n')).toMatch(
+      /no-restricted-(imports|syntax|properties|globals)|no-eval|no-new-func|no-script-url/,
+    );
   });
 
   it('markup from data in a template, in a file of its own or inline', async () => {
