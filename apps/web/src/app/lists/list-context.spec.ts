@@ -58,7 +58,7 @@ describe('what stands against an element', () => {
     expect(worst?.sentences).toEqual(['It passes 794 lb/h.']);
     expect(second).toMatchObject({ status: 'watch', code: 'backPressureFraction' });
     expect(rest).toEqual([]);
-    expect(findingSummary(context().findings.get('T1') ?? [])).toBe('Capacity and 1 more');
+    expect(findingSummary(context().findings.get('T1') ?? [])).toBe('Capacity +1');
     expect(context().findings.get('L1')).toMatchObject([{ status: 'watch', word: 'Velocity' }]);
   });
 

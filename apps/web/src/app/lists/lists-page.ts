@@ -17,17 +17,26 @@ import { MatButton } from '@angular/material/button';
 import { MatDialog } from '@angular/material/dialog';
 import { MatTabLink, MatTabNav, MatTabNavPanel } from '@angular/material/tabs';
 import { ActivatedRoute, Router, RouterLink } from '@angular/router';
-import { firstValueFrom } from 'rxjs';
+import type { EditOp } from '@riseback/network';
+import { firstValueFrom, type Observable, of } from 'rxjs';
 import { NetworkStore } from '../networks/network-store';
 import { UndoButtons, type UndoneStep } from '../networks/undo-buttons';
 import { backPressureLimit } from '../results/back-pressure-limit';
 import { BulkBar } from './bulk-bar/bulk-bar';
+import { TrialSolve } from './bulk-bar/trial-solve';
 import type { DialogName } from './columns/column';
+import type { ColumnChoice } from './column-choice/column-choice';
+import { ColumnChoices } from './column-choice/column-choices';
+import type { ColumnsDialogData } from './column-choice/columns-dialog';
 import { deletionOf } from './deletion';
 import { CellDialogs } from './dialogs/cell-dialogs';
+import { StatusMark } from '../shared/status-mark/status-mark';
 import { DeleteDialog, type DeleteDialogData } from '../shared/delete-dialog/delete-dialog';
 import type { CellEdit } from './grid/cell-editing';
 import { ListGrid } from './grid/list-grid';
+import { writeCopiedCells } from './exchange/block-text';
+import { ExchangeTools } from './exchange/exchange-tools';
+import type { OpenList } from './exchange/list-exchange';
 import { listContext } from './list-context';
 import { ELEMENT_LISTS, type ElementList, isDrawn, type NewKind } from './list-definitions';
 import { newElementForm } from './new-element';
@@ -38,7 +47,18 @@ const ADDRESS_DELAY_MS = 300;
 /** The elements of the network as tables: inputs to be edited in place, results beside them. */
 @Component({
   selector: 'app-lists-page',
-  imports: [BulkBar, ListGrid, MatButton, MatTabLink, MatTabNav, MatTabNavPanel, RouterLink, UndoButtons],
+  imports: [
+    BulkBar,
+    ExchangeTools,
+    ListGrid,
+    MatButton,
+    MatTabLink,
+    MatTabNav,
+    MatTabNavPanel,
+    RouterLink,
+    StatusMark,
+    UndoButtons,
+  ],
   changeDetection: ChangeDetectionStrategy.OnPush,
   templateUrl: './lists-page.html',
   styleUrl: './lists-page.scss',
@@ -46,6 +66,8 @@ const ADDRESS_DELAY_MS = 300;
 export class ListsPage {
   protected readonly store = inject(NetworkStore);
   private readonly dialogs = inject(CellDialogs);
+  private readonly choices = inject(ColumnChoices);
+  private readonly trials = inject(TrialSolve);
   private readonly dialog = inject(MatDialog);
   private readonly router = inject(Router);
   private readonly route = inject(ActivatedRoute);
@@ -55,11 +77,12 @@ export class ListsPage {
   readonly list = input<string>();
   readonly element = input<string>();
 
-  private readonly grid = viewChild(ListGrid);
+  protected readonly grid = viewChild(ListGrid);
 
   protected readonly filter = signal('');
-  protected readonly allInputs = signal(false);
   protected readonly told = signal('');
+  /** Why a file or the clipboard could not be read. */
+  protected readonly complaint = signal('');
   private addressTimer: ReturnType<typeof setTimeout> | undefined;
 
   /** Kept as it is while the address names an element that is gone. */
@@ -97,6 +120,18 @@ export class ListsPage {
     const context = this.context();
     return context === null ? null : this.current().table(context);
   });
+  protected readonly outlook = computed(() => {
+    const [document, traps] = [this.store.document(), this.store.trapResults()];
+    const caseId = this.store.showsWorst() ? null : this.store.caseId();
+    return (ops: readonly EditOp[]): Observable<string> =>
+      document === null ? of('') : this.trials.outlook({ document, caseId, traps }, ops);
+  });
+  protected readonly openList = (): OpenList | null => {
+    const [target, grid, network] = [this.target(), this.grid(), this.store.document()];
+    if (target === null || grid === undefined || network === null) return null;
+    const { units } = this.store;
+    return { facts: this.current(), target, grid: grid.inSight(), units: units(), networkName: network.name };
+  };
   protected readonly staffTopPa = computed(() => this.context()?.staffTopPa ?? 0);
   protected readonly limitPa = computed(() => {
     const context = this.context();
@@ -108,7 +143,16 @@ export class ListsPage {
     };
   });
   protected readonly mayEdit = computed(() => this.store.may(this.current().permission));
-  protected readonly hasMinor = computed(() => this.table()?.columns.some(({ minor }) => minor) ?? false);
+  protected readonly choice = computed(() => this.choices.of(this.current().id));
+  private readonly target = computed(() => {
+    const context = this.context();
+    return context === null ? null : this.current().block(context);
+  });
+  protected readonly written = computed(() => {
+    const target = this.target();
+    return (keys: readonly string[], ids: readonly string[]): string =>
+      target === null ? '' : writeCopiedCells(target.sheet(keys, ids));
+  });
   protected readonly emptyWords = computed(() =>
     this.filter().trim() === ''
       ? `No ${this.current().many} in this network yet.`
@@ -165,6 +209,32 @@ export class ListsPage {
     if (agreed !== true) return;
     this.edit({ label, ops });
     this.grid()?.focus();
+  }
+
+  protected async chooseColumns(): Promise<void> {
+    const columns = this.table()?.columns;
+    if (columns === undefined) return;
+    const { id, word } = this.current();
+    const { ColumnsDialog } = await import('./column-choice/columns-dialog');
+    const data: ColumnsDialogData = { list: word, columns, choice: this.choice() };
+    const reference = this.dialog.open<unknown, ColumnsDialogData, ColumnChoice | null>(ColumnsDialog, {
+      data,
+      width: '480px',
+    });
+    const chosen = await firstValueFrom(reference.afterClosed());
+    if (chosen === undefined) return;
+    this.choices.set(id, chosen);
+    this.told.set('Columns set');
+  }
+
+  /** Rows that came in: the filter must not hide them. */
+  protected takeIn(edit: CellEdit): void {
+    this.filter.set('');
+    this.edit(edit);
+    const added = edit.ops.find((op) => op.op === 'add');
+    const id = added?.op === 'add' ? added.value['id'] : undefined;
+    if (typeof id === 'string') this.showRowSoon(id);
+    else this.grid()?.focus();
   }
 
   protected clearSelection(): void {

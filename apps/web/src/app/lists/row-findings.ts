@@ -49,9 +49,9 @@ export function rowFindings(
 
 const RANK = { fail: 0, watch: 1 } as const;
 
-/** "Fail" and then what: the first finding's word, and how many more there are. */
+/** The first finding's word, and how many more there are: short enough to stand uncut beside its mark. */
 export function findingSummary(findings: readonly RowFinding[]): string {
   const [first, ...rest] = findings;
   if (first === undefined) return '';
-  return rest.length === 0 ? first.word : `${first.word} and ${String(rest.length)} more`;
+  return rest.length === 0 ? first.word : `${first.word} +${String(rest.length)}`;
 }

@@ -13,7 +13,7 @@ import { toObservable, toSignal } from '@angular/core/rxjs-interop';
 import { MatButton } from '@angular/material/button';
 import { Router, RouterLink } from '@angular/router';
 import type { NetworkSummary, Problem, Site } from '@riseback/contracts';
-import { emptyDocument, toFile } from '@riseback/network';
+import { emptyDocument, readNetworkFile, toFile } from '@riseback/network';
 import { firstValueFrom, forkJoin, switchMap } from 'rxjs';
 import { SessionStore } from '../session/session-store';
 import { type Load, LOADING, loads } from '../shared/load';
@@ -23,6 +23,11 @@ import { StatusMark } from '../shared/status-mark/status-mark';
 import { AppBar } from '../shell/app-bar';
 import { SiteApi } from '../sites/site-api';
 import { NetworkApi } from './network-api';
+import { type PlacedMistake, placedMistakes } from './network-file-mistakes';
+import { NetworkFiles } from './network-files';
+
+/** As the server takes it. */
+const LARGEST_FILE_BYTES = 32 * 1024 * 1024;
 
 interface SiteNetworks {
   readonly site: Site;
@@ -35,10 +40,11 @@ interface SiteNetworks {
   imports: [AppBar, DatePipe, MatButton, ProblemBanner, RouterLink, StatusMark],
   changeDetection: ChangeDetectionStrategy.OnPush,
   templateUrl: './network-list-page.html',
-  styleUrl: '../shell/list-page.scss',
+  styleUrls: ['../shell/list-page.scss', './network-list-page.scss'],
 })
 export class NetworkListPage {
   private readonly networkApi = inject(NetworkApi);
+  private readonly networkFiles = inject(NetworkFiles);
   private readonly siteApi = inject(SiteApi);
   private readonly router = inject(Router);
 
@@ -50,6 +56,9 @@ export class NetworkListPage {
   protected readonly naming = signal(false);
   protected readonly busy = signal(false);
   protected readonly refusal = signal<Problem | null>(null);
+  /** Of the file that was refused. */
+  protected readonly mistakes = signal<readonly PlacedMistake[]>([]);
+  protected readonly told = signal('');
   protected readonly load = toSignal<Load<SiteNetworks>, Load<SiteNetworks>>(
     toObservable(this.siteId).pipe(
       switchMap((siteId) =>
@@ -82,22 +91,47 @@ export class NetworkListPage {
     const file = box.files?.[0];
     if (file === undefined) return;
     box.value = '';
+    this.refusal.set(null);
+    this.mistakes.set([]);
+    if (file.size > LARGEST_FILE_BYTES) {
+      this.refuse(
+        file.name,
+        `It has ${(file.size / 1e6).toFixed(1)} MB; ${String(Math.floor(LARGEST_FILE_BYTES / 1e6))} MB are the most.`,
+      );
+      return;
+    }
+    let json: unknown;
     try {
-      await this.create(JSON.parse(await file.text()));
+      json = JSON.parse(await file.text());
     } catch (error) {
       if (!(error instanceof SyntaxError)) throw error;
-      this.refusal.set({
-        type: 'about:blank',
-        title: `${file.name} is not a network file`,
-        status: 400,
-        detail: `It is not JSON: ${error.message}. Choose a file that a network’s “Network file” gave.`,
-      });
+      this.refuse(file.name, `It is not JSON: ${error.message}. Choose a file that “Save as a file” gave.`);
+      return;
     }
+    const read = readNetworkFile(json);
+    if (read.ok) await this.create(json);
+    else {
+      this.refuse(file.name, 'Mend these places in the file and choose it once more; nothing was made of it.');
+      this.mistakes.set(placedMistakes(read.errors, json));
+    }
+  }
+
+  protected async saveAsFile(network: NetworkSummary): Promise<void> {
+    try {
+      this.told.set(`Saved as ${await this.networkFiles.save(network)}`);
+    } catch (error) {
+      this.refusal.set(toProblem(error));
+    }
+  }
+
+  private refuse(fileName: string, detail: string): void {
+    this.refusal.set({ type: 'about:blank', title: `${fileName} cannot be taken in`, status: 400, detail });
   }
 
   private async create(file: unknown): Promise<void> {
     this.busy.set(true);
     this.refusal.set(null);
+    this.mistakes.set([]);
     try {
       const { id } = await firstValueFrom(this.networkApi.create(this.siteId(), file));
       await this.router.navigate(['/sites', this.siteId(), 'networks', id, 'drawing']);

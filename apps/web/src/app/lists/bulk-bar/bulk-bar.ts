@@ -1,8 +1,14 @@
 import { ChangeDetectionStrategy, Component, computed, input, linkedSignal, output, signal } from '@angular/core';
+import { toObservable, toSignal } from '@angular/core/rxjs-interop';
 import { MatButton } from '@angular/material/button';
+import type { EditOp } from '@riseback/network';
+import { type Observable, of, startWith, switchMap, timer } from 'rxjs';
 import type { CellEdit } from '../grid/cell-editing';
 import type { ListTable } from '../list-table';
 import { bulkProposal, namesOf } from './bulk-edit';
+
+/** A person goes on typing for less than this. */
+const OUTLOOK_DELAY_MS = 350;
 
 /** At the foot while rows are ticked: one property set in all of them as one step of undo, or all of them deleted. */
 @Component({
@@ -18,6 +24,8 @@ export class BulkBar {
   readonly ids = input.required<readonly string[]>();
   readonly one = input.required<string>();
   readonly many = input.required<string>();
+  /** One sentence on what a change would do to the results, before it is made. */
+  readonly outlook = input<(ops: readonly EditOp[]) => Observable<string>>(() => of(''));
   readonly edited = output<CellEdit>();
   readonly deleteWanted = output();
   readonly cleared = output();
@@ -49,6 +57,26 @@ export class BulkBar {
     return `${String(count)} ${count === 1 ? this.one() : this.many()} selected`;
   });
   protected readonly names = computed(() => namesOf(this.table(), this.ids()));
+
+  private readonly change = computed((): readonly EditOp[] => {
+    if (this.text() === '' && this.editor()?.by !== 'choice') return [];
+    const proposal = bulkProposal(this.table(), this.ids(), this.key(), this.text());
+    return proposal.ok ? proposal.ops : [];
+  });
+  private readonly asked = computed(() => ({ ops: this.change(), outlook: this.outlook() }));
+  protected readonly turns = toSignal(
+    toObservable(this.asked).pipe(
+      switchMap(({ ops, outlook }) =>
+        ops.length === 0
+          ? of('')
+          : timer(OUTLOOK_DELAY_MS).pipe(
+              switchMap(() => outlook(ops)),
+              startWith(''),
+            ),
+      ),
+    ),
+    { initialValue: '' },
+  );
 
   protected chooseColumn(key: string): void {
     this.key.set(key);

@@ -16,7 +16,7 @@ export const PIPE_COLUMNS: readonly Column<PipeRun>[] = [
   ),
   endColumn('from', 'From'),
   endColumn('to', 'To'),
-  quantityColumn<PipeRun>('pipes', 'lengthM', 'length', { title: 'Length', widthPx: 76 }),
+  quantityColumn<PipeRun>('pipes', 'lengthM', 'length', { title: 'Length', widthPx: 70 }),
   nominalSizeColumn(),
   scheduleColumn(),
   boreColumn(),
@@ -24,12 +24,12 @@ export const PIPE_COLUMNS: readonly Column<PipeRun>[] = [
     key: 'fittings',
     title: 'Fittings',
     group: 'inputs',
-    widthPx: 120,
+    widthPx: 100,
     value: ({ fittings }) => fittings.map(({ kind, count }) => `${String(count)} ${FITTINGS[kind].name}`).join('; '),
     editor: { by: 'dialog', dialog: 'fittings' },
     sheet: FITTINGS_IN_WORDS,
   },
-  quantityColumn<PipeRun>('pipes', 'lossCoefficient', 'factor', { title: 'Loss K', widthPx: 64, optional: true }),
+  quantityColumn<PipeRun>('pipes', 'lossCoefficient', 'factor', { title: 'Loss K', widthPx: 58, optional: true }),
   {
     key: 'rise',
     title: 'Rise',
@@ -67,13 +67,13 @@ export const PIPE_COLUMNS: readonly Column<PipeRun>[] = [
   resultColumn<PipeRun>(
     'massFlowKgS',
     'massFlow',
-    { title: 'Flow', widthPx: 76 },
+    { title: 'Flow', widthPx: 72 },
     ({ id }, { pipes }) => pipes.get(id)?.massFlowKgS,
   ),
   resultColumn<PipeRun>(
     'liquidVelocityMS',
     'velocity',
-    { title: 'Liquid', widthPx: 88 },
+    { title: 'Liquid', widthPx: 86 },
     ({ id }, { pipes }) => pipes.get(id)?.liquidVelocityMS,
   ),
   resultColumn<PipeRun>(
@@ -85,25 +85,26 @@ export const PIPE_COLUMNS: readonly Column<PipeRun>[] = [
   resultColumn<PipeRun>(
     'staticPa',
     'pressureDifference',
-    { title: 'Static', widthPx: 72 },
+    { title: 'Static', widthPx: 66 },
     ({ id }, { pipes }) => pipes.get(id)?.staticPa,
   ),
   resultColumn<PipeRun>(
     'frictionPa',
     'pressureDifference',
-    { title: 'Friction', widthPx: 80 },
+    { title: 'Friction', widthPx: 74 },
     ({ id }, { pipes }) => pipes.get(id)?.frictionPa,
   ),
   resultColumn<PipeRun>(
     'flashPa',
     'pressureDifference',
-    { title: 'Flash', widthPx: 72 },
+    { title: 'Flash', widthPx: 66 },
     ({ id }, { pipes }) => pipes.get(id)?.flashPa,
   ),
+  caseColumn<PipeRun>(),
+  findingColumn<PipeRun>({ title: 'Finding', widthPx: 190 }, () => false),
+  // after the finding, which must be in sight on a usual screen
   patternColumn(),
   outletColumn(),
-  caseColumn<PipeRun>(),
-  findingColumn<PipeRun>({ title: 'Finding', widthPx: 160 }, () => false),
 ];
 
 function patternColumn(): Column<PipeRun> {
@@ -136,7 +137,7 @@ function endColumn(key: 'from' | 'to', title: string): Column<PipeRun> {
     key,
     title,
     group: 'inputs',
-    widthPx: 78,
+    widthPx: 66,
     value: (pipe, { document }) => nodeName(pipe[key], document),
     editor: {
       by: 'text',

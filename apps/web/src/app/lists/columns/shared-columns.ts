@@ -9,7 +9,7 @@ type Drawn = NetworkNode | PipeRun;
 export function nameColumns<E extends Drawn>(collection: 'nodes' | 'pipes'): Column<E>[] {
   return [
     {
-      ...textColumn<Drawn>(collection, 'tag', { title: 'Tag', group: 'element', widthPx: 84, maxLength: 64 }),
+      ...textColumn<Drawn>(collection, 'tag', { title: 'Tag', group: 'element', widthPx: 78, maxLength: 64 }),
       show: (element) => element.tag ?? element.id,
       derived: (element) => element.tag === undefined,
     },
@@ -17,7 +17,7 @@ export function nameColumns<E extends Drawn>(collection: 'nodes' | 'pipes'): Col
       key: 'drawing',
       title: 'On the drawing',
       group: 'element',
-      widthPx: 34,
+      widthPx: 30,
       face: 'drawingLink',
       value: (element) => element.id,
       show: (element) => `Show ${element.tag ?? element.id} on the drawing`,
@@ -33,7 +33,7 @@ export function nameColumns<E extends Drawn>(collection: 'nodes' | 'pipes'): Col
 }
 
 export function elevationColumn<E extends NetworkNode>(): Column<E> {
-  return quantityColumn<NetworkNode>('nodes', 'elevationM', 'length', { title: 'Elevation', widthPx: 84 });
+  return quantityColumn<NetworkNode>('nodes', 'elevationM', 'length', { title: 'Elevation', widthPx: 78 });
 }
 
 export function noteColumn<E extends Drawn>(collection: 'nodes' | 'pipes'): Column<E> {

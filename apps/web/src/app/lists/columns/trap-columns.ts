@@ -16,9 +16,9 @@ export const TRAP_COLUMNS: readonly Column<Trap>[] = [
     none: 'Not given',
   }),
   trapModelColumn(),
-  quantityColumn<Trap>('nodes', 'inletPressurePa', 'pressure', { title: 'Inlet', widthPx: 78 }),
-  quantityColumn<Trap>('nodes', 'loadKgS', 'massFlow', { title: 'Load', widthPx: 78 }),
-  quantityColumn<Trap>('nodes', 'sizingFactor', 'factor', { title: 'Sizing factor', widthPx: 92, optional: true }),
+  quantityColumn<Trap>('nodes', 'inletPressurePa', 'pressure', { title: 'Inlet', widthPx: 72 }),
+  quantityColumn<Trap>('nodes', 'loadKgS', 'massFlow', { title: 'Load', widthPx: 72 }),
+  quantityColumn<Trap>('nodes', 'sizingFactor', 'factor', { title: 'Sizing factor', widthPx: 90, optional: true }),
   elevationColumn(),
   {
     key: 'service',
@@ -82,7 +82,7 @@ export const TRAP_COLUMNS: readonly Column<Trap>[] = [
   resultColumn<Trap>(
     'backPressurePa',
     'pressure',
-    { title: 'Back', widthPx: 76 },
+    { title: 'Back', widthPx: 70 },
     ({ id }, { traps }) => traps.get(id)?.backPressurePa,
   ),
   resultColumn<Trap>(
@@ -93,7 +93,7 @@ export const TRAP_COLUMNS: readonly Column<Trap>[] = [
   ),
   caseColumn<Trap>(),
   findingColumn<Trap>(
-    { title: 'Verdict', widthPx: 192 },
+    { title: 'Verdict', widthPx: 236 },
     ({ id }, { traps }) => (traps.get(id)?.checks.length ?? 0) > 0,
   ),
   // after the verdict, which must be in sight on a usual screen

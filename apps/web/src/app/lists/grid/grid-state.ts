@@ -1,5 +1,6 @@
 import { computed, linkedSignal, type Signal, signal, untracked } from '@angular/core';
 import { arrangeRows, nextSorting, type Sorting } from '../arrange-rows';
+import { arrangeColumns, type ColumnChoice } from '../column-choice/column-choice';
 import type { ListTable } from '../list-table';
 import { type CellPosition, HEAD_ROW, within } from './cell-navigation';
 import { gridLayout } from './grid-layout';
@@ -8,7 +9,7 @@ import { keepShown, NO_ROWS, type RowSelection } from './row-selection';
 interface GridSource {
   readonly table: Signal<ListTable>;
   readonly filter: Signal<string>;
-  readonly allInputs: Signal<boolean>;
+  readonly choice: Signal<ColumnChoice | null>;
   readonly mayEdit: Signal<boolean>;
 }
 
@@ -23,8 +24,10 @@ export class GridState {
     const [filter, sorting] = [this.source.filter(), this.sorting()];
     return untracked(() => arrangeRows(this.source.table(), filter, sorting));
   });
-  private readonly columns = computed(() =>
-    this.source.table().columns.filter(({ minor }) => !minor || this.source.allInputs()),
+  readonly columns = computed(() =>
+    arrangeColumns(this.source.table().columns, this.source.choice()).flatMap(({ column, shown }) =>
+      shown ? [column] : [],
+    ),
   );
   readonly layout = computed(() => gridLayout(this.columns(), this.source.mayEdit()));
 

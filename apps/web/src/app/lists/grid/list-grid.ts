@@ -24,6 +24,7 @@ import { Staff } from '../../results/staff/staff';
 import { BANDS_TO_COME } from '../../shared/bands-to-come';
 import { StatusMark } from '../../shared/status-mark/status-mark';
 import type { Sorting } from '../arrange-rows';
+import type { ColumnChoice } from '../column-choice/column-choice';
 import type { DialogName } from '../columns/column';
 import type { CellView, ListTable, TableColumn } from '../list-table';
 import { CellChoiceEditor } from './cell-choice-editor';
@@ -33,6 +34,14 @@ import { type AfterEdit, CellTextEditor } from './cell-text-editor';
 import { pressedCell, ROW_HEIGHT_PX, rowsInSight, showCell } from './grid-region';
 import { GridState } from './grid-state';
 import { extendRows, NO_ROWS, type RowSelection, toggleAllRows, toggleRow } from './row-selection';
+
+export interface GridInSight {
+  readonly keys: readonly string[];
+  readonly fromKey: string;
+  readonly ids: readonly string[];
+  readonly fromRow: number;
+  readonly selected: readonly string[];
+}
 
 let gridCount = 0;
 
@@ -67,19 +76,23 @@ export class ListGrid {
   readonly elementWord = input.required<string>();
   readonly emptyWords = input.required<string>();
   readonly filter = input('');
-  readonly allInputs = input(false);
+  readonly choice = input<ColumnChoice | null>(null);
   readonly mayEdit = input(false);
   /** The results shown are those of an earlier state of the network. */
   readonly stale = input(false);
   readonly units = input.required<DisplayUnits>();
   readonly staffTopPa = input.required<number>();
   readonly limitPa = input<(id: string) => number | undefined>(() => undefined);
+  /** Rows as spreadsheets take them from the clipboard. */
+  readonly written = input<(keys: readonly string[], ids: readonly string[]) => string>(() => '');
   readonly edited = output<CellEdit>();
   readonly dialogWanted = output<{ id: string; dialog: DialogName }>();
   readonly drawingWanted = output<string>();
   /** The ticked rows in the order shown; again when the filter or a deletion takes some away. */
   readonly selectedChange = output<readonly string[]>();
   readonly activeChange = output<string>();
+  /** Cells from the clipboard, meant for the rows from the active one on. */
+  readonly pasted = output<string>();
   /** For the page's live region. */
   readonly told = output<string>();
 
@@ -144,6 +157,19 @@ export class ListGrid {
     return this.state.hasMoved() ? this.state.activeId() : null;
   }
 
+  /** What is in sight, in its order, and where the person is in it. */
+  inSight(): GridInSight {
+    const { row } = this.state.active();
+    const cell = this.state.activeCell();
+    return {
+      keys: this.state.columns().map(({ key }) => key),
+      fromKey: cell?.kind === 'column' ? cell.column.key : '',
+      ids: this.state.rowIds(),
+      fromRow: Math.max(0, row),
+      selected: this.state.selectedIds(),
+    };
+  }
+
   focus(): void {
     this.region().nativeElement.focus({ preventScroll: true });
   }
@@ -200,6 +226,26 @@ export class ListGrid {
       event.preventDefault();
       event.stopPropagation();
     }
+  }
+
+  /** A cell that is being edited takes the text itself. */
+  protected paste(event: ClipboardEvent): void {
+    const text = event.clipboardData?.getData('text/plain') ?? '';
+    if (this.editing.open() !== null || !this.mayEdit() || text.trim() === '') return;
+    event.preventDefault();
+    this.pasted.emit(text);
+  }
+
+  /** The ticked rows with their headings, else the active cell. */
+  protected copy(event: ClipboardEvent): void {
+    if (this.editing.open() !== null || event.clipboardData === null) return;
+    const { keys, selected } = this.inSight();
+    const id = this.state.activeId();
+    const cell = this.state.activeCell();
+    const one = id === null || cell?.kind !== 'column' ? '' : this.view(id, cell.column).text;
+    event.preventDefault();
+    event.clipboardData.setData('text/plain', selected.length > 0 ? this.written()(keys, selected) : one);
+    this.told.emit(selected.length > 0 ? `${String(selected.length)} rows copied with their headings` : 'Cell copied');
   }
 
   protected tickAll(): void {
