@@ -1,3 +1,4 @@
+import { createHash } from 'node:crypto';
 import { once } from 'node:events';
 import { createServer } from 'node:http';
 import { connect, type AddressInfo } from 'node:net';
@@ -6,7 +7,7 @@ import { eq } from 'drizzle-orm';
 import request from 'supertest';
 import { afterEach, beforeEach, describe, expect, it } from 'vitest';
 import * as z from 'zod';
-import { people, sessions } from '../../server/src/platform/db/schema';
+import { audit, people, sessions } from '../../server/src/platform/db/schema';
 import { findSyntaxError } from '../../server/src/platform/http/json-syntax';
 import { HOST, TestServer } from './test-server';
 
@@ -235,6 +236,31 @@ describe('the log', () => {
     });
     for (const secret of [password, client.issued?.token ?? '', 'Bearer', 'in-the-query', 'viewer@'])
       expect(line).not.toContain(secret);
+  });
+});
+
+describe('the audit log', () => {
+  /** RFC 8785 for what is in it: keys in order, numbers and texts as JSON has them. */
+  function inOrder(value: unknown): unknown {
+    if (typeof value !== 'object' || value === null) return value;
+    const entries = Object.entries(value).sort(([a], [b]) => (a < b ? -1 : 1));
+    return Object.fromEntries(entries.map(([key, inner]) => [key, inOrder(inner)]));
+  }
+
+  it('has in each hash the one before it, worked out anew from the rows', async () => {
+    await server.as('designer').post(`/api/sites/${server.siteId}/networks`, EMPTY_NETWORK).expect(201);
+    const rows = server.db.select().from(audit).orderBy(audit.seq).all();
+    expect(rows.length).toBeGreaterThan(1);
+    let before = '0'.repeat(64);
+    for (const { hash, previousHash, ...row } of rows) {
+      expect(previousHash).toBe(before);
+      expect(hash).toBe(
+        createHash('sha256')
+          .update(previousHash + JSON.stringify(inOrder(row)))
+          .digest('hex'),
+      );
+      before = hash;
+    }
   });
 });
 
