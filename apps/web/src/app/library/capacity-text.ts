@@ -16,6 +16,7 @@ export interface CapacityRow {
   readonly line: number;
   readonly differential: string;
   readonly flow: string;
+  readonly point: CapacityPoint | null;
   /** Why the row cannot be taken; '' when it can. */
   readonly complaint: string;
 }
@@ -70,6 +71,7 @@ export function readCapacityText(text: string, units: DisplayUnits): CapacityRea
       line: line.number,
       differential: shown(read, 'differential', line.cells[at.differential] ?? '', units),
       flow: shown(read, 'flow', line.cells[at.flow] ?? '', units),
+      point: typeof read === 'string' ? null : read,
       complaint,
     };
   });
