@@ -36,6 +36,11 @@ export const routes: Routes = [
         loadComponent: () => import('./audit/audit-page').then((m) => m.AuditPage),
       },
       {
+        path: ':siteId/library',
+        title: 'Trap library · Riseback',
+        loadComponent: () => import('./library/library-page').then((m) => m.LibraryPage),
+      },
+      {
         path: ':siteId/networks/:networkId',
         loadComponent: () => import('./networks/network-page').then((m) => m.NetworkPage),
         children: [
