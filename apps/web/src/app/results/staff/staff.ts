@@ -4,7 +4,7 @@ import type { DisplayUnits } from '@riseback/units';
 import { BANDS_TO_COME } from '../../shared/bands-to-come';
 import { FLAT, flatStaff } from './flat-staff';
 import { staffModel } from './staff-model';
-import { TALL, tallStaff } from './tall-staff';
+import { limitLines, TALL, tallStaff } from './tall-staff';
 
 let staffCount = 0;
 
@@ -55,6 +55,7 @@ export class Staff {
       bandsToCome: this.bandsToCome(),
     }),
   );
+  protected readonly limitLines = computed(() => limitLines(this.limitWord()));
   protected readonly tall = computed(() =>
     this.orientation() === 'tall' ? tallStaff(this.model(), this.units(), this.scaleMaximumPa()) : null,
   );

@@ -21,8 +21,10 @@ export const TALL = {
 } as const;
 const ROW = 18;
 const BIG_ROW = 32;
-/** An axis number nearer to the limit's label than this would run into it. */
-const LIMIT_LABEL_REACH = 22;
+/** An axis number nearer to the limit's label than this, above or below, would run into it. */
+const LIMIT_LABEL_REACH = { above: 16, below: 34 } as const;
+/** What fits beside the axis in the limit's small letters. */
+const LIMIT_LINE_LETTERS = 8;
 
 export interface TallLabel {
   readonly key: 'inlet' | 'differential' | 'back' | 'spread' | 'credible' | StaffPartKind;
@@ -74,7 +76,7 @@ export function tallStaff(model: StaffModel, units: DisplayUnits, scaleMaximumPa
     unit: displayUnit('pressure', units.system),
     ticks: ticks.map((tick) => {
       const y = yOf(fromDisplay(tick, 'pressure', units));
-      const hidden = limit !== null && Math.abs(limit.y - y) < LIMIT_LABEL_REACH;
+      const hidden = limit !== null && y > limit.y - LIMIT_LABEL_REACH.above && y < limit.y + LIMIT_LABEL_REACH.below;
       return { y, text: hidden ? '' : formatTick(tick) };
     }),
     parts: model.parts.map(({ kind, fromPa, toPa }) => ({
@@ -91,6 +93,16 @@ export function tallStaff(model: StaffModel, units: DisplayUnits, scaleMaximumPa
     credible: stretch(model.credible, yOf),
     labels: labels(model, units, yOf),
   };
+}
+
+/** The limit's word as lines that are not cut off at the edge: "50 % of inlet" stands in two. */
+export function limitLines(word: string): string[] {
+  return word.split(' ').reduce<string[]>((lines, part) => {
+    const last = lines.at(-1);
+    const joined = last === undefined ? part : `${last} ${part}`;
+    if (joined.length <= LIMIT_LINE_LETTERS) return [...lines.slice(0, -1), joined];
+    return [...lines, part];
+  }, []);
 }
 
 function labels(model: StaffModel, units: DisplayUnits, yOf: (pa: number) => number): TallLabel[] {
