@@ -41,6 +41,11 @@ export class DocumentCache {
     return (cached.text ??= JSON.stringify(toStoredDocument(cached.document)));
   }
 
+  clear(): void {
+    this.documents.clear();
+    this.elements = 0;
+  }
+
   private forget(networkId: string): void {
     const cached = this.documents.get(networkId);
     if (cached === undefined) return;

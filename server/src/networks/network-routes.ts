@@ -84,8 +84,8 @@ export function networkRoutes(service: NetworkService): Route[] {
       body: EditRequest,
       bodyLimitBytes: NETWORK_FILE_LIMIT_BYTES,
       answers: { 200: EditAccepted },
-      handler: ({ access, body, req, res }) => {
-        const accepted = service.edit(access, versionFromIfMatch(req), body) satisfies EditAccepted;
+      handler: async ({ access, body, req, res }) => {
+        const accepted = (await service.edit(access, versionFromIfMatch(req), body)) satisfies EditAccepted;
         res.set('ETag', versionETag(accepted.version)).json(accepted);
       },
     }),

@@ -19,6 +19,7 @@ import {
   type NetworkFile,
 } from '@riseback/network';
 import type { NetworkAccess, SiteAccess } from '../platform/auth/access';
+import { SharedCommit } from '../platform/db/shared-commit';
 import { badRequest, conflict, notFound, staleVersion, unprocessable } from '../platform/problem';
 import { creationOps } from './creation-ops';
 import { DocumentCache } from './document-cache';
@@ -46,6 +47,7 @@ export const EDIT_PAGE = { most: 500, bytes: 4 * 1024 * 1024 } as const;
 
 export class NetworkService {
   private readonly documents = new DocumentCache();
+  private readonly commits: SharedCommit;
 
   constructor(
     private readonly networks: NetworkRepository,
@@ -53,7 +55,12 @@ export class NetworkService {
     private readonly announcer: NetworkAnnouncer,
     private readonly newId: () => string,
     private readonly now: () => Date,
-  ) {}
+  ) {
+    this.commits = new SharedCommit(
+      (work) => networks.transaction(work),
+      () => this.documents.clear(),
+    );
+  }
 
   list(access: SiteAccess): NetworkSummary[] {
     return this.networks.list(access.siteId).map(({ firstCaseId, solverHash, ...network }) => ({
@@ -169,11 +176,9 @@ export class NetworkService {
    * @throws ProblemError 409 the batchId is known with another content; 412 not the current version; 403 a touched
    *   collection needs another role; 422 the batch does not fit the network
    */
-  edit(access: NetworkAccess, onVersion: number, batch: EditBatch): EditAccepted {
+  async edit(access: NetworkAccess, onVersion: number, batch: EditBatch): Promise<EditAccepted> {
     const { networkId } = access;
-    const { answer, changed } = this.networks.transaction((networks) =>
-      this.editWithin(networks, access, onVersion, batch),
-    );
+    const { answer, changed } = await this.commits.run(() => this.editWithin(this.networks, access, onVersion, batch));
     if (changed !== undefined) {
       const { document, saved } = changed;
       this.documents.remember(networkId, answer.version, document);
