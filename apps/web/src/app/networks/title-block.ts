@@ -10,7 +10,7 @@ import { FRICTION_WORDS, STATIC_LIFT_WORDS } from './method-words';
 import { NetworkStore } from './network-store';
 
 /** More cases than these do not fit beside each other even on a wide screen, and fold into one menu. */
-const MOST_SIDE_BY_SIDE = 5;
+const MOST_SIDE_BY_SIDE = 4;
 
 interface CaseOption {
   readonly id: string;

@@ -8,6 +8,7 @@ import {
   type TopologyFinding,
 } from '@riseback/network';
 import type { DisplayUnits } from '@riseback/units';
+import { COINCIDENCE_WORDS } from '../networks/method-words';
 import { findingWords } from './finding-words';
 
 export type FindingSeverity = 'fail' | 'watch' | 'note';
@@ -176,8 +177,15 @@ function ofProblem(document: NetworkDocument, problem: Problem | undefined, code
     severity: 'fail',
     code,
     what: `${detail.charAt(0).toUpperCase()}${detail.slice(1)}`,
-    ...(code === 'refused' ? { remedy: 'Change what is named here, or look at another case.' } : {}),
+    ...(code === 'refused' ? { remedy: remedyAt(pointer) } : {}),
   }));
+}
+
+/** The method is every case's; anything else may be one case's alone. */
+function remedyAt(pointer: string): string {
+  return pointer === '/method/coincidence'
+    ? `Choose “${COINCIDENCE_WORDS.average}” or “${COINCIDENCE_WORDS.ownPeak}” for intermittent traps.`
+    : 'Change what is named here, or look at another case.';
 }
 
 /** The element of a pointer into the network's file, whose lists stand in the document's order. */
