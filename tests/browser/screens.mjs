@@ -96,6 +96,7 @@ function screens({ siteId, networkId, elements }, empty) {
     { name: 'cases-compare', path: `${network}/cases?show=compare`, solved: true },
     { name: 'drawing-worst', path: `${network}/drawing?case=worst&element=${elements.trap}`, solved: true },
     { name: 'account', path: '/account' },
+    { name: 'library', path: `/sites/${siteId}/library` },
     { name: 'not-found', path: '/nowhere' },
   ];
 }

@@ -19,6 +19,7 @@ import { MatTabLink, MatTabNav, MatTabNavPanel } from '@angular/material/tabs';
 import { ActivatedRoute, Router, RouterLink } from '@angular/router';
 import type { EditOp } from '@riseback/network';
 import { firstValueFrom, type Observable, of } from 'rxjs';
+import { CopyNews } from '../library/copy-news';
 import { NetworkStore } from '../networks/network-store';
 import { UndoButtons, type UndoneStep } from '../networks/undo-buttons';
 import { backPressureLimit } from '../results/back-pressure-limit';
@@ -49,6 +50,7 @@ const ADDRESS_DELAY_MS = 300;
   selector: 'app-lists-page',
   imports: [
     BulkBar,
+    CopyNews,
     ExchangeTools,
     ListGrid,
     MatButton,
