@@ -158,6 +158,8 @@ export class BlockDialog {
       const list = this.badList()?.nativeElement;
       const next = list?.querySelector('input') ?? list?.closest('form')?.querySelector<HTMLElement>('[type=submit]');
       next?.focus();
+      // what is wrong is typed over
+      if (next instanceof HTMLInputElement) next.select();
     });
   }
 }

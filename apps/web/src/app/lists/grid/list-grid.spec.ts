@@ -25,6 +25,7 @@ import { ListGrid } from './list-grid';
     (selectedChange)="selected.set($event)"
     (told)="told.set($event)"
     (drawingWanted)="drawing.set($event)"
+    (pasted)="pasted.set($event)"
   />`,
 })
 class Host {
@@ -33,6 +34,7 @@ class Host {
   readonly filter = signal('');
   readonly told = signal('');
   readonly drawing = signal('');
+  readonly pasted = signal('');
   readonly selected = signal<readonly string[]>([]);
   readonly edits: CellEdit[] = [];
   readonly table = computed(() => {
@@ -197,6 +199,26 @@ describe('ListGrid', () => {
     await press('ArrowRight');
     await press('Enter');
     expect(fixture.componentInstance.drawing()).toBe('T1');
+  });
+
+  it('hands cells on that are pasted on it, unless a cell is being edited or nothing may be changed', async () => {
+    const { pasted, mayEdit } = fixture.componentInstance;
+    // jsdom has no clipboard event of its own
+    const paste = (text: string): void => {
+      const event = Object.assign(new Event('paste', { bubbles: true, cancelable: true }), {
+        clipboardData: { getData: () => text },
+      });
+      grid.dispatchEvent(event);
+    };
+    await goToLoad();
+    paste('1\t2');
+    expect(pasted()).toBe('1\t2');
+    await press('F2');
+    paste('3');
+    mayEdit.set(false);
+    await fixture.whenStable();
+    paste('4');
+    expect(pasted()).toBe('1\t2');
   });
 
   it('changes nothing for who may only look', async () => {
