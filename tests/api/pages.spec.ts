@@ -53,6 +53,7 @@ describe('the pages', () => {
       expect(policy).toContain(`style-src 'self' 'nonce-${nonce}'`);
       expect(policy).toContain("default-src 'none'");
       expect(policy).toContain("script-src 'self';");
+      expect(policy).toContain("connect-src 'self';");
       expect(policy).toContain("require-trusted-types-for 'script'");
       expect(policy).not.toContain('unsafe');
     }
