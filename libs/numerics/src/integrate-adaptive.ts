@@ -122,12 +122,12 @@ export function integrateAdaptive(
       }
       s = nextS;
       y = nextY;
-      // the last stage is the first of the next step; its parts move along with it
-      k1 = k7;
-      if (partCount > 0) parts1.set(parts7);
       steps++;
       onStep?.(s, y);
       if (last) return { y, steps, rejectedSteps, parts: totals };
+      // the last stage is the first of the next step; its parts move along with it
+      k1 = k7;
+      if (partCount > 0) parts1.set(parts7);
     } else {
       rejectedSteps++;
       if (Math.abs(h) < SMALLEST_STEP_SHARE * Math.abs(whole)) break;

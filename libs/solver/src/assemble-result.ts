@@ -1,6 +1,6 @@
 import { boreAreaM2 } from '@riseback/hydraulics';
 import type { NetworkFile } from '@riseback/network';
-import type { SaturationState } from '@riseback/steam';
+import { saturationState, type SaturationState } from '@riseback/steam';
 import { limitsInForce, type LimitsInForce } from './check-limits';
 import { ownRuns, type AverageRun } from './coincidence';
 import { atElement } from './element-failure';
@@ -156,10 +156,9 @@ function nodeResult(solved: Solved, index: number): NodeResult {
   };
 }
 
+/** Looked up anew where it is asked for: kept for every node, states would be half of what a large network holds in memory. */
 function saturationAt({ state }: Solved, index: number): SaturationState {
-  const saturation = state.walk.saturation[index];
-  if (saturation === undefined) throw new Error(`The walk left no state at node ${String(index)}`);
-  return saturation;
+  return saturationState(state.walk.pressurePa[index] as number);
 }
 
 function vesselWarning({ nodes, state: { tree, walk } }: Solved, index: number): SolveWarning | undefined {

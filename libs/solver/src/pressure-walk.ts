@@ -1,5 +1,5 @@
 import type { NetworkFile, PipeRun } from '@riseback/network';
-import { saturationState, type SaturationState } from '@riseback/steam';
+import { blankSaturation, fillSaturation } from '@riseback/steam';
 import { atElement } from './element-failure';
 import type { FlowAndEnergy, PipeFlow } from './flow-and-energy';
 import { handCheckLiftPa } from './hand-check';
@@ -10,7 +10,6 @@ import { inletNode, outletNode, type ReturnTree } from './return-tree';
 
 /** What stands at each node of the tree above the end of its walk, by index; untouched where no fixed pressure is reached. */
 export interface PressureWalk {
-  readonly saturation: readonly (SaturationState | undefined)[];
   readonly pressurePa: Float64Array;
   readonly staticPa: Float64Array;
   readonly frictionPa: Float64Array;
@@ -35,7 +34,7 @@ export function pressureWalk(
 ): PressureWalk {
   const byNode = (): Float64Array => new Float64Array(tree.nodeCount);
   const [pressurePa, staticPa, frictionPa, flashPa, handCheckPa] = [byNode(), byNode(), byNode(), byNode(), byNode()];
-  const saturation: (SaturationState | undefined)[] = new Array<SaturationState | undefined>(tree.nodeCount);
+  const boiling = blankSaturation();
   const marcher = new PipeMarcher(options);
   const marched: (MarchedPipe | undefined)[] = new Array<MarchedPipe | undefined>(file.pipes.length);
 
@@ -48,7 +47,7 @@ export function pressureWalk(
     }
   }
   for (const chord of tree.chords) marched[chord] = marchChord(chord);
-  return { saturation, pressurePa, staticPa, frictionPa, flashPa, handCheckPa, marched };
+  return { pressurePa, staticPa, frictionPa, flashPa, handCheckPa, marched };
 
   function standAt(
     { node, pressurePa: given }: Extract<OperatingNode, { kind: 'fixedPressure' }>,
@@ -56,7 +55,7 @@ export function pressureWalk(
   ): void {
     pressurePa[index] = given;
     try {
-      saturation[index] = saturationState(given);
+      fillSaturation(boiling, given);
     } catch (error) {
       throw atElement('node', node, index, error);
     }
@@ -69,7 +68,7 @@ export function pressureWalk(
     const below = tree.drainsTo[index] as number;
     const up = march(pipeIndex, geometry, below);
     try {
-      saturation[index] = saturationState(up.upstreamPressurePa);
+      fillSaturation(boiling, up.upstreamPressurePa);
     } catch (error) {
       throw atElement('pipe', file.pipes[pipeIndex] as PipeRun, pipeIndex, error);
     }
