@@ -26,7 +26,8 @@ export class BlockDraft {
       .filter(({ number }) => !leftOut.has(number))
       .map((row) => withMended(row, mended));
   });
-  readonly plan = computed(() => this.source.target.plan(this.rows()));
+  readonly arrange = signal(false);
+  readonly plan = computed(() => this.source.target.plan(this.rows(), { arrange: this.arrange() }));
   readonly texts = computed(() => new Map(this.rows().map(({ number, texts }) => [number, texts])));
   readonly leftOutCount = computed(() => this.leftOut().size);
   /** Headings of columns that change nothing: not of this list, results, or worked out. */

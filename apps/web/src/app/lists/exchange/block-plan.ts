@@ -34,8 +34,15 @@ export interface BlockPlan {
   readonly rows: readonly PlannedRow[];
   readonly bad: readonly BadCell[];
   readonly ops: readonly EditOp[];
+  /** Nodes without a pipe that new pipes join, and that may be laid out along them. */
+  readonly arrangeable: number;
   /** Why the whole cannot be taken although every cell can be read; '' when it can. */
   readonly refusal: string;
+}
+
+export interface PlanOptions {
+  /** Whether those nodes are laid out; all others stay where they are in any case. */
+  readonly arrange?: boolean;
 }
 
 /** Ops that one edit may hold (`EditBatch` of libs/network). */

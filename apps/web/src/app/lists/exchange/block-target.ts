@@ -3,7 +3,7 @@ import type { Column, ListContext, ListedElement } from '../columns/column';
 import type { Status } from '../../shared/status-mark/status-mark';
 import type { CellView, ListTable } from '../list-table';
 import type { SheetCell } from './block-text';
-import type { BlockPlan, BlockRow } from './block-plan';
+import type { BlockPlan, BlockRow, PlanOptions } from './block-plan';
 import { type DraftedList, draftRows } from './draft-rows';
 import { type BlockField, headingOf } from './headings';
 
@@ -12,7 +12,7 @@ export interface BlockTarget {
   readonly fields: readonly BlockField[];
   /** The column whose cells name the rows. */
   readonly nameKey: string;
-  readonly plan: (rows: readonly BlockRow[]) => BlockPlan;
+  readonly plan: (rows: readonly BlockRow[], options?: PlanOptions) => BlockPlan;
   /** Headings and rows for a file or the clipboard. */
   readonly sheet: (keys: readonly string[], ids: readonly string[]) => (readonly SheetCell[])[];
 }
@@ -29,7 +29,7 @@ export function blockTarget<E extends ListedElement>(
   return {
     fields,
     nameKey: list.rules.name,
-    plan: (rows) => draftRows(list, rows, context),
+    plan: (rows, options) => draftRows(list, rows, context, options),
     sheet: (keys, ids) => {
       const shown = keys.flatMap((key) => fields.find((field) => field.key === key) ?? []);
       const headings = shown.map((field) => headingOf(field, unitOf(columns, field.key, context)));

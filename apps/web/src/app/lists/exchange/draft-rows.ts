@@ -3,9 +3,7 @@ import {
   type EditOp,
   FileNode,
   Gauge,
-  inOrder,
   makeSetOp,
-  missingPositions,
   mistakesOf,
   type NetworkDocument,
   newElementId,
@@ -17,8 +15,16 @@ import {
 import { inWords } from '../cell-editor';
 import type { Column, ListContext, ListedElement } from '../columns/column';
 import type { ListedCollection } from '../list-definitions';
-import { type BadCell, type BlockPlan, type BlockRow, MAXIMUM_OPS, type PlannedRow } from './block-plan';
+import {
+  type BadCell,
+  type BlockPlan,
+  type BlockRow,
+  MAXIMUM_OPS,
+  type PlannedRow,
+  type PlanOptions,
+} from './block-plan';
 import { nearlyEqual } from './nearly-equal';
+import { arrangingOps, newlyJoined, placesBelow } from './new-places';
 import { readCell, writtenText } from './read-cell';
 import { findRow, type RowTarget } from './row-target';
 import type { RowRules } from './row-rules';
@@ -51,32 +57,37 @@ export function draftRows<E extends ListedElement>(
   list: DraftedList<E>,
   rows: readonly BlockRow[],
   context: ListContext,
+  { arrange = false }: PlanOptions = {},
 ): BlockPlan {
   const drafts = begun(list, rows, context);
   const whole = { ...context, document: withBlanks(list, drafts, context.document) };
   for (const draft of drafts) readRow(list, draft, whole);
   const bad = drafts.flatMap((draft) => draft.bad);
   const planned = drafts.map((draft) => plannedRow(draft, list));
-  if (bad.length > 0) return { rows: planned, bad, ops: [], refusal: '' };
-  const ops = opsOf(list, drafts, context.document);
-  if (ops.length > MAXIMUM_OPS)
-    return {
-      rows: planned,
-      bad,
-      ops: [],
-      refusal: `These are ${ops.length.toLocaleString('en')} changes; one step takes ${MAXIMUM_OPS.toLocaleString('en')}. Take the rows in parts.`,
-    };
-  const applied = applyBatch(context.document, ops);
-  if (applied.ok) return { rows: planned, bad, ops, refusal: '' };
-  return {
-    rows: planned,
-    bad,
-    ops: [],
-    refusal: applied.errors
-      .slice(0, 5)
-      .map(({ detail }) => `${detail}.`)
-      .join(' '),
-  };
+  const nothing = { rows: planned, bad, ops: [], arrangeable: 0 };
+  if (bad.length > 0) return { ...nothing, refusal: '' };
+  const changing = opsOf(list, drafts, context.document);
+  const pipes = changing.flatMap((op) => (op.op === 'add' && op.in === 'pipes' ? [PipeRun.parse(op.value)] : []));
+  const arrangeable = newlyJoined(context.document, pipes).length;
+  const ops = arrange && arrangeable > 0 ? [...changing, ...arrangingOps(context.document, pipes)] : changing;
+  const refusal = refusalOf(ops, context.document);
+  return refusal === '' ? { rows: planned, bad, ops, arrangeable, refusal } : { ...nothing, refusal };
+}
+
+/** Mistakes of a hostile block could be thousands. */
+const MISTAKES_TOLD = 5;
+
+function refusalOf(ops: readonly EditOp[], document: NetworkDocument): string {
+  if (ops.length > MAXIMUM_OPS) {
+    const [count, most] = [ops.length, MAXIMUM_OPS].map((number) => number.toLocaleString('en'));
+    return `These are ${count ?? ''} changes; one step takes ${most ?? ''}. Take the rows in parts.`;
+  }
+  const applied = applyBatch(document, ops);
+  if (applied.ok) return '';
+  return applied.errors
+    .slice(0, MISTAKES_TOLD)
+    .map(({ detail }) => `${detail}.`)
+    .join(' ');
 }
 
 function begun<E extends ListedElement>(
@@ -229,12 +240,12 @@ function opsOf<E extends ListedElement>(
 ): EditOp[] {
   const fresh = drafts.filter(({ target }) => target.element === undefined);
   const values = fresh.map((draft) => stored(list, draft));
-  const positions = list.collection === 'nodes' ? placesFor(values, document) : new Map<string, unknown>();
+  const places = list.collection === 'nodes' ? placesBelow(document, values.length) : [];
   const first = nextOrdinal(document, list.collection);
   return [
     ...drafts.filter(({ target }) => target.element !== undefined).flatMap((draft) => changes(draft, list)),
     ...values.map((value, index): EditOp => {
-      const position = positions.get(String(value['id']));
+      const position = places[index];
       return {
         op: 'add',
         in: list.collection,
@@ -243,14 +254,4 @@ function opsOf<E extends ListedElement>(
       };
     }),
   ];
-}
-
-/** Where new nodes stand: clear of what is drawn, which does not move. */
-function placesFor(values: readonly Record<string, unknown>[], document: NetworkDocument): Map<string, unknown> {
-  const drawn = inOrder(document.nodes).map(([, { value }]) => value);
-  const nodes = values.map((value) => FileNode.parse(value));
-  return missingPositions(
-    [...drawn, ...nodes],
-    inOrder(document.pipes).map(([, { value }]) => value),
-  );
 }
