@@ -72,12 +72,12 @@ describe('BlockDialog', () => {
   });
 
   it('is for the rows from the active one down where no column names them', async () => {
-    await open('36 kg/h\n72 kg/h');
+    await open('36 kg/h\n108 kg/h');
     expect(words()).toContain('2 rows: 2 changed.');
     await submit();
     expect(closed[0]?.ops).toMatchObject([
       { id: 'T1', key: 'loadKgS', to: 0.01 },
-      { id: 'T2', key: 'loadKgS', to: 0.02 },
+      { id: 'T2', key: 'loadKgS', to: 0.03 },
     ]);
   });
 

@@ -75,9 +75,9 @@ function trimmedRight(cells: readonly string[]): string[] {
 
 describe('an archive', () => {
   it('is unpacked when compressed', async () => {
-    const bytes = encoder.encode('a'.repeat(100_000));
-    const [entry] = await readZip((await compressedZip('a.xml', bytes)).buffer, () => true);
-    expect(entry?.bytes).toEqual(bytes);
+    const text = 'ab'.repeat(50_000);
+    const [entry] = await readZip((await compressedZip('a.xml', encoder.encode(text))).buffer, () => true);
+    expect(new TextDecoder().decode(entry?.bytes)).toBe(text);
   });
 
   it('is refused when it would unpack to too much, by what it declares and by what it does', async () => {
