@@ -3,26 +3,22 @@ import '@angular/compiler';
 import { mkdtempSync, rmSync } from 'node:fs';
 import { tmpdir } from 'node:os';
 import { join } from 'node:path';
-import { TestBed } from '@angular/core/testing';
-import { BrowserTestingModule, platformBrowserTesting } from '@angular/platform-browser/testing';
-import { Network, SavedBatch, Session } from '@riseback/contracts';
+import { Network, SavedBatch } from '@riseback/contracts';
 import { applyBatch, type NetworkDocument, toFile } from '@riseback/network';
 import { afterAll, beforeAll, expect, it, vi } from 'vitest';
 import { toDocument } from '../../apps/web/src/app/networks/stored-document';
 import { DEEDS, opsOf, START } from '../../apps/web/src/app/networks/testing/random-deeds';
-import { demoNetwork, signIn, startServer, type ServerProcess } from './server-process';
+import { startServer, type ServerProcess } from './server-process';
 import { FULL, randomFrom, seedOfRun } from './test-form';
-import { keyRangeStandIn, locksStandIn } from './two-clients/browser-storage';
 import { Ledger, numbersSaved } from './two-clients/ledger';
-import { Tab, type TestPerson, until } from './two-clients/tab';
+import { createNetwork, personOf, prepareBrowser, Tab, until } from './two-clients/tab';
 import { type Receipts, type Server, Wire } from './two-clients/wire';
-import { WireEventSource } from './two-clients/wire-event-source';
 
 vi.mock('idb', async () => (await import('./two-clients/browser-storage')).idbStandIn);
 
 const STEPS = FULL ? 500 : 60;
 /** Each run by two people, and each by one person in two tabs. */
-const RUNS = FULL ? 4 : 1;
+const RUNS = FULL ? 3 : 1;
 /** The client waits a quarter of a second and more between its tries; here it has less patience. */
 const HURRY = 25;
 
@@ -32,12 +28,9 @@ const server: Server = { address: null };
 
 beforeAll(() => {
   folder = mkdtempSync(join(tmpdir(), 'riseback-two-'));
-  TestBed.initTestEnvironment(BrowserTestingModule, platformBrowserTesting());
+  prepareBrowser();
   const plain = globalThis.setInterval;
   vi.stubGlobal('setInterval', (act: () => void, ms = 0) => plain(act, ms < 200 ? ms : ms / HURRY));
-  vi.stubGlobal('EventSource', WireEventSource);
-  vi.stubGlobal('IDBKeyRange', keyRangeStandIn);
-  Object.defineProperty(navigator, 'locks', { value: locksStandIn, configurable: true });
 });
 afterAll(() => {
   child?.child.kill('SIGKILL');
@@ -102,18 +95,13 @@ it.each(Array.from({ length: 2 * RUNS }, (_, run) => ({ run, people: run % 2 ===
 async function begin(run: number, people: number): Promise<Trial> {
   const random = randomFrom(seedOfRun(`two clients, run ${run}`) + run);
   const databasePath = join(folder, `run-${run}.db`);
+  // of a run that has failed
+  child?.child.kill('SIGKILL');
   child = await startServer(databasePath);
   server.address = child.address;
   const designer = await personOf(child.address, 'designer');
   const other = people === 2 ? await personOf(child.address, 'admin') : designer;
-  const { siteId } = await demoNetwork(child.address, designer.headers);
-  const made = await fetch(`${child.address}/api/sites/${siteId}/networks`, {
-    method: 'POST',
-    headers: designer.headers,
-    body: JSON.stringify(toFile(START)),
-  });
-  expect(made.status).toBe(201);
-  const { id: networkId } = (await made.json()) as { id: string };
+  const networkId = await createNetwork(child.address, designer, toFile(START));
   const receipts: Receipts = { sent: new Map(), versions: new Map() };
   const ledger = new Ledger();
   const tabs = [designer, other].map(
@@ -124,12 +112,6 @@ async function begin(run: number, people: number): Promise<Trial> {
   return { networkId, start, databasePath, random, ledger, receipts, tabs, counts: new Map() };
 }
 
-async function personOf(address: string, name: string): Promise<TestPerson> {
-  const headers = await signIn(address, name);
-  const { person } = Session.parse(await (await fetch(`${address}/api/session`, { headers })).json());
-  return { id: person.id, name: person.name, headers };
-}
-
 async function take(trial: Trial, step: Step, index: number): Promise<void> {
   const { ledger, random, tabs } = trial;
   const tab = tabOf(trial, index);
@@ -137,13 +119,13 @@ async function take(trial: Trial, step: Step, index: number): Promise<void> {
   let done = true;
   switch (step) {
     case 'edit':
-      ledger.deed(tab, () => edit(trial, tab));
+      ledger.deed(tab, 'edit', () => edit(trial, tab));
       break;
     case 'undo':
-      ledger.deed(tab, () => undoAndPerhapsRedo(trial, tab));
+      ledger.deed(tab, 'undo', () => undoAndPerhapsRedo(trial, tab));
       break;
     case 'redo':
-      ledger.deed(tab, () => {
+      ledger.deed(tab, 'redo', () => {
         done = store.redo() !== null;
       });
       break;
@@ -152,7 +134,7 @@ async function take(trial: Trial, step: Step, index: number): Promise<void> {
       const mine = open.filter(() => random() < 0.5);
       const theirs = open.filter((conflict) => !mine.includes(conflict) && random() < 0.8);
       done = open.length > 0;
-      ledger.deed(tab, () => void store.settle(mine, theirs));
+      ledger.deed(tab, 'choose', () => void store.settle(mine, theirs));
       break;
     }
     case 'offline':
@@ -267,12 +249,12 @@ async function comeToRest(trial: Trial): Promise<void> {
     if (round > 40) throw new Error('the clients do not come to rest');
     for (const tab of restless()) {
       const { store, keeper } = tab;
-      trial.ledger.look(tab);
+      trial.ledger.look(tab, 'before bringing in');
       for (const offer of keeper.offered()) await keeper.bringIn(offer);
-      trial.ledger.look(tab);
+      trial.ledger.look(tab, 'bringing in at the end');
       if (store.saveState() === 'notSaved') store.retrySave();
       const mine = store.conflicts().filter(() => trial.random() < 0.5);
-      trial.ledger.deed(tab, () => {
+      trial.ledger.deed(tab, 'choose', () => {
         const unfit = store.settle(mine, store.conflicts());
         if (unfit.length > 0) store.settle([], unfit);
       });
@@ -316,7 +298,9 @@ async function demandSameEverywhere({ networkId, start, tabs, ledger, receipts, 
   for (const { batchId, label, ops } of history) expect(receipts.sent.get(batchId)).toEqual({ batchId, label, ops });
 
   const saved = numbersSaved(history.flatMap(({ ops }) => ops));
-  const dropped = [...ledger.owed].filter(([value]) => !saved.has(value));
+  const dropped = [...ledger.owed]
+    .filter(([value]) => !saved.has(value))
+    .map(([value, how]) => [value, how, ledger.trailOf(value)]);
   expect(dropped).toEqual([]);
   const did = [...counts].map(([step, count]) => `${count} ${step}`).join(', ');
   process.stdout.write(

@@ -22,6 +22,8 @@ export class Ledger {
   /** When its person last put it on a screen. */
   private readonly typedAt = new Map<number, number>();
   private readonly onScreen = new Map<Tab, Screen>();
+  /** Where each value went, for who has to find out why one was dropped. */
+  private readonly trails = new Map<number, string[]>();
 
   /** A value that nobody has typed before; its whole part is between 1 and 5. */
   freshValue(whole: number): number {
@@ -35,14 +37,18 @@ export class Ledger {
     return this.count;
   }
 
+  trailOf(value: number): readonly string[] {
+    return this.trails.get(value) ?? [];
+  }
+
   /** What a person does: what leaves the screen by it was taken away by them. */
-  deed(tab: Tab, act: () => void): void {
-    this.look(tab);
+  deed(tab: Tab, what: string, act: () => void): void {
+    this.look(tab, `before ${what}`);
     act();
     const before = this.onScreen.get(tab);
     const after = this.screenOf(tab);
     for (const value of after.keys()) if (before?.has(value) !== true) this.typedAt.set(value, Date.now());
-    this.onScreen.set(tab, after);
+    this.show(tab, after, what);
   }
 
   /** Whatever happened since the last look was not this person's doing. */
@@ -50,12 +56,12 @@ export class Ledger {
     const after = this.screenOf(tab);
     for (const [value, where] of this.onScreen.get(tab) ?? [])
       if (!after.has(value)) this.owed.set(value, `left ${where} ${meanwhile}`);
-    this.onScreen.set(tab, after);
+    this.show(tab, after, meanwhile);
   }
 
   /** What has left the screen since the last look, its person has given up. */
   givenUp(tab: Tab): void {
-    this.onScreen.set(tab, this.screenOf(tab));
+    this.show(tab, this.screenOf(tab), 'given up');
   }
 
   /** A tab has crashed and another one is open in its place. */
@@ -66,8 +72,19 @@ export class Ledger {
       if (at - (this.typedAt.get(value) ?? 0) < DRAFT_WITHIN_MS) this.excused.add(value);
       else this.owed.set(value, `was in ${where} of a tab that crashed`);
     }
+    this.show(tab, new Map(), 'closed');
     this.onScreen.delete(tab);
-    this.onScreen.set(next, after);
+    this.show(next, after, 'opened');
+  }
+
+  private show(tab: Tab, after: Screen, how: string): void {
+    const before = this.onScreen.get(tab);
+    for (const value of new Set([...(before?.keys() ?? []), ...after.keys()])) {
+      const [from = 'nowhere', to = 'nowhere'] = [before?.get(value), after.get(value)];
+      if (from === to) continue;
+      this.trails.set(value, [...this.trailOf(value), `${tab.person.name} at ${Date.now()}, ${how}: ${from} to ${to}`]);
+    }
+    this.onScreen.set(tab, after);
   }
 
   private screenOf({ store, keeper, queue }: Tab): Screen {

@@ -8,6 +8,9 @@ import {
   untracked,
 } from '@angular/core';
 import { TestBed } from '@angular/core/testing';
+import { BrowserTestingModule, platformBrowserTesting } from '@angular/platform-browser/testing';
+import { Session } from '@riseback/contracts';
+import { vi } from 'vitest';
 import { Company } from '../../../apps/web/src/app/networks/company';
 import { DraftKeeper } from '../../../apps/web/src/app/networks/draft-keeper';
 import { Drafts } from '../../../apps/web/src/app/networks/drafts';
@@ -16,6 +19,8 @@ import { NetworkApi } from '../../../apps/web/src/app/networks/network-api';
 import { NetworkStore } from '../../../apps/web/src/app/networks/network-store';
 import { UndoStack } from '../../../apps/web/src/app/networks/undo-stack';
 import { SessionStore } from '../../../apps/web/src/app/session/session-store';
+import { demoNetwork, signIn } from '../server-process';
+import { keyRangeStandIn, locksStandIn } from './browser-storage';
 import { DraftsOfTab } from './drafts-of-tab';
 import type { Wire } from './wire';
 import { WireEventSource } from './wire-event-source';
@@ -26,7 +31,10 @@ export interface TestPerson {
   readonly headers: Readonly<Record<string, string>>;
 }
 
-/** One tab of one person: the client's own classes, joined as the network page joins them, without its pages. */
+/**
+ * One tab of one person: the client's own classes, joined as the network page joins them, without its pages. One that does not
+ * hear opens no stream, of which a session has few.
+ */
 export class Tab {
   readonly store: NetworkStore;
   readonly queue: EditQueue;
@@ -38,6 +46,7 @@ export class Tab {
     readonly person: TestPerson,
     readonly wire: Wire,
     private readonly networkId: string,
+    { hears = true }: { readonly hears?: boolean } = {},
   ) {
     this.injector = createEnvironmentInjector(
       [
@@ -60,7 +69,7 @@ export class Tab {
     const company = this.injector.get(Company);
     runInInjectionContext(this.injector, () => {
       effect(() => {
-        if (this.store.network() === null) return;
+        if (this.store.network() === null || !hears) return;
         untracked(() => {
           WireEventSource.wire = wire;
           company.open(networkId);
@@ -111,4 +120,30 @@ export async function until(holds: () => boolean, what: string, withinMs = 20_00
     if (Date.now() > late) throw new Error(`Not within ${withinMs} ms: ${what}`);
     await new Promise((resolve) => setTimeout(resolve, 5));
   }
+}
+
+/** Angular and what it needs of a browser, for all tabs of a test. */
+export function prepareBrowser(): void {
+  TestBed.initTestEnvironment(BrowserTestingModule, platformBrowserTesting());
+  vi.stubGlobal('EventSource', WireEventSource);
+  vi.stubGlobal('IDBKeyRange', keyRangeStandIn);
+  Object.defineProperty(navigator, 'locks', { value: locksStandIn, configurable: true });
+}
+
+export async function personOf(address: string, name: string): Promise<TestPerson> {
+  const headers = await signIn(address, name);
+  const { person } = Session.parse(await (await fetch(`${address}/api/session`, { headers })).json());
+  return { id: person.id, name: person.name, headers };
+}
+
+/** A new network at the demo's site. */
+export async function createNetwork(address: string, { headers }: TestPerson, file: object): Promise<string> {
+  const { siteId } = await demoNetwork(address, headers);
+  const made = await fetch(`${address}/api/sites/${siteId}/networks`, {
+    method: 'POST',
+    headers,
+    body: JSON.stringify(file),
+  });
+  if (made.status !== 201) throw new Error(`making a network was answered ${made.status}`);
+  return ((await made.json()) as { id: string }).id;
 }

@@ -8,7 +8,9 @@ import {
   setNetworkOp,
   type NetworkSettings,
 } from '@riseback/network';
-import { type Conflict, sideOf } from './conflicts';
+import type { Conflict } from './conflicts';
+import { withSetting } from './merged-settings';
+import { sideOf } from './place';
 
 /** This person's side of several conflicts as one batch, and those that it no longer fits. */
 export function choiceOfMine(
@@ -52,7 +54,8 @@ function fits(present: NetworkDocument, ops: readonly EditOp[]): boolean {
 function directOps(present: NetworkDocument, { place, mine, whole }: Conflict): EditOp[] {
   if (place.in === 'network') {
     const key = place.key as keyof NetworkSettings;
-    return mine.there ? [setNetworkOp(present, key, mine.value as NetworkSettings[typeof key])] : [];
+    const settings = withSetting(present[key], place.path ?? [], mine.there ? mine.value : undefined);
+    return mine.there ? [setNetworkOp(present, key, settings as NetworkSettings[typeof key])] : [];
   }
   if (!mine.there) return removalOps(present, { [place.in]: [place.id] });
   const now = sideOf(present, place);

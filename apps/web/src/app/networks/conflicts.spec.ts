@@ -233,9 +233,17 @@ describe('settings of the network', () => {
     expect(conflicts).toEqual([]);
   });
 
-  it('of one key are a conflict', () => {
-    const { conflicts } = meet([method({ dropCredit: 0.2 })], [method({ dropCredit: 0.5 })]);
-    expect(conflicts).toMatchObject([{ place: { in: 'network', key: 'method' }, name: 'The network' }]);
+  it('of one key are a conflict about that key alone; the rest of mine is kept', () => {
+    const { present, conflicts } = meet(
+      [method({ dropCredit: 0.2 })],
+      [method({ dropCredit: 0.5, friction: 'friedel' })],
+    );
+    expect(present.method).toMatchObject({ dropCredit: 0.2, friction: 'friedel' });
+    expect(conflicts).toMatchObject([
+      { place: { in: 'network', key: 'method', path: ['dropCredit'] }, name: 'The network', mine: { value: 0.5 } },
+    ]);
+    const after = applied(present, choiceOfMine(present, conflicts).ops);
+    expect(after.method).toMatchObject({ dropCredit: 0.5, friction: 'friedel' });
   });
 });
 

@@ -1,29 +1,20 @@
 import {
   type AddOp,
   applyBatch,
-  type CollectionName,
   type EditBatch,
   type EditOp,
   inOrder,
   jsonEqual,
   type NetworkDocument,
   type RemoveOp,
+  type SetNetworkOp,
   withDependents,
 } from '@riseback/network';
 import { renameInOps, renamesFor } from './conflicting-ids';
 import { mergedSettings } from './merged-settings';
+import { type Place, placeKey, type Side, sideOf } from './place';
 import { placeName } from './place-name';
 import { type Touches, touchedPlace } from './touches';
-
-/** One property of one element; without `key` the element as a whole. `id` is '' for the network's own settings. */
-export interface Place {
-  readonly in: CollectionName | 'network';
-  readonly id: string;
-  readonly key?: string;
-}
-
-/** What stands at a place: nothing, as a removed element, or a value; an absent key is there with the value undefined. */
-export type Side = { readonly there: false } | { readonly there: true; readonly value?: unknown };
 
 /** Two people changed one thing. `theirs` is what stands in the document; this keeps what it was and what this person wanted. */
 export interface Conflict {
@@ -90,19 +81,9 @@ export function replayOver({ before, after, pending, touches, others }: ReplayIn
   return { present, pending: kept, conflicts: conflictsOf(aside, documents, others), fates, renamed };
 }
 
-export function placeKey({ in: collection, id, key }: Place): string {
-  return JSON.stringify(key === undefined ? [collection, id] : [collection, id, key]);
-}
-
-/** What stands at a place in a document. */
-export function sideOf(document: NetworkDocument, place: Place): Side {
-  if (place.in === 'network') {
-    return { there: true, value: new Map<string, unknown>(Object.entries(document)).get(place.key ?? '') };
-  }
-  const element = document[place.in].get(place.id)?.value;
-  if (element === undefined) return { there: false };
-  if (place.key === undefined) return { there: true, value: element };
-  return { there: true, value: new Map<string, unknown>(Object.entries(element)).get(place.key) };
+/** A person may be asked about one place twice, with the values of two times. */
+export function conflictKey({ place, mine }: Conflict): string {
+  return `${placeKey(place)} ${JSON.stringify(mine)}`;
 }
 
 interface AsidePlace {
@@ -129,10 +110,10 @@ interface Split {
 function splitBatch(given: readonly EditOp[], { mine, present, touches, aside, agreed }: SplitState): Split {
   const own = applyBatch(mine, given);
   if (!own.ok) throw new Error(`A pending edit does not apply: ${own.errors.map(({ detail }) => detail).join('; ')}`);
-  const setAside = (op: EditOp): void => {
-    const place = placeOf(op, present);
+  const setPlaceAside = (place: Place): void => {
     aside.set(placeKey(place), { place, who: touchedPlace(touches, place, present) });
   };
+  const setAside = (op: EditOp): void => setPlaceAside(placeOf(op, present));
   const removals = removalsInDispute(given, mine, present, touches);
   const inQuestion = (op: EditOp): boolean => {
     if (op.op !== 'set' || op.in === 'network') return false;
@@ -141,6 +122,11 @@ function splitBatch(given: readonly EditOp[], { mine, present, touches, aside, a
   };
   let ops = given
     .flatMap((op) => {
+      if (op.op === 'set' && op.in === 'network') {
+        const { rest, clashes } = mergedSetting(op, present);
+        clashes.forEach(setPlaceAside);
+        return rest;
+      }
       const rest = inQuestion(op) ? [op] : restated(op, present);
       for (const place of placesLeftToTheirs(op, rest)) agreed.add(placeKey(place));
       return rest;
@@ -164,7 +150,22 @@ function splitBatch(given: readonly EditOp[], { mine, present, touches, aside, a
   }
 }
 
-/** The operation said anew for what others left: nothing where they did the same, settings merged key by key. */
+/** A change of settings, merged with theirs part by part; a part that both changed stays theirs and is in question. */
+function mergedSetting(op: SetNetworkOp, present: NetworkDocument): { rest: EditOp[]; clashes: Place[] } {
+  const theirs = present[op.key];
+  const { value, clashes } = mergedSettings(op.from, op.to, theirs);
+  return {
+    rest: jsonEqual(value, theirs) ? [] : [{ ...op, from: theirs, to: value }],
+    clashes: clashes.map((path) => ({
+      in: 'network',
+      id: '',
+      key: op.key,
+      ...(path.length === 0 ? {} : { path }),
+    })),
+  };
+}
+
+/** The operation said anew for what others left: nothing where they did the same. */
 function restated(op: EditOp, present: NetworkDocument): EditOp[] {
   if (op.op === 'remove') return present[op.in].has(op.id) ? [op] : [];
   if (op.op === 'add') {
@@ -177,12 +178,7 @@ function restated(op: EditOp, present: NetworkDocument): EditOp[] {
       .filter(([key, value]) => !jsonEqual(values.get(key), value))
       .map(([key, to]) => ({ op: 'set', in: 'overrides', id, key, to }));
   }
-  if (op.in === 'network') {
-    const theirs = present[op.key];
-    const merged = mergedSettings(op.from, op.to, theirs);
-    if (merged === undefined) return [op];
-    return jsonEqual(merged.value, theirs) ? [] : [{ ...op, from: theirs, to: merged.value }];
-  }
+  if (op.in === 'network') return [op];
   const side = sideOf(present, op);
   return side.there && jsonEqual(side.value, op.to) && !jsonEqual(op.from, op.to) ? [] : [op];
 }

@@ -124,6 +124,39 @@ describe('EditQueue', () => {
     expect(queue.unsaved()).toBeNull();
   });
 
+  it('keeps an open choice open when another one arises at its place', async () => {
+    const stale = (version: number, op: EditOp) => {
+      const [batch] = staleAnswer([op]).batches;
+      return { ...staleAnswer([]), currentVersion: version, batches: [{ ...batch, version }] };
+    };
+    const conflict = { status: 412, statusText: 'Precondition Failed' };
+    queue.add('mine', [elevation('J1', 3)]);
+    server.expectOne(EDITS).flush(stale(8, elevation30), conflict);
+    await settle();
+    queue.add('mine again', [elevation('J1', 4)]);
+    server.expectOne(EDITS).flush(stale(9, { ...elevation30, from: 30, to: 31 } as EditOp), conflict);
+    await settle();
+    expect(queue.conflicts()).toMatchObject([
+      { before: { value: 1 }, mine: { value: 3 } },
+      { before: { value: 1 }, mine: { value: 4 } },
+    ]);
+    queue.dropConflicts(queue.conflicts().slice(0, 1));
+    expect(queue.conflicts()).toMatchObject([{ mine: { value: 4 } }]);
+  });
+
+  it('does not skip what others saved between when its batch turns out to have been saved long ago', async () => {
+    queue.add('mine', [elevation('J1', 3)]);
+    const request = server.expectOne(EDITS);
+    const { batchId, ops } = request.request.body as { batchId: string; ops: EditOp[] };
+    request.flush({ version: 9, solverHash: 'hash 9' });
+    await settle();
+    const [theirs] = staleAnswer([{ op: 'set', in: 'nodes', id: 'J2', key: 'elevationM', from: 2, to: 20 }]).batches;
+    server.expectOne(`${EDITS}?since=7`).flush([theirs, { ...theirs, version: 9, batchId, ops }]);
+    await settle();
+    expect([queue.version(), elevationOf('J1'), elevationOf('J2')]).toEqual([9, 3, 20]);
+    expect(queue.saveState()).toBe('saved');
+  });
+
   it('does not send again and again what a server that was put back to an earlier state cannot take', async () => {
     queue.add('mine', [elevation('J1', 3)]);
     const behind = { ...staleAnswer([]), currentVersion: 5, batches: [] };

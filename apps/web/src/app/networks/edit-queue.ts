@@ -5,8 +5,9 @@ import { applyBatch, type EditBatch, type EditOp, jsonEqual, type NetworkDocumen
 import { firstValueFrom } from 'rxjs';
 import { SessionStore } from '../session/session-store';
 import { toProblem } from '../shared/problem';
-import { type Conflict, placeKey, replayOver, sideOf } from './conflicts';
+import { type Conflict, conflictKey, replayOver } from './conflicts';
 import { NetworkApi } from './network-api';
+import { placeKey, sideOf } from './place';
 import {
   acknowledged,
   mustApply,
@@ -101,11 +102,11 @@ export class EditQueue {
 
   /** The person has chosen. */
   dropConflicts(settled: readonly Conflict[]): void {
-    const keys = new Set(settled.map(({ place }) => placeKey(place)));
+    const keys = new Set(settled.map(conflictKey));
     this.state.update((state) =>
       state === null
         ? null
-        : { ...state, conflicts: state.conflicts.filter(({ place }) => !keys.has(placeKey(place))) },
+        : { ...state, conflicts: state.conflicts.filter((conflict) => !keys.has(conflictKey(conflict))) },
     );
   }
 
@@ -231,10 +232,12 @@ export class EditQueue {
     const others = [...new Set(work.others.map((batch) => this.authorOf(batch)))].join(', ');
     const replayed = replayOver({ ...work, touches, others: others === '' ? 'You, since' : others });
     this.undoStack.follow(replayed.fates, replayed.renamed);
-    const conflicts = new Map(state.conflicts.map((conflict) => [placeKey(conflict.place), conflict]));
+    // one that is open already stays, whatever else was wanted at its place since
+    const conflicts = new Map(state.conflicts.map((conflict) => [conflictKey(conflict), conflict]));
+    const before = new Map(state.conflicts.map((conflict) => [placeKey(conflict.place), conflict.before]));
     for (const conflict of replayed.conflicts) {
-      const key = placeKey(conflict.place);
-      conflicts.set(key, { ...conflict, before: conflicts.get(key)?.before ?? conflict.before });
+      const first = before.get(placeKey(conflict.place)) ?? conflict.before;
+      conflicts.set(conflictKey(conflict), { ...conflict, before: first });
     }
     const { present, pending } = replayed;
     this.state.set({ ...state, present, pending: [...ahead, ...pending], conflicts: [...conflicts.values()] });

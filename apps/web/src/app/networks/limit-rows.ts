@@ -1,6 +1,7 @@
 import type { Limits } from '@riseback/network';
 import { CHECK_LIMITS, type CheckLimit } from '@riseback/solver';
 import type { QuantityKind } from '@riseback/units';
+import { checkName } from '../results/finding-words';
 
 /** One limit of a check as the form shows it. */
 export interface LimitRow {
@@ -48,6 +49,17 @@ export function limitGroups(limits: Limits): LimitGroup[] {
       own: own[code]?.[key],
     })),
   }));
+}
+
+/** What one limit is called and measured in; undefined for what the solver does not know. */
+export function limitOf(
+  code: string,
+  key: string,
+): { readonly check: string; readonly label: string; readonly kind: QuantityKind } | undefined {
+  const known: Readonly<Record<string, Readonly<Record<string, CheckLimit>> | undefined>> = CHECK_LIMITS;
+  const quantity = known[code]?.[key]?.quantity;
+  if (quantity === undefined) return undefined;
+  return { check: checkName(code), label: LIMIT_WORDS[`${code}.${key}`] ?? key, kind: kindOf(key, quantity) };
 }
 
 /** The limits with one of them set, or given back to its default; a check without own limits has no entry. */

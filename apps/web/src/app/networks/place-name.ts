@@ -1,6 +1,6 @@
 import { type NetworkDocument, splitOverrideId } from '@riseback/network';
 import { nameOf } from '../shared/element-words';
-import type { Place } from './conflicts';
+import type { Place } from './place';
 
 /** What people call the element at a place; undefined where the document does not have it. */
 export function placeName(place: Place, document: NetworkDocument): string | undefined {

@@ -1,6 +1,6 @@
 import type { SavedBatch } from '@riseback/contracts';
 import { type CollectionName, type EditOp, type NetworkDocument, withDependents } from '@riseback/network';
-import type { Place } from './conflicts';
+import type { Place } from './place';
 
 /** Who last touched what, other than this tab, and in which version. Keys as `touchKey` makes them. */
 export type Touches = ReadonlyMap<string, Touch>;
