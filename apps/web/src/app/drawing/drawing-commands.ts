@@ -13,19 +13,11 @@ import {
 import { NetworkStore } from '../networks/network-store';
 import { DrawingScene } from './drawing-scene';
 import { DrawingState, IDLE } from './drawing-state';
-import { NOTHING_DISPLACED } from './model/drawn-network';
+import { bendsBeside, type Displaced, NOTHING_DISPLACED } from './model/drawn-network';
+import { ID_PREFIXES } from './model/id-prefixes';
+import { keepingLanes } from './model/keep-lanes';
 import { KIND_WORDS, nameOf } from '../shared/element-words';
 import { downstreamOf } from './model/navigation';
-
-/** Prefixes of new ids, by kind. */
-const ID_PREFIXES: Readonly<Record<NodeKind | 'pipe', string>> = {
-  trap: 'T',
-  junction: 'J',
-  receiver: 'R',
-  flashVessel: 'V',
-  pumpedInlet: 'P',
-  pipe: 'L',
-};
 
 /** The edits that the drawing makes, each one batch and one step of undo. In the drawing page's `providers`. */
 @Injectable()
@@ -40,7 +32,7 @@ export class DrawingCommands {
     if (document === null) return null;
     const collection = kind === 'pipe' ? 'pipes' : 'nodes';
     const id = newElementId(document, ID_PREFIXES[kind]);
-    const value = kind === 'pipe' ? { id, ...fields } : { id, kind, ...fields };
+    const value = kind === 'pipe' ? { id, ...fields, ...this.apart(fields) } : { id, kind, ...fields };
     const tag = typeof fields['tag'] === 'string' ? fields['tag'] : id;
     const added = this.store.edit(`${KIND_WORDS[kind]} ${tag} placed`, [
       { op: 'add', in: collection, ordinal: nextOrdinal(document, collection), value },
@@ -50,6 +42,12 @@ export class DrawingCommands {
     this.state.focusOn(id);
     this.state.say(`${this.scene.nameOf(id)} added`);
     return id;
+  }
+
+  /** A pipe beside one that joins the same nodes already gets bends, so that neither lies on the other whatever becomes of it. */
+  private apart({ from, to }: Readonly<Record<string, unknown>>): { readonly bends?: Position[] } {
+    const bends = typeof from === 'string' && typeof to === 'string' ? bendsBeside(this.scene.settled(), from, to) : [];
+    return bends.length === 0 ? {} : { bends };
   }
 
   /** Sets one key of an element: one accepted field is one step of undo. */
@@ -89,45 +87,45 @@ export class DrawingCommands {
   }
 
   /** Deletes the elements with what hangs on them; the keyboard goes to the neighbour downstream. */
-  remove(ids: ReadonlySet<string>): boolean {
+  remove(ids: ReadonlySet<string>, word: 'deleted' | 'cut' = 'deleted'): boolean {
     const document = this.store.document();
     if (document === null || ids.size === 0) return false;
     const neighbour = this.neighbourBelow(ids);
     const names = [...ids].map((id) => elementIn(document, id)?.name ?? id);
     const [first = ''] = names;
-    const label = names.length === 1 ? `${first} deleted` : `${String(names.length)} elements deleted`;
-    if (!this.store.edit(label, removalOps(document, picked(document, ids)))) return false;
+    const label = names.length === 1 ? `${first} ${word}` : `${String(names.length)} elements ${word}`;
+    const ops = keepingLanes(this.scene.settled(), document, removalOps(document, picked(document, ids)));
+    if (!this.store.edit(label, ops)) return false;
     this.state.select();
     this.state.focusOn(neighbour);
     this.state.say(`${label}. Undo brings it back.`);
     return true;
   }
 
-  /** Sets down what was displaced: one batch, which changes the positions of nothing else. */
-  settle(): void {
-    const { nodes, bends } = this.state.displaced();
-    const document = this.store.document();
+  /** Sets down what was displaced: one batch, which changes the places of nothing else. */
+  settle(label?: string): void {
+    const displaced = this.state.displaced();
     this.state.mode.set(IDLE);
-    if (document !== null) {
-      const ops: EditOp[] = [
-        ...[...nodes]
-          .filter(([id]) => document.nodes.has(id))
-          .map(([id, at]) => setOp(document, 'nodes', id, 'position', { x: at.x, y: at.y })),
-        ...[...bends]
-          .filter(([id]) => document.pipes.has(id))
-          .map(([id, points]) => setOp(document, 'pipes', id, 'bends', plain(points))),
-      ].filter((op) => !sameValue(op.from, op.to));
-      const [first] = [...nodes.keys(), ...bends.keys()];
-      const name = first === undefined ? '' : (elementIn(document, first)?.name ?? first);
-      const label =
-        nodes.size > 1
-          ? `${String(nodes.size)} elements moved`
-          : bends.size > 0 && nodes.size === 0
-            ? `bend of ${name} moved`
-            : `${name} moved`;
-      if (ops.length > 0 && this.store.edit(label, ops)) this.state.say(label);
-    }
+    this.lay(displaced, label);
     this.state.displaced.set(NOTHING_DISPLACED);
+  }
+
+  /** Puts elements and bends in new places. Without a label it says itself what moved. */
+  lay({ nodes, bends }: Displaced, label = this.movedWords(nodes, bends)): boolean {
+    const document = this.store.document();
+    if (document === null) return false;
+    const ops: EditOp[] = [
+      ...[...nodes]
+        .filter(([id]) => document.nodes.has(id))
+        .map(([id, at]) => setOp(document, 'nodes', id, 'position', { x: at.x, y: at.y })),
+      ...[...bends]
+        .filter(([id]) => document.pipes.has(id))
+        .map(([id, points]) => setOp(document, 'pipes', id, 'bends', points.length === 0 ? undefined : plain(points))),
+    ].filter((op) => !sameValue(op.from, op.to));
+    if (ops.length === 0) return false;
+    const laid = this.store.edit(label, keepingLanes(this.scene.settled(), document, ops));
+    this.state.say(laid ? label : `Not possible: ${this.store.lastRefusal().join(' ')}`);
+    return laid;
   }
 
   undo(): void {
@@ -166,6 +164,13 @@ export class DrawingCommands {
   private fallback(): string | null {
     const focused = this.state.focusId();
     return focused === null ? null : this.neighbourBelow(new Set([focused]));
+  }
+
+  private movedWords(nodes: ReadonlyMap<string, unknown>, bends: ReadonlyMap<string, unknown>): string {
+    const [first = ''] = [...nodes.keys(), ...bends.keys()];
+    const name = this.scene.tagOf(first);
+    if (nodes.size > 1) return `${String(nodes.size)} elements moved`;
+    return nodes.size === 0 ? `bend of ${name} moved` : `${name} moved`;
   }
 
   private neighbourBelow(ids: ReadonlySet<string>): string | null {

@@ -14,6 +14,7 @@ import type { Position } from '@riseback/network';
 import { NetworkStore } from '../networks/network-store';
 import { allFindings, findingsOfCases } from '../results/finding-list';
 import { FindingsList } from '../results/findings-list/findings-list';
+import { DrawingClipboard } from './drawing-clipboard';
 import { DrawingCommands } from './drawing-commands';
 import { DrawingScene } from './drawing-scene';
 import { DrawingState } from './drawing-state';
@@ -22,10 +23,15 @@ import { EmptySheet } from './empty-sheet';
 import { Inspector } from './inspector/inspector';
 import { KeyList } from './key-list';
 import { zoneOf } from './model/sheet-zones';
+import { NodeArranging } from './node-arranging';
 import { DeletePrompt } from './sheet/delete-prompt';
 import { DrawingSheet } from './sheet/drawing-sheet';
+import { ElementMoving } from './sheet/element-moving';
 import { NodePlacing } from './sheet/node-placing';
+import { PipeDrawing } from './sheet/pipe-drawing';
+import { PipeGrabbing } from './sheet/pipe-grabbing';
 import { SheetKeys } from './sheet/sheet-keys';
+import { WalkKeys } from './sheet/walk-keys';
 import { TagFinder } from './tag-finder';
 
 const NARROW = '(width < 720px)';
@@ -34,7 +40,20 @@ const NARROW = '(width < 720px)';
 @Component({
   selector: 'app-drawing-page',
   imports: [DrawingSheet, DrawingTray, EmptySheet, FindingsList, Inspector, KeyList, TagFinder],
-  providers: [DeletePrompt, DrawingCommands, DrawingScene, DrawingState, NodePlacing, SheetKeys],
+  providers: [
+    DeletePrompt,
+    DrawingClipboard,
+    DrawingCommands,
+    DrawingScene,
+    DrawingState,
+    ElementMoving,
+    NodeArranging,
+    NodePlacing,
+    PipeDrawing,
+    PipeGrabbing,
+    SheetKeys,
+    WalkKeys,
+  ],
   changeDetection: ChangeDetectionStrategy.OnPush,
   host: { '[class.no-inspector]': '!inspectorOpen()' },
   templateUrl: './drawing-page.html',

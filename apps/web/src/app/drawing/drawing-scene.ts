@@ -2,17 +2,29 @@ import { computed, inject, Injectable } from '@angular/core';
 import type { SolveWarning } from '@riseback/contracts';
 import { overrideId } from '@riseback/network';
 import { NetworkStore } from '../networks/network-store';
+import { isPipe, KIND_WORDS, nameOf } from '../shared/element-words';
 import { DrawingState } from './drawing-state';
 import { colourScale } from './model/colour-scale';
-import { drawnNetwork, EMPTY_DRAWING } from './model/drawn-network';
+import { crossings } from './model/crossings';
+import {
+  type DrawnNode,
+  type DrawnPipe,
+  drawnNetwork,
+  EMPTY_DRAWING,
+  pipesAt,
+  withDisplaced,
+} from './model/drawn-network';
 import { type NodeView, nodeView, type PipeView, pipeView, type SceneResults } from './model/element-views';
 import { sheetAround } from './model/sheet-zones';
+import { ViewCache } from './model/view-cache';
 
 /** The network as it is drawn: document, results and what the person does to it, joined. In the drawing page's `providers`. */
 @Injectable()
 export class DrawingScene {
   private readonly store = inject(NetworkStore);
   private readonly state = inject(DrawingState);
+  private readonly knownNodes = new ViewCache<DrawnNode, NodeView>();
+  private readonly knownPipes = new ViewCache<DrawnPipe, PipeView>();
 
   /** As the document has it. */
   readonly settled = computed(() => {
@@ -21,10 +33,9 @@ export class DrawingScene {
   });
   /** With what is being moved in its new place. */
   readonly network = computed(() => {
-    const document = this.store.document();
     const displaced = this.state.displaced();
     const still = displaced.nodes.size === 0 && displaced.bends.size === 0;
-    return document === null || still ? this.settled() : drawnNetwork(document, displaced);
+    return still ? this.settled() : withDisplaced(this.settled(), displaced);
   });
   readonly empty = computed(() => this.settled().nodes.size === 0);
   readonly sheet = computed(() => {
@@ -67,12 +78,14 @@ export class DrawingScene {
       this.store.units(),
       this.state.selection(),
     ];
-    return new Map(
-      [...network.nodes.values()].map((node) => [
-        node.id,
-        nodeView(node, network, results, scale, units, selection.has(node.id)),
-      ]),
-    );
+    return this.knownNodes.all(network.nodes, (node) => {
+      const selected = selection.has(node.id);
+      const around = pipesAt(network, node.id).map((id) => network.pipes.get(id));
+      return {
+        basis: [node, results, scale, units, selected, ...around],
+        make: () => nodeView(node, network, results, scale, units, selected),
+      };
+    });
   });
   readonly pipeViews = computed((): ReadonlyMap<string, PipeView> => {
     const [network, results, scale, units, selection] = [
@@ -82,13 +95,16 @@ export class DrawingScene {
       this.store.units(),
       this.state.selection(),
     ];
-    return new Map(
-      [...network.pipes.values()].map((pipe) => [
-        pipe.id,
-        pipeView(pipe, network, results, scale, units, selection.has(pipe.id)),
-      ]),
-    );
+    return this.knownPipes.all(network.pipes, (pipe) => {
+      const selected = selection.has(pipe.id);
+      return {
+        basis: [pipe, results, scale, units, selected],
+        make: () => pipeView(pipe, network, results, scale, units, selected),
+      };
+    });
   });
+  /** Where pipes cross without a junction; while something is moved, as before it. */
+  readonly crossings = computed(() => crossings(this.settled().pipes.values()));
 
   /** Pipes on the way of the one selected trap. */
   readonly way = computed((): ReadonlySet<string> => {
@@ -108,6 +124,15 @@ export class DrawingScene {
 
   has(id: string): boolean {
     return this.settled().nodes.has(id) || this.settled().pipes.has(id);
+  }
+
+  /** What a sentence calls an element: its tag, or its kind and id. */
+  tagOf(id: string): string {
+    const { nodes, pipes } = this.settled();
+    const element = nodes.get(id)?.node ?? pipes.get(id)?.pipe;
+    if (element === undefined) return id;
+    if (isPipe(element)) return `pipe ${nameOf(element)}`;
+    return element.tag ?? `${KIND_WORDS[element.kind]} ${element.id}`;
   }
 
   nameOf(id: string): string {

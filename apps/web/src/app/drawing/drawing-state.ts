@@ -2,6 +2,7 @@ import { computed, Injectable, signal } from '@angular/core';
 import type { NodeKind, Position } from '@riseback/network';
 import type { ColouredBy } from './model/colour-scale';
 import { type Displaced, NOTHING_DISPLACED } from './model/drawn-network';
+import type { PipeGrip } from './model/pipe-shape';
 
 /** What the pointer and the keys do at the moment. */
 export type Mode =
@@ -16,11 +17,12 @@ export type Mode =
       readonly typed: string;
       readonly pointer: Position | null;
     }
-  /** Moving the selection, or a bend of one pipe, before it is set down. */
+  /** Moving the selection, or a part of one pipe, before it is set down. */
   | {
       readonly kind: 'moving';
       readonly ids: readonly string[];
-      readonly bend: number;
+      /** What of the one pipe is moved; null for elements. */
+      readonly grip: PipeGrip | null;
       readonly dx: number;
       readonly dy: number;
     };
@@ -67,6 +69,11 @@ export class DrawingState {
 
   select(...ids: readonly string[]): void {
     this.selection.set(new Set(ids));
+  }
+
+  selectAll(ids: Iterable<string>): void {
+    this.selection.set(new Set(ids));
+    this.say(`${String(this.selection().size)} elements selected`);
   }
 
   toggle(id: string): void {

@@ -5,8 +5,10 @@ import { NetworkStore } from '../networks/network-store';
 import { DrawingCommands } from './drawing-commands';
 import { DrawingScene } from './drawing-scene';
 import { DrawingState, IDLE } from './drawing-state';
+import { ArrangeMenu } from './menus/arrange-menu';
+import { NodeArranging } from './node-arranging';
 import { NodePlacing } from './sheet/node-placing';
-import { SheetKeys, type Zoomable } from './sheet/sheet-keys';
+import { PipeDrawing } from './sheet/pipe-drawing';
 import { ElementIcon } from './symbols/element-icon';
 
 const TOOLS: readonly { readonly kind: NodeKind; readonly words: string; readonly letter: string }[] = [
@@ -20,7 +22,7 @@ const TOOLS: readonly { readonly kind: NodeKind; readonly words: string; readonl
 /** Under the sheet: what can be placed, with its key; undo and redo; zoom. */
 @Component({
   selector: 'app-drawing-tray',
-  imports: [ElementIcon, MatMenu, MatMenuItem, MatMenuTrigger],
+  imports: [ArrangeMenu, ElementIcon, MatMenu, MatMenuItem, MatMenuTrigger],
   changeDetection: ChangeDetectionStrategy.OnPush,
   templateUrl: './drawing-tray.html',
   styleUrl: './drawing-tray.scss',
@@ -30,10 +32,11 @@ export class DrawingTray {
   protected readonly state = inject(DrawingState);
   protected readonly commands = inject(DrawingCommands);
   private readonly scene = inject(DrawingScene);
-  private readonly keys = inject(SheetKeys);
+  protected readonly arranging = inject(NodeArranging);
+  private readonly pipes = inject(PipeDrawing);
   private readonly placing = inject(NodePlacing);
 
-  private readonly menuTrigger = viewChild(MatMenuTrigger);
+  private readonly menuTrigger = viewChild<MatMenuTrigger>('placeTrigger');
 
   protected readonly tools = TOOLS;
   protected readonly view = viewOf(inject(DrawingState));
@@ -74,7 +77,7 @@ export class DrawingTray {
     }
     const focused = this.scene.tabStop();
     const byKey = event.detail === 0;
-    this.keys.startPipe(byKey && focused !== null && this.scene.settled().nodes.has(focused) ? focused : null);
+    this.pipes.start(byKey && focused !== null && this.scene.settled().nodes.has(focused) ? focused : null);
     if (byKey) this.state.focusOn(focused);
   }
 
@@ -83,9 +86,9 @@ export class DrawingTray {
   }
 }
 
-function viewOf(state: DrawingState): Zoomable {
+function viewOf(state: DrawingState) {
   return {
-    zoomBy: (factor) => {
+    zoomBy: (factor: number) => {
       state.zoomAsked.set({ factor });
     },
     fit: () => {

@@ -153,14 +153,14 @@ export class GraphCanvas {
     this.readView();
   }
 
-  /** Zooms about a point of the canvas, which stays where it is. */
-  zoomAbout(point: Position, factor: number): void {
+  /** Zooms about a point of the canvas, which stays where it is, or comes to another. */
+  zoomAbout(point: Position, factor: number, to: Position = point): void {
     const view = this.view();
     const zoom = clampZoom(view.zoom * factor);
     const fixed = toSheet(point, view);
     this.show({
       zoom,
-      centre: { x: fixed.x + (view.width / 2 - point.x) / zoom, y: fixed.y + (view.height / 2 - point.y) / zoom },
+      centre: { x: fixed.x + (view.width / 2 - to.x) / zoom, y: fixed.y + (view.height / 2 - to.y) / zoom },
     });
   }
 

@@ -22,9 +22,10 @@ import { LabelLayer } from '../labels/label-layer';
 import { type Box, placeLabels } from '../labels/label-placement';
 import { labelObstacles, type SheetLabel, sheetLabels } from '../labels/sheet-labels';
 import type { NodeView, PipeView } from '../model/element-views';
+import { SheetMenu } from '../menus/sheet-menu';
 import { linePath } from '../model/line-path';
-import { placeOf } from '../model/navigation';
-import { centreToShow, fitView, symbolScale, toScreen } from '../model/viewport';
+import { type Direction, placeOf } from '../model/navigation';
+import { centreToShow, fitView, symbolScale, toScreen, toSheet } from '../model/viewport';
 import { NodeMark } from '../symbols/node-mark';
 import { NodeSymbol } from '../symbols/node-symbol';
 import { PipeMark } from '../symbols/pipe-mark';
@@ -32,7 +33,9 @@ import { areaOutlines } from './area-outlines';
 import { ColourLegend } from './colour-legend';
 import { companyOutlines } from './company-outlines';
 import { SheetKeys } from './sheet-keys';
-import { SheetPointer } from './sheet-pointer';
+import type { PinchStep } from './pinch';
+import { SheetPointer, type Target, targetOf } from './sheet-pointer';
+import { STEPS } from './walk-keys';
 import { ZoneFrame } from './zone-frame';
 
 /** How near the edge the focused element may come before the view follows, px. */
@@ -48,7 +51,7 @@ interface LabelSubject {
 /** The sheet of paper: frame, network, labels and legend, with what pointer and keys do on it. */
 @Component({
   selector: 'app-drawing-sheet',
-  imports: [ColourLegend, GraphCanvas, LabelLayer, NodeMark, NodeSymbol, PipeMark, ZoneFrame],
+  imports: [ColourLegend, GraphCanvas, LabelLayer, NodeMark, NodeSymbol, PipeMark, SheetMenu, ZoneFrame],
   providers: [SheetPointer],
   changeDetection: ChangeDetectionStrategy.OnPush,
   host: { '[style.--symbol-scale]': 'symbolScale()', '[class]': 'state.mode().kind' },
@@ -64,6 +67,7 @@ export class DrawingSheet {
   private readonly others = inject(Company);
 
   private readonly canvas = viewChild.required(GraphCanvas);
+  private readonly menu = viewChild.required(SheetMenu);
   private readonly surface = viewChild.required<ElementRef<HTMLElement>>('surface');
 
   protected readonly viewport = computed(() => this.canvas().viewport());
@@ -158,8 +162,11 @@ export class DrawingSheet {
     holdStill: (still: boolean) => {
       this.canvas().holdStill(still);
     },
-    zoomAbout: (point: Position, factor: number) => {
-      this.canvas().zoomAbout(point, factor);
+    pinch: ({ from, to, factor }: PinchStep) => {
+      this.canvas().zoomAbout(from, factor, to);
+    },
+    openMenu: (at: Position, target: Target) => {
+      this.menu().open(at, target, toSheet(at, this.viewport()));
     },
     corner: () => {
       const { left, top } = this.surface().nativeElement.getBoundingClientRect();
@@ -225,9 +232,40 @@ export class DrawingSheet {
     this.canvas().show(covered ? fitView(points, size, { ...none, top: LEGEND.height - 32 }) : plain);
   }
 
+  /** Looks a quarter of the window farther. */
+  panBy(direction: Direction): void {
+    this.looked = true;
+    const view = this.viewport();
+    const [x, y] = STEPS[direction];
+    this.lookAt(toSheet({ x: view.width * (0.5 + 0.25 * x), y: view.height * (0.5 + 0.25 * y) }, view));
+    this.state.say(`View moved ${direction}`);
+  }
+
+  /** The menu of the element with the keyboard, or of the sheet. */
+  openMenu(): void {
+    const id = this.scene.tabStop();
+    const place = id === null ? undefined : placeOf(this.scene.settled(), id);
+    const at = place === undefined ? { x: 40, y: 40 } : toScreen(place, this.viewport());
+    this.menu().open(at, { id, bend: -1 }, null);
+  }
+
+  protected menuAsked(event: MouseEvent): void {
+    event.preventDefault();
+    // the menu key makes one of these too, after its own key has opened the menu
+    if (event.button !== 2) return;
+    const corner = this.gestures.corner();
+    const at = { x: event.clientX - corner.x, y: event.clientY - corner.y };
+    this.gestures.openMenu(at, targetOf(event));
+  }
+
+  protected lookAt(centre: Position): void {
+    this.looked = true;
+    this.canvas().show({ zoom: this.viewport().zoom, centre });
+  }
+
   protected activeBend(id: string): number {
     const mode = this.state.mode();
-    return mode.kind === 'moving' && mode.ids[0] === id ? mode.bend : -1;
+    return mode.kind === 'moving' && mode.ids[0] === id && mode.grip?.kind === 'corner' ? mode.grip.index : -1;
   }
 
   /** What is read out: the element, and who else has it selected. */
@@ -272,8 +310,8 @@ export class DrawingSheet {
     this.pointer.up(event, this.gestures);
   }
 
-  protected cancelled(): void {
-    this.pointer.cancel(this.gestures);
+  protected cancelled(event: PointerEvent): void {
+    this.pointer.cancel(this.gestures, event);
   }
 
   private followFocus(): void {

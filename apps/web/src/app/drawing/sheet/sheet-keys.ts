@@ -1,38 +1,17 @@
 import { inject, Injectable } from '@angular/core';
 import type { NodeKind } from '@riseback/network';
 import { NetworkStore } from '../../networks/network-store';
+import { DrawingClipboard } from '../drawing-clipboard';
 import { DrawingCommands } from '../drawing-commands';
 import { DrawingScene } from '../drawing-scene';
-import { DrawingState, IDLE, type Mode } from '../drawing-state';
-import { movableBends, shiftBend, shiftNodes } from '../model/displacement';
-import { NOTHING_DISPLACED } from '../model/drawn-network';
-import { isPipe, KIND_WORDS, nameOf } from '../../shared/element-words';
-import {
-  type Direction,
-  downstreamOf,
-  endOfWalk,
-  findByTag,
-  nearestInDirection,
-  nextEntering,
-  trapAbove,
-  upstreamOf,
-} from '../model/navigation';
-import { GRID } from '../../shared/placement';
+import { DrawingState, IDLE } from '../drawing-state';
+import type { Direction } from '../model/navigation';
 import { DeletePrompt } from './delete-prompt';
+import { ElementMoving } from './element-moving';
 import { NodePlacing } from './node-placing';
+import { PipeDrawing } from './pipe-drawing';
+import { ARROWS, WalkKeys } from './walk-keys';
 
-const ARROWS: Readonly<Record<string, Direction>> = {
-  ArrowLeft: 'left',
-  ArrowRight: 'right',
-  ArrowUp: 'up',
-  ArrowDown: 'down',
-};
-const STEPS: Readonly<Record<Direction, readonly [number, number]>> = {
-  left: [-1, 0],
-  right: [1, 0],
-  up: [0, -1],
-  down: [0, 1],
-};
 export const PLACE_KEYS: Readonly<Record<string, NodeKind>> = {
   t: 'trap',
   j: 'junction',
@@ -41,10 +20,12 @@ export const PLACE_KEYS: Readonly<Record<string, NodeKind>> = {
   u: 'pumpedInlet',
 };
 
-/** What zooms the view; the sheet is one. */
-export interface Zoomable {
+/** What moves the view and opens the menu; the sheet is one. */
+export interface SheetView {
   zoomBy(factor: number): void;
   fit(): void;
+  panBy(direction: Direction): void;
+  openMenu(): void;
 }
 
 /** The keyboard model of the drawing (`KeyList` says it to people): each key does one thing and says what it did. */
@@ -54,102 +35,81 @@ export class SheetKeys {
   private readonly scene = inject(DrawingScene);
   private readonly state = inject(DrawingState);
   private readonly commands = inject(DrawingCommands);
+  private readonly clipboard = inject(DrawingClipboard);
   private readonly deletePrompt = inject(DeletePrompt);
   private readonly placing = inject(NodePlacing);
+  private readonly pipes = inject(PipeDrawing);
+  private readonly moving = inject(ElementMoving);
+  private readonly walk = inject(WalkKeys);
 
   /** True when the key meant something here. Tab never does: it always leaves. */
-  handle(event: KeyboardEvent, view: Zoomable): boolean {
+  handle(event: KeyboardEvent, view: SheetView): boolean {
     if (event.key === 'Tab' || event.altKey) return false;
-    if (event.ctrlKey || event.metaKey) return this.chord(event);
+    if (event.key === 'ContextMenu' || (event.key === 'F10' && event.shiftKey)) {
+      view.openMenu();
+      return true;
+    }
+    if (event.ctrlKey || event.metaKey) return this.chord(event, view);
     const mode = this.state.mode();
     switch (mode.kind) {
       case 'piping':
-        return this.pipingKey(event, mode);
+        return this.pipes.handle(event, mode);
       case 'moving':
-        return this.movingKey(event, mode);
+        return this.moving.handle(event, mode);
       case 'placing':
       case 'idle':
-        return this.walkKey(event) || this.selectKey(event) || this.letterKey(event, view);
+        return this.walk.handle(event) || this.selectKey(event) || this.letterKey(event, view);
     }
   }
 
-  /** Starts a pipe at a node, by key or from the tray; without a node the first click or tag chooses it. */
-  startPipe(from: string | null): void {
-    this.state.mode.set({ kind: 'piping', from, to: null, typed: '', pointer: null });
-    const start =
-      from === null
-        ? 'Choose where the pipe starts'
-        : `Pipe from ${this.tagOf(from)}: choose its end with the arrows or type its tag`;
-    this.state.say(start);
-  }
-
-  private chord(event: KeyboardEvent): boolean {
+  private chord(event: KeyboardEvent, view: SheetView): boolean {
     const key = event.key.toLowerCase();
-    if (key === 'a') {
-      const { nodes, pipes } = this.scene.settled();
-      this.state.select(...nodes.keys(), ...pipes.keys());
-      this.state.say(`${String(nodes.size + pipes.size)} elements selected`);
+    const direction = ARROWS[event.key];
+    if (direction !== undefined) {
+      view.panBy(direction);
       return true;
     }
-    if (!this.store.mayDraw()) return false;
-    if (key === 'z' && !event.shiftKey) this.commands.undo();
-    else if (key === 'y' || key === 'z') this.commands.redo();
+    if (key === 'a') {
+      const { nodes, pipes } = this.scene.settled();
+      this.state.selectAll([...nodes.keys(), ...pipes.keys()]);
+      return true;
+    }
+    if (key === ' ') {
+      this.addFocused();
+      return true;
+    }
+    if (key === 'c' && !event.shiftKey) {
+      void this.clipboard.copy(this.actedOn());
+      return true;
+    }
+    return this.store.mayDraw() && this.drawChord(key, event.shiftKey);
+  }
+
+  private drawChord(key: string, shift: boolean): boolean {
+    if (key === 'z' && shift) this.commands.redo();
+    else if (shift) return false;
+    else if (key === 'z') this.commands.undo();
+    else if (key === 'y') this.commands.redo();
+    else if (key === 'x') void this.clipboard.cut(this.actedOn());
+    else if (key === 'v') void this.clipboard.paste();
+    else if (key === 'd') this.clipboard.duplicate(this.actedOn());
     else return false;
     return true;
   }
 
-  private walkKey(event: KeyboardEvent): boolean {
-    const next = this.nextFocus(event);
-    if (next === null) return false;
-    if (next === undefined) {
-      this.state.say('Nothing that way');
-      return true;
-    }
-    const before = this.focused();
-    if (event.shiftKey && event.key in ARROWS) {
-      this.state.selection.update(
-        (selected) => new Set([...selected, ...(before === undefined ? [] : [before]), next]),
-      );
-    }
-    this.state.focusOn(next);
-    return true;
-  }
-
-  /** Undefined when there is nothing there, null when the key is no walk. */
-  private nextFocus(event: KeyboardEvent): string | undefined | null {
-    const network = this.scene.settled();
-    const here = this.focused();
-    const { reversed } = this.scene;
-    const direction = ARROWS[event.key];
-    if (direction !== undefined) return here === undefined ? undefined : nearestInDirection(network, here, direction);
-    switch (event.key) {
-      case 'PageDown':
-        return here === undefined ? undefined : downstreamOf(network, here, reversed);
-      case 'PageUp':
-        if (here === undefined) return undefined;
-        return event.shiftKey ? nextEntering(network, here, reversed) : upstreamOf(network, here, reversed);
-      case 'End':
-        return endOfWalk(network, here, reversed);
-      case 'Home': {
-        const last = this.state.lastTrapId();
-        return last !== null && last !== here && network.nodes.has(last) ? last : trapAbove(network, here, reversed);
-      }
-      default:
-        return null;
-    }
-  }
-
   private selectKey(event: KeyboardEvent): boolean {
-    const here = this.focused();
+    const here = this.scene.tabStop();
     switch (event.key) {
       case ' ':
-        if (here === undefined) return true;
+        if (here === null) return true;
         if (this.state.selection().has(here) && this.state.selection().size === 1) this.state.select();
         else this.state.select(here);
-        this.state.say(`${this.tagOf(here)} ${this.state.selection().has(here) ? 'selected' : 'no longer selected'}`);
+        this.state.say(
+          `${this.scene.tagOf(here)} ${this.state.selection().has(here) ? 'selected' : 'no longer selected'}`,
+        );
         return true;
       case 'Enter':
-        if (here === undefined) return true;
+        if (here === null) return true;
         this.state.select(here);
         this.state.openFields();
         return true;
@@ -159,6 +119,15 @@ export class SheetKeys {
       default:
         return false;
     }
+  }
+
+  /** To what is selected, or out of it: what is picked need not lie side by side. */
+  private addFocused(): void {
+    const here = this.scene.tabStop();
+    if (here === null) return;
+    this.state.toggle(here);
+    const word = this.state.selection().has(here) ? 'selected too' : 'no longer selected';
+    this.state.say(`${this.scene.tagOf(here)} ${word}`);
   }
 
   private escape(): void {
@@ -171,7 +140,7 @@ export class SheetKeys {
     }
   }
 
-  private letterKey(event: KeyboardEvent, view: Zoomable): boolean {
+  private letterKey(event: KeyboardEvent, view: SheetView): boolean {
     const may = this.store.mayDraw();
     if (may && (event.key === 'Delete' || event.key === 'Backspace')) {
       void this.deletePrompt.ask(this.actedOn());
@@ -206,150 +175,31 @@ export class SheetKeys {
 
   private drawLetter(letter: string): boolean {
     const kind = PLACE_KEYS[letter];
-    const here = this.focused();
+    const here = this.scene.tabStop();
     if (kind !== undefined) {
       this.placing.besideFocus(kind);
       return true;
     }
-    if (letter === 'p') {
-      const onNode = here !== undefined && this.scene.settled().nodes.has(here);
-      if (onNode) this.startPipe(here);
-      else this.state.say('Go to the element that the pipe starts from first');
-      return true;
-    }
-    if (letter === 'm' && here !== undefined) {
-      this.startMove(here);
-      return true;
-    }
-    return false;
-  }
-
-  private startMove(here: string): void {
-    const { pipes } = this.scene.settled();
-    const selected = this.state.selection();
-    const ids = selected.has(here) ? [...selected] : [here];
-    const onBend = pipes.has(here) && ids.length === 1;
-    this.state.mode.set({ kind: 'moving', ids, bend: onBend ? 0 : -1, dx: 0, dy: 0 });
-    this.state.say(
-      onBend
-        ? `Moving bend 1 of ${this.tagOf(here)}; comma and full stop choose another, Enter sets it down`
-        : `Moving ${ids.length === 1 ? this.tagOf(here) : `${String(ids.length)} elements`}; Enter sets down, Escape puts back`,
-    );
-  }
-
-  private movingKey(event: KeyboardEvent, mode: Extract<Mode, { kind: 'moving' }>): boolean {
-    const direction = ARROWS[event.key];
-    if (direction !== undefined) {
-      const [x, y] = STEPS[direction];
-      const step = GRID * (event.shiftKey ? 10 : 1);
-      this.displace({ ...mode, dx: mode.dx + x * step, dy: mode.dy + y * step });
-      this.state.say(`${direction} ${String(step / GRID)}`);
-      return true;
-    }
-    switch (event.key) {
-      case 'Enter':
-        this.commands.settle();
+    switch (letter) {
+      case 'p':
+        if (here !== null && this.scene.settled().nodes.has(here)) this.pipes.start(here);
+        else this.state.say('Go to the element that the pipe starts from first');
         return true;
-      case 'Escape':
-        this.state.displaced.set(NOTHING_DISPLACED);
-        this.state.mode.set(IDLE);
-        this.state.say('Put back');
+      case 'm':
+        if (here !== null) this.moving.start(here);
         return true;
-      case ',':
-      case '.':
-        return this.otherBend(mode, event.key === ',' ? -1 : 1);
-      default:
-        return true;
-    }
-  }
-
-  private displace(mode: Extract<Mode, { kind: 'moving' }>): void {
-    const network = this.scene.settled();
-    const pipe = mode.bend < 0 ? undefined : network.pipes.get(mode.ids[0] ?? '');
-    this.state.mode.set(mode);
-    this.state.displaced.set(
-      pipe === undefined
-        ? shiftNodes(network, mode.ids, mode.dx, mode.dy)
-        : shiftBend(pipe, mode.bend, mode.dx, mode.dy),
-    );
-  }
-
-  private otherBend(mode: Extract<Mode, { kind: 'moving' }>, step: number): boolean {
-    const pipe = this.scene.settled().pipes.get(mode.ids[0] ?? '');
-    if (mode.bend < 0 || pipe === undefined) return true;
-    const count = movableBends(pipe).length;
-    const bend = (mode.bend + step + count) % count;
-    this.displace({ ...mode, bend, dx: 0, dy: 0 });
-    this.state.say(`Bend ${String(bend + 1)} of ${String(count)}`);
-    return true;
-  }
-
-  private pipingKey(event: KeyboardEvent, mode: Extract<Mode, { kind: 'piping' }>): boolean {
-    const network = this.scene.settled();
-    const direction = ARROWS[event.key];
-    if (direction !== undefined) {
-      const start = mode.to ?? mode.from;
-      const to = start === null ? undefined : nearestInDirection({ ...network, pipes: new Map() }, start, direction);
-      this.chooseEnd(mode, to === mode.from ? undefined : to, '');
-      return true;
-    }
-    switch (event.key) {
-      case 'Enter':
-        if (mode.from !== null && mode.to !== null) this.askPipe(mode.from, mode.to);
-        else this.state.say('Choose the end of the pipe first');
-        return true;
-      case 'Escape':
-        this.state.mode.set(IDLE);
-        this.state.say('No pipe drawn');
-        return true;
-      case 'Backspace':
-        this.chooseTyped(mode, mode.typed.slice(0, -1));
+      case 'b':
+        if (here !== null) this.moving.startBend(here);
         return true;
       default:
-        if (event.key.length === 1) this.chooseTyped(mode, mode.typed + event.key);
-        return true;
+        return false;
     }
-  }
-
-  private chooseTyped(mode: Extract<Mode, { kind: 'piping' }>, typed: string): void {
-    const nodes = [...this.scene.settled().nodes.values()]
-      .filter(({ id }) => id !== mode.from)
-      .map(({ node }) => ({ id: node.id, tag: node.tag }));
-    this.chooseEnd(mode, findByTag(nodes, typed), typed);
-  }
-
-  private chooseEnd(mode: Extract<Mode, { kind: 'piping' }>, to: string | undefined, typed: string): void {
-    this.state.mode.set({ ...mode, to: to ?? (typed === '' ? mode.to : null), typed });
-    if (to !== undefined) this.state.say(`To ${this.tagOf(to)}: Enter makes the pipe`);
-    else this.state.say(typed === '' ? 'Nothing that way' : `No tag starts with ${typed}`);
-  }
-
-  /** Both ends are chosen: the pipe's length and size are asked for. */
-  askPipe(from: string, to: string): void {
-    this.state.mode.set(IDLE);
-    this.state.draft.set({ kind: 'pipe', from, to });
-    this.state.say(`Pipe from ${this.tagOf(from)} to ${this.tagOf(to)}: give its length and size`);
-  }
-
-  private focused(): string | undefined {
-    return this.scene.tabStop() ?? undefined;
   }
 
   /** The selection, or the element with the keyboard where nothing is selected. */
   private actedOn(): ReadonlySet<string> {
     const selected = this.state.selection();
-    const here = this.focused();
-    return selected.size > 0 || here === undefined ? selected : new Set([here]);
-  }
-
-  private tagOf(id: string): string {
-    const { nodes, pipes } = this.scene.settled();
-    const element = nodes.get(id)?.node ?? pipes.get(id)?.pipe;
-    if (element === undefined) return id;
-    return isPipe(element)
-      ? `pipe ${nameOf(element)}`
-      : element.tag === undefined
-        ? `${KIND_WORDS[element.kind]} ${element.id}`
-        : element.tag;
+    const here = this.scene.tabStop();
+    return selected.size > 0 || here === null ? selected : new Set([here]);
   }
 }

@@ -1,5 +1,6 @@
 import { ChangeDetectionStrategy, Component, computed, input } from '@angular/core';
 import type { Position } from '@riseback/network';
+import type { Crossing } from '../model/crossings';
 import { shownBends } from '../model/drawn-network';
 import type { PipeView } from '../model/element-views';
 import { cutLine } from '../../shared/geometry';
@@ -28,6 +29,8 @@ export class PipeMark {
   readonly onWay = input(false);
   /** Bends may be dragged. */
   readonly bendable = input(false);
+  /** Where it passes over others. */
+  readonly crossings = input<readonly Crossing[]>([]);
   /** The bend that the keyboard moves; −1 for none. */
   readonly activeBend = input(-1);
 

@@ -1,0 +1,12 @@
+import type { NodeKind } from '@riseback/network';
+
+/** Prefixes of new ids, by kind. */
+export const ID_PREFIXES: Readonly<Record<NodeKind | 'pipe' | 'trapModel', string>> = {
+  trap: 'T',
+  junction: 'J',
+  receiver: 'R',
+  flashVessel: 'V',
+  pumpedInlet: 'P',
+  pipe: 'L',
+  trapModel: 'M',
+};
