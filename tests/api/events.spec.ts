@@ -1,5 +1,5 @@
 import type { Server } from 'node:http';
-import type { PeopleEvent, SavedBatch } from '@riseback/contracts';
+import type { PeopleEvent, SavedBatch, SolveEvent } from '@riseback/contracts';
 import { eq } from 'drizzle-orm';
 import { afterEach, beforeEach, describe, expect, it } from 'vitest';
 import { memberships, networks } from '../../server/src/platform/db/schema';
@@ -41,11 +41,17 @@ const peopleOf = (reader: EventReader) => (reader.of('people').at(-1)?.data as P
 const save = (version: number, elevationM: number, from: number) =>
   sendBatch(designer, id, version, batchOf([raise(elevationM, from)], 'raise')).expect(200);
 
+const isSolved = (data: unknown, version: number) => {
+  const solve = data as SolveEvent;
+  return solve.version === version && solve.state === 'finished';
+};
+
 describe('edits', () => {
   it('reach everyone who has the network open, with batch, author and id, and after them their solve', async () => {
     const viewer = await open(server.as('viewer'), { since: 1 });
     await save(1, 3, 0);
-    await viewer.until(() => viewer.of('solve').length >= 2, 'the edit and its solve');
+    const ended = () => viewer.of('solve').some(({ data }) => isSolved(data, 2));
+    await viewer.until(ended, 'the edit and its solve');
     expect(viewer.of('edit')).toMatchObject([
       {
         id: '2',
@@ -58,6 +64,7 @@ describe('edits', () => {
   });
 
   it('come after the state of the solve, which says no more than that', async () => {
+    await designer.get(`/api/networks/${id}/results`).expect(200);
     const viewer = await open(server.as('viewer'));
     await viewer.until(() => viewer.of('solve').length > 0, 'the state of the solve');
     expect(viewer.of('solve')[0]?.data).toEqual({

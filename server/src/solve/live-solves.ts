@@ -35,7 +35,15 @@ interface UnderWay {
   readonly pressures: Promise<Pressures | undefined>;
   /** Never rejects: what goes wrong is reported. */
   readonly whole: Promise<void>;
+  /** Somebody waits for the whole: its bands are begun at once. */
+  readonly hurry: () => void;
 }
+
+/**
+ * The bands are begun so long after the pressures are there, unless somebody asks for them: on a machine with two cores they would take
+ * one from the browser that is just painting the pressures, and from the solve of the next edit.
+ */
+const BANDS_AFTER_MS = 150;
 
 /**
  * Keeps every network solved: an accepted edit starts a solve, whose results are stored under the hash of what was
@@ -45,6 +53,8 @@ interface UnderWay {
 export class LiveSolves {
   /** Solves under way, by network and hash. */
   private readonly underWay = new Map<string, UnderWay>();
+  /** By key: the place of what was begun last under it. */
+  private readonly newest = new Map<string, string>();
 
   constructor(
     private readonly solves: SolveRepository,
@@ -79,12 +89,15 @@ export class LiveSolves {
       // twice: a solve that a newer version superseded is started again, under a key of its own, because someone asks for it
       for (let attempt = 1; attempt <= 2; attempt += 1) {
         const stored = this.solves.find(this.keyOf(input));
-        if (stored !== undefined) return stored;
-        const { pressures, whole } = this.start(`${input.networkId} ${input.solverHash}`, input);
+        // one that failed is being tried again
+        const tried = stored?.state === 'failed' && this.underWay.has(placeOf(input));
+        if (stored !== undefined && !tried) return stored;
+        const { pressures, whole, hurry } = this.start(placeOf(input), input);
         const first = await Promise.race([pressures, giveUp]);
         if (first === 'late') break;
         if (first === undefined) continue;
         if (awaited === 'pressures') return first;
+        hurry();
         // not started again when its bands are superseded: whoever waited so long has most likely gone on to the newer version
         await Promise.race([whole, giveUp]);
         break;
@@ -118,17 +131,27 @@ export class LiveSolves {
   }
 
   private start(key: string, input: VersionedInput): UnderWay {
-    const place = `${input.networkId} ${input.solverHash}`;
+    const place = placeOf(input);
     const present = this.underWay.get(place);
     if (present !== undefined) return present;
     const file = toFile(input.document);
     const job = { file, caseIds: caseIdsOf(file), partial: true };
+    this.newest.set(key, place);
+    const pause = new Pause();
     const pressures = this.solvePressures(key, input, job);
     const whole = pressures
-      .then((first) => (first === undefined ? undefined : this.solveBands(key, input, job, first)))
+      .then(async (first) => {
+        if (first === undefined) return;
+        await pause.end(BANDS_AFTER_MS);
+        // its own bands would call off those of the newer version
+        if (this.newest.get(key) === place) await this.solveBands(key, input, job, first);
+      })
       .catch(this.options.report)
-      .finally(() => this.underWay.delete(place));
-    const solve = { pressures, whole };
+      .finally(() => {
+        this.underWay.delete(place);
+        if (this.newest.get(key) === place) this.newest.delete(key);
+      });
+    const solve = { pressures, whole, hurry: () => pause.cutShort() };
     this.underWay.set(place, solve);
     return solve;
   }
@@ -181,6 +204,26 @@ export class LiveSolves {
 
   private keyOf({ networkId, solverHash }: Omit<VersionedInput, 'document'>): SolveInput {
     return { networkId, solverHash, engineVersion: this.options.engineVersion };
+  }
+}
+
+function placeOf({ networkId, solverHash }: VersionedInput): string {
+  return `${networkId} ${solverHash}`;
+}
+
+/** A wait that may be cut short, also before it has begun. */
+class Pause {
+  private cut: () => void = () => undefined;
+  private readonly over = new Promise<void>((resolve) => (this.cut = resolve));
+
+  cutShort(): void {
+    this.cut();
+  }
+
+  end(afterMs: number): Promise<void> {
+    // a server that stops does not wait for it
+    setTimeout(this.cut, afterMs).unref();
+    return this.over;
   }
 }
 

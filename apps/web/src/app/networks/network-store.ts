@@ -25,6 +25,9 @@ import { type Added, EditQueue } from './edit-queue';
 import { NetworkApi } from './network-api';
 import { UndoStack, type UndoStep } from './undo-stack';
 
+/** New pressures are painted before their bands are asked for, which the server then computes. */
+const PAINT_MS = 100;
+
 type Load = { status: 'loading' } | { status: 'ready'; network: Network } | { status: 'failed'; problem: Problem };
 
 export type SolveState =
@@ -286,7 +289,7 @@ export class NetworkStore {
         if (results.state === 'waiting') return timer(200).pipe(switchMap(ask));
         if (results.state === 'failed' || results.bandsToCome !== true) return EMPTY;
         bands = undefined;
-        return ask();
+        return timer(PAINT_MS).pipe(switchMap(ask));
       }),
       catchError((error: unknown) => of<NetworkResults>({ state: 'failed', version, problem: toProblem(error) })),
     );
