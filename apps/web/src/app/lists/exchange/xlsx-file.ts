@@ -1,7 +1,8 @@
+import { strToU8 } from 'fflate';
 import { type CellValue, readSheet } from 'read-excel-file/universal';
 import { blockOf, type ReadBlock, type SheetCell } from './block-text';
 import { guarded } from './formula-safety';
-import { readZip, storeZip, ZipRefused } from './zip-archive';
+import { readZip, writeZip, ZipRefused } from './zip-archive';
 
 /**
  * Reads the first sheet of a workbook. The archive is unpacked here, within limits, and handed on unpacked: the reader's own unpacking
@@ -9,10 +10,9 @@ import { readZip, storeZip, ZipRefused } from './zip-archive';
  */
 export async function readXlsx(file: ArrayBuffer): Promise<ReadBlock> {
   try {
-    const entries = await readZip(file, (name) => name.endsWith('.xml') || name.endsWith('.rels'));
-    if (!entries.some(({ name }) => name === 'xl/workbook.xml'))
-      return notRead('It is a zip archive, but no spreadsheet is in it.');
-    const rows = await readSheet(storeZip(entries).buffer);
+    const entries = readZip(new Uint8Array(file), (name) => name.endsWith('.xml') || name.endsWith('.rels'));
+    if (!('xl/workbook.xml' in entries)) return notRead('It is a zip archive, but no spreadsheet is in it.');
+    const rows = await readSheet(writeZip(entries, 0).buffer);
     return blockOf(rows.map((cells) => cells.map(textOf)));
   } catch (error) {
     return notRead(
@@ -27,7 +27,6 @@ export const XLSX_TYPE = 'application/vnd.openxmlformats-officedocument.spreadsh
 
 /** One sheet: headings in bold that stay in sight, texts as texts, numbers as numbers. */
 export function writeXlsx(name: string, rows: readonly (readonly SheetCell[])[]): Uint8Array<ArrayBuffer> {
-  const encoder = new TextEncoder();
   const parts: Readonly<Record<string, string>> = {
     '[Content_Types].xml': CONTENT_TYPES,
     '_rels/.rels': relations([['officeDocument', 'xl/workbook.xml']]),
@@ -39,7 +38,7 @@ export function writeXlsx(name: string, rows: readonly (readonly SheetCell[])[])
     'xl/styles.xml': STYLES,
     'xl/worksheets/sheet1.xml': sheetXml(rows),
   };
-  return storeZip(Object.entries(parts).map(([path, text]) => ({ name: path, bytes: encoder.encode(text) })));
+  return writeZip(Object.fromEntries(Object.entries(parts).map(([path, text]) => [path, strToU8(text)])));
 }
 
 function notRead(detail: string): ReadBlock {
