@@ -2,8 +2,9 @@ import { NonPhysicalInputError } from '@riseback/numerics';
 import type { FlashingFlow } from './flash-vapour';
 import { darcyFrictionFactor } from './friction-factor';
 import { logitOfLevel, sectionAtLogit, type LevelSection } from './level-section';
-import { STEADY_UP_TO_LEVEL, STRATIFIED_SLOPE_LIMIT, THINNEST_FILM_LEVEL } from './stratified-flow';
+import { STRATIFIED_SLOPE_LIMIT } from './stratified-flow';
 import { isCreep, leaveFactor, lnForceRatio, stratifiedForces, type StratifiedForces } from './stratified-forces';
+import { STEADY_UP_TO_LEVEL, THINNEST_FILM_LEVEL } from './stratified-level';
 import { waveGrowth, waveNumber, WAVES_FROM } from './wave-criterion';
 
 interface Rung {

@@ -1,18 +1,17 @@
-import { findRootBracketed, NonPhysicalInputError } from '@riseback/numerics';
+import { NonPhysicalInputError } from '@riseback/numerics';
 import type { FlashingFlow } from './flash-vapour';
 import { darcyFrictionFactor } from './friction-factor';
-import { FULLEST_LOGIT, logitOfLevel, sectionAtLogit, type LevelSection } from './level-section';
+import { sectionAtLogit, type LevelSection } from './level-section';
 import {
   isCreep,
   leaveFactor,
-  lnForceRatio,
   stratifiedForces,
   vapourFrictionPaM,
   velocityHeadPa,
   type FrictionLaw,
   type LiquidSurface,
-  type StratifiedForces,
 } from './stratified-forces';
+import { lowestLevel } from './stratified-level';
 
 /** Liquid along the bottom of a level or nearly level pipe, its vapour above. */
 export interface StratifiedFlow {
@@ -25,19 +24,6 @@ export interface StratifiedFlow {
 
 /** Taitel and Dukler's balance is used up to this angle either way: sin 10°. */
 export const STRATIFIED_SLOPE_LIMIT = Math.sin(Math.PI / 18);
-
-/** A film thinner than this share of the bore is taken at it: it changes the gradient by less than 1e-6 there. */
-export const THINNEST_FILM_LEVEL = 1e-5;
-const THINNEST_FILM = logitOfLevel(THINNEST_FILM_LEVEL);
-/**
- * Up to this level the pull on the liquid falls steadily with depth in level and falling runs, so a change of sign below it is the lowest
- * root. Above it, near the depth at which a channel carries most, the balance may turn back and have three roots.
- */
-export const STEADY_UP_TO_LEVEL = 0.88;
-const STEADY_UP_TO = logitOfLevel(STEADY_UP_TO_LEVEL);
-/** Search step in the logit where there may be several roots. */
-const SEARCH_STEP = 0.2;
-const LOGIT_TOLERANCE = 1e-9;
 
 /**
  * Level and friction of stratified flow by Taitel and Dukler's balance of forces, in dimensional form:
@@ -65,7 +51,7 @@ export function stratifiedFlow(
     throw new NonPhysicalInputError('stratifiedFlow', { quality, massFlowKgS, insideDiameterM, fallSlope });
   }
   const forces = stratifiedForces(flow, surface, friction);
-  const logit = isCreep(forces) ? undefined : lowestLevel(forces, fallSlope);
+  const logit = isCreep(forces) ? undefined : lowestLevel(forces);
   if (logit === undefined) return undefined;
   const section = sectionAtLogit(logit);
   const fittingsPaM = flow.lossCoefficientPerM * velocityHeadPa(forces.vapourSpeedMS, saturation.vapourDensityKgM3);
@@ -74,25 +60,4 @@ export function stratifiedFlow(
     gradientPaM: vapourFrictionPaM(forces, section) + fittingsPaM,
     leaveRatio: forces.vapourPull * leaveFactor(section),
   };
-}
-
-/** Lowest logit at which the forces balance, within the levels solved for; undefined for a full pipe. */
-function lowestLevel(forces: StratifiedForces, fallSlope: number): number | undefined {
-  const balance = (logit: number): number => lnForceRatio(forces, sectionAtLogit(logit));
-  if (balance(THINNEST_FILM) <= 0) return THINNEST_FILM;
-  let from = THINNEST_FILM;
-  if (fallSlope >= 0) {
-    if (balance(STEADY_UP_TO) <= 0) return root(THINNEST_FILM, STEADY_UP_TO);
-    from = STEADY_UP_TO;
-  }
-  while (from < FULLEST_LOGIT) {
-    const to = Math.min(FULLEST_LOGIT, from + SEARCH_STEP);
-    if (balance(to) <= 0) return root(from, to);
-    from = to;
-  }
-  return undefined;
-
-  function root(low: number, high: number): number {
-    return findRootBracketed(balance, low, high, { xTolerance: LOGIT_TOLERANCE, where: 'the stratified level' });
-  }
 }
