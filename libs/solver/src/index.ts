@@ -3,6 +3,7 @@ export { bandsLeftOut } from './banded-checks';
 export { CHECK_LIMITS, limitsInForce, type CheckLimit, type LimitsInForce } from './check-limits';
 export { plainText } from './finding-text';
 export { liftProfile, type ProfilePoint } from './lift-profile';
+export { liftProfileBands, type ProfileBand } from './lift-profile-bands';
 export { modulatedInletPressurePa } from './modulating-inlet';
 export type { GradientEvaluation } from './pipe-march';
 export type { ProblemError, Refusal } from './refusal';

@@ -68,7 +68,7 @@ function piecesWithPressure(
 }
 
 /** A walk ends at the first vessel, so what enters each of its pipes is what stands at the pipe's upstream node. */
-function flowOf({ result, upstreamResult, geometry }: WalkStep, ambientEnthalpyJKg: number): PipeFlow {
+export function flowOf({ result, upstreamResult, geometry }: WalkStep, ambientEnthalpyJKg: number): PipeFlow {
   return {
     massFlowKgS: Math.abs(result.massFlowKgS),
     inletEnthalpyJKg: upstreamResult.enthalpyJKg,

@@ -20,6 +20,7 @@ const VIEWS = [
   { path: 'lists', word: 'Lists' },
   { path: 'ledger', word: 'Lift & ledger' },
   { path: 'cases', word: 'Cases' },
+  { path: 'try', word: 'Try changes' },
   { path: 'method', word: 'Method' },
 ] as const;
 
