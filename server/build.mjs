@@ -4,6 +4,7 @@ import { createHash } from 'node:crypto';
 import { existsSync, mkdirSync, readdirSync, readFileSync, renameSync, rmSync, statSync, writeFileSync } from 'node:fs';
 import { join, relative } from 'node:path';
 import { brotliCompressSync, gzipSync } from 'node:zlib';
+import { demandSmallStart } from './initial-javascript.mjs';
 import { ensureInstalled, root } from './install.mjs';
 import { withLock } from './work-lock.mjs';
 
@@ -32,6 +33,7 @@ async function build(wanted, log) {
   mkdirSync(target, { recursive: true });
   try {
     await bothOrNeither(buildPages(join(target, 'web')), buildServer(join(target, 'server')));
+    demandSmallStart(join(target, 'web', 'browser'), log);
     compressPages(join(target, 'web', 'browser'));
     writeFileSync(join(target, '.riseback-build'), wanted);
     replaceDist(target);
