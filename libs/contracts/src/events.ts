@@ -5,7 +5,7 @@ import { SavedBatch } from './networks';
  * GET /api/networks/:networkId/events is a stream of server-sent events. Only `edit` carries an id, its version: what a
  * browser sends as Last-Event-ID after a lost connection is the last version that it has.
  */
-export const NETWORK_EVENTS = ['edit', 'solve', 'people', 'reload'] as const;
+export const NETWORK_EVENTS = ['edit', 'solve', 'people', 'plan', 'reload'] as const;
 
 /** `edit`: someone's batch was saved, also one's own. */
 export const EditEvent = SavedBatch;
@@ -29,6 +29,10 @@ export type PersonHere = z.infer<typeof PersonHere>;
 /** `people`: everyone who has the network open, oneself too. */
 export const PeopleEvent = z.object({ people: z.array(PersonHere) });
 export type PeopleEvent = z.infer<typeof PeopleEvent>;
+
+/** `plan`: the plan under the drawing was changed; which way, GET /api/networks/:networkId/plan says. */
+export const PlanEvent = z.object({ version: z.number().int() });
+export type PlanEvent = z.infer<typeof PlanEvent>;
 
 /** `reload`: too far behind to be told edit by edit; the network is to be read again. */
 export const ReloadEvent = z.object({ currentVersion: z.number().int() });

@@ -1,7 +1,8 @@
-import type { Person, Role } from '@riseback/contracts';
+import type { ImageType, Person, Role } from '@riseback/contracts';
 import type { NodeKind } from '@riseback/network';
 import { sql } from 'drizzle-orm';
 import {
+  blob,
   check,
   foreignKey,
   index,
@@ -32,6 +33,8 @@ const ROLES = allOf<Role>()(['viewer', 'commissioning', 'designer', 'reviewer', 
 const UNIT_SYSTEMS = allOf<Person['units']>()(['us', 'si']);
 const THEMES = allOf<Person['theme']>()(['system', 'light', 'dark']);
 const NODE_KINDS = allOf<NodeKind>()(['trap', 'junction', 'flashVessel', 'pumpedInlet', 'receiver']);
+const IMAGE_TYPES = allOf<ImageType>()(['image/png', 'image/jpeg']);
+const FILE_PURPOSES = ['plan'] as const;
 const SESSION_ENDS = ['signedOut', 'endedByOwner', 'passwordChanged', 'roleChanged', 'disabled', 'expired'] as const;
 const SOLVE_STATES = ['finished', 'failed'] as const;
 
@@ -308,6 +311,49 @@ export const gauges = sqliteTable(
     isJson('gauges_properties', 'properties'),
   ],
 );
+
+/** What came in as a file, with its bytes; `name` is only shown. */
+export const files = sqliteTable(
+  'files',
+  {
+    id: text('id').primaryKey(),
+    siteId: text('site_id')
+      .notNull()
+      .references(() => sites.id),
+    purpose: text('purpose', { enum: FILE_PURPOSES }).notNull(),
+    name: text('name').notNull(),
+    mediaType: text('media_type', { enum: IMAGE_TYPES }).notNull(),
+    sizeBytes: integer('size_bytes').notNull(),
+    sha256: text('sha256').notNull(),
+    content: blob('content', { mode: 'buffer' }).notNull(),
+    createdBy: text('created_by')
+      .notNull()
+      .references(() => people.id),
+    createdAt: text('created_at').notNull(),
+  },
+  (table) => [
+    index('files_site').on(table.siteId),
+    oneOf('files_purpose', 'purpose', FILE_PURPOSES),
+    oneOf('files_media_type', 'media_type', IMAGE_TYPES),
+    check('files_size_bytes', sql.raw('size_bytes = length(content)')),
+  ],
+);
+
+/** What lies under a drawing, and where. Without a file the plan was taken away; the row stays, so that versions go on. */
+export const plans = sqliteTable('plans', {
+  networkId: text('network_id')
+    .primaryKey()
+    .references(() => networks.id),
+  version: integer('version').notNull(),
+  fileId: text('file_id').references(() => files.id),
+  x: real('x').notNull(),
+  y: real('y').notNull(),
+  unitsPerPixel: real('units_per_pixel').notNull(),
+  metresPerUnit: real('metres_per_unit'),
+  opacity: real('opacity').notNull(),
+  widthPx: integer('width_px').notNull(),
+  heightPx: integer('height_px').notNull(),
+});
 
 /** Every accepted batch, for ever; version 1 is the creation. `solver_hash` is the network's after it. */
 export const edits = sqliteTable(

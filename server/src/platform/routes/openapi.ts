@@ -69,13 +69,18 @@ function describeRoute(route: Route): Json {
       : { security: [route.mutates ? { session: [], proof: [] } : { session: [] }] }),
     ...('anyOf' in route.rule ? { 'x-permission': route.rule.anyOf } : {}),
     parameters: [...pathParameters(route), ...queryParameters(route)],
-    ...(route.body === undefined
-      ? {}
-      : {
-          requestBody: { required: true, content: { 'application/json': { schema: schemaOf(route.body, 'input') } } },
-        }),
+    ...describeBody(route),
     responses: { ...Object.fromEntries(answers), default: PROBLEM_REF },
   };
+}
+
+function describeBody({ body, upload }: Route): Json {
+  if (upload !== undefined) {
+    // OpenAPI 3.1: a body of bytes is one without a schema
+    return { requestBody: { required: true, content: Object.fromEntries(upload.types.map((type) => [type, {}])) } };
+  }
+  if (body === undefined) return {};
+  return { requestBody: { required: true, content: { 'application/json': { schema: schemaOf(body, 'input') } } } };
 }
 
 function describeAnswer(answer: z.ZodType | string): Json {
