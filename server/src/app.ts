@@ -38,7 +38,7 @@ import { ReadinessCheck } from './platform/health/readiness';
 import { solvesOnePipe } from './platform/health/one-pipe';
 import { SolverProbe } from './platform/health/solver-probe';
 import { problemHandler } from './platform/http/problem-handler';
-import { apiRateLimit } from './platform/http/rate-limit';
+import { apiRateLimit, RATE_LIMITED } from './platform/http/rate-limit';
 import { requestLog } from './platform/http/request-log';
 import { securityHeaders } from './platform/http/security-headers';
 import { webApplication } from './platform/http/web-application';
@@ -53,7 +53,7 @@ import { SiteService } from './sites/site-service';
 import { ENGINE_VERSION } from './solve/engine-version';
 import { LiveSolves } from './solve/live-solves';
 import { ResultService } from './solve/result-service';
-import type { SolvePort } from './solve/solve-port';
+import type { FileSolver, SolvePort } from './solve/solve-port';
 import { SolveRepository } from './solve/solve-repository';
 import { solveRoutes } from './solve/solve-routes';
 
@@ -64,7 +64,7 @@ export interface AppParts {
   readonly log: Log;
   readonly newId: () => string;
   readonly now: () => Date;
-  readonly solver: SolvePort;
+  readonly solver: SolvePort & FileSolver;
   /** Absent = passwords are hashed in this thread. */
   readonly hasher?: Hasher;
   /** The browser build; undefined while developing, when the pages come from their own server. */
@@ -155,7 +155,7 @@ export function buildApp(parts: AppParts): App {
     res.set('Cache-Control', 'no-store');
     next();
   });
-  app.use('/api', apiRateLimit(config.requestsPerMinute, gate));
+  app.use(RATE_LIMITED, apiRateLimit(config.requestsPerMinute, gate));
   app.use(registerRoutes(routes, gate, new AccessRules(memberships)));
   app.use('/api', () => {
     throw notFound('There is nothing at this address of the API; /api/openapi.json lists what there is.');

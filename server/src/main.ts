@@ -1,6 +1,6 @@
 import { randomUUID } from 'node:crypto';
 import { existsSync, mkdirSync } from 'node:fs';
-import { createServer, type Server } from 'node:http';
+import type { Server } from 'node:http';
 import type { AddressInfo } from 'node:net';
 import { dirname } from 'node:path';
 import { fileURLToPath } from 'node:url';
@@ -16,6 +16,7 @@ import { openDatabase, UnusableDatabaseError } from './platform/db/database';
 import { DatabaseInUseError, holdExclusively } from './platform/exclusive-use';
 import { exitOnUncaught, shutDownGracefully } from './platform/graceful-shutdown';
 import { createLog, logDestination, logFileOf } from './platform/log';
+import { boundedServer } from './platform/http/http-server';
 import { Metrics } from './platform/metrics/metrics';
 import { serveMetrics } from './platform/metrics/metrics-server';
 import { SolveThreads } from './solve/solve-threads';
@@ -41,7 +42,7 @@ async function start(): Promise<void> {
   const db = openDatabase(config.databasePath, { report });
   const metrics = new Metrics(config.databasePath);
   const threads = new SolveThreads({ report: (error) => log.error({ err: error }, 'solver') });
-  const solver = metrics.timed(threads);
+  const solver = { ...metrics.timed(threads), ...metrics.timedFiles(threads) };
   const hasher = new PasswordThreads({
     count: HASHES_AT_ONCE,
     report: (error) => log.error({ err: error }, 'hashing'),
@@ -60,7 +61,7 @@ async function start(): Promise<void> {
 
   const ended = (madeAt: Date | undefined) => metrics.backupEnded(madeAt);
   const keeper = await keepBackups({ config, source: db.$client, now, log, ended });
-  const server = createServer(app.handler);
+  const server = boundedServer(app.handler);
   shutDownGracefully(server, log, app.endStreams, async () => {
     await Promise.all([threads.close(), hasher.close(), keeper.stop()]);
     db.$client.close();

@@ -190,7 +190,7 @@ describe('findSyntaxError', () => {
 
 describe('a fault of ours', () => {
   const secretive = (error: Error) =>
-    new TestServer({ solver: { solve: () => Promise.reject(error) }, config: { logLevel: 'info' } });
+    new TestServer({ fileSolver: { solveText: () => Promise.reject(error) }, config: { logLevel: 'info' } });
   const file = EMPTY_NETWORK;
 
   it.each([

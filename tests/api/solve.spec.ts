@@ -69,8 +69,8 @@ describe('POST /api/solve', () => {
 
   it('says 503 when the solve was stopped', async () => {
     const stopped = new TestServer({
-      solver: {
-        solve: () => Promise.resolve({ end: 'failed', detail: 'The solve took more than 10 s and was stopped.' }),
+      fileSolver: {
+        solveText: () => Promise.resolve({ end: 'failed', detail: 'The solve took more than 10 s and was stopped.' }),
       },
     });
     const refused = await stopped.as('viewer').post('/api/solve', SMALL).expect(503);

@@ -13,7 +13,8 @@ import { openDatabase, type Database } from '../../server/src/platform/db/databa
 import { memberships, people, sites } from '../../server/src/platform/db/schema';
 import { createLog } from '../../server/src/platform/log';
 import { solveCases } from '../../server/src/solve/solve-cases';
-import type { SolvePort } from '../../server/src/solve/solve-port';
+import type { FileSolver, SolvePort } from '../../server/src/solve/solve-port';
+import { solveText } from '../../server/src/solve/solve-text';
 
 export type HttpMethod = 'get' | 'post' | 'put' | 'patch' | 'delete';
 /** A person with each role at the site, one with a role elsewhere, and one with none anywhere. */
@@ -23,13 +24,15 @@ export const HOST = 'localhost:4310';
 const START = new Date('2026-03-02T08:00:00.000Z');
 
 /** Solves in the test's own thread. */
-const inThread: SolvePort = {
+const inThread: SolvePort & FileSolver = {
   solve: (_key, job) => Promise.resolve({ end: 'finished', outcomes: solveCases(job), solveMs: 1 }),
+  solveText: (_key, job) => Promise.resolve({ end: 'answered', answer: solveText(job) }),
 };
 
 export interface TestServerOptions {
   readonly config?: Partial<Config>;
   readonly solver?: SolvePort;
+  readonly fileSolver?: FileSolver;
   readonly hasher?: Hasher;
   readonly webFolder?: string;
   readonly heartbeatMs?: number;
@@ -68,7 +71,7 @@ export class TestServer {
       log: createLog(this.config, sink),
       newId: randomUUID,
       now,
-      solver: options.solver ?? inThread,
+      solver: solverOf(options),
       ...(options.hasher === undefined ? {} : { hasher: options.hasher }),
       webFolder: options.webFolder,
       ...(options.observe === undefined ? {} : { observe: options.observe }),
@@ -138,6 +141,13 @@ export class TestServer {
     for (const role of ROLES) grant(role, this.siteId, role);
     grant('outsider', this.otherSiteId, 'administrator');
   }
+}
+
+function solverOf({ solver = inThread, fileSolver = inThread }: TestServerOptions): SolvePort & FileSolver {
+  return {
+    solve: (key, job) => solver.solve(key, job),
+    solveText: (key, job) => fileSolver.solveText(key, job),
+  };
 }
 
 export class Client {

@@ -10,7 +10,9 @@ export interface ServerEvent {
 /** How soon a browser that lost its stream asks again. */
 const RETRY_MS = 1_000;
 /** A reader that leaves this much unread is gone or too slow; it asks again from the last event that it has. */
-const MOST_UNREAD_BYTES = 8 * 1024 * 1024;
+const MOST_UNREAD_BYTES = 2 * 1024 * 1024;
+/** What is on its way has so long to arrive; then a reader that does not read is dropped with all that it left. */
+const DRAIN_MS = 5_000;
 
 /** A response that stays open and carries server-sent events (HTML standard, 9.2). */
 export class EventStream {
@@ -48,10 +50,16 @@ export class EventStream {
     this.res.end();
   }
 
+  /** Ended before it is destroyed: what is on its way may arrive, so that the next request starts further on. */
+  private giveUp(): void {
+    this.res.end();
+    const dropped = setTimeout(() => this.res.destroy(), DRAIN_MS).unref();
+    this.res.once('close', () => clearTimeout(dropped));
+  }
+
   private write(text: string): void {
     if (!this.open) return;
-    // ended, not destroyed: what is on its way arrives, so that the next request starts further on
-    if (this.res.writableLength > MOST_UNREAD_BYTES) this.res.end();
+    if (this.res.writableLength > MOST_UNREAD_BYTES) this.giveUp();
     else this.res.write(text);
   }
 }

@@ -30,6 +30,8 @@ interface Room {
 const HEARTBEAT_MS = 15_000;
 /** A browser opens six connections to a host over HTTP/1.1; more streams than that are not a person's. */
 export const STREAMS_PER_SESSION = 6;
+/** Some computers, some tabs each. */
+export const STREAMS_PER_PERSON = 24;
 const STREAMS_IN_ALL = 2_000;
 
 /** The open streams of every network: who is told what, and for how long. */
@@ -42,7 +44,7 @@ export class NetworkStreams {
 
   /**
    * Makes room for one more stream before its answer begins.
-   * @throws ProblemError 429 the session has as many as it may; 503 the server has, or is stopping
+   * @throws ProblemError 429 the session or the person has as many as they may; 503 the server has, or is stopping
    */
   demandRoom(access: NetworkAccess): void {
     if (this.closed) throw unavailable('The server is stopping. Try again in a moment.');
@@ -50,6 +52,10 @@ export class NetworkStreams {
     const own = streams.filter((other) => other.access.person.sessionId === access.person.sessionId);
     if (own.length >= STREAMS_PER_SESSION) {
       throw tooManyRequests(`This session has ${own.length} streams open already; close one of them first.`, 15);
+    }
+    const ofPerson = streams.filter((other) => other.access.person.id === access.person.id);
+    if (ofPerson.length >= STREAMS_PER_PERSON) {
+      throw tooManyRequests(`You have ${ofPerson.length} streams open already; close some of them first.`, 15);
     }
     if (streams.length >= STREAMS_IN_ALL) throw unavailable('Too many people are connected. Try again later.');
   }

@@ -45,6 +45,9 @@ export interface NetworkAnnouncer {
 /** What one answer tells of a network's history: whoever is further behind asks again from there. */
 export const EDIT_PAGE = { most: 500, bytes: 4 * 1024 * 1024 } as const;
 
+/** Ten times the largest plant: each edit of one of 25,000 pipes takes some 200 ms, in which others wait. */
+const MOST_ELEMENTS = 25_000;
+
 export class NetworkService {
   private readonly documents = new DocumentCache();
   private readonly commits: SharedCommit;
@@ -207,6 +210,7 @@ export class NetworkService {
     const applied = applyBatch(this.documentOf(networks, head), batch.ops);
     if (!applied.ok) throw doesNotFit(applied.errors);
     const { document } = applied;
+    if (Math.max(document.nodes.size, document.pipes.size) > MOST_ELEMENTS) throw tooLarge(document);
     const version = head.version + 1;
     const solverHash = solverHashOf(document);
     const at = this.now();
@@ -304,6 +308,12 @@ function stale(networks: NetworkRepository, head: NetworkHead, onVersion: number
       currentVersion: head.version,
       batches: savedBatches(networks, head.id, onVersion).batches,
     } satisfies StaleVersion,
+  );
+}
+
+function tooLarge({ nodes, pipes }: NetworkDocument): Error {
+  return unprocessable(
+    `The network would have ${nodes.size} nodes and ${pipes.size} pipes; ${MOST_ELEMENTS} of each are the most. Make two networks of it, with a receiver where they meet.`,
   );
 }
 

@@ -29,6 +29,7 @@ export const PROBLEM_TYPES = {
   'forged-request': { status: 403, title: 'The request does not prove where it comes from' },
   'not-found': { status: 404, title: 'Not found' },
   'method-not-allowed': { status: 405, title: 'Method not allowed' },
+  'request-timeout': { status: 408, title: 'The request took too long to arrive' },
   conflict: { status: 409, title: 'In conflict with what is stored' },
   'stale-version': { status: 412, title: 'Changed by someone else meanwhile' },
   'payload-too-large': { status: 413, title: 'The request is too large' },
@@ -36,6 +37,7 @@ export const PROBLEM_TYPES = {
   unprocessable: { status: 422, title: 'Understood, but cannot be done' },
   'precondition-required': { status: 428, title: 'The version is missing' },
   'too-many-requests': { status: 429, title: 'Too many requests' },
+  'headers-too-large': { status: 431, title: 'The headers are too large' },
   internal: { status: 500, title: 'Something went wrong in the server' },
   unavailable: { status: 503, title: 'Not available at the moment' },
 } as const satisfies Record<string, { status: number; title: string }>;

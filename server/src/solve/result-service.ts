@@ -1,12 +1,10 @@
-import type { NetworkResults, SolveResult } from '@riseback/contracts';
-import { readNetworkFile } from '@riseback/network';
+import type { NetworkResults } from '@riseback/contracts';
 import type { NetworkAccess, PersonAccess } from '../platform/auth/access';
 import type { ReadyJson } from '../platform/http/ready-json';
-import { badRequest, ProblemError } from '../platform/problem';
+import { ProblemError, tooManyRequests } from '../platform/problem';
 import { solveFailed, type LiveSolves, type VersionedInput } from './live-solves';
 import { ResultTexts } from './result-texts';
-import { bandsInTime, caseIdsOf, withoutBands } from './solve-cases';
-import type { SolvePort } from './solve-port';
+import type { FileSolver } from './solve-port';
 
 /** What the results need of the networks. */
 export interface VersionedNetworks {
@@ -22,14 +20,17 @@ export interface ResultServiceOptions {
 }
 
 const WAIT_MS = 5_000;
+const MOST_OF_A_PERSON = 4;
 
 export class ResultService {
   private readonly texts = new ResultTexts();
+  /** Files being solved, by person. */
+  private readonly underWay = new Map<string, number>();
 
   constructor(
     private readonly networks: VersionedNetworks,
     private readonly live: LiveSolves,
-    private readonly port: SolvePort,
+    private readonly solver: FileSolver,
     private readonly options: ResultServiceOptions,
   ) {}
 
@@ -56,21 +57,32 @@ export class ResultService {
 
   /**
    * Solves one case of a file that is not stored: the given one, else its first, else the plain network.
-   * @throws ProblemError 400 for all that can be seen in the file without computing; 503 when the solve was stopped
+   * @returns the JSON text of a `SolveResult`
+   * @throws ProblemError 400 for all that can be seen in the file without computing; 429 for too many at once; 503 when the solve was
+   *   stopped
    */
-  async solveFile(_access: PersonAccess, json: unknown, caseId: string | undefined): Promise<SolveResult> {
-    const read = readNetworkFile(json);
-    if (!read.ok) throw badRequest('The network file has mistakes.', read.errors);
-    const [first = ''] = caseIdsOf(read.file);
-    const job = { file: read.file, caseIds: [caseId ?? first], partial: false };
-    const bands = bandsInTime(job);
-    const ended = await this.port.solve(this.options.newId(), { ...job, bands });
+  async solveText({ person }: PersonAccess, fileText: Uint8Array, caseId: string | undefined): Promise<Uint8Array> {
+    const ended = await this.inTurn(person.id, () => this.solver.solveText(this.options.newId(), { fileText, caseId }));
     if (ended.end === 'failed') throw new ProblemError(solveFailed(ended.detail));
-    const outcomes = ended.end === 'finished' ? ended.outcomes : [];
-    const [outcome] = bands ? outcomes : withoutBands(outcomes);
-    if (outcome === undefined)
+    if (ended.end === 'superseded')
       throw new ProblemError(solveFailed('The server is shutting down. Try again in a moment.'));
-    if (outcome.status === 'refused') throw new ProblemError({ ...outcome.problem, status: 400 });
-    return outcome.result;
+    if ('refused' in ended.answer) throw new ProblemError(ended.answer.refused);
+    return ended.answer.json;
+  }
+
+  /** A queue that one person fills would be everybody's wait. */
+  private async inTurn<T>(personId: string, solve: () => Promise<T>): Promise<T> {
+    const under = this.underWay.get(personId) ?? 0;
+    if (under >= MOST_OF_A_PERSON) {
+      throw tooManyRequests(`${String(under)} files of yours are being solved; wait for one of them.`, 1);
+    }
+    this.underWay.set(personId, under + 1);
+    try {
+      return await solve();
+    } finally {
+      const left = (this.underWay.get(personId) ?? 1) - 1;
+      if (left === 0) this.underWay.delete(personId);
+      else this.underWay.set(personId, left);
+    }
   }
 }

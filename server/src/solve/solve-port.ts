@@ -1,5 +1,6 @@
 import type { CaseOutcome } from '@riseback/contracts';
 import type { NetworkFile } from '@riseback/network';
+import type { TextAnswer, TextJob } from './solve-text';
 
 /** Which cases to solve; `caseIds` '' is the plain network. */
 export interface SolveJob {
@@ -22,4 +23,12 @@ export type SolveEnd =
 export interface SolvePort {
   /** @param key jobs of one key supersede each other: a network's id for its live solves */
   solve(key: string, job: SolveJob): Promise<SolveEnd>;
+}
+
+export type TextEnd =
+  { readonly end: 'answered'; readonly answer: TextAnswer } | Exclude<SolveEnd, { readonly end: 'finished' }>;
+
+/** Where files are solved that were not even read yet. */
+export interface FileSolver {
+  solveText(key: string, job: TextJob): Promise<TextEnd>;
 }

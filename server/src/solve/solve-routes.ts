@@ -1,11 +1,13 @@
 import { NetworkResults, SolveResult } from '@riseback/contracts';
 import * as z from 'zod';
 import { sendReadyJson } from '../platform/http/ready-json';
-import { NETWORK_FILE_LIMIT_BYTES, networkRoute, signedInRoute, type Route } from '../platform/routes/route-table';
+import { networkRoute, signedInRoute, SOLVED_FILE_LIMIT_BYTES, type Route } from '../platform/routes/route-table';
 import type { ResultService } from './result-service';
 
-/** Read by `readNetworkFile` in the service, whose mistakes point further than a schema's. */
-const AnyNetworkFile = z.unknown().meta({ description: 'A network file, format riseback-network version 1' });
+/** Read by `readNetworkFile` in the solver's thread, whose mistakes point further than a schema's. */
+const NetworkFileText = z
+  .instanceof(Uint8Array)
+  .meta({ description: 'A network file, format riseback-network version 1' });
 const CaseQuery = z.object({ case: z.string().max(64).optional() });
 const ResultsQuery = z.object({
   version: z.coerce.number().int().min(1).optional(),
@@ -20,11 +22,12 @@ export function solveRoutes(service: ResultService): Route[] {
       path: '/api/solve',
       summary: 'Solve one case of a network file without storing it',
       query: CaseQuery,
-      body: AnyNetworkFile,
-      bodyLimitBytes: NETWORK_FILE_LIMIT_BYTES,
+      body: NetworkFileText,
+      bodyAs: 'bytes',
+      bodyLimitBytes: SOLVED_FILE_LIMIT_BYTES,
       answers: { 200: SolveResult },
       handler: async ({ access, query, body, res }) => {
-        res.json((await service.solveFile(access, body, query.case)) satisfies SolveResult);
+        res.type('json').send(asBuffer(await service.solveText(access, body, query.case)));
       },
     }),
     networkRoute({
@@ -41,4 +44,9 @@ export function solveRoutes(service: ResultService): Route[] {
       },
     }),
   ];
+}
+
+/** The same bytes as what Express sends as it is. */
+function asBuffer({ buffer, byteOffset, byteLength }: Uint8Array): Buffer {
+  return Buffer.from(buffer, byteOffset, byteLength);
 }

@@ -1,14 +1,15 @@
 import type { Worker } from 'node:worker_threads';
 import { startWorker } from '../platform/start-worker';
-import type { SolveEnd, SolveJob, SolvePort } from './solve-port';
+import type { FileSolver, SolveEnd, SolveJob, SolvePort, TextEnd } from './solve-port';
+import type { TextJob } from './solve-text';
 
 /** What the worker posts back; `broke` carries the error's text for the log. */
 export type SolveAnswer =
-  | { readonly jobId: number; readonly ended: Exclude<SolveEnd, { end: 'failed' }> }
+  | { readonly jobId: number; readonly ended: Exclude<SolveEnd | TextEnd, { end: 'failed' }> }
   | { readonly jobId: number; readonly broke: string };
 export interface SolveMessage {
   readonly jobId: number;
-  readonly job: SolveJob;
+  readonly job: SolveJob | TextJob;
 }
 /** Nobody waits for this job any longer: the worker leaves off at its next case. */
 export interface DropMessage {
@@ -26,8 +27,8 @@ export interface SolveThreadOptions {
 }
 
 interface Waiting {
-  readonly job: SolveJob;
-  readonly resolve: (end: SolveEnd) => void;
+  readonly job: SolveJob | TextJob;
+  readonly resolve: (end: SolveEnd | TextEnd) => void;
 }
 interface Running extends Waiting {
   readonly key: string;
@@ -48,7 +49,7 @@ const BUSY = 'The solver has too much to do at the moment. Try again in a few se
  * the newest is done. A worker that overruns its time is ended and a new one started: an endless solve can be stopped in
  * no other way.
  */
-export class SolveThread implements SolvePort {
+export class SolveThread implements SolvePort, FileSolver {
   private readonly waiting = new Map<string, Waiting>();
   private readonly limitMs: number;
   private readonly memoryMb: number;
@@ -72,6 +73,15 @@ export class SolveThread implements SolvePort {
   }
 
   solve(key: string, job: SolveJob): Promise<SolveEnd> {
+    // the worker answers each kind of job with its own kind of end
+    return this.enqueue(key, job) as Promise<SolveEnd>;
+  }
+
+  solveText(key: string, job: TextJob): Promise<TextEnd> {
+    return this.enqueue(key, job) as Promise<TextEnd>;
+  }
+
+  private enqueue(key: string, job: SolveJob | TextJob): Promise<SolveEnd | TextEnd> {
     if (this.closed) return Promise.resolve({ end: 'superseded' });
     const earlier = this.waiting.get(key);
     if (earlier === undefined && this.waiting.size >= MOST_WAITING)
@@ -149,7 +159,7 @@ export class SolveThread implements SolvePort {
     this.next();
   }
 
-  private finish(end: SolveEnd): void {
+  private finish(end: SolveEnd | TextEnd): void {
     if (this.running === undefined) return;
     clearTimeout(this.running.timer);
     this.running.resolve(end);

@@ -3,6 +3,9 @@ import { ipKeyGenerator, rateLimit } from 'express-rate-limit';
 import type { SessionGate } from '../auth/session-gate';
 import { tooManyRequests } from '../problem';
 
+/** All but /healthz, which costs nothing and must answer whoever supervises the process. */
+export const RATE_LIMITED = ['/api', '/readyz'];
+
 const WINDOW_MS = 60_000;
 /** Someone not signed in has little to ask for. */
 const ANONYMOUS_SHARE = 0.1;

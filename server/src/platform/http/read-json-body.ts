@@ -1,6 +1,6 @@
-import express, { type Request, type Response } from 'express';
+import express, { type Request, type RequestHandler, type Response } from 'express';
 import { badRequest, payloadTooLarge, type ProblemError, unsupportedMediaType } from '../problem';
-import { findSyntaxError } from './json-syntax';
+import { notJson } from './json-text';
 
 /** body-parser's own errors carry these. */
 interface BodyParserError {
@@ -9,20 +9,40 @@ interface BodyParserError {
 }
 
 /**
- * The JSON body of a request, read only after its access rule has passed, so that nobody can make the server read 32 MB
+ * The JSON body of a request, read only after its access rule has passed, so that nobody can make the server read a network file
  * without a right to send them.
  * @throws ProblemError 400 not JSON, 413 over the limit, 415 another kind of content
  */
 export async function readJsonBody(req: Request, res: Response, limitBytes: number): Promise<unknown> {
-  const hasBody = req.headers['content-length'] !== undefined || req.headers['transfer-encoding'] !== undefined;
+  demandJson(req);
+  // `strict: false`: a bare number is JSON; saying what is expected instead is the schema's business.
+  return read(req, res, express.json({ limit: limitBytes, strict: false, type: () => true }), limitBytes);
+}
+
+/** As `readJsonBody`, but unpacked only: whoever gets it reads it where that holds up nobody. */
+export async function readBodyBytes(req: Request, res: Response, limitBytes: number): Promise<Uint8Array> {
+  demandJson(req);
+  const charset = /;\s*charset\s*=\s*"?([^";\s]+)/i.exec(req.get('content-type') ?? '')?.[1];
+  if (charset !== undefined && charset.toLowerCase() !== 'utf-8') throw notUtf8();
+  const body = await read(req, res, express.raw({ limit: limitBytes, type: () => true }), limitBytes);
+  return body instanceof Uint8Array ? body : new Uint8Array();
+}
+
+function hasBody(req: Request): boolean {
+  const sends = req.headers['content-length'] !== undefined || req.headers['transfer-encoding'] !== undefined;
+  return sends && req.headers['content-length'] !== '0';
+}
+
+function demandJson(req: Request): void {
   const isJson = Boolean(req.is(['application/json', 'application/*+json']));
-  if (hasBody && req.headers['content-length'] !== '0' && !isJson) {
+  if (hasBody(req) && !isJson) {
     throw unsupportedMediaType('Send the body as JSON, with the header Content-Type: application/json.');
   }
+}
+
+async function read(req: Request, res: Response, parser: RequestHandler, limitBytes: number): Promise<unknown> {
   await new Promise<void>((resolve, reject) => {
-    // `strict: false`: a bare number is JSON; saying what is expected instead is the schema's business.
-    const read = express.json({ limit: limitBytes, strict: false, type: () => true });
-    read(req, res, (error?: unknown) => {
+    void parser(req, res, (error?: unknown) => {
       if (error === undefined) resolve();
       else reject(isBodyParserError(error) ? problemOfBody(error, limitBytes) : (error as Error));
     });
@@ -40,14 +60,14 @@ function problemOfBody(error: BodyParserError, limitBytes: number): ProblemError
       return payloadTooLarge(`The body may hold ${String(limitBytes / (1024 * 1024))} MB at most.`);
     case 'encoding.unsupported':
     case 'charset.unsupported':
-      return unsupportedMediaType('Send the body as UTF-8, plain or compressed with gzip.');
-    case 'entity.parse.failed': {
-      const place = findSyntaxError(error.body ?? '');
-      const where =
-        place === undefined ? '' : `: the mistake is at line ${String(place.line)}, column ${String(place.column)}`;
-      return badRequest(`The body is not JSON${where}.`, [{ pointer: '', detail: `not JSON${where}` }]);
-    }
+      return notUtf8();
+    case 'entity.parse.failed':
+      return notJson(error.body ?? '');
     default:
       return badRequest('The body did not arrive whole.');
   }
+}
+
+function notUtf8(): ProblemError {
+  return unsupportedMediaType('Send the body as UTF-8, plain or compressed with gzip.');
 }

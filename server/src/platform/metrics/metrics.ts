@@ -2,7 +2,7 @@ import { statfsSync, statSync } from 'node:fs';
 import { dirname } from 'node:path';
 import type { RequestHandler } from 'express';
 import { collectDefaultMetrics, Counter, Gauge, Histogram, Registry } from 'prom-client';
-import type { SolveEnd, SolvePort } from '../../solve/solve-port';
+import type { FileSolver, SolvePort } from '../../solve/solve-port';
 
 /** From a read out of memory to a solve that takes all the time it may. */
 const REQUEST_BUCKETS_S = [0.002, 0.005, 0.01, 0.025, 0.05, 0.1, 0.25, 0.5, 1, 5, 10];
@@ -73,14 +73,18 @@ export class Metrics {
 
   /** The same solver, timed. */
   timed(solver: SolvePort): SolvePort {
-    return {
-      solve: async (key, job): Promise<SolveEnd> => {
-        const stop = this.solves.startTimer();
-        const ended = await solver.solve(key, job);
-        stop({ end: ended.end });
-        return ended;
-      },
-    };
+    return { solve: (key, job) => this.time(() => solver.solve(key, job)) };
+  }
+
+  timedFiles(solver: FileSolver): FileSolver {
+    return { solveText: (key, job) => this.time(() => solver.solveText(key, job)) };
+  }
+
+  private async time<End extends { readonly end: string }>(solve: () => Promise<End>): Promise<End> {
+    const stop = this.solves.startTimer();
+    const ended = await solve();
+    stop({ end: ended.end === 'answered' ? 'finished' : ended.end });
+    return ended;
   }
 
   backupEnded(madeAt: Date | undefined): void {

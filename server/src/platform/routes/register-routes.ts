@@ -2,7 +2,7 @@ import { Router, type Request, type Response } from 'express';
 import type { AccessRules, SignedInPerson } from '../auth/access';
 import type { SessionGate } from '../auth/session-gate';
 import { parseRequest } from '../http/parse-request';
-import { readJsonBody } from '../http/read-json-body';
+import { readBodyBytes, readJsonBody } from '../http/read-json-body';
 import { methodNotAllowed } from '../problem';
 import type { Route } from './route-table';
 
@@ -53,7 +53,8 @@ function accessOf(route: Route, rules: AccessRules, req: Request, person: Signed
 
 async function bodyOf(route: Route, req: Request, res: Response): Promise<unknown> {
   if (route.body === undefined) return undefined;
-  return parseRequest(route.body, await readJsonBody(req, res, route.bodyLimitBytes), 'body');
+  const read = route.bodyAs === 'bytes' ? readBodyBytes : readJsonBody;
+  return parseRequest(route.body, await read(req, res, route.bodyLimitBytes), 'body');
 }
 
 function methodsByPath(routes: readonly Route[]): Map<string, string[]> {

@@ -13,8 +13,10 @@ export type RouteRule =
   | { readonly kind: 'network'; readonly anyOf: readonly Permission[] };
 
 export const BODY_LIMIT_BYTES = 1024 * 1024;
-/** A file of 50,000 pipes is about 20 MB. */
-export const NETWORK_FILE_LIMIT_BYTES = 32 * 1024 * 1024;
+/** A file of 10,000 pipes, about: to read it and check it takes some 150 ms, which is as long as other requests may be kept waiting. */
+export const NETWORK_FILE_LIMIT_BYTES = 2 * 1024 * 1024;
+/** Read and checked in the solver's thread: some 30,000 pipes. */
+export const SOLVED_FILE_LIMIT_BYTES = 8 * 1024 * 1024;
 
 /** The answers of a route other than problems: a schema, or words for one that carries no JSON. */
 export type Answers = Readonly<Record<number, z.ZodType | string>>;
@@ -47,6 +49,8 @@ interface RouteDefinition<
   readonly answers: Answers;
   /** Default 1 MB. */
   readonly bodyLimitBytes?: number;
+  /** `bytes`: the handler gets the JSON unread, to have it read in another thread. */
+  readonly bodyAs?: 'json' | 'bytes';
   readonly handler: (
     context: HandlerContext<Access, z.output<Params>, z.output<Query>, z.output<Body>>,
   ) => void | Promise<void>;
@@ -102,6 +106,9 @@ class Route {
   }
   get bodyLimitBytes(): number {
     return this.definition.bodyLimitBytes ?? BODY_LIMIT_BYTES;
+  }
+  get bodyAs(): 'json' | 'bytes' {
+    return this.definition.bodyAs ?? 'json';
   }
   /** Whether it may change something, and so must prove where it comes from. */
   get mutates(): boolean {
