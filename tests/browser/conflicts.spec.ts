@@ -1,6 +1,6 @@
 import AxeBuilder from '@axe-core/playwright';
 import type { Browser, BrowserContext, Page } from '@playwright/test';
-import { demoNetworkPath, savedAndSolved, signIn } from './people';
+import { copyOfDemo, savedAndSolved, signIn } from './people';
 import { expect, test } from './violations';
 
 /** From the end of one person's typing until the other sees it. */
@@ -9,18 +9,6 @@ const WITHIN_MS = 1_000;
 const FIRST = 'TR1';
 const SECOND = 'TR2';
 
-/** The demo is for every test: each test here works on a copy of its own. */
-async function copyOfDemo(page: Page, name: string): Promise<string> {
-  const demo = await demoNetworkPath(page);
-  const file = (await (await page.request.get(`/api/networks/${idOf(demo)}/file`)).json()) as object;
-  const token = (await page.context().cookies()).find((cookie) => cookie.name === 'XSRF-TOKEN')?.value ?? '';
-  const made = await page.request.post(`/api${demo.replace(/\/[^/]*$/, '')}`, {
-    headers: { 'X-XSRF-TOKEN': decodeURIComponent(token) },
-    data: { ...file, name },
-  });
-  expect(made.status()).toBe(201);
-  return demo.replace(/[^/]*$/, ((await made.json()) as { id: string }).id);
-}
 const idOf = (path: string) => path.split('/').at(-1) ?? '';
 
 async function openAs(

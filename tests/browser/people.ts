@@ -24,6 +24,19 @@ export async function demoNetworkPath(page: Page): Promise<string> {
   return `/sites/${site.id}/networks/${demo.id}`;
 }
 
+/** The demo is for every test: one that changes a network works on a copy of its own. */
+export async function copyOfDemo(page: Page, name: string): Promise<string> {
+  const demo = await demoNetworkPath(page);
+  const file = (await (await page.request.get(`/api/networks/${demo.split('/').at(-1) ?? ''}/file`)).json()) as object;
+  const token = (await page.context().cookies()).find((cookie) => cookie.name === 'XSRF-TOKEN')?.value ?? '';
+  const made = await page.request.post(`/api${demo.replace(/\/[^/]*$/, '')}`, {
+    headers: { 'X-XSRF-TOKEN': decodeURIComponent(token) },
+    data: { ...file, name },
+  });
+  expect(made.status()).toBe(201);
+  return demo.replace(/[^/]*$/, ((await made.json()) as { id: string }).id);
+}
+
 /** Makes an empty network at the demo site through the pages and stands on its drawing. */
 export async function openEmptyNetwork(page: Page, name: string): Promise<void> {
   await page.getByRole('link', { name: /Tern Quay Cannery/ }).click();

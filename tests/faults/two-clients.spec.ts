@@ -10,7 +10,7 @@ import { toDocument } from '../../apps/web/src/app/networks/stored-document';
 import { DEEDS, opsOf, START } from '../../apps/web/src/app/networks/testing/random-deeds';
 import { startServer, type ServerProcess } from './server-process';
 import { FULL, randomFrom, seedOfRun } from './test-form';
-import { Ledger, numbersSaved } from './two-clients/ledger';
+import { DRAFT_WITHIN_MS, Ledger, numbersSaved } from './two-clients/ledger';
 import { createNetwork, personOf, prepareBrowser, Tab, until } from './two-clients/tab';
 import { type Receipts, type Server, Wire } from './two-clients/wire';
 
@@ -231,7 +231,7 @@ async function restartServer({ databasePath }: Trial): Promise<void> {
 async function pause({ random }: Trial): Promise<void> {
   const kind = random();
   if (kind < 0.4) return;
-  await new Promise((resolve) => setTimeout(resolve, kind < 0.95 ? random() * 50 : 320));
+  await new Promise((resolve) => setTimeout(resolve, kind < 0.97 ? random() * 50 : DRAFT_WITHIN_MS + 50));
 }
 
 /** Every network up, every draft brought in, every choice made, everything saved. */

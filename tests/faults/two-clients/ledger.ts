@@ -2,8 +2,13 @@ import { applyBatch, type EditOp, type NetworkDocument } from '@riseback/network
 import type { Unsaved } from '../../../apps/web/src/app/networks/queue-state';
 import type { Tab } from './tab';
 
-/** Work that is younger than this when its tab crashes may be lost: so long a draft may take to the device. */
-const DRAFT_WITHIN_MS = 300;
+/**
+ * Work that is younger than this when its tab crashes may be lost: "at most the last second". A draft is due after 300 ms, which
+ * tests/browser/drafts.spec.ts measures; here a busy machine may take longer.
+ */
+export const DRAFT_WITHIN_MS = 1_000;
+
+const OFFER = 'an offer';
 
 /** Where each typed value stands. */
 type Screen = ReadonlyMap<number, string>;
@@ -22,6 +27,8 @@ export class Ledger {
   /** When its person last put it on a screen. */
   private readonly typedAt = new Map<number, number>();
   private readonly onScreen = new Map<Tab, Screen>();
+  /** Who brought it in. */
+  private readonly takers = new Map<number, Tab>();
   /** Where each value went, for who has to find out why one was dropped. */
   private readonly trails = new Map<number, string[]>();
 
@@ -54,8 +61,10 @@ export class Ledger {
   /** Whatever happened since the last look was not this person's doing. */
   look(tab: Tab, meanwhile = ''): void {
     const after = this.screenOf(tab);
-    for (const [value, where] of this.onScreen.get(tab) ?? [])
-      if (!after.has(value)) this.owed.set(value, `left ${where} ${meanwhile}`);
+    for (const [value, where] of this.onScreen.get(tab) ?? []) {
+      if (after.has(value) || (where === OFFER && this.takenBy(tab, value))) continue;
+      this.owed.set(value, `left ${where} ${meanwhile}`);
+    }
     this.show(tab, after, meanwhile);
   }
 
@@ -77,11 +86,18 @@ export class Ledger {
     this.show(next, after, 'opened');
   }
 
+  /** What two tabs of a person offer goes into one of them, and from then on is that one's to hold. */
+  private takenBy(tab: Tab, value: number): boolean {
+    const taker = this.takers.get(value);
+    return taker !== undefined && taker !== tab;
+  }
+
   private show(tab: Tab, after: Screen, how: string): void {
     const before = this.onScreen.get(tab);
     for (const value of new Set([...(before?.keys() ?? []), ...after.keys()])) {
       const [from = 'nowhere', to = 'nowhere'] = [before?.get(value), after.get(value)];
       if (from === to) continue;
+      if (from === OFFER && to !== 'nowhere') this.takers.set(value, tab);
       this.trails.set(value, [...this.trailOf(value), `${tab.person.name} at ${Date.now()}, ${how}: ${from} to ${to}`]);
     }
     this.onScreen.set(tab, after);
@@ -96,7 +112,7 @@ export class Ledger {
         for (const value of Object.values(held)) collect(where, value);
     };
     for (const { draft } of keeper.offered()) {
-      collect('an offer', [shownBy(draft), draft.conflicts.map(({ mine, whole }) => [mine, whole])]);
+      collect(OFFER, [shownBy(draft), draft.conflicts.map(({ mine, whole }) => [mine, whole])]);
     }
     for (const { batch } of queue.refused()) collect('what was refused', batch.ops);
     for (const { place, mine, whole } of store.conflicts())

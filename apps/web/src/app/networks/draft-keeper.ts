@@ -69,9 +69,9 @@ export class DraftKeeper {
     );
   }
 
-  /** Writes at once what is waiting to be written: the tab may be about to end. */
+  /** Writes at once: the tab may be about to end. */
   flush(): void {
-    if (this.timer !== undefined) this.write();
+    if (this.queue.unsaved() !== null) this.write();
   }
 
   /** Once and in one tab only: what is brought in twice would add everything twice. */

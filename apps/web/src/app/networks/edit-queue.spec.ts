@@ -2,7 +2,7 @@ import { HttpTestingController, provideHttpClientTesting } from '@angular/common
 import { provideHttpClient } from '@angular/common/http';
 import { TestBed } from '@angular/core/testing';
 import type { Network, SavedBatch } from '@riseback/contracts';
-import { type EditOp, setOp, type NetworkDocument } from '@riseback/network';
+import { type EditOp, removalOps, setOp, type NetworkDocument } from '@riseback/network';
 import { beforeEach, describe, expect, it } from 'vitest';
 import { EditQueue } from './edit-queue';
 import { UndoStack } from './undo-stack';
@@ -215,6 +215,18 @@ describe('EditQueue', () => {
     expect(sent.request.body).toEqual(pending[2]);
     expect([elevationOf('J1'), elevationOf('J2')]).toEqual([30, 6]);
     expect(queue.conflicts()).toMatchObject([{ mine: { value: 5 } }]);
+  });
+
+  it('asks before work that is brought in removes what was changed here just now', async () => {
+    const base = present();
+    const removal = { batchId: crypto.randomUUID(), label: 'left behind', ops: removalOps(base, { nodes: ['J1'] }) };
+    queue.add('just now', [elevation('J1', 5)]);
+    server.expectOne(EDITS);
+    const brought = queue.bringIn({ networkId: 'n1', base, version: 7, pending: [removal], conflicts: [] }, []);
+    server.expectOne(`${EDITS}?since=7`).flush([]);
+    await brought;
+    expect(elevationOf('J1')).toBe(5);
+    expect(queue.conflicts()).toMatchObject([{ who: 'You, since', place: { id: 'J1' }, mine: { there: false } }]);
   });
 
   it('keeps the edit through a failing server and sends the same batch again', async () => {

@@ -26,6 +26,9 @@ export type Added =
   | { readonly ok: true; readonly inverse: EditOp[]; readonly batchId: string; readonly version: number }
   | { readonly ok: false; readonly reasons: string[] };
 
+/** Who stands in the way of a draft that is older than what its own author did next. */
+const YOU_SINCE = 'You, since';
+
 /** base + pending = present, always by `applyBatch`; one batch is in flight at a time (docs/data.md, "The client"). */
 @Injectable()
 export class EditQueue {
@@ -230,7 +233,16 @@ export class EditQueue {
     const touches = touchesOf(work.others, (batch) => this.authorOf(batch));
     for (const [key, touch] of touches) this.touches.set(key, touch);
     const others = [...new Set(work.others.map((batch) => this.authorOf(batch)))].join(', ');
-    const replayed = replayOver({ ...work, touches, others: others === '' ? 'You, since' : others });
+    // what this tab has not saved yet is no less in the way than what was saved
+    const own = touchesOf(
+      ahead.map((batch) => ({ ...batch, version: state.version })),
+      () => YOU_SINCE,
+    );
+    const replayed = replayOver({
+      ...work,
+      touches: new Map([...touches, ...own]),
+      others: others === '' ? YOU_SINCE : others,
+    });
     this.undoStack.follow(replayed.fates, replayed.renamed);
     // one that is open already stays, whatever else was wanted at its place since
     const conflicts = new Map(state.conflicts.map((conflict) => [conflictKey(conflict), conflict]));

@@ -1,4 +1,4 @@
-import { ChangeDetectionStrategy, Component, effect, inject, input, untracked } from '@angular/core';
+import { ChangeDetectionStrategy, Component, DOCUMENT, effect, inject, input, untracked } from '@angular/core';
 import { Title } from '@angular/platform-browser';
 import { RouterLink, RouterLinkActive, RouterOutlet } from '@angular/router';
 import { BANDS_TO_COME } from '../shared/bands-to-come';
@@ -51,7 +51,7 @@ const VIEWS = [
   host: {
     '(window:beforeunload)': 'warnBeforeLoss($event)',
     '(window:online)': 'saveAfterOffline()',
-    '(window:pagehide)': 'drafts.flush()',
+    '(window:pagehide)': 'keepWhatIsTyped()',
     '(document:visibilitychange)': 'drafts.flush()',
   },
   templateUrl: './network-page.html',
@@ -62,6 +62,7 @@ export class NetworkPage {
   protected readonly drafts = inject(DraftKeeper);
   private readonly company = inject(Company);
   private readonly title = inject(Title);
+  private readonly page = inject(DOCUMENT);
 
   readonly siteId = input.required<string>();
   readonly networkId = input.required<string>();
@@ -112,8 +113,16 @@ export class NetworkPage {
     if (active) link.scrollIntoView({ block: 'nearest', inline: 'nearest' });
   }
 
+  /** A field is taken over when it is left, and the tab's end leaves it; then on to the device with all that is unsaved. */
+  protected keepWhatIsTyped(): void {
+    const field = this.page.activeElement;
+    if (field instanceof HTMLElement) field.blur();
+    this.drafts.flush();
+  }
+
   /** The browser asks before a tab with unsaved edits is closed. */
   protected warnBeforeLoss(event: BeforeUnloadEvent): void {
+    this.keepWhatIsTyped();
     if (this.store.saveState() !== 'saved') event.preventDefault();
   }
 }

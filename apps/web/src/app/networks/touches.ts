@@ -10,7 +10,10 @@ export interface Touch {
 }
 
 /** What others' batches touched: each element, and each of its keys that was set. */
-export function touchesOf(batches: readonly SavedBatch[], nameOf: (batch: SavedBatch) => string): Map<string, Touch> {
+export function touchesOf<B extends Pick<SavedBatch, 'ops' | 'version'>>(
+  batches: readonly B[],
+  nameOf: (batch: B) => string,
+): Map<string, Touch> {
   const touches = new Map<string, Touch>();
   for (const batch of batches) {
     const touch = { who: nameOf(batch), version: batch.version };
