@@ -3,12 +3,13 @@ import { RouterLink } from '@angular/router';
 import { displayUnit, type DisplayUnits } from '@riseback/units';
 import { BANDS_TO_COME } from '../shared/bands-to-come';
 import { StatusMark } from '../shared/status-mark/status-mark';
+import { TermRow } from '../shared/term/term-row';
 import { type Comparison, type ComparisonOrder, ordered } from './case-comparison';
 
 /** All cases side by side: back pressure and verdict of every trap in each of them, and its worst. */
 @Component({
   selector: 'app-comparison-table',
-  imports: [RouterLink, StatusMark],
+  imports: [RouterLink, StatusMark, TermRow],
   changeDetection: ChangeDetectionStrategy.OnPush,
   templateUrl: './comparison-table.html',
   styleUrl: './comparison-table.scss',

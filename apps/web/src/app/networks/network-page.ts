@@ -1,6 +1,7 @@
 import { ChangeDetectionStrategy, Component, DOCUMENT, effect, inject, input, untracked } from '@angular/core';
 import { Title } from '@angular/platform-browser';
 import { RouterLink, RouterLinkActive, RouterOutlet } from '@angular/router';
+import { GuideStrip } from '../guide/guide-strip';
 import { BANDS_TO_COME } from '../shared/bands-to-come';
 import { ProblemBanner } from '../shared/problem-banner/problem-banner';
 import { AppBar } from '../shell/app-bar';
@@ -32,6 +33,7 @@ const VIEWS = [
     CompanyStrip,
     ConflictNotice,
     DraftOffer,
+    GuideStrip,
     ProblemBanner,
     RefusedEdits,
     RouterLink,

@@ -2,13 +2,17 @@ import { ChangeDetectionStrategy, Component, computed, inject, input } from '@an
 import { MatMenu, MatMenuItem, MatMenuTrigger } from '@angular/material/menu';
 import { Router, RouterLink } from '@angular/router';
 import type { ProfileChange, Role } from '@riseback/contracts';
+import { Guide } from '../guide/guide';
 import { SessionStore } from '../session/session-store';
+import { GeneralKeyList } from './keys/general-key-list';
+import { KeyHelp } from './keys/key-help';
 import { RisebackMark } from './riseback-mark';
+import { WordList } from './word-list';
 
-/** Row 1 of every page: the mark, the page's own links (projected), the role and the person's menu. */
+/** Row 1 of every page: the mark, the page's own links (projected), the role, the help and the person's menu. */
 @Component({
   selector: 'app-bar',
-  imports: [MatMenu, MatMenuItem, MatMenuTrigger, RouterLink, RisebackMark],
+  imports: [GeneralKeyList, MatMenu, MatMenuItem, MatMenuTrigger, RouterLink, RisebackMark, WordList],
   changeDetection: ChangeDetectionStrategy.OnPush,
   templateUrl: './app-bar.html',
   styleUrl: './app-bar.scss',
@@ -16,6 +20,8 @@ import { RisebackMark } from './riseback-mark';
 export class AppBar {
   private readonly session = inject(SessionStore);
   private readonly router = inject(Router);
+  protected readonly guide = inject(Guide);
+  protected readonly keyHelp = inject(KeyHelp);
 
   /** Null or absent where no site is open. */
   readonly role = input<Role | null>();

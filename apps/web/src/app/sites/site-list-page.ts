@@ -1,7 +1,8 @@
-import { ChangeDetectionStrategy, Component, inject } from '@angular/core';
+import { ChangeDetectionStrategy, Component, computed, inject } from '@angular/core';
 import { toSignal } from '@angular/core/rxjs-interop';
 import { RouterLink } from '@angular/router';
 import type { Site } from '@riseback/contracts';
+import { GuideOffer } from '../guide/guide-offer';
 import { type Load, LOADING, loads } from '../shared/load';
 import { ProblemBanner } from '../shared/problem-banner/problem-banner';
 import { AppBar } from '../shell/app-bar';
@@ -9,7 +10,7 @@ import { SiteApi } from './site-api';
 
 @Component({
   selector: 'app-site-list-page',
-  imports: [AppBar, ProblemBanner, RouterLink],
+  imports: [AppBar, GuideOffer, ProblemBanner, RouterLink],
   changeDetection: ChangeDetectionStrategy.OnPush,
   templateUrl: './site-list-page.html',
   styleUrl: '../shell/list-page.scss',
@@ -17,5 +18,9 @@ import { SiteApi } from './site-api';
 export class SiteListPage {
   protected readonly load = toSignal<Load<Site[]>, Load<Site[]>>(loads(inject(SiteApi).list()), {
     initialValue: LOADING,
+  });
+  protected readonly hasNetworks = computed(() => {
+    const load = this.load();
+    return load.status === 'ready' && load.value.some(({ networkCount }) => networkCount > 0);
   });
 }

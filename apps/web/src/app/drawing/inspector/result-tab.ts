@@ -9,13 +9,28 @@ import { StallChart } from '../../results/stall/stall-chart';
 import { stallFacts } from '../../results/stall/stall-facts';
 import { Staff } from '../../results/staff/staff';
 import { isPipe, nameOf } from '../../shared/element-words';
+import { Term } from '../../shared/term/term';
+import { TermRow } from '../../shared/term/term-row';
+import type { TermKey } from '../../shared/term/terms';
 import { CheckList } from './check-list';
 import { dropRows, nodeRows, pipeRows, type ResultRow, trapNotes, trapRows } from './result-rows';
+
+/** The words written beside the staff, which is a picture. */
+const STAFF_TERMS: readonly TermKey[] = [
+  'backPressure',
+  'differential',
+  'lift',
+  'friction',
+  'flash',
+  'limit',
+  'spread',
+  'credibleBand',
+];
 
 /** What came out for one element in the chosen case. */
 @Component({
   selector: 'app-result-tab',
-  imports: [CheckList, Staff, StallChart],
+  imports: [CheckList, Staff, StallChart, Term, TermRow],
   changeDetection: ChangeDetectionStrategy.OnPush,
   templateUrl: './result-tab.html',
   styleUrl: './inspector-tabs.scss',
@@ -24,6 +39,8 @@ export class ResultTab {
   protected readonly store = inject(NetworkStore);
 
   readonly element = input.required<NetworkNode | PipeRun>();
+
+  protected readonly staffTerms = STAFF_TERMS;
 
   protected readonly trap = computed((): Trap | null => {
     const element = this.element();

@@ -2,6 +2,7 @@ import { ChangeDetectionStrategy, Component, computed, inject, input, output } f
 import type { Position } from '@riseback/network';
 import { BANDS_TO_COME } from '../../shared/bands-to-come';
 import { type Status, StatusMark } from '../../shared/status-mark/status-mark';
+import { Term } from '../../shared/term/term';
 import { BANDED_CHECKS } from '../bands-before';
 import type { Finding, FindingSeverity } from '../finding-list';
 import { checkName } from '../finding-words';
@@ -15,7 +16,7 @@ const MARKS: Readonly<Record<FindingSeverity, { readonly status: Status; readonl
 /** The findings of a case as a table, each leading to its element. */
 @Component({
   selector: 'app-findings-list',
-  imports: [StatusMark],
+  imports: [StatusMark, Term],
   changeDetection: ChangeDetectionStrategy.OnPush,
   templateUrl: './findings-list.html',
   styleUrl: './findings-list.scss',
