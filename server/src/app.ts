@@ -47,6 +47,9 @@ import { notFound } from './platform/problem';
 import { openApiRoute } from './platform/routes/openapi';
 import { registerRoutes } from './platform/routes/register-routes';
 import type { Route } from './platform/routes/route-table';
+import { PlanRepository } from './plans/plan-repository';
+import { planRoutes } from './plans/plan-routes';
+import { PlanService } from './plans/plan-service';
 import { SiteRepository } from './sites/site-repository';
 import { siteRoutes } from './sites/site-routes';
 import { SiteService } from './sites/site-service';
@@ -118,6 +121,7 @@ export function buildApp(parts: AppParts): App {
     report,
   });
   const networks = new NetworkService(new NetworkRepository(db), live, streams, newId, now);
+  const plans = new PlanService(new PlanRepository(db), streams, newId, now);
   const events = new EventService(
     {
       headOf: (access) => networks.headOf(access),
@@ -138,6 +142,7 @@ export function buildApp(parts: AppParts): App {
     ...auditRoutes(auditLog),
     ...libraryRoutes(library),
     ...networkRoutes(networks),
+    ...planRoutes(plans),
     ...solveRoutes(results),
     ...eventRoutes(events),
   ];

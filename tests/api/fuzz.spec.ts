@@ -6,6 +6,7 @@ import fc from 'fast-check';
 import type { Response } from 'supertest';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import type { Route } from '../../server/src/platform/routes/route-table';
+import { jpegOf, pngOf } from '../fixtures/images';
 import { ApiDescription } from './api-description';
 import { valueOf } from './schema-arbitrary';
 import { TestServer, type Client, type Who } from './test-server';
@@ -120,6 +121,15 @@ function pathOf(route: Route, odd: string): string {
   return path.replaceAll(/:\w+/g, encodeURIComponent(odd === '' ? '-' : odd));
 }
 
+/** A file with one of its bytes put in the place of another, or cut off there. */
+function nearlyFile(odd: string): Buffer {
+  const file = Buffer.from(odd.length % 2 === 0 ? pngOf(4, 4) : jpegOf());
+  const at = [...odd].reduce((sum, letter) => (sum * 31 + (letter.codePointAt(0) ?? 0)) % file.length, 7);
+  if (odd.length % 5 === 4) return file.subarray(0, at);
+  file.writeUInt8((file.readUInt8(at) + odd.length) % 256, at);
+  return file;
+}
+
 async function call(route: Route, who: Who | 'anonymous', sent: unknown, odd: string): Promise<Response> {
   const query = `?version=${encodeURIComponent(odd)}&since=${encodeURIComponent(odd)}&case=${encodeURIComponent(odd)}`;
   const path = pathOf(route, odd) + (odd.length % 2 === 0 ? query : '');
@@ -127,6 +137,10 @@ async function call(route: Route, who: Who | 'anonymous', sent: unknown, odd: st
     const test = client.send(route.method, path);
     void test.set('If-Match', odd.length % 3 === 0 ? '"1"' : `"${String(odd.length)}"`);
     if (route.body !== undefined) void test.set('Content-Type', 'application/json').send(JSON.stringify(sent));
+    if (route.upload !== undefined) {
+      const { types } = route.upload;
+      void test.set('Content-Type', types[odd.length % types.length] ?? '').send(nearlyFile(odd));
+    }
     return test;
   };
   const first = await once(clientOf(who));

@@ -1,4 +1,4 @@
-import type { PeopleEvent, SavedBatch, SolveEvent } from '@riseback/contracts';
+import type { PeopleEvent, PlanEvent, SavedBatch, SolveEvent } from '@riseback/contracts';
 import { jsonEqual } from '@riseback/network';
 import type { NetworkAccess } from '../platform/auth/access';
 import { tooManyRequests, unavailable } from '../platform/problem';
@@ -88,6 +88,11 @@ export class NetworkStreams {
     const room = this.rooms.get(networkId);
     if (room?.solverHash !== solverHash) return;
     this.tell(room, solveEvent({ version: room.version, solverHash, state }));
+  }
+
+  planChanged(networkId: string, version: number): void {
+    const room = this.rooms.get(networkId);
+    if (room !== undefined) this.tell(room, { event: 'plan', data: { version } satisfies PlanEvent });
   }
 
   selected(access: NetworkAccess, ids: readonly string[]): void {

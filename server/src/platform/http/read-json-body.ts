@@ -1,5 +1,6 @@
 import express, { type Request, type RequestHandler, type Response } from 'express';
 import { badRequest, payloadTooLarge, type ProblemError, unsupportedMediaType } from '../problem';
+import type { UploadRule } from '../routes/route-table';
 import { notJson } from './json-text';
 
 /** body-parser's own errors carry these. */
@@ -26,6 +27,26 @@ export async function readBodyBytes(req: Request, res: Response, limitBytes: num
   if (charset !== undefined && charset.toLowerCase() !== 'utf-8') throw notUtf8();
   const body = await read(req, res, express.raw({ limit: limitBytes, type: () => true }), limitBytes);
   return body instanceof Uint8Array ? body : new Uint8Array();
+}
+
+/** A body that is no JSON. `declared` is the one of `types` that its header says; what the bytes are is the handler's to find out. */
+export interface UploadedBytes {
+  readonly bytes: Uint8Array;
+  readonly declared: string;
+}
+
+/** The bytes of an upload of one of the types. @throws ProblemError 413 over the limit, 415 another kind of content */
+export async function readUpload(
+  req: Request,
+  res: Response,
+  { types, limitBytes }: UploadRule,
+): Promise<UploadedBytes> {
+  const declared = req.is([...types]);
+  if (hasBody(req) && typeof declared !== 'string') {
+    throw unsupportedMediaType(`Send the file as it is, with the header Content-Type: ${types.join(' or ')}.`);
+  }
+  const body = await read(req, res, express.raw({ limit: limitBytes, type: () => true }), limitBytes);
+  return { bytes: body instanceof Uint8Array ? body : new Uint8Array(), declared: declared || '' };
 }
 
 function hasBody(req: Request): boolean {

@@ -31,7 +31,8 @@ export function securityHeaders(https: boolean): RequestHandler {
         formAction: ["'none'"],
         frameAncestors: ["'none'"],
         requireTrustedTypesFor: ["'script'"],
-        trustedTypes: ['angular', 'angular#components'],
+        // the last is the pages' own: it gives the one address of the worker that reads a PDF
+        trustedTypes: ['angular', 'angular#components', 'riseback#pdf-worker'],
       },
     },
     strictTransportSecurity: https ? { maxAge: 365 * 24 * 3600, includeSubDomains: false } : false,

@@ -2,9 +2,11 @@ import { Router, type Request, type Response } from 'express';
 import type { AccessRules, SignedInPerson } from '../auth/access';
 import type { SessionGate } from '../auth/session-gate';
 import { parseRequest } from '../http/parse-request';
-import { readBodyBytes, readJsonBody } from '../http/read-json-body';
+import { readBodyBytes, readJsonBody, readUpload, type UploadedBytes } from '../http/read-json-body';
 import { methodNotAllowed } from '../problem';
 import type { Route } from './route-table';
+
+const NO_UPLOAD: UploadedBytes = { bytes: new Uint8Array(), declared: '' };
 
 /** The one way of a request to a handler: who, from where, may they, and only then what they sent. */
 export function registerRoutes(routes: readonly Route[], gate: SessionGate, rules: AccessRules): Router {
@@ -19,6 +21,7 @@ export function registerRoutes(routes: readonly Route[], gate: SessionGate, rule
         params: route.params === undefined ? undefined : parseRequest(route.params, req.params, 'path'),
         query: route.query === undefined ? undefined : parseRequest(route.query, req.query, 'query'),
         body: await bodyOf(route, req, res),
+        upload: route.upload === undefined ? NO_UPLOAD : await readUpload(req, res, route.upload),
         req,
         res,
       });

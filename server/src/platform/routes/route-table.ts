@@ -2,6 +2,7 @@ import type { Permission } from '@riseback/contracts';
 import type { Request, Response } from 'express';
 import type * as z from 'zod';
 import type { NetworkAccess, PersonAccess, SiteAccess } from '../auth/access';
+import type { UploadedBytes } from '../http/read-json-body';
 
 export type HttpMethod = 'get' | 'post' | 'put' | 'patch' | 'delete';
 
@@ -21,11 +22,19 @@ export const SOLVED_FILE_LIMIT_BYTES = 8 * 1024 * 1024;
 /** The answers of a route other than problems: a schema, or words for one that carries no JSON. */
 export type Answers = Readonly<Record<number, z.ZodType | string>>;
 
+/** What a route takes instead of JSON: one file as it is, of one of the types. */
+export interface UploadRule {
+  readonly types: readonly string[];
+  readonly limitBytes: number;
+}
+
 export interface HandlerContext<Access, Params, Query, Body> {
   readonly access: Access;
   readonly params: Params;
   readonly query: Query;
   readonly body: Body;
+  /** Empty where the route takes none. */
+  readonly upload: UploadedBytes;
   readonly req: Request;
   readonly res: Response;
 }
@@ -46,6 +55,8 @@ interface RouteDefinition<
   readonly params?: Params;
   readonly query?: Query;
   readonly body?: Body;
+  /** Instead of `body`. */
+  readonly upload?: UploadRule;
   readonly answers: Answers;
   /** Default 1 MB. */
   readonly bodyLimitBytes?: number;
@@ -100,6 +111,9 @@ class Route {
   }
   get body(): z.ZodType | undefined {
     return this.definition.body;
+  }
+  get upload(): UploadRule | undefined {
+    return this.definition.upload;
   }
   get answers(): Answers {
     return this.definition.answers;
