@@ -24,6 +24,8 @@ import { Inspector } from './inspector/inspector';
 import { KeyList } from './key-list';
 import { zoneOf } from './model/sheet-zones';
 import { NodeArranging } from './node-arranging';
+import { PlanStore } from './plan/plan-store';
+import { PlanTool } from './plan/plan-tool';
 import { DeletePrompt } from './sheet/delete-prompt';
 import { DrawingSheet } from './sheet/drawing-sheet';
 import { ElementMoving } from './sheet/element-moving';
@@ -64,6 +66,7 @@ export class DrawingPage {
   protected readonly store = inject(NetworkStore);
   protected readonly state = inject(DrawingState);
   protected readonly scene = inject(DrawingScene);
+  protected readonly planTool = inject(PlanTool);
 
   /** From the address: the element looked at. */
   readonly element = input<string>();
@@ -113,6 +116,10 @@ export class DrawingPage {
     });
     effect(() => {
       if (this.state.draft() !== null || this.state.fieldsAsked() > 0) this.inspectorOpen.set(true);
+    });
+    const plan = inject(PlanStore);
+    effect(() => {
+      if (plan.panelAsked() > 0) this.inspectorOpen.set(true);
     });
   }
 

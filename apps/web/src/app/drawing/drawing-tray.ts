@@ -7,6 +7,7 @@ import { DrawingScene } from './drawing-scene';
 import { DrawingState, IDLE } from './drawing-state';
 import { ArrangeMenu } from './menus/arrange-menu';
 import { NodeArranging } from './node-arranging';
+import { PlanStore } from './plan/plan-store';
 import { NodePlacing } from './sheet/node-placing';
 import { PipeDrawing } from './sheet/pipe-drawing';
 import { ElementIcon } from './symbols/element-icon';
@@ -31,6 +32,7 @@ export class DrawingTray {
   protected readonly store = inject(NetworkStore);
   protected readonly state = inject(DrawingState);
   protected readonly commands = inject(DrawingCommands);
+  protected readonly plan = inject(PlanStore);
   private readonly scene = inject(DrawingScene);
   protected readonly arranging = inject(NodeArranging);
   private readonly pipes = inject(PipeDrawing);
@@ -79,6 +81,12 @@ export class DrawingTray {
     const byKey = event.detail === 0;
     this.pipes.start(byKey && focused !== null && this.scene.settled().nodes.has(focused) ? focused : null);
     if (byKey) this.state.focusOn(focused);
+  }
+
+  /** Its panel is the network's own, which is there while nothing is selected. */
+  protected openPlan(): void {
+    this.state.select();
+    this.plan.panelAsked.update((count) => count + 1);
   }
 
   protected afterMenu(): void {

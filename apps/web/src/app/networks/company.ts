@@ -37,6 +37,7 @@ export class Company {
   private readonly people = signal<readonly PersonHere[]>([]);
   private readonly reload = signal(0);
   private readonly solve = signal<SolveEvent | null>(null);
+  private readonly plan = signal(0);
   private networkId = '';
   private stream: Subscription | undefined;
   private lookedAt: readonly string[] = [];
@@ -47,6 +48,8 @@ export class Company {
   readonly reloadAsked = this.reload.asReadonly();
   /** How far the newest solve is, as it was last told. */
   readonly solveTold = this.solve.asReadonly();
+  /** Counted up when the plan under the drawing may have changed: it was told so, or a stream was opened anew. */
+  readonly planTold = this.plan.asReadonly();
   readonly others = computed((): Companion[] => {
     const own = this.session.person()?.id;
     const document = this.queue.present();
@@ -98,6 +101,7 @@ export class Company {
       switch (event.kind) {
         case 'open':
           this.tellSoon();
+          this.plan.update((count) => count + 1);
           // the server is there again, which no event of the browser's says where only the server was away
           if (this.queue.problem() !== null) this.queue.retry();
           break;
@@ -112,6 +116,9 @@ export class Company {
           break;
         case 'people':
           this.people.set(event.people);
+          break;
+        case 'plan':
+          this.plan.update((count) => count + 1);
           break;
         case 'reload':
           this.reload.update((count) => count + 1);

@@ -7,6 +7,7 @@ export type NetworkEvent =
   | { readonly kind: 'edit'; readonly batch: SavedBatch }
   | { readonly kind: 'solve'; readonly solve: SolveEvent }
   | { readonly kind: 'people'; readonly people: readonly PersonHere[] }
+  | { readonly kind: 'plan' }
   | { readonly kind: 'reload' };
 
 /** A browser gives up on a stream that was refused; it may be let in again later. */
@@ -38,6 +39,7 @@ export function networkEvents(networkId: string, since: () => number): Observabl
       on('edit', (data) => ({ kind: 'edit', batch: SavedBatch.parse(data) }));
       on('solve', (data) => ({ kind: 'solve', solve: SolveEvent.parse(data) }));
       on('people', (data) => ({ kind: 'people', people: PeopleEvent.parse(data).people }));
+      on('plan', () => ({ kind: 'plan' }));
       on('reload', () => ({ kind: 'reload' }));
       source.addEventListener('open', () => subscriber.next({ kind: 'open' }));
       source.addEventListener('error', () => {

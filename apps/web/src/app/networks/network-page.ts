@@ -2,6 +2,8 @@ import { ChangeDetectionStrategy, Component, DOCUMENT, effect, inject, input, un
 import { Title } from '@angular/platform-browser';
 import { RouterLink, RouterLinkActive, RouterOutlet } from '@angular/router';
 import { GuideStrip } from '../guide/guide-strip';
+import { PlanStore } from '../drawing/plan/plan-store';
+import { PlanTool } from '../drawing/plan/plan-tool';
 import { BANDS_TO_COME } from '../shared/bands-to-come';
 import { ProblemBanner } from '../shared/problem-banner/problem-banner';
 import { AppBar } from '../shell/app-bar';
@@ -46,6 +48,8 @@ const VIEWS = [
     Company,
     DraftKeeper,
     EditQueue,
+    PlanStore,
+    PlanTool,
     UndoStack,
     { provide: BANDS_TO_COME, useFactory: () => inject(NetworkStore).bandsToCome },
   ],

@@ -11,6 +11,7 @@ import {
 } from '../../networks/method-words';
 import { NetworkStore } from '../../networks/network-store';
 import { StatusMark } from '../../shared/status-mark/status-mark';
+import { PlanPanel } from '../plan/plan-panel';
 import type { FieldSpec } from './element-fields';
 import { LimitFields } from './limit-fields';
 import { MethodChoice } from './method-choice';
@@ -39,7 +40,7 @@ const WORDS = {
 /** The network as a whole: site conditions and method, shown while no element is selected. */
 @Component({
   selector: 'app-network-panel',
-  imports: [LimitFields, MethodChoice, PropertyFields, RouterLink, StatusMark],
+  imports: [LimitFields, MethodChoice, PlanPanel, PropertyFields, RouterLink, StatusMark],
   changeDetection: ChangeDetectionStrategy.OnPush,
   templateUrl: './network-panel.html',
   styleUrls: ['./inspector-tabs.scss', './network-panel.scss'],

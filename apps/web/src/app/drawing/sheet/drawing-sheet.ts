@@ -26,6 +26,8 @@ import { SheetMenu } from '../menus/sheet-menu';
 import { linePath } from '../model/line-path';
 import { type Direction, placeOf } from '../model/navigation';
 import { centreToShow, fitView, symbolScale, toScreen, toSheet } from '../model/viewport';
+import { PlanLayer } from '../plan/plan-layer';
+import { PlanOverlay } from '../plan/plan-overlay';
 import { NodeMark } from '../symbols/node-mark';
 import { NodeSymbol } from '../symbols/node-symbol';
 import { PipeMark } from '../symbols/pipe-mark';
@@ -51,7 +53,7 @@ interface LabelSubject {
 /** The sheet of paper: frame, network, labels and legend, with what pointer and keys do on it. */
 @Component({
   selector: 'app-drawing-sheet',
-  imports: [ColourLegend, GraphCanvas, LabelLayer, NodeMark, NodeSymbol, PipeMark, SheetMenu, ZoneFrame],
+  imports: [ColourLegend, GraphCanvas, LabelLayer, NodeMark, NodeSymbol, PipeMark, PlanLayer, PlanOverlay, SheetMenu, ZoneFrame],
   providers: [SheetPointer],
   changeDetection: ChangeDetectionStrategy.OnPush,
   host: { '[style.--symbol-scale]': 'symbolScale()', '[class]': 'state.mode().kind' },
