@@ -1,3 +1,4 @@
+import { constants, setPriority } from 'node:os';
 import { setImmediate as nextTurn } from 'node:timers/promises';
 import { parentPort } from 'node:worker_threads';
 import type { CaseOutcome } from '@riseback/contracts';
@@ -8,6 +9,9 @@ import type { DropMessage, SolveAnswer, SolveMessage } from '../src/solve/solve-
 /** The thread behind SolveThread: a network file comes in, the outcomes of its cases go out. It never opens the database. */
 const port = parentPort;
 if (port === null) throw new Error('solve-worker runs as a worker thread');
+
+// Where processors are short, requests go first. Linux counts a thread by itself; elsewhere this would be the whole server.
+if (process.platform === 'linux') setPriority(constants.priority.PRIORITY_BELOW_NORMAL);
 
 let dropped = 0;
 port.on('message', (message: SolveMessage | DropMessage) => {

@@ -173,7 +173,7 @@ export class NetworkRepository {
 
   /** As `editsSince`, at most so many and so large together, but one at least. */
   editPage(networkId: string, version: number, { most, bytes }: { most: number; bytes: number }): EditPage {
-    const sizes = this.sizesQuery().all({ networkId, version, limit: most + 1 });
+    const sizes = this.sizesQuery().all({ networkId, version, last: version + most + 1 });
     let [end, room] = [0, bytes];
     while (end < Math.min(most, sizes.length) && (end === 0 || (sizes[end]?.bytes ?? 0) <= room)) {
       room -= sizes[end]?.bytes ?? 0;
@@ -238,9 +238,15 @@ function prepareSizes(db: Queries) {
   return db
     .select({ version: edits.version, bytes: sql<number>`octet_length(${edits.forward})` })
     .from(edits)
-    .where(and(eq(edits.networkId, sql.placeholder('networkId')), gt(edits.version, sql.placeholder('version'))))
+    .where(
+      and(
+        eq(edits.networkId, sql.placeholder('networkId')),
+        gt(edits.version, sql.placeholder('version')),
+        // not `limit ?`, for whose every value SQLite prepares the statement anew
+        lte(edits.version, sql.placeholder('last')),
+      ),
+    )
     .orderBy(asc(edits.version))
-    .limit(sql.placeholder('limit'))
     .prepare();
 }
 
