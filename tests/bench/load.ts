@@ -20,7 +20,15 @@ export interface Read {
 export async function fire(
   address: string,
   setup: (connection: number) => autocannon.Request[],
-  { connections, ...length }: { readonly connections: number; readonly amount?: number; readonly duration?: number },
+  {
+    connections,
+    ...length
+  }: {
+    readonly connections: number;
+    readonly amount?: number;
+    readonly duration?: number;
+    readonly overallRate?: number;
+  },
 ): Promise<Load> {
   const statuses = new Map<number, number>();
   const count = (status: number) => statuses.set(status, (statuses.get(status) ?? 0) + 1);
