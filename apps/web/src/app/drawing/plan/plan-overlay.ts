@@ -73,7 +73,11 @@ export class PlanOverlay {
     const units = this.network.units();
     const bar = scaleBar(metresPerUnit, this.viewport().zoom, units.system === 'us' ? FOOT_M : 1);
     if (bar === null) return null;
-    return { width: bar.width, y: this.viewport().height - 14, words: formatQuantity(bar.metres, 'length', units) };
+    return {
+      width: bar.width,
+      y: this.viewport().height - 14,
+      words: formatQuantity(bar.metres, 'length', units, { withUnit: true }),
+    };
   });
 
   constructor() {
