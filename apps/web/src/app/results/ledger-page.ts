@@ -1,4 +1,4 @@
-import { ChangeDetectionStrategy, Component, computed, inject, input, linkedSignal } from '@angular/core';
+import { ChangeDetectionStrategy, Component, computed, inject, input, linkedSignal, signal } from '@angular/core';
 import { ActivatedRoute, Router, RouterLink } from '@angular/router';
 import type { SolveResult } from '@riseback/contracts';
 import { type NetworkDocument, toFile } from '@riseback/network';
@@ -8,6 +8,7 @@ import { SessionStore } from '../session/session-store';
 import { ProblemBanner } from '../shared/problem-banner/problem-banner';
 import { allFindings, findingsOfCases } from './finding-list';
 import { FindingsList } from './findings-list/findings-list';
+import { bandsAlong } from './ledger/bands-along';
 import { LedgerSheet } from './ledger/ledger-sheet';
 import { groupTraps, trapOfElement } from './ledger/trap-groups';
 import { TrapList } from './ledger/trap-list';
@@ -73,6 +74,7 @@ export class LedgerPage {
       document: view.document,
       entries: ledger(file, solved, item.id),
       points: liftProfile(file, solved, item.id),
+      alongWay: bandsAlong(file, solved, item.result),
       nodeResult: result.nodes.find(({ id }) => id === item.id),
       caseName: this.store.showsWorst() ? this.store.nameOfCase(this.store.caseOf(item.id)) : this.store.caseName(),
     };
@@ -99,6 +101,10 @@ export class LedgerPage {
     const reasons = this.findings().filter(({ code }) => code === 'refused' || code === 'noSolution');
     return reasons.length === 0 ? null : reasons;
   });
+  /** There will be no list of traps; while it is only to come, its room is kept, so that nothing moves when it does. */
+  protected readonly alone = computed(
+    () => this.view() === null && (this.problem() !== null || this.unanswered() !== null || !this.hasTraps()),
+  );
   /** What has no result, as the beginning of a sentence. */
   protected readonly whole = computed(() => {
     if (this.store.showsWorst()) return 'No case has a result; the worst of all has';
@@ -140,6 +146,8 @@ export class LedgerPage {
     });
     return format.format(new Date(finished.finishedAt));
   });
+
+  protected readonly told = signal('');
 
   protected open(elementId: string): void {
     void this.router.navigate([], { queryParams: { element: elementId }, queryParamsHandling: 'merge' });

@@ -71,6 +71,8 @@ describe('ledgerModel', () => {
     expect(model.closing).toEqual({
       length: '118.5',
       rise: '+10 −1',
+      up: '10',
+      down: '1',
       static: '5.00',
       friction: '0.01',
       flashSteam: '0.52',

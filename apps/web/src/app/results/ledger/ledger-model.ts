@@ -15,7 +15,8 @@ import { nameOf } from '../../shared/element-words';
 
 /** Decimals of the account: a hundredth of a psi or of a kPa is below anything that matters. */
 const DECIMALS = 2;
-const NOTHING = '–';
+/** An absent entry. */
+export const NOTHING = '–';
 
 export interface LedgerRow {
   readonly no: number;
@@ -25,6 +26,9 @@ export interface LedgerRow {
   readonly bore: string;
   readonly length: string;
   readonly rise: string;
+  /** Rise and fall by themselves; '' for none. */
+  readonly up: string;
+  readonly down: string;
   readonly flow: string;
   readonly flash: string;
   readonly static: string;
@@ -54,6 +58,8 @@ export interface LedgerModel {
   readonly closing: {
     readonly length: string;
     readonly rise: string;
+    readonly up: string;
+    readonly down: string;
     readonly static: string;
     readonly friction: string;
     readonly flashSteam: string;
@@ -108,6 +114,8 @@ export function ledgerModel(
         bore: pipe === undefined ? NOTHING : boreWords(pipe, units),
         length: lengths.entries[i] ?? '',
         rise: rises.entries[i] ?? '',
+        up: rises.ups[i] ?? '',
+        down: rises.downs[i] ?? '',
         flow: formatQuantity(entry.massFlowKgS, 'massFlow', units),
         flash: unless(entry.quality === 0, formatQuantity(entry.quality, 'quality', units, { decimals: 1 })),
         static: unless(entry.staticPa === 0, staticColumn?.entries[i]),
@@ -124,6 +132,8 @@ export function ledgerModel(
     closing: {
       length: lengths.total,
       rise: rises.total,
+      up: rises.up,
+      down: rises.down,
       static: unless(statics.every(isZero), staticColumn?.total),
       friction: unless(frictions.every(isZero), frictionColumn?.total),
       flashSteam: unless(flashes.every(isZero), flashColumn?.total),
@@ -203,21 +213,34 @@ function decimalsFor(values: readonly number[]): number {
 }
 
 /** Rises and falls of a pipe are told apart, since only rises count by hand: +22 −1. */
-function printRises(
-  entries: readonly LedgerEntry[],
-  units: DisplayUnits,
-): { entries: readonly string[]; total: string } {
+interface PrintedRises {
+  readonly entries: readonly string[];
+  readonly total: string;
+  /** By themselves; '' for none. */
+  readonly ups: readonly string[];
+  readonly downs: readonly string[];
+  readonly up: string;
+  readonly down: string;
+}
+
+function printRises(entries: readonly LedgerEntry[], units: DisplayUnits): PrintedRises {
   const up = entries.map(({ riseM }) => toDisplay(riseM, 'length', units));
   const down = entries.map(({ fallM }) => toDisplay(fallM, 'length', units));
   const decimals = decimalsFor([...up, ...down]);
-  const print = (rise: string | undefined, fall: string | undefined) => {
-    const parts = [...(isNothing(rise) ? [] : [`+${rise ?? ''}`]), ...(isNothing(fall) ? [] : [`−${fall ?? ''}`])];
+  const alone = (printed: string) => (isNothing(printed) ? '' : printed);
+  const both = (rise: string, fall: string) => {
+    const parts = [...(rise === '' ? [] : [`+${rise}`]), ...(fall === '' ? [] : [`−${fall}`])];
     return parts.length === 0 ? NOTHING : parts.join(' ');
   };
-  const [rises, falls] = [roundCumulatively(up, decimals), roundCumulatively(down, decimals)];
+  const [ups, downs] = [up, down].map((column) => roundCumulatively(column, decimals).map(alone));
+  const [totalUp, totalDown] = [up, down].map((column) => alone(roundedSum(column, decimals)));
   return {
-    entries: rises.map((rise, i) => print(rise, falls[i])),
-    total: print(roundedSum(up, decimals), roundedSum(down, decimals)),
+    entries: (ups ?? []).map((rise, i) => both(rise, downs?.[i] ?? '')),
+    total: both(totalUp ?? '', totalDown ?? ''),
+    ups: ups ?? [],
+    downs: downs ?? [],
+    up: totalUp ?? '',
+    down: totalDown ?? '',
   };
 }
 

@@ -1,9 +1,20 @@
-import { ChangeDetectionStrategy, Component, computed, inject, input } from '@angular/core';
+import {
+  ApplicationRef,
+  ChangeDetectionStrategy,
+  Component,
+  computed,
+  inject,
+  input,
+  output,
+  signal,
+  viewChild,
+} from '@angular/core';
 import { MatButton } from '@angular/material/button';
+import { MatMenu, MatMenuItem, MatMenuTrigger } from '@angular/material/menu';
 import { RouterLink } from '@angular/router';
 import type { NodeResult } from '@riseback/contracts';
 import type { NetworkDocument } from '@riseback/network';
-import type { LedgerEntry, ProfilePoint } from '@riseback/solver';
+import type { LedgerEntry, ProfileBand, ProfilePoint } from '@riseback/solver';
 import { type DisplayUnits, formatQuantity } from '@riseback/units';
 import { ElementIcon } from '../../drawing/symbols/element-icon';
 import { FRICTION_WORDS, STATIC_LIFT_WORDS } from '../../networks/method-words';
@@ -11,17 +22,30 @@ import { BANDS_TO_COME } from '../../shared/bands-to-come';
 import { StatusMark } from '../../shared/status-mark/status-mark';
 import { bandNumbers } from '../bands';
 import type { PressureRamp } from '../pressure-ramp';
-import { endWords, trapTypeWords } from './element-text';
+import { boreWords, endWords, trapTypeWords } from './element-text';
+import { gaugesOnWay } from './gauges-on-way';
+import { ledgerRows, plainName, saveRows } from './ledger-file';
 import { ledgerModel } from './ledger-model';
 import { LedgerTable } from './ledger-table';
 import { LiftProfile } from './lift-profile';
 import type { TrapItem } from './trap-groups';
 import { nameOf } from '../../shared/element-words';
+import { saveFile } from '../../shared/save-file';
 
 /** One trap's page, A4 landscape: head, lift profile, ledger, foot. What is seen is what prints. */
 @Component({
   selector: 'app-ledger-sheet',
-  imports: [ElementIcon, LedgerTable, LiftProfile, MatButton, RouterLink, StatusMark],
+  imports: [
+    ElementIcon,
+    LedgerTable,
+    LiftProfile,
+    MatButton,
+    MatMenu,
+    MatMenuItem,
+    MatMenuTrigger,
+    RouterLink,
+    StatusMark,
+  ],
   changeDetection: ChangeDetectionStrategy.OnPush,
   templateUrl: './ledger-sheet.html',
   styleUrl: './ledger-sheet.scss',
@@ -32,6 +56,8 @@ export class LedgerSheet {
   readonly document = input.required<NetworkDocument>();
   readonly entries = input.required<readonly LedgerEntry[]>();
   readonly points = input.required<readonly ProfilePoint[]>();
+  /** The bands at each point; undefined where they are known at the trap alone. */
+  readonly alongWay = input<readonly ProfileBand[]>();
   readonly nodeResult = input<NodeResult>();
   readonly units = input.required<DisplayUnits>();
   readonly ramp = input.required<PressureRamp>();
@@ -40,14 +66,21 @@ export class LedgerSheet {
   /** The case is the trap's own worst, not one chosen for all. */
   readonly worstOfAll = input(false);
   readonly solvedAt = input('');
-  /** Why this must not be printed now; '' when it may be. */
+  /** Why this must be neither printed nor saved now; '' when it may be. */
   readonly staleReason = input('');
+  /** What was done, to be said aloud. */
+  readonly told = output<string>();
+
+  private readonly profile = viewChild(LiftProfile);
+  private readonly application = inject(ApplicationRef);
 
   protected readonly bandsToCome = inject(BANDS_TO_COME, { optional: true }) ?? (() => false);
-  /** What a print would say that is not so, or not yet; '' when it may be printed. */
+  /** For the time of one print. */
+  protected readonly inBlack = signal(false);
+  /** What a print or a file would say that is not so, or not yet; '' when it may be made. */
   protected readonly whyNoPrint = computed(() => {
-    if (this.staleReason() !== '') return `Not while the ledger is stale. ${this.staleReason()}`;
-    return this.bandsToCome() ? 'Not before its spread is there.' : '';
+    if (this.staleReason() !== '') return `No print and no file while the ledger is stale. ${this.staleReason()}`;
+    return this.bandsToCome() ? 'No print and no file before its spread is there.' : '';
   });
   protected readonly model = computed(() =>
     ledgerModel(this.entries(), this.item().result, this.document(), this.units()),
@@ -59,6 +92,19 @@ export class LedgerSheet {
       return pipe === undefined ? id : nameOf(pipe);
     };
   });
+  protected readonly sizeOfPipe = computed(() => {
+    const { pipes } = this.document();
+    const units = this.units();
+    return (id: string) => {
+      const pipe = pipes.get(id)?.value;
+      return pipe === undefined ? '' : boreWords(pipe, units);
+    };
+  });
+  protected readonly gauges = computed(() => {
+    const { id, result } = this.item();
+    return gaugesOnWay(this.document(), id, result.walk, this.points());
+  });
+  protected readonly decimalsWords = computed(() => `a hundredth of a ${this.units().system === 'us' ? 'psi' : 'kPa'}`);
   protected readonly endName = computed(() => {
     const { end } = this.item();
     return end === undefined ? 'Receiver' : nameOf(end);
@@ -118,15 +164,58 @@ export class LedgerSheet {
         : `falls credited at ${formatQuantity(dropCredit, 'fraction', this.units(), { withUnit: true })}`;
     return `Friction: ${FRICTION_WORDS[friction]}; static: ${STATIC_LIFT_WORDS[staticLift]}, ${credit}`;
   });
+  protected readonly caution = CAUTION;
   protected readonly exceeded = computed(() => {
     const { limit, result } = this.item();
     return limit !== null && result.backPressurePa > limit.pressurePa;
   });
 
-  protected print(): void {
+  protected print(inBlack: boolean): void {
+    this.inBlack.set(inBlack);
+    this.application.tick();
     globalThis.print();
+    this.inBlack.set(false);
+  }
+
+  protected async save(kind: 'csv' | 'xlsx'): Promise<void> {
+    if (this.whyNoPrint() !== '') return;
+    const rows = ledgerRows(this.model(), {
+      trapName: this.item().tag,
+      endName: this.endName(),
+      openingWords: this.openingWords(),
+      notes: [
+        ['Place', this.place()],
+        ['Case', this.caseName()],
+        ['Verdict', this.item().status],
+        ['Method', this.methodWords()],
+        ['Solved', this.solvedAt()],
+        ['Hand check', this.model().handCheck],
+        [
+          'Rounding',
+          `To ${this.decimalsWords()} as the column runs, so that every column adds up to its closing line.`,
+        ],
+        ['Caution', CAUTION],
+      ],
+    });
+    await saveRows(kind, this.fileName('ledger'), rows);
+    this.told.emit(`Saved as ${this.fileName('ledger')}.${kind}`);
+  }
+
+  protected saveProfile(): void {
+    const svg = this.whyNoPrint() === '' ? this.profile()?.svg() : undefined;
+    if (svg === undefined) return;
+    const name = `${this.fileName('lift')}.svg`;
+    saveFile(name, new Blob([svg], { type: 'image/svg+xml' }));
+    this.told.emit(`Saved as ${name}`);
+  }
+
+  private fileName(what: string): string {
+    return plainName(`${this.document().name} ${this.item().tag} ${this.caseName()} ${what}`);
   }
 }
+
+const CAUTION =
+  'Steam and hot condensate burn, and water hammer breaks pipes. Does not replace local codes or a licensed engineer’s judgement.';
 
 function lengthDecimals({ system }: DisplayUnits): number {
   return system === 'us' ? 0 : 1;

@@ -1,5 +1,6 @@
 import {
   afterNextRender,
+  ApplicationRef,
   ChangeDetectionStrategy,
   Component,
   computed,
@@ -13,19 +14,28 @@ import {
 } from '@angular/core';
 import type { Band } from '@riseback/contracts';
 import { type DisplayUnits, displayUnit, formatQuantity } from '@riseback/units';
-import type { ProfilePoint } from '@riseback/solver';
+import type { ProfileBand, ProfilePoint } from '@riseback/solver';
 import type { BackPressureLimit } from '../back-pressure-limit';
 import { bandWords } from '../bands';
 import type { PressureRamp } from '../pressure-ramp';
+import type { GaugeOnWay } from './gauges-on-way';
 import { type BandMark, PROFILE, profileFigure } from './profile-figure';
+import { profileRows } from './profile-rows';
+import { svgText } from './svg-text';
 
-/** Width on the A4 page, px, and the least in which its words still find room. */
+/** Width on the screen's page, px; on paper, where that leaves the ledger its room; and the least in which its words find room. */
 const FULL_WIDTH = 1056;
+const PAPER_WIDTH = 1200;
 const LEAST_WIDTH = 300;
+/** What only a pointer or the keys leave on the figure. */
+const TRANSIENT = '.read, .read-line';
+
+let profileCount = 0;
 
 /** Pressure over elevation along the way from a trap to its vessel; pointer or arrow keys read it place by place. */
 @Component({
   selector: 'app-lift-profile',
+  host: { '(window:beforeprint)': 'drawForPaper()', '(window:afterprint)': 'drawForScreen()' },
   changeDetection: ChangeDetectionStrategy.OnPush,
   templateUrl: './lift-profile.html',
   styleUrl: './lift-profile.scss',
@@ -38,14 +48,22 @@ export class LiftProfile {
   readonly trapName = input.required<string>();
   readonly endName = input.required<string>();
   readonly nameOfPipe = input.required<(pipeId: string) => string>();
+  /** "1½″", '' where it is not known. */
+  readonly sizeOfPipe = input<(pipeId: string) => string>(() => '');
+  /** Along the way, one for each point; undefined where they are known at the trap alone. */
+  readonly bands = input<readonly ProfileBand[]>();
+  readonly gauges = input<readonly GaugeOnWay[]>([]);
   readonly limit = input<BackPressureLimit | null>(null);
   readonly exceeded = input(false);
   readonly spread = input<Band>();
   readonly credible = input<Band>();
 
+  private readonly drawing = viewChild.required<ElementRef<SVGSVGElement>>('drawing');
+  private readonly application = inject(ApplicationRef);
   private readonly frame = viewChild.required<ElementRef<HTMLElement>>('frame');
 
   protected readonly PROFILE = PROFILE;
+  protected readonly clipId = `profile-plot-${String(++profileCount)}`;
   /** Drawn as wide as the page gives room, so that its words keep their size on a phone. */
   protected readonly width = signal(FULL_WIDTH);
   /** The place that is read; another way begins at its trap again, unread. */
@@ -63,6 +81,9 @@ export class LiftProfile {
       limitPa: this.limit()?.pressurePa,
       spread: this.spread(),
       credible: this.credible(),
+      bands: this.bands(),
+      sizeOf: this.sizeOfPipe(),
+      gauges: this.gauges(),
       width: this.width(),
     }),
   );
@@ -84,8 +105,29 @@ export class LiftProfile {
     return (
       `Lift profile: over ${way} ${length} of way the pressure falls from ${this.ends().start} ${pressure} at ${this.trapName()} ` +
       `to ${this.ends().end} ${pressure} in ${this.endName()}${risen.length === 0 ? '' : `, with ${risen.join(' and ')}`}. ` +
-      `${bands === '' ? '' : `${bands} `}The table below has every number.`
+      `${bands === '' ? '' : `${bands} `}The tables below have every number.`
     );
+  });
+  protected readonly table = computed(() =>
+    profileRows({
+      points: this.points(),
+      bands: this.bands(),
+      gauges: this.gauges(),
+      nameOfPipe: this.nameOfPipe(),
+      sizeOf: this.sizeOfPipe(),
+      trapName: this.trapName(),
+      endName: this.endName(),
+      units: this.units(),
+    }),
+  );
+  /** The classes of pressure as widths, for a print without colour. */
+  protected readonly legend = computed(() => {
+    const { limits } = this.ramp();
+    return ([1, 2, 3, 4, 5, 6, 7] as const).flatMap((pressureClass) => {
+      const [low, high] = [limits[pressureClass - 1], limits[pressureClass]];
+      if (low === undefined || high === undefined) return [];
+      return [{ pressureClass, words: `${printed(low)} to ${printed(high)}` }];
+    });
   });
   protected readonly sample = computed(() => {
     const at = this.at();
@@ -97,14 +139,28 @@ export class LiftProfile {
     afterNextRender(() => {
       const frame = this.frame().nativeElement;
       const observer = new ResizeObserver(() => {
-        // a page that is printed, or not shown at all, gives no width worth a new drawing
-        if (frame.clientWidth > 0) this.width.set(Math.max(LEAST_WIDTH, Math.min(frame.clientWidth, 1.2 * FULL_WIDTH)));
+        this.fit();
       });
       observer.observe(frame);
       destroyed.onDestroy(() => {
         observer.disconnect();
       });
     });
+  }
+
+  /** The figure as a file of its own. */
+  svg(): string {
+    return svgText(this.drawing().nativeElement, TRANSIENT);
+  }
+
+  /** Paper is as wide as the page is made for, whatever the screen is. */
+  protected drawForPaper(): void {
+    this.width.set(PAPER_WIDTH);
+    this.application.tick();
+  }
+
+  protected drawForScreen(): void {
+    this.fit();
   }
 
   protected step(event: Event, to: 'next' | 'before' | 'first' | 'last'): void {
@@ -143,8 +199,18 @@ export class LiftProfile {
     return `M${PROFILE.left} ${top}V${bottom}${capped.top ? cap(top) : ''}${capped.bottom ? cap(bottom) : ''}`;
   }
 
+  private fit(): void {
+    const { clientWidth } = this.frame().nativeElement;
+    // a page that is not shown at all gives no width worth a new drawing
+    if (clientWidth > 0) this.width.set(Math.max(LEAST_WIDTH, Math.min(clientWidth, 1.2 * FULL_WIDTH)));
+  }
+
   private pressureAt(index: number): string {
     const point = this.points().at(index);
     return point === undefined ? '' : formatQuantity(point.pressurePa, 'pressure', this.units());
   }
+}
+
+function printed(limit: number): string {
+  return limit.toLocaleString('en', { maximumFractionDigits: 1 }).replace('-', '−');
 }

@@ -1,31 +1,26 @@
 import type { Band } from '@riseback/contracts';
 import { type DisplayUnits, formatQuantity, toDisplay } from '@riseback/units';
-import type { ProfilePoint } from '@riseback/solver';
+import type { ProfileBand, ProfilePoint } from '@riseback/solver';
 import { area, line } from 'd3-shape';
 import { niceTicks } from '../nice-ticks';
-import { PAPER_CORE_FROM, type PressureClass, type PressureRamp } from '../pressure-ramp';
+import type { PressureRamp } from '../pressure-ramp';
+import type { GaugeOnWay } from './gauges-on-way';
+import { type AlongText, type LiftMark, liftsAlong, type Place, pipesAlong, sizesAlong } from './profile-marks';
+import { type Wash, washesOf } from './profile-washes';
 
 /** The figure's own measures, px; its width is what the page gives it. */
 export const PROFILE = {
-  height: 306,
+  height: 322,
   left: 48,
   /** Right of the plot, for what stands at the end of the way. */
   rightMargin: 66,
   pressureTop: 24,
   pressureBottom: 158,
-  numbers: 176,
-  elevationTop: 204,
-  elevationBottom: 276,
+  numbers: 174,
+  sizes: 193,
+  elevationTop: 220,
+  elevationBottom: 292,
 } as const;
-/** A rise lower than this is a pitch or a step, not a lift worth a label, m. */
-const LIFT_WORTH_A_LABEL_M = 0.3;
-
-interface Place {
-  readonly x: number;
-  readonly pressureY: number;
-  readonly elevationY: number;
-}
-
 /** A place that pointer or keys can ask about. */
 export interface ProfileSample extends Place {
   readonly words: string;
@@ -38,28 +33,23 @@ export interface ProfileFigure {
   readonly elevationTicks: readonly Tick[];
   readonly distanceTicks: readonly Tick[];
   /** The pressure line in runs of one colour class each, and its core. */
-  readonly washes: readonly {
-    readonly pressureClass: PressureClass;
-    readonly path: string;
-    readonly paperCore: boolean;
-  }[];
+  readonly washes: readonly Wash[];
   readonly elevationLine: string;
   readonly elevationFill: string;
-  readonly lifts: readonly {
-    readonly x: number;
-    readonly width: number;
-    readonly labelX: number;
-    readonly text: string;
-  }[];
+  readonly lifts: readonly LiftMark[];
   /** Where a pipe ends and the next begins. */
   readonly joints: readonly Place[];
-  readonly pipeNumbers: readonly { readonly x: number; readonly text: string }[];
+  readonly pipeNumbers: readonly AlongText[];
+  readonly sizes: readonly AlongText[];
+  readonly gauges: readonly GaugeMark[];
   readonly start: Place;
   readonly end: Place;
   readonly limit: { readonly y: number; readonly labelY: number } | null;
-  /** The trap's bands, at its end of the way only: along it the other methods are not known. */
+  /** The trap's bands, at its end of the way. */
   readonly spread: BandMark | null;
   readonly credible: BandMark | null;
+  /** The bands along the way; null where they are known at the trap alone. */
+  readonly bands: { readonly spread: BandArea; readonly credible: BandArea } | null;
   readonly samples: readonly ProfileSample[];
 }
 
@@ -68,6 +58,23 @@ export interface BandMark {
   readonly top: number;
   readonly bottom: number;
   readonly capped: { readonly top: boolean; readonly bottom: boolean };
+}
+
+/** A band along the way: what is filled, and its two edges. Parts beyond the plot are for the clip of the drawing. */
+export interface BandArea {
+  readonly fill: string;
+  readonly edges: string;
+}
+
+/** A gauge on the way: its tap on the line of elevation, its dial where it hangs, and its place on the pressure line. */
+export interface GaugeMark extends Place {
+  readonly id: string;
+  readonly tag: string;
+  readonly dialY: number;
+  /** Its tag finds no room beside its neighbours'. */
+  readonly silent: boolean;
+  /** Its tag stands to the left, since the name of the end of the way is to the right. */
+  readonly beside: boolean;
 }
 
 interface Tick {
@@ -84,13 +91,17 @@ export interface ProfileInput {
   readonly limitPa: number | undefined;
   readonly spread?: Band | undefined;
   readonly credible?: Band | undefined;
+  /** One for each point. */
+  readonly bands?: readonly ProfileBand[] | undefined;
+  readonly sizeOf?: (pipeId: string) => string;
+  readonly gauges?: readonly GaugeOnWay[];
   /** Of the whole figure, px. */
   readonly width: number;
 }
 
 /** Everything a lift profile draws, as numbers and paths: pressure upwards over elevation, flow from left to right. */
 export function profileFigure(input: ProfileInput): ProfileFigure {
-  const { points, nameOfPipe, units, ramp, limitPa, width } = input;
+  const { points, units, ramp, limitPa, width } = input;
   const shown = points.map((point) => ({
     distance: toDisplay(point.distanceM, 'length', units),
     elevation: toDisplay(point.elevationM, 'length', units),
@@ -109,9 +120,17 @@ export function profileFigure(input: ProfileInput): ProfileFigure {
     limit !== undefined && Math.abs(limit - (shown[0]?.pressure ?? 0)) < 1.5 * Math.max(most - least, 1);
   const inShown = (pa: number) => toDisplay(pa, 'pressure', units);
   const credible = input.credible === undefined ? [] : [inShown(input.credible.lowPa), inShown(input.credible.highPa)];
-  const reach = [least, most, ...credible, ...(limitInSight ? [limit] : [])];
+  const crediblyAlong = (input.bands ?? []).flatMap((band) => [
+    inShown(band.credibleLowPa),
+    inShown(band.credibleHighPa),
+  ]);
+  const reach = [least, most, ...credible, ...crediblyAlong, ...(limitInSight ? [limit] : [])];
   const pressureTicks = niceTicks(Math.min(...reach), Math.max(...reach), 4);
-  const elevations = shown.map(({ elevation }) => elevation);
+  const gauges = input.gauges ?? [];
+  const elevations = [
+    ...shown.map(({ elevation }) => elevation),
+    ...gauges.map(({ elevationM }) => toDisplay(elevationM, 'length', units)),
+  ];
   const elevationTicks = niceTicks(Math.min(...elevations), Math.max(...elevations), 3);
 
   const x = (distance: number) => PROFILE.left + (distance / wayLength) * (right - PROFILE.left);
@@ -131,7 +150,7 @@ export function profileFigure(input: ProfileInput): ProfileFigure {
     pressureTicks: pressureTicks.map((tick) => ({ at: pressureY(tick), text: tickText(tick) })),
     elevationTicks: elevationTicks.map((tick) => ({ at: elevationY(tick), text: tickText(tick) })),
     distanceTicks: distanceTicks.map((tick) => ({ at: x(tick), text: tickText(tick) })),
-    washes: washes(shown, ramp, (distance) => x(distance), pressureY),
+    washes: washesOf(shown, ramp, (distance) => x(distance), pressureY),
     elevationLine:
       line<Place>(
         (place) => place.x,
@@ -143,20 +162,80 @@ export function profileFigure(input: ProfileInput): ProfileFigure {
         PROFILE.elevationBottom,
         (place) => place.elevationY,
       )(places) ?? '',
-    lifts: lifts(points, places, units, right),
+    lifts: liftsAlong(points, places, units, { left: PROFILE.left, right }),
     ...pipesAlong(points, places),
+    sizes: input.sizeOf === undefined ? [] : sizesAlong(points, places, input.sizeOf),
+    gauges: gaugeMarks(gauges, right, {
+      x: (metres) => x(toDisplay(metres, 'length', units)),
+      pressureY: (pa) => pressureY(inShown(pa)),
+      elevationY: (metres) => elevationY(toDisplay(metres, 'length', units)),
+    }),
     start,
     end,
     limit: limitY === undefined ? null : { y: limitY, labelY: limitY > start.pressureY ? limitY + 14 : limitY - 6 },
     spread: bandMark(input.spread, (pa) => pressureY(inShown(pa))),
     credible: bandMark(input.credible, (pa) => pressureY(inShown(pa))),
-    samples: places.map((place, i) => ({ ...place, words: sampleWords(points[i], i, nameOfPipe, units) })),
+    bands: bandAreas(places, input.bands, (pa) => pressureY(inShown(pa))),
+    samples: places.map((place, i) => ({ ...place, words: sampleWords(input, i) })),
   };
 }
 
 function scaleOf(ticks: readonly number[], low: number, high: number): (value: number) => number {
   const [first = 0, last = 1] = [ticks[0], ticks.at(-1)];
   return (value) => low + ((value - first) / (last - first)) * (high - low);
+}
+
+function bandAreas(
+  places: readonly Place[],
+  bands: readonly ProfileBand[] | undefined,
+  y: (pa: number) => number,
+): ProfileFigure['bands'] {
+  if (bands?.length !== places.length) return null;
+  const areaOf = (ends: readonly (readonly [low: number, high: number])[]): BandArea => {
+    const rows = places.map(({ x }, i) => ({ x, low: y(ends[i]?.[0] ?? 0), high: y(ends[i]?.[1] ?? 0) }));
+    type Row = (typeof rows)[number];
+    const edge = (at: (row: Row) => number) => line<Row>((row) => row.x, at)(rows) ?? '';
+    return {
+      fill:
+        area<Row>(
+          (row) => row.x,
+          (row) => row.low,
+          (row) => row.high,
+        )(rows) ?? '',
+      edges: `${edge((row) => row.low)}${edge((row) => row.high)}`,
+    };
+  };
+  return {
+    spread: areaOf(bands.map((band) => [band.spreadLowPa, band.spreadHighPa])),
+    credible: areaOf(bands.map((band) => [band.credibleLowPa, band.credibleHighPa])),
+  };
+}
+
+/** Half the width of a letter of a gauge's tag, px. */
+const HALF_LETTER = 3.3;
+
+function gaugeMarks(
+  gauges: readonly GaugeOnWay[],
+  right: number,
+  at: { x: (metres: number) => number; pressureY: (pa: number) => number; elevationY: (metres: number) => number },
+): readonly GaugeMark[] {
+  let taken = -Infinity;
+  return gauges.map(({ id, tag, distanceM, tapElevationM, elevationM, pressurePa }) => {
+    const x = at.x(distanceM);
+    const half = tag.length * HALF_LETTER + 3;
+    const silent = x - half < taken;
+    if (!silent) taken = x + half;
+    return {
+      id,
+      tag,
+      x,
+      silent,
+      beside: x + half > right,
+      pressureY: at.pressureY(pressurePa),
+      elevationY: at.elevationY(tapElevationM),
+      dialY: at.elevationY(elevationM),
+    };
+  });
 }
 
 function bandMark(band: Band | undefined, y: (pa: number) => number): BandMark | null {
@@ -171,129 +250,27 @@ function bandMark(band: Band | undefined, y: (pa: number) => number): BandMark |
   };
 }
 
-interface Shown {
-  readonly distance: number;
-  readonly pressure: number;
-}
-
-/** Cuts the pressure line where it crosses a limit of the ramp, so that a riser changes colour along its height. */
-function washes(
-  shown: readonly Shown[],
-  ramp: PressureRamp,
-  x: (distance: number) => number,
-  y: (pressure: number) => number,
-): ProfileFigure['washes'] {
-  const inner = ramp.limits.slice(1, -1);
-  const classOf = (pressure: number): PressureClass => {
-    const index = inner.filter((limit) => pressure >= limit).length;
-    return ([1, 2, 3, 4, 5, 6, 7] as const)[index] ?? 7;
-  };
-  const runs: { pressureClass: PressureClass; points: Shown[] }[] = [];
-  const add = (from: Shown, to: Shown) => {
-    const pressureClass = classOf((from.pressure + to.pressure) / 2);
-    const last = runs.at(-1);
-    if (last?.pressureClass === pressureClass) last.points.push(to);
-    else runs.push({ pressureClass, points: [from, to] });
-  };
-  shown.forEach((to, i) => {
-    const from = shown[i - 1];
-    if (from === undefined) return;
-    let at = from;
-    for (const limit of crossed(from.pressure, to.pressure, inner)) {
-      const share = (limit - from.pressure) / (to.pressure - from.pressure);
-      const cut = { distance: from.distance + share * (to.distance - from.distance), pressure: limit };
-      add(at, cut);
-      at = cut;
-    }
-    add(at, to);
-  });
-  const draw = line<Shown>(
-    ({ distance }) => x(distance),
-    ({ pressure }) => y(pressure),
-  );
-  return runs.map(({ pressureClass, points }) => ({
-    pressureClass,
-    path: draw(points) ?? '',
-    paperCore: pressureClass >= PAPER_CORE_FROM,
-  }));
-}
-
-/** A crossing nearer to an end than this is the end itself, but for the rounding of a conversion. */
-const HAIR = 1e-6;
-
-/** The limits strictly between two pressures, in the order in which they are met. */
-function crossed(from: number, to: number, limits: readonly number[]): number[] {
-  const between = limits.filter((limit) => limit > Math.min(from, to) + HAIR && limit < Math.max(from, to) - HAIR);
-  return from < to ? between : between.reverse();
-}
-
-/** Rises that follow one another are one lift. A label that would run into the one before it is left out. */
-function lifts(
-  points: readonly ProfilePoint[],
-  places: readonly Place[],
-  units: DisplayUnits,
-  edge: number,
-): ProfileFigure['lifts'] {
-  const found: { from: number; to: number; riseM: number }[] = [];
-  points.forEach((point, i) => {
-    const before = points[i - 1];
-    if (before === undefined || point.elevationM <= before.elevationM) return;
-    const last = found.at(-1);
-    const riseM = point.elevationM - before.elevationM;
-    if (last?.to === i - 1) Object.assign(last, { to: i, riseM: last.riseM + riseM });
-    else found.push({ from: i - 1, to: i, riseM });
-  });
-  let taken = -Infinity;
-  return found
-    .filter(({ riseM }) => riseM >= LIFT_WORTH_A_LABEL_M)
-    .map(({ from, to, riseM }) => {
-      const [left, right] = [places[from]?.x ?? 0, places[to]?.x ?? 0];
-      const decimals = units.system === 'us' ? 0 : 1;
-      const text = `${formatQuantity(riseM, 'length', units, { withUnit: true, decimals })} lift`;
-      const half = text.length * 3.4;
-      const labelX = Math.min(edge - half, Math.max(PROFILE.left + half, right + half + 8));
-      const free = labelX - half > taken;
-      if (free) taken = labelX + half + 8;
-      return { x: left, width: Math.max(2, right - left), labelX, text: free ? text : '' };
-    });
-}
-
-function pipesAlong(
-  points: readonly ProfilePoint[],
-  places: readonly Place[],
-): Pick<ProfileFigure, 'joints' | 'pipeNumbers'> {
-  const ends = points.map((_, i) => i).filter((i) => i > 0 && points[i]?.pipeId !== points[i + 1]?.pipeId);
-  let from = places[0]?.x ?? 0;
-  let taken = -Infinity;
-  const pipeNumbers: { x: number; text: string }[] = [];
-  ends.forEach((end, i) => {
-    const to = places[end]?.x ?? from;
-    // numbered as in the ledger, which begins at the vessel
-    const text = String(ends.length - i);
-    const [middle, half] = [(from + to) / 2, 2 + text.length * 4];
-    if (middle - half >= taken) {
-      pipeNumbers.push({ x: middle, text });
-      taken = middle + half;
-    }
-    from = to;
-  });
-  return { joints: ends.slice(0, -1).flatMap((end) => places[end] ?? []), pipeNumbers };
-}
-
-function sampleWords(
-  point: ProfilePoint | undefined,
-  index: number,
-  nameOfPipe: (pipeId: string) => string,
-  units: DisplayUnits,
-): string {
+/** What a reader of the figure hears or reads at a point of the way. */
+function sampleWords({ points, bands, gauges = [], nameOfPipe, sizeOf, units }: ProfileInput, index: number): string {
+  const point = points[index];
   if (point === undefined) return '';
-  const pipe = nameOfPipe(point.pipeId);
+  const length = (metres: number) => formatQuantity(metres, 'length', units, { withUnit: true });
+  const pressure = (pa: number, withUnit: boolean) => formatQuantity(pa, 'pressure', units, { withUnit, decimals: 2 });
+  const size = sizeOf?.(point.pipeId) ?? '';
+  const pipe = `${nameOfPipe(point.pipeId)}${size === '' ? '' : ` ${size}`}`;
+  const band = bands?.[index];
+  const near = gauges.filter(({ distanceM }) => Math.abs(distanceM - point.distanceM) < 0.005).map(({ tag }) => tag);
   return [
-    index === 0
-      ? `At the trap, into ${pipe}`
-      : `${formatQuantity(point.distanceM, 'length', units, { withUnit: true })} along the way, in ${pipe}`,
-    `elevation ${formatQuantity(point.elevationM, 'length', units, { withUnit: true })}`,
-    formatQuantity(point.pressurePa, 'pressure', units, { withUnit: true, decimals: 2 }),
+    index === 0 ? `At the trap, into ${pipe}` : `${length(point.distanceM)} along the way, in ${pipe}`,
+    `elevation ${length(point.elevationM)}`,
+    pressure(point.pressurePa, true),
+    ...(band === undefined || band.spreadHighPa - band.spreadLowPa < 1
+      ? []
+      : [
+          `credible ${pressure(band.credibleLowPa, false)} to ${pressure(band.credibleHighPa, false)}`,
+          `by every method ${pressure(band.spreadLowPa, false)} to ${pressure(band.spreadHighPa, false)}`,
+        ]),
+    ...near.map((tag) => `gauge ${tag}`),
   ].join(', ');
 }
 
