@@ -97,7 +97,8 @@ test('“Saved” waits for the server’s word', async ({ page }) => {
     letGo = resolve;
   });
   await page.route('**/edits', async (route) => {
-    const response = await route.fetch();
+    // a batch is safe to send twice, and a connection kept open may be closed just then
+    const response = await route.fetch({ maxRetries: 3 });
     await held;
     await route.fulfill({ response });
   });

@@ -43,6 +43,13 @@ test('what someone else has selected is outlined and read out, in their own mark
   });
   expect(stroke).not.toBe(copper);
 
+  await test.step('in a list their initials stand in the row', async () => {
+    await page.goto(`${network}/lists?element=${FIRST}`);
+    await expect(page.locator('app-company-mark .mark')).toHaveText(initials);
+    await expect(page.getByRole('gridcell', { name: new RegExp(`also selected by ${name}$`) })).toHaveCount(1);
+    await page.goto(`${network}/drawing?element=${FIRST}`);
+  });
+
   await test.step('all that they have selected, pipes too, and nothing once they let go', async () => {
     await onSheet(other, SECOND).focus();
     await other.keyboard.press('ControlOrMeta+a');

@@ -27,7 +27,7 @@ export class Ledger {
   /** When its person last put it on a screen. */
   private readonly typedAt = new Map<number, number>();
   private readonly onScreen = new Map<Tab, Screen>();
-  /** Who brought it in. */
+  /** Who brought it in, or gave it up. */
   private readonly takers = new Map<number, Tab>();
   /** Where each value went, for who has to find out why one was dropped. */
   private readonly trails = new Map<number, string[]>();
@@ -68,16 +68,18 @@ export class Ledger {
     this.show(tab, after, meanwhile);
   }
 
-  /** What has left the screen since the last look, its person has given up. */
+  /** What has left the screen since the last look, its person has given up, also where another tab still offers it. */
   givenUp(tab: Tab): void {
-    this.show(tab, this.screenOf(tab), 'given up');
+    const after = this.screenOf(tab);
+    for (const value of this.onScreen.get(tab)?.keys() ?? []) if (!after.has(value)) this.takers.set(value, tab);
+    this.show(tab, after, 'given up');
   }
 
   /** A tab has crashed and another one is open in its place. */
   crashed(tab: Tab, next: Tab, at: number): void {
     const after = this.screenOf(next);
     for (const [value, where] of this.onScreen.get(tab) ?? []) {
-      if (after.has(value)) continue;
+      if (after.has(value) || (where === OFFER && this.takenBy(tab, value))) continue;
       if (at - (this.typedAt.get(value) ?? 0) < DRAFT_WITHIN_MS) this.excused.add(value);
       else this.owed.set(value, `was in ${where} of a tab that crashed`);
     }

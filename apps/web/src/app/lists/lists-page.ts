@@ -20,6 +20,7 @@ import { ActivatedRoute, Router, RouterLink } from '@angular/router';
 import type { EditOp } from '@riseback/network';
 import { firstValueFrom, type Observable, of } from 'rxjs';
 import { CopyNews } from '../library/copy-news';
+import { Company } from '../networks/company';
 import { NetworkStore } from '../networks/network-store';
 import { UndoButtons, type UndoneStep } from '../networks/undo-buttons';
 import { backPressureLimit } from '../results/back-pressure-limit';
@@ -67,6 +68,7 @@ const ADDRESS_DELAY_MS = 300;
 })
 export class ListsPage {
   protected readonly store = inject(NetworkStore);
+  private readonly company = inject(Company);
   private readonly dialogs = inject(CellDialogs);
   private readonly choices = inject(ColumnChoices);
   private readonly trials = inject(TrialSolve);
@@ -169,7 +171,13 @@ export class ListsPage {
         if (element !== undefined && grid !== undefined && grid.shownRow() !== element) grid.showRow(element);
       });
     });
+    effect(() => {
+      const ids = this.selected();
+      // with no row ticked, the one that the address names
+      this.company.choose(ids.length > 0 ? ids : null);
+    });
     inject(DestroyRef).onDestroy(() => {
+      this.company.choose(null);
       clearTimeout(this.addressTimer);
     });
   }

@@ -20,6 +20,7 @@ import {
   viewChild,
 } from '@angular/core';
 import { displayUnit, type DisplayUnits, formatQuantity } from '@riseback/units';
+import { CompanyMark } from '../../networks/company-mark';
 import { Staff } from '../../results/staff/staff';
 import { BANDS_TO_COME } from '../../shared/bands-to-come';
 import { StatusMark } from '../../shared/status-mark/status-mark';
@@ -60,6 +61,7 @@ let gridCount = 0;
     CdkVirtualScrollViewport,
     CellChoiceEditor,
     CellTextEditor,
+    CompanyMark,
     Staff,
     StatusMark,
   ],
