@@ -1,5 +1,5 @@
 // npm run bench: ratios measured in one run on this machine. Installs what is missing and builds the server, then measures.
-//   --only solver | api   one half
+//   --only solver | api | browser   one part
 //   --minutes N           how long the fifty users work (1)
 import { parseArgs } from 'node:util';
 import { demandNode, ensureInstalled } from '../../server/install.mjs';
@@ -12,6 +12,10 @@ const benches = {
   api: async () => {
     await (await import('../../server/build.mjs')).ensureBuilt(say);
     return (await import('./api-bench.ts')).apiBench({ minutes: Number(options.minutes) });
+  },
+  browser: async () => {
+    await (await import('../../server/build.mjs')).ensureBuilt(say);
+    return (await import('./browser-bench.ts')).browserBench();
   },
 };
 const chosen = options.only === undefined ? Object.keys(benches) : [options.only];

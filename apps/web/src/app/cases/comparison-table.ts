@@ -23,5 +23,9 @@ export class ComparisonTable {
   protected readonly order = signal<ComparisonOrder>('worst');
   protected readonly traps = computed(() => ordered(this.comparison().traps, this.order()));
   protected readonly several = computed(() => this.comparison().heads.length > 1);
+  /** Nothing to compare yet. Rows in an order that the first result overturns would jump under the pointer. */
+  protected readonly awaited = computed(() =>
+    this.comparison().heads.every(({ counts, refusal }) => counts === null && refusal === ''),
+  );
   protected readonly unit = computed(() => displayUnit('pressure', this.units().system));
 }

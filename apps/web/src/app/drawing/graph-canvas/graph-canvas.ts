@@ -20,6 +20,7 @@ import { type Edge, GraphComponent, LayoutService, type Node } from '@swimlane/n
 import { clampZoom, toSheet, type View, type Viewport, ZOOM_RANGE } from '../model/viewport';
 import { FixedLayout, type PlacedLink, type PlacedNode } from './fixed-layout';
 import { GraphIds } from './graph-ids';
+import { sameOnCanvas } from './same-on-canvas';
 
 export interface CanvasNode {
   readonly id: string;
@@ -90,19 +91,23 @@ export class GraphCanvas {
     },
     { equal: (a, b) => a.left === b.left && a.top === b.top && a.right === b.right && a.bottom === b.bottom },
   );
-  private readonly shown = computed(() => {
-    const nodes = this.nodes();
-    const links = this.links();
-    if (nodes.length + links.length <= RENDER_ALL) return { nodes, links };
-    const { left, top, right, bottom } = this.nearby();
-    const keep = this.keep();
-    const within = ({ x, y }: Position) => x >= left && x <= right && y >= top && y <= bottom;
-    const near = links.filter(
-      ({ id, points }) => keep.has(id) || points.some(within) || crosses(points, { left, top, right, bottom }),
-    );
-    const ends = new Set(near.flatMap(({ from, to }) => [from, to]));
-    return { nodes: nodes.filter(({ id, at }) => keep.has(id) || ends.has(id) || within(at)), links: near };
-  });
+  private readonly shown = computed(
+    () => {
+      const nodes = this.nodes();
+      const links = this.links();
+      if (nodes.length + links.length <= RENDER_ALL) return { nodes, links };
+      const { left, top, right, bottom } = this.nearby();
+      const keep = this.keep();
+      const within = ({ x, y }: Position) => x >= left && x <= right && y >= top && y <= bottom;
+      const near = links.filter(
+        ({ id, points }) => keep.has(id) || points.some(within) || crosses(points, { left, top, right, bottom }),
+      );
+      const ends = new Set(near.flatMap(({ from, to }) => [from, to]));
+      return { nodes: nodes.filter(({ id, at }) => keep.has(id) || ends.has(id) || within(at)), links: near };
+    },
+    // most edits and every result leave all places as they were, and the library would lay everything out anew
+    { equal: sameOnCanvas },
+  );
   /** The library writes into what it is given, so it always gets fresh objects. */
   protected readonly graphNodes = computed((): Node[] =>
     this.shown().nodes.map(({ id, at }) => ({
