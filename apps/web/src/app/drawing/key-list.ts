@@ -1,6 +1,7 @@
 import {
   ChangeDetectionStrategy,
   Component,
+  DestroyRef,
   effect,
   type ElementRef,
   inject,
@@ -8,27 +9,67 @@ import {
   viewChild,
 } from '@angular/core';
 import { MatButton } from '@angular/material/button';
+import { KeyHelp } from '../shell/keys/key-help';
 import { DrawingState } from './drawing-state';
 
-const KEYS: readonly (readonly [string, string])[] = [
-  ['Arrows', 'to the nearest element that way'],
-  ['Page Down, Page Up', 'with the flow, against it'],
-  ['Shift+Page Up', 'the next pipe entering'],
-  ['End, Home', 'receiver, last trap'],
-  ['Space', 'select; Shift+arrow selects more, Ctrl+A all'],
-  ['Enter', 'the fields of the element; Escape comes back'],
-  ['T, J, R, V, U', 'place a trap, junction, receiver, flash vessel, pumped inlet beside the focus'],
-  ['Insert', 'the same as a menu'],
-  ['P', 'a pipe from here: arrows or a typed tag choose its end'],
-  [
-    'M',
-    'move: arrows one step, Shift ten, Enter sets down, Escape puts back; on a pipe a bend, comma and full stop choose which',
-  ],
-  ['Delete', 'delete, after saying what goes along'],
-  ['Ctrl+Z, Ctrl+Shift+Z', 'undo, redo'],
-  ['/', 'find a tag'],
-  ['+, −, 0', 'zoom in, out, fit'],
-  ['?', 'this list'],
+interface KeyGroup {
+  readonly name: string;
+  readonly keys: readonly (readonly [string, string])[];
+}
+
+/** Every key that the sheet knows (sheet-keys.ts), grouped by what a person is about. */
+const GROUPS: readonly KeyGroup[] = [
+  {
+    name: 'Going about',
+    keys: [
+      ['Arrows', 'to the nearest element that way'],
+      ['Page Down, Page Up', 'with the flow, against it'],
+      ['Shift+Page Up', 'the next pipe entering'],
+      ['End, Home', 'receiver, last trap'],
+      ['/', 'find a tag'],
+      ['Tab', 'leaves the drawing'],
+    ],
+  },
+  {
+    name: 'Selecting',
+    keys: [
+      ['Space', 'select this element alone, or none'],
+      ['Ctrl+Space', 'this one too, or no longer'],
+      ['Shift+arrow', 'this one and the next'],
+      ['Ctrl+A', 'everything'],
+      ['Escape', 'leave off, then clear the selection'],
+    ],
+  },
+  {
+    name: 'Placing and joining',
+    keys: [
+      ['T, J, R, V, U', 'a trap, junction, receiver, flash vessel, pumped inlet beside the focus'],
+      ['Insert', 'the same as a menu'],
+      ['P', 'a pipe from here: arrows or a typed tag choose its end, Enter makes it'],
+    ],
+  },
+  {
+    name: 'Changing',
+    keys: [
+      ['Enter', 'the fields of the element; Escape comes back'],
+      ['M', 'move: arrows one step, Shift ten, Enter sets down, Escape puts back'],
+      ['M on a pipe', 'move a bend: comma and full stop choose which, Delete takes it out'],
+      ['B on a pipe', 'a new bend: arrows move what lies behind it aside'],
+      ['Delete', 'delete, after saying what goes along'],
+      ['Ctrl+C, Ctrl+X, Ctrl+V', 'copy, cut, paste, also in another network'],
+      ['Ctrl+D', 'duplicate'],
+      ['Ctrl+Z, Ctrl+Shift+Z', 'undo, redo; Ctrl+Y too'],
+      ['Shift+F10, Menu', 'all that can be done here, aligning and distributing included'],
+    ],
+  },
+  {
+    name: 'Looking',
+    keys: [
+      ['+, −, 0', 'zoom in, out, fit'],
+      ['Ctrl+arrow', 'move the view'],
+      ['?', 'this list'],
+    ],
+  },
 ];
 
 /** The keys of the drawing, opened with "?". */
@@ -39,16 +80,25 @@ const KEYS: readonly (readonly [string, string])[] = [
   template: `
     <dialog #dialog aria-labelledby="key-list-title" (close)="closed()">
       <h2 id="key-list-title">Keys of the drawing</h2>
-      <table>
-        <tbody>
-          @for (key of keys; track key[0]) {
-            <tr>
-              <th scope="row">{{ key[0] }}</th>
-              <td>{{ key[1] }}</td>
-            </tr>
-          }
-        </tbody>
-      </table>
+      <div class="groups">
+        @for (group of groups; track group.name) {
+          <table>
+            <caption>
+              {{
+                group.name
+              }}
+            </caption>
+            <tbody>
+              @for (key of group.keys; track key[0]) {
+                <tr>
+                  <th scope="row">{{ key[0] }}</th>
+                  <td>{{ key[1] }}</td>
+                </tr>
+              }
+            </tbody>
+          </table>
+        }
+      </div>
       <label
         ><input #act type="checkbox" [checked]="state.lettersAct()" (change)="state.lettersAct.set(act.checked)" />
         Single letters and signs act while the drawing has the focus</label
@@ -58,7 +108,7 @@ const KEYS: readonly (readonly [string, string])[] = [
   `,
   styles: `
     dialog {
-      max-width: min(620px, calc(100vw - 32px));
+      max-width: min(920px, calc(100vw - 32px));
       padding: 20px;
       border: 1px solid var(--rb-ink);
       border-radius: 4px;
@@ -66,9 +116,22 @@ const KEYS: readonly (readonly [string, string])[] = [
       color: var(--rb-ink);
       box-shadow: var(--rb-lift);
     }
-    table {
+    .groups {
+      columns: 2 340px;
+      column-gap: 32px;
       margin: 12px 0;
+    }
+    table {
+      width: 100%;
+      margin-bottom: 12px;
       border-collapse: collapse;
+      break-inside: avoid;
+    }
+    caption {
+      padding: 2px 0;
+      color: var(--rb-ink-2);
+      font-weight: 600;
+      text-align: left;
     }
     th,
     td {
@@ -78,8 +141,8 @@ const KEYS: readonly (readonly [string, string])[] = [
       vertical-align: top;
     }
     th {
+      width: 42%;
       font-weight: 600;
-      white-space: nowrap;
     }
     label {
       display: flex;
@@ -92,9 +155,13 @@ export class KeyList {
   protected readonly state = inject(DrawingState);
 
   private readonly dialog = viewChild.required<ElementRef<HTMLDialogElement>>('dialog');
-  protected readonly keys = KEYS;
+  protected readonly groups = GROUPS;
 
   constructor() {
+    const withdraw = inject(KeyHelp).offer('own', () => {
+      this.dialog().nativeElement.showModal();
+    });
+    inject(DestroyRef).onDestroy(withdraw);
     effect(() => {
       if (this.state.keysAsked() > 0)
         untracked(() => {

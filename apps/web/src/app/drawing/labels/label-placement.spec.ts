@@ -17,9 +17,9 @@ describe('placeLabels', () => {
     expect(placeLabels([label('first', at(0, 0)), label('second', at(39, 13))], []).has('second')).toBe(false);
   });
 
-  it('lets labels touch but not overlap', () => {
+  it('lets labels touch one under the other, and side by side with a gap', () => {
     expect(
-      placeLabels([label('first', at(0, 0)), label('second', at(40, 0)), label('third', at(0, 14))], []).size,
+      placeLabels([label('first', at(0, 0)), label('second', at(44, 0)), label('third', at(0, 14))], []).size,
     ).toBe(3);
   });
 
@@ -46,5 +46,28 @@ describe('placeLabels', () => {
     );
     expect(laid.length).toBeGreaterThan(50);
     expect(clash).toBe(false);
+  });
+
+  it('takes a place that the window cuts only where there is no whole one', () => {
+    const window = { x: 0, y: 0, width: 100, height: 100 };
+    const [cut, whole] = [
+      { x: 90, y: 10, width: 20, height: 10 },
+      { x: 50, y: 10, width: 20, height: 10 },
+    ];
+    expect(placeLabels([{ key: 'a', candidates: [cut, whole] }], [], undefined, window).get('a')).toBe(1);
+    expect(placeLabels([{ key: 'a', candidates: [cut, whole] }], [whole], undefined, window).get('a')).toBe(0);
+  });
+
+  it('keeps numbers side by side apart', () => {
+    const left = { x: 0, y: 0, width: 20, height: 10 };
+    const touching = { x: 21, y: 0, width: 20, height: 10 };
+    const placed = placeLabels(
+      [
+        { key: 'a', candidates: [left] },
+        { key: 'b', candidates: [touching] },
+      ],
+      [],
+    );
+    expect([...placed.keys()]).toEqual(['a']);
   });
 });

@@ -7,8 +7,6 @@ import {
   DestroyRef,
   effect,
   inject,
-  linkedSignal,
-  signal,
   untracked,
   viewChild,
 } from '@angular/core';
@@ -19,22 +17,21 @@ import { DrawingScene } from '../drawing-scene';
 import { DrawingState } from '../drawing-state';
 import { GraphCanvas } from '../graph-canvas/graph-canvas';
 import { LabelLayer } from '../labels/label-layer';
-import { type Box, placeLabels } from '../labels/label-placement';
-import { labelObstacles, type SheetLabel, sheetLabels } from '../labels/sheet-labels';
 import type { NodeView, PipeView } from '../model/element-views';
 import { SheetMenu } from '../menus/sheet-menu';
-import { linePath } from '../model/line-path';
 import { type Direction, placeOf } from '../model/navigation';
-import { centreToShow, fitView, symbolScale, toScreen, toSheet } from '../model/viewport';
+import { boundsOf, needsOverview } from '../model/overview';
+import { centreToShow, symbolScale, toScreen, toSheet } from '../model/viewport';
 import { PlanLayer } from '../plan/plan-layer';
 import { PlanOverlay } from '../plan/plan-overlay';
 import { NodeMark } from '../symbols/node-mark';
-import { NodeSymbol } from '../symbols/node-symbol';
 import { PipeMark } from '../symbols/pipe-mark';
-import { areaOutlines } from './area-outlines';
 import { ColourLegend } from './colour-legend';
-import { companyOutlines } from './company-outlines';
+import { PreviewLayer } from './preview-layer';
+import { fitClear, isCovered } from './sheet-cover';
 import { SheetKeys } from './sheet-keys';
+import { SheetLabelling } from './sheet-labelling';
+import { OverviewMap } from './overview-map';
 import type { PinchStep } from './pinch';
 import { SheetPointer, type Target, targetOf } from './sheet-pointer';
 import { STEPS } from './walk-keys';
@@ -42,19 +39,24 @@ import { ZoneFrame } from './zone-frame';
 
 /** How near the edge the focused element may come before the view follows, px. */
 const FOLLOW_MARGIN = 48;
-const LEGEND = { width: 310, height: 92 } as const;
-
-interface LabelSubject {
-  readonly labels: readonly SheetLabel[];
-  readonly obstacles: readonly Box[];
-  readonly zoom: number;
-}
 
 /** The sheet of paper: frame, network, labels and legend, with what pointer and keys do on it. */
 @Component({
   selector: 'app-drawing-sheet',
-  imports: [ColourLegend, GraphCanvas, LabelLayer, NodeMark, NodeSymbol, PipeMark, PlanLayer, PlanOverlay, SheetMenu, ZoneFrame],
-  providers: [SheetPointer],
+  imports: [
+    ColourLegend,
+    GraphCanvas,
+    LabelLayer,
+    NodeMark,
+    OverviewMap,
+    PipeMark,
+    PlanLayer,
+    PlanOverlay,
+    PreviewLayer,
+    SheetMenu,
+    ZoneFrame,
+  ],
+  providers: [SheetLabelling, SheetPointer],
   changeDetection: ChangeDetectionStrategy.OnPush,
   host: { '[style.--symbol-scale]': 'symbolScale()', '[class]': 'state.mode().kind' },
   templateUrl: './drawing-sheet.html',
@@ -65,6 +67,7 @@ export class DrawingSheet {
   protected readonly state = inject(DrawingState);
   protected readonly scene = inject(DrawingScene);
   protected readonly pointer = inject(SheetPointer);
+  protected readonly labelling = inject(SheetLabelling);
   private readonly keys = inject(SheetKeys);
   private readonly others = inject(Company);
 
@@ -87,7 +90,6 @@ export class DrawingSheet {
     const focused = this.state.focusId();
     return new Set([...this.state.selection(), ...(focused === null ? [] : [focused])]);
   });
-  protected readonly areas = computed(() => areaOutlines(this.scene.network()));
   protected readonly drawingName = computed(
     () =>
       `Drawing of ${this.store.document()?.name ?? 'the network'}. Arrows go from element to element, question mark lists the keys.`,
@@ -97,6 +99,9 @@ export class DrawingSheet {
     const node = chosen === null ? undefined : this.scene.settled().nodes.get(chosen)?.node;
     return node?.kind === 'trap' ? (node.tag ?? node.id) : null;
   });
+  private readonly bounds = computed(() => boundsOf(this.scene.settled()));
+  /** What the small map shows; null where none is needed. */
+  protected readonly overview = computed(() => (needsOverview(this.bounds(), this.viewport()) ? this.bounds() : null));
   protected readonly stale = computed(() => this.store.solveState().kind !== 'solved');
 
   private readonly size = computed(() => ({ width: this.viewport().width, height: this.viewport().height }), {
@@ -104,61 +109,6 @@ export class DrawingSheet {
   });
   /** The person has moved the view. */
   private looked = false;
-  private readonly hovered = signal<string | null>(null);
-  private readonly pointedAt = computed(
-    () => new Set([this.hovered(), this.state.focusId()].flatMap((id) => (id === null ? [] : [id]))),
-  );
-  protected readonly labels = computed(() =>
-    sheetLabels(
-      {
-        nodes: this.scene.nodeViews().values(),
-        pipes: this.scene.pipeViews().values(),
-        areas: this.areas(),
-        selected: this.state.selection(),
-        pointedAt: this.pointedAt(),
-      },
-      this.viewport().zoom,
-      this.scene.scale().kind,
-      this.store.units(),
-    ),
-  );
-  /** What others have selected. */
-  protected readonly company = computed(() =>
-    companyOutlines(
-      this.others.selecting(),
-      { nodes: this.scene.nodeViews(), pipes: this.scene.pipeViews() },
-      this.viewport().zoom,
-    ),
-  );
-  private readonly obstacles = computed(() => [
-    ...labelObstacles(this.scene.nodeViews().values(), this.scene.pipeViews().values(), this.viewport().zoom),
-    ...this.company().map(({ tag }) => tag),
-  ]);
-  protected readonly placed = linkedSignal<LabelSubject, ReadonlyMap<string, number>>({
-    source: () => ({ labels: this.labels(), obstacles: this.obstacles(), zoom: this.viewport().zoom }),
-    // at another zoom there is other room, so only there do labels look for their best place again
-    computation: ({ labels, obstacles, zoom }, before) =>
-      placeLabels(labels, obstacles, before?.source.zoom === zoom ? before.value : undefined),
-  });
-
-  /** The pipe being drawn, the new node being asked for. */
-  protected readonly previewLine = computed(() => {
-    const mode = this.state.mode();
-    const draft = this.state.draft();
-    if (draft?.kind === 'pipe') return this.lineBetween(draft.from, draft.to, null);
-    return mode.kind === 'piping' && mode.from !== null ? this.lineBetween(mode.from, mode.to, mode.pointer) : '';
-  });
-  protected readonly ghost = computed(() => {
-    const draft = this.state.draft();
-    return draft?.kind === 'node' ? { kind: draft.what, at: toScreen(draft.at, this.viewport()) } : null;
-  });
-  protected readonly boxShape = computed(() => {
-    const box = this.pointer.box();
-    if (box === null) return null;
-    const [a, b] = [toScreen(box[0], this.viewport()), toScreen(box[1], this.viewport())];
-    return { x: Math.min(a.x, b.x), y: Math.min(a.y, b.y), width: Math.abs(a.x - b.x), height: Math.abs(a.y - b.y) };
-  });
-
   private readonly gestures = {
     viewport: () => this.viewport(),
     holdStill: (still: boolean) => {
@@ -177,6 +127,7 @@ export class DrawingSheet {
   };
 
   constructor() {
+    this.labelling.follow(this.viewport);
     effect(() => {
       this.state.zoom.set(this.viewport().zoom);
     });
@@ -216,22 +167,10 @@ export class DrawingSheet {
     this.state.say(`${String(Math.round(this.viewport().zoom * 100))} per cent`);
   }
 
-  /** Shows everything, clear of the legend where the network would lie under it. */
   fit(): void {
     const { nodes, pipes } = this.scene.settled();
     const points = [...[...nodes.values()].map(({ at }) => at), ...[...pipes.values()].flatMap((pipe) => pipe.points)];
-    const size = this.viewport();
-    const none = { left: 0, top: 0, right: 0, bottom: 0 };
-    const plain = fitView(points, size, none);
-    const pan = {
-      panX: size.width / 2 - plain.centre.x * plain.zoom,
-      panY: size.height / 2 - plain.centre.y * plain.zoom,
-    };
-    const covered = points.some((point) => {
-      const { x, y } = toScreen(point, { ...size, zoom: plain.zoom, ...pan });
-      return size.width > 2 * LEGEND.width && x < LEGEND.width && y < LEGEND.height;
-    });
-    this.canvas().show(covered ? fitView(points, size, { ...none, top: LEGEND.height - 32 }) : plain);
+    this.canvas().show(fitClear(points, this.viewport()));
   }
 
   /** Looks a quarter of the window farther. */
@@ -305,7 +244,7 @@ export class DrawingSheet {
   protected move(event: PointerEvent): void {
     this.pointer.move(event, this.gestures);
     const element = event.target instanceof Element ? event.target.closest<SVGElement>('[data-element]') : null;
-    this.hovered.set(element?.dataset['element'] ?? null);
+    this.labelling.hovered.set(element?.dataset['element'] ?? null);
   }
 
   protected up(event: PointerEvent): void {
@@ -323,16 +262,10 @@ export class DrawingSheet {
       this.canvas().focusDrawing();
       return;
     }
-    const centre = centreToShow(place, this.viewport(), FOLLOW_MARGIN);
+    const centre = isCovered(place, this.viewport(), this.overview())
+      ? place
+      : centreToShow(place, this.viewport(), FOLLOW_MARGIN);
     if (centre !== null) this.canvas().show({ zoom: this.viewport().zoom, centre });
     this.canvas().focusElement(id);
-  }
-
-  private lineBetween(from: string, to: string | null, pointer: Position | null): string {
-    const network = this.scene.settled();
-    const start = placeOf(network, from);
-    const end = (to === null ? undefined : placeOf(network, to)) ?? pointer ?? undefined;
-    if (start === undefined || end === undefined) return '';
-    return linePath([toScreen(start, this.viewport()), toScreen(end, this.viewport())]);
   }
 }

@@ -61,6 +61,7 @@ export class SheetPointer {
 
   private gesture: Gesture | null = null;
   private longPress: ReturnType<typeof setTimeout> | undefined;
+  private pressedLong = false;
   private readonly fingers = new Pinch();
   private readonly boxCorners = signal<readonly [Position, Position] | null>(null);
   /** The selection box being drawn, in sheet coordinates. */
@@ -168,9 +169,17 @@ export class SheetPointer {
     surface.holdStill(false);
   }
 
+  /** The click that browsers make of a finger's end would press what the menu has put under it. */
+  touchEnd(event: TouchEvent): void {
+    if (this.pressedLong && event.cancelable) event.preventDefault();
+    this.pressedLong = false;
+  }
+
   private awaitLongPress(start: Position, target: Target, surface: PointerSurface): void {
     clearTimeout(this.longPress);
+    this.pressedLong = false;
     this.longPress = setTimeout(() => {
+      this.pressedLong = true;
       this.cancel(surface);
       surface.openMenu(start, target);
     }, LONG_PRESS_MS);
