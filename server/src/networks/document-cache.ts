@@ -9,7 +9,7 @@ interface CachedDocument {
   readonly version: number;
   readonly document: NetworkDocument;
   readonly elements: number;
-  text?: string;
+  text?: Buffer;
 }
 
 /** The documents that were used last, so that an edit does not read a whole network again and a reader is not served it built anew. */
@@ -35,10 +35,10 @@ export class DocumentCache {
   }
 
   /** The JSON text of a remembered document as it crosses the wire, made once. */
-  text(networkId: string, version: number): string | undefined {
+  text(networkId: string, version: number): Buffer | undefined {
     const cached = this.documents.get(networkId);
     if (cached?.version !== version) return undefined;
-    return (cached.text ??= JSON.stringify(toStoredDocument(cached.document)));
+    return (cached.text ??= Buffer.from(JSON.stringify(toStoredDocument(cached.document))));
   }
 
   clear(): void {

@@ -119,11 +119,12 @@ export class NetworkService {
   }
 
   /** The JSON text of a `Network`. */
-  text(access: NetworkAccess): { readonly version: number; readonly json: string } {
+  text(access: NetworkAccess): { readonly version: number; readonly json: Buffer } {
     const head = this.head(access.networkId);
     const around = { ...head, role: access.role, permissions: [...access.permissions] };
     const start = JSON.stringify(around satisfies Omit<Network, 'document'>);
-    return { version: head.version, json: `${start.slice(0, -1)},"document":${this.documentText(head)}}` };
+    const json = [Buffer.from(`${start.slice(0, -1)},"document":`), this.documentText(head), Buffer.from('}')];
+    return { version: head.version, json: Buffer.concat(json) };
   }
 
   file(access: NetworkAccess): NetworkFile {
@@ -267,9 +268,9 @@ export class NetworkService {
     return document;
   }
 
-  private documentText(head: NetworkHead): string {
+  private documentText(head: NetworkHead): Buffer {
     const document = this.documentOf(this.networks, head);
-    return this.documents.text(head.id, head.version) ?? JSON.stringify(toStoredDocument(document));
+    return this.documents.text(head.id, head.version) ?? Buffer.from(JSON.stringify(toStoredDocument(document)));
   }
 }
 
