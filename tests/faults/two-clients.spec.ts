@@ -72,8 +72,8 @@ const STEPS_KINDS = [
 ] as const;
 type Step = (typeof STEPS_KINDS)[number];
 
-it.each(Array.from({ length: 2 * RUNS }, (_, run) => ({ run, people: run % 2 === 0 ? 2 : 1 })))(
-  'holds everything that $people typed at once, through lost networks, crashed tabs and killed servers ($run)',
+it.each(Array.from({ length: 2 * RUNS }, (_, index) => ({ run: index + 1, people: index % 2 === 0 ? 2 : 1 })))(
+  'holds everything that $people typed at once, through lost networks, crashed tabs and killed servers, run $run',
   async ({ run, people }) => {
     const trial = await begin(run, people);
     for (let step = 0; step < STEPS; step += 1) {
