@@ -18,7 +18,7 @@ const ALIGN_WORDS = [
   imports: [MatDivider, MatMenu, MatMenuItem],
   changeDetection: ChangeDetectionStrategy.OnPush,
   template: `
-    <mat-menu #menu="matMenu" class="rb-menu">
+    <mat-menu #menu="matMenu">
       @for (choice of choices; track choice[0]) {
         <button mat-menu-item type="button" [disabled]="!arranging.canAlign()" (click)="arranging.align(choice[0])">
           Align {{ choice[1].toLowerCase() }}
@@ -42,6 +42,16 @@ const ALIGN_WORDS = [
         Distribute vertically
       </button>
     </mat-menu>
+  `,
+  styles: `
+    button[mat-menu-item] {
+      min-height: 30px;
+    }
+    @media (pointer: coarse) {
+      button[mat-menu-item] {
+        min-height: 44px;
+      }
+    }
   `,
 })
 export class ArrangeMenu {

@@ -34,8 +34,17 @@ const PLACED_KINDS: readonly NodeKind[] = ['trap', 'junction', 'receiver', 'flas
       background: none;
       pointer-events: none;
     }
+    button[mat-menu-item] {
+      min-height: 30px;
+    }
+    @media (pointer: coarse) {
+      button[mat-menu-item] {
+        min-height: 44px;
+      }
+    }
     kbd {
-      margin-left: 16px;
+      float: right;
+      margin: 3px 0 0 24px;
       color: var(--rb-ink-3);
       font:
         400 11px/14px Inter,
