@@ -245,13 +245,17 @@ describe('who may', () => {
     expect(await read()).toEqual(there);
   });
 
-  it('an image is had through its own network only, also by who may see both', async () => {
-    const mine = (await upload(PNG).expect(200)).body as NetworkPlan;
-    const second = await makeNetwork(designer, server.siteId);
-    await designer.get(imageOf(mine).replace(/networks\/[^/]+/, `networks/${second}`)).expect(404);
-    const outsider = server.as('outsider');
-    const theirs = await makeNetwork(outsider, server.otherSiteId);
-    await outsider.get(imageOf(mine).replace(/networks\/[^/]+/, `networks/${theirs}`)).expect(404);
+  it('an image is had through its own network only, also where there is another plan', async () => {
+    const mine = planOf(await upload(PNG).expect(200));
+    for (const [client, siteId] of [
+      [designer, server.siteId],
+      [server.as('outsider'), server.otherSiteId],
+    ] as const) {
+      const second = `/api/networks/${await makeNetwork(client, siteId)}/plan/image`;
+      const request = client.send('put', second).set('If-Match', '"0"').set('Content-Type', 'image/png');
+      await request.send(PNG).expect(200);
+      await client.get(`${second}/${mine.plan?.fileId ?? ''}`).expect(404);
+    }
   });
 
   it('a body that is too large is not even read for a role that is too small', async () => {
