@@ -1,8 +1,9 @@
 import { saturationState } from '@riseback/steam';
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
-import { certainLevelPattern } from './certain-level-pattern';
+import { certainLevelPattern, FRICTION_BOUNDS } from './certain-level-pattern';
 import type { FlashingFlow } from './flash-vapour';
+import { darcyFrictionFactor } from './friction-factor';
 import { patternAtLevel } from './level-flow-pattern';
 import { STRATIFIED_SLOPE_LIMIT } from './stratified-flow';
 
@@ -57,6 +58,21 @@ describe('certainLevelPattern', () => {
   it('leaves rises to the level, where the forces may balance more than once', () => {
     for (const flow of fc.sample(returns, 100)) {
       if (flow.fallSlope > 0) expect(certainLevelPattern({ ...flow, fallSlope: -flow.fallSlope })).toBeUndefined();
+    }
+  });
+});
+
+// Against Colebrook-White itself, whose f falls with Re and rises with roughness.
+describe('FRICTION_BOUNDS', () => {
+  it('hold the Darcy factor over their whole range', () => {
+    const { atMost, atLeast, Re: greatestRe, relativeRoughness } = FRICTION_BOUNDS;
+    for (let i = 0; i <= 400; i++) {
+      const Re = 10 * (greatestRe / 10) ** (i / 400);
+      for (const share of [0, 0.01, 0.1, 0.5, 1]) {
+        const f = darcyFrictionFactor(Re, share * relativeRoughness);
+        expect(f).toBeGreaterThan(atLeast);
+        expect(f).toBeLessThanOrEqual(Math.max(atMost, 64 / Re));
+      }
     }
   });
 });

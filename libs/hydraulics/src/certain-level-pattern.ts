@@ -11,6 +11,8 @@ interface Rung {
   readonly section: LevelSection;
   readonly leaveFactor: number;
   readonly waveGrowth: number;
+  /** What the level makes of f_l ρ_l j_l²/(f_g ρ_g j_g²): with it, what holds the liquid back over what the vapour drives it by. */
+  readonly holdFactor: number;
 }
 
 /** Levels at which the forces may be looked at, shallowest first; no liquid is taken to stand below the first. */
@@ -19,13 +21,19 @@ const RUNGS: readonly Rung[] = [
   ...[0.17, 0.2, 0.23, 0.26, 0.3, 0.35, 0.4, 0.45, 0.5, 0.55, 0.6, 0.65, 0.7, 0.75, 0.8, 0.84, STEADY_UP_TO_LEVEL],
 ].map((level) => {
   const section = sectionAtLogit(logitOfLevel(level));
-  return { section, leaveFactor: leaveFactor(section), waveGrowth: waveGrowth(section) };
+  const holds = holdFactor(section);
+  return { section, leaveFactor: leaveFactor(section), waveGrowth: waveGrowth(section), holdFactor: holds };
 });
 const HALF_FULL = RUNGS.findIndex(({ section }) => section.levelFraction > 0.499);
 /** The level at which waves grow least lies between this rung and the next: A_l = A/3. */
 const CALMEST = RUNGS.findLastIndex(({ section }) => section.liquidArea < Math.PI / 12);
 /** What waves grow by there, 1/[√a (1 − a)] at a = 1/3. */
 const LEAST_WAVE_GROWTH = Math.sqrt(3) * 1.5;
+/**
+ * Bounds of the Darcy factor up to a Reynolds number and a roughness that few returns pass: at most the greater of 64/Re and the first
+ * (0.0549 at Re 2300, ε/D 0.01), at least the second (0.01165 at Re 1e6 on a smooth wall). Swept in the spec.
+ */
+export const FRICTION_BOUNDS = { atMost: 0.058, atLeast: 0.0116, Re: 1e6, relativeRoughness: 0.01 } as const;
 
 /**
  * The pattern of a level or falling run where it can be told without solving for the level, as in nearly every pipe.
@@ -45,8 +53,9 @@ export function certainLevelPattern(flow: FlashingFlow): 'stratifiedSmooth' | 's
   if (fallSlope < 0) return undefined;
   const forces = stratifiedForces(flow, 'smooth', darcyFrictionFactor);
   if (isCreep(forces)) return undefined;
-  let leaves = 0;
-  while (leaves < RUNGS.length && forces.vapourPull * rung(leaves).leaveFactor < 1) leaves++;
+  // from the top, where nearly every return is still stratified
+  let leaves = RUNGS.length;
+  while (leaves > 0 && forces.vapourPull * rung(leaves - 1).leaveFactor >= 1) leaves--;
   if (leaves > 0 && standsBelow(forces, leaves - 1)) return certainSurface(forces, leaves - 1);
   if (leaves >= HALF_FULL) return undefined;
   return !standsBelow(forces, leaves) && standsBelow(forces, HALF_FULL) ? 'annular' : undefined;
@@ -68,7 +77,30 @@ function certainSurface(forces: StratifiedForces, top: number): 'stratifiedSmoot
 }
 
 function standsBelow(forces: StratifiedForces, index: number): boolean {
-  return lnForceRatio(forces, rung(index).section) < 0;
+  return surelyBelow(forces, rung(index)) || lnForceRatio(forces, rung(index).section) < 0;
+}
+
+/** Whether even the greatest friction of the liquid and the least of the vapour leave it below: most often so, and at a tenth of the cost. */
+function surelyBelow({ flow, liquidSpeedMS, vapourSpeedMS }: StratifiedForces, { section, holdFactor }: Rung): boolean {
+  const { insideDiameterM: D, roughnessM, saturation } = flow;
+  const { liquidDensityKgM3, vapourDensityKgM3, liquidViscosityPaS, vapourViscosityPaS } = saturation;
+  const liquidDiameterM = D * section.liquidHydraulicDiameter;
+  const vapourMS = vapourSpeedMS * section.vapourSpeedUp;
+  const vapourRe = (vapourDensityKgM3 * vapourMS * D * section.vapourHydraulicDiameter) / vapourViscosityPaS;
+  const { atMost, atLeast, Re, relativeRoughness } = FRICTION_BOUNDS;
+  if (!(vapourRe <= Re && roughnessM <= relativeRoughness * liquidDiameterM)) return false;
+  const liquidRe = (liquidDensityKgM3 * liquidSpeedMS * section.liquidSpeedUp * liquidDiameterM) / liquidViscosityPaS;
+  const heads =
+    (liquidDensityKgM3 * liquidSpeedMS * liquidSpeedMS) / (vapourDensityKgM3 * vapourSpeedMS * vapourSpeedMS);
+  return Math.max(atMost, 64 / liquidRe) * heads * holdFactor < atLeast;
+}
+
+function holdFactor(section: LevelSection): number {
+  const { liquidArea, vapourArea, liquidPerimeter, vapourPerimeter, surfaceWidth, liquidSpeedUp, vapourSpeedUp } =
+    section;
+  const onLiquid = (liquidSpeedUp * liquidSpeedUp * liquidPerimeter) / liquidArea;
+  const byVapour = vapourPerimeter / vapourArea + surfaceWidth * (1 / liquidArea + 1 / vapourArea);
+  return onLiquid / (vapourSpeedUp * vapourSpeedUp * byVapour);
 }
 
 function rung(index: number): Rung {

@@ -33,12 +33,8 @@ export function darcyGradient(flow: SinglePhaseFlow): number {
 }
 
 /** The same for a phase in a given bore, for inner loops that should not build an object at every step. */
-export function darcyGradientOf(
-  massFlowKgS: number,
-  densityKgM3: number,
-  viscosityPaS: number,
-  { insideDiameterM, roughnessM, lossCoefficientPerM }: Bore,
-): number {
+export function darcyGradientOf(massFlowKgS: number, densityKgM3: number, viscosityPaS: number, bore: Bore): number {
+  const { insideDiameterM, roughnessM, lossCoefficientPerM } = bore;
   if (!(
     massFlowKgS >= 0 &&
     densityKgM3 > 0 &&
@@ -47,14 +43,7 @@ export function darcyGradientOf(
     roughnessM >= 0 &&
     lossCoefficientPerM >= 0
   )) {
-    throw new NonPhysicalInputError('darcyGradient', {
-      massFlowKgS,
-      densityKgM3,
-      viscosityPaS,
-      insideDiameterM,
-      roughnessM,
-      lossCoefficientPerM,
-    });
+    throw refusal(massFlowKgS, densityKgM3, viscosityPaS, bore);
   }
   const massFlux = massFlowKgS / boreAreaM2(insideDiameterM);
   // a still pipe, and a flow so small that its square vanishes while 64/Re overflows
@@ -62,6 +51,17 @@ export function darcyGradientOf(
   const Re = (massFlux * insideDiameterM) / viscosityPaS;
   const f = darcyFrictionFactor(Re, roughnessM / insideDiameterM);
   return ((f / insideDiameterM + lossCoefficientPerM) * massFlux * massFlux) / (2 * densityKgM3);
+}
+
+/** Apart from the gradient, which stays short enough that a compiler takes it into the loops that call it. */
+function refusal(
+  massFlowKgS: number,
+  densityKgM3: number,
+  viscosityPaS: number,
+  { insideDiameterM, roughnessM, lossCoefficientPerM }: Bore,
+): NonPhysicalInputError {
+  const bore = { insideDiameterM, roughnessM, lossCoefficientPerM };
+  return new NonPhysicalInputError('darcyGradient', { massFlowKgS, densityKgM3, viscosityPaS, ...bore });
 }
 
 /** Cross-section of a round bore, m². */

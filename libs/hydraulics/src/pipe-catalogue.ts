@@ -25,7 +25,10 @@ export interface PipeSchedule {
 }
 
 const SCHEDULES: readonly PipeSchedule[] = PIPE_CATALOGUE.flatMap(schedulesOf);
-const BORES = new Map(SCHEDULES.flatMap(({ sizes }) => sizes).map((bore) => [keyOf(bore), bore]));
+/** By schedule, then by size: one key of both would have to be put together anew for each pipe. */
+const BORES = new Map<string, ReadonlyMap<string, PipeBore>>(
+  SCHEDULES.map(({ schedule, sizes }) => [schedule, new Map(sizes.map((bore) => [bore.nps, bore]))]),
+);
 
 /**
  * The dimensions of a pipe by its size's name, or undefined when no standard in the catalogue makes it. Names are
@@ -33,7 +36,7 @@ const BORES = new Map(SCHEDULES.flatMap(({ sizes }) => sizes).map((bore) => [key
  * @example pipeBore({ nps: '1', schedule: '80' })?.insideDiameterM // 0.0243
  */
 export function pipeBore(size: PipeSizeName): PipeBore | undefined {
-  return BORES.get(keyOf(size));
+  return BORES.get(size.schedule)?.get(size.nps);
 }
 
 /** All sizes for choosers, grouped by standard and schedule. */
@@ -69,8 +72,4 @@ function schedulesOf({ standard, outsideDiameterMm, wallMm }: PipeStandard): Pip
 /** Millimetres to metres, rounded to the micrometre so that 33.4 − 2 × 4.55 is 0.0243 and not 0.024299999999999995. */
 function metres(millimetres: number): number {
   return Math.round(millimetres * 1000) / 1e6;
-}
-
-function keyOf({ nps, schedule }: PipeSizeName): string {
-  return `${nps}|${schedule}`;
 }

@@ -1,12 +1,13 @@
 import { boreAreaM2 } from '@riseback/hydraulics';
 import type { NetworkFile } from '@riseback/network';
-import { saturationState, type SaturationState } from '@riseback/steam';
+import { blankSaturation, fillSaturation, saturationState } from '@riseback/steam';
 import { limitsInForce, type LimitsInForce } from './check-limits';
 import { ownRuns, type AverageRun } from './coincidence';
 import { atElement } from './element-failure';
 import { enthalpyAlong } from './flow-and-energy';
-import { temperatureAtK, thermodynamicQuality, vapourFraction } from './fluid-state';
+import { fluidStateAt, temperatureAtK, vapourFraction } from './fluid-state';
 import { networkBands } from './network-bands';
+import { nodeQualities, type NodeQualities } from './node-qualities';
 import { failedOpen } from './open-traps';
 import { checkPipe, vesselCannotDrain } from './pipe-checks';
 import { pipeResult, type PieceEnd } from './pipe-result';
@@ -29,7 +30,8 @@ export interface Solved extends AverageRun {
  */
 export function assembleResult(solved: Solved): SolveResult {
   const { file, tree, limits } = partsOf(solved);
-  const pipes = pipesOf(solved, limits);
+  const qualities = nodeQualities(solved.state);
+  const pipes = pipesOf(solved, limits, qualities);
   const runs = ownRuns(solved, file.method.coincidence);
   const bands = solved.bands ? networkBands({ ...solved, ends: pipes.ends, ownRuns: runs }) : undefined;
   const models = new Map(file.trapModels.map((model) => [model.id, model]));
@@ -42,7 +44,7 @@ export function assembleResult(solved: Solved): SolveResult {
       leftOut.push(id);
       return;
     }
-    nodes.push(nodeResult(solved, index));
+    nodes.push(nodeResult(solved, index, qualities));
     const trap = solved.nodes[index];
     if (trap?.kind === 'trap') {
       const model = trap.node.trapModel === undefined ? undefined : models.get(trap.node.trapModel);
@@ -84,19 +86,23 @@ function addTo(warnings: SolveWarning[], warning: SolveWarning | undefined): voi
 interface Pipes {
   readonly results: readonly PipeResult[];
   readonly warnings: readonly SolveWarning[];
-  /** By pipe. */
+  /** By pipe; of none unless bands are asked for. */
   readonly ends: readonly (readonly PieceEnd[] | undefined)[];
   /** What flows into junctions. */
   readonly streams: MeetingStreams;
   readonly leftOut: readonly string[];
 }
 
-function pipesOf(solved: Solved, limits: LimitsInForce): Pipes {
+/** The state at a pipe's end, filled in anew for each. */
+const downstream = blankSaturation();
+
+function pipesOf(solved: Solved, limits: LimitsInForce, { quality }: NodeQualities): Pipes {
   const { file, geometries } = solved.prepared;
   const { tree, flows, walk } = solved.state;
+  const { friction } = file.method;
   const results: PipeResult[] = [];
   const warnings: SolveWarning[] = [];
-  const ends: (readonly PieceEnd[] | undefined)[] = [];
+  const ends = new Array<readonly PieceEnd[] | undefined>(solved.bands ? file.pipes.length : 0);
   const streams = new MeetingStreams(file.nodes.length);
   const leftOut: string[] = [];
   file.pipes.forEach((pipe, index) => {
@@ -104,12 +110,11 @@ function pipesOf(solved: Solved, limits: LimitsInForce): Pipes {
     const geometry = geometries[index];
     if (marched === undefined || geometry === undefined) {
       leftOut.push(pipe.id);
-      ends.push(undefined);
       return;
     }
     const flow = flowInPipe(tree, index, geometry, flows);
     const below = outletNode(tree, index);
-    const downstream = saturationAt(solved, below);
+    fillSaturation(downstream, walk.pressurePa[below] as number);
     const { result, ends: endsOfPipe } = pipeResult({
       pipe,
       index,
@@ -117,17 +122,16 @@ function pipesOf(solved: Solved, limits: LimitsInForce): Pipes {
       marched,
       flow,
       arrow: tree.arrow[index] as number,
-      upstream: saturationAt(solved, inletNode(tree, index)),
+      upstreamQuality: vapourFraction(quality[inletNode(tree, index)] as number),
       downstream,
     });
     results.push(result);
-    ends.push(endsOfPipe);
+    if (solved.bands) ends[index] = endsOfPipe;
     if (flow.massFlowKgS > 0 && solved.nodes[below]?.kind === 'junction') {
       streams.add(below, index, temperatureAtK(downstream, enthalpyAlong(flow, geometry.lengthM)));
     }
     const massFluxKgM2S = flow.massFlowKgS / boreAreaM2(geometry.insideDiameterM);
     const { lengthM } = geometry;
-    const { friction } = file.method;
     const { checkValve } = pipe;
     const found = checkPipe({ result, ends: endsOfPipe, friction, lengthM, massFluxKgM2S, checkValve, limits });
     for (const warning of found) warnings.push(warning);
@@ -135,30 +139,26 @@ function pipesOf(solved: Solved, limits: LimitsInForce): Pipes {
   return { results, warnings, ends, streams, leftOut };
 }
 
-function nodeResult(solved: Solved, index: number): NodeResult {
+function nodeResult(solved: Solved, index: number, { quality, boilingK }: NodeQualities): NodeResult {
   const { flows, walk } = solved.state;
   const node = solved.prepared.file.nodes[index] as NetworkFile['nodes'][number];
   const enthalpyJKg = flows.enthalpyJKg[index] as number;
-  const saturation = saturationAt(solved, index);
-  let temperatureK: number;
+  const pressurePa = walk.pressurePa[index] as number;
+  const x = quality[index] as number;
+  let temperatureK = boilingK[index] as number;
   try {
-    temperatureK = temperatureAtK(saturation, enthalpyJKg);
+    if (!(x >= 0 && x <= 1)) temperatureK = fluidStateAt(saturationState(pressurePa), enthalpyJKg).temperatureK;
   } catch (error) {
     throw atElement('node', node, index, error);
   }
   return {
     id: node.id,
-    pressurePa: walk.pressurePa[index] as number,
+    pressurePa,
     temperatureK,
     enthalpyJKg,
-    quality: vapourFraction(thermodynamicQuality(saturation, enthalpyJKg)),
+    quality: vapourFraction(x),
     massFlowKgS: flows.massFlowKgS[index] as number,
   };
-}
-
-/** Looked up anew where it is asked for: kept for every node, states would be half of what a large network holds in memory. */
-function saturationAt({ state }: Solved, index: number): SaturationState {
-  return saturationState(state.walk.pressurePa[index] as number);
 }
 
 function vesselWarning({ nodes, state: { tree, walk } }: Solved, index: number): SolveWarning | undefined {

@@ -1,4 +1,11 @@
-import { liquidAtTemperature, saturationPressurePa, saturationState, saturationTemperatureK } from '@riseback/steam';
+import {
+  blankSaturation,
+  fillSaturation,
+  liquidAtTemperature,
+  saturationPressurePa,
+  saturationState,
+  saturationTemperatureK,
+} from '@riseback/steam';
 import { atElement } from './element-failure';
 import type { OperatingNode } from './operating-case';
 import type { PipeGeometry } from './pipe-geometry';
@@ -69,7 +76,7 @@ export function flowAndEnergy(
     const h = flow > 0 ? (enthalpyFlowW[index] as number) / flow : ambientEnthalpyJKg;
     enthalpyJKg[index] = h;
     let rest = flow;
-    for (const chord of chordsFrom.get(index) ?? []) {
+    for (const chord of chordsFrom.get(index) ?? NO_CHORDS) {
       const taken = chordFlows?.[chord] ?? 0;
       rest -= taken;
       send(chord, outletNode(tree, chord), taken, h);
@@ -107,6 +114,8 @@ export function flowAndEnergy(
   }
 }
 
+const NO_CHORDS: readonly number[] = [];
+
 function chordsByInlet(tree: ReturnTree): Map<number, number[]> {
   const chordsFrom = new Map<number, number[]>();
   for (const chord of tree.chords) {
@@ -140,9 +149,15 @@ export function enthalpyAlong(flow: PipeFlow, distanceM: number): number {
   return Math.max(cooled, Math.min(inletEnthalpyJKg, ambientEnthalpyJKg));
 }
 
+/** Filled in anew for each trap. */
+const atInlet = blankSaturation();
+
 /** Condensate comes to a trap as liquid at its inlet pressure, colder than boiling by its subcooling. */
 export function trapEnthalpyJKg(inletPressurePa: number, subcoolingK: number): number {
-  if (subcoolingK === 0) return saturationState(inletPressurePa).liquidEnthalpyJKg;
+  if (subcoolingK === 0) {
+    fillSaturation(atInlet, inletPressurePa);
+    return atInlet.liquidEnthalpyJKg;
+  }
   return liquidAtTemperature(inletPressurePa, saturationTemperatureK(inletPressurePa) - subcoolingK).enthalpyJKg;
 }
 

@@ -137,7 +137,7 @@ function endsOf(marcher: PipeMarcher, step: WalkStep, flow: PipeFlow): readonly 
     marched,
     flow,
     arrow: withArrow ? 1 : -1,
-    upstream: saturationState(marched.upstreamPressurePa),
+    upstreamQuality: result.upstreamQuality,
     downstream: saturationState(result.downstreamPressurePa),
   }).ends;
 }

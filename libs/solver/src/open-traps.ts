@@ -1,6 +1,6 @@
 import { CHOKED_PRESSURE_RATIO, napierOrificeFlowKgS, orificeSteamFlowKgS } from '@riseback/hydraulics';
 import { findRootBracketed, NoConvergenceError } from '@riseback/numerics';
-import { saturationState } from '@riseback/steam';
+import { requireBoilingPressure } from '@riseback/steam';
 import { atElement, ElementFailure } from './element-failure';
 import { amount, findingWords, say } from './finding-text';
 import { networkState, type NetworkState, type PreparedNetwork } from './network-state';
@@ -119,16 +119,18 @@ export function stateWithOpenTraps(
 
 /** @throws ElementFailure where an inlet lies outside the steam properties */
 function openTraps(nodes: readonly OperatingNode[]): OpenTrap[] {
-  return nodes.flatMap((trap, index) => {
-    if (trap.kind !== 'trap' || trap.openOrificeM === undefined) return [];
+  const open: OpenTrap[] = [];
+  nodes.forEach((trap, index) => {
+    if (trap.kind !== 'trap' || trap.openOrificeM === undefined) return;
     const { openOrificeM: orificeM, inletPressurePa, node } = trap;
     try {
-      saturationState(inletPressurePa);
+      requireBoilingPressure(inletPressurePa);
     } catch (error) {
       throw atElement('node', node, index, error);
     }
-    return [{ index, trap, orificeM, chokedKgS: napierOrificeFlowKgS(inletPressurePa, orificeM) }];
+    open.push({ index, trap, orificeM, chokedKgS: napierOrificeFlowKgS(inletPressurePa, orificeM) });
   });
+  return open;
 }
 
 /** What a trap that has failed open does to its return; nothing of any other. */

@@ -115,15 +115,17 @@ function operatingTrap(
   // an isolated exchanger, or one drawn without a load, has no part load to follow
   const modulates = service.kind === 'modulating' && !isolated && node.loadKgS > 0;
   const loadFraction = loadKgS / node.loadKgS;
-  const servicePressurePa = (): number =>
-    modulates ? modulatedInletPressurePa(service, fullLoadPressurePa, loadFraction) : fullLoadPressurePa;
+  const given = override?.inletPressurePa;
+  const inletPressurePa =
+    given === undefined && modulates
+      ? modulatedInletPressurePa(service, fullLoadPressurePa, loadFraction)
+      : (given ?? fullLoadPressurePa);
+  const trap: OperatingTrap = { kind: 'trap', node, inletPressurePa, loadKgS: isolated ? 0 : loadKgS, isolated };
   const orificeM = override?.state === 'failedOpen' ? openOrificeM(node, override, models) : undefined;
+  // most traps are neither: a plain one is not copied
+  if (!modulates && orificeM === undefined) return trap;
   return {
-    kind: 'trap',
-    node,
-    inletPressurePa: override?.inletPressurePa ?? servicePressurePa(),
-    loadKgS: isolated ? 0 : loadKgS,
-    isolated,
+    ...trap,
     ...(modulates ? { modulation: { fullLoadPressurePa, loadFraction } } : {}),
     ...(orificeM === undefined ? {} : { openOrificeM: orificeM }),
   };

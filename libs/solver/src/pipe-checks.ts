@@ -59,17 +59,18 @@ function reversed({ result, checkValve }: PipeUnderCheck): SolveWarning | undefi
 
 function velocity({ result, limits }: PipeUnderCheck): SolveWarning | undefined {
   const { watchMS, failMS, liquidMS } = limits.velocity;
-  const base = { code: 'velocity', element: result.id };
+  const [code, element] = ['velocity', result.id];
   const value = Math.abs(result.mixtureVelocityMS);
   if (result.downstreamQuality <= 0) {
     if (value <= liquidMS) return undefined;
     const text = say`Liquid runs at ${amount('velocity', value)}; above ${amount('velocity', liquidMS)} valves that close quickly hammer and bends wear.`;
-    return { ...base, verdict: 'watch', value, limit: liquidMS, ...findingWords(text, LARGER_BORE) };
+    return { code, element, verdict: 'watch', value, limit: liquidMS, ...findingWords(text, LARGER_BORE) };
   }
   if (value <= watchMS) return undefined;
   const limit = value > failMS ? failMS : watchMS;
   const text = say`Condensate and flash steam leave at ${amount('velocity', value)}; above ${amount('velocity', limit)} the steam tears the liquid along, which wears bends and hammers.`;
-  return { ...base, verdict: value > failMS ? 'fail' : 'watch', value, limit, ...findingWords(text, LARGER_BORE) };
+  const verdict = value > failMS ? 'fail' : 'watch';
+  return { code, element, verdict, value, limit, ...findingWords(text, LARGER_BORE) };
 }
 
 function momentum({ result, massFluxKgM2S, limits }: PipeUnderCheck): SolveWarning | undefined {
@@ -122,7 +123,8 @@ function slug({ result, ends }: PipeUnderCheck): SolveWarning | undefined {
 const LET_FLASH_GO = say`Let the flash steam go in a vessel before this pipe, lay the run to fall, or lift the condensate with a pump.`;
 
 function uphillTwoPhase({ result, ends }: PipeUnderCheck): SolveWarning | undefined {
-  const value = ends.reduce((riseM, end) => riseM + (isFlashingRise(end) ? end.riseM : 0), 0);
+  let value = 0;
+  for (const end of ends) if (isFlashingRise(end)) value += end.riseM;
   if (value === 0) return undefined;
   const text = say`Condensate rises ${amount('length', value)} together with its flash steam: what the rise costs is the least certain part of the result, and at low load the steam slips past and lets the condensate fall back.`;
   return { code: 'uphillTwoPhase', element: result.id, verdict: 'watch', value, ...findingWords(text, LET_FLASH_GO) };
@@ -146,9 +148,7 @@ function dryBasis({ result, ends, friction }: PipeUnderCheck): SolveWarning | un
       ...findingWords(text, ANOTHER_METHOD),
     };
   }
-  const torn = ends.find(
-    ({ quality, pattern }) => quality > DRAINING_QUALITY && pattern !== undefined && FILLS_BORE[pattern],
-  );
+  const torn = ends.find(isTorn);
   if (torn?.pattern === undefined) return undefined;
   const text = say`The dry-return basis lets condensate drain along the bottom, but by its flow pattern (${PATTERN_WORDS[torn.pattern]}) the steam carries it along here: friction may be several times what is told.`;
   return { code, element: result.id, verdict: 'watch', ...findingWords(text, ANOTHER_METHOD) };
@@ -156,6 +156,10 @@ function dryBasis({ result, ends, friction }: PipeUnderCheck): SolveWarning | un
 
 function isFlashingRise({ riseM, quality }: PieceEnd): boolean {
   return riseM > 0 && quality > DRAINING_QUALITY;
+}
+
+function isTorn({ quality, pattern }: PieceEnd): boolean {
+  return quality > DRAINING_QUALITY && pattern !== undefined && FILLS_BORE[pattern];
 }
 
 const PATTERN_WORDS: Readonly<Record<FlowPattern, string>> = {

@@ -1,5 +1,6 @@
 import { fittingLossCoefficient, pipeBore, type FittingName } from '@riseback/hydraulics';
 import type { FittingKind, NetworkFile, PipeRun, RoutePiece } from '@riseback/network';
+import type { PipeEnds } from './pipe-ends';
 
 /** What the march needs of a pipe, with its size and fittings looked up. */
 export interface PipeGeometry {
@@ -40,12 +41,9 @@ export function insideDiameterM(pipe: PipeRun): number | undefined {
 }
 
 /** By pipe in the file's order; undefined where the pipe cannot be. */
-export function pipeGeometries(file: NetworkFile): (PipeGeometry | undefined)[] {
-  const elevationM = new Map(file.nodes.map((node) => [node.id, node.elevationM]));
-  return file.pipes.map((pipe) => {
-    const riseM = (elevationM.get(pipe.to) ?? 0) - (elevationM.get(pipe.from) ?? 0);
-    return pipeGeometry(pipe, riseM);
-  });
+export function pipeGeometries({ nodes, pipes }: NetworkFile, { from, to }: PipeEnds): (PipeGeometry | undefined)[] {
+  const elevationM = (node: number | undefined): number => nodes[node as number]?.elevationM ?? 0;
+  return pipes.map((pipe, i) => pipeGeometry(pipe, elevationM(to[i]) - elevationM(from[i])));
 }
 
 /** @returns undefined for a size that no standard makes, and for a roughness that reaches the middle of the bore */

@@ -41,8 +41,8 @@ export interface MarchedPipe {
   readonly upstreamPressurePa: number;
   /** What stands at the outlet: the node's pressure, or above it the critical pressure of a flow that chokes there. */
   readonly outletPressurePa: number;
-  /** What stands at the downstream end of each piece, from the outlet up; of a pipe of one piece that is the outlet alone. */
-  readonly pieceOutletsPa: readonly number[];
+  /** What stands at the downstream end of each piece but the lowest, from there up. */
+  readonly upperOutletsPa: readonly number[];
   readonly staticPa: number;
   readonly frictionPa: number;
   readonly flashPa: number;
@@ -81,11 +81,8 @@ const ABOVE_CHOKING = 1e-5;
 const START_BORES = 10;
 const [LOWEST_PA, HIGHEST_PA] = SATURATION_RANGE_PA;
 
-interface PartTotals {
-  staticPa: number;
-  frictionPa: number;
-  flashPa: number;
-}
+/** Of nearly every pipe. */
+const NO_UPPER_PIECES: number[] = [];
 
 type Writable<T> = { -readonly [Key in keyof T]: T[Key] };
 
@@ -112,6 +109,8 @@ export class PipeMarcher {
   private readonly saturation = blankSaturation();
   private readonly flashing: Writable<FlashingFlow>;
   private readonly integration: IntegrationOptions;
+  /** What each part of the pipe at hand has come to. */
+  private readonly totals = new Float64Array(PARTS);
 
   constructor(private readonly options: MarchOptions) {
     const { friction, voidFraction, acceleration } = options.method;
@@ -153,38 +152,43 @@ export class PipeMarcher {
     nodePressurePa: number,
     onPieceEnd?: (piece: RoutePiece, pressurePa: number) => void,
   ): MarchedPipe {
-    const { at, flashing } = this;
+    const { at, flashing, totals } = this;
     this.enter(pipe, flow, piecesAgainstFlow[0]);
     const criticalPa = this.criticalPressurePa(nodePressurePa);
     const outletPressurePa = Math.max(nodePressurePa, criticalPa);
-    const totals = { staticPa: 0, frictionPa: 0, flashPa: 0 };
     let pressurePa = outletPressurePa;
     if (this.accelerates) pressurePa = Math.max(pressurePa, criticalPa * (1 + ABOVE_CHOKING));
-    totals.flashPa = pressurePa - nodePressurePa;
+    totals.fill(0);
+    totals[FLASH] = pressurePa - nodePressurePa;
     // just above choking the gradient runs up without bound: the first few bores are marched by themselves
     let startM = criticalPa > 0 ? START_BORES * pipe.insideDiameterM : 0;
-    const pieceOutletsPa = [pressurePa];
+    const upperOutletsPa = piecesAgainstFlow.length === 1 ? NO_UPPER_PIECES : [];
     const uppermost = piecesAgainstFlow.at(-1);
     for (const piece of piecesAgainstFlow) {
       at.riseSlope = piece.riseM / piece.lengthM;
       flashing.fallSlope = -at.riseSlope;
-      if (startM > 0 && startM < piece.lengthM) pressurePa = this.stretch(pressurePa, startM, totals);
+      if (startM > 0 && startM < piece.lengthM) pressurePa = this.stretch(pressurePa, startM);
       else startM = 0;
-      pressurePa = this.stretch(pressurePa, piece.lengthM - startM, totals);
+      pressurePa = this.stretch(pressurePa, piece.lengthM - startM);
       startM = 0;
-      if (piece !== uppermost) pieceOutletsPa.push(pressurePa);
+      if (piece !== uppermost) upperOutletsPa.push(pressurePa);
       onPieceEnd?.(piece, pressurePa);
     }
-    const { staticPa, frictionPa, flashPa } = totals;
-    return { upstreamPressurePa: pressurePa, outletPressurePa, pieceOutletsPa, staticPa, frictionPa, flashPa };
+    return {
+      upstreamPressurePa: pressurePa,
+      outletPressurePa,
+      upperOutletsPa,
+      staticPa: totals[STATIC] as number,
+      frictionPa: totals[FRICTION] as number,
+      flashPa: totals[FLASH] as number,
+    };
   }
 
   /** Marches up a stretch of one slope, and adds what it costs. @returns the pressure at its upstream end */
-  private stretch(outletPressurePa: number, lengthM: number, totals: PartTotals): number {
+  private stretch(outletPressurePa: number, lengthM: number): number {
+    const { totals } = this;
     const { y, parts } = this.integrate(outletPressurePa, lengthM);
-    totals.staticPa += parts[STATIC] as number;
-    totals.frictionPa += parts[FRICTION] as number;
-    totals.flashPa += parts[FLASH] as number;
+    for (let part = 0; part < PARTS; part++) totals[part] = (totals[part] as number) + (parts[part] as number);
     this.at.outletM -= lengthM;
     return y;
   }
@@ -227,26 +231,15 @@ export class PipeMarcher {
     const { flow, outletM } = this.at;
     const enthalpyJKg = enthalpyAlong(flow, outletM - distanceM);
     this.report(pressurePa, enthalpyJKg);
-    const { saturation } = this;
+    const { saturation, flashing } = this;
     fillSaturation(saturation, pressurePa);
     const quality = thermodynamicQuality(saturation, enthalpyJKg);
-    return quality > 0 && quality <= 1
-      ? this.twoPhaseGradient(saturation, quality, enthalpyJKg, parts)
-      : this.singlePhaseGradient(saturation, enthalpyJKg, parts);
-  };
-
-  private twoPhaseGradient(
-    saturation: SaturationState,
-    quality: number,
-    enthalpyJKg: number,
-    parts: Float64Array,
-  ): number {
-    const { flashing } = this;
+    if (!(quality > 0 && quality <= 1)) return this.singlePhaseGradient(saturation, enthalpyJKg, parts);
     flashing.quality = quality;
     const fullBoreShare = this.law.write(flashing, parts);
     parts[STATIC] = this.twoPhaseStaticGradient(fullBoreShare);
-    return this.accelerated(saturation, enthalpyJKg, fullBoreShare, parts);
-  }
+    return this.accelerates ? this.accelerated(saturation, enthalpyJKg, fullBoreShare, parts) : sumOf(parts);
+  };
 
   /** Subcooled liquid counts as friction, superheated steam as flash. */
   private singlePhaseGradient(saturation: SaturationState, enthalpyJKg: number, parts: Float64Array): number {

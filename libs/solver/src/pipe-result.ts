@@ -1,5 +1,5 @@
 import { boreAreaM2, flowPattern, type FlashingFlow, type FlowPattern } from '@riseback/hydraulics';
-import type { PipeRun } from '@riseback/network';
+import type { PipeRun, RoutePiece } from '@riseback/network';
 import { blankSaturation, saturationState, type SaturationState } from '@riseback/steam';
 import { atElement } from './element-failure';
 import { enthalpyAlong, type PipeFlow } from './flow-and-energy';
@@ -8,7 +8,7 @@ import { piecesAgainstFlow, type PipeGeometry } from './pipe-geometry';
 import type { MarchedPipe } from './pipe-march';
 import type { PipeResult } from './solve-result';
 
-/** A pipe whose march is done, between the states of the nodes at its ends. */
+/** A pipe whose march is done, between the nodes at its ends. */
 export interface PipeAfterMarch {
   readonly pipe: PipeRun;
   readonly index: number;
@@ -17,7 +17,9 @@ export interface PipeAfterMarch {
   readonly flow: PipeFlow;
   /** 1 where the flow runs with the pipe’s arrow, −1 against it. */
   readonly arrow: number;
-  readonly upstream: SaturationState;
+  /** Mass fraction of vapour in what flows in. */
+  readonly upstreamQuality: number;
+  /** Not kept. */
   readonly downstream: SaturationState;
 }
 
@@ -26,8 +28,8 @@ export interface PieceEnd {
   /** In the direction of flow. */
   readonly riseM: number;
   readonly quality: number;
-  /** Absent where no map answers. */
-  readonly pattern?: FlowPattern;
+  /** undefined where no map answers. */
+  readonly pattern: FlowPattern | undefined;
 }
 
 /**
@@ -35,13 +37,13 @@ export interface PieceEnd {
  * @throws ElementFailure where what leaves the pipe is outside the steam properties
  */
 export function pipeResult(at: PipeAfterMarch): { readonly result: PipeResult; readonly ends: readonly PieceEnd[] } {
-  const { pipe, index, geometry, marched, flow, arrow, upstream, downstream } = at;
+  const { pipe, index, geometry, marched, flow, arrow, upstreamQuality, downstream } = at;
   const choked = marched.outletPressurePa > downstream.pressurePa;
-  let outlet: OutletState;
   let ends: readonly PieceEnd[];
+  let phases: Phases;
   try {
     const saturation = choked ? saturationState(marched.outletPressurePa) : downstream;
-    outlet = outletState(saturation, enthalpyAlong(flow, geometry.lengthM));
+    phases = phasesAt(saturation, enthalpyAlong(flow, geometry.lengthM));
     ends = pieceEnds(at, saturation);
   } catch (error) {
     throw atElement('pipe', pipe, index, error);
@@ -49,8 +51,8 @@ export function pipeResult(at: PipeAfterMarch): { readonly result: PipeResult; r
   // a still pipe whose arrow runs the other way has no −0
   const massFlowKgS = flow.massFlowKgS === 0 ? 0 : flow.massFlowKgS * arrow;
   const massFlux = massFlowKgS / boreAreaM2(geometry.insideDiameterM);
-  const { liquidDensityKgM3, vapourDensityKgM3 } = outlet.phases;
-  const quality = vapourFraction(outlet.quality);
+  const { liquidDensityKgM3, vapourDensityKgM3 } = phases;
+  const { quality, pattern } = ends[0] as PieceEnd;
   const result: Writable<PipeResult> = {
     id: pipe.id,
     massFlowKgS,
@@ -59,13 +61,12 @@ export function pipeResult(at: PipeAfterMarch): { readonly result: PipeResult; r
     staticPa: marched.staticPa,
     frictionPa: marched.frictionPa,
     flashPa: marched.flashPa,
-    upstreamQuality: vapourFraction(thermodynamicQuality(upstream, flow.inletEnthalpyJKg)),
+    upstreamQuality,
     downstreamQuality: quality,
     liquidVelocityMS: massFlux / liquidDensityKgM3,
     mixtureVelocityMS: massFlux * (quality / vapourDensityKgM3 + (1 - quality) / liquidDensityKgM3),
     choked,
   };
-  const pattern = ends[0]?.pattern;
   if (pattern !== undefined) result.flowPattern = pattern;
   if (choked) result.outletPressurePa = marched.outletPressurePa;
   return { result, ends };
@@ -73,15 +74,12 @@ export function pipeResult(at: PipeAfterMarch): { readonly result: PipeResult; r
 
 type Writable<T> = { -readonly [Key in keyof T]: T[Key] };
 
-interface OutletState {
-  readonly quality: number;
-  readonly phases: Pick<SaturationState, 'liquidDensityKgM3' | 'vapourDensityKgM3'>;
-}
+type Phases = Pick<SaturationState, 'liquidDensityKgM3' | 'vapourDensityKgM3'>;
 
 /** A boiling mixture has the densities of saturation; only a single phase has its own to be found. */
-function outletState(saturation: SaturationState, enthalpyJKg: number): OutletState {
+function phasesAt(saturation: SaturationState, enthalpyJKg: number): Phases {
   const quality = thermodynamicQuality(saturation, enthalpyJKg);
-  return { quality, phases: quality >= 0 && quality <= 1 ? saturation : fluidStateAt(saturation, enthalpyJKg) };
+  return quality >= 0 && quality <= 1 ? saturation : fluidStateAt(saturation, enthalpyJKg);
 }
 
 /** Filled in anew for each piece: `flowPattern` keeps nothing of it. */
@@ -100,14 +98,16 @@ function pieceEnds({ geometry, marched, flow, arrow }: PipeAfterMarch, outlet: S
   flashing.insideDiameterM = geometry.insideDiameterM;
   flashing.roughnessM = geometry.roughnessM;
   flashing.lossCoefficientPerM = geometry.lossCoefficientPerM;
+  const pieces = piecesAgainstFlow(geometry.pieces, arrow === 1);
+  const ends = new Array<PieceEnd>(pieces.length);
   let endM = geometry.lengthM;
-  return piecesAgainstFlow(geometry.pieces, arrow === 1).map(({ lengthM, riseM }, i) => {
-    flashing.saturation = i === 0 ? outlet : saturationState(marched.pieceOutletsPa[i] as number);
+  for (let i = 0; i < pieces.length; i++) {
+    const { lengthM, riseM } = pieces[i] as RoutePiece;
+    flashing.saturation = i === 0 ? outlet : saturationState(marched.upperOutletsPa[i - 1] as number);
     flashing.quality = thermodynamicQuality(flashing.saturation, enthalpyAlong(flow, endM));
     flashing.fallSlope = -riseM / lengthM;
     endM -= lengthM;
-    const pattern = flowPattern(flashing);
-    const quality = vapourFraction(flashing.quality);
-    return pattern === undefined ? { riseM, quality } : { riseM, quality, pattern };
-  });
+    ends[i] = { riseM, quality: vapourFraction(flashing.quality), pattern: flowPattern(flashing) };
+  }
+  return ends;
 }

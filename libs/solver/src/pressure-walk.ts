@@ -1,5 +1,5 @@
-import type { NetworkFile, PipeRun } from '@riseback/network';
-import { blankSaturation, fillSaturation } from '@riseback/steam';
+import type { NetworkFile, PipeRun, RoutePiece } from '@riseback/network';
+import { requireBoilingPressure } from '@riseback/steam';
 import { atElement } from './element-failure';
 import type { FlowAndEnergy, PipeFlow } from './flow-and-energy';
 import { handCheckLiftPa } from './hand-check';
@@ -34,7 +34,6 @@ export function pressureWalk(
 ): PressureWalk {
   const byNode = (): Float64Array => new Float64Array(tree.nodeCount);
   const [pressurePa, staticPa, frictionPa, flashPa, handCheckPa] = [byNode(), byNode(), byNode(), byNode(), byNode()];
-  const boiling = blankSaturation();
   const marcher = new PipeMarcher(options);
   const marched: (MarchedPipe | undefined)[] = new Array<MarchedPipe | undefined>(file.pipes.length);
 
@@ -55,7 +54,7 @@ export function pressureWalk(
   ): void {
     pressurePa[index] = given;
     try {
-      fillSaturation(boiling, given);
+      requireBoilingPressure(given);
     } catch (error) {
       throw atElement('node', node, index, error);
     }
@@ -66,9 +65,10 @@ export function pressureWalk(
     const geometry = geometries[pipeIndex];
     if (geometry === undefined) return;
     const below = tree.drainsTo[index] as number;
-    const up = march(pipeIndex, geometry, below);
+    const pieces = piecesAgainstFlow(geometry.pieces, tree.arrow[pipeIndex] === 1);
+    const up = march(pipeIndex, geometry, pieces, below);
     try {
-      fillSaturation(boiling, up.upstreamPressurePa);
+      requireBoilingPressure(up.upstreamPressurePa);
     } catch (error) {
       throw atElement('pipe', file.pipes[pipeIndex] as PipeRun, pipeIndex, error);
     }
@@ -77,7 +77,6 @@ export function pressureWalk(
     staticPa[index] = (staticPa[below] as number) + up.staticPa;
     frictionPa[index] = (frictionPa[below] as number) + up.frictionPa;
     flashPa[index] = (flashPa[below] as number) + up.flashPa;
-    const pieces = piecesAgainstFlow(geometry.pieces, tree.arrow[pipeIndex] === 1);
     handCheckPa[index] = (handCheckPa[below] as number) + handCheckLiftPa(pieces);
   }
 
@@ -86,14 +85,14 @@ export function pressureWalk(
     const geometry = geometries[chord];
     if (geometry === undefined) return undefined;
     const below = outletNode(tree, chord);
-    const up = march(chord, geometry, below);
+    const pieces = piecesAgainstFlow(geometry.pieces, tree.arrow[chord] === 1);
+    const up = march(chord, geometry, pieces, below);
     if (flows.pipeFlowKgS[chord] !== 0) return up;
     const upstreamPressurePa = pressurePa[inletNode(tree, chord)] as number;
     return { ...up, upstreamPressurePa, staticPa: upstreamPressurePa - (pressurePa[below] as number) };
   }
 
-  function march(pipeIndex: number, geometry: PipeGeometry, below: number): MarchedPipe {
-    const pieces = piecesAgainstFlow(geometry.pieces, tree.arrow[pipeIndex] === 1);
+  function march(pipeIndex: number, geometry: PipeGeometry, pieces: readonly RoutePiece[], below: number): MarchedPipe {
     const flow = flowInPipe(tree, pipeIndex, geometry, flows);
     try {
       return marcher.march(geometry, flow, pieces, pressurePa[below] as number);

@@ -1,5 +1,6 @@
 import { compareIds, type NetworkFile } from '@riseback/network';
 import { pipesAtNode } from './mesh-network';
+import type { PipeEnds } from './pipe-ends';
 
 /**
  * The network as trees that drain to nodes of fixed pressure (receivers and flash vessels), by index in the file's order, and the
@@ -46,32 +47,28 @@ export function outletNode({ arrow, from, to }: ReturnTree, pipe: number): numbe
  * Finds the trees, in time linear in nodes and pipes. No way leads against a check valve unless there is no other.
  * @param isSound by pipe; one that is not is as if not there. Left out, all are
  */
-export function returnTree(file: NetworkFile, isSound?: readonly boolean[]): ReturnTree {
+export function returnTree(file: NetworkFile, ends: PipeEnds, isSound?: readonly boolean[]): ReturnTree {
   const { nodes, pipes } = file;
   const vesselOfOutlet: number[] = [];
   const outletOfVessel = new Int32Array(nodes.length).fill(-1);
-  const indexOf = new Map<string, number>();
   nodes.forEach((node, i) => {
-    indexOf.set(node.id, i);
     if (node.kind === 'flashVessel') outletOfVessel[i] = nodes.length + vesselOfOutlet.push(i) - 1;
   });
   const nodeCount = nodes.length + vesselOfOutlet.length;
   const from = new Int32Array(pipes.length).fill(-1);
   const to = new Int32Array(pipes.length).fill(-1);
-  pipes.forEach((pipe, i) => {
-    const start = indexOf.get(pipe.from);
-    const end = indexOf.get(pipe.to);
-    if (isSound?.[i] === false || start === undefined || end === undefined) return;
+  for (let i = 0; i < pipes.length; i++) {
+    const [start, end] = [ends.from[i] as number, ends.to[i] as number];
+    if (isSound?.[i] === false || start === -1 || end === -1) continue;
     const outlet = outletOfVessel[start] as number;
     from[i] = outlet === -1 ? start : outlet;
     to[i] = end;
-  });
+  }
   const at = pipesAtNode(nodeCount, from, to);
   // flows are summed in the order of the pipes' ids, so that the file's order changes no result, not even by rounding
   const byPipeId = (a: number, b: number): number => compareIds(idOf(pipes, a), idOf(pipes, b));
   for (let node = 0; node < nodeCount; node++) {
-    const [first, end] = [at.first[node] as number, at.first[node + 1] as number];
-    if (end - first > 1) at.pipes.subarray(first, end).sort(byPipeId);
+    sortStretch(at.pipes, at.first[node] as number, at.first[node + 1] as number, byPipeId);
   }
   const outPipe = new Int32Array(nodeCount).fill(-1);
   const drainsTo = new Int32Array(nodeCount).fill(-1);
@@ -79,9 +76,11 @@ export function returnTree(file: NetworkFile, isSound?: readonly boolean[]): Ret
   const arrow = new Int8Array(pipes.length);
   const chords: number[] = [];
   const againstValve: { readonly pipe: number; readonly node: number }[] = [];
-  const queue = nodes
-    .flatMap((node, i) => (node.kind === 'receiver' || node.kind === 'flashVessel' ? [i] : []))
-    .sort((a, b) => compareIds(idOf(nodes, a), idOf(nodes, b)));
+  const queue: number[] = [];
+  nodes.forEach(({ kind }, i) => {
+    if (kind === 'receiver' || kind === 'flashVessel') queue.push(i);
+  });
+  queue.sort((a, b) => compareIds(idOf(nodes, a), idOf(nodes, b)));
   for (const node of queue) endOfWalk[node] = node;
 
   // breadth first, all ends at once, so that each node is found from below and the queue is the order of the walk
@@ -132,6 +131,22 @@ export function returnTree(file: NetworkFile, isSound?: readonly boolean[]): Ret
     drainsTo[upstream] = node;
     endOfWalk[upstream] = endOfWalk[node] as number;
     queue.push(upstream);
+  }
+}
+
+/** Up to so many are put in order one by one; for more the sort of the language is worth its call. */
+const FEW = 8;
+
+function sortStretch(list: Int32Array, first: number, end: number, order: (a: number, b: number) => number): void {
+  if (end - first > FEW) {
+    list.subarray(first, end).sort(order);
+    return;
+  }
+  for (let i = first + 1; i < end; i++) {
+    const moving = list[i] as number;
+    let to = i;
+    for (; to > first && order(list[to - 1] as number, moving) > 0; to--) list[to] = list[to - 1] as number;
+    list[to] = moving;
   }
 }
 

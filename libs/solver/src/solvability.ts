@@ -1,4 +1,4 @@
-import { fileFindings, fromFile, solvablePart, type NetworkFile } from '@riseback/network';
+import { fileFindings, fromFile, solvablePart, type NetworkFile, type PipeRun } from '@riseback/network';
 import { insideDiameterM, type PipeGeometry } from './pipe-geometry';
 import type { ProblemError } from './refusal';
 
@@ -18,14 +18,19 @@ export function soundPipes(file: NetworkFile, geometries: readonly (PipeGeometry
 
 /** What keeps a pipe from being computed although it is drawn right. */
 function impossiblePipes(file: NetworkFile, geometries: readonly (PipeGeometry | undefined)[]): ProblemError[] {
-  return file.pipes.flatMap((pipe, i) => {
-    if (geometries[i] !== undefined) return [];
-    const { size } = pipe;
-    if (size !== undefined && insideDiameterM(pipe) === undefined) {
-      const detail = `No standard in the pipe catalogue makes size ${size.nps} in schedule ${size.schedule}. Choose another, or give insideDiameterM.`;
-      return [{ pointer: `/pipes/${i}/size`, detail }];
-    }
-    const detail = `The roughness, ${pipe.roughnessM} m, fills the bore. New steel has 0.0000457 m.`;
-    return [{ pointer: `/pipes/${i}/roughnessM`, detail }];
+  const impossible: ProblemError[] = [];
+  file.pipes.forEach((pipe, i) => {
+    if (geometries[i] === undefined) impossible.push(impossiblePipe(pipe, i));
   });
+  return impossible;
+}
+
+function impossiblePipe(pipe: PipeRun, index: number): ProblemError {
+  const { size } = pipe;
+  if (size !== undefined && insideDiameterM(pipe) === undefined) {
+    const detail = `No standard in the pipe catalogue makes size ${size.nps} in schedule ${size.schedule}. Choose another, or give insideDiameterM.`;
+    return { pointer: `/pipes/${index}/size`, detail };
+  }
+  const detail = `The roughness, ${pipe.roughnessM} m, fills the bore. New steel has 0.0000457 m.`;
+  return { pointer: `/pipes/${index}/roughnessM`, detail };
 }

@@ -5,6 +5,7 @@ import { ElementFailure } from './element-failure';
 import { ambientLiquidEnthalpyJKg } from './flow-and-energy';
 import { stateWithOpenTraps } from './open-traps';
 import { findCase, openWithoutOrifice, operatingNodes } from './operating-case';
+import { pipeEnds } from './pipe-ends';
 import { pipeGeometries } from './pipe-geometry';
 import { MARCH_TOLERANCE_PA, type GradientEvaluation } from './pipe-march';
 import { noSolution, notAvailable, probableInMeshes, unknownCase, unsolvable, type Refusal } from './refusal';
@@ -35,10 +36,11 @@ export interface SolveOptions {
 export function solveNetwork(file: NetworkFile, options: SolveOptions): SolveResult | Refusal {
   const operatingCase = findCase(file, options.caseId);
   if (operatingCase === undefined) return unknownCase(file, options.caseId ?? '');
-  const geometries = pipeGeometries(file);
+  const ends = pipeEnds(file);
+  const geometries = pipeGeometries(file, ends);
   const mistakes = options.partial ? [] : mistakesIn(file, geometries);
   const isSound = mistakes.length === 0 && !options.partial ? undefined : soundPipes(file, geometries);
-  const tree = returnTree(file, isSound);
+  const tree = returnTree(file, ends, isSound);
   const unavailable = probableInMeshes(file, tree);
   const openMistakes = openWithoutOrifice(file, operatingCase);
   if (mistakes.length + openMistakes.length > 0) return unsolvable([...mistakes, ...openMistakes, ...unavailable]);

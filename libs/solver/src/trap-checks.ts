@@ -15,7 +15,7 @@ export interface TrapUnderCheck {
   readonly backPressurePa: number;
   readonly loadKgS: number;
   /** Of a modulating trap that follows its load. */
-  readonly modulation?: OperatingTrap['modulation'];
+  readonly modulation?: OperatingTrap['modulation'] | undefined;
   readonly atmosphericPressurePa: number;
   readonly limits: LimitsInForce;
 }

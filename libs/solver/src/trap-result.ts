@@ -49,9 +49,13 @@ export function trapResult(solved: SolvedTrap): TrapResult {
 }
 
 function idsOfWalk({ pipes }: NetworkFile, { outPipe, drainsTo }: ReturnTree, start: number): string[] {
-  const ids: string[] = [];
-  for (let node = start; outPipe[node] !== -1; node = drainsTo[node] as number) {
-    ids.push((pipes[outPipe[node] as number] as { id: string }).id);
+  let length = 0;
+  for (let node = start; outPipe[node] !== -1; node = drainsTo[node] as number) length++;
+  // of its length from the start: grown pipe by pipe, walks would leave behind what they grew out of, and stay longer than they are
+  const ids = new Array<string>(length);
+  let node = start;
+  for (let i = 0; i < length; i++, node = drainsTo[node] as number) {
+    ids[i] = (pipes[outPipe[node] as number] as { id: string }).id;
   }
   return ids;
 }
@@ -71,7 +75,7 @@ function checksOf(
     loadKgS,
     atmosphericPressurePa,
     limits,
-    ...(modulation === undefined ? {} : { modulation }),
+    modulation,
   };
   const { checks, notChecked } = checkTrap(at);
   return { checks: bands === undefined ? checks : bandedChecks(checks, at, bands.credible), notChecked };

@@ -6,6 +6,7 @@ export { SATURATION_RANGE_PA, saturationStateDirect, type SaturationState } from
 export {
   blankSaturation,
   fillSaturation,
+  requireBoilingPressure,
   saturationSlopes,
   saturationState,
   type SaturationRecord,

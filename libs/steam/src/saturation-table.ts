@@ -59,7 +59,7 @@ export function blankSaturation(): SaturationRecord {
  * @throws SteamRangeError likewise; the record is then as it was
  */
 export function fillSaturation(record: SaturationRecord, pressurePa: number): void {
-  requireWithin('pressure', pressurePa, SATURATION_RANGE_PA, 'boiling water');
+  requireBoilingPressure(pressurePa);
   const table = (cells ??= buildCells());
   const position = (fourthRoot(pressurePa) - LOWEST_ROOT) * CELLS_PER_ROOT;
   const cell = cellAt(position);
@@ -75,6 +75,14 @@ export function fillSaturation(record: SaturationRecord, pressurePa: number): vo
   record.liquidViscosityPaS = cubic(table, at + 20, t);
   record.vapourViscosityPaS = cubic(table, at + 24, t);
   record.surfaceTensionNM = cubic(table, at + 28, t);
+}
+
+/**
+ * Whether {@link saturationState} answers, without looking it up.
+ * @throws SteamRangeError where it does not
+ */
+export function requireBoilingPressure(pressurePa: number): void {
+  requireWithin('pressure', pressurePa, SATURATION_RANGE_PA, 'boiling water');
 }
 
 /** How the boiling line runs on with pressure: each property's derivative along it, per Pa. */
@@ -93,7 +101,7 @@ export interface SaturationSlopes {
  * @remarks Off by less than 1e-4 of what the property typically changes per unit of ln p (swept in the spec).
  */
 export function saturationSlopes(pressurePa: number): SaturationSlopes {
-  requireWithin('pressure', pressurePa, SATURATION_RANGE_PA, 'boiling water');
+  requireBoilingPressure(pressurePa);
   const table = (cells ??= buildCells());
   const root = fourthRoot(pressurePa);
   const position = (root - LOWEST_ROOT) * CELLS_PER_ROOT;
