@@ -95,7 +95,9 @@ async function buildPages(outputPath) {
 
 /** Once here, as small as can be, rather than at each request. index.html is filled in at each request and stays as it is. */
 function compressPages(folder) {
-  const worthwhile = filesOf(folder).filter((file) => /\.(m?js|css|svg|json)$/.test(file) && statSync(file).size > 1024);
+  const worthwhile = filesOf(folder).filter(
+    (file) => /\.(m?js|css|svg|json)$/.test(file) && statSync(file).size > 1024,
+  );
   for (const file of worthwhile) {
     const content = readFileSync(file);
     writeFileSync(`${file}.br`, brotliCompressSync(content));
