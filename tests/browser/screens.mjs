@@ -62,6 +62,7 @@ try {
       const page = await (screen.anonymous ? anonymous : context).newPage();
       await page.goto(`${address}${screen.path}`);
       await page.waitForLoadState('networkidle');
+      if (screen.act) await screen.act(page);
       if (screen.solved) await page.getByText(/^Solved \d\d:\d\d/).waitFor();
       await page.waitForTimeout(400);
       await page.screenshot({ path: join(folder, `${screen.name}-${name}.png`) });
@@ -90,15 +91,49 @@ function screens({ siteId, networkId, elements }, empty) {
     { name: 'lists', path: `${network}/lists`, solved: true },
     { name: 'ledger', path: `${network}/ledger?element=${elements.trap}`, solved: true },
     { name: 'drawing-exchanger', path: `${network}/drawing?element=${elements.exchanger}`, solved: true },
+    { name: 'try', path: `${network}/try`, solved: true },
     { name: 'method', path: `${network}/method` },
     { name: 'method-section', path: `${network}/method#friction-friedel` },
     { name: 'cases', path: `${network}/cases?case=rt5open`, solved: true },
     { name: 'cases-compare', path: `${network}/cases?show=compare`, solved: true },
     { name: 'drawing-worst', path: `${network}/drawing?case=worst&element=${elements.trap}`, solved: true },
+    { name: 'lists-pipes', path: `${network}/lists?list=pipes`, solved: true },
+    { name: 'lists-vessels', path: `${network}/lists?list=vessels`, solved: true },
+    { name: 'lists-trap-models', path: `${network}/lists?list=trap-models`, solved: true },
+    { name: 'ledger-empty', path: `/sites/${siteId}/networks/${empty}/ledger` },
+    { name: 'guide', path: '/sites', solved: true, act: beginGuide },
+    { name: 'keys', path: `${network}/lists`, act: (page) => page.getByRole('button', { name: 'Help' }).press('?') },
+    { name: 'tip', path: `${network}/drawing?element=${elements.trap}`, solved: true, act: openTip },
+    { name: 'unreachable', path: '/sites', act: loseServer },
+    { name: 'failed', path: '/sites', act: failServer },
     { name: 'account', path: '/account' },
     { name: 'library', path: `/sites/${siteId}/library` },
     { name: 'not-found', path: '/nowhere' },
   ];
+}
+
+async function beginGuide(page) {
+  await page.getByRole('button', { name: 'Help' }).click();
+  await page.getByRole('menuitem', { name: 'Show me round' }).click();
+  await page.getByRole('region', { name: 'Guide' }).getByRole('button', { name: 'Next' }).click();
+}
+
+async function openTip(page) {
+  await page.getByRole('button', { name: 'credible band', exact: true }).focus();
+}
+
+async function loseServer(page) {
+  await page.route('**/api/**', (route) => route.abort());
+  await page.reload();
+}
+
+/** Who is asking is still answered, nothing else. */
+async function failServer(page) {
+  const problem = { type: 'about:blank', title: 'Something went wrong here', status: 500, detail: 'Try again soon.' };
+  await page.route(/\/api\/sites/, (route) =>
+    route.fulfill({ status: 500, contentType: 'application/problem+json', body: JSON.stringify(problem) }),
+  );
+  await page.reload();
 }
 
 async function demoNetwork(context) {

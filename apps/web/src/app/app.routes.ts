@@ -56,6 +56,11 @@ export const routes: Routes = [
     ],
   },
   {
+    path: 'unreachable',
+    title: 'Not reached · Riseback',
+    loadComponent: () => import('./shell/unreachable-page').then((m) => m.UnreachablePage),
+  },
+  {
     path: '**',
     title: 'Not found · Riseback',
     loadComponent: () => import('./shell/not-found-page').then((m) => m.NotFoundPage),

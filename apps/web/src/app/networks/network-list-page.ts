@@ -59,9 +59,10 @@ export class NetworkListPage {
   /** Of the file that was refused. */
   protected readonly mistakes = signal<readonly PlacedMistake[]>([]);
   protected readonly told = signal('');
+  private readonly asked = signal(0);
   protected readonly load = toSignal<Load<SiteNetworks>, Load<SiteNetworks>>(
-    toObservable(this.siteId).pipe(
-      switchMap((siteId) =>
+    toObservable(computed(() => ({ siteId: this.siteId(), asked: this.asked() }))).pipe(
+      switchMap(({ siteId }) =>
         loads(forkJoin({ site: this.siteApi.get(siteId), networks: this.networkApi.list(siteId) })),
       ),
     ),
@@ -74,6 +75,10 @@ export class NetworkListPage {
   protected readonly mayDraw = computed(() => this.site()?.permissions.includes('draw') ?? false);
 
   protected readonly mayReadLog = computed(() => this.site()?.permissions.includes('people') ?? false);
+
+  protected ask(): void {
+    this.asked.update((count) => count + 1);
+  }
 
   protected startNaming(): void {
     this.naming.set(true);

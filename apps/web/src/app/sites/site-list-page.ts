@@ -1,7 +1,8 @@
-import { ChangeDetectionStrategy, Component, computed, inject } from '@angular/core';
-import { toSignal } from '@angular/core/rxjs-interop';
+import { ChangeDetectionStrategy, Component, computed, inject, signal } from '@angular/core';
+import { toObservable, toSignal } from '@angular/core/rxjs-interop';
 import { RouterLink } from '@angular/router';
 import type { Site } from '@riseback/contracts';
+import { switchMap } from 'rxjs';
 import { GuideOffer } from '../guide/guide-offer';
 import { type Load, LOADING, loads } from '../shared/load';
 import { ProblemBanner } from '../shared/problem-banner/problem-banner';
@@ -16,11 +17,19 @@ import { SiteApi } from './site-api';
   styleUrl: '../shell/list-page.scss',
 })
 export class SiteListPage {
-  protected readonly load = toSignal<Load<Site[]>, Load<Site[]>>(loads(inject(SiteApi).list()), {
-    initialValue: LOADING,
-  });
+  private readonly api = inject(SiteApi);
+
+  private readonly asked = signal(0);
+  protected readonly load = toSignal<Load<Site[]>, Load<Site[]>>(
+    toObservable(this.asked).pipe(switchMap(() => loads(this.api.list()))),
+    { initialValue: LOADING },
+  );
   protected readonly hasNetworks = computed(() => {
     const load = this.load();
     return load.status === 'ready' && load.value.some(({ networkCount }) => networkCount > 0);
   });
+
+  protected ask(): void {
+    this.asked.update((count) => count + 1);
+  }
 }

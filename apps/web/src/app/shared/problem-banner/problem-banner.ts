@@ -1,11 +1,12 @@
-import { ChangeDetectionStrategy, Component, input } from '@angular/core';
+import { ChangeDetectionStrategy, Component, input, output } from '@angular/core';
+import { MatButton } from '@angular/material/button';
 import type { Problem } from '@riseback/contracts';
 import { StatusMark } from '../status-mark/status-mark';
 
 /** What went wrong and what to do, where the content would have stood. */
 @Component({
   selector: 'app-problem-banner',
-  imports: [StatusMark],
+  imports: [MatButton, StatusMark],
   changeDetection: ChangeDetectionStrategy.OnPush,
   host: { role: 'alert' },
   template: `
@@ -22,6 +23,9 @@ import { StatusMark } from '../status-mark/status-mark';
       </p>
     }
     <ng-content />
+    @if (canRetry()) {
+      <p><button matButton="outlined" type="button" (click)="retried.emit()">Try again</button></p>
+    }
   `,
   styles: `
     :host {
@@ -43,4 +47,7 @@ import { StatusMark } from '../status-mark/status-mark';
 })
 export class ProblemBanner {
   readonly problem = input.required<Problem>();
+  /** Whoever says so asks again when told. */
+  readonly canRetry = input(false);
+  readonly retried = output();
 }
