@@ -4,6 +4,12 @@ import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { networkFile } from '../fixtures/solver/small-networks';
 
+/** A thousand in npm test, more in the long form. */
+const IS_FULL = process.env.RISEBACK_TEST_FULL === '1';
+const RUNS = IS_FULL ? { numRuns: 5000 } : { numRuns: 1000, seed: 20_260_304 };
+const LONGEST_MS = 2000;
+const TIMEOUT_MS = IS_FULL ? 900_000 : 60_000;
+
 /** Ends of what a file may hold, and what lies between. */
 const between = (min: number, max: number) =>
   fc.oneof(fc.constant(min), fc.constant(max), fc.double({ min, max, noNaN: true }));
@@ -84,18 +90,20 @@ const extremeNetworks = fc
     return { file, bands };
   });
 
-describe('well-formed files with extreme numbers', () => {
+describe('well-formed files with extreme numbers', { timeout: TIMEOUT_MS }, () => {
   it('are solved in finite numbers, or the element that cannot be is named; never a crash or a NaN', () => {
     fc.assert(
       fc.property(extremeNetworks, ({ file, bands }) => {
+        const start = performance.now();
         const outcome = solveNetwork(file, { partial: false, bands });
+        expect(performance.now() - start).toBeLessThan(LONGEST_MS);
         if (isRefusal(outcome)) {
           // a rough pipe of small bore is all that these can be refused for
           expect(outcome.problem.errors.map(({ pointer }) => pointer)).toContain('/pipes/0/roughnessM');
         } else if (outcome.converged) expect(JSON.stringify(outcome)).not.toContain('null');
         else expect(outcome.problem?.errors[0]?.pointer).toMatch(/^\/(nodes|pipes)\/\d+$/);
       }),
-      { numRuns: 1000, seed: 20_260_304 },
+      RUNS,
     );
   });
 });
