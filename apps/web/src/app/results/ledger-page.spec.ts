@@ -103,7 +103,7 @@ describe('LedgerPage', () => {
     // columns: no, place and bore, length, rise, flow, flash %, static, friction, flash, running, bar, hand adds, hand running
     expect([closing[6], closing[11], closing[12]]).toEqual(['5.00', '5.00', '5.00']);
     expect(text('.hand-check')).toMatch(/^Hand check is \d\.\d\d psi lower: it leaves out .*flash steam/);
-    expect(element.querySelectorAll('tbody tr')).toHaveLength(4);
+    expect(element.querySelectorAll('app-ledger-table tbody tr')).toHaveLength(4);
     expect(element.querySelector('app-lift-profile [role=img]')?.getAttribute('aria-label')).toContain(
       'with 10 ft lift',
     );
@@ -121,7 +121,7 @@ describe('LedgerPage', () => {
     const reader = element.querySelector<HTMLElement>('[role=slider]');
     reader?.dispatchEvent(new KeyboardEvent('keydown', { key: 'End' }));
     await fixture.whenStable();
-    expect(reader?.getAttribute('aria-valuetext')).toContain('in L4, elevation 10 ft, 0.00 psig');
+    expect(reader?.getAttribute('aria-valuetext')).toContain('in L4 1″, elevation 10 ft, 0.00 psig');
   });
 
   it('keeps the numbers when the network changes, says that they are stale and does not print them', async () => {
@@ -133,7 +133,7 @@ describe('LedgerPage', () => {
     expect(text('h1')).toBe('TR-101');
     expect(text('.stale-note')).toContain('Stale');
     expect(printButton()?.disabled).toBe(true);
-    expect(element.querySelectorAll('tbody tr')).toHaveLength(4);
+    expect(element.querySelectorAll('app-ledger-table tbody tr')).toHaveLength(4);
   });
 
   it('says why a case has no account', async () => {

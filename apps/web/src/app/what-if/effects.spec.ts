@@ -56,12 +56,13 @@ describe('what a trial does', () => {
     expect(traps.find(({ id }) => id === 'T1')).toMatchObject({ before: 'pass', after: 'none', changePa: undefined });
   });
 
-  it('tells findings at pipes that go and come', () => {
+  it('tells findings at pipes that go, come, and change their weight', () => {
     const before = result(
       [],
       [
         ['L1', 'velocity'],
         ['L2', 'gradient'],
+        ['L1', 'momentum'],
       ],
     );
     const after = result(
@@ -69,10 +70,21 @@ describe('what a trial does', () => {
       [
         ['L2', 'gradient'],
         ['L2', 'velocity'],
+        ['L1', 'momentum'],
       ],
     );
-    const { gone, come } = effectsOf(document, before, after);
-    expect(gone.map(({ name, code }) => [name, code])).toEqual([['CR-1', 'velocity']]);
-    expect(come.map(({ name, code }) => [name, code])).toEqual([['CR-2', 'velocity']]);
+    const heavier = {
+      ...before,
+      warnings: before.warnings.map((warning) => ({ ...warning, verdict: 'fail' as const })),
+    };
+    const told = (found: readonly { name: string; code: string; from: string; to: string }[]) =>
+      found.map(({ name, code, from, to }) => [name, code, from, to]);
+    expect(told(effectsOf(document, before, after).eased)).toEqual([['CR-1', 'velocity', 'watch', 'pass']]);
+    expect(told(effectsOf(document, before, after).worsened)).toEqual([['CR-2', 'velocity', 'pass', 'watch']]);
+    expect(told(effectsOf(document, heavier, after).eased)).toEqual([
+      ['CR-1', 'velocity', 'fail', 'pass'],
+      ['CR-1', 'momentum', 'fail', 'watch'],
+      ['CR-2', 'gradient', 'fail', 'watch'],
+    ]);
   });
 });

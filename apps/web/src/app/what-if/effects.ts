@@ -23,20 +23,23 @@ export interface Turn {
   readonly count: number;
 }
 
-/** A finding at a pipe or vessel that one of the two results has alone. */
+/** A finding at a pipe or vessel that is not the same in both results. */
 export interface ChangedFinding {
   readonly element: string;
   readonly name: string;
   readonly code: string;
-  readonly verdict: Exclude<Verdict, 'pass'>;
+  /** What it was and is; the one or the other 'pass' where it is new or mended. */
+  readonly from: Verdict;
+  readonly to: Verdict;
 }
 
 export interface Effects {
   /** Turned verdicts first, then by how much the back pressure moves. */
   readonly traps: readonly Effect[];
   readonly turns: readonly Turn[];
-  readonly gone: readonly ChangedFinding[];
-  readonly come: readonly ChangedFinding[];
+  /** Mended or eased, and new or worse; the gravest first. */
+  readonly eased: readonly ChangedFinding[];
+  readonly worsened: readonly ChangedFinding[];
 }
 
 /** A change smaller than this is none: the march's own tolerance is 0.1 Pa a step. */
@@ -64,11 +67,12 @@ export function effectsOf(document: NetworkDocument, before: SolveResult, after:
       },
     ];
   });
+  const findings = changedFindings(document, before, after);
   return {
     traps: traps.sort(byEffect),
     turns: turnsOf(traps),
-    gone: findingsOnlyIn(document, before, after),
-    come: findingsOnlyIn(document, after, before),
+    eased: findings.filter(({ from, to }) => RANK[to] < RANK[from]),
+    worsened: findings.filter(({ from, to }) => RANK[to] > RANK[from]),
   };
 }
 
@@ -113,16 +117,32 @@ function turnsOf(traps: readonly Effect[]): Turn[] {
 }
 
 /** Findings at traps show in their verdicts; these are the others. */
-function findingsOnlyIn(document: NetworkDocument, { warnings }: SolveResult, other: SolveResult): ChangedFinding[] {
-  const keys = new Set(other.warnings.map(({ element, code, verdict }) => `${element}/${code}/${verdict}`));
-  const found = new Map<string, ChangedFinding>();
-  for (const { element, code, verdict } of warnings) {
-    const key = `${element}/${code}/${verdict}`;
-    if (keys.has(key) || document.nodes.get(element)?.value.kind === 'trap') continue;
-    const value = document.nodes.get(element)?.value ?? document.pipes.get(element)?.value;
-    found.set(key, { element, name: value === undefined ? element : nameOf(value), code, verdict });
+function changedFindings(document: NetworkDocument, before: SolveResult, after: SolveResult): ChangedFinding[] {
+  const [was, is] = [worstFindings(before), worstFindings(after)];
+  const found = [...new Set([...was.keys(), ...is.keys()])].flatMap((key): ChangedFinding[] => {
+    const finding = is.get(key) ?? was.get(key);
+    const from: Verdict = was.get(key)?.verdict ?? 'pass';
+    const to: Verdict = is.get(key)?.verdict ?? 'pass';
+    if (finding === undefined || from === to) return [];
+    const { element, code } = finding;
+    const node = document.nodes.get(element)?.value;
+    if (node?.kind === 'trap') return [];
+    const value = node ?? document.pipes.get(element)?.value;
+    return [{ element, name: value === undefined ? element : nameOf(value), code, from, to }];
+  });
+  const gravest = ({ from, to }: ChangedFinding) => Math.max(RANK[from], RANK[to]);
+  return found.sort((a, b) => gravest(b) - gravest(a) || BY_TAG.compare(a.name, b.name));
+}
+
+/** By element and code, the worst of each. */
+function worstFindings({ warnings }: SolveResult): Map<string, SolveResult['warnings'][number]> {
+  const worst = new Map<string, SolveResult['warnings'][number]>();
+  for (const warning of warnings) {
+    const key = `${warning.element}/${warning.code}`;
+    const known = worst.get(key);
+    if (known === undefined || RANK[warning.verdict] > RANK[known.verdict]) worst.set(key, warning);
   }
-  return [...found.values()].sort((a, b) => RANK[b.verdict] - RANK[a.verdict] || BY_TAG.compare(a.name, b.name));
+  return worst;
 }
 
 function pressuresOf({ traps }: SolveResult): Map<string, number> {

@@ -112,12 +112,24 @@ export class TrialForm {
     return sizesFor(pipe ?? {}).map(({ nps, dn }) => ({ value: nps, words: `${nps} in (DN ${String(dn)})` }));
   });
 
+  /** The element that was ticked since the address named it: once, so that it can be unticked. */
+  private proposed = '';
+
   constructor() {
     effect(() => {
       const [element, subject] = [this.wantedElement(), this.wantedSubject()];
+      // a trap stands for its way, which is known once there are results
+      const way = this.ways().find(({ id }) => id === element)?.pipes;
       untracked(() => {
-        if (element === undefined || !this.candidates().some(({ id }) => id === element)) return;
-        this.ticked.set(new Set([element]));
+        if (element === undefined || this.proposed === element) return;
+        const there = this.candidates().some(({ id }) => id === element)
+          ? [element]
+          : this.subject() === 'size'
+            ? way
+            : undefined;
+        if (there === undefined) return;
+        this.proposed = element;
+        this.ticked.set(new Set(there));
         // with a whole wish in the address nothing is left but to try it
         if (subject !== undefined)
           afterNextRender(() => this.goButton().nativeElement.focus(), { injector: this.injector });

@@ -104,11 +104,19 @@ export class WhatIfPage {
   }
 
   protected findingWords(findings: readonly ChangedFinding[]): string {
-    return listed(findings.map(({ name, code, verdict }) => `${checkName(code)} at ${name} (${verdict})`));
+    return listed(
+      findings.map(({ name, code, from, to }) => `${checkName(code)} at ${name} (${changeWords(from, to)})`),
+    );
   }
 }
 
 /** The first five by name. */
 function listed(names: readonly string[]): string {
   return names.length > 5 ? `${names.slice(0, 5).join(', ')} and ${String(names.length - 5)} more` : names.join(', ');
+}
+
+/** "mended", "new: watch", "fail to watch" */
+function changeWords(from: ChangedFinding['from'], to: ChangedFinding['to']): string {
+  if (to === 'pass') return `${from} mended`;
+  return from === 'pass' ? `new: ${to}` : `${from} to ${to}`;
 }

@@ -43,7 +43,7 @@ describe('FindingsList', () => {
       [...row.children].map((cell) => cell.textContent.replace(/\s+/g, ' ').trim()).join(' '),
     );
     expect(rows).toEqual([
-      'Fail TR-9 C2 Differential. Nothing drives the condensate out. Lower the return.',
+      'Fail TR-9 C2 Differential. Nothing drives the condensate out. Lower the return. Try',
       'Note Network – No source. Nothing flows. –',
     ]);
     expect(element.querySelector('.count')?.textContent).toBe('1 fail, 0 watch, 1 note');

@@ -1,4 +1,5 @@
 import { ChangeDetectionStrategy, Component, computed, inject, input, output } from '@angular/core';
+import { ActivatedRoute, Router } from '@angular/router';
 import type { Position } from '@riseback/network';
 import { BANDS_TO_COME } from '../../shared/bands-to-come';
 import { type Status, StatusMark } from '../../shared/status-mark/status-mark';
@@ -6,6 +7,7 @@ import { Term } from '../../shared/term/term';
 import { BANDED_CHECKS } from '../bands-before';
 import type { Finding, FindingSeverity } from '../finding-list';
 import { checkName } from '../finding-words';
+import { type TryParams, tryParams } from '../../what-if/try-params';
 
 const MARKS: Readonly<Record<FindingSeverity, { readonly status: Status; readonly word: string }>> = {
   fail: { status: 'fail', word: 'Fail' },
@@ -37,6 +39,8 @@ export class FindingsList {
   readonly opened = output<string>();
 
   private readonly bandsToCome = inject(BANDS_TO_COME, { optional: true });
+  private readonly router = inject(Router);
+  private readonly route = inject(ActivatedRoute, { optional: true });
   protected readonly rows = computed(() => {
     const zoneOf = this.zoneOf();
     return this.findings().map((finding) => ({
@@ -46,6 +50,7 @@ export class FindingsList {
       name: checkName(finding.code),
       zone: finding.position === null || zoneOf === undefined ? '' : zoneOf(finding.position),
       cases: this.caseWords(finding),
+      trial: tryParams(finding),
       current: finding.element !== null && finding.element.id === this.currentId(),
     }));
   });
@@ -60,6 +65,11 @@ export class FindingsList {
     ];
     return parts.join(', ');
   });
+
+  /** The view beside the one that shows the findings, with the mending filled in. */
+  protected openTrial(queryParams: TryParams): void {
+    void this.router.navigate(['../try'], { relativeTo: this.route, queryParams, queryParamsHandling: 'merge' });
+  }
 
   private caseWords({ cases }: Finding): string {
     const caseName = this.caseName();
