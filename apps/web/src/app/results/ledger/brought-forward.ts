@@ -6,7 +6,7 @@ import { valueOf } from './printed-account';
 export const SHEET_LINES = {
   /** Below the head and the lift profile. */
   first: 16,
-  other: 30,
+  other: 36,
   /** What the closing line and the foot take. */
   foot: 5,
 } as const;
