@@ -113,10 +113,10 @@ const send = (route: Route, body: unknown) =>
     .set('Content-Type', 'application/json')
     .send(JSON.stringify(body));
 
-/** All that is stored but the sessions and the log, which every request of a test adds to. */
+/** All that is stored but sessions and the log, which every request adds to, and solves, which end when they end. */
 function stored(): string {
   const named = server.db.$client.prepare(`select name from sqlite_schema where type = 'table'`).all();
-  const tables = (named as { name: string }[]).filter(({ name }) => !/^(sqlite|__|sessions$|audit)/.test(name));
+  const tables = (named as { name: string }[]).filter(({ name }) => !/^(sqlite|__|sessions$|audit|solve)/.test(name));
   return JSON.stringify(tables.map(({ name }) => server.db.$client.prepare(`select * from "${name}"`).all()));
 }
 
