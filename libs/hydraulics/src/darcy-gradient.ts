@@ -32,9 +32,15 @@ export function darcyGradient(flow: SinglePhaseFlow): number {
   return darcyGradientOf(flow.massFlowKgS, flow.densityKgM3, flow.viscosityPaS, flow);
 }
 
-/** The same for a phase in a given bore, for inner loops that should not build an object at every step. */
-export function darcyGradientOf(massFlowKgS: number, densityKgM3: number, viscosityPaS: number, bore: Bore): number {
-  const { insideDiameterM, roughnessM, lossCoefficientPerM } = bore;
+/** The same for a phase in a given bore, with its fittings or others, for inner loops that should not build an object at every step. */
+export function darcyGradientOf(
+  massFlowKgS: number,
+  densityKgM3: number,
+  viscosityPaS: number,
+  bore: Bore,
+  lossCoefficientPerM: number = bore.lossCoefficientPerM,
+): number {
+  const { insideDiameterM, roughnessM } = bore;
   if (!(
     massFlowKgS >= 0 &&
     densityKgM3 > 0 &&
@@ -43,7 +49,7 @@ export function darcyGradientOf(massFlowKgS: number, densityKgM3: number, viscos
     roughnessM >= 0 &&
     lossCoefficientPerM >= 0
   )) {
-    throw refusal(massFlowKgS, densityKgM3, viscosityPaS, bore);
+    throw refusal(massFlowKgS, densityKgM3, viscosityPaS, { insideDiameterM, roughnessM, lossCoefficientPerM });
   }
   const massFlux = massFlowKgS / boreAreaM2(insideDiameterM);
   // a still pipe, and a flow so small that its square vanishes while 64/Re overflows

@@ -33,17 +33,13 @@ export function vapourOnlyGradient(flow: FlashingFlow): number {
 /** Darcy-Weisbach gradient of a mass flow of saturated liquid that has the bore to itself [Pa/m]. */
 export function liquidPipeGradient(flow: FlashingFlow, massFlowKgS: number, lossCoefficientPerM = 0): number {
   const { liquidDensityKgM3, liquidViscosityPaS } = flow.saturation;
-  const { insideDiameterM, roughnessM } = flow;
-  const bore = { insideDiameterM, roughnessM, lossCoefficientPerM };
-  return darcyGradientOf(massFlowKgS, liquidDensityKgM3, liquidViscosityPaS, bore);
+  return darcyGradientOf(massFlowKgS, liquidDensityKgM3, liquidViscosityPaS, flow, lossCoefficientPerM);
 }
 
 /** The same for saturated vapour. */
 export function vapourPipeGradient(flow: FlashingFlow, massFlowKgS: number, lossCoefficientPerM = 0): number {
   const { vapourDensityKgM3, vapourViscosityPaS } = flow.saturation;
-  const { insideDiameterM, roughnessM } = flow;
-  const bore = { insideDiameterM, roughnessM, lossCoefficientPerM };
-  return darcyGradientOf(massFlowKgS, vapourDensityKgM3, vapourViscosityPaS, bore);
+  return darcyGradientOf(massFlowKgS, vapourDensityKgM3, vapourViscosityPaS, flow, lossCoefficientPerM);
 }
 
 /**
