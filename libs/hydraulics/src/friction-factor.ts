@@ -43,6 +43,10 @@ export function darcyFrictionFactor(Re: number, relativeRoughness: number): numb
   return Math.exp(LN_LAMINAR_END + share * (lnTurbulentStart - LN_LAMINAR_END));
 }
 
+/** The last two answers, latest first: a two-phase law asks for the liquid alone, for the vapour alone, and for the liquid again. */
+const answered = new Float64Array(6).fill(NaN);
+const [RE, ROUGHNESS, FACTOR, NEXT] = [0, 1, 2, 3];
+
 /**
  * Darcy friction factor of turbulent flow by Colebrook-White, solved to better than 1e-10.
  *     1/√f = −2 log₁₀[ k/3.7 + 2.51/(Re √f) ]
@@ -60,6 +64,9 @@ export function darcyFrictionFactorColebrook(Re: number, relativeRoughness: numb
   if (!(Re > 0 && Re < Infinity && relativeRoughness >= 0 && relativeRoughness < 1)) {
     throw new NonPhysicalInputError('darcyFrictionFactorColebrook', { Re, relativeRoughness });
   }
+  if (Re === answered[RE] && relativeRoughness === answered[ROUGHNESS]) return answered[FACTOR] as number;
+  if (Re === answered[NEXT + RE] && relativeRoughness === answered[NEXT + ROUGHNESS])
+    return answered[NEXT + FACTOR] as number;
   const a = relativeRoughness / 3.7;
   const b = 2.51 / Re;
   let y = -TWO_PER_LN10 * Math.log(a + 12 / Re);
@@ -73,7 +80,12 @@ export function darcyFrictionFactorColebrook(Re: number, relativeRoughness: numb
     const curvature = -TWO_PER_LN10 * relativeSlope * relativeSlope;
     step = (2 * residual * slope) / (2 * slope * slope - residual * curvature);
     y -= step;
-    if (Math.abs(step) < LAST_STEP * y) return 1 / (y * y);
+    if (Math.abs(step) < LAST_STEP * y) {
+      for (let i = 0; i < NEXT; i++) answered[NEXT + i] = answered[i] as number;
+      answered[RE] = Re;
+      answered[ROUGHNESS] = relativeRoughness;
+      return (answered[FACTOR] = 1 / (y * y));
+    }
   }
   throw new NoConvergenceError('darcyFrictionFactorColebrook', MAX_ITERATIONS, Math.abs(step));
 }
