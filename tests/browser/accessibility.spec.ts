@@ -13,48 +13,59 @@ const SIZES = [
   { width: 320, height: 640 },
 ] as const;
 
-test('no axe findings on any page, in both themes', async ({ page }) => {
-  test.setTimeout(300_000);
-  await page.goto('/sign-in');
-  await expectNoFindings('/sign-in', page);
-  // an administrator sees what a designer sees, and the log of the site
-  await signIn(page, 'admin');
-  const network = await demoNetworkPath(page);
-  const site = network.replace(/\/networks\/.*/, '');
-  await openEmptyNetwork(page, 'Nothing yet');
-  const empty = new URL(page.url()).pathname;
-  const pages = [
-    '/sites',
-    site,
-    `${site}/library`,
-    `${site}/audit`,
+/** By what they are about: the paths of their pages, from those of the demo's network and of an empty one. */
+const PAGES: Readonly<Record<string, (network: string, empty: string) => readonly string[]>> = {
+  'around the networks': (network) => {
+    const site = network.replace(/\/networks\/.*/, '');
+    return ['/sites', site, `${site}/library`, `${site}/audit`, '/account', '/nowhere', '/unreachable'];
+  },
+  'of the drawing': (network, empty) => [
     `${network}/drawing`,
     `${network}/drawing?element=TR5`,
     `${network}/drawing?element=L24`,
     `${network}/drawing?case=rt5open`,
-    empty,
+    `${network}/drawing?element=TE1`,
+    `${network}/drawing?case=worst&element=TR5`,
+    `${empty}/drawing`,
+  ],
+  'of the lists': (network, empty) => [
     ...LISTS.map((list) => `${network}/lists?list=${list}`),
+    `${network}/lists?case=worst`,
+    `${empty}/lists`,
+  ],
+  'of results and cases': (network, empty) => [
     `${network}/ledger?element=TR5`,
     `${network}/ledger?case=worst`,
     `${network}/try`,
     `${network}/try?element=TR5`,
     `${network}/cases?case=rt5open`,
     `${network}/cases?show=compare`,
-    `${network}/drawing?element=TE1`,
     `${network}/method`,
     `${network}/method#check-stall`,
-    `${network}/drawing?case=worst&element=TR5`,
-    `${network}/lists?case=worst`,
-    ...['lists', 'ledger', 'cases', 'try'].map((view) => empty.replace('drawing', view)),
-    '/account',
-    '/nowhere',
-  ];
-  for (const path of pages) {
-    await page.goto(path);
-    await page.waitForLoadState('networkidle');
-    await expectNoFindings(path, page);
-  }
+    ...['ledger', 'cases', 'try'].map((view) => `${empty}/${view}`),
+  ],
+};
+
+test('no axe findings on the sign-in page, in both themes', async ({ page }) => {
+  await page.goto('/sign-in');
+  await expectNoFindings('/sign-in', page);
 });
+
+for (const [about, paths] of Object.entries(PAGES)) {
+  test(`no axe findings on the pages ${about}, in both themes`, async ({ page }) => {
+    test.setTimeout(300_000);
+    // an administrator sees what a designer sees, and the log of the site
+    await signIn(page, 'admin');
+    const network = await demoNetworkPath(page);
+    await openEmptyNetwork(page, `Nothing yet ${about}`);
+    const empty = new URL(page.url()).pathname.replace(/\/drawing$/, '');
+    for (const path of paths(network, empty)) {
+      await page.goto(path);
+      await page.waitForLoadState('networkidle');
+      await expectNoFindings(path, page);
+    }
+  });
+}
 
 test('no page is wider than its window, on a phone and at a zoom of 200 %', async ({ page }) => {
   test.setTimeout(300_000);

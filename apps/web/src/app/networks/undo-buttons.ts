@@ -20,26 +20,43 @@ export interface UndoneStep {
     <button
       matButton="outlined"
       type="button"
-      [title]="store.undoLabel() ?? ''"
+      aria-label="Undo"
+      [title]="'Undo ' + (store.undoLabel() ?? '')"
       [disabled]="store.undoLabel() === null"
       (click)="undo()"
     >
-      Undo
+      <svg viewBox="0 0 16 16" width="16" height="16" aria-hidden="true">
+        <path d="M5.5 3 2.5 6l3 3M3 6h6.5a3.5 3.5 0 0 1 0 7H6" />
+      </svg>
     </button>
     <button
       matButton="outlined"
       type="button"
-      [title]="store.redoLabel() ?? ''"
+      aria-label="Redo"
+      [title]="'Redo ' + (store.redoLabel() ?? '')"
       [disabled]="store.redoLabel() === null"
       (click)="redo()"
     >
-      Redo
+      <svg viewBox="0 0 16 16" width="16" height="16" aria-hidden="true">
+        <path d="m10.5 3 3 3-3 3M13 6H6.5a3.5 3.5 0 0 0 0 7H10" />
+      </svg>
     </button>
   `,
   styles: `
     :host {
       display: flex;
       gap: 8px;
+    }
+
+    button {
+      min-width: 36px;
+    }
+
+    svg {
+      display: block;
+      fill: none;
+      stroke: currentcolor;
+      stroke-width: 1.5;
     }
   `,
 })
