@@ -1,7 +1,7 @@
 import { jsonPointer } from './mistakes';
 import type { NetworkDocument } from './network-document';
 import type { NetworkFile, NetworkNode } from './network-file';
-import { nodeFindings } from './node-findings';
+import { nodeFinding } from './node-findings';
 import { KIND_NAMES } from './override-keys';
 import { gaugeFindings, pipeFindings } from './pipe-findings';
 import {
@@ -58,14 +58,15 @@ function elementFindings(elements: DrawnElements): TopologyFinding[] {
   const { nodes } = elements;
   const pipes = pipesWithEnds(elements);
   const at = new PipesAtNodes(nodes.length, pipes);
-  return [
-    ...wholeFindings(nodes),
-    ...nodes.flatMap((node, index) => nodeFindings(node, index, at)),
-    ...cutOffNodes(nodes, pipes),
-    ...pipes.flatMap(pipeFindings),
-    ...vesselLoops(nodes.length, pipes),
-    ...gaugeFindings(elements),
-  ];
+  const found = wholeFindings(nodes);
+  nodes.forEach((node, index) => {
+    const finding = nodeFinding(node, index, at);
+    if (finding !== undefined) found.push(finding);
+  });
+  for (const finding of cutOffNodes(nodes, pipes)) found.push(finding);
+  for (const pipe of pipes) found.push(...pipeFindings(pipe));
+  found.push(...vesselLoops(nodes.length, pipes), ...gaugeFindings(elements));
+  return found;
 }
 
 function wholeFindings(nodes: readonly NetworkNode[]): TopologyFinding[] {

@@ -3,44 +3,36 @@ import type { FlashVessel, NetworkNode, PipeRun, Receiver } from './network-file
 import { nameOf, type PipesAtNodes, type TopologyFinding } from './topology';
 
 /** How many pipes may leave and enter a node, by its kind. A source without any pipe is cut off, which says enough. */
-export function nodeFindings(node: NetworkNode, index: number, at: PipesAtNodes): TopologyFinding[] {
+export function nodeFinding(node: NetworkNode, index: number, at: PipesAtNodes): TopologyFinding | undefined {
   const leaving = at.leavingCount(index);
   switch (node.kind) {
     case 'trap':
-    case 'pumpedInlet': {
-      const entering = at.enteringCount(index);
-      if (entering === 0 && leaving <= 1) return [];
-      return sourceFindings(node, at.leaving(index), at.entering(index));
-    }
+    case 'pumpedInlet':
+      if (at.enteringCount(index) === 0 && leaving <= 1) return undefined;
+      return sourcePipes(node, at.leaving(index), at.entering(index));
     case 'receiver':
-      return leaving === 0 ? [] : [receiverPipes(node, at.leaving(index))];
+      return leaving === 0 ? undefined : receiverPipes(node, at.leaving(index));
     case 'flashVessel':
-      return leaving === 1 ? [] : [vesselPipes(node, at.leaving(index))];
+      return leaving === 1 ? undefined : vesselPipes(node, at.leaving(index));
     case 'junction':
-      return [];
+      return undefined;
   }
 }
 
-function sourceFindings(
-  node: NetworkNode,
-  leaving: readonly PipeRun[],
-  entering: readonly PipeRun[],
-): TopologyFinding[] {
+function sourcePipes(node: NetworkNode, leaving: readonly PipeRun[], entering: readonly PipeRun[]): TopologyFinding {
   const name = `${capital(KIND_NAMES[node.kind])} ${nameOf(node)}`;
   const backwards = entering.length > 0;
-  return [
-    {
-      ...error(node, 'trapPipes'),
-      what: backwards
-        ? `${name} has ${named(entering)} leading into it`
-        : `${name} has ${leaving.length} pipes leading from it: ${list(leaving)}`,
-      why: `Condensate leaves a ${KIND_NAMES[node.kind]} through exactly one pipe, and none comes back into it.`,
-      remedy:
-        backwards && leaving.length === 0
-          ? `Turn ${list(entering)} round, so that it leads away.`
-          : 'Keep the one pipe that leads away; let others start at a junction behind it.',
-    },
-  ];
+  return {
+    ...error(node, 'trapPipes'),
+    what: backwards
+      ? `${name} has ${named(entering)} leading into it`
+      : `${name} has ${leaving.length} pipes leading from it: ${list(leaving)}`,
+    why: `Condensate leaves a ${KIND_NAMES[node.kind]} through exactly one pipe, and none comes back into it.`,
+    remedy:
+      backwards && leaving.length === 0
+        ? `Turn ${list(entering)} round, so that it leads away.`
+        : 'Keep the one pipe that leads away; let others start at a junction behind it.',
+  };
 }
 
 function receiverPipes(node: Receiver, leaving: readonly PipeRun[]): TopologyFinding {

@@ -1,15 +1,21 @@
-import type { PipeRun } from './network-file';
+import type { PipeRun, RoutePiece } from './network-file';
 import { nameOf, type DrawnElements, type FindingText, type PipeEnds, type TopologyFinding } from './topology';
 
 /** Lengths and rises agree within a millimetre or a thousandth: as good as a tape measure and a rounded foot. */
 export const ROUTE_TOLERANCE = { absoluteM: 1e-3, relative: 1e-3 } as const;
 
+/** Every solve looks at every pipe: a sound one costs no list of its own. */
+const NONE: readonly TopologyFinding[] = [];
+
 /** What is wrong with a pipe by itself, between its two elevations. */
-export function pipeFindings({ pipe, from, to }: PipeEnds): TopologyFinding[] {
+export function pipeFindings({ pipe, from, to }: PipeEnds): readonly TopologyFinding[] {
   if (pipe.from === pipe.to) return [selfPipe(pipe)];
   const riseM = to.elevationM - from.elevationM;
   if (pipe.lengthM === 0) return [zeroLength(pipe)];
-  return [...shorterThanRise(pipe, riseM), ...routeFindings(pipe, riseM)];
+  const tooShort = Math.abs(riseM) > pipe.lengthM + tolerance(pipe.lengthM);
+  if (!tooShort && pipe.route === undefined) return NONE;
+  const found = pipe.route === undefined ? [] : routeFindings(pipe, pipe.route, riseM);
+  return tooShort ? [shorterThanRise(pipe, riseM), ...found] : found;
 }
 
 function selfPipe(pipe: PipeRun): TopologyFinding {
@@ -30,28 +36,17 @@ function zeroLength(pipe: PipeRun): TopologyFinding {
   };
 }
 
-function shorterThanRise(pipe: PipeRun, riseM: number): TopologyFinding[] {
-  if (Math.abs(riseM) <= pipe.lengthM + tolerance(pipe.lengthM)) return [];
+function shorterThanRise(pipe: PipeRun, riseM: number): TopologyFinding {
   const verb = riseM > 0 ? 'rises' : 'falls';
-  return [
-    {
-      ...error(pipe, 'shorterThanRise', 'lengthM'),
-      ...said([
-        `Pipe ${nameOf(pipe)} ${verb} `,
-        metres(Math.abs(riseM)),
-        ' but is only ',
-        metres(pipe.lengthM),
-        ' long',
-      ]),
-      why: 'A pipe is at least as long as the difference of its two elevations.',
-      remedy: `Correct its length, or the elevation of ${pipe.from} or ${pipe.to}.`,
-    },
-  ];
+  return {
+    ...error(pipe, 'shorterThanRise', 'lengthM'),
+    ...said([`Pipe ${nameOf(pipe)} ${verb} `, metres(Math.abs(riseM)), ' but is only ', metres(pipe.lengthM), ' long']),
+    why: 'A pipe is at least as long as the difference of its two elevations.',
+    remedy: `Correct its length, or the elevation of ${pipe.from} or ${pipe.to}.`,
+  };
 }
 
-function routeFindings(pipe: PipeRun, riseM: number): TopologyFinding[] {
-  const { route } = pipe;
-  if (route === undefined) return [];
+function routeFindings(pipe: PipeRun, route: readonly RoutePiece[], riseM: number): TopologyFinding[] {
   const found: TopologyFinding[] = [];
   for (const [index, piece] of route.entries()) {
     const place = `Piece ${index + 1} of the route of pipe ${nameOf(pipe)}`;
