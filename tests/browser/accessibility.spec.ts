@@ -96,12 +96,15 @@ test('no page is wider than its window, on a phone and at a zoom of 200 %', asyn
   }
 });
 
+/** A theme changes colours alone: once a page has met every rule, the dark one is held to those of colour; the long form holds it to all. */
 async function expectNoFindings(path: string, page: Page): Promise<void> {
   for (const colorScheme of THEMES) {
     await page.emulateMedia({ colorScheme });
-    const { violations } = await new AxeBuilder({ page })
-      .withTags(['wcag2a', 'wcag2aa', 'wcag21a', 'wcag21aa', 'wcag22aa', 'best-practice'])
-      .analyze();
+    const axe = new AxeBuilder({ page });
+    if (colorScheme === 'light' || process.env['RISEBACK_TEST_FULL'] === '1')
+      axe.withTags(['wcag2a', 'wcag2aa', 'wcag21a', 'wcag21aa', 'wcag22aa', 'best-practice']);
+    else axe.withRules(['color-contrast', 'link-in-text-block']);
+    const { violations } = await axe.analyze();
     const found = violations.map(
       ({ id, nodes }) => `${id}: ${nodes.map(({ html }) => html.slice(0, 120)).join(' | ')}`,
     );
