@@ -12,8 +12,8 @@ test('one’s own account: units, password, codes and recovery codes from the fi
   browser,
 }, { retry }) => {
   test.setTimeout(180_000);
-  // The password does not become the demo's again, so that a second try is somebody else's; no other file signs them in after this.
-  const who = retry === 0 ? 'commissioning' : 'stranger';
+  // The password does not become the demo's again: no other test signs the reviewer in, and a second try is somebody else's.
+  const who = retry === 0 ? 'reviewer' : 'stranger';
   await signIn(page, who);
   const elsewhere = await browser.newPage();
   await signIn(elsewhere, who);
@@ -140,7 +140,7 @@ test('one’s own account: units, password, codes and recovery codes from the fi
 });
 
 test('the account page fits a telephone', async ({ page }) => {
-  await signIn(page, 'reviewer');
+  await signIn(page, 'viewer');
   await openAccount(page);
   for (const width of [1440, 390, 320]) {
     await page.setViewportSize({ width, height: 844 });

@@ -58,5 +58,5 @@ test('bands and the stall curve say in words what they draw', async ({ page }) =
   await expect(page.getByRole('img', { name: /Credible from .* psig.*By every method from/ }).first()).toBeVisible();
   await expect(page.getByRole('img', { name: /It stalls below \d+ % of full load/ })).toBeVisible();
   await page.goto(`${network}/ledger?element=TE1`);
-  await expect(page.getByRole('article').getByText('Credible', { exact: true })).toBeVisible();
+  await expect(page.getByRole('article').getByRole('term').filter({ hasText: 'Credible' })).toBeVisible();
 });
