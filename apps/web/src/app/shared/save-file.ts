@@ -12,3 +12,12 @@ export function saveFile(name: string, content: Blob): void {
 }
 
 const RELEASE_AFTER_MS = 60_000;
+
+/** A file name without ending that every file system takes. */
+export function plainName(text: string, ifNothingIsLeft: string): string {
+  const plain = text
+    .normalize('NFKD')
+    .replace(/[^A-Za-z0-9]+/g, '-')
+    .replace(/^-|-$/g, '');
+  return plain.toLowerCase() || ifNothingIsLeft;
+}

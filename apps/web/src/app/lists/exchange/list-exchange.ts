@@ -2,7 +2,7 @@ import { inject, Injectable } from '@angular/core';
 import { MatDialog } from '@angular/material/dialog';
 import type { DisplayUnits } from '@riseback/units';
 import { firstValueFrom } from 'rxjs';
-import { saveFile } from '../../shared/save-file';
+import { plainName, saveFile } from '../../shared/save-file';
 import type { GridInSight } from '../grid/list-grid';
 import type { ListFacts } from '../list-definitions';
 import type { AcceptedBlock, BlockDialogData } from './block-dialog';
@@ -29,7 +29,7 @@ export class ListExchange {
   /** What is shown, in the order shown. */
   async save(kind: SpreadsheetKind, { facts, target, grid, networkName }: OpenList): Promise<string> {
     const rows = target.sheet(grid.keys, grid.ids);
-    const name = `${fileName(networkName)}-${facts.id}.${kind}`;
+    const name = `${plainName(networkName, 'network')}-${facts.id}.${kind}`;
     if (kind === 'csv') saveFile(name, new Blob([writeCsv(rows)], { type: 'text/csv;charset=utf-8' }));
     else {
       const { writeXlsx, XLSX_TYPE } = await import('./xlsx-file');
@@ -74,14 +74,4 @@ export class ListExchange {
 
 export interface Refused {
   readonly refused: string;
-}
-
-function fileName(text: string): string {
-  return (
-    text
-      .normalize('NFKD')
-      .replace(/[^A-Za-z0-9]+/g, '-')
-      .replace(/^-|-$/g, '')
-      .toLowerCase() || 'network'
-  );
 }

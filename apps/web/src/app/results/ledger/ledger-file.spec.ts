@@ -1,5 +1,6 @@
 import { describe, expect, it } from 'vitest';
-import { ledgerRows, plainName } from './ledger-file';
+import { plainName } from '../../shared/save-file';
+import { ledgerRows } from './ledger-file';
 import type { LedgerModel, LedgerRow } from './ledger-model';
 
 const row = (no: number, change: Partial<LedgerRow>): LedgerRow => ({
@@ -68,5 +69,5 @@ describe('the ledger as rows of a spreadsheet', () => {
 });
 
 it('names files plainly', () => {
-  expect(plainName('Tern Quay Cannery TR-101 Design ledger')).toBe('tern-quay-cannery-tr-101-design-ledger');
+  expect(plainName('Tern Quay Cannery TR-101 Design ledger', 'ledger')).toBe('tern-quay-cannery-tr-101-design-ledger');
 });

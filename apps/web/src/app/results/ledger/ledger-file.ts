@@ -92,15 +92,6 @@ export async function saveRows(kind: 'csv' | 'xlsx', name: string, rows: readonl
   saveFile(`${name}.xlsx`, new Blob([writeXlsx('Ledger', rows)], { type: XLSX_TYPE }));
 }
 
-/** What file systems everywhere take. */
-export function plainName(text: string): string {
-  const plain = text
-    .normalize('NFKD')
-    .replace(/[^A-Za-z0-9]+/g, '-')
-    .replace(/^-|-$/g, '');
-  return plain.toLowerCase() || 'ledger';
-}
-
 function number(printed: string): number | undefined {
   return /\d/.test(printed) ? valueOf(printed) : undefined;
 }

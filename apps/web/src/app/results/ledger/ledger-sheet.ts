@@ -24,13 +24,13 @@ import { bandNumbers } from '../bands';
 import type { PressureRamp } from '../pressure-ramp';
 import { boreWords, endWords, trapTypeWords } from './element-text';
 import { gaugesOnWay } from './gauges-on-way';
-import { ledgerRows, plainName, saveRows } from './ledger-file';
+import { ledgerRows, saveRows } from './ledger-file';
 import { ledgerModel } from './ledger-model';
 import { LedgerTable } from './ledger-table';
 import { LiftProfile } from './lift-profile';
 import type { TrapItem } from './trap-groups';
 import { nameOf } from '../../shared/element-words';
-import { saveFile } from '../../shared/save-file';
+import { plainName, saveFile } from '../../shared/save-file';
 
 /** One trap's page, A4 landscape: head, lift profile, ledger, foot. What is seen is what prints. */
 @Component({
@@ -210,7 +210,7 @@ export class LedgerSheet {
   }
 
   private fileName(what: string): string {
-    return plainName(`${this.document().name} ${this.item().tag} ${this.caseName()} ${what}`);
+    return plainName(`${this.document().name} ${this.item().tag} ${this.caseName()} ${what}`, 'ledger');
   }
 }
 
