@@ -46,6 +46,7 @@ describe('signing in', () => {
         units: 'us',
         theme: 'system',
         timeZone: 'UTC',
+        unwantedMails: [],
       },
     });
     const [session = '', proof = '', ...more] = cookiesOf(response);

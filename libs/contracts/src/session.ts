@@ -1,4 +1,5 @@
 import * as z from 'zod';
+import { DECLINABLE_MAILS, DeclinableMail } from './mails';
 
 export const SignIn = z.strictObject({
   email: z.string().trim().min(3).max(254),
@@ -18,6 +19,8 @@ export const Person = z.object({
   units: z.enum(UNIT_SYSTEMS),
   theme: z.enum(THEMES),
   timeZone: z.string(),
+  /** Mails that the person does not want. */
+  unwantedMails: z.array(DeclinableMail),
 });
 export type Person = z.infer<typeof Person>;
 
@@ -39,6 +42,7 @@ export const ProfileChange = z
     units: z.enum(UNIT_SYSTEMS),
     theme: z.enum(THEMES),
     timeZone: z.string().min(1).max(64),
+    unwantedMails: z.array(DeclinableMail).max(DECLINABLE_MAILS.length),
   })
   .partial();
 export type ProfileChange = z.infer<typeof ProfileChange>;

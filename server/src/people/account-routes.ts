@@ -2,7 +2,7 @@ import { OwnSession, Person, ProfileChange, Session, SessionsEnded, SignIn } fro
 import * as z from 'zod';
 import type { SessionGate } from '../platform/auth/session-gate';
 import { publicRoute, signedInRoute, type Route } from '../platform/routes/route-table';
-import { personOf, type OwnAccountService } from './own-account-service';
+import type { OwnAccountService } from './own-account-service';
 import { originOf } from './security-routes';
 import type { SignInService } from './sign-in-service';
 
@@ -17,7 +17,7 @@ export function accountRoutes(signIn: SignInService, account: OwnAccountService,
       handler: async ({ body, req, res }) => {
         const { person, issued } = await signIn.signIn(body, originOf(req));
         gate.give(res, issued);
-        res.json({ person: personOf(person) } satisfies Session);
+        res.json({ person } satisfies Session);
       },
     }),
     signedInRoute({

@@ -3,7 +3,7 @@ import type { PersonAccess } from '../platform/auth/access';
 import type { Sessions } from '../platform/auth/sessions';
 import type { AuditEntry } from '../platform/db/audit';
 import { badRequest, notFound } from '../platform/problem';
-import type { PeopleRepository, PersonRow } from './people-repository';
+import type { PeopleRepository } from './people-repository';
 
 /** What people see and change of their own. */
 export class OwnAccountService {
@@ -16,11 +16,11 @@ export class OwnAccountService {
   person(access: PersonAccess): Person {
     const row = this.people.find(access.person.id);
     if (row === undefined) throw notFound('This person is not known any more.');
-    return personOf(row);
+    return this.people.profileOf(row);
   }
 
   changeProfile(access: PersonAccess, change: ProfileChange): Person {
-    const { name, units, theme, timeZone } = change;
+    const { name, units, theme, timeZone, unwantedMails } = change;
     if (timeZone !== undefined && !isTimeZone(timeZone)) {
       throw badRequest('This time zone is not known.', [
         { pointer: '/timeZone', detail: 'give a name of the IANA time zone database, such as Europe/Lisbon' },
@@ -32,9 +32,10 @@ export class OwnAccountService {
       ...(theme === undefined ? {} : { theme }),
       ...(timeZone === undefined ? {} : { timeZone }),
     };
+    if (unwantedMails !== undefined) this.people.setUnwantedMails(access.person.id, unwantedMails);
     const row = this.people.changeProfile(access.person.id, columns, this.renaming(access, name));
     if (row === undefined) throw notFound('This person is not known any more.');
-    return personOf(row);
+    return this.people.profileOf(row);
   }
 
   ownSessions(access: PersonAccess): OwnSession[] {
@@ -63,10 +64,6 @@ export class OwnAccountService {
     const { id, name: from, sessionId } = person;
     return { at: this.now(), personId: id, sessionId, action: 'person.rename', subject: id, details: { from, to } };
   }
-}
-
-export function personOf({ id, name, email, units, theme, timeZone }: PersonRow): Person {
-  return { id, name, email, units, theme, timeZone };
 }
 
 function isTimeZone(name: string): boolean {

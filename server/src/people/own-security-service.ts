@@ -47,7 +47,10 @@ export class OwnSecurityService {
       const changed = this.people.changePassword(id, { from: passwordHash, to }, audit);
       const person = this.people.find(id);
       if (!changed || person === undefined) throw conflict(CHANGED_MEANWHILE);
-      return { person, issued: this.sessions.start(id, from.agent, { after: sessionId }) };
+      return {
+        person: this.people.profileOf(person),
+        issued: this.sessions.start(id, from.agent, { after: sessionId }),
+      };
     });
   }
 

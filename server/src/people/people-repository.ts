@@ -1,9 +1,9 @@
-import type { Role } from '@riseback/contracts';
-import { and, eq, sql } from 'drizzle-orm';
+import type { DeclinableMail, Person, Role } from '@riseback/contracts';
+import { and, asc, eq, sql } from 'drizzle-orm';
 import { endAllSessions } from '../platform/auth/session-repository';
 import { appendAudit, type AuditEntry } from '../platform/db/audit';
 import type { Database } from '../platform/db/database';
-import { memberships, people } from '../platform/db/schema';
+import { declinedMails, memberships, people } from '../platform/db/schema';
 
 export type PersonRow = typeof people.$inferSelect;
 type ProfileColumns = Partial<Pick<PersonRow, 'name' | 'units' | 'theme' | 'timeZone'>>;
@@ -45,6 +45,23 @@ export class PeopleRepository {
     return this.db.transaction((tx) => {
       if (audit !== undefined) appendAudit(tx, audit);
       return tx.update(people).set(change).where(eq(people.id, id)).returning().get();
+    });
+  }
+
+  /** What a person sees of their own row. */
+  profileOf({ id, name, email, units, theme, timeZone }: PersonRow): Person {
+    const declined = this.db
+      .select({ purpose: declinedMails.purpose })
+      .from(declinedMails)
+      .where(eq(declinedMails.personId, id))
+      .orderBy(asc(declinedMails.purpose));
+    return { id, name, email, units, theme, timeZone, unwantedMails: declined.all().map(({ purpose }) => purpose) };
+  }
+
+  setUnwantedMails(personId: string, purposes: readonly DeclinableMail[]): void {
+    this.db.transaction((tx) => {
+      tx.delete(declinedMails).where(eq(declinedMails.personId, personId)).run();
+      for (const purpose of new Set(purposes)) tx.insert(declinedMails).values({ personId, purpose }).run();
     });
   }
 

@@ -11,7 +11,6 @@ import {
 import type { Request } from 'express';
 import type { SessionGate } from '../platform/auth/session-gate';
 import { signedInRoute, type Route } from '../platform/routes/route-table';
-import { personOf } from './own-account-service';
 import type { OwnSecurityService } from './own-security-service';
 import type { SignInOrigin } from './sign-in-service';
 
@@ -30,7 +29,7 @@ export function securityRoutes(security: OwnSecurityService, gate: SessionGate):
       handler: async ({ access, body, req, res }) => {
         const { person, issued } = await security.changePassword(access, body, originOf(req));
         gate.give(res, issued);
-        res.json({ person: personOf(person) } satisfies Session);
+        res.json({ person } satisfies Session);
       },
     }),
     signedInRoute({

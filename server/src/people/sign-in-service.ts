@@ -1,4 +1,4 @@
-import type { SignIn } from '@riseback/contracts';
+import type { Person, SignIn } from '@riseback/contracts';
 import type { OneTimeCodes } from '../platform/auth/one-time-codes';
 import type { Passwords } from '../platform/auth/passwords';
 import type { IssuedSession, Sessions } from '../platform/auth/sessions';
@@ -13,7 +13,7 @@ export interface SignInOrigin {
 }
 
 export interface SignedIn {
-  readonly person: PersonRow;
+  readonly person: Person;
   readonly issued: IssuedSession;
 }
 
@@ -65,7 +65,11 @@ export class SignInService {
       const present = this.people.find(person.id);
       if (present?.passwordHash !== person.passwordHash) return this.refuse(person, 'wrongPassword', from);
       if (present.disabledAt !== null) return this.refuse(person, 'disabled', from);
-      return { outcome: 'passed', person: present, issued: this.sessions.start(person.id, from.agent, details) };
+      return {
+        outcome: 'passed',
+        person: this.people.profileOf(present),
+        issued: this.sessions.start(person.id, from.agent, details),
+      };
     });
   }
 

@@ -1,4 +1,16 @@
-import type { ImageType, Person, Role } from '@riseback/contracts';
+import type {
+  DeclinableMail,
+  ImageType,
+  JobState,
+  LinkPurpose,
+  MailPurpose,
+  MailState,
+  Person,
+  ReportFormat,
+  RevisionState,
+  Role,
+  SignatureMeaning,
+} from '@riseback/contracts';
 import type { NodeKind } from '@riseback/network';
 import { sql } from 'drizzle-orm';
 import {
@@ -37,6 +49,30 @@ const IMAGE_TYPES = allOf<ImageType>()(['image/png', 'image/jpeg']);
 const FILE_PURPOSES = ['plan'] as const;
 const SESSION_ENDS = ['signedOut', 'endedByOwner', 'passwordChanged', 'roleChanged', 'disabled', 'expired'] as const;
 const SOLVE_STATES = ['finished', 'failed'] as const;
+const REVISION_STATES = allOf<RevisionState>()([
+  'draft',
+  'underReview',
+  'returned',
+  'approved',
+  'superseded',
+  'withdrawn',
+]);
+const SIGNATURE_MEANINGS = allOf<SignatureMeaning>()(['reviewed', 'approved']);
+const LINK_PURPOSES = allOf<LinkPurpose>()(['invitation', 'passwordReset']);
+const MAIL_PURPOSES = allOf<MailPurpose>()([
+  'invitation',
+  'passwordReset',
+  'submitted',
+  'returned',
+  'approved',
+  'mention',
+  'comment',
+]);
+const DECLINABLE_MAILS = allOf<DeclinableMail>()(['submitted', 'returned', 'approved', 'mention', 'comment']);
+const MAIL_STATES = allOf<MailState>()(['waiting', 'sent', 'givenUp']);
+const JOB_KINDS = ['report'] as const;
+const JOB_STATES = allOf<JobState>()(['waiting', 'running', 'finished', 'failed', 'cancelled']);
+const REPORT_FORMATS = allOf<ReportFormat>()(['pdf', 'xlsx', 'csv', 'json']);
 
 const oneOf = (name: string, column: string, values: readonly string[]) =>
   check(name, sql.raw(`${column} in (${values.map((value) => `'${value}'`).join(', ')})`));
@@ -440,4 +476,253 @@ export const audit = sqliteTable(
     hash: text('hash').notNull(),
   },
   (table) => [index('audit_site').on(table.siteId), isJson('audit_details', 'details')],
+);
+
+/**
+ * A network as it stood at one version, frozen with the results of all its cases; never changed, by trigger. What became of it is in
+ * `revision_events`. `file` is the RFC 8785 text whose SHA-256 is `file_hash`.
+ */
+export const revisions = sqliteTable(
+  'revisions',
+  {
+    id: text('id').primaryKey(),
+    networkId: text('network_id')
+      .notNull()
+      .references(() => networks.id),
+    letter: text('letter').notNull(),
+    title: text('title').notNull(),
+    reason: text('reason').notNull(),
+    networkVersion: integer('network_version').notNull(),
+    file: text('file').notNull(),
+    fileHash: text('file_hash').notNull(),
+    solverHash: text('solver_hash').notNull(),
+    resultsHash: text('results_hash').notNull(),
+    engineVersion: text('engine_version').notNull(),
+    createdBy: text('created_by')
+      .notNull()
+      .references(() => people.id),
+    createdAt: text('created_at').notNull(),
+  },
+  (table) => [
+    uniqueIndex('revisions_letter').on(table.networkId, table.letter),
+    foreignKey({
+      name: 'revisions_version',
+      columns: [table.networkId, table.networkVersion],
+      foreignColumns: [edits.networkId, edits.version],
+    }),
+    isJson('revisions_file', 'file'),
+  ],
+);
+
+/** One row a case, RFC 8785 text; `case_id` '' is the plain network. Never changed, by trigger. */
+export const revisionResults = sqliteTable(
+  'revision_results',
+  {
+    revisionId: text('revision_id')
+      .notNull()
+      .references(() => revisions.id),
+    caseId: text('case_id').notNull(),
+    ordinal: integer('ordinal').notNull(),
+    result: text('result').notNull(),
+  },
+  (table) => [primaryKey({ columns: [table.revisionId, table.caseId] }), isJson('revision_results_result', 'result')],
+);
+
+/** What became of a revision; its state is the last row's. Append-only by trigger. */
+export const revisionEvents = sqliteTable(
+  'revision_events',
+  {
+    revisionId: text('revision_id')
+      .notNull()
+      .references(() => revisions.id),
+    seq: integer('seq').notNull(),
+    state: text('state', { enum: REVISION_STATES }).notNull(),
+    personId: text('person_id')
+      .notNull()
+      .references(() => people.id),
+    at: text('at').notNull(),
+    note: text('note').notNull(),
+  },
+  (table) => [
+    primaryKey({ columns: [table.revisionId, table.seq] }),
+    oneOf('revision_events_state', 'state', REVISION_STATES),
+  ],
+);
+
+/** Ed25519 over `statement`, an RFC 8785 text; the key lies outside the database. Append-only by trigger. */
+export const signatures = sqliteTable(
+  'signatures',
+  {
+    revisionId: text('revision_id')
+      .notNull()
+      .references(() => revisions.id),
+    seq: integer('seq').notNull(),
+    personId: text('person_id')
+      .notNull()
+      .references(() => people.id),
+    meaning: text('meaning', { enum: SIGNATURE_MEANINGS }).notNull(),
+    statement: text('statement').notNull(),
+    statementHash: text('statement_hash').notNull(),
+    /** `seq hash` of the log's last row when it was signed. */
+    auditHead: text('audit_head').notNull(),
+    /** Base64. */
+    signature: text('signature').notNull(),
+    /** SHA-256 of the public key in DER, which tells keys apart. */
+    keyId: text('key_id').notNull(),
+  },
+  (table) => [
+    primaryKey({ columns: [table.revisionId, table.seq] }),
+    oneOf('signatures_meaning', 'meaning', SIGNATURE_MEANINGS),
+    isJson('signatures_statement', 'statement'),
+  ],
+);
+
+/** A thread is its first comment (`thread_id` = its own id) and the answers to it; only a first comment is resolved. */
+export const comments = sqliteTable(
+  'comments',
+  {
+    id: text('id').primaryKey(),
+    networkId: text('network_id')
+      .notNull()
+      .references(() => networks.id),
+    /** Absent: on the network as it stands. */
+    revisionId: text('revision_id').references(() => revisions.id),
+    threadId: text('thread_id').notNull(),
+    subject: json('subject').notNull(),
+    personId: text('person_id')
+      .notNull()
+      .references(() => people.id),
+    at: text('at').notNull(),
+    body: text('body').notNull(),
+    /** Ids of the people it names. */
+    mentions: json('mentions').notNull(),
+    resolvedBy: text('resolved_by').references(() => people.id),
+    resolvedAt: text('resolved_at'),
+  },
+  (table) => [
+    index('comments_network').on(table.networkId, table.revisionId),
+    index('comments_thread').on(table.threadId),
+    isJson('comments_subject', 'subject'),
+    isJson('comments_mentions', 'mentions'),
+  ],
+);
+
+/** Invitations and resets. The link itself is made anew from the id and a secret when its mail is sent; here is only what tells it. */
+export const oneTimeLinks = sqliteTable(
+  'one_time_links',
+  {
+    id: text('id').primaryKey(),
+    tokenHash: text('token_hash').notNull(),
+    purpose: text('purpose', { enum: LINK_PURPOSES }).notNull(),
+    email: text('email').notNull(),
+    /** Of an invitation. */
+    siteId: text('site_id').references(() => sites.id),
+    role: text('role', { enum: ROLES }),
+    /** Absent where the person asked for it themselves. */
+    madeBy: text('made_by').references(() => people.id),
+    madeAt: text('made_at').notNull(),
+    expiresAt: text('expires_at').notNull(),
+    usedAt: text('used_at'),
+    withdrawnAt: text('withdrawn_at'),
+  },
+  (table) => [
+    uniqueIndex('one_time_links_token').on(table.tokenHash),
+    index('one_time_links_site').on(table.siteId),
+    oneOf('one_time_links_purpose', 'purpose', LINK_PURPOSES),
+    oneOf('one_time_links_role', 'role', ROLES),
+  ],
+);
+
+/** The outbox: written in the transaction that causes the mail, sent by and by. `id` is the local part of its Message-ID. */
+export const mails = sqliteTable(
+  'mails',
+  {
+    id: text('id').primaryKey(),
+    purpose: text('purpose', { enum: MAIL_PURPOSES }).notNull(),
+    siteId: text('site_id').references(() => sites.id),
+    /** Absent for who has no account yet. */
+    recipientId: text('recipient_id').references(() => people.id),
+    email: text('email').notNull(),
+    data: json('data').notNull(),
+    state: text('state', { enum: MAIL_STATES }).notNull(),
+    attempts: integer('attempts').notNull(),
+    nextTryAt: text('next_try_at').notNull(),
+    createdAt: text('created_at').notNull(),
+    sentAt: text('sent_at'),
+    lastError: text('last_error'),
+  },
+  (table) => [
+    index('mails_due').on(table.state, table.nextTryAt),
+    index('mails_site').on(table.siteId, table.createdAt),
+    oneOf('mails_purpose', 'purpose', MAIL_PURPOSES),
+    oneOf('mails_state', 'state', MAIL_STATES),
+    isJson('mails_data', 'data'),
+  ],
+);
+
+/** What a person asked not to be written about. */
+export const declinedMails = sqliteTable(
+  'declined_mails',
+  {
+    personId: text('person_id')
+      .notNull()
+      .references(() => people.id),
+    purpose: text('purpose', { enum: DECLINABLE_MAILS }).notNull(),
+  },
+  (table) => [
+    primaryKey({ columns: [table.personId, table.purpose] }),
+    oneOf('declined_mails_purpose', 'purpose', DECLINABLE_MAILS),
+  ],
+);
+
+/** Long work, taken up once again after a restart. */
+export const jobs = sqliteTable(
+  'jobs',
+  {
+    id: text('id').primaryKey(),
+    kind: text('kind', { enum: JOB_KINDS }).notNull(),
+    siteId: text('site_id')
+      .notNull()
+      .references(() => sites.id),
+    networkId: text('network_id')
+      .notNull()
+      .references(() => networks.id),
+    personId: text('person_id')
+      .notNull()
+      .references(() => people.id),
+    input: json('input').notNull(),
+    state: text('state', { enum: JOB_STATES }).notNull(),
+    /** Share done, 0 to 1, and what is being done. */
+    progress: real('progress').notNull(),
+    doing: text('doing').notNull(),
+    attempt: integer('attempt').notNull(),
+    createdAt: text('created_at').notNull(),
+    startedAt: text('started_at'),
+    finishedAt: text('finished_at'),
+    problem: json('problem'),
+  },
+  (table) => [
+    index('jobs_network').on(table.networkId, table.createdAt),
+    index('jobs_state').on(table.state),
+    oneOf('jobs_kind', 'kind', JOB_KINDS),
+    oneOf('jobs_state', 'state', JOB_STATES),
+    isJson('jobs_input', 'input'),
+    isJson('jobs_problem', 'problem'),
+  ],
+);
+
+/** The file that a report's job made; swept after a day, since it can be made again. */
+export const reportFiles = sqliteTable(
+  'report_files',
+  {
+    jobId: text('job_id')
+      .primaryKey()
+      .references(() => jobs.id),
+    format: text('format', { enum: REPORT_FORMATS }).notNull(),
+    name: text('name').notNull(),
+    sha256: text('sha256').notNull(),
+    content: blob('content', { mode: 'buffer' }).notNull(),
+    createdAt: text('created_at').notNull(),
+  },
+  () => [oneOf('report_files_format', 'format', REPORT_FORMATS)],
 );
