@@ -1,5 +1,4 @@
-/** What spreadsheets take for the beginning of a formula. */
-const FORMULA_START = /^[=+\-@\t\r]/;
+import { guarded } from '@riseback/contracts';
 
 /** One line of RFC 4180, with formulas neutralised: a cell that would be run when the file is opened begins with '. */
 export function csvLine(cells: readonly string[]): string {
@@ -7,6 +6,6 @@ export function csvLine(cells: readonly string[]): string {
 }
 
 function csvCell(text: string): string {
-  const safe = FORMULA_START.test(text) ? `'${text}` : text;
+  const safe = guarded(text);
   return /[",\r\n]/.test(safe) ? `"${safe.replaceAll('"', '""')}"` : safe;
 }

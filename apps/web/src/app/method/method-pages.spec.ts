@@ -1,7 +1,8 @@
+import { LIMIT_WORDS } from '@riseback/contracts';
 import { COINCIDENCES, FRICTION_METHODS, STATIC_LIFT_BASES, VOID_FRACTIONS } from '@riseback/network';
 import { CHECK_LIMITS } from '@riseback/solver';
 import { describe, expect, it } from 'vitest';
-import { LIMIT_WORDS, limitGroups } from '../networks/limit-rows';
+import { limitGroups } from '../networks/limit-rows';
 import { methodSectionId } from '../networks/method-words';
 import { formulaTree } from './formula/formula-tree';
 import { METHOD_SECTIONS } from './method-pages';

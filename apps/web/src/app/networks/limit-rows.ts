@@ -1,7 +1,7 @@
+import { checkName, LIMIT_WORDS } from '@riseback/contracts';
 import type { Limits } from '@riseback/network';
 import { CHECK_LIMITS, type CheckLimit } from '@riseback/solver';
 import type { QuantityKind } from '@riseback/units';
-import { checkName } from '../results/finding-words';
 
 /** One limit of a check as the form shows it. */
 export interface LimitRow {
@@ -19,21 +19,6 @@ export interface LimitGroup {
   readonly code: string;
   readonly rows: readonly LimitRow[];
 }
-
-/** What each limit bounds, by the check's code and the limit's key. */
-export const LIMIT_WORDS: Readonly<Record<string, string>> = {
-  'backPressureFraction.watchFraction': 'Watch above',
-  'backPressureFraction.failFraction': 'Fail above',
-  'backPressureFraction.minimumInletGaugePa': 'Least inlet',
-  'velocity.watchMS': 'Flashing: watch above',
-  'velocity.failMS': 'Flashing: fail above',
-  'velocity.liquidMS': 'Liquid: watch above',
-  'momentum.limitPa': 'Fail above',
-  'gradient.flashingPaM': 'Flashing: watch above',
-  'gradient.liquidPaM': 'Liquid: watch above',
-  'thermalShock.limitK': 'Watch above',
-  'stall.watchMargin': 'Watch within',
-};
 
 /** Every limit that the solver knows, with what the network says of it. */
 export function limitGroups(limits: Limits): LimitGroup[] {

@@ -1,4 +1,6 @@
-import type { NetworkNode, NodeKind, PipeRun, TrapType } from '@riseback/network';
+import type { NetworkNode, NodeKind, PipeRun } from '@riseback/network';
+
+export { TRAP_TYPE_WORDS } from '@riseback/contracts';
 
 /** What the trade calls each kind, as it stands in a sentence. */
 export const KIND_WORDS: Readonly<Record<NodeKind | 'pipe', string>> = {
@@ -8,15 +10,6 @@ export const KIND_WORDS: Readonly<Record<NodeKind | 'pipe', string>> = {
   flashVessel: 'flash vessel',
   pumpedInlet: 'pumped inlet',
   pipe: 'pipe',
-};
-
-/** Trade names of trap types, as short as a column needs. */
-export const TRAP_TYPE_WORDS: Readonly<Record<TrapType, string>> = {
-  invertedBucket: 'Inverted bucket',
-  floatThermostatic: 'Float-thermostatic',
-  thermostatic: 'Thermostatic',
-  thermodynamic: 'Thermodynamic',
-  orifice: 'Orifice',
 };
 
 /** What the plant calls an element: its tag, or its id where it has none. */

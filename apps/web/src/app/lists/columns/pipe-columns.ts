@@ -1,7 +1,7 @@
+import { FLOW_PATTERN_WORDS } from '@riseback/contracts';
 import { FITTINGS, NOMINAL_SIZES, pipeBore, pipeSizes } from '@riseback/hydraulics';
 import { inOrder, type NetworkDocument, type PipeRun, setOp } from '@riseback/network';
 import { formatQuantity } from '@riseback/units';
-import { FLOW_PATTERN_WORDS } from '../../shared/flow-pattern-words';
 import type { Choice, Column, ListContext, Proposal } from './column';
 import { quantityColumn, resultColumn } from './column-kinds';
 import { FITTINGS_IN_WORDS, ROUTE_IN_WORDS } from './sheet-forms';

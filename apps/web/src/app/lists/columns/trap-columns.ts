@@ -1,3 +1,4 @@
+import { CONTROL_WORDS, DISCHARGE_WORDS } from '@riseback/contracts';
 import { inOrder, type NetworkNode, setOp, type Trap } from '@riseback/network';
 import { bandNumbers } from '../../results/bands';
 import type { Choice, Column, ListContext } from './column';
@@ -5,7 +6,6 @@ import { choiceColumn, keySet, quantityColumn, resultColumn, textColumn } from '
 import { SERVICE_IN_WORDS } from './sheet-forms';
 import { caseColumn, distinct, elevationColumn, findingColumn, nameColumns, noteColumn } from './shared-columns';
 import { TRAP_TYPE_WORDS } from '../../shared/element-words';
-import { CONTROL_WORDS, DISCHARGE_WORDS } from './trap-words';
 
 export const TRAP_COLUMNS: readonly Column<Trap>[] = [
   ...nameColumns<Trap>('nodes'),

@@ -1,5 +1,6 @@
 import { inject, Injectable } from '@angular/core';
 import { MatDialog } from '@angular/material/dialog';
+import { CONTROL_WORDS } from '@riseback/contracts';
 import { FITTINGS } from '@riseback/hydraulics';
 import {
   FITTING_KINDS,
@@ -14,7 +15,6 @@ import { type DisplayUnits, formatQuantity } from '@riseback/units';
 import { firstValueFrom, type Observable } from 'rxjs';
 import type { DialogName } from '../columns/column';
 import { riseM } from '../columns/pipe-columns';
-import { CONTROL_WORDS } from '../columns/trap-words';
 import type { CellEdit } from '../grid/cell-editing';
 import { type Field, type FieldValues, numberOf, textOf } from './field';
 import { FieldsDialog, type FieldsDialogData } from './fields-dialog';

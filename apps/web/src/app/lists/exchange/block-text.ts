@@ -1,5 +1,5 @@
+import { guarded, unguarded } from '@riseback/contracts';
 import { parse, unparse } from 'papaparse';
-import { guarded, unguarded } from './formula-safety';
 
 /** A block as a spreadsheet gives it: rows of cells, every cell a text, blank rows left out. */
 export interface Block {

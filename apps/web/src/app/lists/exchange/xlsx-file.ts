@@ -1,7 +1,7 @@
+import { guarded } from '@riseback/contracts';
 import { strToU8 } from 'fflate';
 import { type CellValue, readSheet } from 'read-excel-file/universal';
 import { blockOf, type ReadBlock, type SheetCell } from './block-text';
-import { guarded } from './formula-safety';
 import { readZip, writeZip, ZipRefused } from './zip-archive';
 
 /**

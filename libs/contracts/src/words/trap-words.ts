@@ -1,4 +1,13 @@
-import type { Trap } from '@riseback/network';
+import type { Trap, TrapType } from '@riseback/network';
+
+/** Trade names of trap types, as short as a column needs. */
+export const TRAP_TYPE_WORDS: Readonly<Record<TrapType, string>> = {
+  invertedBucket: 'Inverted bucket',
+  floatThermostatic: 'Float-thermostatic',
+  thermostatic: 'Thermostatic',
+  thermodynamic: 'Thermodynamic',
+  orifice: 'Orifice',
+};
 
 export const DISCHARGE_WORDS: Readonly<Record<Trap['discharge'], string>> = {
   intermittent: 'Intermittent',

@@ -1,4 +1,4 @@
-import type { FlowPattern } from '@riseback/contracts';
+import type { FlowPattern } from '../results';
 
 /** What a look into the pipe would show. */
 export const FLOW_PATTERN_WORDS: Readonly<Record<FlowPattern, string>> = {
