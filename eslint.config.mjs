@@ -121,6 +121,7 @@ const arrows = {
   network: [],
   solver: ['network', 'hydraulics', 'steam', 'numerics'],
   contracts: ['network'],
+  revisions: ['network'],
 };
 const libraries = Object.entries(arrows).map(([name, may]) => ({
   files: [`libs/${name}/**/*.ts`],
