@@ -115,6 +115,7 @@ async function buildServer(outdir) {
       'solve-worker': 'server/workers/solve-worker.ts',
       'hash-worker': 'server/workers/hash-worker.ts',
       'seal-copy-worker': 'server/workers/seal-copy-worker.ts',
+      'report-worker': 'server/workers/report-worker.ts',
     },
     outdir,
     bundle: true,

@@ -10,6 +10,8 @@ import { AuditService } from './audit/audit-service';
 import { LibraryRepository } from './library/library-repository';
 import { libraryRoutes } from './library/library-routes';
 import { LibraryService } from './library/library-service';
+import { Outbox } from './mail/outbox';
+import { OutboxRepository } from './mail/outbox-repository';
 import { NetworkRepository } from './networks/network-repository';
 import { networkRoutes } from './networks/network-routes';
 import { NetworkService } from './networks/network-service';
@@ -50,6 +52,18 @@ import type { Route } from './platform/routes/route-table';
 import { PlanRepository } from './plans/plan-repository';
 import { planRoutes } from './plans/plan-routes';
 import { PlanService } from './plans/plan-service';
+import { FrozenStateRepository } from './reports/frozen-state-repository';
+import { ReportRepository } from './reports/report-repository';
+import { reportRoutes } from './reports/report-routes';
+import { ReportRunner } from './reports/report-runner';
+import { ReportService } from './reports/report-service';
+import { ReportSources } from './reports/report-sources';
+import { ReportStreams } from './reports/report-streams';
+import type { ReportPort } from './reports/report-threads';
+import { RevisionMails } from './revisions/revision-mails';
+import { RevisionRepository } from './revisions/revision-repository';
+import { revisionRoutes } from './revisions/revision-routes';
+import { RevisionService } from './revisions/revision-service';
 import { SiteRepository } from './sites/site-repository';
 import { siteRoutes } from './sites/site-routes';
 import { SiteService } from './sites/site-service';
@@ -68,6 +82,7 @@ export interface AppParts {
   readonly newId: () => string;
   readonly now: () => Date;
   readonly solver: SolvePort & FileSolver;
+  readonly reportPort: ReportPort;
   /** Absent = passwords are hashed in this thread. */
   readonly hasher?: Hasher;
   /** The browser build; undefined while developing, when the pages come from their own server. */
@@ -84,6 +99,8 @@ export interface App {
   readonly routes: readonly Route[];
   /** For the demo, which makes its network without a request. */
   readonly networks: NetworkService;
+  /** Makes the reports that were ordered, also those that an earlier server left behind. */
+  readonly reports: Pick<ReportRunner, 'takeUp' | 'close'>;
   /** Ends the open streams, which would otherwise keep a stopping server waiting. */
   readonly endStreams: () => void;
 }
@@ -121,7 +138,14 @@ export function buildApp(parts: AppParts): App {
     report,
   });
   const networks = new NetworkService(new NetworkRepository(db), live, streams, newId, now);
+  const outbox = new Outbox(new OutboxRepository(db), newId, now);
   const plans = new PlanService(new PlanRepository(db), streams, newId, now);
+  const revisionMails = new RevisionMails(outbox);
+  const revisions = new RevisionService(new RevisionRepository(db), networks, live, revisionMails, streams, {
+    engineVersion: ENGINE_VERSION,
+    newId,
+    now,
+  });
   const events = new EventService(
     {
       headOf: (access) => networks.headOf(access),
@@ -130,6 +154,23 @@ export function buildApp(parts: AppParts): App {
     },
     streams,
   );
+  const frozen = new FrozenStateRepository(db);
+  const watching = new ReportStreams({ stillAllowed, ...(heartbeatMs === undefined ? {} : { heartbeatMs }) });
+  const networkRows = new NetworkRepository(db);
+  const sources = { networks: networkRows, live, frozen, people, memberships, engineVersion: ENGINE_VERSION, now };
+  const reportRows = new ReportRepository(db);
+  const reportSources = new ReportSources(sources);
+  const runner = new ReportRunner(reportRows, {
+    gather: (order) => reportSources.gather(order),
+    port: parts.reportPort,
+    now,
+    changed: (job) => watching.changed(job),
+    report: (error) => log.error({ err: error }, 'report failed'),
+  });
+  const reports = new ReportService({
+    ...{ reports: reportRows, frozen, runner, streams: watching, newId, now },
+    networkName: (networkId) => networkRows.head(networkId)?.name,
+  });
   const results = new ResultService(networks, live, solver, { engineVersion: ENGINE_VERSION, newId });
   const readiness = new ReadinessCheck(db, new SolverProbe(() => solvesOnePipe(solver), now));
 
@@ -144,7 +185,9 @@ export function buildApp(parts: AppParts): App {
     ...networkRoutes(networks),
     ...planRoutes(plans),
     ...solveRoutes(results),
+    ...revisionRoutes(revisions),
     ...eventRoutes(events),
+    ...reportRoutes(reports),
   ];
 
   const app = express();
@@ -170,5 +213,9 @@ export function buildApp(parts: AppParts): App {
     throw notFound('There is nothing at this address.');
   });
   app.use(problemHandler(log));
-  return { handler: app, routes, networks, endStreams: () => streams.close() };
+  const endStreams = () => {
+    streams.close();
+    watching.close();
+  };
+  return { handler: app, routes, networks, reports: runner, endStreams };
 }

@@ -19,6 +19,7 @@ import { createLog, logDestination, logFileOf } from './platform/log';
 import { boundedServer } from './platform/http/http-server';
 import { Metrics } from './platform/metrics/metrics';
 import { serveMetrics } from './platform/metrics/metrics-server';
+import { ReportThreads } from './reports/report-threads';
 import { SolveThreads } from './solve/solve-threads';
 
 /** For the person at the terminal; the log has its own place and form. */
@@ -49,7 +50,9 @@ async function start(): Promise<void> {
   });
   const now = () => new Date();
   const observe = metrics.requestTimer();
-  const app = buildApp({ db, config, log, newId: randomUUID, now, solver, hasher, webFolder: builtPages(), observe });
+  const reportPort = new ReportThreads();
+  const parts = { db, config, log, newId: randomUUID, now, solver, reportPort, hasher, observe };
+  const app = buildApp({ ...parts, webFolder: builtPages() });
   const people = new PeopleRepository(db);
   if (config.production) {
     refuseDemoPeople(people);
@@ -63,11 +66,13 @@ async function start(): Promise<void> {
   const keeper = await keepBackups({ config, source: db.$client, now, log, ended });
   const server = boundedServer(app.handler);
   shutDownGracefully(server, log, app.endStreams, async () => {
-    await Promise.all([threads.close(), hasher.close(), keeper.stop()]);
+    app.reports.close();
+    await Promise.all([threads.close(), hasher.close(), reportPort.close(), keeper.stop()]);
     db.$client.close();
     hold.release();
   });
   await listen(server, config);
+  app.reports.takeUp();
   if (config.metrics !== undefined) sayMetrics(await serveMetrics(metrics, config.metrics, log));
   const address = addressOf(server, config);
   log.info({ address, production: config.production }, 'listening');

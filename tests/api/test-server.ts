@@ -12,6 +12,8 @@ import { readConfig, type Config } from '../../server/src/platform/config';
 import { openDatabase, type Database } from '../../server/src/platform/db/database';
 import { memberships, people, sites } from '../../server/src/platform/db/schema';
 import { createLog } from '../../server/src/platform/log';
+import { makeReport } from '../../server/src/reports/report-material';
+import type { ReportPort } from '../../server/src/reports/report-threads';
 import { solveCases } from '../../server/src/solve/solve-cases';
 import type { FileSolver, SolvePort } from '../../server/src/solve/solve-port';
 import { solveText } from '../../server/src/solve/solve-text';
@@ -33,6 +35,7 @@ export interface TestServerOptions {
   readonly config?: Partial<Config>;
   readonly solver?: SolvePort;
   readonly fileSolver?: FileSolver;
+  readonly reportPort?: ReportPort;
   readonly hasher?: Hasher;
   readonly webFolder?: string;
   readonly heartbeatMs?: number;
@@ -72,6 +75,7 @@ export class TestServer {
       newId: randomUUID,
       now,
       solver: solverOf(options),
+      reportPort: options.reportPort ?? { make: makeReport },
       ...(options.hasher === undefined ? {} : { hasher: options.hasher }),
       webFolder: options.webFolder,
       ...(options.observe === undefined ? {} : { observe: options.observe }),
@@ -101,6 +105,7 @@ export class TestServer {
   }
 
   close(): void {
+    this.app.reports.close();
     this.db.$client.close();
   }
 

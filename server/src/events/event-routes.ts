@@ -41,7 +41,7 @@ export function eventRoutes(service: EventService): Route[] {
 }
 
 /** The answer never ends: whoever does not say that they read streams would wait for ever. */
-function demandStreamReader(req: Request): void {
+export function demandStreamReader(req: Request): void {
   if (req.method === 'GET' && req.get('accept')?.includes('text/event-stream') === true) return;
   throw badRequest('This is a stream of server-sent events: ask with the header Accept: text/event-stream.');
 }
