@@ -5,7 +5,7 @@ import { SavedBatch } from './networks';
  * GET /api/networks/:networkId/events is a stream of server-sent events. Only `edit` carries an id, its version: what a
  * browser sends as Last-Event-ID after a lost connection is the last version that it has.
  */
-export const NETWORK_EVENTS = ['edit', 'solve', 'people', 'plan', 'reload'] as const;
+export const NETWORK_EVENTS = ['edit', 'solve', 'people', 'plan', 'revisions', 'comments', 'reload'] as const;
 
 /** `edit`: someone's batch was saved, also one's own. */
 export const EditEvent = SavedBatch;
@@ -33,6 +33,14 @@ export type PeopleEvent = z.infer<typeof PeopleEvent>;
 /** `plan`: the plan under the drawing was changed; which way, GET /api/networks/:networkId/plan says. */
 export const PlanEvent = z.object({ version: z.number().int() });
 export type PlanEvent = z.infer<typeof PlanEvent>;
+
+/** `revisions`: one was frozen, moved on or signed; what it is now, GET /api/networks/:networkId/revisions/:revisionId says. */
+export const RevisionsEvent = z.object({ revisionId: z.string() });
+export type RevisionsEvent = z.infer<typeof RevisionsEvent>;
+
+/** `comments`: a thread was begun, answered, resolved or opened again; `revisionId` is absent for one on the network as it stands. */
+export const CommentsEvent = z.object({ threadId: z.string(), revisionId: z.string().optional() });
+export type CommentsEvent = z.infer<typeof CommentsEvent>;
 
 /** `reload`: too far behind to be told edit by edit; the network is to be read again. */
 export const ReloadEvent = z.object({ currentVersion: z.number().int() });

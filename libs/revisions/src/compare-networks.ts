@@ -136,21 +136,22 @@ function commonCases(before: NetworkFile, after: NetworkFile): [was: FileCase, i
 }
 
 function keyChanges(before: object, after: object, except: ReadonlySet<string>): KeyChange[] {
-  const [earlier, later] = [entriesOf(before), entriesOf(after)];
-  return [...new Set([...later.keys(), ...earlier.keys()])].flatMap((key): KeyChange[] => {
-    const [from, to] = [earlier.get(key), later.get(key)];
-    if (except.has(key) || jsonEqual(from, to)) return [];
-    return [{ key, from, to, drawingOnly: DRAWING_KEYS.has(key) }];
-  });
+  const changes: KeyChange[] = [];
+  for (const key of keysOfBoth(before, after)) {
+    const [from, to] = [valueAt(before, key), valueAt(after, key)];
+    if (jsonEqual(from, to) || except.has(key)) continue;
+    changes.push({ key, from, to, drawingOnly: DRAWING_KEYS.has(key) });
+  }
+  return changes;
 }
 
 /** Settings lie in each other: what differs is told of the innermost, which has a name of its own. */
 function settingChanges(path: readonly string[], from: unknown, to: unknown): SettingChange[] {
   if (jsonEqual(from, to)) return [];
-  if (!isObject(from ?? {}) || !isObject(to ?? {})) return [{ path, from, to }];
-  const [earlier, later] = [entriesOf(from ?? {}), entriesOf(to ?? {})];
-  const keys = [...new Set([...later.keys(), ...earlier.keys()])].sort(compareIds);
-  return keys.flatMap((key) => settingChanges([...path, key], earlier.get(key), later.get(key)));
+  const [earlier, later] = [from ?? {}, to ?? {}];
+  if (!isObject(earlier) || !isObject(later)) return [{ path, from, to }];
+  const keys = keysOfBoth(earlier, later).sort(compareIds);
+  return keys.flatMap((key) => settingChanges([...path, key], valueAt(earlier, key), valueAt(later, key)));
 }
 
 function reorderedLists(before: NetworkFile, after: NetworkFile): ComparedCollection[] {
@@ -173,6 +174,13 @@ function inAnotherOrder(before: readonly string[], after: readonly string[]): bo
   return after.filter((id) => earlier.has(id)).some((id, i) => id !== common[i]);
 }
 
-function entriesOf(value: object): ReadonlyMap<string, unknown> {
-  return new Map<string, unknown>(Object.entries(value));
+/** The later one's first. A network has thousands of elements, most of them with the same keys: nothing is made for each. */
+function keysOfBoth(before: object, after: object): string[] {
+  const keys = Object.keys(after);
+  for (const key of Object.keys(before)) if (!Object.hasOwn(after, key)) keys.push(key);
+  return keys;
+}
+
+function valueAt(value: object, key: string): unknown {
+  return Object.hasOwn(value, key) ? (value as Readonly<Record<string, unknown>>)[key] : undefined;
 }

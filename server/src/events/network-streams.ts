@@ -1,4 +1,11 @@
-import type { PeopleEvent, PlanEvent, SavedBatch, SolveEvent } from '@riseback/contracts';
+import type {
+  CommentsEvent,
+  PeopleEvent,
+  PlanEvent,
+  RevisionsEvent,
+  SavedBatch,
+  SolveEvent,
+} from '@riseback/contracts';
 import { jsonEqual } from '@riseback/network';
 import type { NetworkAccess } from '../platform/auth/access';
 import { tooManyRequests, unavailable } from '../platform/problem';
@@ -93,6 +100,16 @@ export class NetworkStreams {
   planChanged(networkId: string, version: number): void {
     const room = this.rooms.get(networkId);
     if (room !== undefined) this.tell(room, { event: 'plan', data: { version } satisfies PlanEvent });
+  }
+
+  revisionsChanged(networkId: string, revisionId: string): void {
+    const room = this.rooms.get(networkId);
+    if (room !== undefined) this.tell(room, { event: 'revisions', data: { revisionId } satisfies RevisionsEvent });
+  }
+
+  commentsChanged(networkId: string, changed: CommentsEvent): void {
+    const room = this.rooms.get(networkId);
+    if (room !== undefined) this.tell(room, { event: 'comments', data: changed });
   }
 
   selected(access: NetworkAccess, ids: readonly string[]): void {

@@ -1,0 +1,65 @@
+import type { MailPurpose } from '@riseback/contracts';
+import { roleMay } from '@riseback/contracts';
+import type { MailQueue } from '../mail/mail-queue';
+import type { NetworkAccess } from '../platform/auth/access';
+import type { Queries } from '../platform/db/database';
+import type { RevisionWithHistory } from './revision-history';
+import type { RevisionRepository } from './revision-repository';
+
+/** Tells those concerned by mail what became of a revision, in the transaction in which it does. */
+export class RevisionMails {
+  constructor(private readonly queue: MailQueue) {}
+
+  /** To all who may sign it. */
+  submitted(tx: Queries, revisions: RevisionRepository, access: NetworkAccess, to: RevisionWithHistory, note: string) {
+    const reviewers = revisions.peopleOfSite(access.siteId).filter(({ role }) => roleMay(role, 'sign'));
+    const recipients = reviewers.map(({ id }) => id);
+    this.send(tx, revisions, access, { purpose: 'submitted', revision: to, recipients, note });
+  }
+
+  /** To those whose work it is. */
+  judged(
+    tx: Queries,
+    revisions: RevisionRepository,
+    access: NetworkAccess,
+    revision: RevisionWithHistory,
+    { purpose, note }: { readonly purpose: 'returned' | 'approved'; readonly note: string },
+  ) {
+    const recipients = authorsOf(revision);
+    this.send(tx, revisions, access, { purpose, revision, recipients, note });
+  }
+
+  private send(
+    tx: Queries,
+    revisions: RevisionRepository,
+    { siteId, networkId, person }: NetworkAccess,
+    mail: {
+      readonly purpose: MailPurpose;
+      readonly revision: RevisionWithHistory;
+      readonly recipients: readonly string[];
+      readonly note: string;
+    },
+  ): void {
+    const here = new Set(revisions.peopleOfSite(siteId).map(({ id }) => id));
+    const { id: revisionId, letter, title } = mail.revision.row;
+    const data = {
+      siteId,
+      networkId,
+      networkName: revisions.networkName(networkId) ?? '',
+      byName: person.name,
+      revisionId,
+      letter,
+      title,
+      ...(mail.note === '' ? {} : { note: mail.note }),
+    };
+    for (const recipientId of new Set(mail.recipients)) {
+      if (recipientId === person.id || !here.has(recipientId)) continue;
+      this.queue.enqueue(tx, { purpose: mail.purpose, siteId, recipientId, data });
+    }
+  }
+}
+
+/** Who froze it and who submitted it. */
+export function authorsOf({ facts }: RevisionWithHistory): string[] {
+  return [facts.frozenBy, ...(facts.submittedBy === undefined ? [] : [facts.submittedBy])];
+}
