@@ -1,16 +1,19 @@
 import { defineConfig } from '@playwright/test';
 
-/** While developing, RISEBACK_TEST_PORT names a server that is already up. */
+/** While developing, RISEBACK_TEST_PORT names a server that is already up; tests then run one after the other. */
 const running = process.env['RISEBACK_TEST_PORT'];
-const port = Number(running ?? 4390);
+/** Each worker has a server and a database of its own, so that no test meets the people and sessions of another. */
+const ports = running === undefined ? [4390, 4391] : [Number(running)];
+// this file is read in every worker too, where Playwright says which one it is
+const port = ports[Number(process.env['TEST_PARALLEL_INDEX'] ?? 0)] ?? ports[0];
 
-/** Debian's chromium drives the built application on a database of its own. */
+/** Debian's chromium drives the built application. */
 const config = defineConfig({
   testDir: '.',
   testMatch: '**/*.spec.ts',
   outputDir: '../../out/browser',
   timeout: 90_000,
-  workers: 1,
+  workers: ports.length,
   // a shared machine may stall a browser once; what passes at the second try is reported as flaky
   retries: process.env['CI'] === undefined ? 0 : 1,
   reporter: [['list'], ['json', { outputFile: '../../out/reports/browser.json' }]],
@@ -31,15 +34,15 @@ const config = defineConfig({
       ],
     },
   },
-  webServer: {
+  webServer: ports.map((served) => ({
     command: 'node tests/browser/serve.mjs',
     cwd: '../..',
-    env: { PORT: String(port) },
-    url: `http://localhost:${String(port)}/readyz`,
+    env: { PORT: String(served) },
+    url: `http://localhost:${String(served)}/readyz`,
     timeout: 240_000,
     reuseExistingServer: running !== undefined,
-    gracefulShutdown: { signal: 'SIGTERM', timeout: 15_000 },
-  },
+    gracefulShutdown: { signal: 'SIGTERM' as const, timeout: 15_000 },
+  })),
 });
 
 export default config;
