@@ -1,0 +1,79 @@
+import { displayUnit, type DisplayUnits, formatQuantity, type QuantityKind, toDisplay } from '@riseback/units';
+
+/** A number in the reader's unit with all its digits, and how many decimals the screen prints of it. */
+export interface NumberCell {
+  readonly number: number;
+  readonly decimals: number;
+}
+export type TableCell = string | NumberCell | undefined;
+
+export interface TableColumn {
+  readonly title: string;
+  /** '' for texts and plain numbers. */
+  readonly unit: string;
+}
+
+/** One list of the report, the same in every kind of file that holds tables. */
+export interface ReportTable {
+  /** What a person calls it: at most 31 characters, since it names a sheet. */
+  readonly name: string;
+  readonly columns: readonly TableColumn[];
+  readonly rows: readonly (readonly TableCell[])[];
+}
+
+/** How one column is filled from the thing that a row is of. Titles, quantities and words are those of the lists on the screen. */
+export interface ReportColumn<R> {
+  readonly title: string;
+  readonly quantity?: QuantityKind;
+  /** The unit in the head where the cells are names that carry one, such as nominal sizes. */
+  readonly unit?: string;
+  /** SI where the column has a quantity. */
+  readonly value: (row: R) => number | string | undefined;
+}
+
+/** One digit fewer than conversion costs, so that 12 ft stored in metres are 12 and not 11.999999999999998. */
+const DIGITS = 12;
+
+export function tableOf<R>(
+  name: string,
+  columns: readonly ReportColumn<R>[],
+  rows: readonly R[],
+  units: DisplayUnits,
+): ReportTable {
+  return {
+    name,
+    columns: columns.map((column) => ({ title: column.title, unit: unitOf(column, units) })),
+    rows: rows.map((row) =>
+      columns.map(({ quantity, value }) => {
+        const found = value(row);
+        if (typeof found !== 'number') return found === '' ? undefined : found;
+        return quantity === undefined ? plainNumber(found) : quantityCell(found, quantity, units);
+      }),
+    ),
+  };
+}
+
+export function quantityCell(si: number, quantity: QuantityKind, units: DisplayUnits): NumberCell {
+  return {
+    number: Number(toDisplay(si, quantity, units).toPrecision(DIGITS)),
+    decimals: decimalsOf(formatQuantity(si, quantity, units)),
+  };
+}
+
+export function plainNumber(number: number): NumberCell {
+  return { number, decimals: decimalsOf(String(number)) };
+}
+
+/** "Load, lb/h": what stands over a column in a file. */
+export function heading({ title, unit }: TableColumn): string {
+  return unit === '' ? title : `${title}, ${unit}`;
+}
+
+function unitOf<R>({ quantity, unit }: ReportColumn<R>, { system }: DisplayUnits): string {
+  return quantity === undefined ? (unit ?? '') : displayUnit(quantity, system);
+}
+
+function decimalsOf(printed: string): number {
+  const point = printed.indexOf('.');
+  return point < 0 ? 0 : printed.length - point - 1;
+}
