@@ -4,7 +4,8 @@ import { tmpdir } from 'node:os';
 import { join } from 'node:path';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { readConfig } from '../../server/src/platform/config';
-import { secretFileMistake, secretMistake } from '../../server/src/platform/session-secret';
+import { secretFileMistake } from '../../server/src/platform/secret-file';
+import { secretMistake } from '../../server/src/platform/session-secret';
 
 const GOOD = randomBytes(48).toString('base64');
 const production = { NODE_ENV: 'production', RISEBACK_DB: ':memory:' };

@@ -2,6 +2,7 @@ import { isIP } from 'node:net';
 import { dirname, join, resolve } from 'node:path';
 import * as z from 'zod';
 import type { ScheduleSettings } from './backup/backup-schedule';
+import { readMailSettings, type MailSettings } from './mail-settings';
 import type { MetricsAddress } from './metrics/metrics-server';
 import { findSessionSecret, secretMistake } from './session-secret';
 
@@ -24,6 +25,7 @@ export interface Config {
   readonly backups: ScheduleSettings | undefined;
   /** Undefined = figures are not served. */
   readonly metrics: MetricsAddress | undefined;
+  readonly mail: MailSettings;
 }
 
 /** A setting that cannot be used. Stops the start; the message names the setting and says what it must be. */
@@ -50,6 +52,9 @@ const Settings = z.object({
   RISEBACK_BACKUP_KEEP: z.coerce.number().int().min(1).max(10_000).default(14),
   RISEBACK_METRICS_PORT: port.optional(),
   RISEBACK_METRICS_HOST: z.string().min(1).default('127.0.0.1'),
+  RISEBACK_SMTP_URL: z.string().optional(),
+  RISEBACK_SMTP_URL_FILE: z.string().min(1).optional(),
+  RISEBACK_MAIL_FROM: z.string().optional(),
 });
 type Settings = z.infer<typeof Settings>;
 
@@ -70,6 +75,9 @@ const MUST_BE: Readonly<Record<keyof Settings, string>> = {
   RISEBACK_BACKUP_KEEP: 'a whole number, 1 at least',
   RISEBACK_METRICS_PORT: 'a port number from 0 (any free one) to 65535',
   RISEBACK_METRICS_HOST: 'an address or a host name',
+  RISEBACK_SMTP_URL: 'the address of a mail server',
+  RISEBACK_SMTP_URL_FILE: 'the path of a file with the address of a mail server',
+  RISEBACK_MAIL_FROM: 'the address that mails come from',
 };
 
 /** @throws ConfigError naming the first setting that cannot be used */
@@ -93,6 +101,7 @@ export function readConfig(env: Readonly<Record<string, string | undefined>>): C
       settings.RISEBACK_METRICS_PORT === undefined
         ? undefined
         : { host: settings.RISEBACK_METRICS_HOST, port: settings.RISEBACK_METRICS_PORT },
+    mail: readMail(settings, production, databasePath),
   };
 }
 
@@ -160,6 +169,18 @@ function readSecret(settings: Settings, production: boolean, databasePath: strin
   const weak = secretMistake(given.secret);
   if (weak !== undefined) throw new ConfigError(`${given.setting} ${weak}. Make one with: openssl rand -base64 48`);
   return given.secret;
+}
+
+function readMail(settings: Settings, production: boolean, databasePath: string): MailSettings {
+  const read = readMailSettings({
+    url: settings.RISEBACK_SMTP_URL,
+    urlFile: settings.RISEBACK_SMTP_URL_FILE,
+    from: settings.RISEBACK_MAIL_FROM,
+    production,
+    databasePath,
+  });
+  if ('mistake' in read) throw new ConfigError(read.mistake);
+  return read.settings;
 }
 
 function readTrustProxy(text: string | undefined): Config['trustProxy'] {

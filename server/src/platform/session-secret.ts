@@ -1,6 +1,7 @@
 import { randomBytes } from 'node:crypto';
-import { closeSync, existsSync, fstatSync, mkdirSync, openSync, readFileSync, writeFileSync } from 'node:fs';
+import { existsSync, mkdirSync, writeFileSync } from 'node:fs';
 import { dirname } from 'node:path';
+import { readSecretFile, type SecretInFile } from './secret-file';
 
 export interface SecretSources {
   readonly secret: string | undefined;
@@ -9,20 +10,13 @@ export interface SecretSources {
   readonly generatedFile: string | undefined;
 }
 
-export interface FoundSecret {
-  readonly secret?: string;
-  /** The setting or file it came from. */
-  readonly setting?: string;
-  readonly mistake?: string;
-}
-
 const LEAST_BYTES = 32;
 /** Below this many different characters a text of 32 is a word repeated, not random. */
 const LEAST_DIFFERENT = 10;
 /** What stands in examples and is put in by hand. In 64 random base64 characters the shortest turns up once in ten million. */
 const WORDS_OF_EXAMPLES = ['secret', 'password', 'changeme', 'change-me', 'change_me', 'riseback', 'example'];
 
-export function findSessionSecret({ secret, file, generatedFile }: SecretSources): FoundSecret {
+export function findSessionSecret({ secret, file, generatedFile }: SecretSources): SecretInFile {
   if (secret !== undefined && file !== undefined) {
     return { mistake: 'RISEBACK_SESSION_SECRET and RISEBACK_SESSION_SECRET_FILE are both set; keep one of them.' };
   }
@@ -49,14 +43,6 @@ export function secretMistake(secret: string): string | undefined {
   return undefined;
 }
 
-/** Others who may write the file choose the secret; others who may read it sign themselves in as anyone. */
-export function secretFileMistake(file: { mode: number; uid: number }, ownUid: number): string | undefined {
-  if ((file.mode & 0o077) !== 0) return 'others may read the file; allow its owner only (chmod 600).';
-  if (file.uid !== ownUid && file.uid !== 0)
-    return 'the file belongs to another account; give it to the one that the server runs as (chown).';
-  return undefined;
-}
-
 function isRepeatedPiece(text: string): boolean {
   // A text made of one piece over and over is found again inside itself, off by the piece.
   return (text + text).indexOf(text, 1) <= text.length / 2;
@@ -67,21 +53,4 @@ function isMostlyInSequence(text: string): boolean {
   const codes = Array.from(text, (character) => character.codePointAt(0) ?? 0);
   const following = codes.slice(1).filter((code, i) => Math.abs(code - (codes[i] ?? 0)) <= 1);
   return following.length > text.length / 2;
-}
-
-function readSecretFile(path: string, setting: string): FoundSecret {
-  let open: number | undefined;
-  try {
-    // Opened once, so that what is read is the very file whose rights were looked at.
-    open = openSync(path, 'r');
-    // Windows has no such owner and mode bits: there the folder's own rights protect the file.
-    const ownUid = process.getuid?.();
-    const mistake = ownUid === undefined ? undefined : secretFileMistake(fstatSync(open), ownUid);
-    if (mistake !== undefined) return { mistake: `${setting}: ${mistake}` };
-    return { secret: readFileSync(open, 'utf8').trim(), setting };
-  } catch {
-    return { mistake: `${setting}: the file cannot be read; check its path and that the server's account owns it.` };
-  } finally {
-    if (open !== undefined) closeSync(open);
-  }
 }
