@@ -3,6 +3,9 @@ import type { Page } from '@playwright/test';
 import { demoNetworkPath, openEmptyNetwork, signIn } from './people';
 import { expect, test } from './violations';
 
+// each stands by itself: two browsers share what would else be the longest file
+test.describe.configure({ mode: 'parallel' });
+
 const THEMES = ['light', 'dark'] as const;
 const LISTS = ['traps', 'pipes', 'junctions', 'vessels', 'pumped-inlets', 'gauges', 'trap-models'] as const;
 /** 720 px is what a window of 1440 has left at a zoom of 200 %. */

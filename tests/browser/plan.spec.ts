@@ -5,6 +5,9 @@ import { pdfOf } from '../fixtures/pdf';
 import { copyOfDemo, savedAndSolved, signIn } from './people';
 import { expect, test } from './violations';
 
+// each stands by itself: two browsers share what would else be the longest file
+test.describe.configure({ mode: 'parallel' });
+
 /** Paper with a dark frame and two dark posts, 400 px apart in the middle of the sheet. */
 const HALL = pngOf(800, 500, (x, y) => {
   const frame = x < 8 || y < 8 || x >= 792 || y >= 492;
