@@ -51,7 +51,11 @@ function ledgerTable(source: TableSource, ways: readonly ToldWay[]): ReportTable
     const { result, name: caseName } = way.solved;
     const trap = result.traps.find(({ id }) => id === way.trapId);
     if (trap === undefined) return [];
-    const lines = ledger(file, walked(result), way.trapId).map((entry, i): LedgerLine => ({ ...entry, way, no: i + 1 }));
+    const lines = ledger(file, walked(result), way.trapId).map((entry, i): LedgerLine => ({
+      ...entry,
+      way,
+      no: i + 1,
+    }));
     const opening = quantityCell(trap.receiverPressurePa, 'pressure', units);
     return [
       blank({
