@@ -122,6 +122,7 @@ const arrows = {
   solver: ['network', 'hydraulics', 'steam', 'numerics'],
   contracts: ['network'],
   revisions: ['network'],
+  figures: ['contracts', 'network', 'solver', 'units'],
 };
 const libraries = Object.entries(arrows).map(([name, may]) => ({
   files: [`libs/${name}/**/*.ts`],

@@ -1,7 +1,7 @@
 import { inject, Injectable } from '@angular/core';
 import type { NetworkDocument, Position } from '@riseback/network';
 import { nameOf } from '../shared/element-words';
-import { GRID, snapPoint } from '../shared/placement';
+import { GRID, snapPoint } from '@riseback/figures';
 import { NetworkStore } from '../networks/network-store';
 import { DrawingCommands } from './drawing-commands';
 import { DrawingScene } from './drawing-scene';

@@ -10,7 +10,10 @@ import {
   untracked,
 } from '@angular/core';
 import { Router } from '@angular/router';
+import type { CommentSubject } from '@riseback/contracts';
 import type { Position } from '@riseback/network';
+import { CommentStore } from '../comments/comment-store';
+import { elementOf } from '../comments/comment-subjects';
 import { NetworkStore } from '../networks/network-store';
 import { allFindings, findingsOfCases } from '../results/finding-list';
 import { FindingsList } from '../results/findings-list/findings-list';
@@ -22,7 +25,7 @@ import { DrawingTray } from './drawing-tray';
 import { EmptySheet } from './empty-sheet';
 import { Inspector } from './inspector/inspector';
 import { KeyList } from './key-list';
-import { zoneOf } from './model/sheet-zones';
+import { zoneOf } from '@riseback/figures';
 import { NodeArranging } from './node-arranging';
 import { PlanStore } from './plan/plan-store';
 import { PlanTool } from './plan/plan-tool';
@@ -66,6 +69,7 @@ export class DrawingPage {
   protected readonly store = inject(NetworkStore);
   protected readonly state = inject(DrawingState);
   protected readonly scene = inject(DrawingScene);
+  protected readonly comments = inject(CommentStore);
   protected readonly planTool = inject(PlanTool);
 
   /** From the address: the element looked at. */
@@ -127,6 +131,17 @@ export class DrawingPage {
     if (!this.scene.has(elementId)) return;
     this.state.select(elementId);
     this.state.focusOn(elementId);
+  }
+
+  /** Of the case that is shown, unless the finding is of another. */
+  protected commentOn(subject: CommentSubject): void {
+    const elementId = elementOf(subject);
+    if (elementId === null || !this.scene.has(elementId)) return;
+    this.state.select(elementId);
+    const caseId = this.store.caseOf(elementId);
+    const ofCase = subject.kind === 'result' && subject.caseId === undefined && caseId !== '';
+    this.comments.ask(ofCase ? { ...subject, caseId } : subject);
+    this.inspectorOpen.set(true);
   }
 
   protected toggleFindings(): void {

@@ -4,7 +4,7 @@ import { overrideId } from '@riseback/network';
 import { NetworkStore } from '../networks/network-store';
 import { isPipe, KIND_WORDS, nameOf } from '../shared/element-words';
 import { DrawingState } from './drawing-state';
-import { colourScale } from './model/colour-scale';
+import { colourScale, sheetAround } from '@riseback/figures';
 import { crossings } from './model/crossings';
 import {
   type DrawnNode,
@@ -15,7 +15,6 @@ import {
   withDisplaced,
 } from './model/drawn-network';
 import { type NodeView, nodeView, type PipeView, pipeView, type SceneResults } from './model/element-views';
-import { sheetAround } from './model/sheet-zones';
 import { ViewCache } from './model/view-cache';
 
 /** The network as it is drawn: document, results and what the person does to it, joined. In the drawing page's `providers`. */

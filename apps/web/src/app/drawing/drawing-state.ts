@@ -1,6 +1,6 @@
 import { computed, Injectable, signal } from '@angular/core';
 import type { NodeKind, Position } from '@riseback/network';
-import type { ColouredBy } from './model/colour-scale';
+import type { ColouredBy } from '@riseback/figures';
 import { type Displaced, NOTHING_DISPLACED } from './model/drawn-network';
 import type { PipeGrip } from './model/pipe-shape';
 

@@ -23,7 +23,7 @@ import { CopyNews } from '../library/copy-news';
 import { Company } from '../networks/company';
 import { NetworkStore } from '../networks/network-store';
 import { UndoButtons, type UndoneStep } from '../networks/undo-buttons';
-import { backPressureLimit } from '../results/back-pressure-limit';
+import { backPressureLimit } from '@riseback/figures';
 import { BulkBar } from './bulk-bar/bulk-bar';
 import { TrialSolve } from './bulk-bar/trial-solve';
 import type { DialogName } from './columns/column';

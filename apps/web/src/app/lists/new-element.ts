@@ -9,7 +9,7 @@ import {
   type Position,
 } from '@riseback/network';
 import { nextTag } from '../shared/next-tag';
-import { GRID, nearestFreePoint } from '../shared/placement';
+import { GRID, nearestFreePoint } from '@riseback/figures';
 import { findPlace, gaugePlaces } from './columns/gauge-columns';
 import { findNode, nodeName } from './columns/pipe-columns';
 import { type Field, type FieldValues, numberOf, optionalText, textOf } from './dialogs/field';

@@ -8,11 +8,10 @@ import { SessionStore } from '../session/session-store';
 import { ProblemBanner } from '../shared/problem-banner/problem-banner';
 import { allFindings, findingsOfCases } from './finding-list';
 import { FindingsList } from './findings-list/findings-list';
-import { bandsAlong } from './ledger/bands-along';
+import { bandsAlong, pressureRamp, pressuresOf } from '@riseback/figures';
 import { LedgerSheet } from './ledger/ledger-sheet';
 import { groupTraps, trapOfElement } from './ledger/trap-groups';
 import { TrapList } from './ledger/trap-list';
-import { pressureRamp, pressuresOf } from './pressure-ramp';
 import { nameOf } from '../shared/element-words';
 
 /** Lift & ledger: the traps by their ways, and the account of the chosen one, or of the one that governs. */

@@ -8,7 +8,7 @@ import {
   type PipeRun,
 } from '@riseback/network';
 import { type DisplayUnits, formatQuantity, type QuantityKind } from '@riseback/units';
-import { boreWords } from '../results/ledger/element-text';
+import { boreWords } from '@riseback/figures';
 import { KIND_WORDS, nameOf } from '../shared/element-words';
 
 export const SUBJECTS = ['size', 'pressure', 'elevation', 'load'] as const;

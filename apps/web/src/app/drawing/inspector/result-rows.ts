@@ -1,7 +1,7 @@
 import { FLOW_PATTERN_WORDS } from '@riseback/contracts';
 import type { NodeResult, PipeResult, TrapResult } from '@riseback/contracts';
 import { type DisplayUnits, formatQuantity, type QuantityKind } from '@riseback/units';
-import { bandWords } from '../../results/bands';
+import { bandWords } from '@riseback/figures';
 
 export interface ResultRow {
   readonly name: string;

@@ -4,7 +4,7 @@ import type { NetworkNode, PipeRun, Trap, TrapModel } from '@riseback/network';
 import { formatQuantity } from '@riseback/units';
 import { caseChangeWords } from '../../cases/case-changes';
 import { NetworkStore } from '../../networks/network-store';
-import { backPressureLimit } from '../../results/back-pressure-limit';
+import { backPressureLimit } from '@riseback/figures';
 import { StallChart } from '../../results/stall/stall-chart';
 import { stallFacts } from '../../results/stall/stall-facts';
 import { Staff } from '../../results/staff/staff';

@@ -6,7 +6,7 @@ import type { Concern, NodeView, PipeView, Side } from '../model/element-views';
 import { longestPiece, middle, pieces } from '../../shared/geometry';
 import type { AreaOutline } from '../sheet/area-outlines';
 import { symbolScale } from '../model/viewport';
-import type { Box, LabelRequest } from './label-placement';
+import type { Box, LabelRequest } from '@riseback/figures';
 
 export interface LabelLine {
   readonly text: string;

@@ -1,5 +1,5 @@
 import type { NodeKind, Position } from '@riseback/network';
-import { snap } from '../../shared/placement';
+import { snap } from '@riseback/figures';
 import type { DrawnNetwork } from './drawn-network';
 
 export const ALIGNMENTS = ['left', 'centre', 'right', 'top', 'middle', 'bottom'] as const;

@@ -1,6 +1,6 @@
 import type { Position } from '@riseback/network';
 import { pieces } from '../../shared/geometry';
-import { GRID } from '../../shared/placement';
+import { GRID } from '@riseback/figures';
 
 /** What lies on the sheet, or is to be put on it. */
 export interface Shape {

@@ -1,6 +1,6 @@
 import type { PipeResult } from '@riseback/contracts';
 import { describe, expect, it } from 'vitest';
-import { colourScale } from './colour-scale';
+import { colourScale } from '@riseback/figures';
 import { drawnNetwork } from './drawn-network';
 import { pipeView, type PipeView } from './element-views';
 import { sampleDocument } from './sample-network';

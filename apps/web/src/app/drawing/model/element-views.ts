@@ -2,7 +2,7 @@ import type { NodeResult, PipeResult, SolveWarning, TrapResult, Verdict } from '
 import type { NetworkNode, Position } from '@riseback/network';
 import type { DisplayUnits } from '@riseback/units';
 import { nodeName, pipeName } from './accessible-name';
-import { classOf, type ColourClass, type ColourScale, type Stretch, stretches } from './colour-scale';
+import { classOf, type ColourClass, type ColourScale, type Stretch, stretches } from '@riseback/figures';
 import type { DrawnNetwork, DrawnNode, DrawnPipe } from './drawn-network';
 import { cutLine, lineLength, longestPiece, pointAt, type PointOnLine } from '../../shared/geometry';
 

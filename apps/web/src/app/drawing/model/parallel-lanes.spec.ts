@@ -3,7 +3,7 @@ import { describe, expect, it } from 'vitest';
 import { applyBatch, removalOps } from '@riseback/network';
 import { bendsBeside, drawnNetwork } from './drawn-network';
 import { keepingLanes } from './keep-lanes';
-import { setOff } from './parallel-lanes';
+import { setOff } from '@riseback/figures';
 import { documentOf, samplePipe } from './sample-network';
 
 const at = (x: number, y: number): Position => ({ x, y });

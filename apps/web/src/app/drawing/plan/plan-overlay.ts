@@ -14,7 +14,7 @@ import {
 import type { Position } from '@riseback/network';
 import { formatQuantity } from '@riseback/units';
 import { NetworkStore } from '../../networks/network-store';
-import { GRID } from '../../shared/placement';
+import { GRID } from '@riseback/figures';
 import { DrawingState } from '../drawing-state';
 import { toScreen, toSheet, type Viewport } from '../model/viewport';
 import { scaleBar } from './plan-geometry';

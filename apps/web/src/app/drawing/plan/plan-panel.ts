@@ -15,7 +15,7 @@ import { MatButton } from '@angular/material/button';
 import { PLAN_LIMITS } from '@riseback/contracts';
 import { NetworkStore } from '../../networks/network-store';
 import { TextField } from '../../shared/fields/text-field';
-import { GRID } from '../../shared/placement';
+import { GRID } from '@riseback/figures';
 import { ProblemBanner } from '../../shared/problem-banner/problem-banner';
 import { QuantityField } from '../../shared/quantity-field/quantity-field';
 import { bytesOf, isPdf, PlanFileError, prepareImage, type PreparedImage } from './plan-file';

@@ -1,6 +1,6 @@
 import { ChangeDetectionStrategy, Component, computed, input, model } from '@angular/core';
 import { type DisplayUnits, displayUnit, formatQuantity } from '@riseback/units';
-import { COLOURED_BY, type ColouredBy, type ColourScale } from '../model/colour-scale';
+import { COLOURED_BY, type ColouredBy, type ColourScale } from '@riseback/figures';
 
 const WORDS: Readonly<Record<ColouredBy, string>> = {
   pressure: 'Back pressure',

@@ -1,9 +1,8 @@
 import type { Position } from '@riseback/network';
 import type { Companion } from '../../networks/company';
 import { pointAt } from '../../shared/geometry';
-import type { Box } from '../labels/label-placement';
+import { type Box, linePath } from '@riseback/figures';
 import type { NodeView, PipeView } from '../model/element-views';
-import { linePath } from '../model/line-path';
 import { symbolScale } from '../model/viewport';
 
 /** Round what someone else has selected, on the sheet; each of the others has a shape and a dash of their own. */

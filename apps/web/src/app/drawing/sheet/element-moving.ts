@@ -1,7 +1,7 @@
 import { inject, Injectable } from '@angular/core';
 import type { Position } from '@riseback/network';
 import { distance, middle, pieces } from '../../shared/geometry';
-import { GRID, snapPoint } from '../../shared/placement';
+import { GRID, snapPoint } from '@riseback/figures';
 import { DrawingCommands } from '../drawing-commands';
 import { DrawingScene } from '../drawing-scene';
 import { DrawingState, IDLE, type Mode } from '../drawing-state';

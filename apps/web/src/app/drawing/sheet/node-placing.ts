@@ -3,9 +3,8 @@ import type { NodeKind, Position } from '@riseback/network';
 import { DrawingScene } from '../drawing-scene';
 import { DrawingState, IDLE } from '../drawing-state';
 import { KIND_WORDS } from '../../shared/element-words';
-import { FIELD } from '../model/sheet-zones';
+import { FIELD, GRID, nearestFreePoint, snapPoint } from '@riseback/figures';
 import { placeOf } from '../model/navigation';
-import { GRID, nearestFreePoint, snapPoint } from '../../shared/placement';
 
 /** How far from the focused element a new one is put, before it looks for free room. */
 const BESIDE = 6 * GRID;

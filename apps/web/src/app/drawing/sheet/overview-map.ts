@@ -1,7 +1,7 @@
 import { ChangeDetectionStrategy, Component, computed, input, output } from '@angular/core';
 import type { Position } from '@riseback/network';
 import type { DrawnNetwork } from '../model/drawn-network';
-import { linePath } from '../model/line-path';
+import { linePath } from '@riseback/figures';
 import { type Bounds, mapOf, windowOf } from '../model/overview';
 import type { Viewport } from '../model/viewport';
 

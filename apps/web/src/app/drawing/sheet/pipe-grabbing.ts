@@ -1,7 +1,7 @@
 import { inject, Injectable } from '@angular/core';
 import type { Position } from '@riseback/network';
 import { distanceToPiece, pieces } from '../../shared/geometry';
-import { GRID, snap } from '../../shared/placement';
+import { GRID, snap } from '@riseback/figures';
 import { DrawingScene } from '../drawing-scene';
 import { DrawingState } from '../drawing-state';
 import { shiftGrip } from '../model/displacement';

@@ -4,7 +4,7 @@ import { rightAngled } from '../../shared/geometry';
 import { DrawingScene } from '../drawing-scene';
 import { DrawingState } from '../drawing-state';
 import { leavingAxis } from '../model/drawn-network';
-import { linePath } from '../model/line-path';
+import { linePath } from '@riseback/figures';
 import { toScreen, type Viewport } from '../model/viewport';
 import { NodeSymbol } from '../symbols/node-symbol';
 

@@ -1,12 +1,14 @@
 import { computed, inject, Injectable, linkedSignal, type Signal, signal, untracked } from '@angular/core';
+import { CommentStore } from '../../comments/comment-store';
 import { Company } from '../../networks/company';
 import { NetworkStore } from '../../networks/network-store';
 import { DrawingScene } from '../drawing-scene';
 import { DrawingState } from '../drawing-state';
-import { type Box, placeLabels } from '../labels/label-placement';
+import { type Box, placeLabels } from '@riseback/figures';
 import { labelObstacles, type SheetLabel, sheetLabels } from '../labels/sheet-labels';
 import type { Viewport } from '../model/viewport';
 import { areaOutlines } from './area-outlines';
+import { commentMarks } from './comment-marks';
 import { companyOutlines } from './company-outlines';
 
 interface LabelSubject {
@@ -24,6 +26,7 @@ export class SheetLabelling {
   private readonly state = inject(DrawingState);
   private readonly scene = inject(DrawingScene);
   private readonly others = inject(Company);
+  private readonly comments = inject(CommentStore);
 
   private readonly followed = signal<Signal<Viewport> | null>(null);
   private readonly viewport = computed(() => this.followed()?.() ?? NOWHERE);
@@ -62,9 +65,18 @@ export class SheetLabelling {
       this.zoom(),
     ),
   );
+  /** Where comments are open. */
+  readonly commentMarks = computed(() => {
+    const numbers = this.comments.numbers();
+    const at = [...this.comments.openAt()].map(
+      ([elementId, threads]) => [elementId, threads.map(({ id }) => numbers.get(id) ?? 0)] as const,
+    );
+    return commentMarks(new Map(at), { nodes: this.scene.nodeViews(), pipes: this.scene.pipeViews() }, this.zoom());
+  });
   private readonly obstacles = computed(() => [
     ...labelObstacles(this.scene.nodeViews().values(), this.scene.pipeViews().values(), this.zoom()),
     ...this.company().map(({ tag }) => tag),
+    ...this.commentMarks().map(({ box }) => box),
   ]);
   /** The candidate that each label took, by key. */
   readonly placed = linkedSignal<LabelSubject, ReadonlyMap<string, number>>({

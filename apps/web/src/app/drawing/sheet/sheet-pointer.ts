@@ -1,7 +1,7 @@
 import { inject, Injectable, signal } from '@angular/core';
 import type { Position } from '@riseback/network';
 import { NetworkStore } from '../../networks/network-store';
-import { snapPoint } from '../../shared/placement';
+import { snapPoint } from '@riseback/figures';
 import { DrawingCommands } from '../drawing-commands';
 import { DrawingScene } from '../drawing-scene';
 import { DrawingState } from '../drawing-state';

@@ -1,5 +1,5 @@
 import { ChangeDetectionStrategy, Component, computed, input } from '@angular/core';
-import { FIELD, rowLetter, type Sheet } from '../model/sheet-zones';
+import { FIELD, rowLetter, type Sheet } from '@riseback/figures';
 import type { Viewport } from '../model/viewport';
 
 interface Mark {

@@ -1,6 +1,6 @@
 import { ChangeDetectionStrategy, Component, computed, input } from '@angular/core';
 import type { NodeKind, TrapType } from '@riseback/network';
-import { TRAP_MECHANISMS, UNKNOWN_MECHANISM } from './trap-mechanisms';
+import { TRAP_MECHANISMS, UNKNOWN_MECHANISM } from '@riseback/figures';
 
 /** The symbol of a node in ink on paper, about the origin of an svg group; traps fill a grid of 24, vessels more. */
 @Component({

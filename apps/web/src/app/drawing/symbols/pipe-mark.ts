@@ -4,7 +4,7 @@ import type { Crossing } from '../model/crossings';
 import { shownBends } from '../model/drawn-network';
 import type { PipeView } from '../model/element-views';
 import { cutLine } from '../../shared/geometry';
-import { linePath } from '../model/line-path';
+import { linePath } from '@riseback/figures';
 
 /** Room between a pipe and what frames it, drawing units. */
 const FRAME = 12;

@@ -1,6 +1,6 @@
 import { CONTROL_WORDS, DISCHARGE_WORDS } from '@riseback/contracts';
 import { inOrder, type NetworkNode, setOp, type Trap } from '@riseback/network';
-import { bandNumbers } from '../../results/bands';
+import { bandNumbers } from '@riseback/figures';
 import type { Choice, Column, ListContext } from './column';
 import { choiceColumn, keySet, quantityColumn, resultColumn, textColumn } from './column-kinds';
 import { SERVICE_IN_WORDS } from './sheet-forms';

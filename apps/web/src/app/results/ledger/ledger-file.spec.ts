@@ -1,7 +1,7 @@
 import { describe, expect, it } from 'vitest';
 import { plainName } from '../../shared/save-file';
 import { ledgerRows } from './ledger-file';
-import type { LedgerModel, LedgerRow } from './ledger-model';
+import type { LedgerModel, LedgerRow } from '@riseback/figures';
 
 const row = (no: number, change: Partial<LedgerRow>): LedgerRow => ({
   no,

@@ -1,6 +1,5 @@
 import { saveFile } from '../../shared/save-file';
-import type { LedgerModel } from './ledger-model';
-import { valueOf } from './printed-account';
+import { type LedgerModel, valueOf } from '@riseback/figures';
 
 /** A cell of a spreadsheet: numbers as numbers, so that a column can be added up there. */
 type Cell = string | number | undefined;

@@ -20,12 +20,16 @@ import { ElementIcon } from '../../drawing/symbols/element-icon';
 import { FRICTION_WORDS, STATIC_LIFT_WORDS } from '../../networks/method-words';
 import { BANDS_TO_COME } from '../../shared/bands-to-come';
 import { StatusMark } from '../../shared/status-mark/status-mark';
-import { bandNumbers } from '../bands';
-import type { PressureRamp } from '../pressure-ramp';
-import { boreWords, endWords, trapTypeWords } from './element-text';
-import { gaugesOnWay } from './gauges-on-way';
+import {
+  bandNumbers,
+  type PressureRamp,
+  boreWords,
+  endWords,
+  trapTypeWords,
+  gaugesOnWay,
+  ledgerModel,
+} from '@riseback/figures';
 import { ledgerRows, saveRows } from './ledger-file';
-import { ledgerModel } from './ledger-model';
 import { LedgerTable } from './ledger-table';
 import { LiftProfile } from './lift-profile';
 import type { TrapItem } from './trap-groups';

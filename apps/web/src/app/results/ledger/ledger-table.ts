@@ -1,7 +1,6 @@
 import { ChangeDetectionStrategy, Component, computed, input } from '@angular/core';
-import { broughtForward, sheetBreaks } from './brought-forward';
+import { broughtForward, sheetBreaks, type LedgerModel } from '@riseback/figures';
 import { Term } from '../../shared/term/term';
-import type { LedgerModel } from './ledger-model';
 
 /** Width of a line's small bar, px. */
 const BAR = 84;

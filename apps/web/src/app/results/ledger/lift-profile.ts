@@ -15,11 +15,15 @@ import {
 import type { Band } from '@riseback/contracts';
 import { type DisplayUnits, displayUnit, formatQuantity } from '@riseback/units';
 import type { ProfileBand, ProfilePoint } from '@riseback/solver';
-import type { BackPressureLimit } from '../back-pressure-limit';
-import { bandWords } from '../bands';
-import type { PressureRamp } from '../pressure-ramp';
-import type { GaugeOnWay } from './gauges-on-way';
-import { type BandMark, PROFILE, profileFigure } from './profile-figure';
+import {
+  type BackPressureLimit,
+  bandWords,
+  type PressureRamp,
+  type GaugeOnWay,
+  type BandMark,
+  PROFILE,
+  profileFigure,
+} from '@riseback/figures';
 import { profileRows } from './profile-rows';
 import { svgText } from './svg-text';
 

@@ -1,6 +1,6 @@
 import type { ProfileBand, ProfilePoint } from '@riseback/solver';
 import { type DisplayUnits, formatQuantity } from '@riseback/units';
-import type { GaugeOnWay } from './gauges-on-way';
+import type { GaugeOnWay } from '@riseback/figures';
 
 /** A place of the profile as a line of its table. */
 export interface ProfileRow {

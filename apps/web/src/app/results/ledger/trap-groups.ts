@@ -2,9 +2,8 @@ import type { SolveResult, TrapResult } from '@riseback/contracts';
 import { inOrder, type NetworkDocument, type NetworkNode, type Trap } from '@riseback/network';
 import { type DisplayUnits, formatQuantity } from '@riseback/units';
 import type { Status } from '../../shared/status-mark/status-mark';
-import { type BackPressureLimit, backPressureLimit } from '../back-pressure-limit';
+import { type BackPressureLimit, backPressureLimit, endWords } from '@riseback/figures';
 import { trapVerdicts } from '../verdict';
-import { endWords } from './element-text';
 import { nameOf } from '../../shared/element-words';
 
 export interface TrapItem {

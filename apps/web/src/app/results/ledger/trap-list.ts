@@ -4,7 +4,7 @@ import type { Trap } from '@riseback/network';
 import { type DisplayUnits, displayUnit } from '@riseback/units';
 import { StatusMark } from '../../shared/status-mark/status-mark';
 import { Staff } from '../staff/staff';
-import { endWords } from './element-text';
+import { endWords } from '@riseback/figures';
 import type { GroupedTraps } from './trap-groups';
 import { nameOf } from '../../shared/element-words';
 

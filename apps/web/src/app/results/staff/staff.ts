@@ -2,8 +2,7 @@ import { ChangeDetectionStrategy, Component, computed, inject, input } from '@an
 import type { TrapResult } from '@riseback/contracts';
 import type { DisplayUnits } from '@riseback/units';
 import { BANDS_TO_COME } from '../../shared/bands-to-come';
-import { FLAT, flatStaff } from './flat-staff';
-import { staffModel } from './staff-model';
+import { FLAT, flatStaff, staffModel } from '@riseback/figures';
 import { limitLines, TALL, tallStaff } from './tall-staff';
 
 let staffCount = 0;

@@ -1,9 +1,7 @@
 import type { Band } from '@riseback/contracts';
 import { type DisplayUnits, displayUnit, formatQuantity, fromDisplay, toDisplay } from '@riseback/units';
-import { bandNumbers } from '../bands';
-import { niceTicks } from '../nice-ticks';
+import { bandNumbers, niceTicks, type StaffModel, type StaffPartKind } from '@riseback/figures';
 import { spreadLabels } from './spread-labels';
-import type { StaffModel, StaffPartKind } from './staff-model';
 
 /** The tall staff's own measures, in px at full size. */
 export const TALL = {

@@ -1,6 +1,6 @@
 import { type DisplayUnits, displayUnit, formatQuantity, toDisplay } from '@riseback/units';
 import { line } from 'd3-shape';
-import { niceTicks } from '../nice-ticks';
+import { niceTicks } from '@riseback/figures';
 import type { StallFacts } from './stall-facts';
 
 /** The figure's own measures, px at full size. */

@@ -1,6 +1,6 @@
 import { inOrder, type NetworkDocument } from '@riseback/network';
 import type { ProfilePoint } from '@riseback/solver';
-import { nameOf } from '../../shared/element-words';
+import { nameOf } from './element-words';
 
 /** A gauge whose tap lies on a trap's way, with what is predicted there. SI, absolute pressure. */
 export interface GaugeOnWay {

@@ -11,7 +11,7 @@ import {
 } from '@riseback/units';
 import { boreWords } from './element-text';
 import { printAccount, type PrintedAccount, valueOf } from './printed-account';
-import { nameOf } from '../../shared/element-words';
+import { nameOf } from './element-words';
 
 /** Decimals of the account: a hundredth of a psi or of a kPa is below anything that matters. */
 const DECIMALS = 2;

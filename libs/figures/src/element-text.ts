@@ -1,6 +1,6 @@
 import type { NetworkNode, PipeRun, TrapType } from '@riseback/network';
 import { type DisplayUnits, formatQuantity } from '@riseback/units';
-import { nameOf, TRAP_TYPE_WORDS } from '../../shared/element-words';
+import { nameOf, TRAP_TYPE_WORDS } from './element-words';
 
 export function trapTypeWords(type: TrapType | undefined): string {
   return type === undefined ? 'Trap of no given type' : TRAP_TYPE_WORDS[type];

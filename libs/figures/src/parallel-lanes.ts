@@ -1,6 +1,6 @@
 import type { Position } from '@riseback/network';
-import { pieces } from '../../shared/geometry';
-import { GRID } from '../../shared/placement';
+import { pieces } from './geometry';
+import { GRID } from './placement';
 
 /** Room between two pipes that join the same nodes, drawing units. */
 const LANE = 2 * GRID;

@@ -1,5 +1,5 @@
 import { line } from 'd3-shape';
-import { PAPER_CORE_FROM, type PressureClass, type PressureRamp } from '../pressure-ramp';
+import { PAPER_CORE_FROM, type PressureClass, type PressureRamp } from './pressure-ramp';
 
 /** A stretch of the pressure line in one colour class, and whether its core is the paper's colour. */
 export interface Wash {

@@ -1,7 +1,7 @@
 import type { Band, TrapResult } from '@riseback/contracts';
 import { DEFAULT_LIFT_RULE_PA_M } from '@riseback/network';
 import { type DisplayUnits, formatQuantity, roundCumulatively, toDisplay } from '@riseback/units';
-import { bandsOf, bandWords } from '../bands';
+import { bandsOf, bandWords } from './bands';
 
 export type StaffPartKind = 'receiver' | 'lift' | 'friction' | 'flash';
 

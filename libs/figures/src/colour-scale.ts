@@ -1,6 +1,6 @@
 import type { CaseOutcome, SolveResult } from '@riseback/contracts';
 import { type DisplayUnits, fromDisplay, type QuantityKind, toDisplay } from '@riseback/units';
-import { pressureRamp, pressuresOf } from '../../results/pressure-ramp';
+import { pressureRamp, pressuresOf } from './pressure-ramp';
 
 export const COLOURED_BY = ['pressure', 'flash', 'velocity'] as const;
 /** What the washes show. */
