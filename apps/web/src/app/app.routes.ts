@@ -1,4 +1,5 @@
 import type { Routes } from '@angular/router';
+import { takeToken } from './links/link-token';
 import { signedInGuard } from './session/signed-in-guard';
 
 export const routes: Routes = [
@@ -7,6 +8,25 @@ export const routes: Routes = [
     path: 'sign-in',
     title: 'Sign in · Riseback',
     loadComponent: () => import('./sign-in/sign-in-page').then((m) => m.SignInPage),
+  },
+  {
+    path: 'forgotten-password',
+    title: 'Forgotten password · Riseback',
+    loadComponent: () => import('./password-reset/forgotten-password-page').then((m) => m.ForgottenPasswordPage),
+  },
+  {
+    path: 'password-reset',
+    title: 'New password · Riseback',
+    canActivate: [takeToken],
+    runGuardsAndResolvers: 'always',
+    loadComponent: () => import('./password-reset/password-reset-page').then((m) => m.PasswordResetPage),
+  },
+  {
+    path: 'invitation',
+    title: 'Invitation · Riseback',
+    canActivate: [takeToken],
+    runGuardsAndResolvers: 'always',
+    loadComponent: () => import('./invitation/invitation-page').then((m) => m.InvitationPage),
   },
   {
     path: 'account',
@@ -36,9 +56,30 @@ export const routes: Routes = [
         loadComponent: () => import('./audit/audit-page').then((m) => m.AuditPage),
       },
       {
+        path: ':siteId/people',
+        title: 'People · Riseback',
+        loadComponent: () => import('./people/people-page').then((m) => m.PeoplePage),
+      },
+      {
+        path: ':siteId/mails',
+        title: 'Mails · Riseback',
+        loadComponent: () => import('./mails/mails-page').then((m) => m.MailsPage),
+      },
+      {
         path: ':siteId/library',
         title: 'Trap library · Riseback',
         loadComponent: () => import('./library/library-page').then((m) => m.LibraryPage),
+      },
+      {
+        path: ':siteId/networks/:networkId/frozen/:revisionId',
+        loadComponent: () => import('./revisions/frozen-page').then((m) => m.FrozenPage),
+        children: [
+          { path: '', pathMatch: 'full', redirectTo: 'drawing' },
+          { path: 'drawing', loadComponent: () => import('./drawing/drawing-page').then((m) => m.DrawingPage) },
+          { path: 'lists', loadComponent: () => import('./lists/lists-page').then((m) => m.ListsPage) },
+          { path: 'cases', loadComponent: () => import('./cases/cases-page').then((m) => m.CasesPage) },
+          { path: 'ledger', loadComponent: () => import('./results/ledger-page').then((m) => m.LedgerPage) },
+        ],
       },
       {
         path: ':siteId/networks/:networkId',
@@ -50,6 +91,15 @@ export const routes: Routes = [
           { path: 'cases', loadComponent: () => import('./cases/cases-page').then((m) => m.CasesPage) },
           { path: 'ledger', loadComponent: () => import('./results/ledger-page').then((m) => m.LedgerPage) },
           { path: 'try', loadComponent: () => import('./what-if/what-if-page').then((m) => m.WhatIfPage) },
+          {
+            path: 'revisions',
+            loadComponent: () => import('./revisions/revisions-page').then((m) => m.RevisionsPage),
+          },
+          {
+            path: 'revisions/:revisionId/verification',
+            loadComponent: () => import('./revisions/verification-page').then((m) => m.VerificationPage),
+          },
+          { path: 'report', loadComponent: () => import('./report/report-page').then((m) => m.ReportPage) },
           { path: 'method', loadComponent: () => import('./method/method-page').then((m) => m.MethodPage) },
         ],
       },

@@ -6,12 +6,12 @@ import type {
   CodesState,
   OwnSession,
   PasswordChange,
-  Problem,
   ProfileChange,
 } from '@riseback/contracts';
-import { firstValueFrom, forkJoin, type Observable, switchMap } from 'rxjs';
+import { forkJoin, type Observable, switchMap } from 'rxjs';
 import { SessionStore } from '../session/session-store';
 import { type Load, loads, LOADING } from '../shared/load';
+import { type Outcome, outcomeOf } from '../shared/outcome';
 import { toProblem } from '../shared/problem';
 import { AccountApi } from './account-api';
 
@@ -19,9 +19,6 @@ export interface Account {
   readonly sessions: readonly OwnSession[];
   readonly codes: CodesState;
 }
-
-/** What came of a command: its value, or why it was refused. */
-export type Outcome<T> = { readonly value: T } | { readonly problem: Problem };
 
 /** One's own account, and what one may do to it. Every command answers with what came of it and brings the page up to date. */
 @Injectable()
@@ -91,18 +88,8 @@ export class AccountStore {
   }
 
   private async run<T>(command: Observable<T>): Promise<Outcome<T>> {
-    try {
-      const value = await firstValueFrom(command);
-      this.reload();
-      return { value };
-    } catch (error) {
-      return { problem: toProblem(error) };
-    }
+    const outcome = await outcomeOf(command);
+    if ('value' in outcome) this.reload();
+    return outcome;
   }
-}
-
-/** What is wrong with one field of a refused command, and what is wrong with none in particular. */
-export function refusalsOf(problem: Problem): { readonly fields: ReadonlyMap<string, string>; readonly rest: string } {
-  const fields = new Map((problem.errors ?? []).map(({ pointer, detail }) => [pointer, detail]));
-  return { fields, rest: fields.size > 0 ? '' : (problem.detail ?? problem.title) };
 }

@@ -12,8 +12,9 @@ import {
 import { NonNullableFormBuilder, ReactiveFormsModule } from '@angular/forms';
 import { MatButton } from '@angular/material/button';
 import type { CodesBegun, CodesProof } from '@riseback/contracts';
+import { type Outcome, refusalsOf } from '../shared/outcome';
 import { StatusMark } from '../shared/status-mark/status-mark';
-import { AccountStore, type Outcome, refusalsOf } from './account-store';
+import { AccountStore } from './account-store';
 import { CodeField } from './code-field';
 import { PasswordField } from './password-field';
 import { QrPicture } from './qr-picture';

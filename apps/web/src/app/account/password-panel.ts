@@ -3,12 +3,13 @@ import { toSignal } from '@angular/core/rxjs-interop';
 import { NonNullableFormBuilder, ReactiveFormsModule } from '@angular/forms';
 import { MatButton } from '@angular/material/button';
 import { passwordMistake, personalWords } from '@riseback/contracts';
+import { refusalsOf } from '../shared/outcome';
 import { StatusMark } from '../shared/status-mark/status-mark';
-import { AccountStore, refusalsOf } from './account-store';
+import { AccountStore } from './account-store';
+import { passwordAdvice } from './password-advice';
 import { PasswordField } from './password-field';
 
 const NO_REFUSALS: ReadonlyMap<string, string> = new Map();
-const WHAT_DOES = '12 characters or more. A few words do well; spaces and letters of every script count.';
 
 @Component({
   selector: 'app-password-panel',
@@ -70,12 +71,11 @@ export class PasswordPanel {
   protected readonly done = signal(false);
   protected readonly complaint = signal('');
   protected readonly refusals = signal(NO_REFUSALS);
-  private readonly mistake = computed(() => {
+  private readonly personal = computed(() => {
     const person = this.store.person();
-    return passwordMistake(this.typed(), person === null ? [] : personalWords(person));
+    return person === null ? [] : personalWords(person);
   });
-  /** While it is typed, in the voice of a hint: a password is always too short at first. */
-  protected readonly hint = computed(() => (this.typed() === '' ? WHAT_DOES : (this.mistake() ?? 'This will do.')));
+  protected readonly hint = computed(() => passwordAdvice(this.typed(), this.personal()));
 
   constructor() {
     // what was refused is no longer what stands there
@@ -88,7 +88,7 @@ export class PasswordPanel {
     this.complaint.set('');
     if (change.presentPassword === '')
       return this.refuse(new Map([['/presentPassword', 'Give your present password.']]));
-    const mistake = this.mistake();
+    const mistake = passwordMistake(change.newPassword, this.personal());
     if (mistake !== undefined) return this.refuse(new Map([['/newPassword', mistake]]));
     this.busy.set(true);
     const outcome = await this.store.changePassword(change);

@@ -2,7 +2,8 @@ import { ChangeDetectionStrategy, Component, computed, inject, signal } from '@a
 import { type Person, type ProfileChange, THEMES, UNIT_SYSTEMS } from '@riseback/contracts';
 import { ChoiceField } from '../shared/fields/choice-field';
 import { TextField } from '../shared/fields/text-field';
-import { AccountStore, refusalsOf } from './account-store';
+import { refusalsOf } from '../shared/outcome';
+import { AccountStore } from './account-store';
 import { clockWords, deviceTimeZone, timeZoneChoices } from './time-words';
 
 const UNIT_WORDS: Readonly<Record<Person['units'], string>> = {

@@ -15,7 +15,8 @@ export class AuditStore {
   readonly filter = signal<AuditFilter>({});
   /** Pages below the first, which a new filter drops. */
   private readonly older = signal<readonly AuditPage[]>([]);
-  private readonly query = computed(() => ({ siteId: this.siteId(), filter: this.filter() }));
+  private readonly asked = signal(0);
+  private readonly query = computed(() => ({ siteId: this.siteId(), filter: this.filter(), asked: this.asked() }));
 
   readonly loadingOlder = signal(false);
   readonly problem = signal<Problem | null>(null);
@@ -42,6 +43,10 @@ export class AuditStore {
 
   change(change: AuditFilter): void {
     this.filter.update((before) => ({ ...before, ...change }));
+  }
+
+  ask(): void {
+    this.asked.update((count) => count + 1);
   }
 
   async loadOlder(): Promise<void> {

@@ -1,7 +1,7 @@
 import { signal } from '@angular/core';
 import { TestBed } from '@angular/core/testing';
 import { emptyDocument } from '@riseback/network';
-import { beforeEach, describe, expect, it, vi } from 'vitest';
+import { afterEach, beforeEach, describe, expect, it, vi } from 'vitest';
 import { SessionStore } from '../session/session-store';
 import { DraftKeeper } from './draft-keeper';
 import { type Draft, type DraftKey, Drafts } from './drafts';
@@ -52,6 +52,10 @@ describe('DraftKeeper', () => {
     keeper = TestBed.inject(DraftKeeper);
     keeper.open('n1');
     await vi.waitFor(() => expect(keeper.offered()).toHaveLength(1));
+  });
+
+  afterEach(() => {
+    vi.unstubAllGlobals();
   });
 
   const offer = () => {

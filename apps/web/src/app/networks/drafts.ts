@@ -55,6 +55,16 @@ export class Drafts {
       .sort((a, b) => a.draft.at - b.draft.at);
   }
 
+  /** On how many networks a person's work lies on this device. */
+  async networksOf(personId: string): Promise<number> {
+    const keys = await (await this.database()).getAllKeys('drafts', rangeOf(personId));
+    return new Set(keys.map(([, networkId]) => networkId)).size;
+  }
+
+  async removeAllOf(personId: string): Promise<void> {
+    await (await this.database()).delete('drafts', rangeOf(personId));
+  }
+
   private database(): Promise<IDBPDatabase<DraftDb>> {
     this.opened ??= openDB<DraftDb>(NAME, 1, {
       upgrade: (database) => {
@@ -63,6 +73,11 @@ export class Drafts {
     });
     return this.opened;
   }
+}
+
+/** All networks and tabs: an array sorts behind every text. */
+function rangeOf(personId: string): IDBKeyRange {
+  return IDBKeyRange.bound([personId], [personId, []]);
 }
 
 /** Holds the lock that says that this tab lives; the browser lets go of it when the tab ends, however it ends. */

@@ -74,7 +74,7 @@ export class NetworkListPage {
   });
   protected readonly mayDraw = computed(() => this.site()?.permissions.includes('draw') ?? false);
 
-  protected readonly mayReadLog = computed(() => this.site()?.permissions.includes('people') ?? false);
+  protected readonly administers = computed(() => this.site()?.permissions.includes('people') ?? false);
 
   protected ask(): void {
     this.asked.update((count) => count + 1);

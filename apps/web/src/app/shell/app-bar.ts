@@ -1,12 +1,13 @@
 import { ChangeDetectionStrategy, Component, computed, inject, input } from '@angular/core';
 import { MatMenu, MatMenuItem, MatMenuTrigger } from '@angular/material/menu';
-import { Router, RouterLink } from '@angular/router';
+import { RouterLink } from '@angular/router';
 import type { ProfileChange, Role } from '@riseback/contracts';
 import { Guide } from '../guide/guide';
 import { SessionStore } from '../session/session-store';
 import { GeneralKeyList } from './keys/general-key-list';
 import { KeyHelp } from './keys/key-help';
 import { RisebackMark } from './riseback-mark';
+import { SignOut } from './sign-out';
 import { WordList } from './word-list';
 
 /** Row 1 of every page: the mark, the page's own links (projected), the role, the help and the person's menu. */
@@ -19,7 +20,7 @@ import { WordList } from './word-list';
 })
 export class AppBar {
   private readonly session = inject(SessionStore);
-  private readonly router = inject(Router);
+  private readonly leaving = inject(SignOut);
   protected readonly guide = inject(Guide);
   protected readonly keyHelp = inject(KeyHelp);
 
@@ -47,9 +48,8 @@ export class AppBar {
     void this.session.changeProfile(change);
   }
 
-  protected async signOut(): Promise<void> {
-    await this.session.signOut();
-    await this.router.navigateByUrl('/sign-in');
+  protected signOut(): void {
+    void this.leaving.begin();
   }
 }
 

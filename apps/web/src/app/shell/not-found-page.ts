@@ -1,10 +1,11 @@
 import { ChangeDetectionStrategy, Component } from '@angular/core';
 import { RouterLink } from '@angular/router';
+import { LiftPicture } from '../sign-in/lift-picture';
 import { RisebackMark } from './riseback-mark';
 
 @Component({
   selector: 'app-not-found-page',
-  imports: [RouterLink, RisebackMark],
+  imports: [LiftPicture, RouterLink, RisebackMark],
   changeDetection: ChangeDetectionStrategy.OnPush,
   template: `
     <main>
@@ -13,14 +14,8 @@ import { RisebackMark } from './riseback-mark';
       <p>It may have been mistyped, or you may have no role where it leads.</p>
       <p><a routerLink="/sites">To your sites</a></p>
     </main>
+    <app-lift-picture />
   `,
-  styles: `
-    main {
-      display: grid;
-      gap: 12px;
-      max-width: 480px;
-      padding: 48px 24px;
-    }
-  `,
+  styleUrl: './entry-page.scss',
 })
 export class NotFoundPage {}

@@ -1,12 +1,13 @@
 import { ChangeDetectionStrategy, Component, inject, input } from '@angular/core';
 import { MatButton } from '@angular/material/button';
 import { Router } from '@angular/router';
+import { LiftPicture } from '../sign-in/lift-picture';
 import { RisebackMark } from './riseback-mark';
 
 /** Stands at the address that was asked for while the server cannot say who is asking. */
 @Component({
   selector: 'app-unreachable-page',
-  imports: [MatButton, RisebackMark],
+  imports: [LiftPicture, MatButton, RisebackMark],
   changeDetection: ChangeDetectionStrategy.OnPush,
   template: `
     <main>
@@ -15,15 +16,9 @@ import { RisebackMark } from './riseback-mark';
       <p>Nothing is lost: edits that were not saved are kept on this device. Check the network, then try again.</p>
       <p><button matButton="filled" type="button" (click)="tryAgain()">Try again</button></p>
     </main>
+    <app-lift-picture />
   `,
-  styles: `
-    main {
-      display: grid;
-      gap: 12px;
-      max-width: 480px;
-      padding: 48px 24px;
-    }
-  `,
+  styleUrl: './entry-page.scss',
 })
 export class UnreachablePage {
   private readonly router = inject(Router);

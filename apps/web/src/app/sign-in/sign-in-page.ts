@@ -11,7 +11,7 @@ import {
 } from '@angular/core';
 import { NonNullableFormBuilder, ReactiveFormsModule, Validators } from '@angular/forms';
 import { MatButton } from '@angular/material/button';
-import { Router } from '@angular/router';
+import { Router, RouterLink } from '@angular/router';
 import type { Problem } from '@riseback/contracts';
 import { SessionStore } from '../session/session-store';
 import { toProblem } from '../shared/problem';
@@ -21,10 +21,10 @@ import { LiftPicture } from './lift-picture';
 
 @Component({
   selector: 'app-sign-in-page',
-  imports: [LiftPicture, MatButton, ReactiveFormsModule, RisebackMark, StatusMark],
+  imports: [LiftPicture, MatButton, ReactiveFormsModule, RisebackMark, RouterLink, StatusMark],
   changeDetection: ChangeDetectionStrategy.OnPush,
   templateUrl: './sign-in-page.html',
-  styleUrl: './sign-in-page.scss',
+  styleUrls: ['../shell/entry-page.scss', './sign-in-page.scss'],
 })
 export class SignInPage {
   private readonly session = inject(SessionStore);
