@@ -10,18 +10,18 @@ import { AuditService } from './audit/audit-service';
 import { LibraryRepository } from './library/library-repository';
 import { libraryRoutes } from './library/library-routes';
 import { LibraryService } from './library/library-service';
+import { mailRoutes } from './mail/mail-routes';
+import { MailService } from './mail/mail-service';
 import { Outbox } from './mail/outbox';
 import { OutboxRepository } from './mail/outbox-repository';
+import type { ReceivedMails } from './mail/sink/received-mails';
 import { NetworkRepository } from './networks/network-repository';
 import { networkRoutes } from './networks/network-routes';
 import { NetworkService } from './networks/network-service';
-import { accountRoutes } from './people/account-routes';
 import { IdentityCheck } from './people/identity-check';
-import { OwnAccountService } from './people/own-account-service';
-import { OwnSecurityService } from './people/own-security-service';
+import type { OneTimeLinks } from './people/one-time-links';
+import { buildPeopleArea } from './people/people-area';
 import { PeopleRepository } from './people/people-repository';
-import { securityRoutes } from './people/security-routes';
-import { SignInService } from './people/sign-in-service';
 import { AccessRules, type NetworkAccess } from './platform/auth/access';
 import { MembershipRepository } from './platform/auth/membership-repository';
 import { OneTimeCodes } from './platform/auth/one-time-codes';
@@ -60,10 +60,7 @@ import { ReportService } from './reports/report-service';
 import { ReportSources } from './reports/report-sources';
 import { ReportStreams } from './reports/report-streams';
 import type { ReportPort } from './reports/report-threads';
-import { RevisionMails } from './revisions/revision-mails';
-import { RevisionRepository } from './revisions/revision-repository';
-import { revisionRoutes } from './revisions/revision-routes';
-import { RevisionService } from './revisions/revision-service';
+import { buildRevisionArea, type SignatureKeys } from './revisions/revision-area';
 import { SiteRepository } from './sites/site-repository';
 import { siteRoutes } from './sites/site-routes';
 import { SiteService } from './sites/site-service';
@@ -83,8 +80,12 @@ export interface AppParts {
   readonly now: () => Date;
   readonly solver: SolvePort & FileSolver;
   readonly reportPort: ReportPort;
+  /** Absent = signatures are made with a key of this process alone. */
+  readonly keys?: SignatureKeys;
   /** Absent = passwords are hashed in this thread. */
   readonly hasher?: Hasher;
+  /** Where mails are kept in the place of being sent. */
+  readonly receivedMails?: ReceivedMails | undefined;
   /** The browser build; undefined while developing, when the pages come from their own server. */
   readonly webFolder: string | undefined;
   /** Sees every request first; counts, for one. */
@@ -101,6 +102,8 @@ export interface App {
   readonly networks: NetworkService;
   /** Makes the reports that were ordered, also those that an earlier server left behind. */
   readonly reports: Pick<ReportRunner, 'takeUp' | 'close'>;
+  /** For what sends the mails. */
+  readonly post: { readonly outbox: Outbox; readonly repository: OutboxRepository; readonly links: OneTimeLinks };
   /** Ends the open streams, which would otherwise keep a stopping server waiting. */
   readonly endStreams: () => void;
 }
@@ -115,10 +118,7 @@ export function buildApp(parts: AppParts): App {
   const passwords = new Passwords(parts.hasher);
   const guard = new SignInGuard(now);
   const codes = new OneTimeCodes(new OneTimeRepository(db), new SecretSeal(config.sessionSecret), guard, now);
-  const signIn = new SignInService(people, passwords, codes, guard, sessions, now);
-  const account = new OwnAccountService(people, sessions, now);
   const identity = new IdentityCheck(people, passwords, codes, guard, now);
-  const security = new OwnSecurityService(people, passwords, codes, identity, sessions, now);
   const auditLog = new AuditService(new AuditRepository(db));
   const sites = new SiteService(new SiteRepository(db));
   const library = new LibraryService(new LibraryRepository(db), newId, now);
@@ -138,14 +138,14 @@ export function buildApp(parts: AppParts): App {
     report,
   });
   const networks = new NetworkService(new NetworkRepository(db), live, streams, newId, now);
-  const outbox = new Outbox(new OutboxRepository(db), newId, now);
-  const plans = new PlanService(new PlanRepository(db), streams, newId, now);
-  const revisionMails = new RevisionMails(outbox);
-  const revisions = new RevisionService(new RevisionRepository(db), networks, live, revisionMails, streams, {
-    engineVersion: ENGINE_VERSION,
-    newId,
-    now,
+  const mails = new OutboxRepository(db);
+  const outbox = new Outbox(mails, newId, now);
+  const peopleArea = buildPeopleArea({
+    ...{ db, people, passwords, codes, guard, identity, sessions, gate, newId, now },
+    secret: config.sessionSecret,
+    mails: outbox,
   });
+  const plans = new PlanService(new PlanRepository(db), streams, newId, now);
   const events = new EventService(
     {
       headOf: (access) => networks.headOf(access),
@@ -172,20 +172,27 @@ export function buildApp(parts: AppParts): App {
     networkName: (networkId) => networkRows.head(networkId)?.name,
   });
   const results = new ResultService(networks, live, solver, { engineVersion: ENGINE_VERSION, newId });
+  const revisionArea = buildRevisionArea({
+    ...{ db, networks, live, solver, people, identity, codes, newId, now },
+    keys: parts.keys,
+    engineVersion: ENGINE_VERSION,
+    mailQueue: outbox,
+    listener: streams,
+  });
   const readiness = new ReadinessCheck(db, new SolverProbe(() => solvesOnePipe(solver), now));
 
   const routes: readonly Route[] = [
     ...healthRoutes(readiness),
     openApiRoute(() => routes),
-    ...accountRoutes(signIn, account, gate),
-    ...securityRoutes(security, gate),
+    ...peopleArea.routes,
+    ...mailRoutes(new MailService(mails, parts.receivedMails)),
     ...siteRoutes(sites),
     ...auditRoutes(auditLog),
     ...libraryRoutes(library),
     ...networkRoutes(networks),
     ...planRoutes(plans),
     ...solveRoutes(results),
-    ...revisionRoutes(revisions),
+    ...revisionArea,
     ...eventRoutes(events),
     ...reportRoutes(reports),
   ];
@@ -217,5 +224,6 @@ export function buildApp(parts: AppParts): App {
     streams.close();
     watching.close();
   };
-  return { handler: app, routes, networks, reports: runner, endStreams };
+  const post = { outbox, repository: mails, links: peopleArea.links };
+  return { handler: app, routes, networks, reports: runner, post, endStreams };
 }

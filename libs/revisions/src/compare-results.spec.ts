@@ -1,3 +1,4 @@
+import type { Verdict } from '@riseback/contracts';
 import { describe, expect, it } from 'vitest';
 import {
   byEffect,
@@ -8,9 +9,8 @@ import {
   hasMoved,
   MOVED_PA,
 } from './compare-results';
-import type { ComparedVerdict } from './compare-verdicts';
 
-type Trap = readonly [id: string, backPressurePa: number, verdict?: ComparedVerdict];
+type Trap = readonly [id: string, backPressurePa: number, verdict?: Verdict];
 type Finding = readonly [element: string, code: string, verdict: 'watch' | 'fail'];
 
 function result(traps: readonly Trap[], findings: readonly Finding[] = []): ComparedResult {

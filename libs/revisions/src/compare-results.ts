@@ -1,5 +1,5 @@
+import { badness, type CaseWeight, isWorse, type JudgedResult, trapVerdicts, type Verdict } from '@riseback/contracts';
 import { compareIds } from '@riseback/network';
-import { badness, type ComparedVerdict, isWorse, type JudgedResult, trapVerdicts } from './compare-verdicts';
 
 /** What a comparison reads of a result: the solver's own, or one that crossed the wire. Pressures are absolute, Pa. */
 export interface ComparedResult {
@@ -24,7 +24,7 @@ export interface TrapState {
   readonly backPressurePa: number;
   readonly differentialPa: number;
   /** Null where nothing was judged. */
-  readonly verdict: ComparedVerdict | null;
+  readonly verdict: Verdict | null;
 }
 
 export interface TrapComparison {
@@ -41,8 +41,8 @@ export interface TrapComparison {
 export interface FindingComparison {
   readonly element: string;
   readonly code: string;
-  readonly from: ComparedVerdict;
-  readonly to: ComparedVerdict;
+  readonly from: Verdict;
+  readonly to: Verdict;
 }
 
 export interface ResultEffects {
@@ -105,6 +105,12 @@ export function byEffect(a: TrapComparison, b: TrapComparison): number {
   return stepOf(b) - stepOf(a) || moveOf(b) - moveOf(a);
 }
 
+/** What fails in one of the two first; 0 where both count alike. */
+export function byGravity(a: FindingComparison, b: FindingComparison): number {
+  const gravest = ({ from, to }: FindingComparison) => Math.max(badness(from), badness(to));
+  return gravest(b) - gravest(a);
+}
+
 /** Whether there is something to see: a verdict turned, a pressure moved by `MOVED_PA`, a result where the other has none. */
 export function hasMoved({ before, after, changePa }: TrapComparison): boolean {
   if (before === undefined || after === undefined) return before !== after;
@@ -130,7 +136,7 @@ function compareSolved(before: readonly ComparedOutcome[], after: readonly Compa
   };
 }
 
-function turnOf(from: ComparedVerdict | null, to: ComparedVerdict | null): TrapComparison['turned'] {
+function turnOf(from: Verdict | null, to: Verdict | null): TrapComparison['turned'] {
   if (from === to) return 'same';
   if (from === null || to === null) return 'apart';
   return badness(to) > badness(from) ? 'worse' : 'better';
@@ -159,7 +165,7 @@ function worstStates(outcomes: readonly ComparedOutcome[]): Map<string, TrapStat
   return worst;
 }
 
-function weightOf({ verdict, backPressurePa }: TrapState): { badness: number; pressurePa: number } {
+function weightOf({ verdict, backPressurePa }: TrapState): CaseWeight {
   return { badness: badness(verdict), pressurePa: backPressurePa };
 }
 
@@ -172,15 +178,12 @@ function compareFindings(
   const found = [...new Set([...later.keys(), ...earlier.keys()])].flatMap((key): FindingComparison[] => {
     const [was, is] = [earlier.get(key), later.get(key)];
     const finding = is ?? was;
-    const from: ComparedVerdict = was?.verdict ?? 'pass';
-    const to: ComparedVerdict = is?.verdict ?? 'pass';
+    const from: Verdict = was?.verdict ?? 'pass';
+    const to: Verdict = is?.verdict ?? 'pass';
     if (finding === undefined || traps.has(finding.element) || from === to) return [];
     return [{ element: finding.element, code: finding.code, from, to }];
   });
-  const gravest = ({ from, to }: FindingComparison) => Math.max(badness(from), badness(to));
-  return found.sort(
-    (a, b) => gravest(b) - gravest(a) || compareIds(a.element, b.element) || compareIds(a.code, b.code),
-  );
+  return found.sort((a, b) => byGravity(a, b) || compareIds(a.element, b.element) || compareIds(a.code, b.code));
 }
 
 /** By element and code, the worst of each. */

@@ -1,6 +1,5 @@
 export * from './compare-networks';
 export * from './compare-results';
-export * from './compare-verdicts';
 export * from './next-letter';
 export * from './revision-deeds';
 export * from './revision-state';

@@ -17,6 +17,8 @@ export interface RevisionFacts {
   readonly editedBy: readonly string[];
   /** The letter of a later revision that is approved. */
   readonly laterApproved: string | undefined;
+  /** The engine that computed its results, and the present one: results of an older engine are stale. */
+  readonly engine: { readonly frozen: string; readonly present: string };
 }
 
 export interface Doer {
@@ -72,6 +74,13 @@ function allowanceOf(deed: RevisionDeed, revision: RevisionFacts, doer: Doer): A
   if (own !== undefined) return refused('person', `${own} Another reviewer has to ${deed} it.`);
   if (deed === 'sign' && revision.laterApproved !== undefined) {
     return refused('state', `Revision ${revision.laterApproved}, which is later, is approved already.`);
+  }
+  const { frozen, present } = revision.engine;
+  if (deed === 'sign' && frozen !== present) {
+    return refused(
+      'state',
+      `Its results are stale: engine ${frozen} computed them, and the present one is ${present}. Freeze that version anew.`,
+    );
   }
   return ALLOWED;
 }

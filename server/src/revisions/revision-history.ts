@@ -10,7 +10,7 @@ export interface RevisionWithHistory {
 }
 
 /** A revision with what became of it, and what the rules ask of both. */
-export function historyOf(revisions: RevisionRepository, row: RevisionRow): RevisionWithHistory {
+export function historyOf(revisions: RevisionRepository, row: RevisionRow, presentEngine: string): RevisionWithHistory {
   const byRevision = revisions.eventsOfNetwork(row.networkId);
   const others = revisions.list(row.networkId).filter(({ id }) => id !== row.id);
   const events = byRevision.get(row.id) ?? [];
@@ -30,6 +30,7 @@ export function historyOf(revisions: RevisionRepository, row: RevisionRow): Revi
       submittedBy: events.find(({ state }) => state === 'underReview')?.personId,
       editedBy: editedBy.map(({ personId }) => personId),
       laterApproved: later.at(-1)?.letter,
+      engine: { frozen: row.engineVersion, present: presentEngine },
     },
   };
 }

@@ -149,7 +149,7 @@ export class RevisionService {
   find(revisions: RevisionRepository, access: NetworkAccess, id: string): RevisionWithHistory {
     const row = revisions.find(id);
     if (row?.networkId !== access.networkId) throw notFound('The network has no such revision.');
-    return historyOf(revisions, row);
+    return historyOf(revisions, row, this.options.engineVersion);
   }
 
   /** The frozen file, its cases in their order. @throws ProblemError 422 when it was changed since and cannot be read */
@@ -189,7 +189,7 @@ export class RevisionService {
       const revision = this.find(revisions, access, id);
       demandDeed(revision, access, deed);
       recordMove(revisions, revision, deed, note, this.by(access));
-      tell(tx, revisions, historyOf(revisions, revision.row));
+      tell(tx, revisions, this.find(revisions, access, id));
     });
     this.listener.revisionsChanged(access.networkId, id);
     return this.get(access, id);

@@ -1,0 +1,63 @@
+import type { MailQueue } from '../mail/mail-queue';
+import type { NetworkService } from '../networks/network-service';
+import type { IdentityCheck } from '../people/identity-check';
+import type { PeopleRepository } from '../people/people-repository';
+import type { OneTimeCodes } from '../platform/auth/one-time-codes';
+import { auditHeadLogOf, readAuditHeads } from '../platform/db/audit-head-log';
+import type { Database } from '../platform/db/database';
+import type { Route } from '../platform/routes/route-table';
+import type { LiveSolves } from '../solve/live-solves';
+import type { SolvePort } from '../solve/solve-port';
+import { RevisionMails } from './revision-mails';
+import { RevisionRepository } from './revision-repository';
+import { revisionRoutes } from './revision-routes';
+import { RevisionService, type RevisionListener } from './revision-service';
+import { SigningKey } from './signing-key';
+import { signingRoutes } from './signing-routes';
+import { SigningService } from './signing-service';
+import { VerificationService } from './verification-service';
+import { VerifyingKeys } from './verifying-keys';
+
+/** What signatures are made with, and what with they are verified. */
+export interface SignatureKeys {
+  readonly signingKey: SigningKey;
+  readonly verifyingKeys: VerifyingKeys;
+}
+
+export interface RevisionAreaParts {
+  readonly db: Database;
+  /** Absent = one for as long as the process lives, as the database in memory that it signs in. */
+  readonly keys: SignatureKeys | undefined;
+  readonly networks: NetworkService;
+  readonly live: LiveSolves;
+  readonly solver: SolvePort;
+  readonly engineVersion: string;
+  readonly people: PeopleRepository;
+  readonly identity: IdentityCheck;
+  readonly codes: OneTimeCodes;
+  readonly mailQueue: MailQueue;
+  readonly listener: RevisionListener;
+  readonly newId: () => string;
+  readonly now: () => Date;
+}
+
+/** Builds all of revisions by hand, as app.ts does for the rest. */
+export function buildRevisionArea(parts: RevisionAreaParts): Route[] {
+  const { db, networks, live, solver, engineVersion, people, identity, codes, listener, newId, now } = parts;
+  const { signingKey, verifyingKeys } = parts.keys ?? passingKeys();
+  const revisions = new RevisionRepository(db);
+  const mails = new RevisionMails(parts.mailQueue);
+  const service = new RevisionService(revisions, networks, live, mails, listener, { engineVersion, newId, now });
+  const signing = new SigningService({
+    ...{ revisions, service, people, identity, codes, mails, listener, now },
+    key: signingKey,
+  });
+  const heads = () => (db.$client.memory ? [] : readAuditHeads(auditHeadLogOf(db.$client.name)));
+  const verification = new VerificationService(revisions, { db, keys: verifyingKeys, heads, solver, engineVersion });
+  return [...revisionRoutes(service), ...signingRoutes(signing, verification, verifyingKeys)];
+}
+
+function passingKeys(): SignatureKeys {
+  const signingKey = SigningKey.generate();
+  return { signingKey, verifyingKeys: new VerifyingKeys([signingKey.publicKey]) };
+}
