@@ -13,9 +13,7 @@ export interface PostParts {
   readonly config: Config;
   /** Where people open the application, which links in mails lead to. */
   readonly address: string;
-  readonly outbox: Outbox;
-  readonly repository: OutboxRepository;
-  readonly links: LinkTokens;
+  readonly post: { readonly outbox: Outbox; readonly repository: OutboxRepository; readonly links: LinkTokens };
   /** For the sink, where there is one. */
   readonly received: ReceivedMails | undefined;
   readonly now: () => Date;
@@ -32,7 +30,8 @@ export interface Post {
  * sink. In production without a mail server nothing is sent, and mails wait.
  */
 export async function openPost(parts: PostParts): Promise<Post> {
-  const { config, outbox, repository, links, received, now, log, ended } = parts;
+  const { config, received, now, log, ended } = parts;
+  const { outbox, repository, links } = parts.post;
   const report = (error: unknown) => log.error({ err: error }, 'mail');
   const sink =
     config.mail.kind === 'sink' && received !== undefined ? await openMailSink(received, now, report) : undefined;

@@ -11,11 +11,12 @@ export function accountRoutes(signIn: SignInService, account: OwnAccountService,
     publicRoute({
       method: 'post',
       path: '/api/session',
-      summary: 'Sign in, with a one-time or recovery code where codes are on. Sets the session cookie and XSRF-TOKEN.',
+      summary:
+        'Sign in, with a one-time or recovery code where codes are on. Sets the session cookie and XSRF-TOKEN; a session that the browser held until then ends.',
       body: SignIn,
       answers: { 200: Session },
       handler: async ({ body, req, res }) => {
-        const { person, issued } = await signIn.signIn(body, originOf(req));
+        const { person, issued } = await signIn.signIn(body, originOf(req), gate.identify(req, res));
         gate.give(res, issued);
         res.json({ person } satisfies Session);
       },

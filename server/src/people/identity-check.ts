@@ -61,7 +61,7 @@ export class IdentityCheck {
   private note({ person }: PersonAccess, why: string, address: string): void {
     const { id, sessionId } = person;
     const details = { why, address };
-    this.people.noteRefusal({
+    this.people.note({
       at: this.now(),
       personId: id,
       sessionId,

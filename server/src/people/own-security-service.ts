@@ -7,7 +7,8 @@ import type { Sessions } from '../platform/auth/sessions';
 import { badRequest, conflict, unprocessable, WRONG_CODE } from '../platform/problem';
 import type { IdentityCheck } from './identity-check';
 import type { PeopleRepository } from './people-repository';
-import type { SignedIn, SignInOrigin } from './sign-in-service';
+import type { SignInOrigin } from './credential-check';
+import type { SignedIn } from './sign-in-service';
 
 const CHANGED_MEANWHILE = 'Your password was changed from elsewhere meanwhile. Sign in with the new one.';
 const CODES_ARE_ON = 'One-time codes are on already. Turn them off first to begin anew.';

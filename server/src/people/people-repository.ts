@@ -2,7 +2,7 @@ import type { DeclinableMail, Person, Role } from '@riseback/contracts';
 import { and, asc, eq, sql } from 'drizzle-orm';
 import { endAllSessions } from '../platform/auth/session-repository';
 import { appendAudit, type AuditEntry } from '../platform/db/audit';
-import type { Database } from '../platform/db/database';
+import type { Database, Queries } from '../platform/db/database';
 import { declinedMails, memberships, people } from '../platform/db/schema';
 
 export type PersonRow = typeof people.$inferSelect;
@@ -12,8 +12,8 @@ export class PeopleRepository {
   constructor(private readonly db: Database) {}
 
   /** All that `work` writes, also through other repositories on this connection, or none of it. */
-  inOneTransaction<T>(work: () => T): T {
-    return this.db.transaction(() => work(), { behavior: 'immediate' });
+  inOneTransaction<T>(work: (tx: Queries) => T): T {
+    return this.db.transaction((tx) => work(tx), { behavior: 'immediate' });
   }
 
   find(id: string): PersonRow | undefined {
@@ -91,9 +91,21 @@ export class PeopleRepository {
     });
   }
 
-  /** For the log alone: nothing else of a refused attempt is kept. */
-  noteRefusal(audit: AuditEntry): void {
+  enable(id: string, audit: AuditEntry): void {
+    this.db.transaction((tx) => {
+      tx.update(people).set({ disabledAt: null }).where(eq(people.id, id)).run();
+      appendAudit(tx, audit);
+    });
+  }
+
+  /** For the log alone, such as of a refused attempt, of which nothing else is kept. */
+  note(audit: AuditEntry): void {
     this.db.transaction((tx) => appendAudit(tx, audit));
+  }
+
+  /** For when what a person signs in with was changed by somebody else. */
+  endSessions(id: string, at: Date): void {
+    this.db.transaction((tx) => endAllSessions(tx, id, at.toISOString(), 'passwordChanged'));
   }
 
   /** Gives a role at a site, or changes it; a changed one ends the person's sessions. */

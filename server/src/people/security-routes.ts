@@ -12,7 +12,7 @@ import type { Request } from 'express';
 import type { SessionGate } from '../platform/auth/session-gate';
 import { signedInRoute, type Route } from '../platform/routes/route-table';
 import type { OwnSecurityService } from './own-security-service';
-import type { SignInOrigin } from './sign-in-service';
+import type { SignInOrigin } from './credential-check';
 
 export function originOf(req: Request): SignInOrigin {
   return { address: req.ip ?? '', agent: req.get('user-agent') ?? '' };

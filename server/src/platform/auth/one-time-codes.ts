@@ -1,4 +1,5 @@
 import type { CodesBegun, CodesState } from '@riseback/contracts';
+import type { AuditEntry } from '../db/audit';
 import type { SignedInPerson } from './access';
 import { newRecoveryCodes, plainRecoveryCode, recoveryCodeHash } from './one-time-recovery';
 import type { OneTimeRepository } from './one-time-repository';
@@ -75,6 +76,11 @@ export class OneTimeCodes {
 
   turnOff({ id, sessionId }: SignedInPerson): void {
     this.repository.remove(id, { at: this.now(), personId: id, sessionId, action: 'codes.off', subject: id });
+  }
+
+  /** For somebody who lost what makes them, by who may do so. */
+  turnOffFor(personId: string, audit: AuditEntry): void {
+    this.repository.remove(personId, audit);
   }
 
   private stepOf(sealed: string, personId: string, typed: string): number | undefined {

@@ -37,7 +37,8 @@ export function registerRoutes(routes: readonly Route[], gate: SessionGate, rule
 
 function demandOwnPages(route: Route, gate: SessionGate, req: Request, person: SignedInPerson | undefined): void {
   gate.demandSameOrigin(req);
-  // Signing in has no session yet to bind a proof to; a public route never acts on the one the browser may hold.
+  // Signing in has no session yet to bind a proof to; of the one that the browser may hold, a public route does no more than
+  // end it once somebody has proved who they are.
   if (route.rule.kind !== 'public' && person !== undefined) gate.demandProof(req, person);
 }
 
