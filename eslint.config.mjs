@@ -121,8 +121,9 @@ const arrows = {
   network: [],
   solver: ['network', 'hydraulics', 'steam', 'numerics'],
   contracts: ['network'],
-  revisions: ['network'],
+  revisions: ['contracts', 'network'],
   figures: ['contracts', 'network', 'solver', 'units'],
+  methods: ['contracts', 'network', 'hydraulics', 'steam'],
 };
 const libraries = Object.entries(arrows).map(([name, may]) => ({
   files: [`libs/${name}/**/*.ts`],

@@ -1,6 +1,6 @@
 import { readFileSync } from 'node:fs';
 import { describe, expect, it } from 'vitest';
-import { METHOD_SECTIONS } from '../../apps/web/src/app/method/method-pages';
+import { METHOD_SECTIONS } from '@riseback/methods';
 
 const docs = new URL('../../docs/methods/', import.meta.url);
 const page = (name: string): string => readFileSync(new URL(`${name}.md`, docs), 'utf8');

@@ -23,8 +23,7 @@ import {
 } from '../networks/method-words';
 import { NetworkStore } from '../networks/network-store';
 import { Formula } from './formula/formula';
-import { METHOD_GROUPS, SUBSCRIPTS, SYMBOLS } from './method-pages';
-import type { MethodSection } from './method-section';
+import { METHOD_GROUPS, SUBSCRIPTS, SYMBOLS, type MethodSection } from '@riseback/methods';
 import { MethodText } from './method-text';
 
 /** Method: the equations, ranges, sources and limits of all that is computed, and which of it this network uses. */

@@ -5,8 +5,7 @@ import { describe, expect, it } from 'vitest';
 import { limitGroups } from '../networks/limit-rows';
 import { methodSectionId } from '../networks/method-words';
 import { formulaTree } from './formula/formula-tree';
-import { METHOD_SECTIONS } from './method-pages';
-import type { MethodSection } from './method-section';
+import { METHOD_SECTIONS, type MethodSection } from '@riseback/methods';
 
 /** Its equations, letters, and what stands between backquotes in its text. */
 function formulasOf(section: MethodSection): string[] {

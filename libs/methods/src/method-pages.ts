@@ -1,4 +1,4 @@
-import { checkName } from '../results/finding-words';
+import { checkName } from '@riseback/contracts';
 import type { MethodGroup, MethodSection } from './method-section';
 import { PIPE_CHECK_SECTIONS, TRAP_CHECK_SECTIONS } from './sections/check-sections';
 import { FLOW_SECTIONS } from './sections/flow-sections';

@@ -1,6 +1,6 @@
 import { DEFAULT_LIFT_RULE_PA_M } from '@riseback/network';
 import type { MethodSection } from '../method-section';
-import { METHOD_SENTENCES } from '../../networks/method-words';
+import { METHOD_SENTENCES } from '../method-sentences';
 import { printed } from '../printed-number';
 
 /** Static lift by each basis, falls, the hand check, and the void fractions. */

@@ -1,4 +1,4 @@
-import type { MethodChoice } from '../networks/method-words';
+import type { MethodChoice } from './method-sentences';
 
 /** A small table of figures that belong to a section. */
 export interface MethodTable {
