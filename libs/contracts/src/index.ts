@@ -16,6 +16,7 @@ export * from './revisions';
 export * from './roles';
 export * from './session';
 export * from './sites';
+export * from './verdicts';
 export * from './words/check-names';
 export * from './words/flow-pattern-words';
 export * from './words/limit-words';

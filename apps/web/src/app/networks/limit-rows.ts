@@ -36,15 +36,22 @@ export function limitGroups(limits: Limits): LimitGroup[] {
   }));
 }
 
-/** What one limit is called and measured in; undefined for what the solver does not know. */
+/** What one limit is called and measured in, and its default; undefined for what the solver does not know. */
 export function limitOf(
   code: string,
   key: string,
-): { readonly check: string; readonly label: string; readonly kind: QuantityKind } | undefined {
+):
+  | { readonly check: string; readonly label: string; readonly kind: QuantityKind; readonly defaultSi: number }
+  | undefined {
   const known: Readonly<Record<string, Readonly<Record<string, CheckLimit>> | undefined>> = CHECK_LIMITS;
-  const quantity = known[code]?.[key]?.quantity;
-  if (quantity === undefined) return undefined;
-  return { check: checkName(code), label: LIMIT_WORDS[`${code}.${key}`] ?? key, kind: kindOf(key, quantity) };
+  const limit = known[code]?.[key];
+  if (limit === undefined) return undefined;
+  return {
+    check: checkName(code),
+    label: LIMIT_WORDS[`${code}.${key}`] ?? key,
+    kind: kindOf(key, limit.quantity),
+    defaultSi: limit.value,
+  };
 }
 
 /** The limits with one of them set, or given back to its default; a check without own limits has no entry. */

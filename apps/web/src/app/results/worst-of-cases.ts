@@ -1,5 +1,16 @@
-import type { CaseOutcome, NodeResult, PipeResult, SolveResult, SolveWarning, TrapResult } from '@riseback/contracts';
-import { badness, trapVerdicts, worstVerdict } from './verdict';
+import {
+  badness,
+  type CaseOutcome,
+  type CaseWeight,
+  isWorse,
+  type NodeResult,
+  type PipeResult,
+  type SolveResult,
+  type SolveWarning,
+  type TrapResult,
+  trapVerdicts,
+  worstVerdict,
+} from '@riseback/contracts';
 
 /** What the worst of all cases is called where a case's id stands, in addresses as in results. */
 export const WORST_OF_ALL = 'worst';
@@ -17,11 +28,9 @@ export interface WorstOfCases {
 }
 
 /** One element in one case. */
-interface Candidate<T> {
+interface Candidate<T> extends CaseWeight {
   readonly caseId: string;
   readonly value: T;
-  readonly badness: number;
-  readonly pressurePa: number;
 }
 
 /**
@@ -83,10 +92,6 @@ function keepWorse<T extends { readonly id: string }>(kept: Map<string, Candidat
   const { id } = next.value;
   const before = kept.get(id);
   if (before === undefined || isWorse(next, before)) kept.set(id, next);
-}
-
-function isWorse(next: Candidate<unknown>, before: Candidate<unknown>): boolean {
-  return next.badness === before.badness ? next.pressurePa > before.pressurePa : next.badness > before.badness;
 }
 
 function values<T>(kept: ReadonlyMap<string, Candidate<T>>): T[] {

@@ -1,8 +1,10 @@
 import { ChangeDetectionStrategy, Component, computed, input } from '@angular/core';
 import { RouterLink } from '@angular/router';
-import { type DisplayUnits, displayUnit, formatQuantity } from '@riseback/units';
+import { UNCHANGED_PA } from '@riseback/revisions';
+import { type DisplayUnits, displayUnit } from '@riseback/units';
+import { changeWords, pressureWords } from '../results/pressure-change';
 import { StatusMark } from '../shared/status-mark/status-mark';
-import { type Effect, UNCHANGED_PA } from './effects';
+import type { Effect } from './effects';
 
 /** What a trial does, trap by trap: the verdict and the back pressure now and with it. */
 @Component({
@@ -38,14 +40,4 @@ export class EffectTable {
   protected abs(value: number): number {
     return Math.abs(value);
   }
-}
-
-function pressureWords(pa: number | undefined, units: DisplayUnits): string {
-  return pa === undefined ? '–' : formatQuantity(pa, 'pressure', units);
-}
-
-/** With its sign; a dash where nothing changes. */
-function changeWords(pa: number | undefined, units: DisplayUnits): string {
-  if (pa === undefined || Math.abs(pa) < UNCHANGED_PA) return '–';
-  return `${pa > 0 ? '+' : ''}${formatQuantity(pa, 'pressureDifference', units, { decimals: 2 })}`;
 }

@@ -1,7 +1,8 @@
 import { describe, expect, it } from 'vitest';
 import type { SolveResult, TrapResult, Verdict } from '@riseback/contracts';
 import { trialDocument } from '../lists/testing/trial-document';
-import { effectsOf, turnWords } from './effects';
+import { effectsOf } from './effects';
+import { turnWords } from './turns';
 
 const document = trialDocument();
 const words = { message: '', text: [] };

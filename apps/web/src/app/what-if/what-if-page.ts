@@ -4,14 +4,13 @@ import { MatButton } from '@angular/material/button';
 import { RouterLink } from '@angular/router';
 import { NetworkStore } from '../networks/network-store';
 import { UndoButtons } from '../networks/undo-buttons';
-import { checkName } from '../results/finding-words';
 import { nameOf } from '../shared/element-words';
 import { ProblemBanner } from '../shared/problem-banner/problem-banner';
 import { StatusMark } from '../shared/status-mark/status-mark';
 import { EffectTable } from './effect-table';
-import { type ChangedFinding, turnWords } from './effects';
 import { TrialForm } from './trial-form';
 import { TrialStore } from './trial-store';
+import { firstFive, turnedFindingWords, turnWords } from './turns';
 
 /** Try changes: what other sizes, pressures, elevations or loads would do, trap by trap, before anything is changed. */
 @Component({
@@ -32,6 +31,7 @@ export class WhatIfPage {
   readonly change = input<string>();
   readonly by = input<string>();
 
+  protected readonly findingWords = turnedFindingWords;
   protected readonly told = signal('');
   protected readonly steps = computed(() => {
     const refused = this.trials.laidOver()?.refused ?? [];
@@ -47,11 +47,11 @@ export class WhatIfPage {
   protected readonly overtaken = computed(() => this.trials.laidOver()?.overtaken ?? []);
   protected readonly overtakenWords = computed(() => {
     const names = [...new Set(this.overtaken().map(({ name }) => name))];
-    return `${listed(names)} ${names.length === 1 ? 'has' : 'have'} other values since you tried yours.`;
+    return `${firstFive(names)} ${names.length === 1 ? 'has' : 'have'} other values since you tried yours.`;
   });
   protected readonly goneWords = computed(() => {
     const ids = this.trials.laidOver()?.gone ?? [];
-    return ids.length === 0 ? '' : `${listed(ids)}: what you tried there is left out.`;
+    return ids.length === 0 ? '' : `${firstFive(ids)}: what you tried there is left out.`;
   });
   protected readonly leftOutWords = computed(() => {
     const document = this.store.document();
@@ -60,7 +60,7 @@ export class WhatIfPage {
       return node === undefined ? id : nameOf(node);
     });
     if (names.length === 0) return '';
-    return `With it ${listed(names)} would no longer drain to a receiver through sound pipes, so nothing is computed there.`;
+    return `With it ${firstFive(names)} would no longer drain to a receiver through sound pipes, so nothing is computed there.`;
   });
   protected readonly unanswered = computed(() =>
     this.trials.unanswered().map(({ caseId, problem }) => {
@@ -102,21 +102,4 @@ export class WhatIfPage {
     this.trials.takeOut(stepId);
     this.told.set('Taken out');
   }
-
-  protected findingWords(findings: readonly ChangedFinding[]): string {
-    return listed(
-      findings.map(({ name, code, from, to }) => `${checkName(code)} at ${name} (${changeWords(from, to)})`),
-    );
-  }
-}
-
-/** The first five by name. */
-function listed(names: readonly string[]): string {
-  return names.length > 5 ? `${names.slice(0, 5).join(', ')} and ${String(names.length - 5)} more` : names.join(', ');
-}
-
-/** "mended", "new: watch", "fail to watch" */
-function changeWords(from: ChangedFinding['from'], to: ChangedFinding['to']): string {
-  if (to === 'pass') return `${from} mended`;
-  return from === 'pass' ? `new: ${to}` : `${from} to ${to}`;
 }
