@@ -38,6 +38,8 @@ export class Company {
   private readonly reload = signal(0);
   private readonly solve = signal<SolveEvent | null>(null);
   private readonly plan = signal(0);
+  private readonly revisions = signal(0);
+  private readonly comments = signal(0);
   private networkId = '';
   private stream: Subscription | undefined;
   private lookedAt: readonly string[] = [];
@@ -50,6 +52,9 @@ export class Company {
   readonly solveTold = this.solve.asReadonly();
   /** Counted up when the plan under the drawing may have changed: it was told so, or a stream was opened anew. */
   readonly planTold = this.plan.asReadonly();
+  /** Likewise for its revisions and for its comments. */
+  readonly revisionsTold = this.revisions.asReadonly();
+  readonly commentsTold = this.comments.asReadonly();
   readonly others = computed((): Companion[] => {
     const own = this.session.person()?.id;
     const document = this.queue.present();
@@ -101,7 +106,7 @@ export class Company {
       switch (event.kind) {
         case 'open':
           this.tellSoon();
-          this.plan.update((count) => count + 1);
+          for (const told of [this.plan, this.revisions, this.comments]) told.update((count) => count + 1);
           // the server is there again, which no event of the browser's says where only the server was away
           if (this.queue.problem() !== null) this.queue.retry();
           break;
@@ -118,7 +123,9 @@ export class Company {
           this.people.set(event.people);
           break;
         case 'plan':
-          this.plan.update((count) => count + 1);
+        case 'revisions':
+        case 'comments':
+          this[event.kind].update((count) => count + 1);
           break;
         case 'reload':
           this.reload.update((count) => count + 1);

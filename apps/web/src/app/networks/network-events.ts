@@ -8,6 +8,8 @@ export type NetworkEvent =
   | { readonly kind: 'solve'; readonly solve: SolveEvent }
   | { readonly kind: 'people'; readonly people: readonly PersonHere[] }
   | { readonly kind: 'plan' }
+  | { readonly kind: 'revisions' }
+  | { readonly kind: 'comments' }
   | { readonly kind: 'reload' };
 
 /** A browser gives up on a stream that was refused; it may be let in again later. */
@@ -40,6 +42,8 @@ export function networkEvents(networkId: string, since: () => number): Observabl
       on('solve', (data) => ({ kind: 'solve', solve: SolveEvent.parse(data) }));
       on('people', (data) => ({ kind: 'people', people: PeopleEvent.parse(data).people }));
       on('plan', () => ({ kind: 'plan' }));
+      on('revisions', () => ({ kind: 'revisions' }));
+      on('comments', () => ({ kind: 'comments' }));
       on('reload', () => ({ kind: 'reload' }));
       source.addEventListener('open', () => subscriber.next({ kind: 'open' }));
       source.addEventListener('error', () => {

@@ -1,9 +1,12 @@
 import { ChangeDetectionStrategy, Component, DOCUMENT, effect, inject, input, untracked } from '@angular/core';
 import { Title } from '@angular/platform-browser';
 import { RouterLink, RouterLinkActive, RouterOutlet } from '@angular/router';
+import { CommentStore } from '../comments/comment-store';
 import { GuideStrip } from '../guide/guide-strip';
 import { PlanStore } from '../drawing/plan/plan-store';
 import { PlanTool } from '../drawing/plan/plan-tool';
+import { RevisionHistory } from '../revisions/revision-history';
+import { RevisionTitleBlock } from '../revisions/revision-title-block';
 import { BANDS_TO_COME } from '../shared/bands-to-come';
 import { ProblemBanner } from '../shared/problem-banner/problem-banner';
 import { AppBar } from '../shell/app-bar';
@@ -24,6 +27,8 @@ const VIEWS = [
   { path: 'ledger', word: 'Lift & ledger' },
   { path: 'cases', word: 'Cases' },
   { path: 'try', word: 'Try changes' },
+  { path: 'revisions', word: 'Revisions' },
+  { path: 'report', word: 'Report' },
   { path: 'method', word: 'Method' },
 ] as const;
 
@@ -38,6 +43,7 @@ const VIEWS = [
     GuideStrip,
     ProblemBanner,
     RefusedEdits,
+    RevisionTitleBlock,
     RouterLink,
     RouterLinkActive,
     RouterOutlet,
@@ -45,11 +51,13 @@ const VIEWS = [
   ],
   providers: [
     NetworkStore,
+    CommentStore,
     Company,
     DraftKeeper,
     EditQueue,
     PlanStore,
     PlanTool,
+    RevisionHistory,
     UndoStack,
     { provide: BANDS_TO_COME, useFactory: () => inject(NetworkStore).bandsToCome },
   ],
@@ -66,6 +74,7 @@ const VIEWS = [
 export class NetworkPage {
   protected readonly store = inject(NetworkStore);
   protected readonly drafts = inject(DraftKeeper);
+  protected readonly history = inject(RevisionHistory);
   private readonly company = inject(Company);
   private readonly title = inject(Title);
   private readonly page = inject(DOCUMENT);

@@ -1,12 +1,15 @@
 import { formatDate } from '@angular/common';
-import { ChangeDetectionStrategy, Component, computed, inject, LOCALE_ID } from '@angular/core';
+import { ChangeDetectionStrategy, Component, computed, inject, input, LOCALE_ID } from '@angular/core';
 import { MatButton } from '@angular/material/button';
 import { Router, RouterLink } from '@angular/router';
 import type { CaseOutcome } from '@riseback/contracts';
 import { countVerdicts, type VerdictCounts } from '../results/verdict';
+import { RevisionHistory } from '../revisions/revision-history';
+import { workingWords } from '../revisions/revision-words';
 import { SessionStore } from '../session/session-store';
 import { StatusMark } from '../shared/status-mark/status-mark';
 import { FRICTION_WORDS, STATIC_LIFT_WORDS } from './method-words';
+import { EditQueue } from './edit-queue';
 import { NetworkStore } from './network-store';
 
 /** More cases than these do not fit beside each other even on a wide screen, and fold into one menu. */
@@ -34,10 +37,22 @@ interface CaseOption {
 })
 export class TitleBlock {
   protected readonly store = inject(NetworkStore);
+  private readonly queue = inject(EditQueue);
+  private readonly history = inject(RevisionHistory);
   private readonly session = inject(SessionStore);
   private readonly router = inject(Router);
   private readonly locale = inject(LOCALE_ID);
 
+  /** What a frozen revision is called; '' for the network as it is drawn. */
+  readonly frozenWords = input('');
+
+  /** Whether what is drawn is a revision still, or has gone on. */
+  protected readonly revisionWords = computed(() => {
+    const saved = this.store.saveState() === 'saved';
+    return this.history.load().status === 'ready'
+      ? workingWords(this.history.newest(), this.queue.version(), saved)
+      : 'Working';
+  });
   /** The cases, and behind them the worst of all. */
   protected readonly cases = computed((): CaseOption[] => {
     const outcomes = this.store.outcomes();

@@ -13,6 +13,9 @@ import {
 import { MatButton } from '@angular/material/button';
 import { RouterLink } from '@angular/router';
 import { MakeCase } from '../../cases/make-case';
+import { CommentStore } from '../../comments/comment-store';
+import { CommentsTab } from '../../comments/comments-tab';
+import { elementOf } from '../../comments/comment-subjects';
 import { NetworkStore } from '../../networks/network-store';
 import { type Status, StatusMark } from '../../shared/status-mark/status-mark';
 import { DrawingScene } from '../drawing-scene';
@@ -26,13 +29,14 @@ import { NetworkPanel } from './network-panel';
 import { NewElementForm } from './new-element-form';
 import { ResultTab } from './result-tab';
 
-const TABS = { result: 'Result', inputs: 'Inputs', model: 'Model' } as const;
+const TABS = { result: 'Result', inputs: 'Inputs', model: 'Model', comments: 'Comments' } as const;
 type Tab = keyof typeof TABS;
 
 /** Beside the sheet: the selected element's result, inputs and model; the new element being asked for; or the network as a whole. */
 @Component({
   selector: 'app-inspector',
   imports: [
+    CommentsTab,
     ElementIcon,
     InputsTab,
     MakeCase,
@@ -52,9 +56,11 @@ export class Inspector {
   protected readonly store = inject(NetworkStore);
   protected readonly state = inject(DrawingState);
   private readonly scene = inject(DrawingScene);
+  protected readonly comments = inject(CommentStore);
   private readonly deletePrompt = inject(DeletePrompt);
 
   private readonly inputs = viewChild(InputsTab);
+  private readonly commentsTab = viewChild(CommentsTab);
 
   private readonly wantedTab = signal<Tab>('result');
   protected readonly element = computed(() => {
@@ -99,6 +105,9 @@ export class Inspector {
   );
   protected readonly tab = computed(() => (this.tabs().includes(this.wantedTab()) ? this.wantedTab() : 'result'));
   protected readonly words = TABS;
+  protected readonly openComments = computed(
+    () => this.comments.openAt().get(this.state.chosenId() ?? '')?.length ?? 0,
+  );
   protected readonly trap = computed(() => {
     const element = this.element();
     return element === null || isPipe(element) || element.kind !== 'trap' ? null : element;
@@ -111,6 +120,16 @@ export class Inspector {
       untracked(() => {
         this.wantedTab.set('inputs');
         afterNextRender(() => this.inputs()?.focusFirst(), { injector });
+      });
+    });
+    effect(() => {
+      const wanted = this.comments.wanted();
+      const chosen = this.state.chosenId();
+      if (wanted === null || wanted.opened || elementOf(wanted.subject) !== chosen) return;
+      untracked(() => {
+        this.comments.opened();
+        this.wantedTab.set('comments');
+        afterNextRender(() => this.commentsTab()?.focusForm(), { injector });
       });
     });
   }

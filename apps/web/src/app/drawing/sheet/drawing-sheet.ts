@@ -11,6 +11,7 @@ import {
   viewChild,
 } from '@angular/core';
 import type { Position } from '@riseback/network';
+import { CommentStore } from '../../comments/comment-store';
 import { Company } from '../../networks/company';
 import { NetworkStore } from '../../networks/network-store';
 import { DrawingScene } from '../drawing-scene';
@@ -70,6 +71,7 @@ export class DrawingSheet {
   protected readonly labelling = inject(SheetLabelling);
   private readonly keys = inject(SheetKeys);
   private readonly others = inject(Company);
+  private readonly comments = inject(CommentStore);
 
   private readonly canvas = viewChild.required(GraphCanvas);
   private readonly menu = viewChild.required(SheetMenu);
@@ -209,10 +211,16 @@ export class DrawingSheet {
     return mode.kind === 'moving' && mode.ids[0] === id && mode.grip?.kind === 'corner' ? mode.grip.index : -1;
   }
 
-  /** What is read out: the element, and who else has it selected. */
+  /** What is read out: the element, its open comments, and who else has it selected. */
   protected spoken({ id, name }: NodeView | PipeView): string {
-    const also = this.others.wordsFor(id);
-    return also === '' ? name : `${name}, ${also}`;
+    return [name, this.comments.wordsFor(id), this.others.wordsFor(id)].filter((part) => part !== '').join(', ');
+  }
+
+  /** With the mouse; by keyboard the element's own tab leads there. */
+  protected openComments(id: string): void {
+    this.state.select(id);
+    this.state.focusOn(id);
+    this.comments.ask({ kind: 'element', elementId: id });
   }
 
   protected shiftOf(view: NodeView): string {

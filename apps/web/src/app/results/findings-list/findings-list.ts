@@ -1,5 +1,6 @@
 import { ChangeDetectionStrategy, Component, computed, inject, input, output } from '@angular/core';
 import { ActivatedRoute, Router } from '@angular/router';
+import type { CommentSubject } from '@riseback/contracts';
 import type { Position } from '@riseback/network';
 import { BANDS_TO_COME } from '../../shared/bands-to-come';
 import { type Status, StatusMark } from '../../shared/status-mark/status-mark';
@@ -35,6 +36,9 @@ export class FindingsList {
   readonly currentId = input('');
   /** No case has been solved yet, so that silence means nothing. */
   readonly unsolved = input(false);
+  /** Findings can be commented on from here. */
+  readonly commentable = input(false);
+  readonly commented = output<CommentSubject>();
   /** The id of the element that a finding leads to. */
   readonly opened = output<string>();
 
@@ -69,6 +73,12 @@ export class FindingsList {
   /** The view beside the one that shows the findings, with the mending filled in. */
   protected openTrial(queryParams: TryParams): void {
     void this.router.navigate(['../try'], { relativeTo: this.route, queryParams, queryParamsHandling: 'merge' });
+  }
+
+  protected comment({ element, code, cases }: Finding): void {
+    if (element === null) return;
+    const caseId = cases?.[0];
+    this.commented.emit({ kind: 'result', elementId: element.id, code, ...(caseId === undefined ? {} : { caseId }) });
   }
 
   private caseWords({ cases }: Finding): string {
