@@ -7,6 +7,9 @@ import { fileURLToPath } from 'node:url';
 import { DEMO_PASSWORD, DEMO_PEOPLE } from '../demo/demo-people';
 import { seedDemo } from '../demo/seed-demo';
 import { buildApp } from './app';
+import type { MailEnd } from './mail/mail-sender';
+import { openPost, type Post } from './mail/open-post';
+import { ReceivedMails } from './mail/sink/received-mails';
 import { PeopleRepository } from './people/people-repository';
 import { PasswordThreads } from './platform/auth/password-threads';
 import { HASHES_AT_ONCE, Passwords } from './platform/auth/passwords';
@@ -51,7 +54,8 @@ async function start(): Promise<void> {
   const now = () => new Date();
   const observe = metrics.requestTimer();
   const reportPort = new ReportThreads();
-  const parts = { db, config, log, newId: randomUUID, now, solver, reportPort, hasher, observe };
+  const receivedMails = config.mail.kind === 'sink' ? new ReceivedMails(config.mail.folder) : undefined;
+  const parts = { db, config, log, newId: randomUUID, now, solver, reportPort, hasher, observe, receivedMails };
   const app = buildApp({ ...parts, webFolder: builtPages() });
   const people = new PeopleRepository(db);
   if (config.production) {
@@ -65,8 +69,10 @@ async function start(): Promise<void> {
   const ended = (madeAt: Date | undefined) => metrics.backupEnded(madeAt);
   const keeper = await keepBackups({ config, source: db.$client, now, log, ended });
   const server = boundedServer(app.handler);
+  let post: Post | undefined;
   shutDownGracefully(server, log, app.endStreams, async () => {
     app.reports.close();
+    await post?.close();
     await Promise.all([threads.close(), hasher.close(), reportPort.close(), keeper.stop()]);
     db.$client.close();
     hold.release();
@@ -75,10 +81,15 @@ async function start(): Promise<void> {
   app.reports.takeUp();
   if (config.metrics !== undefined) sayMetrics(await serveMetrics(metrics, config.metrics, log));
   const address = addressOf(server, config);
+  const mailEnded = (end: MailEnd) => metrics.mailEnded(end);
+  post = await openPost({ config, address, post: app.post, received: receivedMails, now, log, ended: mailEnded });
   log.info({ address, production: config.production }, 'listening');
   if (logFile !== undefined) say(`Requests are logged in ${logFile}`);
   if (config.production && config.backups === undefined)
     say('No backups are taken: name a folder in RISEBACK_BACKUP_FOLDER.');
+  if (config.mail.kind === 'none')
+    say('No mail is sent: name a mail server in RISEBACK_SMTP_URL. Until then mails wait in the outbox.');
+  if (config.mail.kind === 'sink') say('Mails stay on this machine: administrators of a site read them there.');
   if (config.production) sayFirstAdministrator(people);
   else saySignIns(people);
   say(`Riseback: ${address}`);

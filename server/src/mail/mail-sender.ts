@@ -24,7 +24,7 @@ export interface SenderParts {
 const PAUSE_MS = 60_000;
 /** A database put back, or a clock set, is noticed within this time. */
 const LONGEST_SLEEP_MS = 60_000;
-const LONGEST_GOODBYE_MS = 4_000;
+const LONGEST_GOODBYE_MS = 1_500;
 
 /**
  * Sends what waits in the outbox, one after the other. A mail is marked when the mail server has taken it; killed between

@@ -22,6 +22,7 @@ export async function openMailSink(
   report: (error: unknown) => void,
 ): Promise<MailSink> {
   const server = new SMTPServer({
+    closeTimeout: 500,
     banner: 'Riseback keeps what comes in',
     disabledCommands: ['AUTH', 'STARTTLS'],
     disableReverseLookup: true,

@@ -18,6 +18,7 @@ export class Metrics {
   private readonly solves: Histogram<'end'>;
   private readonly backups: Counter<'end'>;
   private readonly lastBackup: Gauge;
+  private readonly mails: Counter<'end'>;
 
   constructor(databasePath: string) {
     const registers = [this.registry];
@@ -45,6 +46,12 @@ export class Metrics {
     this.lastBackup = new Gauge({
       name: 'riseback_last_backup_timestamp_seconds',
       help: 'When the last backup since the start of the server was done; 0 = none yet.',
+      registers,
+    });
+    this.mails = new Counter({
+      name: 'riseback_mails_total',
+      help: 'Tries to send a mail since the start of the server, by how they ended.',
+      labelNames: ['end'],
       registers,
     });
     if (databasePath !== ':memory:') gaugeFiles(databasePath, registers);
@@ -85,6 +92,10 @@ export class Metrics {
     const ended = await solve();
     stop({ end: ended.end === 'answered' ? 'finished' : ended.end });
     return ended;
+  }
+
+  mailEnded(end: 'sent' | 'failed' | 'givenUp'): void {
+    this.mails.inc({ end });
   }
 
   backupEnded(madeAt: Date | undefined): void {
