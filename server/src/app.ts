@@ -7,6 +7,10 @@ import { NetworkStreams } from './events/network-streams';
 import { AuditRepository } from './audit/audit-repository';
 import { auditRoutes } from './audit/audit-routes';
 import { AuditService } from './audit/audit-service';
+import { CommentMails } from './comments/comment-mails';
+import { CommentRepository } from './comments/comment-repository';
+import { commentRoutes } from './comments/comment-routes';
+import { CommentService } from './comments/comment-service';
 import { LibraryRepository } from './library/library-repository';
 import { libraryRoutes } from './library/library-routes';
 import { LibraryService } from './library/library-service';
@@ -179,6 +183,12 @@ export function buildApp(parts: AppParts): App {
     mailQueue: outbox,
     listener: streams,
   });
+  const comments = new CommentService(new CommentRepository(db), {
+    ...{ networks, newId, now },
+    revisions: revisionArea.service,
+    mails: new CommentMails(outbox),
+    listener: streams,
+  });
   const readiness = new ReadinessCheck(db, new SolverProbe(() => solvesOnePipe(solver), now));
 
   const routes: readonly Route[] = [
@@ -192,7 +202,8 @@ export function buildApp(parts: AppParts): App {
     ...networkRoutes(networks),
     ...planRoutes(plans),
     ...solveRoutes(results),
-    ...revisionArea,
+    ...revisionArea.routes,
+    ...commentRoutes(comments),
     ...eventRoutes(events),
     ...reportRoutes(reports),
   ];

@@ -41,8 +41,14 @@ export interface RevisionAreaParts {
   readonly now: () => Date;
 }
 
+export interface RevisionArea {
+  /** For comments, which are held against what was frozen. */
+  readonly service: RevisionService;
+  readonly routes: readonly Route[];
+}
+
 /** Builds all of revisions by hand, as app.ts does for the rest. */
-export function buildRevisionArea(parts: RevisionAreaParts): Route[] {
+export function buildRevisionArea(parts: RevisionAreaParts): RevisionArea {
   const { db, networks, live, solver, engineVersion, people, identity, codes, listener, newId, now } = parts;
   const { signingKey, verifyingKeys } = parts.keys ?? passingKeys();
   const revisions = new RevisionRepository(db);
@@ -54,7 +60,7 @@ export function buildRevisionArea(parts: RevisionAreaParts): Route[] {
   });
   const heads = () => (db.$client.memory ? [] : readAuditHeads(auditHeadLogOf(db.$client.name)));
   const verification = new VerificationService(revisions, { db, keys: verifyingKeys, heads, solver, engineVersion });
-  return [...revisionRoutes(service), ...signingRoutes(signing, verification, verifyingKeys)];
+  return { service, routes: [...revisionRoutes(service), ...signingRoutes(signing, verification, verifyingKeys)] };
 }
 
 function passingKeys(): SignatureKeys {

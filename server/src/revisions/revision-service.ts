@@ -11,7 +11,7 @@ import type { LiveSolves } from '../solve/live-solves';
 import { frozenContent, outcomesText, readOutcomes } from './frozen-revision';
 import { summaryOf, type OutcomeSummary } from './outcome-summary';
 import { historyOf, stateOf, type RevisionWithHistory } from './revision-history';
-import type { RevisionMails } from './revision-mails';
+import { authorsOf, type RevisionMails } from './revision-mails';
 import { recordFreeze, recordMove, type DoneBy } from './revision-moves';
 import type { RevisionRepository, RevisionRow } from './revision-repository';
 import { readStatement } from './statement-reading';
@@ -27,6 +27,15 @@ export interface RevisionServiceOptions {
   readonly now: () => Date;
   /** How long a freeze waits for the solve of its version. */
   readonly waitMs?: number;
+}
+
+/** A revision as comments know it. */
+export interface CommentedRevision {
+  readonly letter: string;
+  readonly title: string;
+  readonly file: NetworkFile;
+  /** Who froze it and who submitted it. */
+  readonly authors: readonly string[];
 }
 
 const WAIT_MS = 5_000;
@@ -150,6 +159,13 @@ export class RevisionService {
     const row = revisions.find(id);
     if (row?.networkId !== access.networkId) throw notFound('The network has no such revision.');
     return historyOf(revisions, row, this.options.engineVersion);
+  }
+
+  /** What a comment on a revision is held against, and whose work it is. @throws ProblemError 404 */
+  commented(access: NetworkAccess, id: string): CommentedRevision {
+    const revision = this.find(this.revisions, access, id);
+    const { letter, title } = revision.row;
+    return { letter, title, file: this.file(revision.row), authors: authorsOf(revision) };
   }
 
   /** The frozen file, its cases in their order. @throws ProblemError 422 when it was changed since and cannot be read */
