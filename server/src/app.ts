@@ -64,7 +64,8 @@ import { ReportService } from './reports/report-service';
 import { ReportSources } from './reports/report-sources';
 import { ReportStreams } from './reports/report-streams';
 import type { ReportPort } from './reports/report-threads';
-import { buildRevisionArea, type SignatureKeys } from './revisions/revision-area';
+import { buildRevisionArea } from './revisions/revision-area';
+import type { SignatureKeys } from './revisions/signature-keys';
 import { SiteRepository } from './sites/site-repository';
 import { siteRoutes } from './sites/site-routes';
 import { SiteService } from './sites/site-service';
@@ -214,7 +215,7 @@ export function buildApp(parts: AppParts): App {
   app.set('trust proxy', config.trustProxy);
   app.set('query parser', 'simple');
   if (parts.observe !== undefined) app.use(parts.observe);
-  app.use(requestLog(log));
+  app.use(requestLog(log, (req) => gate.identified(req)?.id));
   app.use(securityHeaders(config.origin?.protocol === 'https:'));
   app.use(cookieParser());
   app.use('/api', (_req, res, next) => {

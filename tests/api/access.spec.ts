@@ -88,7 +88,13 @@ describe('the access matrix, made of the route table', () => {
     expect([...kinds].sort()).toEqual(['network', 'public', 'signedIn', 'site']);
     expect(
       server.app.routes.filter(({ rule, mutates }) => rule.kind === 'public' && mutates).map(({ path }) => path),
-    ).toEqual(['/api/session']);
+    ).toEqual([
+      '/api/session',
+      '/api/links',
+      '/api/links/acceptance',
+      '/api/password-resets',
+      '/api/password-resets/completion',
+    ]);
   });
 });
 

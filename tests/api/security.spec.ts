@@ -237,6 +237,20 @@ describe('the log', () => {
     for (const secret of [password, client.issued?.token ?? '', 'Bearer', 'in-the-query', 'viewer@'])
       expect(line).not.toContain(secret);
   });
+
+  it('says of a refusal whose session it was kept from, and of nobody else who they are', async () => {
+    const lineOf = async (who: 'viewer' | 'stranger' | 'anonymous', path: string): Promise<unknown> => {
+      const client = server.as(who);
+      server.log.length = 0;
+      await client.get(path);
+      return JSON.parse(server.log[0] ?? '');
+    };
+    const audit = `/api/sites/${server.siteId}/audit`;
+    expect(await lineOf('viewer', audit)).toMatchObject({ status: 403, person: 'viewer' });
+    expect(await lineOf('stranger', audit)).toMatchObject({ status: 404, person: 'stranger' });
+    expect(await lineOf('viewer', '/api/sites')).not.toHaveProperty('person');
+    expect(await lineOf('anonymous', audit)).not.toHaveProperty('person');
+  });
 });
 
 describe('the audit log', () => {

@@ -94,6 +94,21 @@ describe('signing in', () => {
     for (const answer of answers) expect(cookiesOf(answer)).toEqual([]);
   });
 
+  it('ends the session that the browser held until then, and only once it has succeeded', async () => {
+    const former = server.as('viewer');
+    const other = server.as('viewer');
+    const alive = async (client: Client) => (await client.get('/api/session')).status === 200;
+    await signIn('ines@ternquay.example', 'wrong')
+      .set('Cookie', former.cookie ?? '')
+      .expect(401);
+    expect(await alive(former)).toBe(true);
+    await signIn('ines@ternquay.example', PASSWORD)
+      .set('Cookie', former.cookie ?? '')
+      .expect(200);
+    expect([await alive(former), await alive(other)]).toEqual([false, true]);
+    expect(firstBrokenAuditRow(server.db)).toBeUndefined();
+  });
+
   it('spends a full hash on an unknown account too', async () => {
     const start = performance.now();
     await signIn('nobody@ternquay.example', PASSWORD).expect(401);

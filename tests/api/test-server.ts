@@ -4,6 +4,7 @@ import { ROLES, type Role } from '@riseback/contracts';
 import type { RequestHandler } from 'express';
 import request from 'supertest';
 import { buildApp, type App } from '../../server/src/app';
+import type { ReceivedMails } from '../../server/src/mail/sink/received-mails';
 import type { Hasher } from '../../server/src/platform/auth/passwords';
 import { SessionRepository } from '../../server/src/platform/auth/session-repository';
 import { SessionTokens } from '../../server/src/platform/auth/session-token';
@@ -39,6 +40,7 @@ export interface TestServerOptions {
   readonly hasher?: Hasher;
   readonly webFolder?: string;
   readonly heartbeatMs?: number;
+  readonly receivedMails?: ReceivedMails;
   /** One on a disk, where that matters. */
   readonly db?: Database;
   readonly observe?: RequestHandler;
@@ -77,6 +79,7 @@ export class TestServer {
       solver: solverOf(options),
       reportPort: options.reportPort ?? { make: makeReport },
       ...(options.hasher === undefined ? {} : { hasher: options.hasher }),
+      receivedMails: options.receivedMails,
       webFolder: options.webFolder,
       ...(options.observe === undefined ? {} : { observe: options.observe }),
       ...(options.heartbeatMs === undefined ? {} : { heartbeatMs: options.heartbeatMs }),

@@ -1,3 +1,4 @@
+import type { IncomingMessage } from 'node:http';
 import type { CookieOptions, Request, Response } from 'express';
 import { forgedRequest } from '../problem';
 import type { SignedInPerson } from './access';
@@ -12,7 +13,7 @@ const PROOF_HEADER = 'x-xsrf-token';
 export class SessionGate {
   private readonly cookieName: string;
   private readonly secure: boolean;
-  private readonly found = new WeakMap<Request, CheckedSession | undefined>();
+  private readonly found = new WeakMap<IncomingMessage, CheckedSession | undefined>();
 
   /** @param origin the address people open, when it is not the one the request names */
   constructor(
@@ -34,6 +35,11 @@ export class SessionGate {
       if (checked?.renewed !== undefined) this.give(res, checked.renewed);
       this.found.set(req, checked);
     }
+    return this.found.get(req)?.person;
+  }
+
+  /** Who `identify` found, for the log, which asks when all is done. */
+  identified(req: IncomingMessage): SignedInPerson | undefined {
     return this.found.get(req)?.person;
   }
 

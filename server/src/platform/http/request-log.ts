@@ -1,10 +1,24 @@
 import { randomUUID } from 'node:crypto';
+import type { IncomingMessage, ServerResponse } from 'node:http';
 import type { RequestHandler } from 'express';
 import { pinoHttp } from 'pino-http';
 import type { Log } from '../log';
 
-/** One line a request, with the id that its answer carries. No query, header, cookie or body: they may hold secrets. */
-export function requestLog(log: Log): RequestHandler {
+/** Answers that say whom something was kept from. */
+const REFUSALS = [403, 404];
+
+/**
+ * One line a request, with the id that its answer carries. No query, header, cookie or body: they may hold secrets.
+ * @param personOf whose session the request came with; a refusal's line says it
+ */
+export function requestLog(log: Log, personOf: (req: IncomingMessage) => string | undefined): RequestHandler {
+  const line = (req: IncomingMessage, res: ServerResponse, { ms }: { ms?: number }) => {
+    const person = REFUSALS.includes(res.statusCode) ? personOf(req) : undefined;
+    return {
+      ...{ ms, method: req.method, path: pathOf(req.url), status: res.statusCode },
+      ...(person === undefined ? {} : { person }),
+    };
+  };
   return pinoHttp({
     logger: log,
     genReqId: (_req, res) => {
@@ -16,18 +30,8 @@ export function requestLog(log: Log): RequestHandler {
     quietReqLogger: true,
     quietResLogger: true,
     customAttributeKeys: { reqId: 'id', responseTime: 'ms' },
-    customSuccessObject: (req, res, object: { ms?: number }) => ({
-      ms: object.ms,
-      method: req.method,
-      path: pathOf(req.url),
-      status: res.statusCode,
-    }),
-    customErrorObject: (req, res, _error, object: { ms?: number }) => ({
-      ms: object.ms,
-      method: req.method,
-      path: pathOf(req.url),
-      status: res.statusCode,
-    }),
+    customSuccessObject: (req, res, object: { ms?: number }) => line(req, res, object),
+    customErrorObject: (req, res, _error, object: { ms?: number }) => line(req, res, object),
     customSuccessMessage: () => 'request',
     customErrorMessage: () => 'request',
     // A 5xx is logged as an error by the problem handler, with its cause.
