@@ -3,17 +3,17 @@ import type { NetworkDocument } from './network-document';
 import type { NetworkFile, NetworkNode } from './network-file';
 import { nodeFinding } from './node-findings';
 import { KIND_NAMES } from './override-keys';
+import { pipeEnds, type PipeEnds } from './pipe-ends';
 import { gaugeFindings, pipeFindings } from './pipe-findings';
 import {
   elementsOf,
   groundReached,
+  hasBothEnds,
   hasFixedPressure,
   isSource,
   nameOf,
   PipesAtNodes,
-  pipesWithEnds,
   type DrawnElements,
-  type PipeEnds,
   type TopologyFinding,
 } from './topology';
 import { vesselsInCircles } from './vessel-circles';
@@ -31,12 +31,16 @@ export interface FileFinding extends TopologyFinding {
  * network; what leaves a flash vessel starts the next part.
  */
 export function findings(document: NetworkDocument): TopologyFinding[] {
-  return elementFindings(elementsOf(document));
+  const elements = elementsOf(document);
+  return elementFindings(elements, pipeEnds(elements));
 }
 
-/** {@link findings} of a file, each with its pointer into it. */
-export function fileFindings(file: NetworkFile): FileFinding[] {
-  const found = elementFindings(file);
+/**
+ * {@link findings} of a file, each with its pointer into it.
+ * @param ends for callers that have looked them up already
+ */
+export function fileFindings(file: NetworkFile, ends: PipeEnds = pipeEnds(file)): FileFinding[] {
+  const found = elementFindings(file, ends);
   if (found.length === 0) return [];
   const indexes = {
     nodes: indexesOf(file.nodes),
@@ -54,18 +58,21 @@ export function fileFindings(file: NetworkFile): FileFinding[] {
   });
 }
 
-function elementFindings(elements: DrawnElements): TopologyFinding[] {
-  const { nodes } = elements;
-  const pipes = pipesWithEnds(elements);
-  const at = new PipesAtNodes(nodes.length, pipes);
+function elementFindings(elements: DrawnElements, ends: PipeEnds): TopologyFinding[] {
+  const { nodes, pipes } = elements;
+  const at = new PipesAtNodes(elements, ends);
   const found = wholeFindings(nodes);
   nodes.forEach((node, index) => {
     const finding = nodeFinding(node, index, at);
     if (finding !== undefined) found.push(finding);
   });
-  for (const finding of cutOffNodes(nodes, pipes)) found.push(finding);
-  for (const pipe of pipes) found.push(...pipeFindings(pipe));
-  found.push(...vesselLoops(nodes.length, pipes), ...gaugeFindings(elements));
+  for (const finding of cutOffNodes(nodes, ends)) found.push(finding);
+  pipes.forEach((pipe, i) => {
+    if (!hasBothEnds(ends, i)) return;
+    const [from, to] = [nodes[ends.from[i] as number], nodes[ends.to[i] as number]] as [NetworkNode, NetworkNode];
+    for (const finding of pipeFindings(pipe, from, to)) found.push(finding);
+  });
+  found.push(...vesselLoops(nodes, ends), ...gaugeFindings(elements));
   return found;
 }
 
@@ -94,10 +101,10 @@ function wholeFindings(nodes: readonly NetworkNode[]): TopologyFinding[] {
   return found;
 }
 
-function cutOffNodes(nodes: readonly NetworkNode[], pipes: readonly PipeEnds[]): TopologyFinding[] {
+function cutOffNodes(nodes: readonly NetworkNode[], ends: PipeEnds): TopologyFinding[] {
   // without any receiver everything is cut off, which one finding says better than many
   if (!nodes.some(hasFixedPressure)) return [];
-  const reachesGround = groundReached(nodes.length, pipes);
+  const reachesGround = groundReached(nodes, ends);
   return nodes
     .filter((node, index) => !hasFixedPressure(node) && !reachesGround(index))
     .map((node) => {
@@ -113,8 +120,8 @@ function cutOffNodes(nodes: readonly NetworkNode[], pipes: readonly PipeEnds[]):
     });
 }
 
-function vesselLoops(nodeCount: number, pipes: readonly PipeEnds[]): TopologyFinding[] {
-  return vesselsInCircles(nodeCount, pipes).map((vessel) => ({
+function vesselLoops(nodes: readonly NetworkNode[], ends: PipeEnds): TopologyFinding[] {
+  return vesselsInCircles(nodes, ends).map((vessel) => ({
     code: 'loop',
     severity: 'error',
     element: { in: 'nodes', id: vessel.id },

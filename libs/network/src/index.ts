@@ -13,6 +13,7 @@ export * from './mistakes';
 export * from './network-document';
 export * from './network-file';
 export * from './override-keys';
+export * from './pipe-ends';
 export * from './read-network-file';
 export * from './solvable-part';
 export * from './solver-input';

@@ -1,5 +1,5 @@
-import type { PipeRun, RoutePiece } from './network-file';
-import { nameOf, type DrawnElements, type FindingText, type PipeEnds, type TopologyFinding } from './topology';
+import type { NetworkNode, PipeRun, RoutePiece } from './network-file';
+import { nameOf, type DrawnElements, type FindingText, type TopologyFinding } from './topology';
 
 /** Lengths and rises agree within a millimetre or a thousandth: as good as a tape measure and a rounded foot. */
 export const ROUTE_TOLERANCE = { absoluteM: 1e-3, relative: 1e-3 } as const;
@@ -8,7 +8,7 @@ export const ROUTE_TOLERANCE = { absoluteM: 1e-3, relative: 1e-3 } as const;
 const NONE: readonly TopologyFinding[] = [];
 
 /** What is wrong with a pipe by itself, between its two elevations. */
-export function pipeFindings({ pipe, from, to }: PipeEnds): readonly TopologyFinding[] {
+export function pipeFindings(pipe: PipeRun, from: NetworkNode, to: NetworkNode): readonly TopologyFinding[] {
   if (pipe.from === pipe.to) return [selfPipe(pipe)];
   const riseM = to.elevationM - from.elevationM;
   if (pipe.lengthM === 0) return [zeroLength(pipe)];

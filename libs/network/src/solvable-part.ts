@@ -1,14 +1,8 @@
 import type { NetworkDocument } from './network-document';
+import type { NetworkNode } from './network-file';
+import { pipeEnds } from './pipe-ends';
 import { pipeFindings } from './pipe-findings';
-import {
-  elementsOf,
-  groundReached,
-  hasFixedPressure,
-  isSource,
-  PipesAtNodes,
-  pipesWithEnds,
-  type PipeEnds,
-} from './topology';
+import { elementsOf, groundReached, hasBothEnds, hasFixedPressure, isSource, PipesAtNodes } from './topology';
 
 /** Ids of what a live solve can compute. */
 export interface SolvablePart {
@@ -23,21 +17,26 @@ export interface SolvablePart {
  */
 export function solvablePart(document: NetworkDocument): SolvablePart {
   const elements = elementsOf(document);
-  const all = pipesWithEnds(elements);
-  const at = new PipesAtNodes(elements.nodes.length, all);
-  const sound = all.filter((ends) => pipeFindings(ends).length === 0 && standsRight(ends, at));
-  const reachesGround = groundReached(elements.nodes.length, sound);
+  const ends = pipeEnds(elements);
+  const at = new PipesAtNodes(elements, ends);
+  const isSound = elements.pipes.map((pipe, i) => {
+    if (!hasBothEnds(ends, i)) return false;
+    const fromIndex = ends.from[i] as number;
+    const [from, to] = [elements.nodes[fromIndex], elements.nodes[ends.to[i] as number]] as [NetworkNode, NetworkNode];
+    return pipeFindings(pipe, from, to).length === 0 && standsRight(from, to, at.leavingCount(fromIndex));
+  });
+  const reachesGround = groundReached(elements.nodes, ends, isSound);
 
   const nodes = new Set<string>();
   elements.nodes.forEach((node, index) => {
     if (hasFixedPressure(node) || reachesGround(index)) nodes.add(node.id);
   });
-  const pipes = sound.filter(({ from, to }) => nodes.has(from.id) && nodes.has(to.id));
-  return { nodes, pipes: new Set(pipes.map(({ pipe }) => pipe.id)) };
+  const pipes = elements.pipes.filter(({ from, to }, i) => isSound[i] === true && nodes.has(from) && nodes.has(to));
+  return { nodes, pipes: new Set(pipes.map(({ id }) => id)) };
 }
 
-function standsRight({ from, to, fromIndex }: PipeEnds, at: PipesAtNodes): boolean {
+function standsRight(from: NetworkNode, to: NetworkNode, leavingCount: number): boolean {
   if (from.kind === 'receiver' || isSource(to)) return false;
   const startsAlone = isSource(from) || from.kind === 'flashVessel';
-  return !startsAlone || at.leavingCount(fromIndex) === 1;
+  return !startsAlone || leavingCount === 1;
 }

@@ -1,5 +1,6 @@
 import type { CollectionName, NetworkDocument } from './network-document';
 import type { Gauge, NetworkNode, PipeRun } from './network-file';
+import type { PipeEnds } from './pipe-ends';
 
 export type FindingCode =
   | 'noReceiver'
@@ -62,51 +63,23 @@ export function elementsOf(document: NetworkDocument): DrawnElements {
   return { nodes: values(document.nodes), pipes: values(document.pipes), gauges: values(document.gauges) };
 }
 
-/** A pipe with its two nodes, and their places in the list of nodes. */
-export interface PipeEnds {
-  readonly pipe: PipeRun;
-  readonly from: NetworkNode;
-  readonly to: NetworkNode;
-  readonly fromIndex: number;
-  readonly toIndex: number;
-}
-
-/** The pipes with their two nodes, in their order. */
-export function pipesWithEnds({ nodes, pipes }: Pick<DrawnElements, 'nodes' | 'pipes'>): PipeEnds[] {
-  const indexOf = new Map<string, number>();
-  nodes.forEach(({ id }, index) => indexOf.set(id, index));
-  const ends: PipeEnds[] = [];
-  for (const pipe of pipes) {
-    const fromIndex = indexOf.get(pipe.from);
-    const toIndex = indexOf.get(pipe.to);
-    // references hold in every document; a test may build one that breaks them
-    if (fromIndex === undefined || toIndex === undefined) continue;
-    ends.push({
-      pipe,
-      from: nodes[fromIndex] as NetworkNode,
-      to: nodes[toIndex] as NetworkNode,
-      fromIndex,
-      toIndex,
-    });
-  }
-  return ends;
-}
-
 /** How many pipes leave and enter each node, and which; a pipe from a node to itself counts at neither. */
 export class PipesAtNodes {
   private readonly leavingCounts: Int32Array;
   private readonly enteringCounts: Int32Array;
 
   constructor(
-    nodeCount: number,
-    private readonly pipes: readonly PipeEnds[],
+    private readonly elements: Pick<DrawnElements, 'nodes' | 'pipes'>,
+    private readonly ends: PipeEnds,
   ) {
+    const nodeCount = elements.nodes.length;
     this.leavingCounts = new Int32Array(nodeCount);
     this.enteringCounts = new Int32Array(nodeCount);
-    for (const { fromIndex, toIndex } of pipes) {
-      if (fromIndex === toIndex) continue;
-      this.leavingCounts[fromIndex] = this.leavingCount(fromIndex) + 1;
-      this.enteringCounts[toIndex] = this.enteringCount(toIndex) + 1;
+    for (let pipe = 0; pipe < elements.pipes.length; pipe++) {
+      if (!joinsTwoNodes(ends, pipe)) continue;
+      const [from, to] = [ends.from[pipe] as number, ends.to[pipe] as number];
+      this.leavingCounts[from] = this.leavingCount(from) + 1;
+      this.enteringCounts[to] = this.enteringCount(to) + 1;
     }
   }
 
@@ -132,13 +105,22 @@ export class PipesAtNodes {
   private get lists(): { leaving: Map<number, PipeRun[]>; entering: Map<number, PipeRun[]> } {
     if (this.listed !== undefined) return this.listed;
     const [leaving, entering] = [new Map<number, PipeRun[]>(), new Map<number, PipeRun[]>()];
-    for (const { pipe, fromIndex, toIndex } of this.pipes) {
-      if (fromIndex === toIndex) continue;
-      push(leaving, fromIndex, pipe);
-      push(entering, toIndex, pipe);
-    }
+    this.elements.pipes.forEach((pipe, i) => {
+      if (!joinsTwoNodes(this.ends, i)) return;
+      push(leaving, this.ends.from[i] as number, pipe);
+      push(entering, this.ends.to[i] as number, pipe);
+    });
     return (this.listed = { leaving, entering });
   }
+}
+
+/** Whether both ends of a pipe are there. References hold in every document; a test may build one that breaks them. */
+export function hasBothEnds({ from, to }: PipeEnds, pipe: number): boolean {
+  return from[pipe] !== -1 && to[pipe] !== -1;
+}
+
+function joinsTwoNodes(ends: PipeEnds, pipe: number): boolean {
+  return hasBothEnds(ends, pipe) && ends.from[pipe] !== ends.to[pipe];
 }
 
 function push<K, T>(lists: Map<K, T[]>, key: K, item: T): void {
@@ -179,14 +161,21 @@ export class JoinedSets {
 /**
  * What hangs together with a place where condensate ends. Fixed pressures cut the network: whatever enters one ends at the ground,
  * and what leaves a vessel starts there like a trap, joined to nothing else.
+ * @param isSound by pipe; one that is not joins nothing. Left out, all are
  * @returns by node: whether a fixed pressure is reached from it through these pipes
  */
-export function groundReached(nodeCount: number, pipes: readonly PipeEnds[]): (index: number) => boolean {
-  const ground = nodeCount;
-  const sets = new JoinedSets(nodeCount + 1);
-  for (const { from, to, fromIndex, toIndex } of pipes) {
-    if (from.kind === 'flashVessel') continue;
-    sets.join(hasFixedPressure(from) ? ground : fromIndex, hasFixedPressure(to) ? ground : toIndex);
+export function groundReached(
+  nodes: readonly NetworkNode[],
+  ends: PipeEnds,
+  isSound?: readonly boolean[],
+): (index: number) => boolean {
+  const ground = nodes.length;
+  const sets = new JoinedSets(nodes.length + 1);
+  const placeOf = (index: number): number => (hasFixedPressure(nodes[index] as NetworkNode) ? ground : index);
+  for (let pipe = 0; pipe < ends.from.length; pipe++) {
+    if (isSound?.[pipe] === false || !hasBothEnds(ends, pipe)) continue;
+    const [from, to] = [ends.from[pipe] as number, ends.to[pipe] as number];
+    if (nodes[from]?.kind !== 'flashVessel') sets.join(placeOf(from), placeOf(to));
   }
   return (index) => sets.areJoined(index, ground);
 }

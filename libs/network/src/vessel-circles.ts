@@ -1,5 +1,6 @@
-import type { FlashVessel } from './network-file';
-import { hasFixedPressure, JoinedSets, type PipeEnds } from './topology';
+import type { FlashVessel, NetworkNode } from './network-file';
+import type { PipeEnds } from './pipe-ends';
+import { hasBothEnds, hasFixedPressure, JoinedSets } from './topology';
 
 /**
  * Flash vessels whose own liquid comes back to them, over other vessels or directly, and can go nowhere else. Where a part leads to
@@ -8,9 +9,10 @@ import { hasFixedPressure, JoinedSets, type PipeEnds } from './topology';
  * A graph of vessels and of the parts between fixed pressures is cleared of all from which a receiver is reached, then trimmed at
  * both ends until only circles (and what lies between two circles) are left: no recursion, linear in the pipes.
  */
-export function vesselsInCircles(nodeCount: number, pipes: readonly PipeEnds[]): FlashVessel[] {
-  if (!pipes.some(({ from }) => from.kind === 'flashVessel')) return [];
-  const parts = new JoinedSets(nodeCount);
+export function vesselsInCircles(nodes: readonly NetworkNode[], ends: PipeEnds): FlashVessel[] {
+  if (!nodes.some(({ kind }) => kind === 'flashVessel')) return [];
+  const pipes = joints(nodes, ends);
+  const parts = new JoinedSets(nodes.length);
   for (const { from, to, fromIndex, toIndex } of pipes) {
     if (!hasFixedPressure(from) && !hasFixedPressure(to)) parts.join(fromIndex, toIndex);
   }
@@ -34,6 +36,24 @@ export function vesselsInCircles(nodeCount: number, pipes: readonly PipeEnds[]):
   trim(left, onwards, backwards);
   trim(left, backwards, onwards);
   return [...vessels.values()].filter(({ id }) => left.has(id));
+}
+
+interface Joint {
+  readonly from: NetworkNode;
+  readonly to: NetworkNode;
+  readonly fromIndex: number;
+  readonly toIndex: number;
+}
+
+function joints(nodes: readonly NetworkNode[], ends: PipeEnds): Joint[] {
+  return Array.from(ends.from, (fromIndex, pipe) => ({ fromIndex, toIndex: ends.to[pipe] as number, pipe }))
+    .filter(({ pipe }) => hasBothEnds(ends, pipe))
+    .map(({ fromIndex, toIndex }) => ({
+      from: nodes[fromIndex] as NetworkNode,
+      to: nodes[toIndex] as NetworkNode,
+      fromIndex,
+      toIndex,
+    }));
 }
 
 /** No id holds a slash, so that a part is never taken for a vessel. */

@@ -4,14 +4,15 @@ import { blankSaturation, fillSaturation, saturationState } from '@riseback/stea
 import { limitsInForce, type LimitsInForce } from './check-limits';
 import { ownRuns, type AverageRun } from './coincidence';
 import { atElement } from './element-failure';
-import { enthalpyAlong } from './flow-and-energy';
+import { blankFlow, enthalpyAlong } from './flow-and-energy';
 import { fluidStateAt, temperatureAtK, vapourFraction } from './fluid-state';
+import { blankMarch } from './marched-pipes';
 import { networkBands } from './network-bands';
 import { nodeQualities, type NodeQualities } from './node-qualities';
 import { failedOpen } from './open-traps';
 import { checkPipe, vesselCannotDrain } from './pipe-checks';
 import { pipeResult, type PieceEnd } from './pipe-result';
-import { flowInPipe } from './pressure-walk';
+import { fillFlow } from './pressure-walk';
 import { inletNode, outletNode } from './return-tree';
 import type { NodeResult, PipeResult, SolveResult, SolveWarning, TrapResult } from './solve-result';
 import { MeetingStreams } from './thermal-shock';
@@ -93,7 +94,9 @@ interface Pipes {
   readonly leftOut: readonly string[];
 }
 
-/** The state at a pipe's end, filled in anew for each. */
+/** What flows into a pipe, what the march gave for it, and the state at its end: filled in anew for each. */
+const flow = blankFlow();
+const marched = blankMarch();
 const downstream = blankSaturation();
 
 function pipesOf(solved: Solved, limits: LimitsInForce, { quality }: NodeQualities): Pipes {
@@ -106,14 +109,14 @@ function pipesOf(solved: Solved, limits: LimitsInForce, { quality }: NodeQualiti
   const streams = new MeetingStreams(file.nodes.length);
   const leftOut: string[] = [];
   file.pipes.forEach((pipe, index) => {
-    const marched = walk.marched[index];
     const geometry = geometries[index];
-    if (marched === undefined || geometry === undefined) {
+    if (geometry === undefined || !walk.marched.has(index)) {
       leftOut.push(pipe.id);
       return;
     }
-    const flow = flowInPipe(tree, index, geometry, flows);
+    fillFlow(flow, tree, index, geometry, flows);
     const below = outletNode(tree, index);
+    walk.marched.fill(marched, index);
     fillSaturation(downstream, walk.pressurePa[below] as number);
     const { result, ends: endsOfPipe } = pipeResult({
       pipe,

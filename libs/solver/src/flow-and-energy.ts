@@ -20,6 +20,13 @@ export interface PipeFlow {
   readonly ambientEnthalpyJKg: number;
 }
 
+/** A pipe's flow that its keeper has filled in anew for each pipe. */
+export type FlowRecord = { -readonly [Key in keyof PipeFlow]: PipeFlow[Key] };
+
+export function blankFlow(): FlowRecord {
+  return { massFlowKgS: NaN, inletEnthalpyJKg: NaN, heatLossWM: NaN, ambientEnthalpyJKg: NaN };
+}
+
 export interface FlowAndEnergy {
   /**
    * By node of the tree, vessel outlets included: everything that comes to the node, which is what leaves it but for a vessel's

@@ -50,7 +50,7 @@ function proveClosed({ pipes }: NetworkFile, { tree, flows, walk, iterations }: 
   for (const chord of tree.chords) {
     if (flows.pipeFlowKgS[chord] === 0) continue;
     const nodePa = walk.pressurePa[inletNode(tree, chord)] as number;
-    const openPa = Math.abs((walk.marched[chord]?.upstreamPressurePa ?? NaN) - nodePa);
+    const openPa = Math.abs(walk.marched.upstreamPressurePaOf(chord) - nodePa);
     if (openPa <= MESH_CLOSED_PA) continue;
     const reason = new NoConvergenceError('the mesh that this pipe closes', iterations, openPa);
     throw new ElementFailure((pipes[chord] as PipeRun).id, `/pipes/${chord}`, reason);

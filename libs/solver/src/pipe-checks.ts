@@ -17,31 +17,24 @@ export interface PipeUnderCheck {
   readonly limits: LimitsInForce;
 }
 
-type Check = (at: PipeUnderCheck) => SolveWarning | undefined;
-
-/** Every check at a pipe that carries a flow. */
-export const PIPE_CHECKS: readonly Check[] = [
-  reversed,
-  choked,
-  velocity,
-  momentum,
-  gradient,
-  slug,
-  uphillTwoPhase,
-  dryBasis,
-];
-
 const NO_WARNINGS: readonly SolveWarning[] = [];
 
-/** What an engineer should know of a pipe; nothing of one that stands still. */
+/** Every check at a pipe that carries a flow: what an engineer should know of it; nothing of one that stands still. */
 export function checkPipe(at: PipeUnderCheck): readonly SolveWarning[] {
   if (at.result.massFlowKgS === 0) return NO_WARNINGS;
-  let warnings = NO_WARNINGS;
-  for (const check of PIPE_CHECKS) {
-    const warning = check(at);
-    if (warning !== undefined) warnings = [...warnings, warning];
-  }
-  return warnings;
+  // called by name, not from a list: nearly every pipe is sound, and then these calls are all that its checks cost
+  let warnings = withFinding(NO_WARNINGS, reversed(at));
+  warnings = withFinding(warnings, choked(at));
+  warnings = withFinding(warnings, velocity(at));
+  warnings = withFinding(warnings, momentum(at));
+  warnings = withFinding(warnings, gradient(at));
+  warnings = withFinding(warnings, slug(at));
+  warnings = withFinding(warnings, uphillTwoPhase(at));
+  return withFinding(warnings, dryBasis(at));
+}
+
+function withFinding(warnings: readonly SolveWarning[], found: SolveWarning | undefined): readonly SolveWarning[] {
+  return found === undefined ? warnings : [...warnings, found];
 }
 
 const LARGER_BORE = say`Use a larger bore, or take some of the traps to another return.`;

@@ -1,6 +1,5 @@
 import { fittingLossCoefficient, pipeBore, type FittingName } from '@riseback/hydraulics';
-import type { FittingKind, NetworkFile, PipeRun, RoutePiece } from '@riseback/network';
-import type { PipeEnds } from './pipe-ends';
+import type { FittingKind, NetworkFile, PipeEnds, PipeRun, RoutePiece } from '@riseback/network';
 
 /** What the march needs of a pipe, with its size and fittings looked up. */
 export interface PipeGeometry {

@@ -34,6 +34,7 @@ import {
   type FrictionLaw,
   type FrictionLawName,
 } from './friction-laws';
+import { blankMarch, NO_UPPER_PIECES, type MarchRecord } from './marched-pipes';
 import type { PipeGeometry } from './pipe-geometry';
 import { staticGradient } from './static-gradient';
 
@@ -81,9 +82,6 @@ const ABOVE_CHOKING = 1e-5;
 const START_BORES = 10;
 const [LOWEST_PA, HIGHEST_PA] = SATURATION_RANGE_PA;
 
-/** Of nearly every pipe. */
-const NO_UPPER_PIECES: number[] = [];
-
 type Writable<T> = { -readonly [Key in keyof T]: T[Key] };
 
 /**
@@ -111,6 +109,7 @@ export class PipeMarcher {
   private readonly integration: IntegrationOptions;
   /** What each part of the pipe at hand has come to. */
   private readonly totals = new Float64Array(PARTS);
+  private readonly marched: MarchRecord = blankMarch();
 
   constructor(private readonly options: MarchOptions) {
     const { friction, voidFraction, acceleration } = options.method;
@@ -142,7 +141,7 @@ export class PipeMarcher {
    * @param piecesAgainstFlow from the outlet up, rises counted in the direction of flow
    * @param nodePressurePa of the node that the pipe discharges into
    * @param onPieceEnd told the pressure at the upstream end of each piece
-   * @returns the inlet pressure and what each part adds; they add up to the difference but for rounding
+   * @returns the inlet pressure and what each part adds, which add up to the difference but for rounding; the next march overwrites it
    * @throws SteamRangeError where the pressure leaves the steam properties; NoConvergenceError where no step is short enough
    */
   march(
@@ -152,17 +151,18 @@ export class PipeMarcher {
     nodePressurePa: number,
     onPieceEnd?: (piece: RoutePiece, pressurePa: number) => void,
   ): MarchedPipe {
-    const { at, flashing, totals } = this;
+    const { at, flashing, totals, marched } = this;
     this.enter(pipe, flow, piecesAgainstFlow[0]);
     const criticalPa = this.criticalPressurePa(nodePressurePa);
     const outletPressurePa = Math.max(nodePressurePa, criticalPa);
     let pressurePa = outletPressurePa;
     if (this.accelerates) pressurePa = Math.max(pressurePa, criticalPa * (1 + ABOVE_CHOKING));
-    totals.fill(0);
+    totals[STATIC] = 0;
+    totals[FRICTION] = 0;
     totals[FLASH] = pressurePa - nodePressurePa;
     // just above choking the gradient runs up without bound: the first few bores are marched by themselves
     let startM = criticalPa > 0 ? START_BORES * pipe.insideDiameterM : 0;
-    const upperOutletsPa = piecesAgainstFlow.length === 1 ? NO_UPPER_PIECES : [];
+    const upperOutletsPa: number[] | undefined = piecesAgainstFlow.length === 1 ? undefined : [];
     const uppermost = piecesAgainstFlow.at(-1);
     for (const piece of piecesAgainstFlow) {
       at.riseSlope = piece.riseM / piece.lengthM;
@@ -171,17 +171,16 @@ export class PipeMarcher {
       else startM = 0;
       pressurePa = this.stretch(pressurePa, piece.lengthM - startM);
       startM = 0;
-      if (piece !== uppermost) upperOutletsPa.push(pressurePa);
+      if (piece !== uppermost) upperOutletsPa?.push(pressurePa);
       onPieceEnd?.(piece, pressurePa);
     }
-    return {
-      upstreamPressurePa: pressurePa,
-      outletPressurePa,
-      upperOutletsPa,
-      staticPa: totals[STATIC] as number,
-      frictionPa: totals[FRICTION] as number,
-      flashPa: totals[FLASH] as number,
-    };
+    marched.upstreamPressurePa = pressurePa;
+    marched.outletPressurePa = outletPressurePa;
+    marched.upperOutletsPa = upperOutletsPa ?? NO_UPPER_PIECES;
+    marched.staticPa = totals[STATIC] as number;
+    marched.frictionPa = totals[FRICTION] as number;
+    marched.flashPa = totals[FLASH] as number;
+    return marched;
   }
 
   /** Marches up a stretch of one slope, and adds what it costs. @returns the pressure at its upstream end */

@@ -1,8 +1,9 @@
 import type { NetworkFile, PipeRun, RoutePiece } from '@riseback/network';
 import { requireBoilingPressure } from '@riseback/steam';
 import { atElement } from './element-failure';
-import type { FlowAndEnergy, PipeFlow } from './flow-and-energy';
+import { blankFlow, type FlowAndEnergy, type FlowRecord, type PipeFlow } from './flow-and-energy';
 import { handCheckLiftPa } from './hand-check';
+import { MarchedPipes } from './marched-pipes';
 import type { OperatingNode } from './operating-case';
 import { piecesAgainstFlow, type PipeGeometry } from './pipe-geometry';
 import { PipeMarcher, type MarchedPipe, type MarchOptions } from './pipe-march';
@@ -15,8 +16,7 @@ export interface PressureWalk {
   readonly frictionPa: Float64Array;
   readonly flashPa: Float64Array;
   readonly handCheckPa: Float64Array;
-  /** By pipe. */
-  readonly marched: readonly (MarchedPipe | undefined)[];
+  readonly marched: MarchedPipes;
 }
 
 /**
@@ -35,7 +35,8 @@ export function pressureWalk(
   const byNode = (): Float64Array => new Float64Array(tree.nodeCount);
   const [pressurePa, staticPa, frictionPa, flashPa, handCheckPa] = [byNode(), byNode(), byNode(), byNode(), byNode()];
   const marcher = new PipeMarcher(options);
-  const marched: (MarchedPipe | undefined)[] = new Array<MarchedPipe | undefined>(file.pipes.length);
+  const marched = new MarchedPipes(file.pipes.length);
+  const flow = blankFlow();
 
   for (const index of tree.downstreamFirst) {
     const end = nodes[index];
@@ -45,7 +46,7 @@ export function pressureWalk(
       walkUpTo(index);
     }
   }
-  for (const chord of tree.chords) marched[chord] = marchChord(chord);
+  for (const chord of tree.chords) marchChord(chord);
   return { pressurePa, staticPa, frictionPa, flashPa, handCheckPa, marched };
 
   function standAt(
@@ -72,7 +73,7 @@ export function pressureWalk(
     } catch (error) {
       throw atElement('pipe', file.pipes[pipeIndex] as PipeRun, pipeIndex, error);
     }
-    marched[pipeIndex] = up;
+    marched.set(pipeIndex, up);
     pressurePa[index] = up.upstreamPressurePa;
     staticPa[index] = (staticPa[below] as number) + up.staticPa;
     frictionPa[index] = (frictionPa[below] as number) + up.frictionPa;
@@ -81,19 +82,22 @@ export function pressureWalk(
   }
 
   /** A chord that flows is marched like any pipe; one that stands still holds whatever its ends differ by. */
-  function marchChord(chord: number): MarchedPipe | undefined {
+  function marchChord(chord: number): void {
     const geometry = geometries[chord];
-    if (geometry === undefined) return undefined;
+    if (geometry === undefined) return;
     const below = outletNode(tree, chord);
     const pieces = piecesAgainstFlow(geometry.pieces, tree.arrow[chord] === 1);
     const up = march(chord, geometry, pieces, below);
-    if (flows.pipeFlowKgS[chord] !== 0) return up;
+    if (flows.pipeFlowKgS[chord] !== 0) {
+      marched.set(chord, up);
+      return;
+    }
     const upstreamPressurePa = pressurePa[inletNode(tree, chord)] as number;
-    return { ...up, upstreamPressurePa, staticPa: upstreamPressurePa - (pressurePa[below] as number) };
+    marched.set(chord, { ...up, upstreamPressurePa, staticPa: upstreamPressurePa - (pressurePa[below] as number) });
   }
 
   function march(pipeIndex: number, geometry: PipeGeometry, pieces: readonly RoutePiece[], below: number): MarchedPipe {
-    const flow = flowInPipe(tree, pipeIndex, geometry, flows);
+    fillFlow(flow, tree, pipeIndex, geometry, flows);
     try {
       return marcher.march(geometry, flow, pieces, pressurePa[below] as number);
     } catch (error) {
@@ -106,13 +110,24 @@ export function pressureWalk(
 export function flowInPipe(
   tree: ReturnTree,
   pipe: number,
-  { heatLossWM }: PipeGeometry,
-  { pipeFlowKgS, enthalpyJKg, ambientEnthalpyJKg }: FlowAndEnergy & { readonly ambientEnthalpyJKg: number },
+  geometry: PipeGeometry,
+  flows: FlowAndEnergy & { readonly ambientEnthalpyJKg: number },
 ): PipeFlow {
-  return {
-    massFlowKgS: pipeFlowKgS[pipe] as number,
-    inletEnthalpyJKg: enthalpyJKg[inletNode(tree, pipe)] as number,
-    heatLossWM,
-    ambientEnthalpyJKg,
-  };
+  const flow = blankFlow();
+  fillFlow(flow, tree, pipe, geometry, flows);
+  return flow;
+}
+
+/** {@link flowInPipe} into a record that the caller keeps, for loops over all pipes. */
+export function fillFlow(
+  flow: FlowRecord,
+  tree: ReturnTree,
+  pipe: number,
+  geometry: PipeGeometry,
+  flows: FlowAndEnergy & { readonly ambientEnthalpyJKg: number },
+): void {
+  flow.massFlowKgS = flows.pipeFlowKgS[pipe] as number;
+  flow.inletEnthalpyJKg = flows.enthalpyJKg[inletNode(tree, pipe)] as number;
+  flow.heatLossWM = geometry.heatLossWM;
+  flow.ambientEnthalpyJKg = flows.ambientEnthalpyJKg;
 }

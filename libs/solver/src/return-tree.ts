@@ -1,6 +1,5 @@
-import { compareIds, type NetworkFile } from '@riseback/network';
+import { compareIds, type NetworkFile, type PipeEnds } from '@riseback/network';
 import { pipesAtNode } from './mesh-network';
-import type { PipeEnds } from './pipe-ends';
 
 /**
  * The network as trees that drain to nodes of fixed pressure (receivers and flash vessels), by index in the file's order, and the

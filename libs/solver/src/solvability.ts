@@ -1,10 +1,14 @@
-import { fileFindings, fromFile, solvablePart, type NetworkFile, type PipeRun } from '@riseback/network';
+import { fileFindings, fromFile, solvablePart, type NetworkFile, type PipeEnds, type PipeRun } from '@riseback/network';
 import { insideDiameterM, type PipeGeometry } from './pipe-geometry';
 import type { ProblemError } from './refusal';
 
 /** What a solve of the whole network cannot pass over, each with its place. */
-export function mistakesIn(file: NetworkFile, geometries: readonly (PipeGeometry | undefined)[]): ProblemError[] {
-  const found = fileFindings(file)
+export function mistakesIn(
+  file: NetworkFile,
+  ends: PipeEnds,
+  geometries: readonly (PipeGeometry | undefined)[],
+): ProblemError[] {
+  const found = fileFindings(file, ends)
     .filter(({ severity }) => severity === 'error')
     .map(({ pointer, what, remedy }) => ({ pointer, detail: `${what}. ${remedy}` }));
   return [...found, ...impossiblePipes(file, geometries)];

@@ -1,11 +1,10 @@
-import type { FileCase, NetworkFile } from '@riseback/network';
+import { pipeEnds, type FileCase, type NetworkFile } from '@riseback/network';
 import { NoConvergenceError } from '@riseback/numerics';
 import { assembleResult } from './assemble-result';
 import { ElementFailure } from './element-failure';
 import { ambientLiquidEnthalpyJKg } from './flow-and-energy';
 import { stateWithOpenTraps } from './open-traps';
 import { findCase, openWithoutOrifice, operatingNodes } from './operating-case';
-import { pipeEnds } from './pipe-ends';
 import { pipeGeometries } from './pipe-geometry';
 import { MARCH_TOLERANCE_PA, type GradientEvaluation } from './pipe-march';
 import { noSolution, notAvailable, probableInMeshes, unknownCase, unsolvable, type Refusal } from './refusal';
@@ -38,7 +37,7 @@ export function solveNetwork(file: NetworkFile, options: SolveOptions): SolveRes
   if (operatingCase === undefined) return unknownCase(file, options.caseId ?? '');
   const ends = pipeEnds(file);
   const geometries = pipeGeometries(file, ends);
-  const mistakes = options.partial ? [] : mistakesIn(file, geometries);
+  const mistakes = options.partial ? [] : mistakesIn(file, ends, geometries);
   const isSound = mistakes.length === 0 && !options.partial ? undefined : soundPipes(file, geometries);
   const tree = returnTree(file, ends, isSound);
   const unavailable = probableInMeshes(file, tree);
