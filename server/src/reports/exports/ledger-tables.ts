@@ -1,6 +1,17 @@
-import type { SolveResult } from '@riseback/contracts';
-import { ledger, type LedgerEntry, liftProfile, type ProfilePoint, type WalkedResult } from '@riseback/solver';
-import { plainNumber, quantityCell, type ReportColumn, type ReportTable, tableOf } from './report-table';
+import type { SolveResult, TrapResult } from '@riseback/contracts';
+import { ledgerModel, type LedgerModel, valueOf } from '@riseback/figures';
+import { fromFile } from '@riseback/network';
+import { ledger, liftProfile, type ProfilePoint, type WalkedResult } from '@riseback/solver';
+import { displayUnit } from '@riseback/units';
+import {
+  decimalsOf,
+  plainNumber,
+  type ReportColumn,
+  type ReportTable,
+  type TableCell,
+  type TableColumn,
+  tableOf,
+} from './report-table';
 import type { SolvedCase } from './solved-cases';
 import { nameOfElement, type TableSource } from './table-source';
 
@@ -8,11 +19,6 @@ import { nameOfElement, type TableSource } from './table-source';
 export interface ToldWay {
   readonly trapId: string;
   readonly solved: SolvedCase & { readonly result: SolveResult };
-}
-
-interface LedgerLine extends LedgerEntry {
-  readonly way: ToldWay;
-  readonly no: number;
 }
 
 interface ProfileLine extends ProfilePoint {
@@ -25,51 +31,73 @@ export function ledgerTables(source: TableSource, ways: readonly ToldWay[]): Rep
 }
 
 function ledgerTable(source: TableSource, ways: readonly ToldWay[]): ReportTable {
-  const { file, units } = source;
-  const name = (id: string) => nameOfElement(source, id);
-  const columns: readonly ReportColumn<LedgerLine>[] = [
-    { title: 'Trap', value: ({ way }) => name(way.trapId) },
-    { title: 'Case', value: ({ way }) => way.solved.name },
-    { title: 'No.', quantity: 'count', value: ({ no }) => no },
-    { title: 'Element', value: ({ pipeId }) => name(pipeId) },
-    { title: 'Bore', quantity: 'diameter', value: ({ insideDiameterM }) => insideDiameterM },
-    { title: 'Length', quantity: 'length', value: ({ lengthM }) => lengthM },
-    { title: 'Rise', quantity: 'length', value: ({ riseM }) => riseM },
-    { title: 'Fall', quantity: 'length', value: ({ fallM }) => fallM },
-    { title: 'Flow', quantity: 'massFlow', value: ({ massFlowKgS }) => massFlowKgS },
-    { title: 'Flash steam', quantity: 'quality', value: ({ quality }) => Math.max(0, quality) },
-    { title: 'Static', quantity: 'pressureDifference', value: ({ staticPa }) => staticPa },
-    { title: 'Friction', quantity: 'pressureDifference', value: ({ frictionPa }) => frictionPa },
-    { title: 'Flash', quantity: 'pressureDifference', value: ({ flashPa }) => flashPa },
-    { title: 'Running', quantity: 'pressure', value: ({ runningPressurePa }) => runningPressurePa },
-    { title: 'Hand check adds', quantity: 'pressureDifference', value: ({ handCheckPa }) => handCheckPa },
-    { title: 'Hand check running', quantity: 'pressure', value: ({ handCheckRunningPa }) => handCheckRunningPa },
-  ];
-  const blank = (titles: Readonly<Record<string, ReturnType<typeof plainNumber> | string>>) =>
-    columns.map(({ title }) => titles[title]);
+  const document = fromFile(source.file);
   const rows = ways.flatMap((way) => {
-    const { result, name: caseName } = way.solved;
-    const trap = result.traps.find(({ id }) => id === way.trapId);
+    const trap = way.solved.traps.get(way.trapId);
     if (trap === undefined) return [];
-    const lines = ledger(file, walked(result), way.trapId).map((entry, i): LedgerLine => ({
-      ...entry,
-      way,
-      no: i + 1,
-    }));
-    const opening = quantityCell(trap.receiverPressurePa, 'pressure', units);
-    return [
-      blank({
-        Trap: name(way.trapId),
-        Case: caseName,
-        'No.': plainNumber(0),
-        Element: 'Opening: where the way ends',
-        Running: opening,
-        'Hand check running': opening,
-      }),
-      ...tableOf('', columns, lines, units).rows,
-    ];
+    const entries = ledger(source.file, walked(way.solved.result), way.trapId);
+    const account = ledgerModel(entries, trap, document, source.units);
+    const head = [nameOfElement(source, way.trapId), way.solved.name];
+    return accountRows(account, endName(source, trap)).map((cells) => [...head, ...cells]);
   });
-  return { ...tableOf('Ledgers', columns, [], units), rows };
+  return { name: 'Ledgers', columns: ledgerColumns(source), rows };
+}
+
+function ledgerColumns({ units: { system } }: TableSource): TableColumn[] {
+  const length = displayUnit('length', system);
+  const adds = displayUnit('pressureDifference', system);
+  const running = displayUnit('pressure', system);
+  return [
+    ...['Trap', 'Case', 'No.', 'Element', 'Place', 'Bore'].map((title) => ({ title, unit: '' })),
+    ...['Length', 'Rise', 'Fall'].map((title) => ({ title, unit: length })),
+    { title: 'Flow', unit: displayUnit('massFlow', system) },
+    { title: 'Flash steam', unit: displayUnit('quality', system) },
+    ...['Static', 'Friction', 'Flash'].map((title) => ({ title, unit: adds })),
+    { title: 'Running', unit: running },
+    { title: 'Hand check adds', unit: adds },
+    { title: 'Hand check running', unit: running },
+  ];
+}
+
+/** Rounded as the account is printed, so that every column adds up to its closing line as it does on paper. */
+function accountRows({ opening, rows, closing }: LedgerModel, end: string): TableCell[][] {
+  const nothing = (count: number): undefined[] => Array.from({ length: count }, () => undefined);
+  return [
+    [undefined, end, 'Opening', ...nothing(9), printed(opening), undefined, printed(opening)],
+    ...rows.map((row): TableCell[] => [
+      plainNumber(row.no),
+      row.element,
+      row.place === '' ? undefined : row.place,
+      row.bore,
+      ...[row.length, row.up, row.down, row.flow, row.flash, row.static, row.friction, row.flashSteam].map(printed),
+      ...[row.running, row.handAdds, row.handRunning].map(printed),
+    ]),
+    [
+      ...nothing(2),
+      'Back pressure',
+      undefined,
+      ...[closing.length, closing.up, closing.down].map(printed),
+      ...nothing(2),
+      ...[closing.static, closing.friction, closing.flashSteam].map(printed),
+      ...[closing.running, closing.handAdds, closing.handRunning].map(printed),
+    ],
+  ];
+}
+
+function printed(number: string): TableCell {
+  return /\d/.test(number) ? { number: valueOf(number), decimals: decimalsOf(number) } : undefined;
+}
+
+/** The node that the last pipe of the walk runs into, whichever way its arrow points. */
+export function endOfWalk({ pipes, nodes }: TableSource, { walk }: TrapResult): string {
+  const last = pipes.get(walk.at(-1) ?? '');
+  if (last === undefined) return '';
+  const isEnd = (id: string) => ['receiver', 'flashVessel'].includes(nodes.get(id)?.kind ?? '');
+  return isEnd(last.to) ? last.to : last.from;
+}
+
+function endName(source: TableSource, trap: TrapResult): string {
+  return nameOfElement(source, endOfWalk(source, trap));
 }
 
 function profileTable(source: TableSource, ways: readonly ToldWay[]): ReportTable {

@@ -4,6 +4,8 @@ import { displayUnit, type DisplayUnits, formatQuantity, type QuantityKind, toDi
 export interface NumberCell {
   readonly number: number;
   readonly decimals: number;
+  /** As the screen prints it, to the last digit. */
+  readonly printed?: string;
 }
 export type TableCell = string | NumberCell | undefined;
 
@@ -54,9 +56,11 @@ export function tableOf<R>(
 }
 
 export function quantityCell(si: number, quantity: QuantityKind, units: DisplayUnits): NumberCell {
+  const printed = formatQuantity(si, quantity, units);
   return {
     number: Number(toDisplay(si, quantity, units).toPrecision(DIGITS)),
-    decimals: decimalsOf(formatQuantity(si, quantity, units)),
+    decimals: decimalsOf(printed),
+    printed,
   };
 }
 
@@ -73,7 +77,8 @@ function unitOf<R>({ quantity, unit }: ReportColumn<R>, { system }: DisplayUnits
   return quantity === undefined ? (unit ?? '') : displayUnit(quantity, system);
 }
 
-function decimalsOf(printed: string): number {
+/** Of a number as it is printed. */
+export function decimalsOf(printed: string): number {
   const point = printed.indexOf('.');
   return point < 0 ? 0 : printed.length - point - 1;
 }

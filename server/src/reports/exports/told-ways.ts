@@ -1,5 +1,5 @@
 import type { SolveResult, TrapResult } from '@riseback/contracts';
-import type { ToldWay } from './ledger-tables';
+import { endOfWalk, type ToldWay } from './ledger-tables';
 import type { SolvedCase } from './solved-cases';
 import type { TableSource } from './table-source';
 
@@ -13,7 +13,7 @@ export function toldWays(source: TableSource, cases: readonly SolvedCase[], want
   const ways = highestOfTraps(cases.filter(hasResult));
   const governing = new Map<string, { readonly way: ToldWay; readonly backPressurePa: number }>();
   for (const { way, trap } of ways.values()) {
-    const end = endOfWay(source, trap);
+    const end = endOfWalk(source, trap);
     const before = governing.get(end);
     if (before === undefined || trap.backPressurePa > before.backPressurePa)
       governing.set(end, { way, backPressurePa: trap.backPressurePa });
@@ -41,14 +41,6 @@ function highestOfTraps(cases: readonly WithResult[]): Map<string, HighestOfTrap
     }
   }
   return highest;
-}
-
-/** The node that the last pipe of the walk runs into, whichever way its arrow points. */
-function endOfWay({ pipes, nodes }: TableSource, { walk }: TrapResult): string {
-  const last = pipes.get(walk.at(-1) ?? '');
-  if (last === undefined) return '';
-  const isEnd = (id: string) => ['receiver', 'flashVessel'].includes(nodes.get(id)?.kind ?? '');
-  return isEnd(last.to) ? last.to : last.from;
 }
 
 function hasResult(solved: SolvedCase): solved is WithResult {
