@@ -1,5 +1,5 @@
 import { resolve } from 'node:path';
-import { databasePathOf, ConfigError } from '../src/platform/config';
+import { ConfigError, databasePathOf, signingKeyFileOf } from '../src/platform/config';
 import { BackupRefusedError } from '../src/platform/backup/backup-control';
 import { UnusableBackupError } from '../src/platform/backup/sealed-copy';
 import { UnusableDatabaseError } from '../src/platform/db/unusable-database';
@@ -12,6 +12,12 @@ const MENDABLE = [ConfigError, BackupRefusedError, UnusableBackupError, Unusable
 export function databasePath(): string {
   // eslint-disable-next-line no-restricted-syntax -- read here for every command, as main.ts does for the server
   return databasePathOf(process.env);
+}
+
+/** The signing key's place, as for the server; undefined beside a database in memory. */
+export function signingKeyFile(): string | undefined {
+  // eslint-disable-next-line no-restricted-syntax -- as above
+  return signingKeyFileOf(process.env);
 }
 
 /** npm runs its scripts in the project's folder; a file is named from where the person stands. */

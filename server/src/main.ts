@@ -15,7 +15,7 @@ import { PasswordThreads } from './platform/auth/password-threads';
 import { HASHES_AT_ONCE, Passwords } from './platform/auth/passwords';
 import { keepBackups } from './platform/backup/keep-backups';
 import { ConfigError, readConfig, type Config } from './platform/config';
-import { openDatabase, UnusableDatabaseError } from './platform/db/database';
+import { openDatabase, type Database, UnusableDatabaseError } from './platform/db/database';
 import { DatabaseInUseError, holdExclusively } from './platform/exclusive-use';
 import { exitOnUncaught, shutDownGracefully } from './platform/graceful-shutdown';
 import { createLog, logDestination, logFileOf } from './platform/log';
@@ -23,6 +23,9 @@ import { boundedServer } from './platform/http/http-server';
 import { Metrics } from './platform/metrics/metrics';
 import { serveMetrics } from './platform/metrics/metrics-server';
 import { ReportThreads } from './reports/report-threads';
+import { RevisionRepository } from './revisions/revision-repository';
+import { passingKeys, type SignatureKeys } from './revisions/signature-keys';
+import { openSigningKey } from './revisions/signing-key-file';
 import { SolveThreads } from './solve/solve-threads';
 
 /** For the person at the terminal; the log has its own place and form. */
@@ -55,7 +58,8 @@ async function start(): Promise<void> {
   const observe = metrics.requestTimer();
   const reportPort = new ReportThreads();
   const receivedMails = config.mail.kind === 'sink' ? new ReceivedMails(config.mail.folder) : undefined;
-  const parts = { db, config, log, newId: randomUUID, now, solver, reportPort, hasher, observe, receivedMails };
+  const keys = openKeys(config, db);
+  const parts = { db, config, keys, log, newId: randomUUID, now, solver, reportPort, hasher, observe, receivedMails };
   const app = buildApp({ ...parts, webFolder: builtPages() });
   const people = new PeopleRepository(db);
   if (config.production) {
@@ -93,6 +97,16 @@ async function start(): Promise<void> {
   if (config.production) sayFirstAdministrator(people);
   else saySignIns(people);
   say(`Riseback: ${address}`);
+}
+
+/** In production a missing key is not made anew once something was signed: whoever lost it is to know. */
+function openKeys({ signingKeyFile, production }: Config, db: Database): SignatureKeys {
+  if (signingKeyFile === undefined) return passingKeys();
+  const opened = openSigningKey(signingKeyFile, !production || !new RevisionRepository(db).hasSignatures());
+  if (opened.isNew) {
+    say(`A key to sign revisions with was made: ${signingKeyFile}. Keep a copy of it, apart from the database.`);
+  }
+  return opened;
 }
 
 /** Their password is printed in the documentation. */

@@ -14,6 +14,8 @@ export interface Config {
   readonly databasePath: string;
   readonly production: boolean;
   readonly sessionSecret: string;
+  /** The file of the key that revisions are signed with; undefined for a database in memory, which has one of its own. */
+  readonly signingKeyFile: string | undefined;
   /** The address people open when it is not `http://localhost:PORT`, such as behind a proxy that ends TLS. */
   readonly origin: URL | undefined;
   /** Express's "trust proxy": how many proxies stand before the server, or their addresses. */
@@ -43,6 +45,7 @@ const Settings = z.object({
   NODE_ENV: z.enum(['development', 'test', 'production']).default('development'),
   RISEBACK_SESSION_SECRET: z.string().optional(),
   RISEBACK_SESSION_SECRET_FILE: z.string().min(1).optional(),
+  RISEBACK_SIGNING_KEY_FILE: z.string().min(1).optional(),
   RISEBACK_ORIGIN: z.string().optional(),
   TRUST_PROXY: z.string().optional(),
   RISEBACK_REQUESTS_PER_MINUTE: z.coerce.number().int().min(60).max(1e9).default(6_000),
@@ -66,6 +69,7 @@ const MUST_BE: Readonly<Record<keyof Settings, string>> = {
   NODE_ENV: 'development, test or production',
   RISEBACK_SESSION_SECRET: 'a text of at least 32 random bytes',
   RISEBACK_SESSION_SECRET_FILE: 'the path of a file with the secret',
+  RISEBACK_SIGNING_KEY_FILE: 'the path of the file with the key that revisions are signed with',
   RISEBACK_ORIGIN: 'an origin such as https://riseback.example',
   TRUST_PROXY: 'a number of proxies, or their addresses separated by commas',
   RISEBACK_REQUESTS_PER_MINUTE: 'a whole number, 60 at least',
@@ -92,6 +96,7 @@ export function readConfig(env: Readonly<Record<string, string | undefined>>): C
     databasePath,
     production,
     sessionSecret: readSecret(settings, production, databasePath),
+    signingKeyFile: resolveSigningKey(settings),
     origin,
     trustProxy: readTrustProxy(settings.TRUST_PROXY),
     requestsPerMinute: settings.RISEBACK_REQUESTS_PER_MINUTE,
@@ -108,6 +113,18 @@ export function readConfig(env: Readonly<Record<string, string | undefined>>): C
 /** The one setting that commands on the machine share with the server. @throws ConfigError as readConfig */
 export function databasePathOf(env: Readonly<Record<string, string | undefined>>): string {
   return resolveDatabase(parseSettings(env));
+}
+
+/** As `databasePathOf`. */
+export function signingKeyFileOf(env: Readonly<Record<string, string | undefined>>): string | undefined {
+  return resolveSigningKey(parseSettings(env));
+}
+
+function resolveSigningKey(settings: Settings): string | undefined {
+  const { RISEBACK_SIGNING_KEY_FILE: file } = settings;
+  if (file !== undefined) return resolve(file);
+  const databasePath = resolveDatabase(settings);
+  return databasePath === ':memory:' ? undefined : join(dirname(databasePath), 'signing-key.pem');
 }
 
 function readBackups(settings: Settings): ScheduleSettings | undefined {

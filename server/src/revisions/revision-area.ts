@@ -12,17 +12,10 @@ import { RevisionMails } from './revision-mails';
 import { RevisionRepository } from './revision-repository';
 import { revisionRoutes } from './revision-routes';
 import { RevisionService, type RevisionListener } from './revision-service';
-import { SigningKey } from './signing-key';
+import { passingKeys, type SignatureKeys } from './signature-keys';
 import { signingRoutes } from './signing-routes';
 import { SigningService } from './signing-service';
 import { VerificationService } from './verification-service';
-import { VerifyingKeys } from './verifying-keys';
-
-/** What signatures are made with, and what with they are verified. */
-export interface SignatureKeys {
-  readonly signingKey: SigningKey;
-  readonly verifyingKeys: VerifyingKeys;
-}
 
 export interface RevisionAreaParts {
   readonly db: Database;
@@ -61,9 +54,4 @@ export function buildRevisionArea(parts: RevisionAreaParts): RevisionArea {
   const heads = () => (db.$client.memory ? [] : readAuditHeads(auditHeadLogOf(db.$client.name)));
   const verification = new VerificationService(revisions, { db, keys: verifyingKeys, heads, solver, engineVersion });
   return { service, routes: [...revisionRoutes(service), ...signingRoutes(signing, verification, verifyingKeys)] };
-}
-
-function passingKeys(): SignatureKeys {
-  const signingKey = SigningKey.generate();
-  return { signingKey, verifyingKeys: new VerifyingKeys([signingKey.publicKey]) };
 }

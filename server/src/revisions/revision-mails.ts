@@ -1,38 +1,44 @@
 import type { MailPurpose } from '@riseback/contracts';
 import { roleMay } from '@riseback/contracts';
 import type { MailQueue } from '../mail/mail-queue';
-import type { NetworkAccess } from '../platform/auth/access';
 import type { Queries } from '../platform/db/database';
 import type { RevisionWithHistory } from './revision-history';
 import type { RevisionRepository } from './revision-repository';
+
+/** Who causes a mail, and where. */
+export interface MailCause {
+  readonly siteId: string;
+  readonly networkId: string;
+  readonly person: { readonly id: string; readonly name: string };
+}
 
 /** Tells those concerned by mail what became of a revision, in the transaction in which it does. */
 export class RevisionMails {
   constructor(private readonly queue: MailQueue) {}
 
   /** To all who may sign it. */
-  submitted(tx: Queries, revisions: RevisionRepository, access: NetworkAccess, to: RevisionWithHistory, note: string) {
-    const reviewers = revisions.peopleOfSite(access.siteId).filter(({ role }) => roleMay(role, 'sign'));
+  submitted(tx: Queries, revisions: RevisionRepository, cause: MailCause, to: RevisionWithHistory, note: string) {
+    const reviewers = revisions.peopleOfSite(cause.siteId).filter(({ role }) => roleMay(role, 'sign'));
     const recipients = reviewers.map(({ id }) => id);
-    this.send(tx, revisions, access, { purpose: 'submitted', revision: to, recipients, note });
+    this.send(tx, revisions, cause, { purpose: 'submitted', revision: to, recipients, note });
   }
 
   /** To those whose work it is. */
   judged(
     tx: Queries,
     revisions: RevisionRepository,
-    access: NetworkAccess,
+    cause: MailCause,
     revision: RevisionWithHistory,
     { purpose, note }: { readonly purpose: 'returned' | 'approved'; readonly note: string },
   ) {
     const recipients = authorsOf(revision);
-    this.send(tx, revisions, access, { purpose, revision, recipients, note });
+    this.send(tx, revisions, cause, { purpose, revision, recipients, note });
   }
 
   private send(
     tx: Queries,
     revisions: RevisionRepository,
-    { siteId, networkId, person }: NetworkAccess,
+    { siteId, networkId, person }: MailCause,
     mail: {
       readonly purpose: MailPurpose;
       readonly revision: RevisionWithHistory;

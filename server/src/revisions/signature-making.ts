@@ -1,4 +1,4 @@
-import { Role, type SignatureMeaning } from '@riseback/contracts';
+import type { Role, SignatureMeaning } from '@riseback/contracts';
 import { statementText, type Signer } from '@riseback/revisions';
 import { sha256 } from './hashes';
 import { stateOf, type RevisionWithHistory } from './revision-history';

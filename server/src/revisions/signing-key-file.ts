@@ -2,12 +2,11 @@ import { appendFileSync, existsSync, mkdirSync, readFileSync, writeFileSync } fr
 import { dirname } from 'node:path';
 import { ConfigError } from '../platform/config';
 import { readSecretFile } from '../platform/secret-file';
+import type { SignatureKeys } from './signature-keys';
 import { SigningKey } from './signing-key';
 import { VerifyingKeys } from './verifying-keys';
 
-export interface OpenedKeys {
-  readonly signingKey: SigningKey;
-  readonly verifyingKeys: VerifyingKeys;
+export interface OpenedKeys extends SignatureKeys {
   /** There was none before. */
   readonly isNew: boolean;
 }

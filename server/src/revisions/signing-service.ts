@@ -9,12 +9,12 @@ import type { OneTimeCodes } from '../platform/auth/one-time-codes';
 import { conflict, forbidden, unprocessable } from '../platform/problem';
 import { resultsHashOf } from './frozen-revision';
 import { sha256 } from './hashes';
-import { caseNameOf } from './outcome-summary';
 import type { RevisionWithHistory } from './revision-history';
 import type { RevisionMails } from './revision-mails';
 import type { RevisionRepository } from './revision-repository';
 import { demandDeed, type RevisionListener, type RevisionService } from './revision-service';
 import { recordSignature } from './signature-making';
+import { signedMatter } from './signed-matter';
 import type { SigningKey } from './signing-key';
 
 export interface SigningParts {
@@ -123,15 +123,12 @@ export class SigningService {
     demandWhole(revisions, revision);
     const summary = this.parts.service.outcomeSummary(row.id);
     if (summary === undefined) throw broken(row.letter, 'results');
-    const { verdicts, leftOut } = summary;
     const file = this.parts.service.file(row);
     const openComments = revisions.openComments(row.networkId).get(row.id) ?? 0;
-    const { letter, title, networkVersion, fileHash, resultsHash, engineVersion } = row;
-    const sentences = signatureSentences(meaning, {
-      ...{ personName: person.name, role, networkName: file.name, networkVersion, letter, title },
-      ...{ fileHash, resultsHash, engineVersion, verdicts, openComments, leftOut },
-      unsolvedCases: summary.unsolvedCases.map((caseId) => caseNameOf(file, caseId)),
-    });
+    const signer = { name: person.name, role };
+    const sentences = signatureSentences(meaning, signedMatter({ record: row, file, summary, signer, openComments }));
+    const { fileHash, resultsHash, engineVersion } = row;
+    const { verdicts } = summary;
     // all that the signature would rest on: whatever of it changes makes another token
     const shown = {
       personId: person.id,
