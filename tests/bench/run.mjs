@@ -1,5 +1,5 @@
 // npm run bench: ratios measured in one run on this machine. Installs what is missing and builds the server, then measures.
-//   --only solver | api | browser   one part
+//   --only solver | reports | api | browser   one part
 //   --minutes N           how long the fifty users work (1)
 import { parseArgs } from 'node:util';
 import { demandNode, ensureInstalled } from '../../server/install.mjs';
@@ -9,6 +9,7 @@ const { values: options } = parseArgs({
 });
 const benches = {
   solver: async () => (await import('./solver-bench.ts')).solverBench(),
+  reports: async () => (await import('./report-bench.ts')).reportBench(),
   api: async () => {
     await (await import('../../server/build.mjs')).ensureBuilt(say);
     return (await import('./api-bench.ts')).apiBench({ minutes: Number(options.minutes) });
