@@ -1,42 +1,60 @@
+import type { Role } from '@riseback/contracts';
 import { fromFile, layoutMissingPositions, readNetworkFile, type NetworkDocument } from '@riseback/network';
 import { LibraryRepository } from '../src/library/library-repository';
 import { LibraryService } from '../src/library/library-service';
-import type { NetworkService } from '../src/networks/network-service';
+import { NetworkRepository } from '../src/networks/network-repository';
+import { NetworkService } from '../src/networks/network-service';
 import { PeopleRepository } from '../src/people/people-repository';
 import { appendAudit } from '../src/platform/db/audit';
 import type { Database } from '../src/platform/db/database';
 import { people } from '../src/platform/db/schema';
+import type { SigningKey } from '../src/revisions/signing-key';
 import { SiteRepository } from '../src/sites/site-repository';
+import type { SolvePort } from '../src/solve/solve-port';
 import { DEMO_PASSWORD, DEMO_PEOPLE } from './demo-people';
 import { seedLibrary } from './demo-library';
+import { demoHistory, seedRevisions, solveHistory, type DemoPersonHere } from './demo-revisions';
 import ternQuay from './tern-quay.json';
 
 export interface DemoParts {
   readonly db: Database;
-  readonly networks: Pick<NetworkService, 'createFor'>;
+  readonly solver: SolvePort;
+  /** The demo's own signature is made with the installation's key. */
+  readonly key: SigningKey;
   readonly hashPassword: (password: string) => Promise<string>;
   readonly newId: () => string;
   readonly now: () => Date;
 }
 
+/** Its solves are stored with it, and nobody has it open yet. */
+const NO_SOLVES = { changed: () => undefined, summary: () => ({ state: 'stale' as const }) };
+const NOBODY_TOLD = { edited: () => undefined };
+
 /**
- * Fills a new database with the demo: one site, one person for each role, a trap library, one network, whose solve starts at once. All of
- * it or nothing; a database that holds a site or a person already is left as it is.
+ * Fills a new database with the demo: one site, one person for each role, a trap library, one network with its results, and two revisions
+ * of it. All of it or nothing; a database that holds a site or a person already is left as it is.
  * @returns whether it was filled
  */
-export async function seedDemo({ db, networks, hashPassword, newId, now }: DemoParts): Promise<boolean> {
+export async function seedDemo({ db, solver, key, hashPassword, newId, now }: DemoParts): Promise<boolean> {
   if (!isNew(db)) return false;
   // one hash for all: each takes a third of a second, and everyone has the same password anyway
-  const passwordHash = await hashPassword(DEMO_PASSWORD);
+  const [passwordHash, solved] = await Promise.all([
+    hashPassword(DEMO_PASSWORD),
+    solveHistory(solver, demoHistory(demoNetwork())),
+  ]);
   return db.transaction(
     () => {
       // someone may have come in while the hash was made
       if (!isNew(db)) return false;
       const siteId = seedSite(db, newId(), now());
-      const [designerId] = seedPeople(db, siteId, passwordHash, newId, now());
+      const people = seedPeople(db, siteId, passwordHash, newId, now());
+      const designer = withRole(people, 'designer');
       const library = new LibraryService(new LibraryRepository(db), newId, now);
-      const plant = seedLibrary(library, siteId, { id: designerId }, demoNetwork());
-      networks.createFor(siteId, { id: designerId }, plant);
+      const history = demoHistory(seedLibrary(library, siteId, designer, demoNetwork()));
+      const networks = new NetworkService(new NetworkRepository(db), NO_SOLVES, NOBODY_TOLD, newId, now);
+      const reviewer = withRole(people, 'reviewer');
+      const parts = { db, networks, key, newId, now, siteId, designer, reviewer };
+      seedRevisions(parts, history, solved);
       return true;
     },
     { behavior: 'immediate' },
@@ -55,16 +73,17 @@ function seedSite(db: Database, siteId: string, at: Date): string {
   return siteId;
 }
 
+/** @returns those with a role at the site */
 function seedPeople(
   db: Database,
   siteId: string,
   passwordHash: string,
   newId: () => string,
   at: Date,
-): [string, ...string[]] {
+): DemoPersonHere[] {
   const repository = new PeopleRepository(db);
   const time = at.toISOString();
-  const seed = ({ email, name, role }: (typeof DEMO_PEOPLE)[number]): string => {
+  return DEMO_PEOPLE.flatMap(({ email, name, role }) => {
     const id = newId();
     repository.insert(
       {
@@ -82,13 +101,16 @@ function seedPeople(
       },
       { at, action: 'person.create', subject: id },
     );
-    if (role !== undefined) {
-      repository.giveRole(id, siteId, role, null, { at, siteId, action: 'role.give', subject: id, details: { role } });
-    }
-    return id;
-  };
-  const [first, ...others] = DEMO_PEOPLE;
-  return [seed(first), ...others.map(seed)];
+    if (role === undefined) return [];
+    repository.giveRole(id, siteId, role, null, { at, siteId, action: 'role.give', subject: id, details: { role } });
+    return [{ id, name, role }];
+  });
+}
+
+function withRole(people: readonly DemoPersonHere[], role: Role): DemoPersonHere {
+  const person = people.find((each) => each.role === role);
+  if (person === undefined) throw new Error(`the demo has no ${role}`);
+  return person;
 }
 
 function demoNetwork(): NetworkDocument {

@@ -66,7 +66,7 @@ async function start(): Promise<void> {
     refuseDemoPeople(people);
   } else {
     const hashPassword = (password: string) => new Passwords(hasher).hash(password);
-    const seeded = await seedDemo({ db, networks: app.networks, hashPassword, newId: randomUUID, now });
+    const seeded = await seedDemo({ db, solver, key: keys.signingKey, hashPassword, newId: randomUUID, now });
     if (seeded) say('The database is new: the demo site is in it.');
   }
 

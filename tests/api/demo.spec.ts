@@ -1,13 +1,18 @@
 import { randomUUID } from 'node:crypto';
 import { solveNetwork, isRefusal } from '@riseback/solver';
-import { readNetworkFile, type NetworkFile, type Position } from '@riseback/network';
+import { readNetworkFile, toFile, type NetworkFile, type Position } from '@riseback/network';
 import { describe, expect, it } from 'vitest';
 import { DEMO_PEOPLE } from '../../server/demo/demo-people';
 import { seedDemo } from '../../server/demo/seed-demo';
 import ternQuay from '../../server/demo/tern-quay.json';
 import { NetworkRepository } from '../../server/src/networks/network-repository';
-import { NetworkService } from '../../server/src/networks/network-service';
 import { openDatabase, type Database } from '../../server/src/platform/db/database';
+import { SigningKey } from '../../server/src/revisions/signing-key';
+import { verifyRevision } from '../../server/src/revisions/verification';
+import { VerifyingKeys } from '../../server/src/revisions/verifying-keys';
+import { ENGINE_VERSION } from '../../server/src/solve/engine-version';
+import { solveCases } from '../../server/src/solve/solve-cases';
+import type { SolvePort } from '../../server/src/solve/solve-port';
 
 function plant(): NetworkFile {
   const read = readNetworkFile(ternQuay);
@@ -16,23 +21,20 @@ function plant(): NetworkFile {
 }
 
 function partsWith(db: Database) {
-  const changed: string[] = [];
-  const solves = {
-    changed: ({ networkId }: { networkId: string }) => changed.push(networkId),
-    summary: () => ({ state: 'stale' as const }),
+  const solver: SolvePort = {
+    solve: (_key, job) => Promise.resolve({ end: 'finished', outcomes: solveCases(job), solveMs: 1 }),
   };
   const now = () => new Date('2026-03-02T08:00:00.000Z');
-  const networks = new NetworkService(new NetworkRepository(db), solves, { edited: () => undefined }, randomUUID, now);
   const hashPassword = () => Promise.resolve('hash');
-  return { changed, parts: { db, networks, hashPassword, newId: randomUUID, now } };
+  return { db, solver, key: SigningKey.generate(), hashPassword, newId: randomUUID, now };
 }
 
 const count = (db: Database, table: string) => db.$client.prepare(`select count(*) from ${table}`).pluck().get();
 
 describe('seeding the demo', () => {
-  it('fills a new database once, and starts the solve', async () => {
+  it('fills a new database once, with results', async () => {
     const db = openDatabase(':memory:');
-    const { changed, parts } = partsWith(db);
+    const parts = partsWith(db);
     expect(await seedDemo(parts)).toBe(true);
     expect(await seedDemo(parts)).toBe(false);
     expect(await Promise.all([seedDemo(parts), seedDemo(parts)])).toEqual([false, false]);
@@ -41,13 +43,41 @@ describe('seeding the demo', () => {
     expect(count(db, 'memberships')).toBe(5);
     expect(count(db, 'networks')).toBe(1);
     expect(count(db, 'nodes')).toBe(plant().nodes.length);
-    expect(db.$client.prepare('select version from edits').pluck().all()).toEqual([1]);
-    expect(changed).toHaveLength(1);
+    const present = db.$client.prepare('select version, solver_hash from networks').get();
+    const solve = 'select count(*) from solves join networks using (solver_hash) where state = ?';
+    expect(present).toMatchObject({ version: 4 });
+    expect(db.$client.prepare(solve).pluck().get('finished')).toBe(1);
+  });
+
+  it('ends with the very network of its file', async () => {
+    const db = openDatabase(':memory:');
+    await seedDemo(partsWith(db));
+    const id = String(db.$client.prepare('select id from networks').pluck().get());
+    const document = new NetworkRepository(db).document(id);
+    if (document === undefined) throw new Error('the demo has a network');
+    expect(toFile(document)).toEqual(plant());
+  });
+
+  it('has a revision that the reviewer signed and one under review, and both verify', async () => {
+    const db = openDatabase(':memory:');
+    const parts = partsWith(db);
+    await seedDemo(parts);
+    const keys = new VerifyingKeys([parts.key.publicKey]);
+    const rows = db.$client.prepare('select id, letter from revisions order by letter').all() as { id: string }[];
+    expect(rows).toMatchObject([{ letter: 'A' }, { letter: 'B' }]);
+    const states = 'select state from revision_events where revision_id = ? order by seq';
+    const [a, b] = rows.map(({ id }) => db.$client.prepare(states).pluck().all(id));
+    expect(a).toEqual(['draft', 'underReview', 'approved']);
+    expect(b).toEqual(['draft', 'underReview']);
+    for (const { id } of rows) {
+      const how = { db, keys, heads: () => [], solver: parts.solver, engineVersion: ENGINE_VERSION };
+      expect(await verifyRevision(id, how)).toMatchObject({ sound: true });
+    }
   });
 
   it('happens once when two starts meet', async () => {
     const db = openDatabase(':memory:');
-    const { parts } = partsWith(db);
+    const parts = partsWith(db);
     const seeded = await Promise.all([seedDemo(parts), seedDemo(parts)]);
     expect(seeded.filter(Boolean)).toHaveLength(1);
     expect(count(db, 'sites')).toBe(1);
@@ -55,14 +85,14 @@ describe('seeding the demo', () => {
 
   it('leaves nothing behind when it fails half-way', async () => {
     const db = openDatabase(':memory:');
-    const { parts } = partsWith(db);
-    const networks = {
-      createFor: () => {
-        throw new Error('half-way');
-      },
+    const parts = partsWith(db);
+    // the last that it makes is the second revision
+    const now = () => {
+      if (count(db, 'revisions') === 2) throw new Error('half-way');
+      return parts.now();
     };
-    await expect(seedDemo({ ...parts, networks })).rejects.toThrow('half-way');
-    for (const table of ['sites', 'people', 'memberships', 'audit']) expect(count(db, table)).toBe(0);
+    await expect(seedDemo({ ...parts, now })).rejects.toThrow('half-way');
+    for (const table of ['sites', 'people', 'memberships', 'networks', 'audit']) expect(count(db, table)).toBe(0);
   });
 
   it('gives each role one person, and the stranger none', () => {

@@ -2,7 +2,14 @@ import type { CaseOutcome, Problem, SolveSummary } from '@riseback/contracts';
 import { toFile, type NetworkDocument } from '@riseback/network';
 import { bandsInTime, caseIdsOf, withoutBands } from './solve-cases';
 import type { SolveJob, SolvePort } from './solve-port';
-import type { CaseVerdicts, EndedSolve, SolveInput, SolveRepository, StoredSolve } from './solve-repository';
+import type {
+  CaseVerdicts,
+  EndedSolve,
+  SolveInput,
+  SolveOverview,
+  SolveRepository,
+  StoredSolve,
+} from './solve-repository';
 
 /** A network as it stood after one of its versions. */
 export interface VersionedInput {
@@ -189,8 +196,7 @@ export class LiveSolves {
   }
 
   private store(input: VersionedInput, { startedAt, solveMs }: Pressures, outcomes: readonly CaseOutcome[]): void {
-    const overview = { solveMs, cases: outcomes.map(verdictsOf) };
-    this.solves.storeFinished(this.ended(input, startedAt), overview, outcomes);
+    this.solves.storeFinished(this.ended(input, startedAt), solvedOverview(outcomes, solveMs), outcomes);
     this.options.ended(input.networkId, input.solverHash, 'finished');
   }
 
@@ -230,6 +236,11 @@ class Pause {
 /** What a solve that did not come to its end says, in results and to those who asked for it. */
 export function solveFailed(detail: string): Problem {
   return { type: '/problems/solve-failed', title: 'The solve did not come to its end', status: 503, detail };
+}
+
+/** What is kept at hand of a solve. */
+export function solvedOverview(outcomes: readonly CaseOutcome[], solveMs: number): SolveOverview {
+  return { solveMs, cases: outcomes.map(verdictsOf) };
 }
 
 function verdictsOf(outcome: CaseOutcome): CaseVerdicts {
