@@ -20,7 +20,8 @@ const SIZES = [
 const PAGES: Readonly<Record<string, (network: string, empty: string) => readonly string[]>> = {
   'around the networks': (network) => {
     const site = network.replace(/\/networks\/.*/, '');
-    return ['/sites', site, `${site}/library`, `${site}/audit`, '/account', '/nowhere', '/unreachable'];
+    const ofSite = ['', '/library', '/audit', '/people', '/mails'].map((page) => `${site}${page}`);
+    return ['/sites', ...ofSite, '/account', '/nowhere', '/unreachable'];
   },
   'of the drawing': (network, empty) => [
     `${network}/drawing`,
@@ -43,15 +44,19 @@ const PAGES: Readonly<Record<string, (network: string, empty: string) => readonl
     `${network}/try?element=TR5`,
     `${network}/cases?case=rt5open`,
     `${network}/cases?show=compare`,
+    `${network}/report`,
     `${network}/method`,
     `${network}/method#check-stall`,
     ...['ledger', 'cases', 'try'].map((view) => `${empty}/${view}`),
   ],
 };
 
-test('no axe findings on the sign-in page, in both themes', async ({ page }) => {
-  await page.goto('/sign-in');
-  await expectNoFindings('/sign-in', page);
+test('no axe findings on the pages before one is signed in, in both themes', async ({ page }) => {
+  for (const path of ['/sign-in', '/forgotten-password', '/invitation', `/password-reset#${'A'.repeat(43)}`]) {
+    await page.goto(path);
+    await page.waitForLoadState('networkidle');
+    await expectNoFindings(path, page);
+  }
 });
 
 for (const [about, paths] of Object.entries(PAGES)) {
@@ -89,7 +94,8 @@ test('no page is wider than its window, on a phone and at a zoom of 200 %', asyn
       `${network}/cases?case=rt5open`,
       `${network}/cases?show=compare`,
       `${network}/try?element=TR5`,
-      `${network}/method`,
+      `${network}/report`,
+    `${network}/method`,
     ]) {
       await page.goto(path);
       await page.waitForLoadState('networkidle');

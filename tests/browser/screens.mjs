@@ -47,19 +47,19 @@ try {
     ],
   });
   // One sign-in for all looks: the server slows down guesses, and a person's session serves many windows.
-  const first = await browser.newContext();
-  await first.request.post(`${address}/api/session`, {
-    data: { email: 'designer@ternquay.example', password: 'demo-tern-quay' },
-  });
+  const first = await signedInContext(browser, 'designer');
   const signedIn = await first.storageState();
+  const administrator = await (await signedInContext(browser, 'admin')).storageState();
   const demo = await demoNetwork(first);
   const empty = await emptyNetwork(first, demo.siteId);
   for (const { name, ...look } of looks) {
     const context = await browser.newContext({ ...look, storageState: signedIn });
     const anonymous = await browser.newContext(look);
+    const administering = await browser.newContext({ ...look, storageState: administrator });
     for (const screen of screens(demo, empty)) {
       if (options.only !== undefined && !screen.name.includes(options.only)) continue;
-      const page = await (screen.anonymous ? anonymous : context).newPage();
+      const whose = screen.anonymous ? anonymous : screen.administrator ? administering : context;
+      const page = await whose.newPage();
       await page.goto(`${address}${screen.path}`);
       await page.waitForLoadState('networkidle');
       if (screen.act) await screen.act(page);
@@ -71,6 +71,7 @@ try {
     }
     await context.close();
     await anonymous.close();
+    await administering.close();
   }
   await browser.close();
 } finally {
@@ -82,8 +83,13 @@ function screens({ siteId, networkId, elements }, empty) {
   const network = `/sites/${siteId}/networks/${networkId}`;
   return [
     { name: 'sign-in', path: '/sign-in', anonymous: true },
+    { name: 'forgotten-password', path: '/forgotten-password', anonymous: true },
+    { name: 'invitation-spent', path: `/invitation#${'A'.repeat(43)}`, anonymous: true },
     { name: 'sites', path: '/sites' },
     { name: 'networks', path: `/sites/${siteId}` },
+    { name: 'people', path: `/sites/${siteId}/people`, administrator: true },
+    { name: 'people-closed', path: `/sites/${siteId}/people` },
+    { name: 'mails', path: `/sites/${siteId}/mails`, administrator: true, act: openFirstMail },
     { name: 'drawing', path: `${network}/drawing`, solved: true },
     { name: 'drawing-trap', path: `${network}/drawing?element=${elements.trap}`, solved: true },
     { name: 'drawing-pipe', path: `${network}/drawing?element=${elements.pipe}`, solved: true },
@@ -92,6 +98,7 @@ function screens({ siteId, networkId, elements }, empty) {
     { name: 'ledger', path: `${network}/ledger?element=${elements.trap}`, solved: true },
     { name: 'drawing-exchanger', path: `${network}/drawing?element=${elements.exchanger}`, solved: true },
     { name: 'try', path: `${network}/try`, solved: true },
+    { name: 'report', path: `${network}/report`, solved: true },
     { name: 'method', path: `${network}/method` },
     { name: 'method-section', path: `${network}/method#friction-friedel` },
     { name: 'cases', path: `${network}/cases?case=rt5open`, solved: true },
@@ -110,6 +117,12 @@ function screens({ siteId, networkId, elements }, empty) {
     { name: 'library', path: `/sites/${siteId}/library` },
     { name: 'not-found', path: '/nowhere' },
   ];
+}
+
+/** Where any came: the demo's own mails do. */
+async function openFirstMail(page) {
+  const mail = page.getByRole('region', { name: 'Received here' }).getByRole('link').first();
+  if ((await mail.count()) > 0) await mail.click();
 }
 
 async function beginGuide(page) {
@@ -134,6 +147,14 @@ async function failServer(page) {
     route.fulfill({ status: 500, contentType: 'application/problem+json', body: JSON.stringify(problem) }),
   );
   await page.reload();
+}
+
+async function signedInContext(browser, who) {
+  const context = await browser.newContext();
+  await context.request.post(`${address}/api/session`, {
+    data: { email: `${who}@ternquay.example`, password: 'demo-tern-quay' },
+  });
+  return context;
 }
 
 async function demoNetwork(context) {
