@@ -1,13 +1,13 @@
 import { ChangeDetectionStrategy, Component, computed, input, output } from '@angular/core';
 
-/** How many comments there are on something, and the way to them and to a new one. */
+/** The numbers of the open comments on something, and the way to them and to a new one. */
 @Component({
   selector: 'app-comment-button',
   changeDetection: ChangeDetectionStrategy.OnPush,
   template: `
-    @if (count() > 0 || mayComment()) {
-      <button type="button" [class.some]="count() > 0" [attr.aria-label]="spoken()" (click)="asked.emit()">
-        {{ count() > 0 ? words() : 'Comment' }}
+    @if (numbers().length > 0 || mayComment()) {
+      <button type="button" [class.some]="numbers().length > 0" [attr.aria-label]="spoken()" (click)="asked.emit()">
+        {{ words() }}
       </button>
     }
   `,
@@ -34,14 +34,15 @@ import { ChangeDetectionStrategy, Component, computed, input, output } from '@an
   `,
 })
 export class CommentButton {
-  readonly count = input(0);
+  readonly numbers = input<readonly number[]>([]);
   /** What it is about: the element's tag. */
   readonly about = input.required<string>();
   readonly mayComment = input(false);
   readonly asked = output();
 
-  protected readonly words = computed(() => `${String(this.count())} ${this.count() === 1 ? 'comment' : 'comments'}`);
-  protected readonly spoken = computed(() =>
-    this.count() > 0 ? `${this.words()} on ${this.about()}` : `Comment on ${this.about()}`,
-  );
+  protected readonly words = computed(() => {
+    const numbers = this.numbers();
+    return `${numbers.length > 1 ? 'Comments' : 'Comment'} ${numbers.join(', ')}`.trim();
+  });
+  protected readonly spoken = computed(() => `${this.words()} on ${this.about()}`);
 }

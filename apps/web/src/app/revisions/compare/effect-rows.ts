@@ -31,7 +31,8 @@ export interface EffectRow {
   /** Cases that the two were taken from, where those are not chosen: the trap's worst. */
   readonly cases: string;
   readonly subject: CommentSubject;
-  readonly comments: number;
+  /** Numbers of the open comments on it. */
+  readonly comments: readonly number[];
 }
 
 export interface EffectContext {
@@ -39,7 +40,7 @@ export interface EffectContext {
   readonly after: NetworkFile;
   readonly quantity: ComparedQuantity;
   readonly units: DisplayUnits;
-  readonly commentsOf: ReadonlyMap<string, number>;
+  readonly commentsOf: ReadonlyMap<string, readonly number[]>;
   /** '' while the worst of all cases is shown. */
   readonly caseId: string | null;
   readonly caseName: (caseId: string) => string;
@@ -89,7 +90,7 @@ function rowOf(
     moved: hasMoved(trap),
     cases: caseId === null ? caseWords(before, after, caseName) : '',
     subject: { kind: 'result', elementId: id, ...(caseId === null || caseId === '' ? {} : { caseId }) },
-    comments: commentsOf.get(id) ?? 0,
+    comments: commentsOf.get(id) ?? [],
   };
 }
 

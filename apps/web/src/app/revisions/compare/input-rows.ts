@@ -23,7 +23,8 @@ export interface RowElement {
   readonly subject: CommentSubject;
   /** The element on the drawing; undefined of what is not drawn. */
   readonly elementId: string | undefined;
-  readonly comments: number;
+  /** Numbers of the open comments on it. */
+  readonly comments: readonly number[];
 }
 
 /** What was changed, in words; elements that were changed alike stand in one row. */
@@ -65,7 +66,7 @@ export function inputRows(
   comparison: NetworkComparison,
   files: Sides,
   system: UnitSystem,
-  commentsOf: ReadonlyMap<string, number>,
+  commentsOf: ReadonlyMap<string, readonly number[]>,
 ): InputRow[] {
   const context: Context = {
     before: { names: namesIn(files.before), units: unitsOf(files.before, system) },
@@ -88,7 +89,7 @@ interface Context {
   readonly before: Telling;
   readonly after: Telling;
   readonly files: Sides;
-  readonly commentsOf: ReadonlyMap<string, number>;
+  readonly commentsOf: ReadonlyMap<string, readonly number[]>;
 }
 
 function unitsOf({ site }: NetworkFile, system: UnitSystem): DisplayUnits {
@@ -107,7 +108,7 @@ function settingRows({ settings }: NetworkComparison, context: Context): InputRo
       after: settingWords(path, to, context.after.units),
       details: '',
       drawingOnly: false,
-      elements: [{ name: what, subject: { kind: 'whole' }, elementId: undefined, comments: 0 }],
+      elements: [{ name: what, subject: { kind: 'whole' }, elementId: undefined, comments: [] }],
     };
   });
 }
@@ -117,7 +118,7 @@ function folded(lines: readonly Line[]): InputRow[] {
   const rows = new Map<string, { line: Line; elements: RowElement[] }>();
   for (const line of lines) {
     const { group, kind, quantity, before, after, details, element } = line;
-    const own = element.comments > 0 ? element.name : '';
+    const own = element.comments.length > 0 ? element.name : '';
     const key = JSON.stringify([group, kind, quantity, before, after, details, own]);
     const row = rows.get(key);
     if (row === undefined) rows.set(key, { line, elements: [element] });
@@ -200,7 +201,7 @@ function rowElement(change: ElementChange, { files, after, before, commentsOf }:
       name: `${ofCase?.name ?? caseId}: ${tag}`,
       subject: { kind: 'result', elementId: nodeId, caseId },
       elementId: nodeId,
-      comments: commentsOf.get(nodeId) ?? 0,
+      comments: commentsOf.get(nodeId) ?? [],
     };
   }
   const drawn = list === 'nodes' || list === 'pipes' || list === 'gauges';
@@ -208,7 +209,7 @@ function rowElement(change: ElementChange, { files, after, before, commentsOf }:
     name: elementName(list, id, change.after ?? change.before),
     subject: drawn ? { kind: 'element', elementId: id } : { kind: 'whole' },
     elementId: list === 'gauges' ? undefined : drawn ? id : undefined,
-    comments: drawn ? (commentsOf.get(id) ?? 0) : 0,
+    comments: drawn ? (commentsOf.get(id) ?? []) : [],
   };
 }
 

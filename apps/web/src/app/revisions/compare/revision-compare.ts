@@ -27,8 +27,8 @@ export class RevisionCompare {
 
   readonly before = input.required<RevisionSide>();
   readonly after = input.required<RevisionSide>();
-  /** How many comments there are on an element, by its id. */
-  readonly commentsOf = input<ReadonlyMap<string, number>>(new Map());
+  /** Numbers of the open comments on an element, by its id. */
+  readonly commentsOf = input<ReadonlyMap<string, readonly number[]>>(new Map());
   readonly mayComment = input(true);
   readonly commentOn = output<CommentSubject>();
   readonly elementChosen = output<string>();

@@ -21,19 +21,14 @@ export function tagRuns(tags: readonly string[]): string {
     .join(', ');
 }
 
-/** The same before the number, and the number one higher, in as many digits. */
+/** The same before the number, and the number one higher: TR-009 and TR-010 count on, TR-9 and TR-010 do not. */
 function follows(last: string, next: string): boolean {
   const [a, b] = [numbered(last), numbered(next)];
-  return a !== null && b !== null && a.stem === b.stem && b.number === a.number + 1 && b.padded === a.padded;
+  if (a === null || b === null || a.stem !== b.stem || Number(b.digits) !== Number(a.digits) + 1) return false;
+  return a.digits.length === b.digits.length || !(a.digits.startsWith('0') || b.digits.startsWith('0'));
 }
 
-function numbered(tag: string): { stem: string; number: number; padded: number } | null {
+function numbered(tag: string): { stem: string; digits: string } | null {
   const digits = /\d{1,9}$/.exec(tag)?.[0];
-  if (digits === undefined) return null;
-  return {
-    stem: tag.slice(0, -digits.length),
-    number: Number(digits),
-    // TR-009 and TR-010 count on, TR-9 and TR-010 do not
-    padded: digits.startsWith('0') ? digits.length : 0,
-  };
+  return digits === undefined ? null : { stem: tag.slice(0, -digits.length), digits };
 }
