@@ -22,6 +22,7 @@ describe('AcceptanceForm', () => {
   let fixture: ComponentFixture<AcceptanceForm>;
   let http: HttpTestingController;
   let accepted: number;
+  let entered: object[];
   const element = () => fixture.nativeElement as HTMLElement;
   const alerts = () =>
     [...element().querySelectorAll('[role=alert]')].map((alert) => alert.textContent.trim()).join('');
@@ -60,7 +61,12 @@ describe('AcceptanceForm', () => {
 
   beforeEach(() => {
     accepted = 0;
-    const session = { forget: () => undefined, restore: () => Promise.resolve(null) };
+    entered = [];
+    const session = {
+      forget: () => undefined,
+      restore: () => Promise.resolve(null),
+      signIn: (input: object) => Promise.resolve(void entered.push(input)),
+    };
     TestBed.configureTestingModule({
       providers: [
         provideHttpClient(),
@@ -89,6 +95,7 @@ describe('AcceptanceForm', () => {
     await settle();
     expect(accepted).toBe(1);
     expect(TestBed.inject(LinkToken).value()).toBeNull();
+    expect(entered).toEqual([{ email: 'bo.lind@quay.example', password: GOOD }]);
   });
 
   it('asks who has an account for its password alone, and for a code once the server wants one', async () => {
@@ -111,5 +118,7 @@ describe('AcceptanceForm', () => {
     request.flush(null);
     await settle();
     expect(accepted).toBe(1);
+    // the code is spent: signing in takes the next one
+    expect(entered).toEqual([]);
   });
 });

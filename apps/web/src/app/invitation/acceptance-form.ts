@@ -83,11 +83,17 @@ export class AcceptanceForm {
       this.busy.set(false);
       return this.tell(outcome.problem);
     }
-    // whose session it is now, the server knows
-    this.session.forget();
-    await this.session.restore().catch(() => null);
+    await this.enter(password);
     this.busy.set(false);
     this.accepted.emit();
+  }
+
+  /** Who was not signed in here need not type it all again, unless the code is spent; whoever else was, stays. */
+  private async enter(password: string): Promise<void> {
+    this.session.forget();
+    const present = await this.session.restore().catch(() => null);
+    if (present !== null || this.codeAsked()) return;
+    await this.session.signIn({ email: this.invitation().email, password }).catch(() => undefined);
   }
 
   private mistakes(): ReadonlyMap<string, string> {

@@ -1,5 +1,6 @@
-import { ChangeDetectionStrategy, Component, computed, inject, signal } from '@angular/core';
+import { ChangeDetectionStrategy, Component, inject, signal } from '@angular/core';
 import { RouterLink } from '@angular/router';
+import type { Person } from '@riseback/contracts';
 import { deviceTimeZone, timeWords } from '../account/time-words';
 import { LinkProblem } from '../links/link-problem';
 import { LinkStore } from '../links/link-store';
@@ -7,7 +8,7 @@ import { roleMeaning } from '../people/role-words';
 import { SessionStore } from '../session/session-store';
 import { RisebackMark } from '../shell/riseback-mark';
 import { LiftPicture } from '../sign-in/lift-picture';
-import { AcceptanceForm } from './acceptance-form';
+import { AcceptanceForm, type InvitationTold } from './acceptance-form';
 
 /** Where the link of an invitation leads: who invites to what, and how to accept. */
 @Component({
@@ -22,9 +23,10 @@ export class InvitationPage {
   private readonly session = inject(SessionStore);
   protected readonly store = inject(LinkStore);
 
-  /** Where one is a member now; null until then. */
-  protected readonly acceptedSite = signal<string | null>(null);
-  protected readonly signedInAs = computed(() => this.session.person());
+  /** What was accepted; null until then. */
+  protected readonly accepted = signal<InvitationTold | null>(null);
+  /** Somebody may be signed in here, who need not be who is invited. */
+  protected readonly present = this.session.person;
   protected readonly roleMeaning = roleMeaning;
 
   constructor() {
@@ -36,7 +38,7 @@ export class InvitationPage {
     return timeWords(expiresAt, deviceTimeZone());
   }
 
-  protected accepted(siteName: string): void {
-    this.acceptedSite.set(siteName);
+  protected isFor({ email }: InvitationTold, person: Person): boolean {
+    return person.email.toLowerCase() === email.toLowerCase();
   }
 }

@@ -24,6 +24,9 @@ const FIRST_OF_THE_SERVER = 500;
       display: grid;
       gap: 12px;
     }
+    app-status-mark {
+      white-space: normal;
+    }
   `,
 })
 export class LinkProblem {

@@ -26,7 +26,7 @@ export class PeopleApi {
   }
 
   act(siteId: string, personId: string, what: AccountAct): Observable<void> {
-    return this.http.post<unknown>(`${peopleOf(siteId)}/${personId}/${what}`, {}).pipe(map(() => undefined));
+    return this.http.post<unknown>(`${peopleOf(siteId)}/${personId}/${what}`, null).pipe(map(() => undefined));
   }
 
   invitations(siteId: string): Observable<Invitation[]> {
@@ -38,7 +38,7 @@ export class PeopleApi {
   }
 
   sendAgain(siteId: string, invitationId: string): Observable<void> {
-    return this.http.post<unknown>(`${invitationsOf(siteId)}/${invitationId}/sending`, {}).pipe(map(() => undefined));
+    return this.http.post<unknown>(`${invitationsOf(siteId)}/${invitationId}/sending`, null).pipe(map(() => undefined));
   }
 
   withdraw(siteId: string, invitationId: string): Observable<void> {

@@ -43,7 +43,7 @@ function codesOff(person: SitePerson): PersonAct {
       title: `Turn the one-time codes of ${name} off?`,
       lines: [
         'For somebody who has lost both the authenticator and the recovery codes. Make sure that it is they who ask: from then on the password alone lets in.',
-        'They can turn codes on again on the page of their account.',
+        'Their sessions end. They can turn codes on again on the page of their account.',
       ],
       act: 'Turn codes off',
     }),
@@ -89,7 +89,7 @@ function takingAway({ name, email }: SitePerson): PersonAct {
     question: {
       title: `Take the role of ${name} away?`,
       lines: [
-        'This site is then to them as if it did not exist. Their account stays, with its roles at other sites.',
+        'They are signed out, and this site is then to them as if it did not exist. Their account stays, with its roles at other sites.',
         `Nothing that they did here goes away. To let them in again, invite ${email}.`,
       ],
       act: 'Take away',
@@ -101,9 +101,9 @@ function takingAway({ name, email }: SitePerson): PersonAct {
 function onlyHere({ onlyHere: mayBe, name }: SitePerson, question: Question): Question {
   if (mayBe) return question;
   return {
-    title: 'Not from this site alone',
+    title: 'Not this site’s alone',
     lines: [
-      `${name} has a role at another site as well, so this account is not this site’s to change: the administrator of the installation does it.`,
+      `${name} has a role at another site as well, or administers the installation, so the account is not this site’s alone to change.`,
       'What you can do here is take the role away.',
     ],
   };

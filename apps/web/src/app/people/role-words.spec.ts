@@ -12,8 +12,8 @@ describe('the words of roles', () => {
 
   it('say what a change of role gives and takes', () => {
     const lines = roleChangeLines('designer', 'reviewer');
-    expect(lines.filter((line) => line.startsWith('From now on'))).toHaveLength(1);
-    expect(lines.filter((line) => line.startsWith('No longer'))).toHaveLength(2);
+    expect(lines.filter((line) => line.startsWith('From now on:'))).toHaveLength(1);
+    expect(lines.filter((line) => line.startsWith('No longer:'))).toHaveLength(2);
     expect(lines[0]).toContain('signs');
     expect(roleChangeLines('viewer', 'viewer')).toEqual([]);
   });

@@ -36,8 +36,8 @@ export function roleChangeLines(from: Role, to: Role): string[] {
   const gained = PERMISSIONS.filter((permission) => has.includes(permission) && !had.includes(permission));
   const lost = PERMISSIONS.filter((permission) => had.includes(permission) && !has.includes(permission));
   return [
-    ...gained.map((permission) => `From now on ${PERMISSION_WORDS[permission]}.`),
-    ...lost.map((permission) => `No longer ${PERMISSION_WORDS[permission]}.`),
+    ...gained.map((permission) => `From now on: ${PERMISSION_WORDS[permission]}.`),
+    ...lost.map((permission) => `No longer: ${PERMISSION_WORDS[permission]}.`),
   ];
 }
 
