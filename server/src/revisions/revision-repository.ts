@@ -37,6 +37,9 @@ export interface AuditHeadRow {
   readonly hash: string;
 }
 
+/** Joined from the left, '' where nobody has that id: a row that somebody has changed is to be found and named, not lost. */
+const NAME = sql<string>`coalesce(${people.name}, '')`;
+
 /** Everything of a revision but what it froze, which is large. */
 const RECORD = {
   id: revisions.id,
@@ -51,7 +54,7 @@ const RECORD = {
   engineVersion: revisions.engineVersion,
   createdBy: revisions.createdBy,
   createdAt: revisions.createdAt,
-  createdByName: people.name,
+  createdByName: NAME,
 };
 
 const EVENT = {
@@ -61,7 +64,7 @@ const EVENT = {
   personId: revisionEvents.personId,
   at: revisionEvents.at,
   note: revisionEvents.note,
-  personName: people.name,
+  personName: NAME,
 };
 
 /** Revisions, what became of them and their signatures: rows are added and never changed. */
@@ -78,7 +81,7 @@ export class RevisionRepository {
     return this.db
       .select(RECORD)
       .from(revisions)
-      .innerJoin(people, eq(people.id, revisions.createdBy))
+      .leftJoin(people, eq(people.id, revisions.createdBy))
       .where(eq(revisions.networkId, networkId))
       .orderBy(sql`length(${revisions.letter})`, asc(revisions.letter))
       .all();
@@ -88,7 +91,7 @@ export class RevisionRepository {
     return this.db
       .select(RECORD)
       .from(revisions)
-      .innerJoin(people, eq(people.id, revisions.createdBy))
+      .leftJoin(people, eq(people.id, revisions.createdBy))
       .where(eq(revisions.id, id))
       .get();
   }
@@ -135,7 +138,7 @@ export class RevisionRepository {
     return this.db
       .select(EVENT)
       .from(revisionEvents)
-      .innerJoin(people, eq(people.id, revisionEvents.personId))
+      .leftJoin(people, eq(people.id, revisionEvents.personId))
       .where(eq(revisionEvents.revisionId, id))
       .orderBy(asc(revisionEvents.seq))
       .all()
@@ -147,7 +150,7 @@ export class RevisionRepository {
     const rows = this.db
       .select(EVENT)
       .from(revisionEvents)
-      .innerJoin(people, eq(people.id, revisionEvents.personId))
+      .leftJoin(people, eq(people.id, revisionEvents.personId))
       .innerJoin(revisions, eq(revisions.id, revisionEvents.revisionId))
       .where(eq(revisions.networkId, networkId))
       .orderBy(asc(revisionEvents.seq))
@@ -168,9 +171,9 @@ export class RevisionRepository {
 
   signatures(id: string): Named<SignatureRow>[] {
     return this.db
-      .select({ signature: signatures, personName: people.name })
+      .select({ signature: signatures, personName: NAME })
       .from(signatures)
-      .innerJoin(people, eq(people.id, signatures.personId))
+      .leftJoin(people, eq(people.id, signatures.personId))
       .where(eq(signatures.revisionId, id))
       .orderBy(asc(signatures.seq))
       .all()

@@ -1,7 +1,14 @@
 import { createHash } from 'node:crypto';
-import type { NewRevision, Revision, RevisionDeed, RevisionSummary, Signature } from '@riseback/contracts';
+import type {
+  AllowedDeeds,
+  NewRevision,
+  Revision,
+  RevisionDeed,
+  RevisionSummary,
+  Signature,
+} from '@riseback/contracts';
 import { NetworkFileShape, type NetworkFile } from '@riseback/network';
-import { deedsOf, nextLetter, type Doer } from '@riseback/revisions';
+import { deedsOf, nextLetter, type Allowance, type Doer, type RevisionFacts } from '@riseback/revisions';
 import type { NetworkService } from '../networks/network-service';
 import type { NetworkAccess } from '../platform/auth/access';
 import type { Queries } from '../platform/db/database';
@@ -77,7 +84,7 @@ export class RevisionService {
       events: [...events],
       signatures: this.revisions.signatures(id).flatMap(signatureOf),
       editedBy: [...editedBy],
-      deeds: deedsOf(facts, doerOf(access)),
+      deeds: allowedDeeds(facts, doerOf(access)),
     };
   }
 
@@ -240,6 +247,14 @@ export function demandDeed({ facts }: RevisionWithHistory, access: NetworkAccess
   const allowance = deedsOf(facts, doerOf(access))[deed];
   if (allowance.allowed) return;
   throw allowance.because === 'person' ? forbidden(allowance.why) : conflict(allowance.why);
+}
+
+/** As they cross the wire: why not, in words alone. */
+function allowedDeeds(facts: RevisionFacts, doer: Doer): AllowedDeeds {
+  const { submit, return: giveBack, withdraw, sign } = deedsOf(facts, doer);
+  const told = (allowance: Allowance) =>
+    allowance.allowed ? { allowed: true as const } : { allowed: false as const, why: allowance.why };
+  return { submit: told(submit), return: told(giveBack), withdraw: told(withdraw), sign: told(sign) };
 }
 
 function doerOf(access: NetworkAccess): Doer {
