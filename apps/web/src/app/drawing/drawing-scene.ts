@@ -4,8 +4,7 @@ import { overrideId } from '@riseback/network';
 import { NetworkStore } from '../networks/network-store';
 import { isPipe, KIND_WORDS, nameOf } from '../shared/element-words';
 import { DrawingState } from './drawing-state';
-import { colourScale, sheetAround } from '@riseback/figures';
-import { crossings } from './model/crossings';
+import { colourScale, sheetAround, crossings } from '@riseback/figures';
 import {
   type DrawnNode,
   type DrawnPipe,

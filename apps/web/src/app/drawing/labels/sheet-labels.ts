@@ -4,9 +4,8 @@ import { sizeWords } from '../model/accessible-name';
 import { nameOf } from '../../shared/element-words';
 import type { Concern, NodeView, PipeView, Side } from '../model/element-views';
 import { longestPiece, middle, pieces } from '../../shared/geometry';
-import type { AreaOutline } from '../sheet/area-outlines';
+import type { AreaOutline, Box, LabelRequest } from '@riseback/figures';
 import { symbolScale } from '../model/viewport';
-import type { Box, LabelRequest } from '@riseback/figures';
 
 export interface LabelLine {
   readonly text: string;

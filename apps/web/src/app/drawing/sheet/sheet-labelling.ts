@@ -4,10 +4,9 @@ import { Company } from '../../networks/company';
 import { NetworkStore } from '../../networks/network-store';
 import { DrawingScene } from '../drawing-scene';
 import { DrawingState } from '../drawing-state';
-import { type Box, placeLabels } from '@riseback/figures';
+import { type Box, placeLabels, areaOutlines } from '@riseback/figures';
 import { labelObstacles, type SheetLabel, sheetLabels } from '../labels/sheet-labels';
 import type { Viewport } from '../model/viewport';
-import { areaOutlines } from './area-outlines';
 import { commentMarks } from './comment-marks';
 import { companyOutlines } from './company-outlines';
 

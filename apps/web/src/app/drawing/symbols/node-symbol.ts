@@ -1,6 +1,6 @@
 import { ChangeDetectionStrategy, Component, computed, input } from '@angular/core';
 import type { NodeKind, TrapType } from '@riseback/network';
-import { TRAP_MECHANISMS, UNKNOWN_MECHANISM } from '@riseback/figures';
+import { nodeSymbol } from '@riseback/figures';
 
 /** The symbol of a node in ink on paper, about the origin of an svg group; traps fill a grid of 24, vessels more. */
 @Component({
@@ -14,8 +14,5 @@ export class NodeSymbol {
   readonly trapType = input<TrapType>();
   readonly vented = input(false);
 
-  protected readonly mechanism = computed(() => {
-    const type = this.trapType();
-    return type === undefined ? UNKNOWN_MECHANISM : TRAP_MECHANISMS[type];
-  });
+  protected readonly parts = computed(() => nodeSymbol(this.kind(), this.trapType(), this.vented()));
 }

@@ -1,10 +1,9 @@
 import { ChangeDetectionStrategy, Component, computed, input } from '@angular/core';
 import type { Position } from '@riseback/network';
-import type { Crossing } from '../model/crossings';
+import { type Crossing, linePath } from '@riseback/figures';
 import { shownBends } from '../model/drawn-network';
 import type { PipeView } from '../model/element-views';
 import { cutLine } from '../../shared/geometry';
-import { linePath } from '@riseback/figures';
 
 /** Room between a pipe and what frames it, drawing units. */
 const FRAME = 12;

@@ -1,5 +1,5 @@
 import type { Position } from '@riseback/network';
-import { pieces } from '../../shared/geometry';
+import { pieces } from './geometry';
 
 /** Where a pipe passes over an earlier one. */
 export interface Crossing extends Position {

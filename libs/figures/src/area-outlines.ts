@@ -1,4 +1,4 @@
-import type { DrawnNetwork } from '../model/drawn-network';
+import type { DrawnNetwork } from './drawn-network';
 
 export interface AreaOutline {
   readonly name: string;
