@@ -62,7 +62,7 @@ export class ReportPage {
     const revision = this.shown();
     if (revision !== null) return revisionStanding(revision);
     const outcomes = this.network.finished()?.cases ?? [];
-    return workingStanding(this.network.solveState(), this.network.saveState(), outcomes);
+    return workingStanding(this.network.solveState(), this.network.saveState(), outcomes, this.network.mayDraw());
   });
   protected readonly problem = computed(() => {
     const load = this.store.load();

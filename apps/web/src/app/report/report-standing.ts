@@ -13,13 +13,17 @@ export interface Standing {
 }
 
 /** Of the network as it stands: always a draft, and only as good as what is saved and solved. */
-export function workingStanding(solve: SolveState, save: SaveState, outcomes: readonly CaseOutcome[]): Standing[] {
+export function workingStanding(
+  solve: SolveState,
+  save: SaveState,
+  outcomes: readonly CaseOutcome[],
+  mayFreeze: boolean,
+): Standing[] {
   return [
     {
       status: 'watch',
       word: 'Draft',
-      sentence:
-        'Every part of it says so. Freeze a revision and have it reviewed when others are to build on the figures.',
+      sentence: `Every part of it says so. ${mayFreeze ? 'Freeze' : 'Ask a designer to freeze'} a revision and have it reviewed when others are to build on the figures.`,
       prevents: false,
     },
     ...savedStanding(solve, save),
