@@ -33,3 +33,4 @@ export * from './sheet-zones';
 export * from './staff-model';
 export * from './trap-mechanisms';
 export * from './verdict';
+export * from './worst-of-cases';

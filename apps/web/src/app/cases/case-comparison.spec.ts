@@ -1,7 +1,7 @@
 import type { CaseOutcome, SolveResult, TrapResult, Verdict } from '@riseback/contracts';
 import { fromFile, inOrder, NetworkFileShape } from '@riseback/network';
 import { describe, expect, it } from 'vitest';
-import { worstOfCases } from '../results/worst-of-cases';
+import { worstOfCases } from '@riseback/figures';
 import { compareCases, ordered } from './case-comparison';
 
 const units = { system: 'si', atmosphericPressurePa: 100_000 } as const;

@@ -2,7 +2,7 @@ import type { CaseOutcome, Verdict } from '@riseback/contracts';
 import { inOrder, type NetworkDocument, type OperatingCase } from '@riseback/network';
 import { type DisplayUnits, formatQuantity } from '@riseback/units';
 import { badness, countVerdicts, trapVerdicts, type VerdictCounts } from '../results/verdict';
-import type { WorstOfCases } from '../results/worst-of-cases';
+import type { WorstOfCases } from '@riseback/figures';
 import { nameOf } from '../shared/element-words';
 import type { Status } from '../shared/status-mark/status-mark';
 import { caseChangeWords } from './case-changes';

@@ -16,7 +16,7 @@ import { type EditOp, findings, inOrder, type NetworkDocument, type OperatingCas
 import type { DisplayUnits } from '@riseback/units';
 import { catchError, EMPTY, expand, filter, map, type Observable, of, scan, switchMap, timer } from 'rxjs';
 import { withBandsBefore } from '../results/bands-before';
-import { WORST_OF_ALL, worstOfCases } from '../results/worst-of-cases';
+import { WORST_OF_ALL, worstOfCases } from '@riseback/figures';
 import { SessionStore } from '../session/session-store';
 import { toProblem } from '../shared/problem';
 import { choiceOfMine } from './conflict-choice';
@@ -250,6 +250,11 @@ export class NetworkStore {
   hearOfSolve({ solverHash, state }: SolveEvent): void {
     const failed = this.answers().latest?.state === 'failed';
     if (failed && state !== 'failed' && solverHash === this.queue.solverHash()) this.askedAgain.update((n) => n + 1);
+  }
+
+  /** The question for results once more, after one that failed. */
+  askResultsAgain(): void {
+    this.askedAgain.update((n) => n + 1);
   }
 
   retrySave(): void {

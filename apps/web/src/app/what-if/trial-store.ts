@@ -4,7 +4,7 @@ import type { CaseOutcome, Problem, SolveResult } from '@riseback/contracts';
 import { catchError, map, type Observable, of, scan, startWith, switchMap, timer } from 'rxjs';
 import { EditQueue } from '../networks/edit-queue';
 import { NetworkStore } from '../networks/network-store';
-import { worstOfCases } from '../results/worst-of-cases';
+import { worstOfCases } from '@riseback/figures';
 import { SessionStore } from '../session/session-store';
 import { toProblem } from '../shared/problem';
 import { effectsOf } from './effects';
