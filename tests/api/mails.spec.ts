@@ -414,7 +414,7 @@ describe('a mail server that refuses', () => {
         allowInsecureAuth: true,
         onAuth: ({ username = '', password = '' }, _session, done) => {
           const token = Buffer.from(`\0${username}\0${password}`).toString('base64');
-          done(new Error(`no such user: ${password} ${token} ${Buffer.from(password).toString('base64')}`));
+          done(new Error(`no such user: ${password} ${token} ${Buffer.from(String(password)).toString('base64')}`));
         },
       },
       true,

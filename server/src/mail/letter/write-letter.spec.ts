@@ -92,7 +92,7 @@ describe('a mail', () => {
         expect(text).toContain(told);
       expect(text).toContain('30 traps: 2 fail, 3 to watch');
       expect(text).toContain(CAUTION);
-      expect(text).toContain('https://riseback.example/sites/site-1/networks/network-1/revisions/revision-1');
+      expect(text).toContain('https://riseback.example/sites/site-1/networks/network-1/revisions?revision=revision-1');
       expect(text).toContain('https://riseback.example/account');
     }
   });
@@ -100,18 +100,20 @@ describe('a mail', () => {
   it.each([
     ['mention', 'Greta Lowndes mentions you in a comment on CR-12 in revision B of Hall return'],
     ['comment', 'Greta Lowndes commented on CR-12 in revision B of Hall return'],
-  ] as const)('leads to the thread, and needs no caution where it tells no result: %s', (purpose, subject) => {
+  ] as const)('leads to where it is read, and needs no caution where it tells no result: %s', (purpose, subject) => {
     expect(letterOf({ purpose, data: COMMENT }).subject).toBe(subject);
     for (const text of bothOf({ purpose, data: COMMENT })) {
-      expect(text).toContain('/networks/network-1/revisions/revision-1?thread=thread-1');
+      expect(text).toContain('/networks/network-1/revisions?revision=revision-1');
       expect(text).toContain('Is this the size in the plant?');
       expect(text).not.toContain(CAUTION);
     }
     const present = { ...COMMENT, revisionId: undefined, letter: undefined };
     for (const text of bothOf({ purpose, data: present })) {
-      expect(text).toContain('/networks/network-1/comments?thread=thread-1');
+      expect(text).toContain('/networks/network-1/revisions?revision=working');
       expect(text).toContain('CR-12 in Hall return');
     }
+    for (const text of bothOf({ purpose, data: { ...present, elementId: 'L12' } }))
+      expect(text).toContain('/networks/network-1/drawing?element=L12');
   });
 
   it('of an invitation says who sends it, to what, until when, and keeps the token out of what a server is asked for', () => {
@@ -153,7 +155,7 @@ describe('what somebody typed', () => {
     const data = { ...REVISION, networkId: '../../evil?x="><script>', revisionId: 'r#1' };
     const { url } = letterOf({ purpose: 'submitted', data }).action;
     expect(url).toBe(
-      'https://riseback.example/sites/site-1/networks/..%2F..%2Fevil%3Fx%3D%22%3E%3Cscript%3E/revisions/r%231',
+      'https://riseback.example/sites/site-1/networks/..%2F..%2Fevil%3Fx%3D%22%3E%3Cscript%3E/revisions?revision=r%231',
     );
   });
 
