@@ -79,6 +79,8 @@ export const routes: Routes = [
           { path: 'lists', loadComponent: () => import('./lists/lists-page').then((m) => m.ListsPage) },
           { path: 'cases', loadComponent: () => import('./cases/cases-page').then((m) => m.CasesPage) },
           { path: 'ledger', loadComponent: () => import('./results/ledger-page').then((m) => m.LedgerPage) },
+          { path: 'try', loadComponent: () => import('./what-if/what-if-page').then((m) => m.WhatIfPage) },
+          { path: 'method', loadComponent: () => import('./method/method-page').then((m) => m.MethodPage) },
         ],
       },
       {

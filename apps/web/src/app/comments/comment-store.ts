@@ -1,9 +1,10 @@
 import { computed, inject, Injectable, signal } from '@angular/core';
 import { toSignal } from '@angular/core/rxjs-interop';
-import type { CommentSubject, CommentThread, NamedPerson, Problem } from '@riseback/contracts';
+import { type CommentSubject, type CommentThread, type NamedPerson, type Problem, roleMay } from '@riseback/contracts';
 import { firstValueFrom, type Observable } from 'rxjs';
 import { Company } from '../networks/company';
 import { NetworkStore } from '../networks/network-store';
+import { SessionStore } from '../session/session-store';
 import { type Load, LOADING } from '../shared/load';
 import { toProblem } from '../shared/problem';
 import { rereading } from '../shared/rereading';
@@ -21,11 +22,14 @@ export class CommentStore {
   private readonly api = inject(CommentApi);
   private readonly network = inject(NetworkStore);
   private readonly company = inject(Company);
+  private readonly session = inject(SessionStore);
 
   private readonly asked = signal(0);
   private readonly known = signal<readonly NamedPerson[]>([]);
   private namesOf = '';
 
+  /** At which revision the pages comment; undefined at the network as it is drawn. */
+  readonly revisionId = signal<string | undefined>(undefined);
   readonly load = toSignal(
     rereading(
       computed(() => ({
@@ -41,13 +45,15 @@ export class CommentStore {
     return load.status === 'ready' ? load.value : [];
   });
   readonly numbers = computed(() => numberedThreads(this.threads()));
-  /** Open threads by the element that they are pinned to, in the order of their numbers. */
+  /** Open threads by the element that they are pinned to, in the order of their numbers; at a revision, those of that one alone. */
   readonly openAt = computed((): ReadonlyMap<string, readonly CommentThread[]> => {
-    const numbers = this.numbers();
+    const [numbers, revisionId] = [this.numbers(), this.revisionId()];
     const open = new Map<string, CommentThread[]>();
     for (const thread of this.threads()) {
       const element = elementOf(thread.subject);
-      if (element !== null && thread.resolved === undefined) open.set(element, [...(open.get(element) ?? []), thread]);
+      const here = revisionId === undefined || thread.revisionId === revisionId;
+      if (element !== null && thread.resolved === undefined && here)
+        open.set(element, [...(open.get(element) ?? []), thread]);
     }
     for (const threads of open.values()) threads.sort((a, b) => (numbers.get(a.id) ?? 0) - (numbers.get(b.id) ?? 0));
     return open;
@@ -55,8 +61,6 @@ export class CommentStore {
   /** Who can be mentioned; asked for when someone begins to write. */
   readonly people = this.known.asReadonly();
   readonly mayComment = computed(() => this.network.may('comment'));
-  /** At which revision the pages comment; undefined at the network as it is drawn. */
-  readonly revisionId = signal<string | undefined>(undefined);
   /** A new comment is asked for from elsewhere; `opened` once its form stands there. */
   readonly wanted = signal<{ readonly subject: CommentSubject; readonly opened: boolean } | null>(null);
 
@@ -65,6 +69,13 @@ export class CommentStore {
     const count = this.openAt().get(elementId)?.length ?? 0;
     if (count === 0) return '';
     return count === 1 ? '1 open comment' : `${String(count)} open comments`;
+  }
+
+  /** Who began a thread resolves it, and who draws or signs: by their role, since a frozen copy lets nobody draw. */
+  mayResolve({ comments: [first] }: CommentThread): boolean {
+    const role = this.network.network()?.role;
+    if (role === undefined || !this.mayComment()) return false;
+    return roleMay(role, 'draw') || roleMay(role, 'sign') || first?.personId === this.session.person()?.id;
   }
 
   ask(subject: CommentSubject): void {

@@ -66,6 +66,8 @@ export class CommentThreadView {
       : `Resolved by ${resolved.personName}, ${timeWords(resolved.at, this.session.timeZone())}`;
   });
 
+  protected readonly mayResolve = computed(() => this.store.mayResolve(this.thread()));
+
   protected async resolve(resolved: boolean): Promise<void> {
     this.busy.set(true);
     this.problem.set(await this.store.resolve(this.thread().id, resolved));

@@ -9,14 +9,18 @@ export interface SigningLine {
 /**
  * What is to be confirmed. A failing trap and an open comment each ask by number, so that nobody signs over them unseen.
  * @param comparedWith the letter of the revision beside it; '' for the first
+ * @param changeCount how many inputs differ from it; null while that is not known
  */
 export function beforeSigning(
   { verdicts: { traps, fail, watch }, openComments }: Pick<SigningTerms, 'verdicts' | 'openComments'>,
   comparedWith: string,
   caseCount: number,
+  changeCount: number | null,
 ): readonly SigningLine[] {
   const inputs =
-    comparedWith === '' ? 'All inputs read: there is no earlier revision' : `Inputs compared with ${comparedWith}`;
+    comparedWith === ''
+      ? 'All inputs read: there is no earlier revision'
+      : `Inputs compared with ${comparedWith}${seenWords(changeCount)}`;
   const cases = caseCount === 1 ? 'Its one case read' : `All ${String(caseCount)} cases read, worst of all included`;
   const concern = [failWords(fail), watchWords(watch)].filter((part) => part !== '').join(' and ');
   const lines = [
@@ -40,6 +44,11 @@ export function beforeSigning(
 
 export function stillMissing(lines: readonly SigningLine[], ticked: ReadonlySet<string>): readonly SigningLine[] {
   return lines.filter(({ key }) => !ticked.has(key));
+}
+
+function seenWords(changes: number | null): string {
+  if (changes === null) return '';
+  return changes === 1 ? ', 1 change seen' : `, ${String(changes)} changes seen`;
 }
 
 function failWords(count: number): string {

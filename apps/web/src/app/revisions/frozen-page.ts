@@ -23,6 +23,8 @@ const VIEWS = [
   { path: 'lists', word: 'Lists' },
   { path: 'ledger', word: 'Lift & ledger' },
   { path: 'cases', word: 'Cases' },
+  { path: 'try', word: 'Try changes' },
+  { path: 'method', word: 'Method' },
 ] as const;
 
 /** The frame of one frozen revision: the views of a network, read only, under a band that says so. */

@@ -1,7 +1,7 @@
-import { ChangeDetectionStrategy, Component, computed, inject, input, signal } from '@angular/core';
+import { ChangeDetectionStrategy, Component, computed, inject, input, signal, viewChild } from '@angular/core';
 import { MatButton } from '@angular/material/button';
 import { RouterLink } from '@angular/router';
-import type { CommentSubject, Problem, Revision } from '@riseback/contracts';
+import type { CommentSubject, Problem, Revision, RevisionDeed } from '@riseback/contracts';
 import { fromFile } from '@riseback/network';
 import { CommentForm } from '../comments/comment-form';
 import { CommentList } from '../comments/comment-list';
@@ -36,6 +36,7 @@ export class ReviewPanel {
   readonly comparedWith = input('');
   readonly siteId = input.required<string>();
 
+  private readonly form = viewChild(CommentForm);
   /** What is being done, until its note is sent. */
   protected readonly doing = signal<StepForm | null>(null);
   protected readonly busy = signal(false);
@@ -79,13 +80,20 @@ export class ReviewPanel {
   /** Why the others may not be taken, each reason once. */
   protected readonly reasons = computed(() => {
     const { deeds, state } = this.revision();
-    const told = state === 'underReview' ? (['sign', 'return'] as const) : (['submit'] as const);
+    // of all other states the sentence above says what comes next
+    const told: readonly RevisionDeed[] =
+      state === 'underReview' ? ['sign', 'return'] : state === 'draft' ? ['submit'] : [];
     const whys = told.flatMap((deed) => {
       const answer = deeds[deed];
       return answer.allowed ? [] : [answer.why];
     });
     return [...new Set(whys)];
   });
+  protected readonly editors = computed(() =>
+    this.revision()
+      .editedBy.map(({ personName }) => personName)
+      .join(', '),
+  );
   protected readonly writingLabel = computed(() =>
     this.writing().kind === 'whole'
       ? `New comment on revision ${this.revision().letter} as a whole`
@@ -96,6 +104,7 @@ export class ReviewPanel {
   /** From the comparison: a line of it is to be commented on. */
   commentOn(subject: CommentSubject): void {
     this.writing.set(subject);
+    this.form()?.focus();
   }
 
   protected begin(step: StepForm): void {

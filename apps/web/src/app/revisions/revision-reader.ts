@@ -1,7 +1,8 @@
 import { computed, inject, Injectable, type Signal, signal } from '@angular/core';
 import { toSignal } from '@angular/core/rxjs-interop';
 import type { CaseOutcome, NewSignature, Problem, Revision, SignatureMeaning, SigningTerms } from '@riseback/contracts';
-import { toFile } from '@riseback/network';
+import { compareIds, type NetworkFile, toFile } from '@riseback/network';
+import { compareNetworks, countChanges } from '@riseback/revisions';
 import { firstValueFrom, map, type Observable, shareReplay } from 'rxjs';
 import { NetworkStore } from '../networks/network-store';
 import { type Load, LOADING } from '../shared/load';
@@ -36,6 +37,11 @@ export class RevisionReader {
   private readonly comparedResults = this.readResults(this.comparedId);
   readonly after = computed(() => this.sideOf(this.shownId(), this.shown(), this.shownResults()));
   readonly before = computed(() => this.sideOf(this.comparedId(), this.compared(), this.comparedResults()));
+  /** How many inputs differ between the two; null while there are not two. */
+  readonly changeCount = computed(() => {
+    const [before, after] = [this.before(), this.after()];
+    return before === null || after === null ? null : countChanges(compareNetworks(before.file, after.file)).inputs;
+  });
   /** Why there is no comparison, where there should be one. */
   readonly sideProblem = computed(() => {
     const loads = [this.shownResults(), this.compared(), this.comparedResults()];
@@ -127,8 +133,21 @@ export class RevisionReader {
   private readonly working = computed((): RevisionSide | null => {
     const document = this.store.document();
     if (document === null) return null;
-    return { label: 'Working', file: toFile(document), results: this.store.finished()?.cases ?? [] };
+    return { label: 'Working', file: sortedById(toFile(document)), results: this.store.finished()?.cases ?? [] };
   });
+}
+
+/** As a frozen file is, so that no order differs that nobody changed. */
+function sortedById(file: NetworkFile): NetworkFile {
+  const sorted = <T extends { readonly id: string }>(list: readonly T[]) =>
+    [...list].sort((a, b) => compareIds(a.id, b.id));
+  return {
+    ...file,
+    nodes: sorted(file.nodes),
+    pipes: sorted(file.pipes),
+    trapModels: sorted(file.trapModels),
+    gauges: sorted(file.gauges),
+  };
 }
 
 interface Kept {

@@ -4,6 +4,7 @@ import {
   computed,
   DestroyRef,
   effect,
+  type ElementRef,
   inject,
   input,
   untracked,
@@ -16,22 +17,23 @@ import { Router } from '@angular/router';
 import type { CommentSubject } from '@riseback/contracts';
 import { firstValueFrom } from 'rxjs';
 import { CommentStore } from '../comments/comment-store';
-import { elementOf } from '../comments/comment-subjects';
 import { EditQueue } from '../networks/edit-queue';
 import { NetworkStore } from '../networks/network-store';
 import { ProblemBanner } from '../shared/problem-banner/problem-banner';
+import { RevisionCompare } from './compare/revision-compare';
 import { FreezeDialog } from './freeze-dialog';
 import { HistoryList } from './history-list';
 import { ReviewPanel } from './review-panel';
 import { comparedRevision, shownRevision, WORKING } from './revision-choice';
 import { RevisionHistory } from './revision-history';
 import { RevisionReader } from './revision-reader';
+import type { RevisionSide } from './revision-side';
 import { WorkingPanel } from './working-panel';
 
 /** Revisions: the history, what changed from one to the next, and review and signature. Which two are looked at stands in the address. */
 @Component({
   selector: 'app-revisions-page',
-  imports: [HistoryList, MatButton, ProblemBanner, ReviewPanel, WorkingPanel],
+  imports: [HistoryList, MatButton, ProblemBanner, RevisionCompare, ReviewPanel, WorkingPanel],
   providers: [RevisionReader],
   changeDetection: ChangeDetectionStrategy.OnPush,
   templateUrl: './revisions-page.html',
@@ -42,7 +44,7 @@ export class RevisionsPage {
   protected readonly history = inject(RevisionHistory);
   protected readonly reader = inject(RevisionReader);
   private readonly queue = inject(EditQueue);
-  private readonly comments = inject(CommentStore);
+  protected readonly comments = inject(CommentStore);
   private readonly dialog = inject(MatDialog);
   private readonly router = inject(Router);
   private readonly here = inject(ViewContainerRef);
@@ -51,7 +53,9 @@ export class RevisionsPage {
   readonly revision = input<string>();
   readonly with = input<string>();
 
+  private readonly aside = viewChild<ElementRef<HTMLElement>>('aside');
   private readonly review = viewChild(ReviewPanel);
+  private readonly working = viewChild(WorkingPanel);
   protected readonly version = this.queue.version;
   protected readonly shownId = computed(() => shownRevision(this.history.revisions(), this.revision()));
   protected readonly comparedId = computed(() => {
@@ -78,18 +82,18 @@ export class RevisionsPage {
   });
   protected readonly mayDraw = computed(() => this.store.mayDraw());
   protected readonly mayFreeze = computed(() => this.store.mayDraw() && this.shownId() !== null);
-  /** Numbers of the open comments on what is shown, by element. */
-  protected readonly commentNumbers = computed((): ReadonlyMap<string, readonly number[]> => {
-    const shown = this.shownId();
-    const numbers = this.comments.numbers();
-    const byElement = new Map<string, number[]>();
-    for (const thread of this.comments.threads()) {
-      const element = elementOf(thread.subject);
-      const belongs = shown === WORKING ? thread.revisionId === undefined : thread.revisionId === shown;
-      if (element === null || thread.resolved !== undefined || !belongs) continue;
-      byElement.set(element, [...(byElement.get(element) ?? []), numbers.get(thread.id) ?? 0]);
-    }
-    return byElement;
+  protected readonly sides = computed(() => {
+    const [before, after] = [this.reader.before(), this.reader.after()];
+    return before === null || after === null ? null : { before, after };
+  });
+  /** The numbers of the comments that are open on what is shown, by element. */
+  protected readonly commentsOf = computed((): ReadonlyMap<string, readonly number[]> => {
+    const [shown, numbers] = [this.shownId(), this.comments.numbers()];
+    const at = [...this.comments.openAt()].map(([element, threads]) => {
+      const here = threads.filter(({ revisionId }) => (revisionId ?? WORKING) === shown);
+      return [element, here.map(({ id }) => numbers.get(id) ?? 0)] as const;
+    });
+    return new Map(at.filter(([, some]) => some.length > 0));
   });
 
   constructor() {
@@ -122,7 +126,24 @@ export class RevisionsPage {
     await this.router.navigate([], { queryParams: { revision: id, with: null }, queryParamsHandling: 'merge' });
   }
 
+  /** Where it stands below the comparison. */
+  protected goToReview(): void {
+    this.aside()?.nativeElement.scrollIntoView();
+    this.aside()?.nativeElement.focus();
+  }
+
   protected commentOn(subject: CommentSubject): void {
-    this.review()?.commentOn(subject);
+    (this.review() ?? this.working())?.commentOn(subject);
+  }
+
+  /** On the drawing of the later one of the two that has it, with what is otherwise than in the earlier one where that is asked. */
+  protected showOnDrawing(elementId: string | null): void {
+    const has = (side: RevisionSide | null) =>
+      side !== null && [...side.file.nodes, ...side.file.pipes].some(({ id }) => id === elementId);
+    const id = elementId === null || has(this.reader.after()) ? this.shownId() : this.comparedId();
+    const compare = id === this.shownId() && this.comparedId() !== WORKING ? this.comparedId() : null;
+    const network = ['/sites', this.store.network()?.siteId ?? '', 'networks', this.store.networkId()];
+    const view = id === null || id === WORKING ? ['drawing'] : ['frozen', id, 'drawing'];
+    void this.router.navigate([...network, ...view], { queryParams: { element: elementId, compare } });
   }
 }

@@ -63,7 +63,7 @@ export class SigningForm {
   });
   protected readonly lines = computed(() => {
     const terms = this.terms();
-    return terms === null ? [] : beforeSigning(terms, this.comparedWith(), this.caseCount());
+    return terms === null ? [] : beforeSigning(terms, this.comparedWith(), this.caseCount(), this.reader.changeCount());
   });
   protected readonly missing = computed(() => stillMissing(this.lines(), this.ticked()));
   protected readonly refusals = computed(

@@ -5,8 +5,10 @@ import { RouterLink } from '@angular/router';
 import type { Verification, VerificationStep } from '@riseback/contracts';
 import { formatQuantity } from '@riseback/units';
 import { elementName } from '../comments/comment-subjects';
+import { timeWords } from '../account/time-words';
 import { NetworkStore } from '../networks/network-store';
 import { type Load, LOADING } from '../shared/load';
+import { SessionStore } from '../session/session-store';
 import { ProblemBanner } from '../shared/problem-banner/problem-banner';
 import { rereading } from '../shared/rereading';
 import { type Status, StatusMark } from '../shared/status-mark/status-mark';
@@ -17,6 +19,8 @@ const OUTCOMES: Readonly<Record<VerificationStep['outcome'], { readonly status: 
   broken: { status: 'fail', word: 'Broken' },
   notThere: { status: 'none', word: 'Not there' },
 };
+
+const LOGGED_TIME = /\d{4}-\d\d-\d\dT\d\d:\d\d:\d\d\.\d{3}Z/g;
 
 /** What was verified of a revision, one thing after the other, and how anyone can do it without this page. */
 @Component({
@@ -29,6 +33,7 @@ const OUTCOMES: Readonly<Record<VerificationStep['outcome'], { readonly status: 
 export class VerificationPage {
   private readonly api = inject(RevisionApi);
   protected readonly store = inject(NetworkStore);
+  private readonly session = inject(SessionStore);
 
   readonly revisionId = input.required<string>();
 
@@ -57,6 +62,7 @@ export class VerificationPage {
       ...step,
       ...OUTCOMES[step.outcome],
       name: step.name.charAt(0).toUpperCase() + step.name.slice(1),
+      detail: this.inOwnTime(step.detail),
       first: step.name === verification?.firstBroken,
     }));
   });
@@ -85,6 +91,11 @@ export class VerificationPage {
           : `${String(again.verdictsChanged)} verdicts change`;
     return `Solved again by ${engine}: back pressures differ by ${difference} at most${where}, and ${verdicts}.`;
   });
+
+  /** The command line says times as the log keeps them; a person reads them by their own clock. */
+  private inOwnTime(detail: string): string {
+    return detail.replaceAll(LOGGED_TIME, (at) => timeWords(at, this.session.timeZone()));
+  }
 
   protected again(): void {
     this.asked.update((count) => count + 1);

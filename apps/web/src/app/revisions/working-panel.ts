@@ -1,9 +1,10 @@
-import { ChangeDetectionStrategy, Component, computed, inject, input, output } from '@angular/core';
+import { ChangeDetectionStrategy, Component, computed, inject, input, output, signal, viewChild } from '@angular/core';
+import type { CommentSubject } from '@riseback/contracts';
 import { MatButton } from '@angular/material/button';
 import { CommentForm } from '../comments/comment-form';
 import { CommentList } from '../comments/comment-list';
 import { CommentStore } from '../comments/comment-store';
-import { WHOLE } from '../comments/comment-subjects';
+import { subjectWords, WHOLE } from '../comments/comment-subjects';
 import { zonesOf } from '../comments/zones';
 import { NetworkStore } from '../networks/network-store';
 import { freezeObstacle } from './freeze-obstacle';
@@ -47,5 +48,22 @@ export class WorkingPanel {
     this.store.networkId(),
     'drawing',
   ]);
-  protected readonly place = { subject: WHOLE } as const;
+  private readonly form = viewChild(CommentForm);
+  protected readonly writing = signal<CommentSubject>(WHOLE);
+  protected readonly writingLabel = computed(() =>
+    this.writing().kind === 'whole'
+      ? 'New comment on the network as a whole'
+      : `New comment on ${subjectWords(this.writing(), this.store.document())}`,
+  );
+  protected readonly place = computed(() => ({ subject: this.writing() }));
+
+  /** From the comparison: a line of it is to be commented on. */
+  commentOn(subject: CommentSubject): void {
+    this.writing.set(subject);
+    this.form()?.focus();
+  }
+
+  protected commented(): void {
+    this.writing.set(WHOLE);
+  }
 }
