@@ -105,10 +105,11 @@ export function byEffect(a: TrapComparison, b: TrapComparison): number {
   return stepOf(b) - stepOf(a) || moveOf(b) - moveOf(a);
 }
 
-/** What fails in one of the two first; 0 where both count alike. */
+/** What fails in one of the two first, and of those the larger step; 0 where both count alike. */
 export function byGravity(a: FindingComparison, b: FindingComparison): number {
   const gravest = ({ from, to }: FindingComparison) => Math.max(badness(from), badness(to));
-  return gravest(b) - gravest(a);
+  const step = ({ from, to }: FindingComparison) => Math.abs(badness(to) - badness(from));
+  return gravest(b) - gravest(a) || step(b) - step(a);
 }
 
 /** Whether there is something to see: a verdict turned, a pressure moved by `MOVED_PA`, a result where the other has none. */

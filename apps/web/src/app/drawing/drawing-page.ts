@@ -17,6 +17,8 @@ import { elementOf } from '../comments/comment-subjects';
 import { NetworkStore } from '../networks/network-store';
 import { allFindings, findingsOfCases } from '../results/finding-list';
 import { FindingsList } from '../results/findings-list/findings-list';
+import { ComparisonPanel } from './comparison/comparison-panel';
+import { DrawingComparison } from './comparison/drawing-comparison';
 import { DrawingClipboard } from './drawing-clipboard';
 import { DrawingCommands } from './drawing-commands';
 import { DrawingScene } from './drawing-scene';
@@ -44,11 +46,12 @@ const NARROW = '(width < 720px)';
 /** The drawing of a network: sheet, tray, findings, inspector. Which element is looked at stands in the address. */
 @Component({
   selector: 'app-drawing-page',
-  imports: [DrawingSheet, DrawingTray, EmptySheet, FindingsList, Inspector, KeyList, TagFinder],
+  imports: [ComparisonPanel, DrawingSheet, DrawingTray, EmptySheet, FindingsList, Inspector, KeyList, TagFinder],
   providers: [
     DeletePrompt,
     DrawingClipboard,
     DrawingCommands,
+    DrawingComparison,
     DrawingScene,
     DrawingState,
     ElementMoving,
@@ -71,9 +74,12 @@ export class DrawingPage {
   protected readonly scene = inject(DrawingScene);
   protected readonly comments = inject(CommentStore);
   protected readonly planTool = inject(PlanTool);
+  protected readonly comparison = inject(DrawingComparison);
 
   /** From the address: the element looked at. */
   readonly element = input<string>();
+  /** The revision that the drawing is compared with. */
+  readonly compare = input<string>();
 
   /** On a phone the sheet has all the room until something is chosen. */
   private readonly narrow = inject(DOCUMENT).defaultView?.matchMedia(NARROW).matches === true;
@@ -99,6 +105,9 @@ export class DrawingPage {
   protected readonly currentId = computed(() => this.state.chosenId() ?? '');
 
   constructor() {
+    effect(() => {
+      this.comparison.revisionId.set(this.compare() ?? '');
+    });
     effect(() => {
       const wanted = this.element();
       untracked(() => {

@@ -14,6 +14,8 @@ import type { Position } from '@riseback/network';
 import { CommentStore } from '../../comments/comment-store';
 import { Company } from '../../networks/company';
 import { NetworkStore } from '../../networks/network-store';
+import { ComparisonLayer } from '../comparison/comparison-layer';
+import { DrawingComparison } from '../comparison/drawing-comparison';
 import { DrawingScene } from '../drawing-scene';
 import { DrawingState } from '../drawing-state';
 import { GraphCanvas } from '../graph-canvas/graph-canvas';
@@ -46,6 +48,7 @@ const FOLLOW_MARGIN = 48;
   selector: 'app-drawing-sheet',
   imports: [
     ColourLegend,
+    ComparisonLayer,
     GraphCanvas,
     LabelLayer,
     NodeMark,
@@ -69,6 +72,7 @@ export class DrawingSheet {
   protected readonly scene = inject(DrawingScene);
   protected readonly pointer = inject(SheetPointer);
   protected readonly labelling = inject(SheetLabelling);
+  protected readonly comparison = inject(DrawingComparison);
   private readonly keys = inject(SheetKeys);
   private readonly others = inject(Company);
   private readonly comments = inject(CommentStore);
@@ -211,9 +215,11 @@ export class DrawingSheet {
     return mode.kind === 'moving' && mode.ids[0] === id && mode.grip?.kind === 'corner' ? mode.grip.index : -1;
   }
 
-  /** What is read out: the element, its open comments, and who else has it selected. */
+  /** What is read out: the element, what is otherwise than before, its open comments, and who else has it selected. */
   protected spoken({ id, name }: NodeView | PipeView): string {
-    return [name, this.comments.wordsFor(id), this.others.wordsFor(id)].filter((part) => part !== '').join(', ');
+    return [name, this.comparison.wordsFor(id), this.comments.wordsFor(id), this.others.wordsFor(id)]
+      .filter((part) => part !== '')
+      .join(', ');
   }
 
   /** With the mouse; by keyboard the element's own tab leads there. */

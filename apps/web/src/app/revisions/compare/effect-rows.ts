@@ -57,6 +57,20 @@ export function effectRows({ traps }: ResultEffects, context: EffectContext): Ef
     .map((trap) => rowOf(trap, earlier.get(trap.id), later.get(trap.id), context));
 }
 
+/** "Result only in C: 2 traps, 1 failing. Result only in B: 1 trap." Traps with a result in one of the two alone turn no verdict. */
+export function oneSidedWords(rows: readonly EffectRow[], labels: { before: string; after: string }): string {
+  const come = rows.filter(({ beforeSi, afterSi }) => beforeSi === undefined && afterSi !== undefined);
+  const gone = rows.filter(({ beforeSi, afterSi }) => beforeSi !== undefined && afterSi === undefined);
+  const traps = (count: number) => `${String(count)} ${count === 1 ? 'trap' : 'traps'}`;
+  const failing = come.filter(({ to }) => to === 'fail').length;
+  return [
+    ...(come.length > 0
+      ? [`Result only in ${labels.after}: ${traps(come.length)}${failing > 0 ? `, ${String(failing)} failing` : ''}.`]
+      : []),
+    ...(gone.length > 0 ? [`Result only in ${labels.before}: ${traps(gone.length)}.`] : []),
+  ].join(' ');
+}
+
 /** The kind of quantity that a column of pressures is printed as. */
 export function kindOf(quantity: ComparedQuantity): QuantityKind {
   return quantity === 'backPressurePa' ? 'pressure' : 'pressureDifference';

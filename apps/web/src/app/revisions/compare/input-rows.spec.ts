@@ -91,6 +91,18 @@ describe('what was changed, in words', () => {
     const after = file({
       pipes: [...pipes, branch('L9', 'CR-30', { checkValve: true, fittings: [{ kind: 'elbow90', count: 2 }] })],
     });
+    // a float-thermostatic trap has a sizing factor of 2, drains continuously and serves at one pressure unless it says otherwise
+    const drip = {
+      ...trap,
+      id: 'T2',
+      tag: 'TR-102',
+      trapType: 'floatThermostatic',
+      sizingFactor: 2,
+      discharge: 'continuous',
+    };
+    expect(rows(file(), file({ nodes: [trap, receiver, drip] }))[0]?.details).toBe(
+      'elevation 0 ft; inlet pressure 74.9 psig; load 397 lb/h; trap type Float-thermostatic',
+    );
     const [row] = rows(file(), after);
     expect(row).toMatchObject({ what: 'CR-30', quantity: 'Pipe', before: '–', after: 'added' });
     expect(row?.details).toMatch(

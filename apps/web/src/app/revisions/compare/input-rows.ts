@@ -253,10 +253,12 @@ function overrideWords({ overrides }: FileCase, telling: Telling): string[] {
   });
 }
 
+/** Of a trap they hang on its type and on what else it says. */
 function defaultsOf(list: ElementChange['in'], element: ComparedElement): ReadonlyMap<string, unknown> {
   if ('kind' in element && element.kind === 'trap') {
     const { loadTolerance: _l, subcoolingK: _k, discharge: _d, peakFactor: _p, service: _s, ...given } = element;
-    return new Map(Object.entries(withTrapDefaults({ ...given, sizingFactor: undefined })));
+    const defaults = withTrapDefaults({ ...given, sizingFactor: undefined });
+    return new Map(Object.entries(defaults).filter(([key]) => key === 'sizingFactor' || !(key in given)));
   }
   const parts: Partial<Record<ElementChange['in'], FilePart>> = { pipes: 'pipe', cases: 'case', gauges: 'gauge' };
   const part = 'kind' in element ? element.kind : parts[list];

@@ -1,7 +1,7 @@
 import { ChangeDetectionStrategy, Component, computed, inject, input, output, signal } from '@angular/core';
 import { badness, type CommentSubject } from '@riseback/contracts';
 import { compareNetworks, compareResults, countChanges } from '@riseback/revisions';
-import type { DisplayUnits } from '@riseback/units';
+import { type DisplayUnits, displayUnit } from '@riseback/units';
 import { SessionStore } from '../../session/session-store';
 import { nameOf } from '../../shared/element-words';
 import { StatusMark } from '../../shared/status-mark/status-mark';
@@ -10,7 +10,7 @@ import type { RevisionSide } from '../revision-side';
 import { compareSentence } from './compare-sentence';
 import { caseNames, caseNotes, caseOptions, WORST_OF_BOTH } from './compared-cases';
 import { EffectList } from './effect-list';
-import { type ComparedQuantity, effectRows } from './effect-rows';
+import { type ComparedQuantity, effectRows, oneSidedWords } from './effect-rows';
 import { InputList } from './input-list';
 import { inputRows } from './input-rows';
 
@@ -40,6 +40,10 @@ export class RevisionCompare {
   protected readonly units = computed((): DisplayUnits => ({
     system: this.session.unitSystem(),
     atmosphericPressurePa: this.after().file.site.atmosphericPressurePa,
+  }));
+  protected readonly titles = computed(() => ({
+    pressure: displayUnit('pressure', this.units().system),
+    difference: displayUnit('pressureDifference', this.units().system),
   }));
   protected readonly labels = computed(() => ({ before: this.before().label, after: this.after().label }));
 
@@ -98,7 +102,10 @@ export class RevisionCompare {
     this.changedOnly() ? this.rows().filter((row) => row.moved) : this.rows(),
   );
   protected readonly turns = computed(() =>
-    turnWords(turnsOf(this.rows().map(({ from, to, turned }) => ({ before: from, after: to, turned })))),
+    [
+      turnWords(turnsOf(this.rows().map(({ from, to, turned }) => ({ before: from, after: to, turned })))),
+      oneSidedWords(this.rows(), this.labels()),
+    ].join(' '),
   );
   private readonly findings = computed(() => {
     const names = new Map<string, string>();
