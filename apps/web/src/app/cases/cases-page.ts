@@ -16,6 +16,7 @@ import { ActivatedRoute, Router, RouterLink } from '@angular/router';
 import { firstValueFrom } from 'rxjs';
 import { NetworkStore } from '../networks/network-store';
 import { UndoButtons, type UndoneStep } from '../networks/undo-buttons';
+import { NoResults } from '../results/no-results/no-results';
 import { DeleteDialog, type DeleteDialogData } from '../shared/delete-dialog/delete-dialog';
 import { compareCases } from './case-comparison';
 import { type CaseEdit, copyOfCase, deletionOfCase, newCase } from './case-edits';
@@ -40,6 +41,7 @@ const TABS = [
     MatTabLink,
     MatTabNav,
     MatTabNavPanel,
+    NoResults,
     RouterLink,
     UndoButtons,
   ],

@@ -1,6 +1,7 @@
 import {
   afterNextRender,
   ChangeDetectionStrategy,
+  ChangeDetectorRef,
   Component,
   computed,
   DestroyRef,
@@ -24,6 +25,7 @@ import { Company } from '../networks/company';
 import { NetworkStore } from '../networks/network-store';
 import { UndoButtons, type UndoneStep } from '../networks/undo-buttons';
 import { backPressureLimit } from '@riseback/figures';
+import { NoResults } from '../results/no-results/no-results';
 import { BulkBar } from './bulk-bar/bulk-bar';
 import { TrialSolve } from './bulk-bar/trial-solve';
 import type { DialogName } from './columns/column';
@@ -36,15 +38,25 @@ import { StatusMark } from '../shared/status-mark/status-mark';
 import { DeleteDialog, type DeleteDialogData } from '../shared/delete-dialog/delete-dialog';
 import type { CellEdit } from './grid/cell-editing';
 import { ListGrid } from './grid/list-grid';
+import { ListPrint } from './print/list-print';
+import { printTitle } from './print/print-title';
 import { writeCopiedCells } from './exchange/block-text';
 import { ExchangeTools } from './exchange/exchange-tools';
 import type { OpenList } from './exchange/list-exchange';
 import { listContext } from './list-context';
 import { ELEMENT_LISTS, type ElementList, isDrawn, type NewKind } from './list-definitions';
+import type { ListTable } from './list-table';
 import { newElementForm } from './new-element';
 
 /** How long the active row must stand before the address names it. */
 const ADDRESS_DELAY_MS = 300;
+
+interface Printing {
+  readonly table: ListTable;
+  readonly title: string;
+  readonly keys: readonly string[];
+  readonly ids: readonly string[];
+}
 
 /** The elements of the network as tables: inputs to be edited in place, results beside them. */
 @Component({
@@ -54,15 +66,18 @@ const ADDRESS_DELAY_MS = 300;
     CopyNews,
     ExchangeTools,
     ListGrid,
+    ListPrint,
     MatButton,
     MatTabLink,
     MatTabNav,
     MatTabNavPanel,
+    NoResults,
     RouterLink,
     StatusMark,
     UndoButtons,
   ],
   changeDetection: ChangeDetectionStrategy.OnPush,
+  host: { '(window:beforeprint)': 'layOutForPaper()', '(window:afterprint)': 'printing.set(null)' },
   templateUrl: './lists-page.html',
   styleUrl: './lists-page.scss',
 })
@@ -76,6 +91,7 @@ export class ListsPage {
   private readonly router = inject(Router);
   private readonly route = inject(ActivatedRoute);
   private readonly injector = inject(Injector);
+  private readonly changeDetector = inject(ChangeDetectorRef);
 
   /** From the query: which list, and which element's row; the element's own list comes first. */
   readonly list = input<string>();
@@ -85,6 +101,8 @@ export class ListsPage {
 
   protected readonly filter = signal('');
   protected readonly told = signal('');
+  /** What goes on paper, from when the browser asks for it until it has it: the screen holds only the rows in sight. */
+  protected readonly printing = signal<Printing | null>(null);
   /** Why a file or the clipboard could not be read. */
   protected readonly complaint = signal('');
   private addressTimer: ReturnType<typeof setTimeout> | undefined;
@@ -245,6 +263,23 @@ export class ListsPage {
     const id = added?.op === 'add' ? added.value['id'] : undefined;
     if (typeof id === 'string') this.showRowSoon(id);
     else this.grid()?.focus();
+  }
+
+  protected layOutForPaper(): void {
+    const [table, grid, network] = [this.table(), this.grid(), this.store.network()];
+    if (table === null || grid === undefined || network === null) return;
+    const { keys, ids } = grid.inSight();
+    const title = printTitle({
+      list: this.current().word,
+      network: this.store.document()?.name ?? '',
+      site: network.siteName,
+      caseName: this.store.caseName(),
+      filter: this.filter().trim(),
+      solved: this.store.solveState().kind === 'solved',
+    });
+    this.printing.set({ table, keys, ids, title });
+    // the browser takes the page as it stands when this returns
+    this.changeDetector.detectChanges();
   }
 
   protected clearSelection(): void {

@@ -8,6 +8,7 @@ import { PlanTool } from '../drawing/plan/plan-tool';
 import { RevisionHistory } from '../revisions/revision-history';
 import { RevisionTitleBlock } from '../revisions/revision-title-block';
 import { BANDS_TO_COME } from '../shared/bands-to-come';
+import { onlineSignal } from '../shared/online';
 import { ProblemBanner } from '../shared/problem-banner/problem-banner';
 import { AppBar } from '../shell/app-bar';
 import { Company } from './company';
@@ -31,6 +32,9 @@ const VIEWS = [
   { path: 'report', word: 'Report' },
   { path: 'method', word: 'Method' },
 ] as const;
+
+/** Of a problem that no server told. */
+const NOT_REACHED = 0;
 
 /** The frame of one network: views, title block, and the view that the route names. */
 @Component({
@@ -74,6 +78,7 @@ const VIEWS = [
 export class NetworkPage {
   protected readonly store = inject(NetworkStore);
   protected readonly drafts = inject(DraftKeeper);
+  protected readonly online = onlineSignal();
   protected readonly history = inject(RevisionHistory);
   private readonly company = inject(Company);
   private readonly title = inject(Title);
@@ -118,9 +123,10 @@ export class NetworkPage {
     });
   }
 
-  /** The network is back: what could not be saved goes out without the person having to ask. */
+  /** The connection is back: what could not be loaded or saved comes and goes without the person having to ask. */
   protected saveAfterOffline(): void {
-    if (this.store.saveState() === 'notSaved') this.store.retrySave();
+    if (this.store.problem()?.status === NOT_REACHED) this.store.open(this.networkId());
+    else if (this.store.saveState() === 'notSaved') this.store.retrySave();
   }
 
   /** On a phone the row of views is wider than the screen. */

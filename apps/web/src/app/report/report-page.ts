@@ -1,14 +1,13 @@
 import { ChangeDetectionStrategy, Component, computed, effect, inject, input, viewChild } from '@angular/core';
-import { toSignal } from '@angular/core/rxjs-interop';
 import { Router, RouterLink } from '@angular/router';
 import type { ReportJob, ReportRequest } from '@riseback/contracts';
 import { inOrder } from '@riseback/network';
-import { fromEvent, map, merge, startWith } from 'rxjs';
 import { NetworkStore } from '../networks/network-store';
 import { RevisionHistory } from '../revisions/revision-history';
 import { STATE_WORDS } from '../revisions/revision-words';
 import { SessionStore } from '../session/session-store';
 import { nameOf } from '../shared/element-words';
+import { onlineSignal } from '../shared/online';
 import { ProblemBanner } from '../shared/problem-banner/problem-banner';
 import { ReportForm } from './report-form';
 import { ReportList } from './report-list';
@@ -35,13 +34,7 @@ export class ReportPage {
   readonly revision = input<string>();
 
   private readonly form = viewChild(ReportForm);
-  protected readonly online = toSignal(
-    merge(fromEvent(window, 'online'), fromEvent(window, 'offline')).pipe(
-      startWith(null),
-      map(() => navigator.onLine),
-    ),
-    { requireSync: true },
-  );
+  protected readonly online = onlineSignal();
 
   protected readonly shown = computed(() => this.history.revisions().find(({ id }) => id === this.revision()) ?? null);
   protected readonly revisionId = computed(() => this.shown()?.id);
