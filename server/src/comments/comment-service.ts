@@ -116,7 +116,8 @@ export class CommentService {
         given.map((pointer) => ({ pointer, detail })),
       );
     }
-    return this.first(this.comments, access, threadId);
+    const first = this.first(this.comments, access, threadId);
+    return { threadId, revisionId: first.revisionId, subject: first.subject };
   }
 
   private first(comments: CommentRepository, { networkId }: NetworkAccess, threadId: string): CommentRow {
