@@ -89,7 +89,7 @@ function printed(number: string): TableCell {
 }
 
 /** The node that the last pipe of the walk runs into, whichever way its arrow points. */
-export function endOfWalk({ pipes, nodes }: TableSource, { walk }: TrapResult): string {
+function endOfWalk({ pipes, nodes }: TableSource, { walk }: TrapResult): string {
   const last = pipes.get(walk.at(-1) ?? '');
   if (last === undefined) return '';
   const isEnd = (id: string) => ['receiver', 'flashVessel'].includes(nodes.get(id)?.kind ?? '');

@@ -21,7 +21,7 @@ export function reportTables(content: ReportContent): ReportTable[] {
     ...inputs,
     ...resultTables(source, cases),
     findingTable(source),
-    ...ledgerTables(source, toldWays(source, cases, ledgersOf)),
+    ...ledgerTables(source, toldWays(cases, ledgersOf)),
     ...(previous === undefined ? [] : compared(content, previous, { source, inputs, cases })),
   ];
 }

@@ -1,26 +1,26 @@
 import type { SolveResult, TrapResult } from '@riseback/contracts';
-import { endOfWalk, type ToldWay } from './ledger-tables';
+import { headersOf } from './headers';
+import type { ToldWay } from './ledger-tables';
 import type { SolvedCase } from './solved-cases';
-import type { TableSource } from './table-source';
 
 type WithResult = SolvedCase & { readonly result: SolveResult };
 
 /**
- * The ways whose accounts are told: of each vessel or receiver the trap that stands highest against it in any case, then the traps
- * that were asked for, each in its own highest case.
+ * The ways whose accounts are told: of each header the trap that stands highest in any case, then the traps that were asked for, each in
+ * its own highest case.
  */
-export function toldWays(source: TableSource, cases: readonly SolvedCase[], wanted: readonly string[]): ToldWay[] {
-  const ways = highestOfTraps(cases.filter(hasResult));
-  const governing = new Map<string, { readonly way: ToldWay; readonly backPressurePa: number }>();
-  for (const { way, trap } of ways.values()) {
-    const end = endOfWalk(source, trap);
-    const before = governing.get(end);
-    if (before === undefined || trap.backPressurePa > before.backPressurePa)
-      governing.set(end, { way, backPressurePa: trap.backPressurePa });
+export function toldWays(cases: readonly SolvedCase[], wanted: readonly string[]): ToldWay[] {
+  const highest = highestOfTraps(cases.filter(hasResult));
+  const headers = headersOf([...highest.values()].map(({ trap }) => ({ trapId: trap.id, walk: trap.walk })));
+  const governing = new Map<string, HighestOfTrap>();
+  for (const each of highest.values()) {
+    const header = headers.get(each.trap.id) ?? '';
+    const before = governing.get(header);
+    if (before === undefined || each.trap.backPressurePa > before.trap.backPressurePa) governing.set(header, each);
   }
   const told = new Map([...governing.values()].map(({ way }) => [way.trapId, way]));
   for (const trapId of wanted) {
-    const way = ways.get(trapId)?.way;
+    const way = highest.get(trapId)?.way;
     if (way !== undefined) told.set(trapId, way);
   }
   return [...told.values()];

@@ -39,7 +39,7 @@ export async function makePdf(content: ReportContent, progress: ReportProgress, 
     ['Setting the inputs', () => inputPages(sheet, inputs)],
     ['Setting the method', () => methodPages(sheet, content.file.method)],
     ['Setting the results', () => resultPages(sheet, resultTables(source, cases))],
-    ['Setting the ledgers', () => ledgerPages(sheet, source, toldWays(source, cases, content.ledgersOf))],
+    ['Setting the ledgers', () => ledgerPages(sheet, source, toldWays(cases, content.ledgersOf))],
     ['Setting the findings', () => findingPages(sheet, findingTable(source))],
     ...(previous === undefined
       ? []
