@@ -86,6 +86,7 @@ export class AcceptanceForm {
     await this.enter(password);
     this.busy.set(false);
     this.accepted.emit();
+    this.store.forget();
   }
 
   /** Who was not signed in here need not type it all again, unless the code is spent; whoever else was, stays. */

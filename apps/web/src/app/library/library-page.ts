@@ -11,6 +11,7 @@ import { ProblemBanner } from '../shared/problem-banner/problem-banner';
 import { StatusMark } from '../shared/status-mark/status-mark';
 import { AppBar } from '../shell/app-bar';
 import { contentOf, LibraryStore } from './library-store';
+import { LibraryOverview } from './library-overview';
 import { ModelForm } from './model-form';
 import { ModelView } from './model-view';
 
@@ -19,7 +20,17 @@ type Editing = 'no' | 'new' | 'chosen';
 /** The trap models of a site: find one, read it with its history, and, for designers, keep them. */
 @Component({
   selector: 'app-library-page',
-  imports: [AppBar, ChoiceField, MatButton, ModelForm, ModelView, ProblemBanner, RouterLink, StatusMark],
+  imports: [
+    AppBar,
+    ChoiceField,
+    LibraryOverview,
+    MatButton,
+    ModelForm,
+    ModelView,
+    ProblemBanner,
+    RouterLink,
+    StatusMark,
+  ],
   changeDetection: ChangeDetectionStrategy.OnPush,
   providers: [LibraryStore],
   templateUrl: './library-page.html',

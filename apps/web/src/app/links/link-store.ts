@@ -26,16 +26,15 @@ export class LinkStore {
   }
 
   accept(acceptance: Omit<InvitationAcceptance, 'token'>): Promise<Outcome<void>> {
-    return this.use((token) => outcomeOf(this.api.accept({ ...acceptance, token })));
+    return outcomeOf(this.api.accept({ ...acceptance, token: this.token.value() ?? '' }));
   }
 
   completeReset(completion: Omit<ResetCompletion, 'token'>): Promise<Outcome<void>> {
-    return this.use((token) => outcomeOf(this.api.completeReset({ ...completion, token })));
+    return outcomeOf(this.api.completeReset({ ...completion, token: this.token.value() ?? '' }));
   }
 
-  private async use(send: (token: string) => Promise<Outcome<void>>): Promise<Outcome<void>> {
-    const outcome = await send(this.token.value() ?? '');
-    if ('value' in outcome) this.token.hold(null);
-    return outcome;
+  /** Once it has been used and the page says so: without a link there is no form either. */
+  forget(): void {
+    this.token.hold(null);
   }
 }

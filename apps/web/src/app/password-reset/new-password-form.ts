@@ -104,6 +104,7 @@ export class NewPasswordForm {
     if ('problem' in outcome) return this.tell(outcome.problem);
     this.session.forget();
     this.changed.emit();
+    this.store.forget();
   }
 
   private tell(problem: Problem): void {

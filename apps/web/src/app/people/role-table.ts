@@ -7,7 +7,7 @@ import { PERMISSION_HEADS, roleName } from './role-words';
   selector: 'app-role-table',
   changeDetection: ChangeDetectionStrategy.OnPush,
   template: `
-    <div class="scroll" tabindex="0" role="region" aria-label="What each role may do">
+    <div class="scroll" tabindex="0" role="region" aria-label="Table of roles">
       <table>
         <thead>
           <tr>
