@@ -95,7 +95,7 @@ test('no page is wider than its window, on a phone and at a zoom of 200 %', asyn
       `${network}/cases?show=compare`,
       `${network}/try?element=TR5`,
       `${network}/report`,
-    `${network}/method`,
+      `${network}/method`,
     ]) {
       await page.goto(path);
       await page.waitForLoadState('networkidle');

@@ -71,7 +71,7 @@ test('a revision is submitted, returned with a comment on a pipe, mended, and si
   await reviewer.getByRole('tab', { name: 'Comments' }).click();
   const comment = reviewer.getByLabel(/^New comment on /);
   await comment.fill('Is this riser carried to the rack? @In');
-  await expect(reviewer.getByRole('option')).toHaveCount(1);
+  await expect(reviewer.getByRole('listbox', { name: 'Names' }).getByRole('option')).toHaveCount(1);
   await comment.press('Enter');
   await expect(comment).toHaveValue(/@\S+ \S+ $/);
   // what is typed outlives the page

@@ -55,7 +55,9 @@ export class SigningForm {
 
   protected readonly terms = computed((): SigningTerms | null => {
     const load = this.reader.terms();
-    return load.status === 'ready' && load.value.meaning === this.reader.meaning() ? load.value : null;
+    if (load.status !== 'ready' || load.value.meaning !== this.reader.meaning()) return null;
+    // those of another revision may still stand there while this one's are read
+    return load.value.fileHash === this.revision().fileHash ? load.value : null;
   });
   protected readonly termsProblem = computed(() => {
     const load = this.reader.terms();
