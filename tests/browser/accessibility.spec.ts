@@ -16,8 +16,8 @@ const SIZES = [
   { width: 320, height: 640 },
 ] as const;
 
-/** By what they are about: the paths of their pages, from those of the demo's network and of an empty one. */
-const PAGES: Readonly<Record<string, (network: string, empty: string) => readonly string[]>> = {
+/** By what they are about: the paths of their pages, from those of the demo's network, of an empty one, and the id of a revision. */
+const PAGES: Readonly<Record<string, (network: string, empty: string, revision: string) => readonly string[]>> = {
   'around the networks': (network) => {
     const site = network.replace(/\/networks\/.*/, '');
     const ofSite = ['', '/library', '/audit', '/people', '/mails'].map((page) => `${site}${page}`);
@@ -49,6 +49,14 @@ const PAGES: Readonly<Record<string, (network: string, empty: string) => readonl
     `${network}/method#check-stall`,
     ...['ledger', 'cases', 'try'].map((view) => `${empty}/${view}`),
   ],
+  'of revisions': (network, empty, revision) => [
+    `${network}/revisions`,
+    `${network}/revisions?revision=working`,
+    `${network}/revisions/${revision}/verification`,
+    `${network}/frozen/${revision}/drawing?element=TR5`,
+    `${network}/frozen/${revision}/lists`,
+    `${empty}/revisions`,
+  ],
 };
 
 test('no axe findings on the pages before one is signed in, in both themes', async ({ page }) => {
@@ -67,7 +75,7 @@ for (const [about, paths] of Object.entries(PAGES)) {
     const network = await demoNetworkPath(page);
     await openEmptyNetwork(page, `Nothing yet ${about}`);
     const empty = new URL(page.url()).pathname.replace(/\/drawing$/, '');
-    for (const path of paths(network, empty)) {
+    for (const path of paths(network, empty, await newestRevision(page, network))) {
       await page.goto(path);
       await page.waitForLoadState('networkidle');
       await expectNoFindings(path, page);
@@ -80,6 +88,7 @@ test('no page is wider than its window, on a phone and at a zoom of 200 %', asyn
   await signIn(page, 'admin');
   const network = await demoNetworkPath(page);
   const site = network.replace(/\/networks\/.*/, '');
+  const revision = await newestRevision(page, network);
   for (const size of SIZES) {
     await page.setViewportSize(size);
     for (const path of [
@@ -95,6 +104,10 @@ test('no page is wider than its window, on a phone and at a zoom of 200 %', asyn
       `${network}/cases?show=compare`,
       `${network}/try?element=TR5`,
       `${network}/report`,
+      `${network}/revisions`,
+      `${network}/revisions?revision=working`,
+      `${network}/frozen/${revision}/drawing`,
+      `${network}/revisions/${revision}/verification`,
       `${network}/method`,
     ]) {
       await page.goto(path);
@@ -104,6 +117,12 @@ test('no page is wider than its window, on a phone and at a zoom of 200 %', asyn
     }
   }
 });
+
+async function newestRevision(page: Page, network: string): Promise<string> {
+  const answer = await page.request.get(`/api/networks/${network.split('/').at(-1) ?? ''}/revisions`);
+  const [newest] = (await answer.json()) as { id: string }[];
+  return newest?.id ?? 'none';
+}
 
 /** A theme changes colours alone: once a page has met every rule, the dark one is held to those of colour; the long form holds it to all. */
 async function expectNoFindings(path: string, page: Page): Promise<void> {

@@ -101,6 +101,11 @@ function screens({ siteId, networkId, elements }, empty) {
     { name: 'report', path: `${network}/report`, solved: true },
     { name: 'method', path: `${network}/method` },
     { name: 'method-section', path: `${network}/method#friction-friedel` },
+    { name: 'revisions', path: `${network}/revisions` },
+    { name: 'revisions-working', path: `${network}/revisions?revision=working` },
+    { name: 'revisions-empty', path: `/sites/${siteId}/networks/${empty}/revisions` },
+    { name: 'verification', path: `${network}/revisions/${elements.revision}/verification` },
+    { name: 'frozen', path: `${network}/frozen/${elements.revision}/drawing`, solved: true },
     { name: 'cases', path: `${network}/cases?case=rt5open`, solved: true },
     { name: 'cases-compare', path: `${network}/cases?show=compare`, solved: true },
     { name: 'drawing-worst', path: `${network}/drawing?case=worst&element=${elements.trap}`, solved: true },
@@ -161,6 +166,7 @@ async function demoNetwork(context) {
   const [site] = await json(context, '/api/sites');
   const [network] = await json(context, `/api/sites/${site.id}/networks`);
   const file = await json(context, `/api/networks/${network.id}/file`);
+  const [revision] = await json(context, `/api/networks/${network.id}/revisions`);
   return {
     siteId: site.id,
     networkId: network.id,
@@ -168,6 +174,7 @@ async function demoNetwork(context) {
       trap: file.nodes.find(({ tag }) => tag === 'BL-2').id,
       exchanger: file.nodes.find(({ service }) => service?.kind === 'modulating').id,
       pipe: file.pipes.find(({ route }) => route !== undefined).id,
+      revision: revision?.id ?? 'none',
     },
   };
 }
