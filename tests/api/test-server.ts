@@ -15,6 +15,7 @@ import { memberships, people, sites } from '../../server/src/platform/db/schema'
 import { createLog } from '../../server/src/platform/log';
 import { makeReport } from '../../server/src/reports/report-material';
 import type { ReportPort } from '../../server/src/reports/report-threads';
+import type { SignatureKeys } from '../../server/src/revisions/signature-keys';
 import { solveCases } from '../../server/src/solve/solve-cases';
 import type { FileSolver, SolvePort } from '../../server/src/solve/solve-port';
 import { solveText } from '../../server/src/solve/solve-text';
@@ -41,6 +42,8 @@ export interface TestServerOptions {
   readonly webFolder?: string;
   readonly heartbeatMs?: number;
   readonly receivedMails?: ReceivedMails;
+  /** Kept in a file, where that matters. */
+  readonly keys?: SignatureKeys;
   /** One on a disk, where that matters. */
   readonly db?: Database;
   readonly observe?: RequestHandler;
@@ -79,6 +82,7 @@ export class TestServer {
       solver: solverOf(options),
       reportPort: options.reportPort ?? { make: makeReport },
       ...(options.hasher === undefined ? {} : { hasher: options.hasher }),
+      ...(options.keys === undefined ? {} : { keys: options.keys }),
       receivedMails: options.receivedMails,
       webFolder: options.webFolder,
       ...(options.observe === undefined ? {} : { observe: options.observe }),

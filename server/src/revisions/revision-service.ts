@@ -17,6 +17,7 @@ import { conflict, forbidden, notFound, unprocessable } from '../platform/proble
 import type { LiveSolves } from '../solve/live-solves';
 import { frozenContent, outcomesText, readOutcomes } from './frozen-revision';
 import { summaryOf, type OutcomeSummary } from './outcome-summary';
+import { parsedJson } from './parsed-json';
 import { historyOf, stateOf, type RevisionWithHistory } from './revision-history';
 import { authorsOf, type RevisionMails } from './revision-mails';
 import { recordFreeze, recordMove, type DoneBy } from './revision-moves';
@@ -186,7 +187,7 @@ export class RevisionService {
 
   /** The frozen file, its cases in their order. @throws ProblemError 422 when it was changed since and cannot be read */
   file(row: RevisionRow): NetworkFile {
-    const read = NetworkFileShape.safeParse(parsed(this.revisions.fileText(row.id) ?? ''));
+    const read = NetworkFileShape.safeParse(parsedJson(this.revisions.fileText(row.id) ?? ''));
     if (!read.success) {
       throw unprocessable(`The frozen inputs of revision ${row.letter} cannot be read: verify the revision.`);
     }
@@ -276,12 +277,4 @@ function signatureOf(row: ReturnType<RevisionRepository['signatures']>[number]):
   const statement = readStatement(signature.statement);
   if (statement === undefined) return [];
   return [{ ...signature, at: statement.at, role: statement.person.role }];
-}
-
-function parsed(text: string): unknown {
-  try {
-    return JSON.parse(text);
-  } catch {
-    return undefined;
-  }
 }

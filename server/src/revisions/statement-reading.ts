@@ -1,6 +1,7 @@
 import { REVISION_STATES, Role, SIGNATURE_MEANINGS } from '@riseback/contracts';
 import type { SigningStatement } from '@riseback/revisions';
 import * as z from 'zod';
+import { parsedJson } from './parsed-json';
 
 const text = z.string();
 
@@ -35,9 +36,5 @@ export type ReadStatement = z.infer<typeof Statement> & SigningStatement;
 
 /** Undefined for a text that is no statement of ours. */
 export function readStatement(statement: string): ReadStatement | undefined {
-  try {
-    return Statement.parse(JSON.parse(statement));
-  } catch {
-    return undefined;
-  }
+  return Statement.safeParse(parsedJson(statement)).data;
 }

@@ -1,7 +1,8 @@
-import { and, asc, eq, like } from 'drizzle-orm';
+import { and, asc, eq, like, sql } from 'drizzle-orm';
 import * as z from 'zod';
 import type { Queries } from '../platform/db/database';
 import { audit } from '../platform/db/schema';
+import { parsedJson } from './parsed-json';
 import { RevisionRepository } from './revision-repository';
 
 /** What the log's entries of a revision say of it; an entry says one of these things. */
@@ -28,13 +29,16 @@ export class VerificationRepository {
 
   /** What the log holds of a revision, in the order in which it was written. */
   entriesOf(revisionId: string): LogEntry[] {
-    return this.db
-      .select({ seq: audit.seq, action: audit.action, details: audit.details })
-      .from(audit)
-      .where(and(eq(audit.subject, revisionId), like(audit.action, 'revision.%')))
-      .orderBy(asc(audit.seq))
-      .all()
-      .map(({ seq, action, details }) => ({ seq, action, ...Details.safeParse(details).data }));
+    return (
+      this.db
+        // as text: what was changed may be no JSON any more
+        .select({ seq: audit.seq, action: audit.action, details: sql<string>`${audit.details}` })
+        .from(audit)
+        .where(and(eq(audit.subject, revisionId), like(audit.action, 'revision.%')))
+        .orderBy(asc(audit.seq))
+        .all()
+        .map(({ seq, action, details }) => ({ seq, action, ...Details.safeParse(parsedJson(details)).data }))
+    );
   }
 
   entryHash(seq: number): string | undefined {

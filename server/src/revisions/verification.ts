@@ -4,6 +4,7 @@ import { checkAudit } from '../platform/db/audit-check';
 import type { AuditHead } from '../platform/db/audit-head-log';
 import type { Queries } from '../platform/db/database';
 import type { SolvePort } from '../solve/solve-port';
+import { parsedJson } from './parsed-json';
 import { solvedAgain } from './solved-again';
 import { verifyEvents } from './verify-events';
 import { verifyInputs, verifyRecord, verifyResults } from './verify-content';
@@ -94,18 +95,10 @@ function verifyLog(db: Queries, heads: readonly AuditHead[]): VerificationStep {
 }
 
 function readFile(text: string): NetworkFile | undefined {
-  return NetworkFileShape.safeParse(parsed(text)).data;
+  return NetworkFileShape.safeParse(parsedJson(text)).data;
 }
 
 function readAll(rows: readonly { readonly result: string }[]): CaseOutcome[] | undefined {
-  const read = rows.map(({ result }) => CaseOutcome.safeParse(parsed(result)).data);
+  const read = rows.map(({ result }) => CaseOutcome.safeParse(parsedJson(result)).data);
   return read.every((outcome) => outcome !== undefined) ? read : undefined;
-}
-
-function parsed(text: string): unknown {
-  try {
-    return JSON.parse(text);
-  } catch {
-    return undefined;
-  }
 }

@@ -2,6 +2,7 @@ import type { VerificationStep } from '@riseback/contracts';
 import { recordText } from '@riseback/revisions';
 import { resultsHashOf } from './frozen-revision';
 import { sha256 } from './hashes';
+import { parsedJson } from './parsed-json';
 import type { RevisionRow, StoredOutcome } from './revision-repository';
 import type { LogEntry } from './verification-repository';
 
@@ -48,10 +49,6 @@ export function verifyRecord(row: RevisionRow, entries: readonly LogEntry[]): Ve
 }
 
 function caseIdOf(result: string): unknown {
-  try {
-    const outcome: unknown = JSON.parse(result);
-    return typeof outcome === 'object' && outcome !== null && 'caseId' in outcome ? outcome.caseId : undefined;
-  } catch {
-    return undefined;
-  }
+  const outcome = parsedJson(result);
+  return typeof outcome === 'object' && outcome !== null && 'caseId' in outcome ? outcome.caseId : undefined;
 }

@@ -1,4 +1,4 @@
-import { asc, gt } from 'drizzle-orm';
+import { asc, getTableColumns, gt, sql } from 'drizzle-orm';
 import { auditHash, type AuditRow } from './audit';
 import { GENESIS_HASH, type AuditHead } from './audit-head-log';
 import type { Queries } from './database';
@@ -18,6 +18,9 @@ export interface AuditCheck {
   /** What a person should know although nothing is wrong. */
   readonly notes: readonly string[];
 }
+
+/** Its details as the text that is stored: one that was changed may be no JSON any more. */
+type StoredRow = Omit<AuditRow, 'details'> & { readonly details: string };
 
 const PAGE_ROWS = 1_000;
 
@@ -49,7 +52,7 @@ export function firstBrokenAuditRow(db: Queries): number | undefined {
 }
 
 function mismatchOf(
-  { hash: ownHash, ...row }: AuditRow,
+  { hash: ownHash, details, ...row }: StoredRow,
   seq: number,
   hash: string,
   head: AuditHead | undefined,
@@ -59,19 +62,36 @@ function mismatchOf(
   if (row.previousHash !== hash) {
     return `Entry ${next} does not follow entry ${seq}: an entry was inserted, removed, moved or replaced here.`;
   }
-  if (auditHash(row) !== ownHash) return `Entry ${next} is not as it was written: it was changed afterwards.`;
+  const read = parsed(details);
+  if (read === undefined || auditHash({ ...row, details: read.json }) !== ownHash)
+    return `Entry ${next} is not as it was written: it was changed afterwards.`;
   if (head === undefined || head.hash === ownHash) return undefined;
   return `Entry ${next} is not the one that was noted on ${head.at}: the log was written anew up to here.`;
 }
 
 /** A list with a limit at a time: the log may be larger than the memory. */
-function* rowsOf(db: Queries): Generator<AuditRow> {
+function* rowsOf(db: Queries): Generator<StoredRow> {
+  const columns = { ...getTableColumns(audit), details: sql<string>`${audit.details}` };
   for (let seq = Number.MIN_SAFE_INTEGER; ;) {
-    const page = db.select().from(audit).where(gt(audit.seq, seq)).orderBy(asc(audit.seq)).limit(PAGE_ROWS).all();
+    const page = db
+      .select(columns)
+      .from(audit)
+      .where(gt(audit.seq, seq))
+      .orderBy(asc(audit.seq))
+      .limit(PAGE_ROWS)
+      .all();
     yield* page;
     const last = page.at(-1);
     if (last === undefined) return;
     seq = last.seq;
+  }
+}
+
+function parsed(details: string): { readonly json: unknown } | undefined {
+  try {
+    return { json: JSON.parse(details) };
+  } catch {
+    return undefined;
   }
 }
 
