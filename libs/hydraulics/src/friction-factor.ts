@@ -32,7 +32,13 @@ const LAST_STEP = 1e-4;
  * Source: Colebrook, J. Inst. Civ. Eng. 11 (1939) 133-156; 64/Re is Hagen-Poiseuille; the bridge is this program's choice.
  */
 export function darcyFrictionFactor(Re: number, relativeRoughness: number): number {
-  if (Re >= TURBULENT_LIMIT_RE) return darcyFrictionFactorColebrook(Re, relativeRoughness);
+  return Re >= TURBULENT_LIMIT_RE
+    ? darcyFrictionFactorColebrook(Re, relativeRoughness)
+    : belowTurbulence(Re, relativeRoughness);
+}
+
+/** Apart, so that the turbulent way stays short enough for a compiler to take it into the loops that call it. */
+function belowTurbulence(Re: number, relativeRoughness: number): number {
   // not `Re <= 0 || …`: every comparison with NaN is false, so NaN would slip through
   if (!(Re > 0 && relativeRoughness >= 0 && relativeRoughness < 1)) {
     throw new NonPhysicalInputError('darcyFrictionFactor', { Re, relativeRoughness });

@@ -134,7 +134,9 @@ export class JoinedSets {
   private readonly parents: Int32Array;
 
   constructor(count: number) {
-    this.parents = Int32Array.from({ length: count }, (_, index) => index);
+    this.parents = new Int32Array(count);
+    // not Int32Array.from: its callback costs several times as much as the whole loop
+    for (let index = 0; index < count; index++) this.parents[index] = index;
   }
 
   join(a: number, b: number): void {

@@ -13,7 +13,7 @@ export interface IntegrationOptions {
   readonly maximumSteps: number;
   /** How many parts the derivative writes; none by default. */
   readonly partCount?: number;
-  /** Arrays for the parts, for callers that integrate again and again; made anew by default. */
+  /** Arrays for the parts and a record for the result, for callers that integrate again and again; made anew by default. */
   readonly workspace?: IntegrationWorkspace;
   /** First step to try, in the unit of s, sign not regarded; by default the whole way. */
   readonly initialStep?: number;
@@ -23,16 +23,16 @@ export interface IntegrationOptions {
   readonly where?: string;
 }
 
-/** The parts' slopes at each stage and their totals. One integration at a time may use it, and the next overwrites its totals. */
+/** The parts' slopes at each stage, and the result. One integration at a time may use it, and the next overwrites its result. */
 export interface IntegrationWorkspace {
   readonly stages: readonly Float64Array[];
-  readonly totals: Float64Array;
+  readonly result: { -readonly [Key in keyof IntegrationResult]: IntegrationResult[Key] };
 }
 
 export function integrationWorkspace(partCount: number): IntegrationWorkspace {
   return {
     stages: Array.from({ length: STAGES }, () => new Float64Array(partCount)),
-    totals: new Float64Array(partCount),
+    result: { y: NaN, steps: 0, rejectedSteps: 0, parts: new Float64Array(partCount) },
   };
 }
 
@@ -82,10 +82,11 @@ export function integrateAdaptive(
   )) {
     throw new NonPhysicalInputError(where, { startS: s, startY: y, endS, absoluteTolerance, initialStep });
   }
-  const { stages, totals } = options.workspace ?? integrationWorkspace(partCount);
+  const { stages, result } = options.workspace ?? integrationWorkspace(partCount);
+  const { parts: totals } = result;
   // not fill(): for three numbers its call costs as much as a stage
   for (let part = 0; part < totals.length; part++) totals[part] = 0;
-  if (s === endS) return { y, steps: 0, rejectedSteps: 0, parts: totals };
+  if (s === endS) return ended(result, y, 0, 0);
 
   const whole = endS - s;
   const direction = Math.sign(whole);
@@ -125,7 +126,7 @@ export function integrateAdaptive(
       y = nextY;
       steps++;
       onStep?.(s, y);
-      if (last) return { y, steps, rejectedSteps, parts: totals };
+      if (last) return ended(result, y, steps, rejectedSteps);
       // the last stage is the first of the next step; its parts move along with it
       k1 = k7;
       for (let part = 0; part < partCount; part++) parts1[part] = parts7[part] as number;
@@ -136,6 +137,18 @@ export function integrateAdaptive(
     step = h * stepFactor(error);
   }
   throw new NoConvergenceError(where, steps + rejectedSteps, endS - s);
+}
+
+function ended(
+  result: IntegrationWorkspace['result'],
+  y: number,
+  steps: number,
+  rejectedSteps: number,
+): IntegrationResult {
+  result.y = y;
+  result.steps = steps;
+  result.rejectedSteps = rejectedSteps;
+  return result;
 }
 
 /** How much longer the next step may be: fifth-order rule with a margin, at most fivefold either way. */

@@ -43,7 +43,7 @@ const LAW_NAMES: Readonly<Record<FrictionLawName, string>> = {
 export function contendersOf(method: Method, tolerancePa: number): Contenders {
   const contender = (name: string, changes: Partial<MarchMethod>): Contender => {
     const changed = { ...method, ...changes };
-    return { name, method: changed, marcher: new PipeMarcher({ method: changed, tolerancePa }) };
+    return { name, method: changed, marcher: new PipeMarcher({ method: changed, tolerancePa, undivided: true }) };
   };
   const spread = FRICTION_METHODS.flatMap((friction) =>
     SPREAD_STATIC.filter((staticLift) => !isChosen(method, friction, staticLift)).map((staticLift) =>

@@ -38,15 +38,12 @@ export interface FrictionLaw {
   readonly vapourAlone: boolean;
 }
 
-export const FRICTION_LAWS: Readonly<Record<FrictionLawName, FrictionLaw>> = {
-  flashVapour: { write: writeFlashVapour, vapourAlone: true },
-  homogeneous: fullBore(homogeneousGradient),
-  lockhartMartinelli: fullBore(lockhartMartinelliGradient),
-  friedel: fullBore(friedelGradient),
-  mullerSteinhagenHeck: fullBore(mullerSteinhagenHeckGradient),
-  byPattern: patterned('smooth'),
-  byPatternWavy: patterned('wavy'),
-};
+type FrictionLaws = Readonly<Record<FrictionLawName, FrictionLaw>>;
+
+export const FRICTION_LAWS: FrictionLaws = lawsThat(writeAboveLiquid);
+
+/** The same for whoever asks for the whole gradient alone, which stands as friction: what the liquid would cost is not looked for. */
+export const UNDIVIDED_FRICTION_LAWS: FrictionLaws = lawsThat(writeWhole);
 
 export const VOID_FRACTION_LAWS: Readonly<Record<Method['voidFraction'], VoidFraction>> = {
   homogeneous: voidFractionHomogeneous,
@@ -61,21 +58,36 @@ function writeFlashVapour(flow: FlashingFlow, parts: Float64Array): number {
   return 1;
 }
 
-function fullBore(gradient: (flow: FlashingFlow) => number): FrictionLaw {
+/** How a gradient of both phases together is written in parts. */
+type Divide = (flow: FlashingFlow, totalPaM: number, parts: Float64Array) => void;
+
+function lawsThat(divide: Divide): FrictionLaws {
+  return {
+    flashVapour: { write: writeFlashVapour, vapourAlone: true },
+    homogeneous: fullBore(homogeneousGradient, divide),
+    lockhartMartinelli: fullBore(lockhartMartinelliGradient, divide),
+    friedel: fullBore(friedelGradient, divide),
+    mullerSteinhagenHeck: fullBore(mullerSteinhagenHeckGradient, divide),
+    byPattern: patterned('smooth', divide),
+    byPatternWavy: patterned('wavy', divide),
+  };
+}
+
+function fullBore(gradient: (flow: FlashingFlow) => number, divide: Divide): FrictionLaw {
   return {
     write: (flow, parts) => {
-      writeAboveLiquid(flow, gradient(flow), parts);
+      divide(flow, gradient(flow), parts);
       return 1;
     },
     vapourAlone: false,
   };
 }
 
-function patterned(surface: LiquidSurface): FrictionLaw {
+function patterned(surface: LiquidSurface, divide: Divide): FrictionLaw {
   return {
     write: (flow, parts) => {
       const { gradientPaM, fullBoreShare } = byPatternGradient(flow, surface);
-      writeAboveLiquid(flow, gradientPaM, parts);
+      divide(flow, gradientPaM, parts);
       return fullBoreShare;
     },
     vapourAlone: false,
@@ -87,4 +99,9 @@ function writeAboveLiquid(flow: FlashingFlow, totalPaM: number, parts: Float64Ar
   const liquidPaM = Math.min(liquidOnlyGradient(flow), totalPaM);
   parts[FRICTION] = liquidPaM;
   parts[FLASH] = totalPaM - liquidPaM;
+}
+
+function writeWhole(_flow: FlashingFlow, totalPaM: number, parts: Float64Array): void {
+  parts[FRICTION] = totalPaM;
+  parts[FLASH] = 0;
 }

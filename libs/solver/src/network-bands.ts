@@ -71,7 +71,8 @@ export function networkBands(run: SolvedRun): ReadonlyMap<number, TrapBands> {
 function spreadsOfMeshes(run: SolvedRun, { spread }: Contenders): readonly (Float64Array | undefined)[] {
   return spread.map(({ method }) => {
     try {
-      return networkState(run.prepared, run.nodes, { ...run.march, method, onGradient: undefined }).walk.pressurePa;
+      return networkState(run.prepared, run.nodes, { ...run.march, method, undivided: true, onGradient: undefined })
+        .walk.pressurePa;
     } catch (error) {
       if (error instanceof ElementFailure) return undefined;
       throw error;

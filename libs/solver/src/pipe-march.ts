@@ -30,6 +30,7 @@ import {
   FRICTION_LAWS,
   PARTS,
   STATIC,
+  UNDIVIDED_FRICTION_LAWS,
   VOID_FRACTION_LAWS,
   type FrictionLaw,
   type FrictionLawName,
@@ -71,6 +72,8 @@ export interface MarchOptions {
   /** Error allowed in each step of the march. */
   readonly tolerancePa: number;
   readonly onGradient?: ((evaluation: GradientEvaluation) => void) | undefined;
+  /** Pressures alone are asked for: what the two phases cost together need not be told apart. False by default. */
+  readonly undivided?: boolean;
 }
 
 /** Small against 5 Pa even where a walk takes dozens of steps; a step's true error is far below its estimate. */
@@ -107,13 +110,15 @@ export class PipeMarcher {
   private readonly saturation = blankSaturation();
   private readonly flashing: Writable<FlashingFlow>;
   private readonly integration: IntegrationOptions;
+  /** Where each integration begins: at the outlet of its stretch. */
+  private readonly start = { s: 0, y: NaN };
   /** What each part of the pipe at hand has come to. */
   private readonly totals = new Float64Array(PARTS);
   private readonly marched: MarchRecord = blankMarch();
 
   constructor(private readonly options: MarchOptions) {
     const { friction, voidFraction, acceleration } = options.method;
-    this.law = FRICTION_LAWS[friction];
+    this.law = (options.undivided === true ? UNDIVIDED_FRICTION_LAWS : FRICTION_LAWS)[friction];
     this.voidFraction = VOID_FRACTION_LAWS[voidFraction];
     this.accelerates = acceleration && !this.law.vapourAlone;
     this.integration = {
@@ -216,7 +221,8 @@ export class PipeMarcher {
   private integrate(outletPressurePa: number, lengthM: number): IntegrationResult {
     this.at.reachedPa = outletPressurePa;
     try {
-      return integrateAdaptive(this.gradient, { s: 0, y: outletPressurePa }, lengthM, this.integration);
+      this.start.y = outletPressurePa;
+      return integrateAdaptive(this.gradient, this.start, lengthM, this.integration);
     } catch (error) {
       if (error instanceof NoConvergenceError) nameTheEndOfTheRange(this.at.reachedPa);
       throw error;
