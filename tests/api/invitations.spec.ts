@@ -280,9 +280,14 @@ describe('a token', () => {
   });
 
   it('of one purpose does not serve the other', async () => {
-    const token = await invited();
-    await anonymous('/api/password-resets/completion', { token, newPassword: GOOD }).expect(404);
-    await ask(token).expect(200);
+    server.addPerson('ines', `noted:${PASSWORD}`);
+    const invitation = await invited('ines@ternquay.example');
+    await anonymous('/api/password-resets/completion', { token: invitation, newPassword: GOOD }).expect(404);
+    await anonymous('/api/password-resets', { email: 'ines@ternquay.example' }).expect(202);
+    const reset = tokenIn(await post.mailTo('ines@ternquay.example'));
+    await accept(reset, { password: PASSWORD }).expect(404);
+    await signIn('ines@ternquay.example', PASSWORD).expect(200);
+    for (const token of [invitation, reset]) await ask(token).expect(200);
   });
 });
 
