@@ -56,16 +56,11 @@ import type { Route } from './platform/routes/route-table';
 import { PlanRepository } from './plans/plan-repository';
 import { planRoutes } from './plans/plan-routes';
 import { PlanService } from './plans/plan-service';
-import { FrozenStateRepository } from './reports/frozen-state-repository';
-import { ReportRepository } from './reports/report-repository';
-import { reportRoutes } from './reports/report-routes';
-import { ReportRunner } from './reports/report-runner';
-import { ReportService } from './reports/report-service';
-import { ReportSources } from './reports/report-sources';
-import { ReportStreams } from './reports/report-streams';
-import type { ReportPort } from './reports/report-threads';
 import { buildRevisionArea } from './revisions/revision-area';
 import type { SignatureKeys } from './revisions/signature-keys';
+import { buildReportArea } from './reports/report-area';
+import type { ReportRunner } from './reports/report-runner';
+import type { ReportPort } from './reports/report-threads';
 import { SiteRepository } from './sites/site-repository';
 import { siteRoutes } from './sites/site-routes';
 import { SiteService } from './sites/site-service';
@@ -159,22 +154,12 @@ export function buildApp(parts: AppParts): App {
     },
     streams,
   );
-  const frozen = new FrozenStateRepository(db);
-  const watching = new ReportStreams({ stillAllowed, ...(heartbeatMs === undefined ? {} : { heartbeatMs }) });
-  const networkRows = new NetworkRepository(db);
-  const sources = { networks: networkRows, live, frozen, people, memberships, engineVersion: ENGINE_VERSION, now };
-  const reportRows = new ReportRepository(db);
-  const reportSources = new ReportSources(sources);
-  const runner = new ReportRunner(reportRows, {
-    gather: (order) => reportSources.gather(order),
+  const reportArea = buildReportArea({
+    ...{ db, live, people, memberships, stillAllowed, newId, now },
     port: parts.reportPort,
-    now,
-    changed: (job) => watching.changed(job),
+    engineVersion: ENGINE_VERSION,
     report: (error) => log.error({ err: error }, 'report failed'),
-  });
-  const reports = new ReportService({
-    ...{ reports: reportRows, frozen, runner, streams: watching, newId, now },
-    networkName: (networkId) => networkRows.head(networkId)?.name,
+    ...(heartbeatMs === undefined ? {} : { heartbeatMs }),
   });
   const results = new ResultService(networks, live, solver, { engineVersion: ENGINE_VERSION, newId });
   const revisionArea = buildRevisionArea({
@@ -206,7 +191,7 @@ export function buildApp(parts: AppParts): App {
     ...revisionArea.routes,
     ...commentRoutes(comments),
     ...eventRoutes(events),
-    ...reportRoutes(reports),
+    ...reportArea.routes,
   ];
 
   const app = express();
@@ -234,8 +219,8 @@ export function buildApp(parts: AppParts): App {
   app.use(problemHandler(log));
   const endStreams = () => {
     streams.close();
-    watching.close();
+    reportArea.endStreams();
   };
   const post = { outbox, repository: mails, links: peopleArea.links };
-  return { handler: app, routes, networks, reports: runner, post, endStreams };
+  return { handler: app, routes, networks, reports: reportArea.runner, post, endStreams };
 }

@@ -2,7 +2,7 @@ import type { ReportJob, ReportRequest } from '@riseback/contracts';
 import type { EventStream } from '../events/event-stream';
 import type { NetworkAccess } from '../platform/auth/access';
 import { conflict, notFound, tooManyRequests } from '../platform/problem';
-import type { FrozenStateRepository } from './frozen-state-repository';
+import type { FrozenStates } from './frozen-states';
 import { FILE_KINDS, reportFileName } from './report-formats';
 import type { ReportRepository } from './report-repository';
 import type { ReportRunner } from './report-runner';
@@ -10,7 +10,7 @@ import type { ReportStreams } from './report-streams';
 
 export interface ReportServiceParts {
   readonly reports: ReportRepository;
-  readonly frozen: FrozenStateRepository;
+  readonly frozen: FrozenStates;
   readonly runner: ReportRunner;
   readonly streams: ReportStreams;
   readonly networkName: (networkId: string) => string | undefined;

@@ -5,14 +5,14 @@ import type { PeopleRepository, PersonRow } from '../people/people-repository';
 import type { MembershipLookup } from '../platform/auth/access';
 import { forbidden, notFound, ProblemError, unavailable } from '../platform/problem';
 import type { LiveSolves } from '../solve/live-solves';
-import type { FrozenStateRepository } from './frozen-state-repository';
+import type { FrozenStates } from './frozen-states';
 import type { ReportMaterial } from './report-material';
 import type { ReportOrderRow } from './report-repository';
 
 export interface ReportSourcesParts {
   readonly networks: NetworkRepository;
   readonly live: LiveSolves;
-  readonly frozen: FrozenStateRepository;
+  readonly frozen: FrozenStates;
   readonly people: PeopleRepository;
   readonly memberships: MembershipLookup;
   readonly engineVersion: string;
@@ -55,7 +55,7 @@ export class ReportSources {
     const found = frozen.find(head.id, revisionId);
     if (found === undefined) throw notFound('There is no such revision of this network.');
     const { state, ...texts } = found;
-    const previous = frozen.before(head.id, state.createdAt);
+    const previous = frozen.before(head.id, revisionId);
     return {
       ...common,
       ...texts,

@@ -8,6 +8,7 @@ import { CAUTIONS } from './caution-words';
 import { paintShapes } from './figure-painter';
 import type { Sheet, TextStyle } from './sheet';
 import { timeWords } from './time-words';
+import { worstTraps } from './worst-traps';
 
 type Facts = readonly (readonly [title: string, text: string])[];
 
@@ -46,6 +47,7 @@ export function coverPage(sheet: Sheet, content: ReportContent, standing: Report
   facts(sheet, 'What seals it', sealFacts(content), right - second, second);
   sheet.y = Math.max(leftEnd, sheet.y) + 4;
   if (content.state.kind === 'revision') people(sheet, content.state, content.reader.timeZone);
+  worstTraps(sheet, source);
   for (const caution of CAUTIONS) sheet.paragraph(caution, { size: 8, ink: 'ink2' }, { gap: 2 });
 }
 

@@ -21,7 +21,8 @@ export function furnish(
   const nameAt = left + sheet.measure(site, { size: 8, weight: 600 }) + 10;
   const words = sheet.fitted(standing.words, 330, { size: 8, weight: 600 });
   const standingWidth = sheet.measure(words, { size: 8, weight: 600 });
-  const name = sheet.fitted(content.networkName, right - standingWidth - nameAt - 20, { size: 8 });
+  const network = content.networkName === content.siteName ? '' : content.networkName;
+  const name = sheet.fitted(network, right - standingWidth - nameAt - 20, { size: 8 });
   sheet.print(name, nameAt, head, { size: 8, ink: 'ink2' });
   sheet.print(words, right, head, { size: 8, weight: 600, ink: standing.provisional ? 'fail' : 'pass' }, 'right');
   sheet.stroke(`M${left} ${head + 7}H${right}`, 'ink', 1);

@@ -28,6 +28,8 @@ const LINE = 9.2;
 const HEAD_LINE = 8.2;
 const PAD = { x: 3.5, y: 2.6 } as const;
 const MARK = 9;
+/** So that what was measured to fit does fit. */
+const HAIR = 0.3;
 /** A cell of more lines is cut: the whole text is in the spreadsheet. */
 const MOST_LINES = 14;
 /** Under a head stand so many rows at least. */
@@ -163,7 +165,7 @@ class TablePages {
     const least = column.numeric
       ? natural
       : mark + Math.max(...words, Math.min(70, widest(texts.flatMap((text) => text.split(/\s+/)))));
-    return { natural: natural + 2 * PAD.x, least: Math.min(natural, least) + 2 * PAD.x };
+    return { natural: natural + 2 * PAD.x + HAIR, least: Math.min(natural, least) + 2 * PAD.x + HAIR };
   }
 
   private inner(column: number): number {
