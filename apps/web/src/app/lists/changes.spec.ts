@@ -1,6 +1,6 @@
 import { applyBatch } from '@riseback/network';
 import { describe, expect, it } from 'vitest';
-import { bulkProposal, namesOf } from './bulk-bar/bulk-edit';
+import { bulkProposal, fillDownProposal, namesOf } from './bulk-bar/bulk-edit';
 import { deletionOf } from './deletion';
 import type { FieldValues } from './dialogs/field';
 import { ELEMENT_LISTS, type NewKind } from './list-definitions';
@@ -35,6 +35,26 @@ describe('one property in many rows', () => {
       ok: false,
       reason: expect.stringMatching(/^TR-2: Only a modulating service/) as string,
     });
+  });
+
+  it('is filled down from the first row, as one batch over the others', () => {
+    const proposal = fillDownProposal(traps, ['T2', 'T1'], 'loadKgS');
+    if (!proposal.ok) throw new Error(proposal.reason);
+    expect(proposal.ops).toHaveLength(1);
+    const [op] = proposal.ops;
+    // as typed in pounds an hour, which reads back to a part in 1e12
+    expect(op).toMatchObject({ id: 'T1', key: 'loadKgS', from: 0.05 });
+    expect(Math.abs(Number(op?.op === 'set' ? op.to : NaN) - 0.02)).toBeLessThan(1e-13);
+    expect(fillDownProposal(traps, ['T2', 'T1'], 'trapType')).toMatchObject({
+      ok: true,
+      ops: [{ id: 'T1', key: 'trapType', to: 'floatThermostatic' }],
+    });
+  });
+
+  it('is not filled down into names, into results, nor into nothing', () => {
+    for (const key of ['tag', 'backPressurePa', 'service'])
+      expect(fillDownProposal(traps, ['T2', 'T1'], key)).toMatchObject({ ok: false });
+    expect(fillDownProposal(traps, ['T2'], 'loadKgS')).toMatchObject({ ok: false });
   });
 
   it('names the rows it is for', () => {

@@ -27,6 +27,7 @@ import { UndoButtons, type UndoneStep } from '../networks/undo-buttons';
 import { backPressureLimit } from '@riseback/figures';
 import { NoResults } from '../results/no-results/no-results';
 import { BulkBar } from './bulk-bar/bulk-bar';
+import { fillDownProposal } from './bulk-bar/bulk-edit';
 import { TrialSolve } from './bulk-bar/trial-solve';
 import type { DialogName } from './columns/column';
 import type { ColumnChoice } from './column-choice/column-choice';
@@ -204,6 +205,18 @@ export class ListsPage {
     const short = label.slice(0, 120);
     const taken = this.store.edit(short, ops);
     this.told.set(taken ? `Done: ${short}` : `Not taken: ${this.store.lastRefusal().join(' ')}`);
+  }
+
+  protected fillDown(key: string): void {
+    const table = this.table();
+    if (table === null) return;
+    const proposal = fillDownProposal(table, this.selected(), key);
+    if (!proposal.ok) {
+      this.told.set(`Not taken: ${proposal.reason}`);
+      return;
+    }
+    const title = table.columns.find((column) => column.key === key)?.title.toLowerCase() ?? '';
+    this.edit({ label: `fill ${title} down ${String(this.selected().length - 1)} rows`, ops: proposal.ops });
   }
 
   protected async openDialog({ id, dialog }: { id: string; dialog: DialogName }): Promise<void> {

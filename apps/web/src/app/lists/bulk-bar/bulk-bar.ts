@@ -5,7 +5,7 @@ import type { EditOp } from '@riseback/network';
 import { type Observable, of, startWith, switchMap, timer } from 'rxjs';
 import type { CellEdit } from '../grid/cell-editing';
 import type { ListTable } from '../list-table';
-import { bulkProposal, namesOf } from './bulk-edit';
+import { bulkProposal, fillDownProposal, namesOf } from './bulk-edit';
 
 /** A person goes on typing for less than this. */
 const OUTLOOK_DELAY_MS = 350;
@@ -56,6 +56,11 @@ export class BulkBar {
     const count = this.ids().length;
     return `${String(count)} ${count === 1 ? this.one() : this.many()} selected`;
   });
+  protected readonly fillWords = computed(() => {
+    const [first, ...others] = this.ids();
+    const from = first === undefined ? '' : this.table().nameOf(first);
+    return `Fill down: the ${this.column()?.title.toLowerCase() ?? ''} of ${from} in the other ${String(others.length)}`;
+  });
   protected readonly names = computed(() => namesOf(this.table(), this.ids()));
 
   private readonly change = computed((): readonly EditOp[] => {
@@ -95,5 +100,13 @@ export class BulkBar {
     if (!proposal.ok) return;
     const title = this.column()?.title.toLowerCase() ?? '';
     this.edited.emit({ label: `set ${title} in ${String(this.ids().length)} rows`, ops: proposal.ops });
+  }
+
+  protected fillDown(): void {
+    const proposal = fillDownProposal(this.table(), this.ids(), this.key());
+    this.complaint.set(proposal.ok ? '' : proposal.reason);
+    if (!proposal.ok) return;
+    const title = this.column()?.title.toLowerCase() ?? '';
+    this.edited.emit({ label: `fill ${title} down ${String(this.ids().length - 1)} rows`, ops: proposal.ops });
   }
 }

@@ -15,6 +15,16 @@ export function bulkProposal(table: ListTable, ids: readonly string[], key: stri
   return { ok: true, ops };
 }
 
+/** What the first row has in one column, in all the others. */
+export function fillDownProposal(table: ListTable, [first, ...others]: readonly string[], key: string): Proposal {
+  const editor = first === undefined ? null : table.editor(first, key);
+  // two rows with one name could not be told apart
+  if (editor === null || editor.by === 'dialog' || key === 'tag' || key === 'name')
+    return { ok: false, reason: 'This column cannot be filled down; stand in one that can be typed in.' };
+  if (others.length === 0) return { ok: false, reason: 'Select the row to copy from and, under it, the rows to fill.' };
+  return bulkProposal(table, others, key, editor.by === 'choice' ? editor.chosen : editor.initial);
+}
+
 /** "TR-105 to TR-108", or the one name. */
 export function namesOf(table: ListTable, ids: readonly string[]): string {
   const [first, last] = [ids[0], ids.at(-1)];

@@ -20,13 +20,15 @@ export class BlockDraft {
   readonly mapping = linkedSignal<BlockMapping>(() =>
     startingMapping(this.block(), this.source.target, this.source.units, this.source.grid),
   );
+  readonly arrange = signal(false);
+  /** Whether an empty cell clears what the list has there; else it changes nothing. */
+  readonly clears = signal(false);
   private readonly rows = computed((): BlockRow[] => {
     const [mended, leftOut] = [this.mended(), this.leftOut()];
-    return rowsOf(this.block(), this.mapping(), this.source.target, this.source.grid)
+    return rowsOf(this.block(), this.mapping(), this.source.target, this.source.grid, { clears: this.clears() })
       .filter(({ number }) => !leftOut.has(number))
       .map((row) => withMended(row, mended));
   });
-  readonly arrange = signal(false);
   readonly plan = computed(() => this.source.target.plan(this.rows(), { arrange: this.arrange() }));
   readonly texts = computed(() => new Map(this.rows().map(({ number, texts }) => [number, texts])));
   readonly leftOutCount = computed(() => this.leftOut().size);

@@ -1,11 +1,13 @@
 import type { EditOp } from '@riseback/network';
 import type { RowTexts } from './row-rules';
 
-/** One row of a block by the keys of the list's columns; empty cells are left out, since they change nothing. */
+/** One row of a block by the keys of the list's columns; empty cells are not among its texts. */
 export interface BlockRow {
   /** In the pasted text or the sheet, from 1. */
   readonly number: number;
   readonly texts: RowTexts;
+  /** Columns of the block whose cell is empty here, where empty cells are to clear; none where they change nothing. */
+  readonly emptied?: readonly string[];
   /** The element that it is for where the block does not name its rows; null where the list has no such row. */
   readonly onto?: string | null;
 }

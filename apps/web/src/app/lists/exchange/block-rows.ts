@@ -47,24 +47,31 @@ export function mappingFor(
   return { headings, columns: padded(matchHeadings(block.rows[0]?.cells ?? [], target.fields, units), widthOf(block)) };
 }
 
-/** The rows below the headings, by key. Without a column of names they are for the rows of the list from the active one down. */
+/**
+ * The rows below the headings, by key. Without a column of names they are for the rows of the list from the active one down.
+ * @param options `clears`: empty cells are told too
+ */
 export function rowsOf(
   block: Block,
   mapping: BlockMapping,
   target: BlockTarget,
   { ids, fromRow }: GridRows,
+  { clears = false }: { readonly clears?: boolean } = {},
 ): BlockRow[] {
   const readable = new Set(target.fields.filter(({ readable: takes }) => takes).map(({ key }) => key));
   const named = mapping.columns.some((column) => column?.key === target.nameKey);
   const lines = mapping.headings ? block.rows.slice(1) : block.rows;
   return lines.map(({ number, cells }, index) => {
     const texts = new Map<string, string>();
+    const emptied: string[] = [];
     mapping.columns.forEach((column, place) => {
       const text = cells[place] ?? '';
-      if (column !== null && readable.has(column.key) && text.trim() !== '')
-        texts.set(column.key, withHeadingUnit(text, column.unit));
+      if (column === null || !readable.has(column.key)) return;
+      if (text.trim() !== '') texts.set(column.key, withHeadingUnit(text, column.unit));
+      else if (clears) emptied.push(column.key);
     });
-    return named ? { number, texts } : { number, texts, onto: ids[fromRow + index] ?? null };
+    const row = emptied.length === 0 ? { number, texts } : { number, texts, emptied };
+    return named ? row : { ...row, onto: ids[fromRow + index] ?? null };
   });
 }
 

@@ -14,13 +14,19 @@ function list(id: ListId) {
 }
 
 /** A block with its headings, planned as the preview plans it. */
-function planned(id: ListId, text: string, document = trialDocument(), system: 'us' | 'si' = 'us'): BlockPlan {
+function planned(
+  id: ListId,
+  text: string,
+  document = trialDocument(),
+  system: 'us' | 'si' = 'us',
+  clears = false,
+): BlockPlan {
   const read = readCopiedCells(text);
   if (!read.ok) throw new Error(read.detail);
   const context = trialContext(document, system);
   const target = list(id).block(context);
   const mapping = startingMapping(read.block, target, context.units, { keys: [], fromKey: '' });
-  return target.plan(rowsOf(read.block, mapping, target, { ids: [], fromRow: 0 }));
+  return target.plan(rowsOf(read.block, mapping, target, { ids: [], fromRow: 0 }, { clears }));
 }
 
 function after(plan: BlockPlan, document = trialDocument()): NetworkDocument {
@@ -101,6 +107,23 @@ describe('a pasted block', () => {
     });
     const half = planned('traps', 'Tag\tService\tHeated from, °C\nTR-2\tModulating\t60');
     expect(half.bad).toMatchObject([{ key: 'secondaryOutletK', title: 'Heated to' }]);
+  });
+
+  it('clears by an empty cell only where that was asked for and the key may be left out', () => {
+    const text = 'Tag\tArea\tModel\tSafety valve\tSubcooling\tLoad\nTR-2\t\t\t\t\t\nTR-77\t\t\t\t\t5';
+    const one = text.slice(0, text.lastIndexOf('\n'));
+    expect(planned('traps', one).ops).toEqual([]);
+    const trap = after(planned('traps', one, trialDocument(), 'us', true)).nodes.get('T1')?.value;
+    for (const key of ['area', 'trapModel', 'maximumPressurePa']) expect(trap).not.toHaveProperty(key);
+    // a load always stands there; subcooling takes its default
+    expect(trap).toMatchObject({ loadKgS: 0.05, subcoolingK: 0 });
+    // a new row has nothing to clear, and still says what it needs
+    expect(planned('traps', text, trialDocument(), 'us', true).bad.map(({ row }) => row)).toContain(3);
+  });
+
+  it('says at the cell what cannot be cleared', () => {
+    const plan = planned('vessels', 'Tag\tPressure\nFV-1\t', trialDocument(), 'us', true);
+    expect(plan.bad).toMatchObject([{ rowName: 'FV-1', reason: 'A flash vessel always has a pressure.' }]);
   });
 
   it('reads keys of the network file in their own units', () => {

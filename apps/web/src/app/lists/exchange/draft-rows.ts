@@ -25,7 +25,7 @@ import {
 } from './block-plan';
 import { nearlyEqual } from './nearly-equal';
 import { arrangingOps, newlyJoined, placesBelow } from './new-places';
-import { readCell, writtenText } from './read-cell';
+import { readCell, readEmptyCell, writtenText } from './read-cell';
 import { findRow, type RowTarget } from './row-target';
 import type { RowRules } from './row-rules';
 
@@ -136,6 +136,9 @@ function readRow<E extends ListedElement>(list: DraftedList<E>, draft: Draft<E>,
     draft.element = { ...draft.element, ...keys };
     for (const key of Object.keys(keys)) draft.touched.add(key);
   };
+  const take = (ops: readonly EditOp[]): void => {
+    for (const op of ops) set(op.op === 'set' && op.in !== 'network' ? { [op.key]: op.to } : {});
+  };
   if (target.newName !== undefined) set({ [list.rules.name]: target.newName });
   const together = list.rules.together?.(row.texts, draft.element, context.document);
   if (together !== undefined) set(together.set);
@@ -145,8 +148,16 @@ function readRow<E extends ListedElement>(list: DraftedList<E>, draft: Draft<E>,
     if (text.trim() === '' || done.has(column.key)) continue;
     if (target.element !== undefined && text.trim() === writtenText(column, target.element, context)) continue;
     const read = readCell(column, text, draft.element, context);
-    if (read.ok) for (const op of read.ops) set(op.op === 'set' && op.in !== 'network' ? { [op.key]: op.to } : {});
+    if (read.ok) take(read.ops);
     else draft.bad.push(badCell(list, draft, column.key, read.reason, read.suggestion));
+  }
+  // a new row has nothing to clear
+  const emptied = new Set(target.element === undefined ? [] : row.emptied);
+  for (const column of list.columns) {
+    if (!emptied.has(column.key) || done.has(column.key)) continue;
+    const read = readEmptyCell(column, draft.element, context);
+    if (read?.ok === true) take(read.ops);
+    else if (read !== undefined) draft.bad.push(badCell(list, draft, column.key, read.reason, read.suggestion));
   }
   if (draft.bad.length === 0) draft.bad.push(...mistakesIn(list, draft, context));
 }

@@ -29,6 +29,27 @@ export function readCell<E extends ListedElement>(
   }
 }
 
+/** What an empty cell does where empty cells clear; undefined for a column that always holds something. */
+export function readEmptyCell<E extends ListedElement>(
+  { editor }: Column<E>,
+  element: E,
+  context: ListContext,
+): Proposal | undefined {
+  switch (editor?.by) {
+    case 'quantity':
+      return editor.optional ? editor.propose(undefined, element, context) : undefined;
+    case 'text':
+      return editor.optional ? editor.propose(undefined, element, context) : undefined;
+    case 'choice': {
+      const none = editor.choices(element, context).some(({ value }) => value === '');
+      return none ? editor.propose('', element, context) : undefined;
+    }
+    case 'dialog':
+    case undefined:
+      return undefined;
+  }
+}
+
 /** The text of a cell as the list writes it out; undefined for numbers, which are compared as such. */
 export function writtenText<E extends ListedElement>(
   { quantity, sheet, show, value }: Column<E>,

@@ -93,6 +93,8 @@ export class ListGrid {
   /** The ticked rows in the order shown; again when the filter or a deletion takes some away. */
   readonly selectedChange = output<readonly string[]>();
   readonly activeChange = output<string>();
+  /** The active column's key: what the first ticked row has there is wanted in all the others. */
+  readonly fillDownWanted = output<string>();
   /** Cells from the clipboard, meant for the rows from the active one on. */
   readonly pasted = output<string>();
   /** For the page's live region. */
@@ -279,7 +281,7 @@ export class ListGrid {
     if (key === 'Escape') return this.escape(id);
     if (!this.mayEdit()) return false;
     if (key === ' ') return this.tick(id, event.shiftKey);
-    if (ctrl) return key.toLowerCase() === 'a' && this.selectAllRows();
+    if (ctrl) return this.actOnRows(key.toLowerCase());
     if (key === 'Delete' || key === 'Backspace') return this.editing.empty();
     return key.length === 1 && this.editing.start(key);
   }
@@ -313,6 +315,14 @@ export class ListGrid {
     this.select(
       extend ? extendRows(this.state.selection(), this.state.rowIds(), id) : toggleRow(this.state.selection(), id),
     );
+    return true;
+  }
+
+  private actOnRows(key: string): boolean {
+    if (key === 'a') return this.selectAllRows();
+    const cell = this.state.activeCell();
+    if (key !== 'd' || cell?.kind !== 'column' || this.state.selectedIds().length === 0) return false;
+    this.fillDownWanted.emit(cell.column.key);
     return true;
   }
 

@@ -21,6 +21,7 @@ export const KEY_SECTIONS: readonly KeySection[] = [
       ['Delete', 'empty the cell'],
       ['Space', 'select the row; with Shift up to there'],
       ['Ctrl+A', 'select all rows'],
+      ['Ctrl+D', 'fill the column down from the first selected row'],
       ['Ctrl+C, Ctrl+V', 'copy; paste a block from a spreadsheet'],
       ['Ctrl+Z, Ctrl+Shift+Z', 'undo, redo'],
     ],
