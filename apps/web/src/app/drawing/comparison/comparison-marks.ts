@@ -41,14 +41,27 @@ interface Subject {
   readonly pipes: ReadonlyMap<string, PipeView>;
 }
 
-/** A mark for each element that is otherwise, laid where nothing else is; one that finds no room takes its best place all the same. */
+/** A mark for each element that is otherwise, laid where nothing else is; one whose words find no room keeps its signs alone. */
 export function comparisonMarks(subject: Subject, zoom: number, obstacles: readonly Box[]): ComparisonMark[] {
-  const wanted = [...changedMarks(subject, zoom), ...goneMarks(subject, zoom)];
+  const wanted = wantedMarks(subject, zoom, zoom >= WORDS_FROM);
   const placed = placeLabels(wanted, obstacles);
-  return wanted.flatMap(({ mark, key, candidates }) => {
-    const box = candidates[placed.get(key) ?? 0];
+  const laid = wanted.flatMap(({ mark, key, candidates }): ComparisonMark[] => {
+    const box = candidates[placed.get(key) ?? -1];
     return box === undefined ? [] : [{ ...mark, box }];
   });
+  const signs = wantedMarks(subject, zoom, false).filter(({ key }) => !placed.has(key));
+  const squeezed = placeLabels(signs, [...obstacles, ...laid.map(({ box }) => box)]);
+  return [
+    ...laid,
+    ...signs.flatMap(({ mark, key, candidates }): ComparisonMark[] => {
+      const box = candidates[squeezed.get(key) ?? 0];
+      return box === undefined ? [] : [{ ...mark, box }];
+    }),
+  ];
+}
+
+function wantedMarks(subject: Subject, zoom: number, words: boolean): WantedMark[] {
+  return [...changedMarks(subject, zoom, words), ...goneMarks(subject, zoom, words)];
 }
 
 export function ghosts({ gone, earlier }: Pick<Subject, 'gone' | 'earlier'>, zoom: number): Ghost[] {
@@ -76,9 +89,9 @@ interface WantedMark extends LabelRequest {
   readonly mark: Omit<ComparisonMark, 'box'>;
 }
 
-function changedMarks({ changes, nodes, pipes }: Subject, zoom: number): WantedMark[] {
+function changedMarks({ changes, nodes, pipes }: Subject, zoom: number, withWords: boolean): WantedMark[] {
   return [...changes].flatMap(([elementId, { kind, words, change, way }]): WantedMark[] => {
-    const text = zoom < WORDS_FROM ? '' : [words, change].filter((part) => part !== '').join(' ');
+    const text = !withWords ? '' : [words, change].filter((part) => part !== '').join(' ');
     const mark = { elementId, kind, way, text };
     const size = { width: widthOf(mark), height: HEIGHT };
     const node = nodes.get(elementId);
@@ -93,13 +106,13 @@ function changedMarks({ changes, nodes, pipes }: Subject, zoom: number): WantedM
   });
 }
 
-function goneMarks({ gone, earlier }: Subject, zoom: number): WantedMark[] {
+function goneMarks({ gone, earlier }: Subject, zoom: number, withWords: boolean): WantedMark[] {
   return gone.flatMap(({ id, kind, name }): WantedMark[] => {
     const mark = {
       elementId: id,
       kind: 'removed' as const,
       way: null,
-      text: zoom < WORDS_FROM ? '' : `${name} removed`,
+      text: withWords ? `${name} removed` : '',
     };
     const size = { width: widthOf(mark), height: HEIGHT };
     const node = earlier.nodes.get(id);
@@ -123,14 +136,19 @@ interface Size {
 function aroundNode(node: Position, { width, height }: Size, zoom: number): Box[] {
   const reach = NODE_REACH * symbolScale(zoom) * zoom;
   const [x, y] = [node.x * zoom, node.y * zoom];
-  const lefts = [x - reach - width, x + reach, x - width / 2, x - width, x];
-  const tops = [y - reach - height, y + reach, y - height / 2, y - reach - 2 * height, y + reach + height];
-  return lefts
-    .flatMap((left) => tops.map((top) => ({ x: left, y: top, width, height })))
+  const lefts = [x - width / 2, x + reach, x - reach - width, x - width, x];
+  const tops = [
+    y + reach,
+    y - reach - height,
+    y - height / 2,
+    ...[2, 3, 4].map((n) => y - reach - n * height),
+    y + reach + height,
+  ];
+  return tops
+    .flatMap((top) => lefts.map((left) => ({ x: left, y: top, width, height })))
     .filter(
-      ({ x: left, y: top }) =>
-        // not on the symbol itself
-        left >= x + reach || left + width <= x - reach || top >= y + reach || top + height <= y - reach,
+      // not on the symbol itself
+      (box) => box.x >= x + reach || box.x + width <= x - reach || box.y >= y + reach || box.y + height <= y - reach,
     );
 }
 

@@ -1,5 +1,4 @@
 import { ChangeDetectionStrategy, Component, computed, DOCUMENT, inject, signal } from '@angular/core';
-import { MatButton } from '@angular/material/button';
 import { RouterLink } from '@angular/router';
 import { MOVED_PA } from '@riseback/revisions';
 import { displayUnit, formatQuantity } from '@riseback/units';
@@ -14,7 +13,7 @@ const NARROW = '(width < 720px)';
 /** What the marks of the comparison mean, how many there are, and the way out. */
 @Component({
   selector: 'app-comparison-panel',
-  imports: [ComparisonSign, MatButton, ProblemBanner, RouterLink],
+  imports: [ComparisonSign, ProblemBanner, RouterLink],
   changeDetection: ChangeDetectionStrategy.OnPush,
   templateUrl: './comparison-panel.html',
   styleUrl: './comparison-panel.scss',

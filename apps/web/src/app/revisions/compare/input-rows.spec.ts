@@ -39,7 +39,7 @@ function rows(before: NetworkFile, after: NetworkFile, comments: [string, number
 }
 
 const short = (before: NetworkFile, after: NetworkFile, comments?: [string, number[]][]) =>
-  rows(before, after, comments).map((row) => [row.what, row.quantity, row.before, row.after]);
+  rows(before, after, comments).map((row) => [row.names.join(', '), row.quantity, row.before, row.after]);
 
 const widened = file({ pipes: pipes.map((pipe) => ({ ...pipe, size: { nps: '2', schedule: '80' } })) });
 
@@ -104,7 +104,7 @@ describe('what was changed, in words', () => {
       'elevation 0 ft; inlet pressure 74.9 psig; load 397 lb/h; trap type Float-thermostatic',
     );
     const [row] = rows(file(), after);
-    expect(row).toMatchObject({ what: 'CR-30', quantity: 'Pipe', before: '–', after: 'added' });
+    expect(row).toMatchObject({ names: ['CR-30'], quantity: 'Pipe', before: '–', after: 'added' });
     expect(row?.details).toMatch(
       /^from TR-101; to VR-1; length 40 ft; size 1½″ sch 80; fittings 2 .*; check valve Yes$/,
     );
@@ -117,7 +117,9 @@ describe('what was changed, in words', () => {
         { id: 'stuck', name: 'TR-101 failed open', loadFactor: 0.5, overrides: [{ node: 'T1', state: 'failedOpen' }] },
       ],
     });
-    expect(rows(file(), after).map(({ what, quantity, after: to, details }) => [what, quantity, to, details])).toEqual([
+    expect(
+      rows(file(), after).map(({ names, quantity, after: to, details }) => [names.join(), quantity, to, details]),
+    ).toEqual([
       ['Case TR-101 failed open', 'Operating case', 'added', 'load 50 %; TR-101 failed open'],
       ['Design: VR-1', 'Pressure', '15.0 psig', ''],
     ]);

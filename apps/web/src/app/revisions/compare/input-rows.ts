@@ -31,7 +31,8 @@ export interface RowElement {
 export interface InputRow {
   readonly key: string;
   readonly kind: 'added' | 'removed' | 'changed';
-  readonly what: string;
+  /** Tags, or runs of them. */
+  readonly names: readonly string[];
   readonly quantity: string;
   readonly before: string;
   readonly after: string;
@@ -41,7 +42,7 @@ export interface InputRow {
   readonly elements: readonly RowElement[];
 }
 
-interface Line extends Omit<InputRow, 'key' | 'what' | 'elements'> {
+interface Line extends Omit<InputRow, 'key' | 'names' | 'elements'> {
   readonly element: RowElement;
   /** Lines of one group with equal words are one row. */
   readonly group: string;
@@ -102,7 +103,7 @@ function settingRows({ settings }: NetworkComparison, context: Context): InputRo
     return {
       key: path.join('.'),
       kind: 'changed',
-      what,
+      names: [what],
       quantity,
       before: settingWords(path, from, context.before.units),
       after: settingWords(path, to, context.after.units),
@@ -135,7 +136,7 @@ function folded(lines: readonly Line[]): InputRow[] {
       ...words,
       key,
       elements,
-      what: tagRuns(elements.map(({ name }) => name)),
+      names: tagRuns(elements.map(({ name }) => name)),
     }),
   );
 }

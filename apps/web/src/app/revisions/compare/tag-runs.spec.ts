@@ -14,6 +14,6 @@ describe('tags as a person would say them', () => {
     [['99', '100', '101'], '99 to 101'],
     [[], ''],
   ])('%j: %s', (tags, said) => {
-    expect(tagRuns(tags)).toBe(said);
+    expect(tagRuns(tags).join(', ')).toBe(said);
   });
 });

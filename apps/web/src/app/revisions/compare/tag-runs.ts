@@ -7,8 +7,8 @@ export function compareTags(a: string, b: string): number {
   return BY_TAG.compare(a, b);
 }
 
-/** "CR-18, CR-20 to CR-23": tags as a person would say them, runs by their ends. */
-export function tagRuns(tags: readonly string[]): string {
+/** "CR-18", "CR-20 to CR-23": tags as a person would say them, runs by their ends. */
+export function tagRuns(tags: readonly string[]): string[] {
   const runs: string[][] = [];
   for (const tag of [...tags].sort(compareTags)) {
     const run = runs.at(-1);
@@ -16,9 +16,7 @@ export function tagRuns(tags: readonly string[]): string {
     if (run !== undefined && last !== undefined && follows(last, tag)) run.push(tag);
     else runs.push([tag]);
   }
-  return runs
-    .flatMap((run) => (run.length < SHORTEST_RUN ? run : [`${run[0] ?? ''} to ${run.at(-1) ?? ''}`]))
-    .join(', ');
+  return runs.flatMap((run) => (run.length < SHORTEST_RUN ? run : [`${run[0] ?? ''} to ${run.at(-1) ?? ''}`]));
 }
 
 /** The same before the number, and the number one higher: TR-009 and TR-010 count on, TR-9 and TR-010 do not. */
