@@ -92,7 +92,10 @@ test('capacities come from a CSV file, and a spreadsheet’s own file is told ap
 test('two designers at one model: the later one compares and loses nothing', async ({ page, browser }) => {
   await signIn(page, 'designer');
   const library = await openLibrary(page);
-  await page.getByRole('link', { name: /Sker D15/ }).click();
+  await page
+    .getByRole('navigation', { name: 'Trap models' })
+    .getByRole('link', { name: /Sker D15/ })
+    .click();
   await page.getByRole('button', { name: 'Edit' }).click();
   await page.getByLabel('Orifice', { exact: true }).fill('0.2 in');
 
