@@ -22,6 +22,8 @@ interface SetCell {
 type Verdict = 'fail' | 'watch' | 'pass';
 
 const CELL: TextStyle = { size: 7.2 };
+/** Of the column that says what the row is of. */
+const FIRST: TextStyle = { ...CELL, weight: 500 };
 const NUMBER: TextStyle = { size: 7.2, tabular: true };
 const HEAD: TextStyle = { size: 6.6, weight: 500, ink: 'ink3' };
 const LINE = 9.2;
@@ -117,7 +119,7 @@ class TablePages {
       this.eachColumn((x, width, i) => {
         const { lines, verdict } = cells[i] ?? { lines: [], verdict: undefined };
         const numeric = this.columns[i]?.numeric ?? false;
-        const style = numeric ? NUMBER : i === 0 ? { ...CELL, weight: 500 as const } : CELL;
+        const style = numeric ? NUMBER : i === 0 ? FIRST : CELL;
         sheet.tagged(i === 0 ? 'TH' : 'TD', () => {
           if (verdict !== undefined) paintShapes(sheet, verdictShapes(verdict), x + PAD.x + 3, first - 2.6, 0.58);
           const inset = verdict === undefined ? 0 : MARK;
@@ -148,14 +150,15 @@ class TablePages {
     const numeric = this.columns[column]?.numeric ?? false;
     const verdict = this.columns[column]?.marked === true ? verdictOf(text) : undefined;
     const room = this.inner(column) - (verdict === undefined ? 0 : MARK);
-    const lines = numeric ? [text] : this.sheet.lines(text, room, column === 0 ? { ...CELL, weight: 500 } : CELL);
+    const lines = numeric ? [text] : this.sheet.lines(text, room, column === 0 ? FIRST : CELL);
     if (lines.length <= MOST_LINES) return { lines, verdict };
     return { lines: [...lines.slice(0, MOST_LINES - 1), '…'], verdict };
   }
 
   private wanted(column: SetColumn) {
     const { sheet } = this;
-    const style = column.numeric ? NUMBER : CELL;
+    const first = column.index === this.columns[0]?.index;
+    const style = column.numeric ? NUMBER : first ? FIRST : CELL;
     const words = [...column.title.split(' '), column.unit].map((word) => sheet.measure(word, HEAD));
     const texts = [...new Set(this.rows.map((row) => cellText(row[column.index])))];
     const mark = column.marked ? MARK : 0;
