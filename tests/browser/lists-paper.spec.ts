@@ -55,3 +55,22 @@ test('a network opened without a connection says so, and loads when there is one
   await context.setOffline(false);
   await expect(page.getByText(/^Solved \d\d:\d\d/)).toBeVisible({ timeout: 15_000 });
 });
+
+test('a column is filled down by a key, as one step that is taken back', async ({
+  page,
+}) => {
+  await signIn(page, 'designer');
+  await page.goto(`${await copyOfDemo(page, 'Filled down')}/lists?list=traps`);
+  const cell = (tag: string, column: number) =>
+    page.getByRole('row', { name: new RegExp(`${tag} `) }).locator(`[data-column="${String(column)}"]`);
+  const load = Number(await page.getByRole('columnheader', { name: /^Load/ }).getAttribute('data-column'));
+  // the loads of the fixture, lb/h
+  await expect(cell('RT-1', load)).toHaveText('600');
+  await expect(cell('BL-1', load)).not.toHaveText('600');
+  for (const tag of ['RT-1', 'BL-1']) await cell(tag, 0).click();
+  await cell('RT-1', load).click();
+  await page.keyboard.press('Control+d');
+  await expect(cell('BL-1', load)).toHaveText('600');
+  await page.keyboard.press('Control+z');
+  await expect(cell('BL-1', load)).not.toHaveText('600');
+});
