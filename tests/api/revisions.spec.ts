@@ -74,8 +74,8 @@ describe('freezing', () => {
   });
 
   it('is refused for a version that is not there yet, and a bad body by its place', async () => {
-    const { body } = await bench.designer.post(bench.path(), { ...BODY, networkVersion: 2 }).expect(409);
-    expect(body).toMatchObject({ detail: 'The network has no version 2 yet; its newest is 1.' });
+    const refused = await bench.designer.post(bench.path(), { ...BODY, networkVersion: 2 }).expect(409);
+    expect(refused.body).toMatchObject({ detail: 'The network has no version 2 yet; its newest is 1.' });
     await bench.designer.post(bench.path(), { ...BODY, title: ' ' }).expect(400);
     await bench.designer.post(bench.path(), { ...BODY, title: 'two\nlines' }).expect(400);
     expect(sqlite().prepare('select count(*) from revisions').pluck().get()).toBe(0);
@@ -155,8 +155,8 @@ describe('what becomes of a revision', () => {
       [bench.designer, 'withdrawal'],
       [bench.reviewer, 'return'],
     ] as const) {
-      const { body } = await client.post(`${path}/${deed}`, { note: 'again' }).expect(409);
-      expect(body).toMatchObject({ detail: expect.stringContaining('Revision A is returned') as string });
+      const refused = await client.post(`${path}/${deed}`, { note: 'again' }).expect(409);
+      expect(refused.body).toMatchObject({ detail: expect.stringContaining('Revision A is returned') as string });
     }
     expect(actions()).toEqual(['revision.freeze', 'revision.submit', 'revision.return']);
     expect(mails()).toEqual([
@@ -179,8 +179,8 @@ describe('what becomes of a revision', () => {
     for (const { id } of [draft, approved]) {
       await bench.designer.post(bench.path(`/${id}/withdrawal`), {}).expect(400);
       await bench.reviewer.post(bench.path(`/${id}/withdrawal`), { note: 'no' }).expect(403);
-      const { body } = await bench.designer.post(bench.path(`/${id}/withdrawal`), { note: 'Plant sold.' }).expect(200);
-      expect(body).toMatchObject({ state: 'withdrawn' });
+      const refused = await bench.designer.post(bench.path(`/${id}/withdrawal`), { note: 'Plant sold.' }).expect(200);
+      expect(refused.body).toMatchObject({ state: 'withdrawn' });
     }
   });
 

@@ -143,8 +143,8 @@ describe('nobody signs', () => {
     const first = await bench.submitted();
     await bench.edit(1, 0, 1);
     await bench.sign(await bench.submitted(2));
-    const { body } = await bench.reviewer.get(bench.path(`/${first.id}/signing?meaning=approved`)).expect(409);
-    expect(detailOf({ body })).toContain('Revision B, which is later, is approved already');
+    const refused = await bench.reviewer.get(bench.path(`/${first.id}/signing?meaning=approved`)).expect(409);
+    expect(detailOf(refused)).toContain('Revision B, which is later, is approved already');
   });
 
   it('stale results: those of another engine than the present one', async () => {
