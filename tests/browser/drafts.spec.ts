@@ -50,6 +50,20 @@ async function timeNextDraft(page: Page): Promise<() => Promise<number>> {
   return () => page.evaluate(() => (globalThis as unknown as { measured: Promise<number> }).measured);
 }
 
+/** How many drafts lie in the browser's database, whosever they are. */
+function draftCount(page: Page): Promise<number> {
+  return page.evaluate(
+    () =>
+      new Promise<number>((resolve) => {
+        const opened = indexedDB.open('riseback-drafts', 1);
+        opened.onsuccess = () => {
+          const count = opened.result.transaction('drafts').objectStore('drafts').count();
+          count.onsuccess = () => resolve(count.result);
+        };
+      }),
+  );
+}
+
 test('what is typed without a network is on the device within 300 ms, and goes out by itself when the network is back', async ({
   page,
   context,
@@ -186,4 +200,41 @@ test('two windows of one person see each other’s edits, and what one leaves be
     expect(await versionOf(fourth, network)).toBe(3);
   });
   await context.close();
+});
+
+test('whoever signs out with unsaved work is asked: kept it is offered on return, discarded it is gone', async ({
+  page,
+}) => {
+  test.setTimeout(120_000);
+  await signIn(page, 'designer');
+  const network = await copyOfDemo(page, 'Unsaved at sign-out');
+  await openInputs(page, network);
+  await savedAndSolved(page);
+  // only saving fails: whoever has no network at all cannot sign out either
+  await page.route('**/edits', (route) => route.abort());
+  await field(page, 'Load').fill('612 lb/h');
+  await field(page, 'Load').press('Enter');
+  await expect(page.getByText('Not saved', { exact: true })).toBeVisible({ timeout: 15_000 });
+  const leave = async (choice: string) => {
+    await page.getByRole('button', { name: /^You:/ }).click();
+    await page.getByRole('menuitem', { name: 'Sign out' }).click();
+    await page.getByRole('dialog').getByRole('button', { name: choice }).click();
+  };
+  const offer = page.getByRole('button', { name: 'Bring them in' });
+
+  await leave('Stay signed in');
+  await expect(field(page, 'Load')).toBeVisible();
+  await leave('Keep here and sign out');
+  await expect(page.getByRole('button', { name: 'Sign in' })).toBeVisible();
+  expect(await draftCount(page)).toBe(1);
+  await signIn(page, 'designer');
+  await page.goto(`${network}/drawing`);
+  await expect(offer).toBeVisible();
+  await leave('Discard and sign out');
+  await expect(page.getByRole('button', { name: 'Sign in' })).toBeVisible();
+  await expect.poll(() => draftCount(page)).toBe(0);
+  await signIn(page, 'designer');
+  await page.goto(`${network}/drawing`);
+  await expect(page.getByText(/^Solved \d\d:\d\d/)).toBeVisible();
+  await expect(offer).toHaveCount(0);
 });

@@ -102,7 +102,10 @@ test('two designers at one model: the later one compares and loses nothing', asy
   const other = await (await browser.newContext()).newPage();
   await signIn(other, 'admin');
   await other.goto(library);
-  await other.getByRole('link', { name: /Sker D15/ }).click();
+  await other
+    .getByRole('navigation', { name: 'Trap models' })
+    .getByRole('link', { name: /Sker D15/ })
+    .click();
   await other.getByRole('button', { name: 'Edit' }).click();
   await other.getByLabel('Body temperature').fill('650 °F');
   await other.getByRole('button', { name: /Save as version/ }).click();
