@@ -24,13 +24,15 @@ export function jsonEqual(a: unknown, b: unknown): boolean {
   if (Array.isArray(a) || Array.isArray(b)) {
     return Array.isArray(a) && Array.isArray(b) && a.length === b.length && a.every((item, i) => jsonEqual(item, b[i]));
   }
-  const left = presentEntries(a);
-  const right = new Map(presentEntries(b));
-  return left.length === right.size && left.every(([key, value]) => right.has(key) && jsonEqual(value, right.get(key)));
+  const [left, right] = [a as Record<string, unknown>, b as Record<string, unknown>];
+  const keys = presentKeys(left);
+  if (keys.length !== presentKeys(right).length) return false;
+  // a key such as "constructor" stands on every object, so it must be the object's own
+  return keys.every((key) => Object.hasOwn(right, key) && right[key] !== undefined && jsonEqual(left[key], right[key]));
 }
 
-function presentEntries(value: object): [string, unknown][] {
-  return Object.entries(value as Record<string, unknown>).filter(([, item]) => item !== undefined);
+function presentKeys(value: Record<string, unknown>): string[] {
+  return Object.keys(value).filter((key) => value[key] !== undefined);
 }
 
 /** A JSON object and nothing else: neither null nor an array. */

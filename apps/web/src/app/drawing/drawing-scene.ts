@@ -1,11 +1,12 @@
-import { computed, inject, Injectable } from '@angular/core';
+import { computed, inject, Injectable, linkedSignal } from '@angular/core';
 import type { SolveWarning } from '@riseback/contracts';
-import { overrideId } from '@riseback/network';
+import { jsonEqual, overrideId } from '@riseback/network';
 import { NetworkStore } from '../networks/network-store';
 import { isPipe, KIND_WORDS, nameOf } from '../shared/element-words';
 import { DrawingState } from './drawing-state';
 import { colourScale, sheetAround, crossings } from '@riseback/figures';
 import {
+  type DrawnNetwork,
   type DrawnNode,
   type DrawnPipe,
   drawnNetwork,
@@ -14,6 +15,7 @@ import {
   withDisplaced,
 } from './model/drawn-network';
 import { type NodeView, nodeView, type PipeView, pipeView, type SceneResults } from './model/element-views';
+import { keptDrawing } from './model/kept-drawing';
 import { ViewCache } from './model/view-cache';
 
 /** The network as it is drawn: document, results and what the person does to it, joined. In the drawing page's `providers`. */
@@ -24,11 +26,15 @@ export class DrawingScene {
   private readonly knownNodes = new ViewCache<DrawnNode, NodeView>();
   private readonly knownPipes = new ViewCache<DrawnPipe, PipeView>();
 
-  /** As the document has it. */
-  readonly settled = computed(() => {
-    const document = this.store.document();
-    return document === null ? EMPTY_DRAWING : drawnNetwork(document);
+  private readonly drawn = linkedSignal<DrawnNetwork, DrawnNetwork>({
+    source: () => {
+      const document = this.store.document();
+      return document === null ? EMPTY_DRAWING : drawnNetwork(document);
+    },
+    computation: (now, before) => (before === undefined ? now : keptDrawing(now, before.value)),
   });
+  /** As the document has it. */
+  readonly settled = this.drawn.asReadonly();
   /** With what is being moved in its new place. */
   readonly network = computed(() => {
     const displaced = this.state.displaced();
@@ -44,8 +50,9 @@ export class DrawingScene {
     ]);
   });
 
-  readonly scale = computed(() =>
-    colourScale(this.state.colouredBy(), [...this.store.outcomes().values()], this.store.units()),
+  readonly scale = computed(
+    () => colourScale(this.state.colouredBy(), [...this.store.outcomes().values()], this.store.units()),
+    { equal: jsonEqual },
   );
 
   private readonly results = computed((): SceneResults => {
@@ -80,7 +87,7 @@ export class DrawingScene {
       const selected = selection.has(node.id);
       const around = pipesAt(network, node.id).map((id) => network.pipes.get(id));
       return {
-        basis: [node, results, scale, units, selected, ...around],
+        basis: [node, ...saidOf(node.id, results), scale, units, selected, ...around],
         make: () => nodeView(node, network, results, scale, units, selected),
       };
     });
@@ -96,7 +103,7 @@ export class DrawingScene {
     return this.knownPipes.all(network.pipes, (pipe) => {
       const selected = selection.has(pipe.id);
       return {
-        basis: [pipe, results, scale, units, selected],
+        basis: [pipe, ...saidOf(pipe.id, results), ...endsOf(pipe, network, results), scale, units, selected],
         make: () => pipeView(pipe, network, results, scale, units, selected),
       };
     });
@@ -136,6 +143,16 @@ export class DrawingScene {
   nameOf(id: string): string {
     return this.nodeViews().get(id)?.name ?? this.pipeViews().get(id)?.name ?? id;
   }
+}
+
+/** All that results say of an element. What says the same after a solve as before it is the same object. */
+function saidOf(id: string, { traps, nodes, pipes, warnings, isolated, caseNameOf }: SceneResults): readonly unknown[] {
+  return [traps.get(id), nodes.get(id), pipes.get(id), isolated.has(id), caseNameOf(id), ...(warnings.get(id) ?? [])];
+}
+
+/** What a pipe shows of the nodes that it joins. */
+function endsOf({ pipe }: DrawnPipe, { nodes }: DrawnNetwork, { isolated }: SceneResults): readonly unknown[] {
+  return [nodes.get(pipe.from)?.node, nodes.get(pipe.to)?.node, isolated.has(pipe.from)];
 }
 
 function trapsFirst(views: ReadonlyMap<string, NodeView>): string | undefined {

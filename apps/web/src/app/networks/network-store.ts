@@ -16,6 +16,7 @@ import { type EditOp, findings, inOrder, type NetworkDocument, type OperatingCas
 import type { DisplayUnits } from '@riseback/units';
 import { catchError, EMPTY, expand, filter, map, type Observable, of, scan, switchMap, timer } from 'rxjs';
 import { withBandsBefore } from '../results/bands-before';
+import { withUnchangedKept } from '../results/kept-results';
 import { WORST_OF_ALL, worstOfCases } from '@riseback/figures';
 import { SessionStore } from '../session/session-store';
 import { toProblem } from '../shared/problem';
@@ -78,10 +79,14 @@ export class NetworkStore {
   readonly redoLabel = computed(() => this.undoStack.nextRedo()?.label ?? null);
   readonly mayDraw = computed(() => this.may('draw'));
 
-  readonly units = computed((): DisplayUnits => ({
-    system: this.session.unitSystem(),
-    atmosphericPressurePa: this.document()?.site.atmosphericPressurePa ?? 101_325,
-  }));
+  readonly units = computed(
+    (): DisplayUnits => ({
+      system: this.session.unitSystem(),
+      atmosphericPressurePa: this.document()?.site.atmosphericPressurePa ?? 101_325,
+    }),
+    // most edits leave them as they were, and every number on the screen hangs on them
+    { equal: (a, b) => a.system === b.system && a.atmosphericPressurePa === b.atmosphericPressurePa },
+  );
 
   /** Topology findings of the document as drawn. */
   readonly topology = computed(() => {
@@ -102,7 +107,7 @@ export class NetworkStore {
       scan((all: Answers, { networkId, latest }): Answers => {
         const before = all.networkId === networkId ? all : NO_ANSWERS;
         if (latest.state !== 'finished') return { ...before, networkId, latest };
-        const finished = withBandsBefore(latest, before.whole);
+        const finished = withUnchangedKept(withBandsBefore(latest, before.whole), before.finished);
         return { networkId, latest, finished, whole: latest.bandsToCome === true ? before.whole : latest };
       }, NO_ANSWERS),
     ),

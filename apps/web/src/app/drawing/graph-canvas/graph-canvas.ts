@@ -127,6 +127,9 @@ export class GraphCanvas {
   );
 
   constructor() {
+    afterNextRender(() => {
+      settleTransition(this.graph());
+    });
     // after rendering: only then has the library the new lists
     afterRenderEffect(() => {
       this.graphNodes();
@@ -229,6 +232,14 @@ export class GraphCanvas {
     const graph = this.graph();
     if (graph.initialized) graph.update({ forceRelayout: true });
   }
+}
+
+/**
+ * The library works its layout transition out from its inputs twice for each element whenever the drawing is checked, which was half of
+ * what a move of the mouse cost while dragging. Here it is always the same: nothing glides to its place.
+ */
+function settleTransition(graph: GraphComponent): void {
+  Object.defineProperty(graph, 'effectiveLayoutTransition', { value: graph.effectiveLayoutTransition });
 }
 
 function sameView(a: Viewport, b: Viewport): boolean {

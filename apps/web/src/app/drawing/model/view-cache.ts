@@ -4,9 +4,13 @@ interface Recipe<View> {
   readonly make: () => View;
 }
 
-/** Keeps the view of each element as long as what it is made of stays the same, so that a drag draws only what it moves. */
+/**
+ * Keeps the view of each element as long as what it is made of stays the same, so that a drag draws only what it moves; and the whole
+ * map while all of its views stay.
+ */
 export class ViewCache<Element, View> {
   private known = new Map<string, { readonly basis: readonly unknown[]; readonly view: View }>();
+  private views: ReadonlyMap<string, View> = new Map();
 
   all(elements: ReadonlyMap<string, Element>, recipeOf: (element: Element) => Recipe<View>): ReadonlyMap<string, View> {
     const known = new Map<string, { readonly basis: readonly unknown[]; readonly view: View }>();
@@ -20,6 +24,17 @@ export class ViewCache<Element, View> {
       views.set(id, entry.view);
     }
     this.known = known;
-    return views;
+    if (!sameInOrder(views, this.views)) this.views = views;
+    return this.views;
   }
+}
+
+function sameInOrder<View>(a: ReadonlyMap<string, View>, b: ReadonlyMap<string, View>): boolean {
+  if (a.size !== b.size) return false;
+  const others = b.entries();
+  for (const [id, view] of a) {
+    const [otherId, otherView] = others.next().value ?? [];
+    if (id !== otherId || view !== otherView) return false;
+  }
+  return true;
 }
