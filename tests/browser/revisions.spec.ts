@@ -149,3 +149,38 @@ test('a revision is submitted, returned with a comment on a pipe, mended, and si
   await reviewer.context().close();
   await expect(review.getByText('B, approved.')).toBeVisible();
 });
+
+test('a comment on a finding shows on the drawing, is kept while it cannot be sent, and is read by a viewer', async ({
+  page,
+  browser,
+}) => {
+  await signIn(page, 'designer');
+  const network = await copyOfDemo(page, 'Comments at findings');
+  await page.goto(`${network}/drawing`);
+  await savedAndSolved(page);
+  await page.getByRole('button', { name: 'Comment on BL-2: Capacity' }).click();
+  const comment = page.getByLabel('New comment on BL-2, capacity in Design');
+  await expect(comment).toBeFocused();
+  await page.route('**/comments', (route) => (route.request().method() === 'POST' ? route.abort() : route.continue()));
+  await page.keyboard.type('Is the measured load known?');
+  await page.keyboard.press('Control+Enter');
+  await expect(page.getByText('The server cannot be reached')).toBeVisible();
+  await expect(comment).toHaveValue('Is the measured load known?');
+  await page.unroute('**/comments');
+  await comment.press('Control+Enter');
+  await expect(page.getByRole('article', { name: 'Comment 1: BL-2, capacity in Design' })).toBeVisible();
+  await expect(page.getByRole('button', { name: /^BL-2,.*1 open comment/ })).toBeVisible();
+
+  // its mark leads to it
+  const viewer = await openAs(browser, 'viewer');
+  await viewer.goto(`${network}/drawing`);
+  await viewer.locator('app-drawing-sheet .comment').click();
+  await expect(viewer.getByText('Is the measured load known?')).toBeVisible();
+  await expect(viewer.getByText('Your role here reads comments and does not write them.')).toBeVisible();
+  await expect(viewer.getByRole('button', { name: 'Answer comment 1' })).toHaveCount(0);
+  await viewer.goto(`${network}/revisions`);
+  await expect(
+    viewer.getByText('Your role here does not freeze revisions: a designer of the site does.'),
+  ).toBeVisible();
+  await viewer.context().close();
+});
