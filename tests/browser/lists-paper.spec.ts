@@ -56,9 +56,7 @@ test('a network opened without a connection says so, and loads when there is one
   await expect(page.getByText(/^Solved \d\d:\d\d/)).toBeVisible({ timeout: 15_000 });
 });
 
-test('a column is filled down by a key, as one step that is taken back', async ({
-  page,
-}) => {
+test('a column is filled down by a key, as one step that is taken back', async ({ page }) => {
   await signIn(page, 'designer');
   await page.goto(`${await copyOfDemo(page, 'Filled down')}/lists?list=traps`);
   const cell = (tag: string, column: number) =>
