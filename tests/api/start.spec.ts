@@ -129,6 +129,7 @@ describe('production', () => {
     const server = serve(env);
     const address = await server.address();
     expect(server.output()).toContain('npm run first-administrator -- EMAIL "NAME" "SITE"');
+    expect(server.output()).toContain('No mail is sent: name a mail server in RISEBACK_SMTP_URL.');
     expect(server.output()).not.toContain('demo');
     const signIn = (email: string, password: string) =>
       fetch(`${address}/api/session`, {

@@ -84,16 +84,16 @@ export class SitePeopleRepository {
 
   private rows(siteId: string, personId?: string) {
     const granter = alias(people, 'granter');
+    const roles = alias(memberships, 'roles');
     const elsewhere = this.db
-      .select({ personId: memberships.personId, sites: count().as('sites') })
-      .from(memberships)
-      .groupBy(memberships.personId)
-      .as('elsewhere');
-    const seen = this.db
-      .select({ personId: sessions.personId, seenAt: max(sessions.seenAt).as('last_seen_at') })
+      .select({ siteId: roles.siteId })
+      .from(roles)
+      .where(and(eq(roles.personId, people.id), ne(roles.siteId, siteId)));
+    // by its index, not as a join: sessions are kept, and become many
+    const seenAt = this.db
+      .select({ at: max(sessions.seenAt) })
       .from(sessions)
-      .groupBy(sessions.personId)
-      .as('seen');
+      .where(eq(sessions.personId, people.id));
     const codes = and(eq(oneTimeSecrets.personId, people.id), isNotNull(oneTimeSecrets.confirmedAt));
     const here = and(
       eq(memberships.siteId, siteId),
@@ -108,15 +108,13 @@ export class SitePeopleRepository {
         grantedAt: memberships.grantedAt,
         grantedByName: granter.name,
         disabledAt: people.disabledAt,
-        seenAt: seen.seenAt,
+        seenAt: sql<string | null>`${seenAt}`,
         codesOn: sql<boolean>`${oneTimeSecrets.personId} is not null`.mapWith(Boolean),
-        onlyHere: sql<boolean>`${elsewhere.sites} = 1 and not ${people.administersInstallation}`.mapWith(Boolean),
+        onlyHere: sql<boolean>`not exists ${elsewhere} and not ${people.administersInstallation}`.mapWith(Boolean),
       })
       .from(memberships)
       .innerJoin(people, eq(people.id, memberships.personId))
-      .innerJoin(elsewhere, eq(elsewhere.personId, people.id))
       .leftJoin(granter, eq(granter.id, memberships.grantedBy))
-      .leftJoin(seen, eq(seen.personId, people.id))
       .leftJoin(oneTimeSecrets, codes)
       .where(here)
       .orderBy(asc(sql`${people.name} collate nocase`), people.id);
