@@ -10,6 +10,7 @@ export * from './password-rules';
 export * from './people';
 export * from './plan';
 export * from './problem';
+export * from './readings';
 export * from './reports';
 export * from './results';
 export * from './revisions';

@@ -2,6 +2,7 @@ import { NetworkFileShape } from '@riseback/network';
 import * as z from 'zod';
 import { PersonName } from './session';
 import { Role } from './roles';
+import { visible, visibleLines } from './visible-text';
 
 /** What becomes of a revision, in the words of document control: `underReview` is issued for review. */
 export const REVISION_STATES = ['draft', 'underReview', 'returned', 'approved', 'superseded', 'withdrawn'] as const;
@@ -12,20 +13,6 @@ export type RevisionState = z.infer<typeof RevisionState>;
 export const SIGNATURE_MEANINGS = ['reviewed', 'approved'] as const;
 export const SignatureMeaning = z.enum(SIGNATURE_MEANINGS);
 export type SignatureMeaning = z.infer<typeof SignatureMeaning>;
-
-/** Shown to others: nothing that could break a line's order or hide. */
-const visible = (longest: number) =>
-  z
-    .string()
-    .trim()
-    .max(longest)
-    .regex(/^[^\p{Cc}\u202A-\u202E\u2066-\u2069]*$/u, 'leave out control characters');
-const visibleLines = (longest: number) =>
-  z
-    .string()
-    .trim()
-    .max(longest)
-    .regex(/^(?:[^\p{Cc}\u202A-\u202E\u2066-\u2069]|[\n\t])*$/u, 'leave out control characters');
 
 /** Body of POST /api/networks/:networkId/revisions: freeze the network as it stood at this version. */
 export const NewRevision = z.strictObject({
