@@ -72,9 +72,9 @@ describe('a report', () => {
     const client = server.as(role);
     const job = await ended(client, await order(client));
     expect(job).toMatchObject({ state: 'finished', progress: 1, name: 'Small-working.pdf', sizeBytes: FILE.length });
-    const { body, headers } = await client.get(`${path}/${job.id}/content`).expect(200);
-    expect(body).toEqual(FILE);
-    expect(headers).toMatchObject({
+    const response = await client.get(`${path}/${job.id}/content`).expect(200);
+    expect(response.body).toEqual(FILE);
+    expect(response.headers).toMatchObject({
       'content-type': 'application/pdf',
       'content-disposition': 'attachment; filename=Small-working.pdf',
       'cache-control': 'no-store',
@@ -146,17 +146,17 @@ describe('an order', () => {
     const job = await order(viewer);
     await running(viewer, job);
     const start = performance.now();
-    const { body } = await viewer.send('delete', `${path}/${job.id}`).expect(200);
+    const response = await viewer.send('delete', `${path}/${job.id}`).expect(200);
     expect(performance.now() - start).toBeLessThan(1_000);
-    expect(body).toMatchObject({ state: 'cancelled', doing: 'Called off' });
+    expect(response.body).toMatchObject({ state: 'cancelled', doing: 'Called off' });
     expect(port.signals[0]?.aborted).toBe(true);
     expect((await viewer.get(`${path}/${job.id}/content`)).status).toBe(409);
   });
 
   it('that has ended stays as it is', async () => {
     const job = await ended(viewer, await order(viewer));
-    const { body } = await viewer.send('delete', `${path}/${job.id}`).expect(200);
-    expect(body).toMatchObject({ state: 'finished' });
+    const response = await viewer.send('delete', `${path}/${job.id}`).expect(200);
+    expect(response.body).toMatchObject({ state: 'finished' });
   });
 
   it('beyond what one person may have under way is refused, and another person’s is not', async () => {

@@ -29,10 +29,8 @@ export async function makeReport(
   progress: ReportProgress,
   signal: AbortSignal,
 ): Promise<Buffer> {
-  const make = REPORT_MAKERS[format];
-  if (make === undefined) throw new Error(`no report is made as ${format} yet`);
   progress(0.02, 'Reading the results');
-  return make(contentOf(material), progress, signal);
+  return REPORT_MAKERS[format](contentOf(material), progress, signal);
 }
 
 function contentOf({ previous, fileText, outcomesText, ...rest }: ReportMaterial): ReportContent {
