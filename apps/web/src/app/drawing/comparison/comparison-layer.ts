@@ -1,4 +1,4 @@
-import { ChangeDetectionStrategy, Component, computed, inject, input } from '@angular/core';
+import { ChangeDetectionStrategy, Component, computed, inject, input, untracked } from '@angular/core';
 import type { Box } from '@riseback/figures';
 import { DrawingScene } from '../drawing-scene';
 import { labelObstacles, type SheetLabel } from '../labels/sheet-labels';
@@ -45,6 +45,10 @@ export class ComparisonLayer {
       ...this.commentMarks().map(({ box }) => box),
     ];
   });
-  protected readonly marks = computed(() => comparisonMarks(this.subject(), this.zoom(), this.obstacles()));
+  protected readonly marks = computed(() => {
+    // as labels do, marks look for their places again at another zoom, and not while the sheet is moved
+    const { panX, panY, width, height } = untracked(this.viewport);
+    return comparisonMarks(this.subject(), this.zoom(), this.obstacles(), { x: -panX, y: -panY, width, height });
+  });
   protected readonly ghosts = computed(() => ghosts(this.subject(), this.zoom()));
 }

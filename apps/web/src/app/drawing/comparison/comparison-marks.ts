@@ -41,16 +41,24 @@ interface Subject {
   readonly pipes: ReadonlyMap<string, PipeView>;
 }
 
-/** A mark for each element that is otherwise, laid where nothing else is; one whose words find no room keeps its signs alone. */
-export function comparisonMarks(subject: Subject, zoom: number, obstacles: readonly Box[]): ComparisonMark[] {
+/**
+ * A mark for each element that is otherwise, laid where nothing else is; one whose words find no room keeps its signs alone.
+ * @param seen what the window shows: a place that its edge cuts is taken only where there is no other
+ */
+export function comparisonMarks(
+  subject: Subject,
+  zoom: number,
+  obstacles: readonly Box[],
+  seen?: Box,
+): ComparisonMark[] {
   const wanted = wantedMarks(subject, zoom, zoom >= WORDS_FROM);
-  const placed = placeLabels(wanted, obstacles);
+  const placed = placeLabels(wanted, obstacles, undefined, seen);
   const laid = wanted.flatMap(({ mark, key, candidates }): ComparisonMark[] => {
     const box = candidates[placed.get(key) ?? -1];
     return box === undefined ? [] : [{ ...mark, box }];
   });
   const signs = wantedMarks(subject, zoom, false).filter(({ key }) => !placed.has(key));
-  const squeezed = placeLabels(signs, [...obstacles, ...laid.map(({ box }) => box)]);
+  const squeezed = placeLabels(signs, [...obstacles, ...laid.map(({ box }) => box)], undefined, seen);
   return [
     ...laid,
     ...signs.flatMap(({ mark, key, candidates }): ComparisonMark[] => {

@@ -219,6 +219,19 @@ describe('two revisions side by side', () => {
     expect(page().textContent).toContain('No results of Working yet');
   });
 
+  it('warn where only one of the two has its spread, which may turn a verdict by itself', async () => {
+    const spread = { lowPa: ATMOSPHERE, highPa: ATMOSPHERE + PSI };
+    const results = after.results.map((one) =>
+      one.status === 'solved'
+        ? { ...one, result: { ...one.result, traps: one.result.traps.map((each) => ({ ...each, spread })) } }
+        : one,
+    );
+    await show(before, { ...after, results });
+    expect(page().textContent).toContain('Only one of the two is computed with its spread');
+    await show({ ...before, results }, { ...after, results });
+    expect(page().textContent).not.toContain('Only one of the two is computed with its spread');
+  });
+
   it('lead to elements, and to a comment on what is looked at', async () => {
     await show(before, after);
     const chosen: string[] = [];

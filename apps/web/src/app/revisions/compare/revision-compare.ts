@@ -71,6 +71,11 @@ export class RevisionCompare {
     return this.awaited().length > 0 ? [] : caseNotes(some, this.nameOfCase(), this.labels());
   });
 
+  /** Where only one of the two has its bands, a verdict may be turned by that alone. */
+  protected readonly bandsDiffer = computed(
+    () => this.awaited().length === 0 && hasBands(this.before()) !== hasBands(this.after()),
+  );
+
   protected readonly sentence = computed(() => compareSentence(this.network(), this.effects().traps, this.units()));
   private readonly allInputs = computed(() =>
     inputRows(
@@ -131,4 +136,10 @@ export class RevisionCompare {
   protected chooseQuantity(quantity: string): void {
     this.quantity.set(quantity === 'differentialPa' ? 'differentialPa' : 'backPressurePa');
   }
+}
+
+function hasBands({ results }: RevisionSide): boolean {
+  return results.some(
+    (outcome) => outcome.status === 'solved' && outcome.result.traps.some(({ spread }) => spread !== undefined),
+  );
 }
