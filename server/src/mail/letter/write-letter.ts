@@ -62,14 +62,13 @@ function invitation(
 }
 
 function passwordReset({ byName, expiresAt }: ResetData, token: string, { reader, origin }: Setting): Letter {
-  const why = byName === undefined ? 'Somebody asked' : `${oneLine(byName)}, who administers your site, asks you`;
+  const asked =
+    byName === undefined
+      ? 'Somebody asked for a new password for your account.'
+      : `${oneLine(byName)}, who administers your site, asks you to choose a new password for your account.`;
   return {
     subject: 'Choose a new password for Riseback',
-    paragraphs: [
-      byName === undefined
-        ? `${why} for a new password for your account. The link below leads to where you choose one; until then the present one holds.`
-        : `${why} to choose a new password for your account. The link below leads to where you do; until then the present one holds.`,
-    ],
+    paragraphs: [`${asked} The link below leads to where you choose it; until then the present one holds.`],
     facts: [{ label: 'The link works once, until', value: timeFor(reader, expiresAt) }],
     action: { label: 'Choose a new password', url: pageAddresses(origin).passwordReset(token) },
     tellsResults: false,
