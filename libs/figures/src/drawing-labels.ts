@@ -17,6 +17,8 @@ interface LabelsInput {
   readonly result: SolveResult | undefined;
   readonly areas: readonly AreaOutline[];
   readonly units: DisplayUnits;
+  /** The sheet's edge, which no label may cross. */
+  readonly edge: Box;
   /** Size of a unit of the symbols' grid, pt. */
   readonly symbol: number;
 }
@@ -58,7 +60,9 @@ const REACH: Readonly<Record<DrawnNode['node']['kind'], Readonly<{ x: number; y:
 
 /** The labels of a drawing on paper, in order of right, each where it finds room. */
 export function drawingLabels(input: LabelsInput): { readonly shapes: Shape[]; readonly leftOut: number } {
-  const labels = wantedLabels(input).sort((a, b) => a.right - b.right);
+  const labels = wantedLabels(input)
+    .map((label) => ({ ...label, candidates: label.candidates.filter((place) => within(place, input.edge)) }))
+    .sort((a, b) => a.right - b.right);
   const taken = placeLabels(labels, obstacles(input));
   const shapes = labels.flatMap((label) => {
     const place = label.candidates[taken.get(label.key) ?? -1];
@@ -87,10 +91,14 @@ function wantedLabels({ drawn, result, areas, units, symbol }: LabelsInput): Lab
     }
     const right = concern === 'fail' ? 0 : concern === 'watch' ? 1 : vessel ? 2 : kind === 'junction' ? 6 : 3;
     const reach = { x: REACH[kind].x * symbol, y: REACH[kind].y * symbol };
-    const sides = sidesOf(node.id, drawn);
-    return [
-      { key: `n:${node.id}`, lines, candidates: sides.map((side) => beside(node.at, side, reach, lines)), right },
+    const [outer = 'up', ...others] = sidesOf(node.id, drawn);
+    // in a close row a label finds room a line farther out than its neighbours'
+    const farther = { x: reach.x, y: reach.y + heightOf(lines) };
+    const candidates = [
+      ...[outer, ...others].map((side) => beside(node.at, side, reach, lines)),
+      beside(node.at, outer, farther, lines),
     ];
+    return [{ key: `n:${node.id}`, lines, candidates, right }];
   });
   const pipes = [...drawn.pipes.values()].flatMap((pipe) => [
     ...liftLabel(pipe, drawn, units, symbol),
@@ -207,6 +215,10 @@ function obstacles({ drawn, symbol }: LabelsInput): Box[] {
       })),
     ),
   ];
+}
+
+function within(inner: Box, { x, y, width, height }: Box): boolean {
+  return inner.x >= x && inner.y >= y && inner.x + inner.width <= x + width && inner.y + inner.height <= y + height;
 }
 
 function widthOf(lines: readonly Line[]): number {

@@ -65,7 +65,8 @@ export function networkDrawing(input: NetworkDrawingInput): NetworkDrawing {
     width: width * fit,
     height: height * fit,
   }));
-  const labels = drawingLabels({ ...input, drawn: painter.drawn, areas: outlines, symbol });
+  const edge = { x: STRIP + 1, y: STRIP + 1, width: sheetWidth * fit - 2, height: sheetHeight * fit - 2 };
+  const labels = drawingLabels({ ...input, drawn: painter.drawn, areas: outlines, edge, symbol });
   return {
     shapes: [
       ...outlines.map(({ x, y, width, height }): Shape => ({

@@ -26,7 +26,7 @@ export function drawingPage(sheet: Sheet, source: TableSource): void {
   const left =
     drawing.labelsLeftOut === 0
       ? ''
-      : ` ${String(drawing.labelsLeftOut)} labels found no room; the lists have them all.`;
+      : `Labels that found no room: ${String(drawing.labelsLeftOut)}; the lists have them all.`;
   sheet.tagged('P', () => {
     legend(
       sheet,
@@ -35,7 +35,7 @@ export function drawingPage(sheet: Sheet, source: TableSource): void {
     );
     const words = `Back pressure, ${displayUnit('pressure', units.system)}`;
     sheet.print(words, sheet.left, sheet.y + 6, { size: 7.4, weight: 600 });
-    if (left !== '') sheet.print(left.trim(), sheet.right, sheet.y + 6, { size: 7, ink: 'ink2' }, 'right');
+    if (left !== '') sheet.print(left, sheet.right, sheet.y + 6, { size: 7, ink: 'ink2' }, 'right');
   });
   const names = file.nodes.length + file.pipes.length;
   const words = `Drawing of the network: ${String(names)} elements, pipes washed by pressure, each trap with its back pressure. The tables of results hold the same numbers.`;

@@ -48,8 +48,6 @@ export class Typeface {
   private readonly files = new Map<string, FontkitFont>();
   private readonly fontOf = new Map<string, string>();
   private readonly advances = new Map<string, number>();
-  /** Whether a character had to be left out. */
-  lacking = false;
 
   constructor(private readonly doc: FontDocument) {}
 
@@ -92,10 +90,7 @@ export class Typeface {
     if (known !== undefined) return known;
     const codePoint = character.codePointAt(0) ?? 0;
     const subset = SUBSETS.find((name) => this.open(fontName(name, weight)).hasGlyphForCodePoint(codePoint));
-    if (subset === undefined) {
-      this.lacking = true;
-      return undefined;
-    }
+    if (subset === undefined) return undefined;
     this.fontOf.set(key, fontName(subset, weight));
     return fontName(subset, weight);
   }
