@@ -111,16 +111,18 @@ export class MailSender {
     if (known === undefined) report(error);
     const words = known?.message ?? 'It could not be sent; the log has the reason.';
     if (known?.unreachable === true) this.pausedUntil = this.time() + PAUSE_MS;
+    // What is wrong with one mail names its recipient, and is for the outbox; what is wrong with the way is for the log.
+    const told = { mail: id, purpose, attempts: attempts + 1, ...(known?.unreachable === true ? { why: words } : {}) };
     const next = nextTry(attempts + 1, new Date(createdAt), now(), random());
     if (next === undefined) {
       outbox.giveUp(id, words, true);
       ended('givenUp');
-      warn({ mail: id, purpose, why: words }, 'a mail was given up');
+      warn(told, 'a mail was given up');
       return;
     }
     outbox.postpone(id, next.toISOString(), words);
     ended('failed');
-    warn({ mail: id, purpose, attempts: attempts + 1, why: words }, 'a mail could not be sent and is tried again');
+    warn(told, 'a mail could not be sent and is tried again');
   }
 
   private sleep(): void {
