@@ -1,4 +1,5 @@
 import { readFileSync } from 'node:fs';
+import type { Signature } from '@riseback/contracts';
 import { FORMAT, fromFile, type NetworkFile, readNetworkFile } from '@riseback/network';
 import { relativeError } from '@riseback/numerics';
 import { type DisplayUnits, formatQuantity } from '@riseback/units';
@@ -143,6 +144,22 @@ describe('the report as a workbook', () => {
       const cover = Object.entries(unzipSync(await makeCsv(content, () => undefined, signal)))[0]?.[1];
       expect(strFromU8(cover ?? new Uint8Array())).toContain(words);
     }
+  });
+
+  it('tells the course of a revision and who signed it', async () => {
+    const by = { personId: 'p', personName: 'Ada Reader', at: '2026-03-02T09:30:00.000Z' };
+    const hashes = { statement: '{}', statementHash: HASH, auditHead: HASH, signature: 'AA==', keyId: 'k1' };
+    const signature: Signature = { ...by, ...hashes, seq: 1, meaning: 'approved', role: 'reviewer' };
+    const events = [{ ...by, seq: 2, state: 'returned', note: 'Riser too small' }] as const;
+    const rows = records(await sheetsOf(frozen(TERN_QUAY, { events, signatures: [signature] })), 'Cover');
+    const told = (what: string) => rows.filter(({ What }) => What === what).map(({ Value }) => String(Value));
+    expect(told('Course')[0]).toMatch(/^Returned, 2 Mar 2026, 09:30 UTC, Ada Reader: Riser too small$/);
+    expect(told('Signature')[0]).toMatch(/^Approved by Ada Reader, reviewer, 2 Mar 2026, 09:30 UTC; key k1$/);
+  });
+
+  it('says plainly that nothing changed', async () => {
+    const sheets = await sheetsOf(frozen(smallNetwork(), {}, previous(smallNetwork())));
+    expect(records(sheets, 'Changed inputs').map(({ List }) => List)).toEqual(['Nothing changed']);
   });
 
   it('tells a case without a solution as such, and goes on with the others', async () => {

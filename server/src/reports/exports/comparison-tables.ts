@@ -20,10 +20,11 @@ export function comparisonTables(
 }
 
 function changedInputs(before: readonly ReportTable[], after: readonly ReportTable[]): ReportTable {
+  const rows = after.flatMap((table, index) => changesIn(before[index]?.rows ?? [], table));
   return {
     name: 'Changed inputs',
     columns: ['List', 'Element', 'What', 'Property', 'Before', 'After'].map((title) => ({ title, unit: '' })),
-    rows: after.flatMap((table, index) => changesIn(before[index]?.rows ?? [], table)),
+    rows: rows.length === 0 ? [['Nothing changed', ...Array.from({ length: 5 }, () => undefined)]] : rows,
   };
 }
 

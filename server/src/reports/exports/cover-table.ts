@@ -1,3 +1,4 @@
+import type { RevisionState } from '@riseback/contracts';
 import type { ReportContent } from '../report-content';
 import { reportStanding } from './report-standing';
 import type { ReportTable, TableCell } from './report-table';
@@ -8,6 +9,15 @@ const CAUTIONS = [
   'Steam and hot condensate burn and kill; water hammer breaks pipes. Nobody opens a line, a trap or a gauge connection on the word of a calculation.',
   'Riseback computes a steady state from what was typed. It does not replace local codes (for instance the power-piping and building-services piping codes and pressure-equipment law) or a licensed engineer’s judgement.',
 ] as const;
+
+const EVENT_WORDS: Readonly<Record<RevisionState, string>> = {
+  draft: 'Frozen',
+  underReview: 'Issued for review',
+  returned: 'Returned',
+  approved: 'Approved',
+  superseded: 'Superseded',
+  withdrawn: 'Withdrawn',
+};
 
 /** What the report is of, how it stands, who signed it, and what every part of it must be read with. */
 export function coverTable(content: ReportContent, source: TableSource): ReportTable {
@@ -43,8 +53,12 @@ function stateRows({ state, previous }: ReportContent, time: (iso: string) => st
     ['Revision', `${state.letter}, ${state.title}`],
     ['Reason', state.reason],
     ['Version', String(state.version)],
-    ['Frozen', `${time(state.createdAt)}, ${state.createdByName}`],
+    ['Frozen by', `${state.createdByName}, ${time(state.createdAt)}`],
     ['Results, SHA-256', state.resultsHash],
+    ...state.events.map(({ state: reached, at, personName, note }): [string, string] => [
+      'Course',
+      [`${EVENT_WORDS[reached]}, ${time(at)}, ${personName}`, note].filter((part) => part !== '').join(': '),
+    ]),
     ...state.signatures.map(({ meaning, personName, role, at, keyId }): [string, string] => [
       'Signature',
       `${meaning === 'approved' ? 'Approved' : 'Reviewed'} by ${personName}, ${role}, ${time(at)}; key ${keyId}`,
