@@ -11,7 +11,7 @@ import { textPieces } from './mail-text';
   imports: [MatButton],
   changeDetection: ChangeDetectionStrategy.OnPush,
   template: `
-    <h3 tabindex="-1">{{ mail().subject }}</h3>
+    <h3>{{ mail().subject }}</h3>
     <dl>
       <dt>From</dt>
       <dd>{{ mail().from }}</dd>

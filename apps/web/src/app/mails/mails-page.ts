@@ -46,6 +46,11 @@ export class MailsPage {
       repeated: mail.times > 1 ? `, ${String(mail.times)} times` : '',
     })),
   );
+  /** Said aloud; the mail itself is read at the reader's own pace. */
+  protected readonly opened = computed(() => {
+    const open = this.store.open();
+    return open?.status === 'ready' ? `Open below: ${open.value.subject}` : '';
+  });
 
   constructor() {
     effect(() => this.store.siteId.set(this.siteId()));
