@@ -19,6 +19,10 @@ describe('formulaPieces', () => {
     ]);
   });
 
+  it('finds the bracket that closes another', () => {
+    expect(formulaPieces('r^((n + 1)/n) x').map(({ text }) => text)).toEqual(['r', '(n + 1)/n', ' x']);
+  });
+
   it('loses no sign of any formula of the Method view but the marks themselves', () => {
     for (const equation of METHOD_SECTIONS.flatMap(({ equations = [] }) => equations)) {
       const set = formulaPieces(equation).map(({ text }) => text);

@@ -17,6 +17,7 @@ import { methodPages } from './method-pages';
 import { furnish } from './page-furniture';
 import { scopePages } from './scope-pages';
 import { Sheet } from './sheet';
+import { cellText } from './table-columns';
 import { tablePages } from './table-pages';
 
 /** The calculation report as a PDF, in the order in which it is read. */
@@ -96,6 +97,14 @@ function comparisonPages(
   // old and new gauge pressures stand side by side, so both count from the present atmosphere
   const source = { ...own, units: { ...own.units, atmosphericPressurePa: file.site.atmosphericPressurePa } };
   for (const table of comparisonTables({ source, inputs: inputTables(source) }, after)) {
-    tablePages(sheet, table, { title: table.name, kept: ['Trap', 'Case', 'Change'], none: 'Nothing.' });
+    const changed = { ...table, rows: table.rows.filter((row) => isChanged(table, row)) };
+    tablePages(sheet, changed, { title: table.name, kept: ['Trap', 'Case', 'Change'], none: 'Nothing.' });
   }
+}
+
+/** Whether anything that is printed of a row differs before and after; a list of what changed holds no other rows. */
+function isChanged({ columns }: ReportTable, row: ReportTable['rows'][number]): boolean {
+  const text = (title: string) => cellText(row[columns.findIndex((column) => column.title === title)]);
+  if (!columns.some(({ title }) => title === 'Back before')) return true;
+  return text('Back before') !== text('Back after') || text('Verdict before') !== text('Verdict after');
 }

@@ -2,6 +2,7 @@ import { METHOD_GROUPS, type MethodSection, SUBSCRIPTS, SYMBOLS } from '@risebac
 import type { Method } from '@riseback/network';
 import { printFormula } from './formula-line';
 import type { Sheet, TextStyle } from './sheet';
+import { tableInText } from './table-pages';
 
 const TEXT: TextStyle = { size: 8 };
 const SMALL: TextStyle = { size: 7.4, ink: 'ink2' };
@@ -49,8 +50,8 @@ function sectionPart(sheet: Sheet, section: MethodSection, group: string | undef
     sheet.paragraph(`with ${words}`, SMALL, { ...box, indent: 2 * INDENT });
   }
   if (table !== undefined) {
-    const rows = table.rows.map((row) => row.map(plain).join(', ')).join('; ');
-    sheet.paragraph(`${table.head.join(', ')}: ${rows}.`, SMALL, box);
+    const rows = table.rows.map((row) => row.map(plain));
+    tableInText(sheet, table.head, rows);
   }
   for (const note of [...notes, ...(warning === undefined ? [] : [warning])]) sheet.paragraph(plain(note), SMALL, box);
   sheet.paragraph(`Holds: ${plain(range)}`, SMALL, box);

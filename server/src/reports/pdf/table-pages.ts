@@ -56,6 +56,12 @@ export function tablePages(sheet: Sheet, table: ReportTable, { title, note, kept
   new TablePages(sheet, columns, table.rows).print();
 }
 
+/** A table in running text, as wide as the column that it stands in. */
+export function tableInText(sheet: Sheet, head: readonly string[], rows: readonly (readonly string[])[]): void {
+  const columns = head.map((title, index) => ({ title, unit: '', index, numeric: false, marked: false }));
+  new TablePages(sheet, columns, rows).print();
+}
+
 class TablePages {
   private readonly widths: readonly number[];
   private readonly heads: readonly (readonly string[])[];

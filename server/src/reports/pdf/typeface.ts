@@ -119,6 +119,7 @@ function printable(text: string): string {
     .replaceAll(/\s+/gu, ' ')
     .replaceAll(/[\p{Cc}\p{Cf}\p{Co}\p{Cn}\p{Cs}]/gu, '')
     .replaceAll(SMALL_DIGITS, (digit) => String((digit.codePointAt(0) ?? 0x2080) - 0x2080))
+    .replaceAll(/√(?!\()/gu, 'sqrt ')
     .replaceAll(/[√≥≤→∝′]/gu, (sign) => WORDED[sign] ?? sign);
 }
 
