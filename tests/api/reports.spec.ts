@@ -1,9 +1,9 @@
 import { createHash } from 'node:crypto';
-import { type ReportJob, ROLES } from '@riseback/contracts';
+import { REPORT_FORMATS, type ReportJob, type Revision, ROLES } from '@riseback/contracts';
 import { eq } from 'drizzle-orm';
 import { afterEach, beforeEach, describe, expect, it } from 'vitest';
 import { audit, jobs, memberships } from '../../server/src/platform/db/schema';
-import type { ReportMaterial, ReportOrder } from '../../server/src/reports/report-material';
+import { makeReport, type ReportMaterial, type ReportOrder } from '../../server/src/reports/report-material';
 import { ReportRepository } from '../../server/src/reports/report-repository';
 import { ReportRunner } from '../../server/src/reports/report-runner';
 import { MOST_OF_A_PERSON } from '../../server/src/reports/report-service';
@@ -113,6 +113,43 @@ describe('a report', () => {
     expect(file.nodes.find(({ id }) => id === 'T1')?.elevationM).toBe(3);
     const outcomes = JSON.parse(material?.outcomesText ?? '') as { status: string }[];
     expect(outcomes).toMatchObject([{ status: 'solved' }]);
+  });
+
+  it('of a revision holds what was frozen, whatever the network is by now, beside the revision before', async () => {
+    const port = new LedPort(() => Promise.resolve(FILE));
+    server.close();
+    await begin(port);
+    const designer = server.as('designer');
+    const freeze = async (networkVersion: number) => {
+      await designer.get(`/api/networks/${networkId}/results`).expect(200);
+      const wanted = { title: 'As drawn', reason: 'To be read', networkVersion };
+      return (await designer.post(`/api/networks/${networkId}/revisions`, wanted).expect(201)).body as Revision;
+    };
+    await freeze(1);
+    await sendBatch(designer, networkId, 1, batchOf([raise(3)])).expect(200);
+    const second = await freeze(2);
+    await sendBatch(designer, networkId, 2, batchOf([raise(4, 3)])).expect(200);
+
+    const job = await ended(viewer, await order(viewer, { format: 'json', revisionId: second.id }));
+    expect(job).toMatchObject({ state: 'finished', name: 'Small-revision-B.json', revisionId: second.id });
+    const material = port.orders[0]?.material;
+    expect(material?.state).toMatchObject({ kind: 'revision', letter: 'B', state: 'draft', version: 2, editsSince: 1 });
+    expect(material).toMatchObject({ fileHash: second.fileHash, previous: { letter: 'A', title: 'As drawn' } });
+    const elevationOf = (text: string | undefined) =>
+      (JSON.parse(text ?? '') as { nodes: { id: string; elevationM: number }[] }).nodes.find(({ id }) => id === 'T1')
+        ?.elevationM;
+    expect([elevationOf(material?.previous?.fileText), elevationOf(material?.fileText)]).toEqual([0, 3]);
+    expect(JSON.parse(material?.outcomesText ?? '')).toMatchObject([{ caseId: '', status: 'solved' }]);
+  });
+
+  it('is made in each format by the makers themselves', async () => {
+    server.close();
+    await begin({ make: makeReport });
+    for (const format of REPORT_FORMATS) {
+      const job = await ended(viewer, await order(viewer, { format }));
+      expect(job, format).toMatchObject({ state: 'finished' });
+      expect(job.sizeBytes, format).toBeGreaterThan(500);
+    }
   });
 
   it('names revisions that are not there, and another network’s, as such', async () => {
