@@ -35,6 +35,8 @@ export class DrawingScene {
   });
   /** As the document has it. */
   readonly settled = this.drawn.asReadonly();
+  /** The pipes of it: most edits move none. */
+  private readonly lines = computed(() => this.settled().pipes);
   /** With what is being moved in its new place. */
   readonly network = computed(() => {
     const displaced = this.state.displaced();
@@ -109,7 +111,7 @@ export class DrawingScene {
     });
   });
   /** Where pipes cross without a junction; while something is moved, as before it. */
-  readonly crossings = computed(() => crossings(this.settled().pipes.values()));
+  readonly crossings = computed(() => crossings(this.lines().values()));
 
   /** Pipes on the way of the one selected trap. */
   readonly way = computed((): ReadonlySet<string> => {

@@ -2,7 +2,8 @@ import { jsonEqual } from '@riseback/network';
 import type { DrawnNetwork, DrawnNode, DrawnPipe } from './drawn-network';
 
 /**
- * The drawing after an edit, in which each element that stayed as it was is the very object that it was, so that it is not drawn anew.
+ * The drawing after an edit, in which each element that stayed as it was is the very object that it was, so that it is not drawn anew;
+ * where none changed, so are all nodes or all pipes together.
  */
 export function keptDrawing(now: DrawnNetwork, before: DrawnNetwork): DrawnNetwork {
   return { ...now, nodes: kept(now.nodes, before.nodes, sameNode), pipes: kept(now.pipes, before.pipes, samePipe) };
@@ -21,9 +22,13 @@ function kept<T>(
   same: (a: T, b: T) => boolean,
 ): ReadonlyMap<string, T> {
   const all = new Map<string, T>();
+  let changed = now.size !== before.size;
+  const inOrder = before.keys();
   for (const [id, item] of now) {
     const was = before.get(id);
-    all.set(id, was !== undefined && same(was, item) ? was : item);
+    const stays = was !== undefined && same(was, item);
+    all.set(id, stays ? was : item);
+    changed ||= !stays || inOrder.next().value !== id;
   }
-  return all;
+  return changed ? all : before;
 }
