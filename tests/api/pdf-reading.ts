@@ -35,7 +35,7 @@ export async function readPdf(bytes: Uint8Array): Promise<ReadPdf> {
       return [{ text: item.str, x: x ?? 0, y: y ?? 0, width: item.width }];
     });
     pages.push(linesOf(placed));
-    collect(await page.getStructTree(), structure);
+    collect((await page.getStructTree()) as StructureNode | null, structure);
   }
   const marks = (await document.getMarkInfo()) as { Marked?: boolean } | null;
   const { info } = (await document.getMetadata()) as { info: { Language?: string } };
