@@ -22,6 +22,8 @@ const STATES: Readonly<Record<RevisionState, string>> = {
   superseded: 'Superseded',
   withdrawn: 'Withdrawn',
 };
+const STEP: TextStyle = { size: 8.2 };
+const STEP_LINE = 11;
 const GAP = 28;
 
 /** What the report is of, how it stands, who made and signed it, what came out in short. */
@@ -41,12 +43,12 @@ export function coverPage(sheet: Sheet, content: ReportContent, standing: Report
   const [first, second] = [0.5 * (width - GAP), 0.5 * (width - GAP)];
   const top = sheet.y;
   facts(sheet, 'What it is of', stateFacts(content), left, first);
+  if (content.state.kind === 'revision') people(sheet, content.state, content.reader.timeZone, left, first);
   const leftEnd = sheet.y;
   sheet.y = top;
   results(sheet, content, source, right - second, second);
   facts(sheet, 'What seals it', sealFacts(content), right - second, second);
   sheet.y = Math.max(leftEnd, sheet.y) + 4;
-  if (content.state.kind === 'revision') people(sheet, content.state, content.reader.timeZone);
   worstTraps(sheet, source);
   for (const caution of CAUTIONS) sheet.paragraph(caution, { size: 8, ink: 'ink2' }, { gap: 2 });
 }
@@ -99,7 +101,7 @@ function sealFacts({ fileHash, engineVersion, solverHash, state }: ReportContent
 function facts(sheet: Sheet, title: string, list: Facts, x: number, width: number): void {
   head(sheet, title, x, width);
   for (const [label, text] of list) {
-    const lines = sheet.lines(text, width - 108, VALUE).slice(0, 8);
+    const lines = sheet.lines(text, width - 108, VALUE).slice(0, 6);
     sheet.tagged('P', () => {
       sheet.print(label, x, sheet.y + 9, LABEL);
       lines.forEach((line, i) => sheet.print(line, x + 108, sheet.y + 9 + i * 12, VALUE));
@@ -148,8 +150,7 @@ function results(sheet: Sheet, { outcomes }: ReportContent, source: TableSource,
 }
 
 /** Who did what with the revision, and what each signature says of itself. */
-function people(sheet: Sheet, { events, signatures }: FrozenState, timeZone: string): void {
-  sheet.heading('Who did what', 40);
+function people(sheet: Sheet, { events, signatures }: FrozenState, timeZone: string, x: number, width: number): void {
   const steps = events.map(({ state, personName, at, note }) => ({
     at,
     words: `${STATES[state]} by ${personName}${note === '' ? '' : `: ${note}`}`,
@@ -158,15 +159,38 @@ function people(sheet: Sheet, { events, signatures }: FrozenState, timeZone: str
     at,
     words: `Signed as ${meaning} by ${personName}, ${role}. Ed25519, key ${keyId.slice(0, 16)}, statement ${statementHash}`,
   }));
-  for (const { at, words } of [...steps, ...signed].sort((a, b) => a.at.localeCompare(b.at))) {
-    const lines = sheet.lines(words, sheet.width - 132, { size: 8.2 }).slice(0, 4);
-    sheet.ensure(lines.length * 11 + 4);
+  const all = [...steps, ...signed]
+    .sort((a, b) => a.at.localeCompare(b.at))
+    .map(({ at, words }) => ({ at, lines: sheet.lines(words, width - 108, STEP).slice(0, 4) }));
+  head(sheet, 'Who did what', x, width);
+  const shown = lastThatFit(all, sheet.room - 24);
+  if (shown.length < all.length) {
+    const words = `${String(all.length - shown.length)} earlier steps stand in the history of the revision`;
+    sheet.tagged('P', () => sheet.print(words, x, sheet.y + 8, LABEL));
+    sheet.y += 13;
+  }
+  for (const { at, lines } of shown) {
     sheet.tagged('P', () => {
-      sheet.print(timeWords(at, timeZone), sheet.left, sheet.y + 8, { size: 8.2, ink: 'ink2' });
-      lines.forEach((line, i) => sheet.print(line, sheet.left + 132, sheet.y + 8 + i * 11, { size: 8.2 }));
+      sheet.print(timeWords(at, timeZone), x, sheet.y + 8, LABEL);
+      lines.forEach((line, i) => sheet.print(line, x + 108, sheet.y + 8 + i * STEP_LINE, STEP));
     });
-    sheet.y += lines.length * 11 + 3;
-    sheet.rule(sheet.left, sheet.y - 1, sheet.right);
+    sheet.y += stepHeight(lines);
+    sheet.rule(x, sheet.y - 1, x + width);
   }
   sheet.y += 8;
+}
+
+/** The last ones, in their order: whoever needs the rest looks into the history. */
+function lastThatFit<T extends { readonly lines: readonly string[] }>(steps: readonly T[], room: number): readonly T[] {
+  let [first, left] = [steps.length, room];
+  for (const step of steps.toReversed()) {
+    left -= stepHeight(step.lines);
+    if (left < 0) break;
+    first -= 1;
+  }
+  return steps.slice(first);
+}
+
+function stepHeight(lines: readonly string[]): number {
+  return lines.length * STEP_LINE + 3;
 }

@@ -25,13 +25,17 @@ interface WorstTrap {
 }
 
 const ROW = 16;
+/** What stands under them, and their head. */
+const CAUTIONS_ROOM = 66;
+const LEAST_ROWS = 4;
 const CELL: TextStyle = { size: 8.4 };
 /** The staff's own height and the share it is drawn at. */
 const STAFF = { width: 250, scale: 0.82 } as const;
 
 /** The traps with most against them, each in its own worst case, as lying staffs on one scale. */
 export function worstTraps(sheet: Sheet, source: TableSource): void {
-  const most = Math.floor((sheet.room - 60) / ROW);
+  if (sheet.room < CAUTIONS_ROOM + LEAST_ROWS * ROW) sheet.newPage();
+  const most = Math.floor((sheet.room - CAUTIONS_ROOM) / ROW);
   const traps = worstFirst(source).slice(0, Math.min(14, most));
   if (traps.length < 1) return;
   const { left, right } = sheet;
