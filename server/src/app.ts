@@ -56,6 +56,7 @@ import type { Route } from './platform/routes/route-table';
 import { PlanRepository } from './plans/plan-repository';
 import { planRoutes } from './plans/plan-routes';
 import { PlanService } from './plans/plan-service';
+import { buildReadingArea } from './readings/reading-area';
 import { buildRevisionArea } from './revisions/revision-area';
 import type { SignatureKeys } from './revisions/signature-keys';
 import { buildReportArea } from './reports/report-area';
@@ -64,6 +65,7 @@ import type { ReportPort } from './reports/report-threads';
 import { SiteRepository } from './sites/site-repository';
 import { siteRoutes } from './sites/site-routes';
 import { SiteService } from './sites/site-service';
+import { SiteSettingsService } from './sites/site-settings-service';
 import { ENGINE_VERSION } from './solve/engine-version';
 import { LiveSolves } from './solve/live-solves';
 import { ResultService } from './solve/result-service';
@@ -175,6 +177,7 @@ export function buildApp(parts: AppParts): App {
     mails: new CommentMails(outbox),
     listener: streams,
   });
+  const readingArea = buildReadingArea({ db, networks, listener: streams, now });
   const readiness = new ReadinessCheck(db, new SolverProbe(() => solvesOnePipe(solver), now));
 
   const routes: readonly Route[] = [
@@ -182,7 +185,7 @@ export function buildApp(parts: AppParts): App {
     openApiRoute(() => routes),
     ...peopleArea.routes,
     ...mailRoutes(new MailService(mails, parts.receivedMails)),
-    ...siteRoutes(sites),
+    ...siteRoutes(sites, new SiteSettingsService(new SiteRepository(db), now)),
     ...auditRoutes(auditLog),
     ...libraryRoutes(library),
     ...networkRoutes(networks),
@@ -190,6 +193,7 @@ export function buildApp(parts: AppParts): App {
     ...solveRoutes(results),
     ...revisionArea.routes,
     ...commentRoutes(comments),
+    ...readingArea.routes,
     ...eventRoutes(events),
     ...reportArea.routes,
   ];

@@ -130,12 +130,19 @@ function nearlyFile(odd: string): Buffer {
   return file;
 }
 
+/** The key that goes with a body that has an id, so that the code behind the check meets it. */
+function keyOf(sent: unknown): string {
+  const id: unknown = typeof sent === 'object' && sent !== null && 'id' in sent ? sent.id : undefined;
+  return typeof id === 'string' && /^[\w-]+$/.test(id) ? id : 'none';
+}
+
 async function call(route: Route, who: Who | 'anonymous', sent: unknown, odd: string): Promise<Response> {
   const query = `?version=${encodeURIComponent(odd)}&since=${encodeURIComponent(odd)}&case=${encodeURIComponent(odd)}`;
   const path = pathOf(route, odd) + (odd.length % 2 === 0 ? query : '');
   const once = async (client: Client) => {
     const test = client.send(route.method, path);
     void test.set('If-Match', odd.length % 3 === 0 ? '"1"' : `"${String(odd.length)}"`);
+    void test.set('Idempotency-Key', keyOf(sent));
     if (route.body !== undefined) void test.set('Content-Type', 'application/json').send(JSON.stringify(sent));
     if (route.upload !== undefined) {
       const { types } = route.upload;

@@ -5,7 +5,7 @@ import { SavedBatch } from './networks';
  * GET /api/networks/:networkId/events is a stream of server-sent events. Only `edit` carries an id, its version: what a
  * browser sends as Last-Event-ID after a lost connection is the last version that it has.
  */
-export const NETWORK_EVENTS = ['edit', 'solve', 'people', 'plan', 'revisions', 'comments', 'reload'] as const;
+export const NETWORK_EVENTS = ['edit', 'solve', 'people', 'plan', 'revisions', 'comments', 'rounds', 'reload'] as const;
 
 /** `edit`: someone's batch was saved, also one's own. */
 export const EditEvent = SavedBatch;
@@ -41,6 +41,10 @@ export type RevisionsEvent = z.infer<typeof RevisionsEvent>;
 /** `comments`: a thread was begun, answered, resolved or opened again; `revisionId` is absent for one on the network as it stands. */
 export const CommentsEvent = z.object({ threadId: z.string(), revisionId: z.string().optional() });
 export type CommentsEvent = z.infer<typeof CommentsEvent>;
+
+/** `rounds`: one was begun, read in or closed; what it holds now, GET /api/networks/:networkId/rounds/:roundId says. */
+export const RoundsEvent = z.object({ roundId: z.string() });
+export type RoundsEvent = z.infer<typeof RoundsEvent>;
 
 /** `reload`: too far behind to be told edit by edit; the network is to be read again. */
 export const ReloadEvent = z.object({ currentVersion: z.number().int() });

@@ -3,6 +3,7 @@ import type {
   PeopleEvent,
   PlanEvent,
   RevisionsEvent,
+  RoundsEvent,
   SavedBatch,
   SolveEvent,
 } from '@riseback/contracts';
@@ -110,6 +111,11 @@ export class NetworkStreams {
   commentsChanged(networkId: string, changed: CommentsEvent): void {
     const room = this.rooms.get(networkId);
     if (room !== undefined) this.tell(room, { event: 'comments', data: changed });
+  }
+
+  roundsChanged(networkId: string, roundId: string): void {
+    const room = this.rooms.get(networkId);
+    if (room !== undefined) this.tell(room, { event: 'rounds', data: { roundId } satisfies RoundsEvent });
   }
 
   selected(access: NetworkAccess, ids: readonly string[]): void {

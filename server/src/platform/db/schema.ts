@@ -10,6 +10,7 @@ import type {
   RevisionState,
   Role,
   SignatureMeaning,
+  WhyNotRead,
 } from '@riseback/contracts';
 import type { NodeKind } from '@riseback/network';
 import { sql } from 'drizzle-orm';
@@ -73,6 +74,7 @@ const MAIL_STATES = allOf<MailState>()(['waiting', 'sent', 'givenUp']);
 const JOB_KINDS = ['report'] as const;
 const JOB_STATES = allOf<JobState>()(['waiting', 'running', 'finished', 'failed', 'cancelled']);
 const REPORT_FORMATS = allOf<ReportFormat>()(['pdf', 'xlsx', 'csv', 'json']);
+const WHY_NOT_READ = allOf<WhyNotRead>()(['noAccess', 'unsafe', 'notFound', 'shutOff', 'broken', 'other']);
 
 const oneOf = (name: string, column: string, values: readonly string[]) =>
   check(name, sql.raw(`${column} in (${values.map((value) => `'${value}'`).join(', ')})`));
@@ -725,4 +727,84 @@ export const reportFiles = sqliteTable(
     createdAt: text('created_at').notNull(),
   },
   () => [oneOf('report_files_format', 'format', REPORT_FORMATS)],
+);
+
+/** Readings of a network's gauges taken together in one case ('' is the plain network). Only its closing changes it, once, by trigger. */
+export const rounds = sqliteTable(
+  'rounds',
+  {
+    id: text('id').primaryKey(),
+    networkId: text('network_id')
+      .notNull()
+      .references(() => networks.id),
+    networkVersion: integer('network_version').notNull(),
+    caseId: text('case_id').notNull(),
+    title: text('title').notNull(),
+    personId: text('person_id')
+      .notNull()
+      .references(() => people.id),
+    startedAt: text('started_at').notNull(),
+    closedAt: text('closed_at'),
+  },
+  (table) => [
+    index('rounds_network').on(table.networkId, table.startedAt),
+    foreignKey({
+      name: 'rounds_version',
+      columns: [table.networkId, table.networkVersion],
+      foreignColumns: [edits.networkId, edits.version],
+    }),
+  ],
+);
+
+/** What a gauge showed, or why it could not be read. A correction is a row that names the one it replaces. Append-only by trigger. */
+export const readings = sqliteTable(
+  'readings',
+  {
+    id: text('id').primaryKey(),
+    roundId: text('round_id')
+      .notNull()
+      .references(() => rounds.id),
+    gaugeId: text('gauge_id').notNull(),
+    /** The gauge as it was when it was read. */
+    gauge: json('gauge').notNull(),
+    valuePa: real('value_pa'),
+    whyNot: text('why_not', { enum: WHY_NOT_READ }),
+    note: text('note').notNull(),
+    takenAt: text('taken_at').notNull(),
+    receivedAt: text('received_at').notNull(),
+    deviceId: text('device_id').notNull(),
+    deviceSeq: integer('device_seq').notNull(),
+    replaces: text('replaces'),
+    personId: text('person_id')
+      .notNull()
+      .references(() => people.id),
+  },
+  (table) => [
+    uniqueIndex('readings_device').on(table.deviceId, table.deviceSeq),
+    uniqueIndex('readings_replaces').on(table.replaces),
+    index('readings_round').on(table.roundId),
+    foreignKey({ name: 'readings_replaced', columns: [table.replaces], foreignColumns: [table.id] }),
+    check('readings_value', sql.raw('(value_pa is null) <> (why_not is null)')),
+    oneOf('readings_why_not', 'why_not', WHY_NOT_READ),
+    isJson('readings_gauge', 'gauge'),
+  ],
+);
+
+/** Photographs beside a reading, with their bytes. Append-only by trigger. */
+export const readingPhotos = sqliteTable(
+  'reading_photos',
+  {
+    id: text('id').primaryKey(),
+    readingId: text('reading_id')
+      .notNull()
+      .references(() => readings.id),
+    mediaType: text('media_type', { enum: IMAGE_TYPES }).notNull(),
+    sha256: text('sha256').notNull(),
+    content: blob('content', { mode: 'buffer' }).notNull(),
+    createdAt: text('created_at').notNull(),
+  },
+  (table) => [
+    index('reading_photos_reading').on(table.readingId),
+    oneOf('reading_photos_media_type', 'media_type', IMAGE_TYPES),
+  ],
 );
