@@ -8,6 +8,8 @@ import { root } from './install.mjs';
 
 /** A package's name in an import, in `@use`, or as the place of a file in angular.json. */
 const NAMED = /(?:\bfrom|\bimport|@use|@import|"node_modules\/)[\s(]*['"]?((?:@[\w.-]+\/)?[\w][\w.-]*)/g;
+/** Packages whose licence stands in their LICENSE file and not in their package.json. */
+const TOLD_BY_ITS_FILE = new Map([['png-js', { id: 'MIT' }]]);
 const NOT_SHIPPED = /\.spec\.ts$|\/test-setup\.ts$|\/(node_modules|testing)\//;
 
 const json = (path) => JSON.parse(readFileSync(join(root, path), 'utf8'));
@@ -22,7 +24,7 @@ const components = whole.components.filter(isShipped).map(described);
 const kept = new Set([`${name}@${version}`, ...components.map((component) => component['bom-ref'])]);
 const bill = {
   ...whole,
-  metadata: { ...whole.metadata, component: licensed({ ...whole.metadata.component, name }) },
+  metadata: { ...whole.metadata, component: licensed({ ...whole.metadata.component, name }, { name: license }) },
   components,
   dependencies: whole.dependencies
     .filter(({ ref }) => kept.has(ref))
@@ -89,13 +91,13 @@ function described(component) {
   const ref = component['bom-ref'];
   const parts = [...(inServer.has(ref) ? ['server'] : []), ...(inPages.has(ref) ? ['pages'] : [])];
   const properties = [...(component.properties ?? []), { name: 'riseback:shippedIn', value: parts.join(' ') }];
-  const ours = ref.startsWith(`@${name}/`);
-  return { ...(ours ? licensed(component) : component), properties };
+  // ours come under the licence of the whole
+  const told = ref.startsWith(`@${name}/`) ? { name: license } : TOLD_BY_ITS_FILE.get(nameOf(ref));
+  return { ...(told === undefined ? component : licensed(component, told)), properties };
 }
 
-/** Ours come under the licence of the whole. */
-function licensed(component) {
-  return { ...component, licenses: [{ license: { name: license } }] };
+function licensed(component, told) {
+  return { ...component, licenses: [{ license: told }] };
 }
 
 function nameOf(ref) {
