@@ -34,7 +34,7 @@ interface DemoEdit {
   readonly ops: readonly EditOp[];
 }
 
-/** The plant before its last three edits, and those edits: after them it is the plant of the file again, op for op. */
+/** The plant before its last four edits, and those edits: after them it is the plant of the file again, op for op. */
 export interface DemoHistory {
   readonly before: NetworkDocument;
   readonly edits: readonly DemoEdit[];
@@ -63,6 +63,19 @@ const UNDONE: readonly DemoEdit[] = [
         id: 'L33',
         key: 'size',
         from: { nps: '2', schedule: '80' },
+        to: { nps: '1-1/2', schedule: '80' },
+      },
+    ],
+  },
+  {
+    label: 'CR-125 along the rack in 2-1/2 in',
+    ops: [
+      {
+        op: 'set',
+        in: 'pipes',
+        id: 'L25',
+        key: 'size',
+        from: { nps: '2-1/2', schedule: '80' },
         to: { nps: '1-1/2', schedule: '80' },
       },
     ],
@@ -110,7 +123,7 @@ export interface DemoRevisionParts {
 }
 
 /**
- * The network with its history: one revision that the reviewer has approved and signed, and after three edits another that is under
+ * The network with its history: one revision that the reviewer has approved and signed, and after four edits another that is under
  * review. Part of the transaction that the caller holds.
  */
 export function seedRevisions(
@@ -143,10 +156,17 @@ export function seedRevisions(
   }
   storeSolve(parts, networkId, second);
   const later = freeze(parts, networkId, 1 + edits.length, second, {
-    title: 'Washer bay and hall door',
-    reason: 'The can washer drains more than was said, and the hall door gets a unit heater.',
+    title: 'Wider rack, washer bay and hall door',
+    reason:
+      'The rack was left at the size of the first four retorts; the can washer drains more than was said, and the hall door gets a unit heater.',
   });
-  recordMove(revisions, later, 'submit', 'CR-133 is a size larger for it.', by(designer));
+  recordMove(
+    revisions,
+    later,
+    'submit',
+    'CR-125 takes the hall down; CR-133 is a size larger for the washer.',
+    by(designer),
+  );
 }
 
 function freeze(

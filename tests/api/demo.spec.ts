@@ -45,7 +45,7 @@ describe('seeding the demo', () => {
     expect(count(db, 'nodes')).toBe(plant().nodes.length);
     const present = db.$client.prepare('select version, solver_hash from networks').get();
     const solve = 'select count(*) from solves join networks using (solver_hash) where state = ?';
-    expect(present).toMatchObject({ version: 4 });
+    expect(present).toMatchObject({ version: 5 });
     expect(db.$client.prepare(solve).pluck().get('finished')).toBe(1);
   });
 
