@@ -121,6 +121,7 @@ const arrows = {
   network: [],
   solver: ['network', 'hydraulics', 'steam', 'numerics'],
   contracts: ['network'],
+  diagnosis: ['solver', 'network', 'hydraulics', 'steam', 'numerics'],
   revisions: ['contracts', 'network'],
   figures: ['contracts', 'network', 'solver', 'units'],
   methods: ['contracts', 'network', 'hydraulics', 'steam'],
