@@ -1,5 +1,7 @@
-import type { Role } from '@riseback/contracts';
+import { type Role, type SiteSettings, TagPatterns } from '@riseback/contracts';
+import { Limits } from '@riseback/network';
 import { and, count, eq, isNull, sql } from 'drizzle-orm';
+import { appendAudit, type AuditEntry } from '../platform/db/audit';
 import type { Queries } from '../platform/db/database';
 import { onFirstUse } from '../platform/db/on-first-use';
 import { memberships, networks, sites } from '../platform/db/schema';
@@ -36,6 +38,30 @@ export class SiteRepository {
 
   siteOf(personId: string, siteId: string): SiteOfPerson | undefined {
     return this.sitesOf(personId).find((site) => site.id === siteId);
+  }
+
+  transaction<T>(change: (sites: SiteRepository) => T): T {
+    return this.db.transaction((tx) => change(new SiteRepository(tx)), { behavior: 'immediate' });
+  }
+
+  settingsOf(siteId: string): SiteSettings | undefined {
+    const row = this.db.select().from(sites).where(eq(sites.id, siteId)).get();
+    if (row === undefined) return undefined;
+    const { atmosphericPressurePa, ambientTemperatureK, limits, tagPattern } = row;
+    const tagPatterns = TagPatterns.parse(tagPattern === null ? {} : JSON.parse(tagPattern));
+    return { atmosphericPressurePa, ambientTemperatureK, limits: Limits.parse(limits), tagPatterns };
+  }
+
+  saveSettings(siteId: string, { tagPatterns, ...settings }: SiteSettings): void {
+    this.db
+      .update(sites)
+      .set({ ...settings, tagPattern: JSON.stringify(tagPatterns) })
+      .where(eq(sites.id, siteId))
+      .run();
+  }
+
+  audit(entry: AuditEntry): void {
+    appendAudit(this.db, entry);
   }
 
   isEmpty(): boolean {

@@ -45,6 +45,7 @@ const WORDS: Readonly<Record<string, string>> = {
   'session.end': 'ended a session',
   'session.refuse': 'was refused at sign-in',
   'site.create': 'made the site',
+  'site.settings': 'changed the settings of the site',
 };
 
 const REASONS: Readonly<Record<string, string>> = {
