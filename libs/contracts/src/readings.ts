@@ -8,9 +8,11 @@ export const WhyNotRead = z.enum(WHY_NOT_READ);
 export type WhyNotRead = z.infer<typeof WhyNotRead>;
 
 /** Photographs taken beside a reading, as the browser sends them once it has made them smaller. */
-export const PHOTO_LIMITS = { bytes: 2 * 1024 * 1024, ofAReading: 4 } as const;
+export const PHOTO_LIMITS = { bytes: 2 * 1024 * 1024, pixels: 24_000_000, sidePx: 10_000, ofAReading: 4 } as const;
 
 const Id = z.uuid();
+/** Path of PUT and GET …/readings/:readingId/photos/:photoId; the id is made on the device, and sent twice it is one photograph. */
+export const PhotoPath = z.object({ readingId: z.string().min(1).max(64), photoId: Id });
 
 /**
  * Body of POST /api/networks/:networkId/rounds. The id is made on the device, so that a round begun without a signal has one; sent twice,

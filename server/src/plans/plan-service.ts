@@ -1,18 +1,15 @@
 import {
-  IMAGE_TYPES,
-  IMAGE_WORDS,
-  type ImageFacts,
   type ImageType,
   type NetworkPlan,
   type Plan,
   PLAN_LIMITS,
   type PlanPlacement,
   type PlanUpload,
-  readImage,
   type StalePlan,
 } from '@riseback/contracts';
+import { acceptedImage } from '../files/accepted-image';
 import type { NetworkAccess } from '../platform/auth/access';
-import { notFound, payloadTooLarge, staleVersion, unprocessable, unsupportedMediaType } from '../platform/problem';
+import { notFound, staleVersion } from '../platform/problem';
 import type { PlanRepository } from './plan-repository';
 
 /** Whoever has the network open is told that its plan has changed. */
@@ -22,6 +19,7 @@ export interface PlanListener {
 
 const NEW_PLACEMENT = { x: 0, y: 0, unitsPerPixel: 1, opacity: 0.5 } as const;
 const UNNAMED = 'Plan';
+const WORDS = { what: 'A plan', advice: 'Send a PNG or a JPEG; of a PDF, a page drawn as one of these.' } as const;
 
 /** The plan under a network's drawing: one image, and where it lies. It is none of the network's edits and moves no element. */
 export class PlanService {
@@ -54,14 +52,11 @@ export class PlanService {
     onVersion: number,
     sent: { readonly bytes: Uint8Array; readonly declared: string } & PlanUpload,
   ): NetworkPlan {
-    const image = acceptedImage(sent.bytes, sent.declared);
-    // the bytes of the image alone: what someone hung behind its end is not kept
-    const content = Buffer.from(sent.bytes.subarray(0, image.endByte));
+    const { mediaType, widthPx, heightPx, content } = acceptedImage(sent, PLAN_LIMITS, WORDS);
     return this.change(access, onVersion, (plans, version, before) => {
       const id = this.newId();
       const name = sent.name ?? UNNAMED;
       const { siteId, networkId, person } = access;
-      const { mediaType, widthPx, heightPx } = image;
       const createdAt = this.now().toISOString();
       const purpose = 'plan' as const;
       const sha256 = plans.files.insert({
@@ -136,34 +131,8 @@ export class PlanService {
   }
 }
 
-function acceptedImage(bytes: Uint8Array, declared: string): ImageFacts {
-  if (bytes.length > PLAN_LIMITS.bytes)
-    throw payloadTooLarge(`A plan may hold ${megabytes(PLAN_LIMITS.bytes)} at most.`);
-  const reading = readImage(bytes);
-  if (!reading.ok) {
-    const advice = `${reading.reason} Send a PNG or a JPEG; of a PDF, a page drawn as one of these.`;
-    throw reading.wrong === 'kind' ? unsupportedMediaType(advice) : unprocessable(reading.reason);
-  }
-  const { image } = reading;
-  const said = IMAGE_TYPES.find((type) => type === declared);
-  if (said !== image.mediaType) {
-    throw unsupportedMediaType(`The header says ${declared}, but this is a ${IMAGE_WORDS[image.mediaType]}.`);
-  }
-  const { widthPx, heightPx } = image;
-  if (widthPx * heightPx > PLAN_LIMITS.pixels || Math.max(widthPx, heightPx) > PLAN_LIMITS.sidePx) {
-    throw unprocessable(
-      `The image has ${widthPx} by ${heightPx} pixels; ${PLAN_LIMITS.pixels / 1e6} million in all and ${PLAN_LIMITS.sidePx} a side are the most. Make it smaller.`,
-    );
-  }
-  return image;
-}
-
 function placementOf({ x, y, unitsPerPixel, metresPerUnit, opacity }: PlanPlacement): PlanPlacement {
   return { x, y, unitsPerPixel, opacity, ...(metresPerUnit === undefined ? {} : { metresPerUnit }) };
-}
-
-function megabytes(bytes: number): string {
-  return `${bytes / (1024 * 1024)} MB`;
 }
 
 function noPlan(): Error {

@@ -1,5 +1,7 @@
 import type { Database } from '../platform/db/database';
 import type { Route } from '../platform/routes/route-table';
+import { photoRoutes } from './photo-routes';
+import { PhotoService } from './photo-service';
 import { readingRoutes } from './reading-routes';
 import { ReadingService } from './reading-service';
 import { RoundDocuments, type RoundNetworks } from './round-documents';
@@ -16,5 +18,10 @@ export interface ReadingAreaParts {
 /** Builds all of readings by hand, as app.ts does for the rest. */
 export function buildReadingArea({ db, networks, listener, now }: ReadingAreaParts): { readonly routes: Route[] } {
   const parts = { rounds: new RoundRepository(db), documents: new RoundDocuments(networks), listener, now };
-  return { routes: readingRoutes(new RoundService(parts), new ReadingService(parts)) };
+  return {
+    routes: [
+      ...readingRoutes(new RoundService(parts), new ReadingService(parts)),
+      ...photoRoutes(new PhotoService(parts)),
+    ],
+  };
 }

@@ -2,6 +2,7 @@ import { and, asc, desc, eq, isNull, sql } from 'drizzle-orm';
 import { appendAudit, type AuditEntry } from '../platform/db/audit';
 import type { Queries } from '../platform/db/database';
 import { people, readings, rounds } from '../platform/db/schema';
+import { PhotoRepository } from './photo-repository';
 import { ReadingRepository } from './reading-repository';
 
 export type RoundRow = typeof rounds.$inferSelect;
@@ -16,9 +17,11 @@ export interface RoundCount {
 /** Rounds of readings, through the connection or one transaction on it. */
 export class RoundRepository {
   readonly readings: ReadingRepository;
+  readonly photos: PhotoRepository;
 
   constructor(private readonly db: Queries) {
     this.readings = new ReadingRepository(db);
+    this.photos = new PhotoRepository(db);
   }
 
   transaction<T>(change: (rounds: RoundRepository) => T): T {
