@@ -27,3 +27,11 @@ export {
   type Side,
 } from './prediction-uncertainty';
 export { legDensityKgM3, readingAtTap, readingExpected, waterLegPa } from './reading-at-tap';
+export {
+  gaugeFindings,
+  WORKING_PART,
+  type GaugeFinding,
+  type GaugeFindingCode,
+  type GaugePlace,
+} from './gauge-findings';
+export { leastMarginPa } from './margin-above';

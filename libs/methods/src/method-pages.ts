@@ -1,5 +1,6 @@
 import { checkName } from '@riseback/contracts';
 import type { MethodGroup, MethodSection } from './method-section';
+import { AGREEMENT_SECTIONS } from './sections/agreement-sections';
 import { PIPE_CHECK_SECTIONS, TRAP_CHECK_SECTIONS } from './sections/check-sections';
 import { FLOW_SECTIONS } from './sections/flow-sections';
 import { FLUID_SECTIONS } from './sections/fluid-sections';
@@ -49,6 +50,7 @@ export const METHOD_GROUPS: readonly MethodGroup[] = [
   { id: 'flow', title: 'Choking, patterns, bands, coincidence', sections: FLOW_SECTIONS },
   { id: 'checks-traps', title: 'Checks at traps', sections: named(TRAP_CHECK_SECTIONS) },
   { id: 'checks-pipes', title: 'Checks at pipes and vessels', sections: named(PIPE_CHECK_SECTIONS) },
+  { id: 'gauges', title: 'Gauges', sections: AGREEMENT_SECTIONS },
 ];
 
 export const METHOD_SECTIONS: readonly MethodSection[] = METHOD_GROUPS.flatMap(({ sections }) => sections);
