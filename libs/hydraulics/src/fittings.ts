@@ -17,7 +17,7 @@ export interface FittingData {
 }
 
 const PRINTED = 'Crane TP-410, appendix A, L/D; confirmed in a published table of K built on it';
-const RECALLED = 'Crane TP-410, appendix A, L/D; from memory';
+const RECALLED = 'Crane TP-410, appendix A, L/D; as commonly quoted, the print not seen';
 
 /**
  * Loss data of fittings and valves, fully open. Lengths are in bores of the pipe the fitting stands in.
@@ -57,7 +57,7 @@ export const FITTINGS = {
   entrance: {
     name: 'Entrance, sharp-edged',
     loss: { kind: 'fixed', lossCoefficient: 0.5 },
-    source: 'Crane TP-410, appendix A; from memory',
+    source: 'Crane TP-410, appendix A; as commonly quoted, the print not seen',
   },
   exit: {
     name: 'Exit',

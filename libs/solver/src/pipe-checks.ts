@@ -123,7 +123,7 @@ function uphillTwoPhase({ result, ends }: PipeUnderCheck): SolveWarning | undefi
   return { code: 'uphillTwoPhase', element: result.id, verdict: 'watch', value, ...findingWords(text, LET_FLASH_GO) };
 }
 
-const ANOTHER_METHOD = say`Look at the trap’s credible band, or compute the network by a full-bore method or byPattern.`;
+const ANOTHER_METHOD = say`Look at the trap’s credible band, or compute the network by a full-bore method or by flow pattern.`;
 
 /** Where the basis of dry, pitched returns is asked for more than it was made for. */
 function dryBasis({ result, ends, friction }: PipeUnderCheck): SolveWarning | undefined {

@@ -6,15 +6,13 @@ import type { SolveWarning } from './solve-result';
 export class MeetingStreams {
   private readonly hottestK: Float64Array;
   private readonly coldestK: Float64Array;
-  /** By node: the pipe that each comes by. */
+  /** By node: the pipe that the hottest comes by. */
   private readonly hottestPipe: Int32Array;
-  private readonly coldestPipe: Int32Array;
 
   constructor(nodeCount: number) {
     this.hottestK = new Float64Array(nodeCount).fill(-Infinity);
     this.coldestK = new Float64Array(nodeCount).fill(Infinity);
     this.hottestPipe = new Int32Array(nodeCount);
-    this.coldestPipe = new Int32Array(nodeCount);
   }
 
   add(node: number, pipe: number, temperatureK: number): void {
@@ -22,10 +20,7 @@ export class MeetingStreams {
       this.hottestK[node] = temperatureK;
       this.hottestPipe[node] = pipe;
     }
-    if (temperatureK < (this.coldestK[node] as number)) {
-      this.coldestK[node] = temperatureK;
-      this.coldestPipe[node] = pipe;
-    }
+    if (temperatureK < (this.coldestK[node] as number)) this.coldestK[node] = temperatureK;
   }
 
   /**
@@ -43,10 +38,9 @@ export class MeetingStreams {
     const limit = limits.thermalShock.limitK;
     // nothing that flows in leaves −∞ and ∞
     if (!(value > limit)) return undefined;
-    const idOf = (pipe: number | undefined): string => (pipes[pipe as number] as { readonly id: string }).id;
-    const text = say`Where this pipe ends its flow, at ${amount('temperature', hottestK)}, meets that of ${idOf(this.coldestPipe[node])}, ${amount('temperatureDifference', value)} colder: above ${amount('temperatureDifference', limit)} its steam collapses with hammer, and the metal is strained.`;
+    const text = say`Where this pipe ends, its flow of ${amount('temperature', hottestK)} meets another that is ${amount('temperatureDifference', value)} colder: above ${amount('temperatureDifference', limit)} its steam collapses with hammer, and the metal is strained.`;
     const remedy = say`Bring the hot stream in from above through a sparge or a flash vessel, or give it a return of its own.`;
-    const element = idOf(this.hottestPipe[node]);
+    const element = (pipes[this.hottestPipe[node] as number] as { readonly id: string }).id;
     return { code: 'thermalShock', element, verdict: 'watch', value, limit, ...findingWords(text, remedy) };
   }
 }

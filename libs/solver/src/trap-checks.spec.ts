@@ -135,7 +135,9 @@ describe('ratings', () => {
   });
 
   it('are not judged without the safety valve’s setting, or without the model’s figures', () => {
-    expect(verdict('orificeRating', at({ model: { maximumDifferentialPa: 1e6 } }))).toMatch(/maximumPressurePa/);
+    expect(verdict('orificeRating', at({ model: { maximumDifferentialPa: 1e6 } }))).toMatch(
+      /setting of the safety valve/,
+    );
     expect(verdict('bodyRating', at({ trap, model: {} }))).toMatch(/No body rating/);
   });
 

@@ -153,7 +153,7 @@ function orificeRating({ trap, model, atmosphericPressurePa }: TrapUnderCheck): 
   if (limit === undefined)
     return { code, reason: 'No maximum differential is known: the trap has no model, or its model gives none.' };
   if (trap.maximumPressurePa === undefined)
-    return { code, reason: 'The trap’s maximumPressurePa, the safety valve’s setting, is not given.' };
+    return { code, reason: 'The setting of the safety valve before the trap is not given.' };
   const value = trap.maximumPressurePa - atmosphericPressurePa;
   if (isAtLeast(limit, value)) {
     return passes(code, value, limit, SEAT_PASSES);
@@ -171,7 +171,7 @@ function bodyRating({ trap, model }: TrapUnderCheck): TrapCheck | UnmadeCheck {
   }
   const pressurePa = trap.maximumPressurePa;
   if (pressurePa === undefined)
-    return { code, reason: 'The trap’s maximumPressurePa, the safety valve’s setting, is not given.' };
+    return { code, reason: 'The setting of the safety valve before the trap is not given.' };
   if (bodyPressurePa !== undefined && !isAtLeast(bodyPressurePa, pressurePa)) {
     const text = say`Up to the safety valve’s setting ${amount('pressure', pressurePa)} can stand in the body, which is rated for ${amount('pressure', bodyPressurePa)}.`;
     return { code, verdict: 'fail', value: pressurePa, limit: bodyPressurePa, ...findingWords(text, RATED_BODY) };

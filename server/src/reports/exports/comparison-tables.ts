@@ -1,5 +1,5 @@
 import { ID_TITLE } from './node-columns';
-import { heading, type ReportColumn, type ReportTable, type TableCell, tableOf } from './report-table';
+import { exactText, heading, type ReportColumn, type ReportTable, type TableCell, tableOf } from './report-table';
 import { trapVerdict } from './result-tables';
 import { type SolvedCase, solvedCases } from './solved-cases';
 import { nameOfElement, type TableSource } from './table-source';
@@ -52,12 +52,11 @@ function changesIn(before: ReportTable['rows'], { name, columns, rows }: ReportT
 }
 
 function sameCell(a: TableCell, b: TableCell): boolean {
-  if (typeof a === 'object' && typeof b === 'object') return a.number === b.number;
-  return a === b;
+  return exactText(a) === exactText(b);
 }
 
 function textOf(cells: readonly TableCell[], between = '/'): string {
-  return cells.map((cell) => (typeof cell === 'object' ? String(cell.number) : (cell ?? ''))).join(between);
+  return cells.map(exactText).join(between);
 }
 
 interface ChangedTrap {

@@ -1,8 +1,7 @@
 import type { FlashVessel, Gauge, NetworkFile, NetworkNode, Override, PumpedInlet, Receiver } from '@riseback/network';
-import { displayUnit, formatForEditing } from '@riseback/units';
 import { idColumn, junctionColumns, pumpedInletColumns, trapColumns, vesselColumns } from './node-columns';
 import { pipeColumns } from './pipe-columns';
-import { type ReportColumn, type ReportTable, tableOf } from './report-table';
+import { asPrinted, exactly, type ReportColumn, type ReportTable, tableOf, type Tell } from './report-table';
 import { settingTables } from './setting-tables';
 import { nameOfElement, type TableSource } from './table-source';
 
@@ -47,8 +46,6 @@ function trapModelColumns({ file, units }: TableSource): ReportColumn<TrapModel>
     if (node.kind === 'trap' && node.trapModel !== undefined)
       uses.set(node.trapModel, (uses.get(node.trapModel) ?? 0) + 1);
   }
-  const exact = (si: number, kind: 'massFlow' | 'pressureDifference'): string =>
-    `${formatForEditing(si, kind, units)} ${displayUnit(kind, units.system)}`;
   return [
     { title: 'Name', value: ({ name }) => name },
     { title: 'Orifice', quantity: 'diameter', value: ({ orificeDiameterM }) => orificeDiameterM },
@@ -67,16 +64,21 @@ function trapModelColumns({ file, units }: TableSource): ReportColumn<TrapModel>
     {
       title: 'Capacity',
       value: ({ capacity }) =>
-        capacity
-          ?.map(
-            ({ differentialPa, flowKgS }) =>
-              `${exact(flowKgS, 'massFlow')} at ${exact(differentialPa, 'pressureDifference')}`,
-          )
-          .join('; '),
+        capacity === undefined
+          ? undefined
+          : { text: capacityWords(capacity, exactly(units)), printed: capacityWords(capacity, asPrinted(units)) },
     },
     { title: 'Traps of it', quantity: 'count', value: ({ id }) => uses.get(id) ?? 0 },
     idColumn(),
   ];
+}
+
+function capacityWords(points: NonNullable<TrapModel['capacity']>, tell: Tell): string {
+  return points
+    .map(
+      ({ differentialPa, flowKgS }) => `${tell(flowKgS, 'massFlow')} at ${tell(differentialPa, 'pressureDifference')}`,
+    )
+    .join('; ');
 }
 
 const CASE_COLUMNS: readonly ReportColumn<OperatingCase>[] = [

@@ -2,7 +2,7 @@ import { guarded } from '@riseback/contracts';
 import { strToU8, zipSync } from 'fflate';
 import type { ReportMaker } from '../report-content';
 import { reportStanding } from './report-standing';
-import { heading, type ReportTable, type TableCell } from './report-table';
+import { exactText, heading, isNumber, type ReportTable, type TableCell } from './report-table';
 import { reportTables } from './report-tables';
 
 /**
@@ -29,8 +29,8 @@ export function csvOf({ columns, rows }: ReportTable): string {
 
 function csvCell(cell: TableCell): string {
   if (cell === undefined) return '';
-  if (typeof cell !== 'string') return String(cell.number);
-  const text = guarded(cell);
+  if (isNumber(cell)) return String(cell.number);
+  const text = guarded(exactText(cell));
   return /[",\r\n]/.test(text) ? `"${text.replaceAll('"', '""')}"` : text;
 }
 

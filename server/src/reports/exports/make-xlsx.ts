@@ -2,7 +2,7 @@ import { guarded } from '@riseback/contracts';
 import writeWorkbook, { type Cell, type Sheet } from 'write-excel-file/node';
 import type { ReportMaker } from '../report-content';
 import { reportStanding } from './report-standing';
-import { heading, type ReportTable, type TableCell } from './report-table';
+import { exactText, heading, isNumber, type ReportTable, type TableCell } from './report-table';
 import { reportTables } from './report-tables';
 
 /** A workbook with a sheet for each table: the state in the first row, headings in the second, numbers as numbers. */
@@ -42,7 +42,7 @@ function sheetOf(table: ReportTable, title: string): Sheet<never> {
 
 function sheetCell(cell: TableCell): Cell {
   if (cell === undefined) return null;
-  if (typeof cell === 'string') return { value: safeText(cell), type: String };
+  if (!isNumber(cell)) return { value: safeText(exactText(cell)), type: String };
   return { value: cell.number, type: Number, format: NUMBER_FORMATS[cell.decimals] ?? 'General' };
 }
 
@@ -69,7 +69,7 @@ function widthOf(title: string, rows: ReportTable['rows'], column: number): numb
   let longest = title.length;
   for (const row of rows) {
     const cell = row[column];
-    if (typeof cell === 'string' && cell.length > longest) longest = cell.length;
+    if (!isNumber(cell)) longest = Math.max(longest, exactText(cell).length);
   }
   return Math.min(WIDTH.most, Math.max(WIDTH.least, longest + WIDTH.beside));
 }

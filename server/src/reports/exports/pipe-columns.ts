@@ -1,14 +1,11 @@
 import { FITTINGS, pipeBore } from '@riseback/hydraulics';
 import type { PipeRun } from '@riseback/network';
-import { displayUnit, formatForEditing } from '@riseback/units';
 import { idColumn, nameColumns, noteColumn } from './node-columns';
-import type { ReportColumn } from './report-table';
+import { asPrinted, exactly, type ReportColumn, type Tell } from './report-table';
 import { nameOfElement, type TableSource } from './table-source';
 
 export function pipeColumns(source: TableSource): ReportColumn<PipeRun>[] {
   const { nodes, units } = source;
-  const exactLength = (metres: number): string =>
-    `${formatForEditing(metres, 'length', units)} ${displayUnit('length', units.system)}`;
   return [
     ...nameColumns(),
     { title: 'From', value: ({ from }) => nameOfElement(source, from) },
@@ -33,7 +30,9 @@ export function pipeColumns(source: TableSource): ReportColumn<PipeRun>[] {
     {
       title: 'Route',
       value: ({ route }) =>
-        route?.map(({ lengthM, riseM }) => `${exactLength(lengthM)} up ${exactLength(riseM)}`).join('; '),
+        route === undefined
+          ? undefined
+          : { text: listedRoute(route, exactly(units)), printed: printedRoute(route, asPrinted(units)) },
     },
     { title: 'Roughness', quantity: 'roughness', value: ({ roughnessM }) => roughnessM },
     { title: 'Heat loss', quantity: 'heatLossPerLength', value: ({ heatLossWM }) => heatLossWM },
@@ -41,6 +40,23 @@ export function pipeColumns(source: TableSource): ReportColumn<PipeRun>[] {
     noteColumn(),
     idColumn(),
   ];
+}
+
+type Route = NonNullable<PipeRun['route']>;
+
+/** As the list takes it in again: "90 ft up 0 ft; 4 ft up -4 ft". */
+function listedRoute(route: Route, tell: Tell): string {
+  return route.map(({ lengthM, riseM }) => `${tell(lengthM, 'length')} up ${tell(riseM, 'length')}`).join('; ');
+}
+
+/** "90 ft level; 4 ft down 4 ft" */
+function printedRoute(route: Route, tell: Tell): string {
+  const steps = route.map(({ lengthM, riseM }) => {
+    const length = tell(lengthM, 'length');
+    if (riseM === 0) return `${length} level`;
+    return `${length} ${riseM > 0 ? 'up' : 'down'} ${tell(Math.abs(riseM), 'length')}`;
+  });
+  return steps.join('; ');
 }
 
 function boreM({ size, insideDiameterM }: PipeRun): number | undefined {

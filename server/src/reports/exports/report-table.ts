@@ -1,4 +1,11 @@
-import { displayUnit, type DisplayUnits, formatQuantity, type QuantityKind, toDisplay } from '@riseback/units';
+import {
+  displayUnit,
+  type DisplayUnits,
+  formatForEditing,
+  formatQuantity,
+  type QuantityKind,
+  toDisplay,
+} from '@riseback/units';
 
 /** A number in the reader's unit with all its digits, and how many decimals the screen prints of it. */
 export interface NumberCell {
@@ -7,7 +14,12 @@ export interface NumberCell {
   /** As the screen prints it, to the last digit. */
   readonly printed?: string;
 }
-export type TableCell = string | NumberCell | undefined;
+/** A text with numbers in it: in a spreadsheet with all their digits, on paper as the screen prints them. */
+export interface TextCell {
+  readonly text: string;
+  readonly printed: string;
+}
+export type TableCell = string | NumberCell | TextCell | undefined;
 
 export interface TableColumn {
   readonly title: string;
@@ -30,7 +42,7 @@ export interface ReportColumn<R> {
   /** The unit in the head where the cells are names that carry one, such as nominal sizes. */
   readonly unit?: string;
   /** SI where the column has a quantity. */
-  readonly value: (row: R) => number | string | undefined;
+  readonly value: (row: R) => number | string | TextCell | undefined;
 }
 
 /** One digit fewer than conversion costs, so that 12 ft stored in metres are 12 and not 11.999999999999998. */
@@ -62,6 +74,27 @@ export function quantityCell(si: number, quantity: QuantityKind, units: DisplayU
     decimals: decimalsOf(printed),
     printed,
   };
+}
+
+export function isNumber(cell: TableCell): cell is NumberCell {
+  return typeof cell === 'object' && 'number' in cell;
+}
+
+/** With all its digits; '' for nothing. */
+export function exactText(cell: TableCell): string {
+  if (cell === undefined || typeof cell === 'string') return cell ?? '';
+  return isNumber(cell) ? String(cell.number) : cell.text;
+}
+
+/** A quantity in words. */
+export type Tell = (si: number, quantity: QuantityKind) => string;
+
+export function exactly(units: DisplayUnits): Tell {
+  return (si, quantity) => `${formatForEditing(si, quantity, units)} ${displayUnit(quantity, units.system)}`;
+}
+
+export function asPrinted(units: DisplayUnits): Tell {
+  return (si, quantity) => formatQuantity(si, quantity, units, { withUnit: true });
 }
 
 export function plainNumber(number: number): NumberCell {

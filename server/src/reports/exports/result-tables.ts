@@ -70,7 +70,7 @@ const TRAP_COLUMNS: readonly ReportColumn<Solved<Trap>>[] = [
       solved.traps
         .get(element.id)
         ?.notChecked.map(({ code, reason }) => `${checkName(code)}: ${reason}`)
-        .join('; '),
+        .join(' '),
   },
   idColumn(),
 ];

@@ -40,15 +40,15 @@ export class LedgerTable {
       { title: 'Place', width: 0, numeric: false },
       { title: 'Bore', width: 34, numeric: true },
       { title: titles.length, width: 50, numeric: true },
-      { title: titles.rise, width: 62, numeric: true },
+      { title: titles.rise, width: 54, numeric: true },
       { title: titles.flow, width: 52, numeric: true },
       { title: 'Flash %', width: 40, numeric: true },
       { title: `Static ${titles.adds}`, width: 48, numeric: true },
       { title: `Friction ${titles.adds}`, width: 54, numeric: true },
       { title: `Flash ${titles.adds}`, width: 48, numeric: true },
-      { title: `Running ${titles.running}`, width: 64, numeric: true, strong: true },
-      { title: `Hand check ${titles.adds}`, width: 68, numeric: true },
-      { title: `running ${titles.running}`, width: 64, numeric: true },
+      { title: `Running ${titles.running}`, width: 56, numeric: true, strong: true },
+      { title: `Hand check ${titles.adds}`, width: 60, numeric: true },
+      { title: `running ${titles.running}`, width: 56, numeric: true },
     ];
     const rest = sheet.width - fixed.reduce((sum, { width }) => sum + width, 0);
     this.columns = fixed.map((column) => (column.width === 0 ? { ...column, width: rest } : column));
@@ -144,7 +144,7 @@ export class LedgerTable {
         const weight = total || strong ? 600 : 400;
         const ink = i === 0 ? ('ink3' as const) : ('ink' as const);
         const style: TextStyle = { ...CELL, weight, ink, tabular: numeric };
-        const text = sheet.fitted(texts[i] ?? '', width - 1.5 * PAD, style);
+        const text = sheet.fitted(texts[i] ?? '', width + this.beside(texts, i) - 1.5 * PAD, style);
         sheet.tagged('TD', () => {
           if (text !== '')
             sheet.print(text, numeric ? x + width - PAD : x + PAD, y + 8.8, style, numeric ? 'right' : 'left');
@@ -153,6 +153,14 @@ export class LedgerTable {
     );
     sheet.y += LINE;
     if (!total) sheet.rule(left, sheet.y, right);
+  }
+
+  /** The room of the empty cells after a word, which may run on over them. */
+  private beside(texts: Cells, column: number): number {
+    if (this.columns[column]?.numeric !== false) return 0;
+    let room = 0;
+    for (let i = column + 1; i < texts.length && texts[i] === ''; i += 1) room += this.columns[i]?.width ?? 0;
+    return room;
   }
 
   /** The copper margin after the numbers, and the double line before the hand check. */

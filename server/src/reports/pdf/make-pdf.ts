@@ -16,6 +16,7 @@ import { ledgerPages } from './ledger-pages';
 import { methodPages } from './method-pages';
 import { furnish } from './page-furniture';
 import { scopePages } from './scope-pages';
+import { sharedRows } from './shared-rows';
 import { Sheet } from './sheet';
 import { cellText } from './table-columns';
 import { tablePages } from './table-pages';
@@ -73,9 +74,9 @@ function resultPages(sheet: Sheet, tables: readonly ReportTable[]): void {
 
 function findingPages(sheet: Sheet, table: ReportTable): void {
   sheet.begin('Findings');
-  const note = 'What was found, why it matters and what would mend it; the same thing at the same element stands once.';
+  const note = 'What was found and what would mend it; the same thing stands once, with its elements and cases.';
   const kept = ['Verdict', 'Element', 'Check'];
-  tablePages(sheet, table, {
+  tablePages(sheet, sharedRows(table, 'Element', ['Id']), {
     title: 'Findings',
     note,
     kept,

@@ -56,7 +56,8 @@ function sectionPart(sheet: Sheet, section: MethodSection, group: string | undef
   for (const note of [...notes, ...(warning === undefined ? [] : [warning])]) sheet.paragraph(plain(note), SMALL, box);
   sheet.paragraph(`Holds: ${plain(range)}`, SMALL, box);
   if (limits.length > 0) sheet.paragraph(`Limits: ${limits.map(plain).join(' ')}`, SMALL, box);
-  sheet.paragraph(`Sources: ${sources.map(plain).join('; ')}.`, { ...SMALL, ink: 'ink3' }, { ...box, gap: 6 });
+  const from = sources.length === 0 ? 'beside each limit, in the list of limits' : sources.map(plain).join('; ');
+  sheet.paragraph(`Sources: ${from}.`, { ...SMALL, ink: 'ink3' }, { ...box, gap: 6 });
 }
 
 function formula(sheet: Sheet, equation: string): void {

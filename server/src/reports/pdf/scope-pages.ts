@@ -16,14 +16,14 @@ export function scopePages(sheet: Sheet, { file }: ReportContent): void {
   sheet.begin('Scope and cautions');
   const count = (kind: string) => file.nodes.filter((node) => node.kind === kind).length;
   const parts = [
-    `${String(count('trap'))} traps`,
-    `${String(file.pipes.length)} pipes`,
-    `${String(count('junction'))} junctions`,
-    `${String(count('receiver'))} receivers`,
-    `${String(count('flashVessel'))} flash vessels`,
-    `${String(count('pumpedInlet'))} pumped inlets`,
-    `${String(file.gauges.length)} gauges`,
-    `${String(file.cases.length)} operating cases`,
+    counted(count('trap'), 'trap'),
+    counted(file.pipes.length, 'pipe'),
+    counted(count('junction'), 'junction'),
+    counted(count('receiver'), 'receiver'),
+    counted(count('flashVessel'), 'flash vessel'),
+    counted(count('pumpedInlet'), 'pumped inlet'),
+    counted(file.gauges.length, 'gauge'),
+    counted(file.cases.length, 'operating case'),
   ];
   sheet.paragraph(
     `The report covers one network of ${parts.join(', ')}. Steady state, by the method and the limits in this report.`,
@@ -35,6 +35,10 @@ export function scopePages(sheet: Sheet, { file }: ReportContent): void {
     `Long notes are cut here and stand whole in the spreadsheet. A character that the report’s typeface does not have is printed as ${MISSING}.`,
     { size: 7.6, ink: 'ink3' },
   );
+}
+
+function counted(count: number, what: string): string {
+  return `${String(count)} ${what}${count === 1 ? '' : 's'}`;
 }
 
 function list(sheet: Sheet, title: string, sentences: readonly string[]): void {

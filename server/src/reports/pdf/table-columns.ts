@@ -1,4 +1,4 @@
-import type { ReportTable, TableCell, TableColumn } from '../exports/report-table';
+import { isNumber, type ReportTable, type TableCell, type TableColumn } from '../exports/report-table';
 
 /** A column as it will be set. */
 export interface SetColumn extends TableColumn {
@@ -31,7 +31,7 @@ export function columnsOf({ columns, rows }: ReportTable, kept: readonly string[
   columns.forEach((column, index) => {
     const cells = rows.map((row) => row[index]);
     const filled = cells.filter((cell) => cell !== undefined && cell !== '');
-    const numeric = filled.length > 0 && filled.every((cell) => typeof cell === 'object');
+    const numeric = filled.length > 0 && filled.every(isNumber);
     const texts = new Set(cells.map(cellText));
     const [only = ''] = texts;
     const shown = { ...column, index, numeric, marked: MARKED.has(column.title) };
@@ -48,7 +48,7 @@ export function columnsOf({ columns, rows }: ReportTable, kept: readonly string[
 export function cellText(cell: TableCell): string {
   if (cell === undefined) return '';
   if (typeof cell === 'string') return cell;
-  return cell.printed ?? printedNumber(cell.number, cell.decimals);
+  return isNumber(cell) ? (cell.printed ?? printedNumber(cell.number, cell.decimals)) : cell.printed;
 }
 
 function printedNumber(number: number, decimals: number): string {
