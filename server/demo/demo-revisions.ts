@@ -125,12 +125,13 @@ export interface DemoRevisionParts {
 /**
  * The network with its history: one revision that the reviewer has approved and signed, and after four edits another that is under
  * review. Part of the transaction that the caller holds.
+ * @returns the network's id
  */
 export function seedRevisions(
   parts: DemoRevisionParts,
   { before, edits, after }: DemoHistory,
   solved: readonly [Solved, Solved],
-): void {
+): string {
   const [first, second] = [
     { ...solved[0], document: before },
     { ...solved[1], document: after },
@@ -167,6 +168,7 @@ export function seedRevisions(
     'CR-125 takes the hall down; CR-133 is a size larger for the washer.',
     by(designer),
   );
+  return networkId;
 }
 
 function freeze(

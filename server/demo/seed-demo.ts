@@ -13,6 +13,7 @@ import { SiteRepository } from '../src/sites/site-repository';
 import type { SolvePort } from '../src/solve/solve-port';
 import { DEMO_PASSWORD, DEMO_PEOPLE } from './demo-people';
 import { seedLibrary } from './demo-library';
+import { DEMO_AGE_MS, seedReadings } from './demo-readings';
 import { demoHistory, seedRevisions, solveHistory, type DemoPersonHere } from './demo-revisions';
 import ternQuay from './tern-quay.json';
 
@@ -31,8 +32,8 @@ const NO_SOLVES = { changed: () => undefined, summary: () => ({ state: 'stale' a
 const NOBODY_TOLD = { edited: () => undefined };
 
 /**
- * Fills a new database with the demo: one site, one person for each role, a trap library, one network with its results, and two revisions
- * of it. All of it or nothing; a database that holds a site or a person already is left as it is.
+ * Fills a new database with the demo: one site, one person for each role, a trap library, one network with its results, two revisions of
+ * it, and a month of readings. All of it or nothing; a database that holds a site or a person already is left as it is.
  * @returns whether it was filled
  */
 export async function seedDemo({ db, solver, key, hashPassword, newId, now }: DemoParts): Promise<boolean> {
@@ -46,15 +47,21 @@ export async function seedDemo({ db, solver, key, hashPassword, newId, now }: De
     () => {
       // someone may have come in while the hash was made
       if (!isNew(db)) return false;
-      const siteId = seedSite(db, newId(), now());
-      const people = seedPeople(db, siteId, passwordHash, newId, now());
+      // everything is older than the readings that were taken in it
+      const then = () => new Date(now().getTime() - DEMO_AGE_MS);
+      const siteId = seedSite(db, newId(), then());
+      const people = seedPeople(db, siteId, passwordHash, newId, then());
       const designer = withRole(people, 'designer');
-      const library = new LibraryService(new LibraryRepository(db), newId, now);
+      const library = new LibraryService(new LibraryRepository(db), newId, then);
       const history = demoHistory(seedLibrary(library, siteId, designer, demoNetwork()));
-      const networks = new NetworkService(new NetworkRepository(db), NO_SOLVES, NOBODY_TOLD, newId, now);
+      const networks = new NetworkService(new NetworkRepository(db), NO_SOLVES, NOBODY_TOLD, newId, then);
       const reviewer = withRole(people, 'reviewer');
-      const parts = { db, networks, key, newId, now, siteId, designer, reviewer };
-      seedRevisions(parts, history, solved);
+      const parts = { db, networks, key, newId, now: then, siteId, designer, reviewer };
+      const networkId = seedRevisions(parts, history, solved);
+      const version = 1 + history.edits.length;
+      const present = { networkId, version, document: history.after, outcomes: solved[1].outcomes };
+      const commissioning = withRole(people, 'commissioning');
+      seedReadings({ db, newId, now, siteId, commissioning }, present);
       return true;
     },
     { behavior: 'immediate' },

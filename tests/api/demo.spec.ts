@@ -1,4 +1,5 @@
 import { randomUUID } from 'node:crypto';
+import { agreementOf } from '@riseback/diagnosis';
 import { solveNetwork, isRefusal } from '@riseback/solver';
 import { readNetworkFile, toFile, type NetworkFile, type Position } from '@riseback/network';
 import { describe, expect, it } from 'vitest';
@@ -6,7 +7,9 @@ import { DEMO_PEOPLE } from '../../server/demo/demo-people';
 import { seedDemo } from '../../server/demo/seed-demo';
 import ternQuay from '../../server/demo/tern-quay.json';
 import { NetworkRepository } from '../../server/src/networks/network-repository';
+import { firstBrokenAuditRow } from '../../server/src/platform/db/audit-check';
 import { openDatabase, type Database } from '../../server/src/platform/db/database';
+import { RoundRepository } from '../../server/src/readings/round-repository';
 import { SigningKey } from '../../server/src/revisions/signing-key';
 import { verifyRevision } from '../../server/src/revisions/verification';
 import { VerifyingKeys } from '../../server/src/revisions/verifying-keys';
@@ -75,6 +78,49 @@ describe('seeding the demo', () => {
     }
   });
 
+  it('has a month of weekly rounds, in the last of which a gauge moved far more than the plant as it is said to be run', async () => {
+    const db = openDatabase(':memory:');
+    const parts = partsWith(db);
+    await seedDemo(parts);
+    const networkId = String(db.$client.prepare('select id from networks').pluck().get());
+    const rounds = new RoundRepository(db);
+    const weeks = rounds.ofNetwork(networkId).reverse();
+    expect(weeks.map(({ networkVersion, caseId }) => [networkVersion, caseId])).toEqual(
+      Array.from({ length: 5 }, () => [5, 'design']),
+    );
+    const now = parts.now().toISOString();
+    const versionAt = String(db.$client.prepare('select at from edits where version = 5').pluck().get());
+    let last = versionAt;
+    for (const { id, startedAt, closedAt } of weeks) {
+      for (const time of [startedAt, ...rounds.readings.ofRound(id).map(({ takenAt }) => takenAt), closedAt ?? '']) {
+        expect(time > last || time === startedAt).toBe(true);
+        last = time;
+      }
+    }
+    expect(last < now && firstBrokenAuditRow(db) === undefined).toBe(true);
+
+    const file = plant();
+    const solved = solveNetwork(file, { caseId: 'design', partial: true, bands: true });
+    if (isRefusal(solved)) throw new Error(solved.problem.detail);
+    const results = { file, result: solved };
+    const [first, ...later] = weeks.map(({ id }) => ({
+      readings: rounds.readings.ofRound(id).map(({ valuePa, replaces, ...reading }) => ({
+        ...reading,
+        ...(valuePa === null ? {} : { valuePa }),
+        ...(replaces === null ? {} : { replaces }),
+      })),
+    }));
+    if (first === undefined) throw new Error('the demo has rounds');
+    const words = later.map((round) =>
+      [...agreementOf(round, results, { round: first, results }).values()].map((row) =>
+        row.status === 'judged' ? (row.sinceBaseline?.word ?? '') : row.status,
+      ),
+    );
+    const inOrder = Array.from({ length: 6 }, () => 'agrees');
+    expect(words).toEqual([inOrder, inOrder, inOrder, ['disagrees', 'notRead', ...inOrder.slice(2)]]);
+    for (const row of agreementOf(first, results).values()) expect(row).toMatchObject({ word: 'agrees' });
+  });
+
   it('happens once when two starts meet', async () => {
     const db = openDatabase(':memory:');
     const parts = partsWith(db);
@@ -86,13 +132,14 @@ describe('seeding the demo', () => {
   it('leaves nothing behind when it fails half-way', async () => {
     const db = openDatabase(':memory:');
     const parts = partsWith(db);
-    // the last that it makes is the second revision
+    // the last that it makes are the rounds
     const now = () => {
-      if (count(db, 'revisions') === 2) throw new Error('half-way');
+      if (count(db, 'rounds') === 4) throw new Error('half-way');
       return parts.now();
     };
     await expect(seedDemo({ ...parts, now })).rejects.toThrow('half-way');
-    for (const table of ['sites', 'people', 'memberships', 'networks', 'audit']) expect(count(db, table)).toBe(0);
+    for (const table of ['sites', 'people', 'memberships', 'networks', 'rounds', 'audit'])
+      expect(count(db, table)).toBe(0);
   });
 
   it('gives each role one person, and the stranger none', () => {

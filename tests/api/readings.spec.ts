@@ -71,7 +71,12 @@ describe('a round', () => {
     await bench.sendRound(bench.newRound({ networkVersion: 2 })).expect(404);
     const refused = await bench.sendRound(bench.newRound({ caseId: 'noon' })).expect(422);
     expect(refused.body).toMatchObject({ errors: [{ pointer: '/caseId' }] });
-    await bench.sendRound(bench.newRound({ caseId: '' })).expect(201);
+    // results are made of the cases where there are any
+    await bench.sendRound(bench.newRound({ caseId: '' })).expect(422);
+    const plain = await makeNetwork(bench.as('designer'), bench.server.siteId);
+    const path = `/api/networks/${plain}/rounds`;
+    await bench.staff.post(path, bench.newRound()).expect(422);
+    await bench.staff.post(path, bench.newRound({ caseId: '' })).expect(201);
   });
 });
 

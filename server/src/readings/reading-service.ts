@@ -5,6 +5,7 @@ import { conflict, unprocessable } from '../platform/problem';
 import { deviceTime } from './device-time';
 import type { ReadingRepository, ReadingRow } from './reading-repository';
 import type { RoundRow } from './round-repository';
+import { recordReading } from './round-records';
 import { entryOf, readingOf, roundOf, type RoundParts } from './round-service';
 
 /** A hundred gauges, read and corrected many times over. */
@@ -36,11 +37,8 @@ export class ReadingService {
       if (readings.countOf(roundId) >= MOST_READINGS) {
         throw unprocessable(`A round holds ${MOST_READINGS} readings at most. Begin another round.`);
       }
-      readings.insert(rowOf(input, { roundId, gauge, takenAt, receivedAt: now.toISOString() }, access));
-      const { id, gaugeId, valuePa, whyNot, replaces } = input;
-      const action = replaces === undefined ? 'reading.take' : 'reading.correct';
-      const details = { roundId, gaugeId, ...present({ valuePa, whyNot, replaces }), takenAt };
-      rounds.audit({ ...entryOf(access, now), action, subject: id, details });
+      const received = { roundId, gauge, takenAt, receivedAt: now.toISOString() };
+      recordReading(rounds, rowOf(input, received, access), entryOf(access, now));
       return true;
     });
     if (taken) this.parts.listener.roundsChanged(access.networkId, roundId);
@@ -117,10 +115,4 @@ function demandNumber(readings: ReadingRepository, { deviceId, deviceSeq }: NewR
 
 function takenId(): Error {
   return conflict('This id is taken by another reading: give every reading a new UUID, and a correction too.');
-}
-
-function present(keys: Readonly<Record<string, string | number | undefined>>): Record<string, string | number> {
-  return Object.fromEntries(
-    Object.entries(keys).flatMap(([key, value]) => (value === undefined ? [] : [[key, value] as const])),
-  );
 }

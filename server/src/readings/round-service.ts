@@ -4,6 +4,7 @@ import { badRequest, conflict, notFound, unprocessable } from '../platform/probl
 import { deviceTime } from './device-time';
 import type { NamedReading } from './reading-repository';
 import type { RoundDocuments } from './round-documents';
+import { recordClosing, recordRound } from './round-records';
 import type { NamedRound, RoundCount, RoundRepository, RoundRow } from './round-repository';
 
 /** Told of every change of a network's rounds, for those who have it open. */
@@ -58,12 +59,8 @@ export class RoundService {
       if (rounds.countOf(networkId) >= MOST_ROUNDS) {
         throw unprocessable(`A network holds ${MOST_ROUNDS} rounds at most.`);
       }
-      rounds.insert({
-        ...{ id, networkId, networkVersion, caseId, title, startedAt },
-        ...{ personId: person.id, closedAt: null },
-      });
-      const details = { networkVersion, caseId, startedAt };
-      rounds.audit({ ...entryOf(access, now), action: 'round.begin', subject: id, details });
+      const row = { id, networkId, networkVersion, caseId, title, startedAt, personId: person.id, closedAt: null };
+      recordRound(rounds, row, entryOf(access, now));
       return true;
     });
     if (begun) this.parts.listener.roundsChanged(networkId, input.id);
@@ -86,19 +83,21 @@ export class RoundService {
           { pointer: '/closedAt', detail: `not before ${round.startedAt}` },
         ]);
       }
-      rounds.close(id, closedAt);
-      rounds.audit({ ...entryOf(access, now), action: 'round.close', subject: id, details: { closedAt } });
+      recordClosing(rounds, id, closedAt, entryOf(access, now));
       return true;
     });
     if (closed) this.parts.listener.roundsChanged(networkId, id);
     return this.get(access, id);
   }
 
+  /** Results are made of the cases where there are any, of the plain network where there are none. */
   private demandCase(access: NetworkAccess, version: number, caseId: string): void {
-    const document = this.parts.documents.at(access, version);
-    if (caseId === '' || document === undefined || document.cases.has(caseId)) return;
-    const detail = 'one of the cases of the version, or "" for the plain network';
-    throw unprocessable(`Version ${version} of the network has no case ${caseId}.`, [{ pointer: '/caseId', detail }]);
+    const cases = this.parts.documents.at(access, version)?.cases;
+    if (cases === undefined || cases.has(caseId) || (caseId === '' && cases.size === 0)) return;
+    const detail = cases.size === 0 ? '"": the network has no cases' : 'the id of one of the cases of the version';
+    throw unprocessable(`Version ${version} of the network has no results for the case "${caseId}".`, [
+      { pointer: '/caseId', detail },
+    ]);
   }
 }
 
