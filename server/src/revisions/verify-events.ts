@@ -1,5 +1,5 @@
 import type { VerificationStep } from '@riseback/contracts';
-import { eventText, firstImpossibleState, type EventRecord } from '@riseback/revisions';
+import { eventText, firstImpossibleState, type EventRecord, STATE_WORDS } from '@riseback/revisions';
 import { sha256 } from './hashes';
 import type { RevisionRow, SignatureRow } from './revision-repository';
 import { readStatement } from './statement-reading';
@@ -22,7 +22,7 @@ export function verifyEvents(parts: EventParts): VerificationStep {
   const last = parts.events.at(-1);
   return matches(
     NAME,
-    `${parts.events.length} steps, each as the log holds it; the last made it ${last?.state ?? ''} on ${last?.at ?? ''}.`,
+    `${parts.events.length} steps, each as the log holds it. After the last, of ${last?.at ?? ''}, it is ${last === undefined ? '' : STATE_WORDS[last.state]}.`,
   );
 }
 

@@ -45,11 +45,16 @@ function changesIn(before: ReportTable['rows'], { name, columns, rows }: ReportT
       const was = old.get(idOf(row));
       if (was === undefined) return [[name, labelOf(row), 'Added', undefined, undefined, undefined]];
       return columns.flatMap((column, i) =>
-        sameCell(was[i], row[i]) ? [] : [[name, labelOf(row), 'Changed', heading(column), was[i], row[i]]],
+        COUNTED.has(column.title) || sameCell(was[i], row[i])
+          ? []
+          : [[name, labelOf(row), 'Changed', heading(column), was[i], row[i]]],
       );
     }),
   ];
 }
+
+/** What follows from other rows that changed, and is told there. */
+const COUNTED = new Set(['Rise', 'Traps of it', 'Elements set']);
 
 function sameCell(a: TableCell, b: TableCell): boolean {
   return exactText(a) === exactText(b);

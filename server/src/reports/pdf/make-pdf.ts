@@ -80,6 +80,7 @@ function findingPages(sheet: Sheet, table: ReportTable): void {
     title: 'Findings',
     note,
     kept,
+    narrow: ['Element', 'Check', 'Cases'],
     none: 'Nothing was found that fails or is to be watched.',
   });
 }

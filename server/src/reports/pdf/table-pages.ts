@@ -11,6 +11,8 @@ export interface TableOptions {
   readonly note?: string;
   /** Columns that stay though they are empty or alike. */
   readonly kept?: readonly string[];
+  /** Columns that wrap before others do, so that sentences have the room. */
+  readonly narrow?: readonly string[];
   /** What is said instead where there are no rows. */
   readonly none?: string;
 }
@@ -36,10 +38,16 @@ const HAIR = 0.3;
 const MOST_LINES = 14;
 /** Under a head stand so many rows at least. */
 const KEPT_ROWS = 3;
+/** Of a column that wraps before others do, pt. */
+const NARROW = 92;
 const NOTHING = '–';
 
 /** A table over as many pages as it takes; each begins with its head. */
-export function tablePages(sheet: Sheet, table: ReportTable, { title, note, kept = [], none }: TableOptions): void {
+export function tablePages(
+  sheet: Sheet,
+  table: ReportTable,
+  { title, note, kept = [], narrow = [], none }: TableOptions,
+): void {
   if (table.rows.length === 0) {
     if (none === undefined) return;
     sheet.heading(title, 20);
@@ -53,7 +61,7 @@ export function tablePages(sheet: Sheet, table: ReportTable, { title, note, kept
     const same = alike.map(([name, text]) => `${name}: ${text}`).join('; ');
     sheet.paragraph(`In every row: ${same}.`, { size: CELL.size, ink: 'ink2' }, { gap: 3 });
   }
-  new TablePages(sheet, columns, table.rows).print();
+  new TablePages(sheet, columns, table.rows, narrow).print();
 }
 
 /** A table in running text, as wide as the column that it stands in. */
@@ -71,6 +79,7 @@ class TablePages {
     private readonly sheet: Sheet,
     private readonly columns: readonly SetColumn[],
     private readonly rows: ReportTable['rows'],
+    private readonly narrow: readonly string[] = [],
   ) {
     this.widths = columnWidths(
       columns.map((column) => this.wanted(column)),
@@ -170,7 +179,8 @@ class TablePages {
     const mark = column.marked ? MARK : 0;
     const widest = (parts: readonly string[]) =>
       parts.reduce((most, part) => Math.max(most, sheet.measure(part, style)), 0);
-    const natural = mark + Math.max(...words, widest(texts));
+    const most = this.narrow.includes(column.title) ? NARROW : Infinity;
+    const natural = mark + Math.max(...words, Math.min(most, widest(texts)));
     const least = column.numeric
       ? natural
       : mark + Math.max(...words, Math.min(70, widest(texts.flatMap((text) => text.split(/\s+/)))));
