@@ -81,7 +81,7 @@ describe('a photograph beside a reading', () => {
     ['more pixels than a screen can hold', pngClaiming(PHOTO_LIMITS.sidePx, PHOTO_LIMITS.sidePx), 'image/png', 422],
     ['a line too long', pngClaiming(PHOTO_LIMITS.sidePx + 1, 1), 'image/png', 422],
     ['too many bytes', Buffer.concat([pngOf(2, 2), Buffer.alloc(PHOTO_LIMITS.bytes)]), 'image/png', 413],
-  ])('is no %s', async (_what, content, type, status) => {
+  ])('that is %s is refused', async (_what, content, type, status) => {
     const refused = await put(content, { type }).expect(status);
     expect((refused.body as Problem).detail).not.toBe('');
     expect(count()).toBe(0);

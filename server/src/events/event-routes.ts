@@ -16,7 +16,7 @@ export function eventRoutes(service: EventService): Route[] {
       method: 'get',
       path: '/api/networks/:networkId/events',
       summary:
-        'Server-sent events: edit (its id is the version), solve, people, reload; Last-Event-ID or since resumes',
+        'Server-sent events: edit (its id is the version), solve, people, plan, revisions, comments, rounds, reload; Last-Event-ID or since resumes',
       permission: 'view',
       query: SinceQuery,
       answers: { 200: 'a stream of server-sent events (text/event-stream)' },
