@@ -40,6 +40,7 @@ export class Company {
   private readonly plan = signal(0);
   private readonly revisions = signal(0);
   private readonly comments = signal(0);
+  private readonly rounds = signal(0);
   private networkId = '';
   private stream: Subscription | undefined;
   private lookedAt: readonly string[] = [];
@@ -52,9 +53,10 @@ export class Company {
   readonly solveTold = this.solve.asReadonly();
   /** Counted up when the plan under the drawing may have changed: it was told so, or a stream was opened anew. */
   readonly planTold = this.plan.asReadonly();
-  /** Likewise for its revisions and for its comments. */
+  /** Likewise for its revisions, its comments and its rounds of readings. */
   readonly revisionsTold = this.revisions.asReadonly();
   readonly commentsTold = this.comments.asReadonly();
+  readonly roundsTold = this.rounds.asReadonly();
   readonly others = computed((): Companion[] => {
     const own = this.session.person()?.id;
     const document = this.queue.present();
@@ -106,7 +108,7 @@ export class Company {
       switch (event.kind) {
         case 'open':
           this.tellSoon();
-          for (const told of [this.plan, this.revisions, this.comments]) told.update((count) => count + 1);
+          for (const told of [this.plan, this.revisions, this.comments, this.rounds]) told.update((count) => count + 1);
           // the server is there again, which no event of the browser's says where only the server was away
           if (this.queue.problem() !== null) this.queue.retry();
           break;
@@ -125,6 +127,7 @@ export class Company {
         case 'plan':
         case 'revisions':
         case 'comments':
+        case 'rounds':
           this[event.kind].update((count) => count + 1);
           break;
         case 'reload':

@@ -10,6 +10,7 @@ export type NetworkEvent =
   | { readonly kind: 'plan' }
   | { readonly kind: 'revisions' }
   | { readonly kind: 'comments' }
+  | { readonly kind: 'rounds' }
   | { readonly kind: 'reload' };
 
 /** A browser gives up on a stream that was refused; it may be let in again later. */
@@ -44,6 +45,7 @@ export function networkEvents(networkId: string, since: () => number): Observabl
       on('plan', () => ({ kind: 'plan' }));
       on('revisions', () => ({ kind: 'revisions' }));
       on('comments', () => ({ kind: 'comments' }));
+      on('rounds', () => ({ kind: 'rounds' }));
       on('reload', () => ({ kind: 'reload' }));
       source.addEventListener('open', () => subscriber.next({ kind: 'open' }));
       source.addEventListener('error', () => {
