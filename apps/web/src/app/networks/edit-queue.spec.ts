@@ -79,6 +79,20 @@ describe('EditQueue', () => {
     expect(queue.solverHash()).toBe('hash 8');
   });
 
+  it('keeps the very document on the screen when the last edit is saved, and says so at once', async () => {
+    const told: (string | undefined)[] = [];
+    queue.saved.subscribe(() => told.push(queue.solverHash()));
+    queue.add('elevation of J1', [elevation('J1', 3)]);
+    const drawn = present();
+    server.expectOne(EDITS).flush({ version: 8, solverHash: 'hash 8' });
+    await settle();
+    expect(present()).toBe(drawn);
+    expect(told).toEqual(['hash 8']);
+    // what comes next is made on it
+    queue.add('elevation of J2', [elevation('J2', 5)]);
+    expect([elevationOf('J1'), elevationOf('J2')]).toEqual([3, 5]);
+  });
+
   it('keeps one batch in flight and sends the next on the new version', async () => {
     queue.add('first', [elevation('J1', 3)]);
     queue.add('second', [elevation('J2', 4)]);

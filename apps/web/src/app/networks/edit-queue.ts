@@ -2,7 +2,7 @@ import { HttpErrorResponse } from '@angular/common/http';
 import { computed, inject, Injectable, signal } from '@angular/core';
 import { type EditAccepted, type Network, type Problem, type SavedBatch, StaleVersion } from '@riseback/contracts';
 import { applyBatch, type EditBatch, type EditOp, jsonEqual, type NetworkDocument } from '@riseback/network';
-import { firstValueFrom } from 'rxjs';
+import { firstValueFrom, Subject } from 'rxjs';
 import { SessionStore } from '../session/session-store';
 import { toProblem } from '../shared/problem';
 import { type Conflict, conflictKey, replayOver } from './conflicts';
@@ -40,6 +40,7 @@ export class EditQueue {
   private readonly failure = signal<Problem | null>(null);
   private readonly refusals = signal<readonly RefusedEdit[]>([]);
   private readonly lastHeard = signal<readonly SavedBatch[]>([]);
+  private readonly acknowledgements = new Subject<void>();
   private touches = new Map<string, Touch>();
   private sending = false;
 
@@ -49,6 +50,8 @@ export class EditQueue {
   readonly pendingCount = computed(() => this.state()?.pending.length ?? 0);
   readonly problem = this.failure.asReadonly();
   readonly refused = this.refusals.asReadonly();
+  /** At each word of the server that an edit is saved, without waiting for what hangs on the signals to be rendered. */
+  readonly saved = this.acknowledgements.asObservable();
   /** What others saved, as it last arrived. */
   readonly heard = this.lastHeard.asReadonly();
   /** Conflicts that still differ from what stands in the document. */
@@ -184,7 +187,10 @@ export class EditQueue {
     if (state === null || !this.isPending(sent, batch)) return;
     // saved from another window a while ago, as a draft that both brought in: others' edits lie between
     if (accepted.version !== state.version + 1) await this.readOn();
-    else this.state.set(acknowledged(state, batch, accepted));
+    else {
+      this.state.set(acknowledged(state, batch, accepted));
+      this.acknowledgements.next();
+    }
   }
 
   /** @returns whether the next try has another version to be made on; a database that was put back has none */

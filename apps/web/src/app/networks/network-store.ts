@@ -14,7 +14,20 @@ import type {
 } from '@riseback/contracts';
 import { type EditOp, findings, inOrder, type NetworkDocument, type OperatingCase } from '@riseback/network';
 import type { DisplayUnits } from '@riseback/units';
-import { catchError, EMPTY, expand, filter, map, type Observable, of, scan, switchMap, timer } from 'rxjs';
+import {
+  catchError,
+  distinctUntilChanged,
+  EMPTY,
+  expand,
+  filter,
+  map,
+  merge,
+  type Observable,
+  of,
+  scan,
+  switchMap,
+  timer,
+} from 'rxjs';
 import { withBandsBefore } from '../results/bands-before';
 import { withUnchangedKept } from '../results/kept-results';
 import { WORST_OF_ALL, worstOfCases } from '@riseback/figures';
@@ -101,7 +114,9 @@ export class NetworkStore {
     again: this.askedAgain(),
   }));
   private readonly answers = toSignal(
-    toObservable(this.savedInput).pipe(
+    // results are asked for at the word that an edit is saved: the signal alone would be heard only when that word is rendered
+    merge(toObservable(this.savedInput), this.queue.saved.pipe(map(() => this.savedInput()))).pipe(
+      distinctUntilChanged(),
       filter(({ networkId }) => networkId !== ''),
       switchMap(({ networkId }) => this.resultsWhenReady(networkId).pipe(map((latest) => ({ networkId, latest })))),
       scan((all: Answers, { networkId, latest }): Answers => {

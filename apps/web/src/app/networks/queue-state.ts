@@ -35,16 +35,18 @@ export function openedState(network: Network): QueueState {
   return { networkId, base, version, solverHash, pending: [], present: base, conflicts: [] };
 }
 
-/** The server has taken the next batch. */
+/**
+ * The server has taken the next batch. With nothing more pending what is saved is what was on the screen already: the very object, so that
+ * nothing is drawn anew.
+ */
 export function acknowledged(
   state: QueueState,
   batch: EditBatch,
   accepted: { readonly version: number; readonly solverHash: string },
 ): QueueState {
-  const base = mustApply(state.base, batch.ops);
   const pending = state.pending.filter(({ batchId }) => batchId !== batch.batchId);
-  const present = pending.length === 0 ? base : state.present;
-  return { ...state, ...accepted, base, pending, present };
+  const base = pending.length === 0 ? state.present : mustApply(state.base, batch.ops);
+  return { ...state, ...accepted, base, pending };
 }
 
 /** The server has refused a batch: it goes, and with it those after it that stood on it. */
