@@ -165,6 +165,24 @@ describe('what becomes of a revision', () => {
     ]);
   });
 
+  it('tells in the mail what came out, in SI for whoever reads it in their units', async () => {
+    const { id } = await bench.submitted();
+    const frozen = await bench.reviewer.get(bench.path(`/${id}/results`)).expect(200);
+    const { cases } = frozen.body as Extract<NetworkResults, { state: 'finished' }>;
+    const highest = Math.max(
+      ...cases
+        .flatMap((outcome) => (outcome.status === 'refused' ? [] : outcome.result.traps))
+        .map((trap) => trap.backPressurePa),
+    );
+    const data: unknown = JSON.parse(String(sqlite().prepare('select data from mails').pluck().get()));
+    expect(data).toMatchObject({
+      verdicts: { traps: 1 },
+      figures: [
+        { kind: 'pressure', value: highest, label: expect.stringContaining('Highest back pressure') as string },
+      ],
+    });
+  });
+
   it('goes on while the network does', async () => {
     const revision = await bench.submitted();
     await bench.edit(1, 0, 2);

@@ -3,6 +3,7 @@ import { roleMay } from '@riseback/contracts';
 import type { MailQueue } from '../mail/mail-queue';
 import type { Queries } from '../platform/db/database';
 import type { RevisionWithHistory } from './revision-history';
+import { revisionMailFacts } from './revision-mail-facts';
 import type { RevisionRepository } from './revision-repository';
 
 /** Who causes a mail, and where. */
@@ -47,6 +48,8 @@ export class RevisionMails {
     },
   ): void {
     const here = new Set(revisions.peopleOfSite(siteId).map(({ id }) => id));
+    const recipients = [...new Set(mail.recipients)].filter((id) => id !== person.id && here.has(id));
+    if (recipients.length === 0) return;
     const { id: revisionId, letter, title } = mail.revision.row;
     const data = {
       siteId,
@@ -57,9 +60,9 @@ export class RevisionMails {
       letter,
       title,
       ...(mail.note === '' ? {} : { note: mail.note }),
+      ...revisionMailFacts(revisions, revisionId),
     };
-    for (const recipientId of new Set(mail.recipients)) {
-      if (recipientId === person.id || !here.has(recipientId)) continue;
+    for (const recipientId of recipients) {
       this.queue.enqueue(tx, { purpose: mail.purpose, siteId, recipientId, data });
     }
   }
