@@ -27,7 +27,7 @@ interface WorstTrap {
 const ROW = 16;
 /** What stands under them, and their head. */
 const CAUTIONS_ROOM = 66;
-const LEAST_ROWS = 4;
+const LEAST_ROWS = 3;
 const CELL: TextStyle = { size: 8.4 };
 /** The staff's own height and the share it is drawn at. */
 const STAFF = { width: 250, scale: 0.82 } as const;
