@@ -1,8 +1,9 @@
 import { randomUUID } from 'node:crypto';
 import type { Problem, Reading } from '@riseback/contracts';
 import { afterEach, beforeEach, describe, expect, it } from 'vitest';
+import { KEPT_SOLVES } from '../../server/src/solve/solve-repository';
 import { EventReader, listening } from './event-reader';
-import { batchOf, makeNetwork, sendBatch } from './network-samples';
+import { batchOf, makeNetwork, raise, sendBatch } from './network-samples';
 import { ReadingBench } from './reading-samples';
 import type { Who } from './test-server';
 
@@ -278,14 +279,20 @@ describe('a correction', () => {
     await bench.send(id, correction).expect(201);
   });
 
-  it('is all that a closed round takes, also of a gauge that was retired since', async () => {
+  it('is all that a closed round takes, also of a gauge that is gone since, with the gauge as it was', async () => {
     const { id } = await bench.round();
     const first = await bench.take(id);
+    const added = { id: 'G4', node: 'R1', elevationM: 2, waterLeg: false, retired: false };
+    const add = batchOf([{ op: 'add', in: 'gauges', ordinal: 3, value: added }]);
+    await sendBatch(bench.staff, bench.networkId, 1, add).expect(200);
+    const ofAdded = await bench.take(id, { gaugeId: 'G4' });
     await bench.close(id).expect(200);
     const refused = await bench.send(id, bench.newReading()).expect(409);
     expect((refused.body as Problem).detail).toMatch(/closed.*another round/);
-    await editGauges(1, 'retired', false, true);
-    expect(await bench.take(id, { replaces: first.id })).toMatchObject({ replaces: first.id, gauge: first.gauge });
+    const remove = batchOf([{ op: 'remove', in: 'gauges', id: 'G4' }]);
+    await sendBatch(bench.staff, bench.networkId, 2, remove).expect(200);
+    const corrected = await bench.take(id, { replaces: ofAdded.id, gaugeId: 'G4' });
+    expect(corrected).toMatchObject({ replaces: ofAdded.id, gauge: added });
     // the answer to what was taken before got lost
     await bench.send(id, { ...bench.newReading(), ...pick(first) }).expect(201);
   });
@@ -331,6 +338,22 @@ describe('readings', () => {
     const body = bench.newReading();
     const path = `/api/networks/${other}/rounds/${id}/readings`;
     await bench.staff.post(path, body).set('Idempotency-Key', body.id).expect(404);
+  });
+
+  it('have what they were read against for good: its results outlive those of versions in between', async () => {
+    await bench.round();
+    const designer = bench.as('designer');
+    const results = (version: number) => designer.get(bench.path(`/results?version=${version}`)).expect(200);
+    for (let version = 1; version <= KEPT_SOLVES + 4; version += 1) {
+      bench.server.pass(1_000);
+      await results(version);
+      await sendBatch(designer, bench.networkId, version, batchOf([raise(version, version - 1)])).expect(200);
+    }
+    await results(KEPT_SOLVES + 5);
+    const stored = sqlite().prepare(
+      'select version from edits join solves using (network_id, solver_hash) order by version',
+    );
+    expect(stored.pluck().all()).toEqual([1, ...Array.from({ length: KEPT_SOLVES }, (_none, i) => i + 6)]);
   });
 
   it('and rounds are never changed or deleted, even by who reaches the database', async () => {

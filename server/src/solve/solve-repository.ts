@@ -3,7 +3,7 @@ import { and, asc, desc, eq, inArray, sql } from 'drizzle-orm';
 import * as z from 'zod';
 import type { Queries } from '../platform/db/database';
 import { onFirstUse } from '../platform/db/on-first-use';
-import { solveResults, solves } from '../platform/db/schema';
+import { edits, rounds, solveResults, solves } from '../platform/db/schema';
 
 /** How many traps of a case fail or need watching, by the worst check of each; absent counts mean a refused or unsolved case. */
 export const CaseVerdicts = z.object({
@@ -76,7 +76,7 @@ export class SolveRepository {
           .values({ solveId: solve.id, caseId: outcome.caseId, ordinal, converged, result: outcome })
           .run();
       }
-      solves.prune(solve.networkId);
+      solves.prune(solve);
     });
   }
 
@@ -84,7 +84,7 @@ export class SolveRepository {
     this.db.transaction((tx) => {
       const solves = new SolveRepository(tx);
       solves.replace({ ...solve, state: 'failed', problem, summary: null });
-      solves.prune(solve.networkId);
+      solves.prune(solve);
     });
   }
 
@@ -110,14 +110,22 @@ export class SolveRepository {
     this.db.insert(solves).values(row).run();
   }
 
-  private prune(networkId: string): void {
+  /** What a round of readings was read against stays, by the engine that is in use. */
+  private prune({ networkId, engineVersion }: Pick<SolveInput, 'networkId' | 'engineVersion'>): void {
+    const read = this.db
+      .select({ hash: edits.solverHash })
+      .from(rounds)
+      .innerJoin(edits, and(eq(edits.networkId, rounds.networkId), eq(edits.version, rounds.networkVersion)))
+      .where(eq(rounds.networkId, networkId));
+    const isRead = and(eq(solves.engineVersion, engineVersion), inArray(solves.solverHash, read));
     const old = this.db
-      .select({ id: solves.id })
+      .select({ id: solves.id, isRead: sql<number>`${isRead}` })
       .from(solves)
       .where(eq(solves.networkId, networkId))
       .orderBy(desc(solves.finishedAt), desc(solves.id))
       .all()
-      .slice(KEPT_SOLVES);
+      .slice(KEPT_SOLVES)
+      .filter((solve) => solve.isRead === 0);
     if (old.length > 0) this.delete(old.map(({ id }) => id));
   }
 
