@@ -17,7 +17,7 @@ export type Site = z.infer<typeof Site>;
 export const TAGGED_KINDS = ['trap', 'junction', 'receiver', 'flashVessel', 'pumpedInlet', 'pipe', 'gauge'] as const;
 export type TaggedKind = (typeof TAGGED_KINDS)[number];
 
-const PLAIN = String.raw`[A-Za-z0-9 ._\/-]{0,16}`;
+const PLAIN = String.raw`[A-Za-z0-9 ._\/-]{0,8}`;
 /**
  * How tags are made at a site: the text as it stands, one run of `#` for a number of at least so many digits, and `*`, if any, for the
  * letters of the tag that came before (docs/data.md).

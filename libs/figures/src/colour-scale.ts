@@ -26,12 +26,12 @@ export const COLOUR_KINDS: Readonly<Record<ColouredBy, QuantityKind>> = {
   velocity: 'velocity',
 };
 
-/** Classes of even, round width for a network, the same in all its cases. Pressures take the limits that every other view takes. */
+/** Seven classes between round limits for a network, the same in all its cases. Pressures take the limits that every other view takes. */
 export function colourScale(by: ColouredBy, outcomes: readonly CaseOutcome[], units: DisplayUnits): ColourScale {
   const kind = COLOUR_KINDS[by];
   const limits =
     by === 'pressure' ? pressureRamp(pressuresOf(outcomes), units).limits : limitsFromZero(by, outcomes, units);
-  const decimals = decimalsOf((limits[1] ?? 1) - (limits[0] ?? 0));
+  const decimals = Math.max(...limits.map(decimalsOf));
   return { by, kind, limits: limits.map((limit) => fromDisplay(limit, kind, units)), decimals };
 }
 
@@ -89,7 +89,7 @@ function roundStep(width: number): number {
   return factor * power;
 }
 
-/** Enough to tell the limits apart: 2.5 needs one decimal, 10 none. */
-function decimalsOf(step: number): number {
-  return [0, 1, 2, 3].find((decimals) => Math.abs(Number(step.toFixed(decimals)) - step) < 1e-9) ?? 4;
+/** Enough to print a limit as it is: 2.5 needs one decimal, 10 none. */
+function decimalsOf(limit: number): number {
+  return [0, 1, 2, 3].find((decimals) => Math.abs(Number(limit.toFixed(decimals)) - limit) < 1e-9) ?? 4;
 }

@@ -66,6 +66,11 @@ export const routes: Routes = [
         loadComponent: () => import('./mails/mails-page').then((m) => m.MailsPage),
       },
       {
+        path: ':siteId/settings',
+        title: 'Site settings · Riseback',
+        loadComponent: () => import('./sites/site-settings-page').then((m) => m.SiteSettingsPage),
+      },
+      {
         path: ':siteId/library',
         title: 'Trap library · Riseback',
         loadComponent: () => import('./library/library-page').then((m) => m.LibraryPage),

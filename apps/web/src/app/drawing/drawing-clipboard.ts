@@ -3,6 +3,7 @@ import type { NetworkDocument, Position } from '@riseback/network';
 import { nameOf } from '../shared/element-words';
 import { GRID, snapPoint } from '@riseback/figures';
 import { NetworkStore } from '../networks/network-store';
+import { HeldSiteSettings } from '../sites/held-site-settings';
 import { DrawingCommands } from './drawing-commands';
 import { DrawingScene } from './drawing-scene';
 import { DrawingState } from './drawing-state';
@@ -25,6 +26,7 @@ export class DrawingClipboard {
   private readonly commands = inject(DrawingCommands);
   private readonly deletePrompt = inject(DeletePrompt);
   private readonly clipboard = inject(SystemClipboard);
+  private readonly siteSettings = inject(HeldSiteSettings);
 
   async copy(ids: ReadonlySet<string>): Promise<void> {
     const taken = this.take(ids, false);
@@ -93,7 +95,8 @@ export class DrawingClipboard {
     const document = this.store.document();
     if (document === null) return;
     const by = this.placeFor(clip.part, at);
-    const { ops, nodes, pipes } = pasteOps(document, clip, by, this.store.network()?.siteId ?? '');
+    const here = this.store.network()?.siteId ?? '';
+    const { ops, nodes, pipes } = pasteOps(document, clip, by, here, this.siteSettings.tagPatterns(here));
     const words = `${counted(nodes.length, pipes.length)} ${word}`;
     if (!this.store.edit(words, ops)) {
       this.state.say(`Nothing ${word}. ${this.store.lastRefusal().join(' ')}`);

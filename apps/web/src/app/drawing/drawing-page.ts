@@ -25,6 +25,7 @@ import { DrawingScene } from './drawing-scene';
 import { DrawingState } from './drawing-state';
 import { DrawingTray } from './drawing-tray';
 import { EmptySheet } from './empty-sheet';
+import { FindingsHeight, keptFindingsHeight } from './findings-height';
 import { Inspector } from './inspector/inspector';
 import { KeyList } from './key-list';
 import { zoneOf } from '@riseback/figures';
@@ -46,7 +47,17 @@ const NARROW = '(width < 720px)';
 /** The drawing of a network: sheet, tray, findings, inspector. Which element is looked at stands in the address. */
 @Component({
   selector: 'app-drawing-page',
-  imports: [ComparisonPanel, DrawingSheet, DrawingTray, EmptySheet, FindingsList, Inspector, KeyList, TagFinder],
+  imports: [
+    ComparisonPanel,
+    DrawingSheet,
+    DrawingTray,
+    EmptySheet,
+    FindingsHeight,
+    FindingsList,
+    Inspector,
+    KeyList,
+    TagFinder,
+  ],
   providers: [
     DeletePrompt,
     DrawingClipboard,
@@ -85,6 +96,7 @@ export class DrawingPage {
   private readonly narrow = inject(DOCUMENT).defaultView?.matchMedia(NARROW).matches === true;
   protected readonly findingsOpen = signal(!this.narrow);
   protected readonly inspectorOpen = signal(!this.narrow);
+  protected readonly findingsHeight = signal(this.narrow ? 148 : keptFindingsHeight(inject(DOCUMENT).defaultView));
   protected readonly findings = computed(() => {
     const document = this.store.document();
     if (document === null) return [];

@@ -37,6 +37,7 @@ import { deletionOf } from './deletion';
 import { CellDialogs } from './dialogs/cell-dialogs';
 import { StatusMark } from '../shared/status-mark/status-mark';
 import { DeleteDialog, type DeleteDialogData } from '../shared/delete-dialog/delete-dialog';
+import { HeldSiteSettings } from '../sites/held-site-settings';
 import type { CellEdit } from './grid/cell-editing';
 import { ListGrid } from './grid/list-grid';
 import { ListPrint } from './print/list-print';
@@ -84,6 +85,7 @@ interface Printing {
 })
 export class ListsPage {
   protected readonly store = inject(NetworkStore);
+  private readonly siteSettings = inject(HeldSiteSettings);
   private readonly company = inject(Company);
   private readonly dialogs = inject(CellDialogs);
   private readonly choices = inject(ColumnChoices);
@@ -229,7 +231,7 @@ export class ListsPage {
   protected async add(kind: NewKind): Promise<void> {
     const document = this.store.document();
     if (document === null) return;
-    const form = newElementForm(kind, document);
+    const form = newElementForm(kind, document, this.siteSettings.tagPatterns(this.store.network()?.siteId ?? ''));
     const words = { submitWord: 'Add', leaveWord: 'Cancel' };
     const values = await this.dialogs.askFields({ ...form, ...words, units: this.store.units() });
     if (values === undefined) return;

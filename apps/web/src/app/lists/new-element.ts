@@ -1,3 +1,4 @@
+import type { TaggedKind, TagPatterns } from '@riseback/contracts';
 import { pipeBore, pipeSizes } from '@riseback/hydraulics';
 import {
   type AddOp,
@@ -59,13 +60,14 @@ const NODE_PARTS: Readonly<Record<NodeKind, { prefix: string; word: string; fiel
   },
 };
 
-export function newElementForm(kind: NewKind, document: NetworkDocument): NewElementForm {
-  if (kind === 'pipe') return newPipeForm(document);
-  if (kind === 'gauge') return newGaugeForm(document);
-  return kind === 'trapModel' ? newTrapModelForm(document) : newNodeForm(kind, document);
+/** @param patterns after which the site tags its elements */
+export function newElementForm(kind: NewKind, document: NetworkDocument, patterns: TagPatterns = {}): NewElementForm {
+  if (kind === 'pipe') return newPipeForm(document, patterns);
+  if (kind === 'gauge') return newGaugeForm(document, patterns);
+  return kind === 'trapModel' ? newTrapModelForm(document) : newNodeForm(kind, document, patterns);
 }
 
-function newNodeForm(kind: NodeKind, document: NetworkDocument): NewElementForm {
+function newNodeForm(kind: NodeKind, document: NetworkDocument, patterns: TagPatterns): NewElementForm {
   const { prefix, word, fields } = NODE_PARTS[kind];
   return {
     title: `Add a ${word}`,
@@ -75,7 +77,7 @@ function newNodeForm(kind: NodeKind, document: NetworkDocument): NewElementForm 
       { key: 'elevationM', title: 'Elevation', by: 'quantity', quantity: 'length' },
       ...fields,
     ],
-    values: { tag: offeredTag(kind, document) },
+    values: { tag: offeredTag(kind, document, patterns) },
     judge: () => '',
     make: (values) => {
       const id = newElementId(document, prefix);
@@ -105,7 +107,7 @@ function newNodeForm(kind: NodeKind, document: NetworkDocument): NewElementForm 
   };
 }
 
-function newPipeForm(document: NetworkDocument): NewElementForm {
+function newPipeForm(document: NetworkDocument, patterns: TagPatterns): NewElementForm {
   const names = inOrder(document.nodes).map(([id]) => nodeName(id, document));
   const last = inOrder(document.pipes)
     .map(([, { value }]) => value)
@@ -134,7 +136,11 @@ function newPipeForm(document: NetworkDocument): NewElementForm {
         choices: schedules.map(({ schedule, standard }) => ({ value: schedule, word: `${schedule} (${standard})` })),
       },
     ],
-    values: { tag: offeredTag('pipe', document), nps: last?.size?.nps ?? '1', schedule: last?.size?.schedule ?? '80' },
+    values: {
+      tag: offeredTag('pipe', document, patterns),
+      nps: last?.size?.nps ?? '1',
+      schedule: last?.size?.schedule ?? '80',
+    },
     judge: (values) => {
       for (const key of ['from', 'to']) {
         if (findNode(textOf(values, key), document) === undefined)
@@ -193,7 +199,7 @@ function newTrapModelForm(document: NetworkDocument): NewElementForm {
   };
 }
 
-function newGaugeForm(document: NetworkDocument): NewElementForm {
+function newGaugeForm(document: NetworkDocument, patterns: TagPatterns): NewElementForm {
   const onPipe = (values: FieldValues): boolean => 'pipe' in (placeFrom(values, document) ?? {});
   return {
     title: 'Add a gauge',
@@ -207,7 +213,7 @@ function newGaugeForm(document: NetworkDocument): NewElementForm {
       { key: 'rangeHighPa', title: 'Range to', by: 'quantity', quantity: 'gaugePressure', optional: true },
       { key: 'accuracy', title: 'Accuracy, of span', by: 'quantity', quantity: 'fraction', optional: true },
     ],
-    values: { tag: nextGaugeTag(document) },
+    values: { tag: nextGaugeTag(document, patterns) },
     judge: (values) =>
       placeFrom(values, document) === undefined
         ? `Nothing in this network is called ${textOf(values, 'place')}.`
@@ -248,20 +254,20 @@ function rangeEndsAboveStart({ rangeLowPa, rangeHighPa }: FieldValues): string {
     : '';
 }
 
-function nextGaugeTag(document: NetworkDocument): string {
+function nextGaugeTag(document: NetworkDocument, patterns: TagPatterns): string {
   const tags = inOrder(document.gauges).flatMap(([, { value }]) => value.tag ?? []);
-  return nextTag('gauge', tags, new Set(tags));
+  return nextTag('gauge', tags, new Set(tags), patterns.gauge);
 }
 
 function nameFrom(values: FieldValues, id: string): string {
   return optionalText(values, 'tag')['tag'] ?? id;
 }
 
-function offeredTag(kind: NodeKind | 'pipe', document: NetworkDocument): string {
+function offeredTag(kind: Exclude<TaggedKind, 'gauge'>, document: NetworkDocument, patterns: TagPatterns): string {
   const all = [...inOrder(document.nodes), ...inOrder(document.pipes)].map(([, { value }]) => value);
   const ofKind = all.filter((element) => ('kind' in element ? element.kind === kind : kind === 'pipe'));
   const tagsOf = (elements: typeof all): string[] => elements.flatMap(({ tag }) => (tag === undefined ? [] : [tag]));
-  return nextTag(kind, tagsOf(ofKind), new Set(tagsOf(all)));
+  return nextTag(kind, tagsOf(ofKind), new Set(tagsOf(all)), patterns[kind]);
 }
 
 /** A free grid point under the last element of the kind, else under the last of all. */

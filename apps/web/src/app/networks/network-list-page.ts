@@ -17,6 +17,7 @@ import { emptyDocument, readNetworkFile, toFile } from '@riseback/network';
 import { firstValueFrom, forkJoin, switchMap } from 'rxjs';
 import { SessionStore } from '../session/session-store';
 import { type Load, LOADING, loads } from '../shared/load';
+import { outcomeOf } from '../shared/outcome';
 import { toProblem } from '../shared/problem';
 import { ProblemBanner } from '../shared/problem-banner/problem-banner';
 import { StatusMark } from '../shared/status-mark/status-mark';
@@ -86,10 +87,16 @@ export class NetworkListPage {
   }
 
   protected async createEmpty(name: string): Promise<void> {
-    const site = this.site();
-    if (site === null || name.trim() === '') return;
-    const { atmosphericPressurePa, ambientTemperatureK } = site;
-    await this.create(toFile(emptyDocument(name.trim(), { atmosphericPressurePa, ambientTemperatureK })));
+    if (name.trim() === '') return;
+    this.refusal.set(null);
+    const settings = await outcomeOf(this.siteApi.settings(this.siteId()));
+    if ('problem' in settings) {
+      this.refusal.set(settings.problem);
+      return;
+    }
+    const { atmosphericPressurePa, ambientTemperatureK, limits } = settings.value;
+    const empty = emptyDocument(name.trim(), { atmosphericPressurePa, ambientTemperatureK });
+    await this.create(toFile({ ...empty, limits }));
   }
 
   protected async createFromFile(box: HTMLInputElement): Promise<void> {

@@ -10,6 +10,7 @@ import { RevisionTitleBlock } from '../revisions/revision-title-block';
 import { BANDS_TO_COME } from '../shared/bands-to-come';
 import { onlineSignal } from '../shared/online';
 import { ProblemBanner } from '../shared/problem-banner/problem-banner';
+import { HeldSiteSettings } from '../sites/held-site-settings';
 import { AppBar } from '../shell/app-bar';
 import { Company } from './company';
 import { CompanyStrip } from './company-strip';
@@ -102,6 +103,11 @@ export class NetworkPage {
     effect(() => {
       const networkId = this.store.network()?.id;
       if (networkId !== undefined) untracked(() => this.company.open(networkId));
+    });
+    const siteSettings = inject(HeldSiteSettings);
+    effect(() => {
+      const siteId = this.siteId();
+      untracked(() => siteSettings.ask(siteId));
     });
     effect(() => {
       const element = this.element();

@@ -1,4 +1,4 @@
-import { ChangeDetectionStrategy, Component, inject, output } from '@angular/core';
+import { ChangeDetectionStrategy, Component, computed, inject, input, output } from '@angular/core';
 import { MatButton } from '@angular/material/button';
 import { MatDialog } from '@angular/material/dialog';
 import { NetworkStore } from './network-store';
@@ -9,6 +9,16 @@ export interface UndoneStep {
   readonly touched: readonly string[];
   readonly words: string;
 }
+
+/** Steps that are taken back and done again apart from the network's own. */
+export interface StepHistory {
+  readonly undoLabel: () => string | null;
+  readonly redoLabel: () => string | null;
+  undo(): void;
+  redo(): void;
+}
+
+const NO_STEPS = { undoLabel: () => null, redoLabel: () => null };
 
 /** Undo and redo as buttons and by their keys, for pages of forms and tables. */
 @Component({
@@ -21,8 +31,8 @@ export interface UndoneStep {
       matButton="outlined"
       type="button"
       aria-label="Undo"
-      [title]="'Undo ' + (store.undoLabel() ?? '')"
-      [disabled]="store.undoLabel() === null"
+      [title]="'Undo ' + (undoLabel() ?? '')"
+      [disabled]="undoLabel() === null"
       (click)="undo()"
     >
       <svg viewBox="0 0 16 16" width="16" height="16" aria-hidden="true">
@@ -33,8 +43,8 @@ export interface UndoneStep {
       matButton="outlined"
       type="button"
       aria-label="Redo"
-      [title]="'Redo ' + (store.redoLabel() ?? '')"
-      [disabled]="store.redoLabel() === null"
+      [title]="'Redo ' + (redoLabel() ?? '')"
+      [disabled]="redoLabel() === null"
       (click)="redo()"
     >
       <svg viewBox="0 0 16 16" width="16" height="16" aria-hidden="true">
@@ -64,21 +74,41 @@ export class UndoButtons {
   protected readonly store = inject(NetworkStore);
   private readonly dialog = inject(MatDialog);
 
+  /** Steps that come before the network's while there are any. */
+  readonly before = input<StepHistory | null>(null);
+
   readonly stepped = output<UndoneStep>();
 
+  private readonly first = computed(() => {
+    const before = this.before();
+    return before === null || (before.undoLabel() === null && before.redoLabel() === null) ? null : before;
+  });
+  /** Who may not draw has no steps in the network to take back. */
+  protected readonly undoLabel = computed(() =>
+    (this.first() ?? (this.store.mayDraw() ? this.store : NO_STEPS)).undoLabel(),
+  );
+  protected readonly redoLabel = computed(() =>
+    (this.first() ?? (this.store.mayDraw() ? this.store : NO_STEPS)).redoLabel(),
+  );
+
   protected undo(): void {
-    const label = this.store.undoLabel();
-    this.tell(this.store.undo(), `Undone: ${label ?? ''}`);
+    const label = this.undoLabel();
+    const first = this.first();
+    first?.undo();
+    this.tell(first === null ? this.store.undo() : [], `Undone: ${label ?? ''}`);
   }
 
   protected redo(): void {
-    const label = this.store.redoLabel();
-    this.tell(this.store.redo(), `Done again: ${label ?? ''}`);
+    const label = this.redoLabel();
+    const first = this.first();
+    first?.redo();
+    this.tell(first === null ? this.store.redo() : [], `Done again: ${label ?? ''}`);
   }
 
   /** Not while a text is typed, where the browser's own undo belongs, nor behind a dialog. */
   protected stepByKey(event: KeyboardEvent): void {
-    if (!(event.ctrlKey || event.metaKey) || event.altKey || !this.store.mayDraw()) return;
+    if (!(event.ctrlKey || event.metaKey) || event.altKey) return;
+    if (this.first() === null && !this.store.mayDraw()) return;
     if (this.dialog.openDialogs.length > 0 || isTextBox(event.target)) return;
     const key = event.key.toLowerCase();
     if (key === 'z' && !event.shiftKey) this.undo();

@@ -1,6 +1,5 @@
-import type { NodeKind } from '@riseback/network';
-
-export type TaggedKind = NodeKind | 'pipe' | 'gauge';
+import type { TaggedKind } from '@riseback/contracts';
+import { patternedTag } from './tag-pattern';
 
 const FIRST_TAGS: Readonly<Record<TaggedKind, string>> = {
   trap: 'TR-101',
@@ -14,11 +13,17 @@ const FIRST_TAGS: Readonly<Record<TaggedKind, string>> = {
 
 /**
  * A tag to offer for the next element: the last one's, counted up past all that share its letters. Junctions get none until one has a
- * tag, since most stay nameless.
+ * tag, since most stay nameless. A pattern of the site goes before all of that.
  * @param tags tags of the kind in the file's order
  * @param taken tags of every element, which the offer must not repeat
  */
-export function nextTag(kind: TaggedKind, tags: readonly string[], taken: ReadonlySet<string>): string {
+export function nextTag(
+  kind: TaggedKind,
+  tags: readonly string[],
+  taken: ReadonlySet<string>,
+  pattern?: string,
+): string {
+  if (pattern !== undefined) return patternedTag(pattern, tags.at(-1) ?? (FIRST_TAGS[kind] || 'J'), taken);
   const last = tags.findLast((tag) => NUMBERED.test(tag));
   const start = NUMBERED.exec(last ?? FIRST_TAGS[kind]);
   if (start === null) return '';

@@ -1,6 +1,6 @@
 import { HttpClient } from '@angular/common/http';
 import { inject, Injectable } from '@angular/core';
-import { Site } from '@riseback/contracts';
+import { Site, SiteSettings, type SiteSettingsChange } from '@riseback/contracts';
 import { map, type Observable } from 'rxjs';
 
 @Injectable({ providedIn: 'root' })
@@ -13,5 +13,15 @@ export class SiteApi {
 
   get(siteId: string): Observable<Site> {
     return this.http.get<unknown>(`/api/sites/${siteId}`).pipe(map((body) => Site.parse(body)));
+  }
+
+  settings(siteId: string): Observable<SiteSettings> {
+    return this.http.get<unknown>(`/api/sites/${siteId}/settings`).pipe(map((body) => SiteSettings.parse(body)));
+  }
+
+  changeSettings(siteId: string, change: SiteSettingsChange): Observable<SiteSettings> {
+    return this.http
+      .patch<unknown>(`/api/sites/${siteId}/settings`, change)
+      .pipe(map((body) => SiteSettings.parse(body)));
   }
 }

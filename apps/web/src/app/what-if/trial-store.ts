@@ -11,8 +11,9 @@ import { effectsOf } from './effects';
 import { KeptTrial } from './kept-trial';
 import { proposedStep, type Wish } from './proposed-step';
 import { type SolvedPart, solvedPart } from './solved-part';
-import { EMPTY_TRIAL, labelOf, layOver, type Trial, withoutStep, withoutStepsAt, withStep } from './trial';
+import { EMPTY_TRIAL, labelOf, layOver, withoutStep, withoutStepsAt, withStep } from './trial';
 import { TrialApi } from './trial-api';
+import { TrialHistory } from './trial-history';
 
 /** Changes made one after the other within this are solved once. */
 const SOLVE_DELAY_MS = 200;
@@ -34,7 +35,9 @@ export class TrialStore {
   private readonly kept = inject(KeptTrial);
   private readonly api = inject(TrialApi);
 
-  private readonly trial = signal<Trial>(EMPTY_TRIAL);
+  /** Steps on the copy, back and forth. */
+  readonly history = new TrialHistory();
+  private readonly trial = this.history.trial;
   private readonly baseVersion = signal(0);
   private readonly storable = signal(true);
   private readonly broughtBack = signal<number | null>(null);
@@ -126,23 +129,24 @@ export class TrialStore {
     const refusal = layOver(document, next).refused.find(({ stepId }) => stepId === step.id);
     if (refusal !== undefined) return refusal.reasons.join(' ');
     if (this.steps().length === 0) this.baseVersion.set(this.queue.version());
-    this.trial.set(next);
+    this.history.change(`trying ${step.words}`, next);
     return '';
   }
 
   takeOut(stepId: string): void {
-    this.trial.update((trial) => withoutStep(trial, stepId));
+    const words = this.steps().find(({ id }) => id === stepId)?.words ?? '';
+    this.history.change(`taking out ${words}`, withoutStep(this.trial(), stepId));
   }
 
   /** What others changed meanwhile stays theirs. */
   leaveToOthers(): void {
     const places = new Set(this.laidOver()?.overtaken.map(({ place }) => place));
-    this.trial.update((trial) => withoutStepsAt(trial, places));
+    this.history.change('leaving to others what they changed', withoutStepsAt(this.trial(), places));
     this.baseVersion.set(this.queue.version());
   }
 
   drop(): void {
-    this.trial.set(EMPTY_TRIAL);
+    this.history.change('dropping all that was tried', EMPTY_TRIAL);
     this.broughtBack.set(null);
   }
 
@@ -150,7 +154,8 @@ export class TrialStore {
   keep(): boolean {
     const over = this.laidOver();
     if (over === null || !this.network.mayDraw() || !this.network.edit(labelOf(this.trial()), over.ops)) return false;
-    this.drop();
+    this.history.begin(EMPTY_TRIAL);
+    this.broughtBack.set(null);
     return true;
   }
 
@@ -164,7 +169,7 @@ export class TrialStore {
   private bringBack(personId: string, networkId: string): void {
     const kept = this.kept.get(personId, networkId);
     this.loaded = true;
-    this.trial.set(kept?.trial ?? EMPTY_TRIAL);
+    this.history.begin(kept?.trial ?? EMPTY_TRIAL);
     this.broughtBack.set(kept?.at ?? null);
     this.baseVersion.set(kept?.version ?? this.queue.version());
   }

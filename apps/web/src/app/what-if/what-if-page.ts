@@ -95,7 +95,7 @@ export class WhatIfPage {
 
   protected drop(): void {
     this.trials.drop();
-    this.told.set('Dropped. The network is as it was.');
+    this.told.set('Dropped. The network is as it was. Undo brings back what you tried.');
   }
 
   protected takeOut(stepId: string): void {

@@ -1,3 +1,4 @@
+import type { TagPatterns } from '@riseback/contracts';
 import { inOrder, type NetworkDocument, type NetworkNode, type NodeKind, type PipeRun } from '@riseback/network';
 import { nameOf } from '../../shared/element-words';
 import { nextTag } from '../../shared/next-tag';
@@ -18,17 +19,17 @@ const SHARED_KEYS: Readonly<Record<NodeKind, readonly string[]>> = {
 };
 
 /** The next tag, and what the last node of the kind has. */
-export function nodeDefaults(kind: NodeKind, document: NetworkDocument): DraftDefaults {
+export function nodeDefaults(kind: NodeKind, document: NetworkDocument, patterns: TagPatterns = {}): DraftDefaults {
   const nodes = inOrder(document.nodes).map(([, { value }]) => value);
   const alike = nodes.filter((node) => node.kind === kind);
-  const tag = nextTag(kind, tagsOf(alike), takenTags(document));
+  const tag = nextTag(kind, tagsOf(alike), takenTags(document), patterns[kind]);
   return filled(tag, alike.at(-1), SHARED_KEYS[kind]);
 }
 
 /** The next tag, and the length and size of the last pipe. */
-export function pipeDefaults(document: NetworkDocument): DraftDefaults {
+export function pipeDefaults(document: NetworkDocument, patterns: TagPatterns = {}): DraftDefaults {
   const pipes = inOrder(document.pipes).map(([, { value }]) => value);
-  const tag = nextTag('pipe', tagsOf(pipes), takenTags(document));
+  const tag = nextTag('pipe', tagsOf(pipes), takenTags(document), patterns.pipe);
   return filled(tag, pipes.at(-1), ['lengthM', 'size', 'insideDiameterM']);
 }
 

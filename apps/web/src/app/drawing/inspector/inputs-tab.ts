@@ -1,11 +1,12 @@
 import { ChangeDetectionStrategy, Component, computed, inject, input, linkedSignal, viewChild } from '@angular/core';
 import { RouterLink } from '@angular/router';
-import type { Fitting, NetworkNode, PipeRun, RoutePiece, Trap } from '@riseback/network';
+import type { Fitting, NetworkNode, PipeRun, Position, RoutePiece, Trap } from '@riseback/network';
 import { caseChangeWords } from '../../cases/case-changes';
 import { NetworkStore } from '../../networks/network-store';
 import { DrawingCommands } from '../drawing-commands';
 import { isPipe, nameOf } from '../../shared/element-words';
 import { nodeFields, PIPE_FIELDS_AFTER_SIZE, PIPE_FIELDS_BEFORE_SIZE, PIPE_FIELDS_LAST } from './element-fields';
+import { BendsEditor } from './bends-editor';
 import { FittingsEditor } from './fittings-editor';
 import { type ChosenSize, PipeSizeField } from './pipe-size-field';
 import { type FieldChange, PropertyFields } from './property-fields';
@@ -15,7 +16,7 @@ import { ServiceEditor } from './service-editor';
 /** Every property of one element. Each accepted field is one edit and one step of undo; a refusal stays at its field. */
 @Component({
   selector: 'app-inputs-tab',
-  imports: [FittingsEditor, PipeSizeField, PropertyFields, RouteEditor, RouterLink, ServiceEditor],
+  imports: [BendsEditor, FittingsEditor, PipeSizeField, PropertyFields, RouteEditor, RouterLink, ServiceEditor],
   changeDetection: ChangeDetectionStrategy.OnPush,
   templateUrl: './inputs-tab.html',
   styleUrl: './inspector-tabs.scss',
@@ -62,6 +63,13 @@ export class InputsTab {
     };
     return `From ${name(pipe.from)} to ${name(pipe.to)}`;
   });
+  protected readonly drawnEnds = computed(() => {
+    const pipe = this.pipe();
+    const nodes = this.store.document()?.nodes;
+    const [from, to] = [nodes?.get(pipe?.from ?? '')?.value, nodes?.get(pipe?.to ?? '')?.value];
+    if (from?.position === undefined || to?.position === undefined) return null;
+    return { start: from.position, end: to.position, startName: nameOf(from) };
+  });
   /** What the case whose result is shown sets at this element in place of what stands here; '' when nothing. */
   protected readonly inCase = computed(() => {
     const document = this.store.document();
@@ -97,6 +105,10 @@ export class InputsTab {
 
   protected setRoute(route: RoutePiece[] | undefined): void {
     this.accept('route', { route }, 'route');
+  }
+
+  protected setBends(bends: Position[] | undefined): void {
+    this.accept('bends', { bends }, 'bends');
   }
 
   protected setService(service: Trap['service']): void {

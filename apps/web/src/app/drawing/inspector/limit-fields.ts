@@ -1,56 +1,53 @@
 import { ChangeDetectionStrategy, Component, computed, inject, signal } from '@angular/core';
-import { RouterLink } from '@angular/router';
-import { setNetworkOp } from '@riseback/network';
-import { formatQuantity } from '@riseback/units';
+import { MatButton } from '@angular/material/button';
+import { jsonEqual, type Limits, setNetworkOp } from '@riseback/network';
+import { limitGroups, withLimit } from '../../networks/limit-rows';
 import { NetworkStore } from '../../networks/network-store';
 import { checkName } from '../../results/finding-words';
-import { QuantityField } from '../../shared/quantity-field/quantity-field';
-import { limitGroups, withLimit } from '../../networks/limit-rows';
+import { type LimitChange, LimitForm } from '../../shared/limit-form/limit-form';
+import { HeldSiteSettings } from '../../sites/held-site-settings';
 
-/** The limits that the checks judge by: empty is the default, which the field shows with where it comes from. */
+/** The limits that this network is judged by. A new network begins with its site's; from then on it has its own. */
 @Component({
   selector: 'app-limit-fields',
-  imports: [QuantityField, RouterLink],
+  imports: [LimitForm, MatButton],
   changeDetection: ChangeDetectionStrategy.OnPush,
   templateUrl: './limit-fields.html',
   styleUrl: './limit-fields.scss',
 })
 export class LimitFields {
+  private readonly siteSettings = inject(HeldSiteSettings);
   protected readonly store = inject(NetworkStore);
 
   protected readonly fixed = computed(() => !this.store.mayDraw());
-  protected readonly groups = computed(() => {
-    const units = this.store.units();
-    return limitGroups(this.store.document()?.limits ?? {}).map(({ code, rows }) => ({
-      code,
-      name: checkName(code),
-      rows: rows.map((row) => ({
-        ...row,
-        id: `${code}.${row.key}`,
-        placeholder: `${formatQuantity(row.defaultSi, row.kind, units)}, default`,
-        hint:
-          row.own === undefined
-            ? row.source
-            : `Default ${formatQuantity(row.defaultSi, row.kind, units, { withUnit: true })}: ${row.source}`,
-      })),
-    }));
-  });
   protected readonly ownCount = computed(
-    () => this.groups().flatMap(({ rows }) => rows.filter(({ own }) => own !== undefined)).length,
+    () =>
+      limitGroups(this.store.document()?.limits ?? {}).flatMap(({ rows }) =>
+        rows.filter(({ own }) => own !== undefined),
+      ).length,
   );
-  private readonly refusal = signal<{ readonly id: string; readonly reason: string } | null>(null);
+  private readonly siteLimits = computed((): Limits | null => {
+    const load = this.siteSettings.of(this.store.network()?.siteId ?? '')();
+    return load.status === 'ready' ? load.value.limits : null;
+  });
+  protected readonly siteDiffers = computed(() => {
+    const [ofSite, own] = [this.siteLimits(), this.store.document()?.limits];
+    return ofSite !== null && own !== undefined && !jsonEqual(ofSite, own);
+  });
+  protected readonly refusal = signal<{ code: string; key: string; reason: string } | null>(null);
 
-  protected refusalAt(id: string): string {
-    const refusal = this.refusal();
-    return refusal?.id === id ? refusal.reason : '';
-  }
-
-  protected set(code: string, key: string, to: number | undefined): void {
+  protected set({ code, key, to }: LimitChange): void {
     const document = this.store.document();
     if (document === null) return;
     const what = to === undefined ? 'default limit' : 'limit';
     const label = `${what} of ${checkName(code).toLowerCase()}`;
     const taken = this.store.edit(label, [setNetworkOp(document, 'limits', withLimit(document.limits, code, key, to))]);
-    this.refusal.set(taken ? null : { id: `${code}.${key}`, reason: this.store.lastRefusal().join(' ') });
+    this.refusal.set(taken ? null : { code, key, reason: this.store.lastRefusal().join(' ') });
+  }
+
+  protected takeFromSite(): void {
+    const [document, limits] = [this.store.document(), this.siteLimits()];
+    if (document !== null && limits !== null)
+      this.store.edit('limits of the site', [setNetworkOp(document, 'limits', limits)]);
   }
 }

@@ -14,6 +14,7 @@ import {
 import { MatButton } from '@angular/material/button';
 import type { PipeSize } from '@riseback/network';
 import { NetworkStore } from '../../networks/network-store';
+import { HeldSiteSettings } from '../../sites/held-site-settings';
 import { DrawingCommands } from '../drawing-commands';
 import { type Draft, DrawingState } from '../drawing-state';
 import { KIND_WORDS, nameOf } from '../../shared/element-words';
@@ -37,6 +38,7 @@ const NO_DEFAULTS: DraftDefaults = { values: {}, hints: {} };
 export class NewElementForm {
   private readonly commands = inject(DrawingCommands);
   private readonly state = inject(DrawingState);
+  private readonly siteSettings = inject(HeldSiteSettings);
   protected readonly store = inject(NetworkStore);
 
   readonly draft = input.required<Draft>();
@@ -65,7 +67,8 @@ export class NewElementForm {
     const draft = this.draft();
     const document = untracked(() => this.store.document());
     if (document === null) return NO_DEFAULTS;
-    return draft.kind === 'pipe' ? pipeDefaults(document) : nodeDefaults(draft.what, document);
+    const patterns = untracked(() => this.siteSettings.tagPatterns(this.store.network()?.siteId ?? ''));
+    return draft.kind === 'pipe' ? pipeDefaults(document, patterns) : nodeDefaults(draft.what, document, patterns);
   });
   protected readonly values = linkedSignal(() => this.defaults().values);
   /** Where a value was filled in from, until it is changed. */

@@ -1,3 +1,4 @@
+import type { TaggedKind, TagPatterns } from '@riseback/contracts';
 import {
   type EditOp,
   inOrder,
@@ -19,8 +20,14 @@ export interface Pasted {
 }
 
 /** The edit that puts a piece into a network, shifted, under new ids and tags; its trap models are matched with those there or go along. */
-export function pasteOps(document: NetworkDocument, { part, siteId, cut }: Clip, by: Position, here: string): Pasted {
-  const tags = new TakenTags(document, cut);
+export function pasteOps(
+  document: NetworkDocument,
+  { part, siteId, cut }: Clip,
+  by: Position,
+  here: string,
+  patterns: TagPatterns = {},
+): Pasted {
+  const tags = new TakenTags(document, cut, patterns);
   const ids = new NewIds(document);
   const models = modelsFor(document, part, siteId === here, ids);
   const ops: EditOp[] = [...models.ops];
@@ -33,7 +40,7 @@ export function pasteOps(document: NetworkDocument, { part, siteId, cut }: Clip,
     const changed = {
       ...value,
       id,
-      ...tags.given(value.tag),
+      ...tags.given(value.kind, value.tag),
       position: shifted(value.position ?? { x: 0, y: 0 }, by),
       ...(model === undefined ? {} : { trapModel: model }),
     };
@@ -47,7 +54,7 @@ export function pasteOps(document: NetworkDocument, { part, siteId, cut }: Clip,
     const id = ids.next(ID_PREFIXES.pipe);
     pipeIds.push(id);
     const bends = value.bends === undefined ? {} : { bends: value.bends.map((bend) => shifted(bend, by)) };
-    const changed = { ...value, id, from, to, ...tags.given(value.tag), ...bends };
+    const changed = { ...value, id, from, to, ...tags.given('pipe', value.tag), ...bends };
     ops.push({ op: 'add', in: 'pipes', ordinal: ordinal++, value: changed });
   }
   return { ops, nodes: [...newId.values()], pipes: pipeIds };
@@ -101,6 +108,7 @@ class TakenTags {
   constructor(
     document: NetworkDocument,
     private readonly keepFree: boolean,
+    private readonly patterns: TagPatterns,
   ) {
     this.taken = new Set(
       [...document.nodes.values(), ...document.pipes.values()].flatMap(({ value: { tag } }) =>
@@ -109,9 +117,9 @@ class TakenTags {
     );
   }
 
-  given(tag: string | undefined): { readonly tag?: string } {
+  given(kind: TaggedKind, tag: string | undefined): { readonly tag?: string } {
     if (tag === undefined) return {};
-    const made = this.keepFree && !this.taken.has(tag) ? tag : copiedTag(tag, this.taken);
+    const made = this.keepFree && !this.taken.has(tag) ? tag : copiedTag(tag, this.taken, this.patterns[kind]);
     this.taken.add(made);
     return { tag: made };
   }
