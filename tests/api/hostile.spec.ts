@@ -6,6 +6,7 @@ import { RATE_LIMITED } from '../../server/src/platform/http/rate-limit';
 import type { Route } from '../../server/src/platform/routes/route-table';
 import { costly, Listening, type Answer } from './listening-server';
 import { batchOf, makeNetwork, raise, sendBatch, SMALL } from './network-samples';
+import { rightfulOf } from './rightful-role';
 import { TestServer, type Client } from './test-server';
 
 const MB = 1024 * 1024;
@@ -225,8 +226,7 @@ describe('every route', () => {
         .replace(':networkId', networkId)
         .replaceAll(/:\w+/g, 'x');
       const body = JSON.stringify('x'.repeat(route.bodyLimitBytes));
-      const who = route.rule.kind === 'public' ? 'anonymous' : 'administrator';
-      const client = listening.app.as(who);
+      const client = listening.app.as(route.rule.kind === 'public' ? 'anonymous' : rightfulOf(route));
       const { status } = await listening.send(client, path, body, { 'If-Match': '"1"' }, route.method.toUpperCase());
       expect({ route: nameOf(route), status }).toEqual({ route: nameOf(route), status: 413 });
     }

@@ -1,8 +1,9 @@
-import { roleMay, ROLES, type Problem, type Role } from '@riseback/contracts';
+import type { Problem } from '@riseback/contracts';
 import fc from 'fast-check';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import type { Route } from '../../server/src/platform/routes/route-table';
 import { ApiDescription, type JsonSchema } from './api-description';
+import { rightfulOf } from './rightful-role';
 import { valueOf } from './schema-arbitrary';
 import { TestServer } from './test-server';
 
@@ -103,12 +104,6 @@ function slippedIn(): Readonly<Record<string, unknown>> {
 function pathOf(route: Route): string {
   const path = route.path.replace(':siteId', server.siteId).replace(':networkId', networkId);
   return path.replaceAll(/:\w+/g, 'some-id');
-}
-
-/** Whoever may: administrators do not judge revisions. */
-function rightfulOf({ rule }: Route): Role {
-  const able = (role: Role) => !('anyOf' in rule) || rule.anyOf.some((permission) => roleMay(role, permission));
-  return able('administrator') ? 'administrator' : (ROLES.find(able) ?? 'viewer');
 }
 
 const send = (route: Route, body: unknown) =>

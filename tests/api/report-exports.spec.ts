@@ -94,7 +94,7 @@ describe('the report as a workbook', () => {
     const printed = new Set(backs.map(({ backPressurePa }) => formatQuantity(backPressurePa, 'pressure', units)));
     for (const row of table?.rows ?? []) {
       const cell = row[back];
-      if (typeof cell !== 'object') throw new Error('a back pressure is no number');
+      if (typeof cell !== 'object' || !('number' in cell)) throw new Error('a back pressure is no number');
       expect(printed).toContain(cell.number.toFixed(cell.decimals));
     }
     const xml = xmlOf(await makeXlsx(content, () => undefined, new AbortController().signal));
