@@ -11,6 +11,7 @@ export * from './element-text';
 export * from './element-words';
 export * from './flat-staff-shapes';
 export * from './flat-staff';
+export * from './gauge-symbol';
 export * from './gauges-on-way';
 export * from './geometry';
 export * from './label-placement';

@@ -14,6 +14,7 @@ import { NetworkStore } from '../networks/network-store';
 import { DrawingScene } from './drawing-scene';
 import { DrawingState, IDLE } from './drawing-state';
 import { bendsBeside, type Displaced, NOTHING_DISPLACED } from './model/drawn-network';
+import { gaugeIdOf, gaugeKey } from './model/gauge-keys';
 import { ID_PREFIXES } from './model/id-prefixes';
 import { keepingLanes } from './model/keep-lanes';
 import { KIND_WORDS, nameOf } from '../shared/element-words';
@@ -27,17 +28,24 @@ export class DrawingCommands {
   private readonly state = inject(DrawingState);
 
   /** Adds an element with the fields that were asked for. Its id, or null when it was refused. */
-  add(kind: NodeKind | 'pipe', fields: Readonly<Record<string, unknown>>): string | null {
+  add(kind: NodeKind | 'pipe' | 'gauge', fields: Readonly<Record<string, unknown>>): string | null {
     const document = this.store.document();
     if (document === null) return null;
-    const collection = kind === 'pipe' ? 'pipes' : 'nodes';
-    const id = newElementId(document, ID_PREFIXES[kind]);
-    const value = kind === 'pipe' ? { id, ...fields, ...this.apart(fields) } : { id, kind, ...fields };
-    const tag = typeof fields['tag'] === 'string' ? fields['tag'] : id;
-    const added = this.store.edit(`${KIND_WORDS[kind]} ${tag} placed`, [
-      { op: 'add', in: collection, ordinal: nextOrdinal(document, collection), value },
+    const collection = kind === 'pipe' ? 'pipes' : kind === 'gauge' ? 'gauges' : 'nodes';
+    const newId = newElementId(document, ID_PREFIXES[kind]);
+    const value = { id: newId, ...(collection === 'nodes' ? { kind } : {}), ...fields };
+    const tag = typeof fields['tag'] === 'string' ? fields['tag'] : newId;
+    const word = kind === 'gauge' ? kind : KIND_WORDS[kind];
+    const added = this.store.edit(`${word} ${tag} placed`, [
+      {
+        op: 'add',
+        in: collection,
+        ordinal: nextOrdinal(document, collection),
+        value: kind === 'pipe' ? { ...value, ...this.apart(fields) } : value,
+      },
     ]);
     if (!added) return null;
+    const id = kind === 'gauge' ? gaugeKey(newId) : newId;
     this.state.select(id);
     this.state.focusOn(id);
     this.state.say(`${this.scene.nameOf(id)} added`);
@@ -62,8 +70,14 @@ export class DrawingCommands {
     if (document === null || place === null) return false;
     const ops = Object.entries(values)
       .filter(([key, to]) => !sameValue(place.value[key], to))
-      .map(([key, to]) => setOp(document, place.collection, id, key, to));
+      .map(([key, to]) => setOp(document, place.collection, place.id, key, to));
     return this.store.edit(`${what} of ${place.name}`.slice(0, 120), ops);
+  }
+
+  /** Whether the person may delete all of this: gauges are also theirs who read them. */
+  mayRemove(ids: ReadonlySet<string>): boolean {
+    if (ids.size === 0) return false;
+    return this.store.mayDraw() || (this.store.may('readings') && [...ids].every((id) => gaugeIdOf(id) !== undefined));
   }
 
   /** What would go along with a deletion, in words; empty when nothing does. */
@@ -82,7 +96,7 @@ export class DrawingCommands {
     return [
       ...named,
       ...count(going.overrides.length, 'value set in a case', 'values set in cases'),
-      ...count(going.gauges.length, 'gauge', 'gauges'),
+      ...count(going.gauges.filter((id) => !ids.has(gaugeKey(id))).length, 'gauge', 'gauges'),
     ];
   }
 
@@ -143,12 +157,13 @@ export class DrawingCommands {
   /** After undo and redo the keyboard is on what changed. */
   private afterStep(touched: readonly string[] | null, otherwise: string | null, words: string): void {
     this.state.draft.set(null);
+    this.state.gaugeDraft.set(null);
     this.state.say(
       touched === null && this.store.lastRefusal().length > 0
         ? `Not possible: ${this.store.lastRefusal().join(' ')}`
         : words,
     );
-    const there = (touched ?? []).filter((id) => this.scene.has(id));
+    const there = (touched ?? []).flatMap((id) => [id, gaugeKey(id)]).filter((id) => this.scene.has(id));
     const [first] = there;
     this.state.selection.update((selected) => new Set([...selected].filter((id) => this.scene.has(id))));
     if (first !== undefined) {
@@ -174,9 +189,10 @@ export class DrawingCommands {
   }
 
   private neighbourBelow(ids: ReadonlySet<string>): string | null {
-    const network = this.scene.settled();
+    const network = this.scene.walked();
     const focused = this.state.focusId();
     const start = focused !== null && ids.has(focused) ? focused : ([...ids][0] ?? null);
+    const startsAtGauge = start !== null && gaugeIdOf(start) !== undefined;
     const seen = new Set<string>();
     for (
       let here = start;
@@ -184,28 +200,36 @@ export class DrawingCommands {
       here = downstreamOf(network, here, this.scene.reversed) ?? null
     ) {
       seen.add(here);
-      // a pipe goes with its node, so the neighbour is the next node that stays
-      if (!ids.has(here) && network.nodes.has(here)) return here;
+      // a pipe goes with its node, so the neighbour is the next node that stays; a gauge leaves its pipe as it was
+      if (!ids.has(here) && (network.nodes.has(here) || startsAtGauge)) return here;
     }
     return [...network.nodes.keys()].find((id) => !ids.has(id)) ?? null;
   }
 }
 
 interface PlaceInDocument {
-  readonly collection: 'nodes' | 'pipes';
+  readonly collection: 'nodes' | 'pipes' | 'gauges';
+  readonly id: string;
   readonly name: string;
   readonly value: Readonly<Record<string, unknown>>;
 }
 
 function elementIn(document: NetworkDocument, id: string): PlaceInDocument | null {
+  const gaugeId = gaugeIdOf(id);
+  const gauge = gaugeId === undefined ? undefined : document.gauges.get(gaugeId)?.value;
+  if (gauge !== undefined) return { collection: 'gauges', id: gauge.id, name: nameOf(gauge), value: { ...gauge } };
   const node = document.nodes.get(id)?.value;
-  if (node !== undefined) return { collection: 'nodes', name: nameOf(node), value: { ...node } };
+  if (node !== undefined) return { collection: 'nodes', id, name: nameOf(node), value: { ...node } };
   const pipe = document.pipes.get(id)?.value;
-  return pipe === undefined ? null : { collection: 'pipes', name: nameOf(pipe), value: { ...pipe } };
+  return pipe === undefined ? null : { collection: 'pipes', id, name: nameOf(pipe), value: { ...pipe } };
 }
 
-function picked(document: NetworkDocument, ids: ReadonlySet<string>): { nodes: string[]; pipes: string[] } {
+function picked(
+  document: NetworkDocument,
+  ids: ReadonlySet<string>,
+): { nodes: string[]; pipes: string[]; gauges: string[] } {
   return {
+    gauges: [...ids].flatMap((key) => gaugeIdOf(key) ?? []).filter((id) => document.gauges.has(id)),
     nodes: [...ids].filter((id) => document.nodes.has(id)),
     pipes: [...ids].filter((id) => document.pipes.has(id)),
   };

@@ -16,6 +16,8 @@ import { CommentStore } from '../comments/comment-store';
 import { elementOf } from '../comments/comment-subjects';
 import { NetworkStore } from '../networks/network-store';
 import { allFindings, findingsOfCases } from '../results/finding-list';
+import { gaugeNotes } from '../results/gauges/gauge-finding-list';
+import { GaugeOutlooks } from '../results/gauges/gauge-outlook';
 import { FindingsList } from '../results/findings-list/findings-list';
 import { ComparisonPanel } from './comparison/comparison-panel';
 import { DrawingComparison } from './comparison/drawing-comparison';
@@ -29,12 +31,15 @@ import { FindingsHeight, keptFindingsHeight } from './findings-height';
 import { Inspector } from './inspector/inspector';
 import { KeyList } from './key-list';
 import { zoneOf } from '@riseback/figures';
+import { gaugeIdOf, gaugeKey } from './model/gauge-keys';
 import { NodeArranging } from './node-arranging';
 import { PlanStore } from './plan/plan-store';
 import { PlanTool } from './plan/plan-tool';
 import { DeletePrompt } from './sheet/delete-prompt';
 import { DrawingSheet } from './sheet/drawing-sheet';
 import { ElementMoving } from './sheet/element-moving';
+import { GaugePlacing } from './sheet/gauge-placing';
+import { GaugeSliding } from './sheet/gauge-sliding';
 import { NodePlacing } from './sheet/node-placing';
 import { PipeDrawing } from './sheet/pipe-drawing';
 import { PipeGrabbing } from './sheet/pipe-grabbing';
@@ -66,6 +71,9 @@ const NARROW = '(width < 720px)';
     DrawingScene,
     DrawingState,
     ElementMoving,
+    GaugeOutlooks,
+    GaugePlacing,
+    GaugeSliding,
     NodeArranging,
     NodePlacing,
     PipeDrawing,
@@ -85,6 +93,7 @@ export class DrawingPage {
   protected readonly scene = inject(DrawingScene);
   protected readonly comments = inject(CommentStore);
   protected readonly planTool = inject(PlanTool);
+  private readonly gauges = inject(GaugeOutlooks);
   protected readonly comparison = inject(DrawingComparison);
 
   /** From the address: the element looked at. */
@@ -101,9 +110,11 @@ export class DrawingPage {
     const document = this.store.document();
     if (document === null) return [];
     const sources = { document, topology: this.store.topology(), units: this.store.units() };
-    return this.store.showsWorst()
+    const found = this.store.showsWorst()
       ? findingsOfCases({ ...sources, outcomes: this.store.caseOutcomes() })
       : allFindings({ ...sources, outcome: this.store.outcome() });
+    // notes come last in the list, and what is said of instruments after what is said of the plant
+    return [...found, ...gaugeNotes(document, this.gauges.findings(), this.store.units())];
   });
   /** Said beside each finding where several cases stand together. */
   protected readonly nameOfCase = computed(() =>
@@ -114,7 +125,10 @@ export class DrawingPage {
     return (position: Position) => zoneOf(position, sheet);
   });
   protected readonly unsolved = computed(() => this.store.outcome() === null);
-  protected readonly currentId = computed(() => this.state.chosenId() ?? '');
+  protected readonly currentId = computed(() => {
+    const chosen = this.state.chosenId() ?? '';
+    return gaugeIdOf(chosen) ?? chosen;
+  });
 
   constructor() {
     effect(() => {
@@ -140,7 +154,7 @@ export class DrawingPage {
       if (this.narrow) this.inspectorOpen.set(chosen !== null);
     });
     effect(() => {
-      if (this.state.draft() !== null || this.state.fieldsAsked() > 0) this.inspectorOpen.set(true);
+      if (this.state.asking() || this.state.fieldsAsked() > 0) this.inspectorOpen.set(true);
     });
     const plan = inject(PlanStore);
     effect(() => {
@@ -149,9 +163,11 @@ export class DrawingPage {
   }
 
   protected open(elementId: string): void {
-    if (!this.scene.has(elementId)) return;
-    this.state.select(elementId);
-    this.state.focusOn(elementId);
+    // a finding names a gauge by its own id
+    const id = [elementId, gaugeKey(elementId)].find((candidate) => this.scene.has(candidate));
+    if (id === undefined) return;
+    this.state.select(id);
+    this.state.focusOn(id);
   }
 
   /** Of the case that is shown, unless the finding is of another. */

@@ -14,8 +14,12 @@ import {
   pipesAt,
   withDisplaced,
 } from './model/drawn-network';
+import { type DrawnGauge, drawnGauges, type Sliding } from './model/drawn-gauges';
 import { type NodeView, nodeView, type PipeView, pipeView, type SceneResults } from './model/element-views';
+import { gaugeName } from './model/gauge-name';
+import { type GaugeView, gaugeView } from './model/gauge-views';
 import { keptDrawing } from './model/kept-drawing';
+import type { Walked } from './model/navigation';
 import { ViewCache } from './model/view-cache';
 
 /** The network as it is drawn: document, results and what the person does to it, joined. In the drawing page's `providers`. */
@@ -25,6 +29,7 @@ export class DrawingScene {
   private readonly state = inject(DrawingState);
   private readonly knownNodes = new ViewCache<DrawnNode, NodeView>();
   private readonly knownPipes = new ViewCache<DrawnPipe, PipeView>();
+  private readonly knownGauges = new ViewCache<DrawnGauge, GaugeView>();
 
   private readonly drawn = linkedSignal<DrawnNetwork, DrawnNetwork>({
     source: () => {
@@ -43,6 +48,10 @@ export class DrawingScene {
     const still = displaced.nodes.size === 0 && displaced.bends.size === 0;
     return still ? this.settled() : withDisplaced(this.settled(), displaced);
   });
+  /** By their names on the sheet (gauge-keys). */
+  readonly gauges = computed(() => this.gaugesOn(this.settled()));
+  /** All that the keyboard can go to. */
+  readonly walked = computed((): Walked => ({ ...this.settled(), gauges: this.gauges() }));
   readonly empty = computed(() => this.settled().nodes.size === 0);
   readonly sheet = computed(() => {
     const { nodes, pipes } = this.settled();
@@ -110,6 +119,25 @@ export class DrawingScene {
       };
     });
   });
+  readonly gaugeViews = computed((): ReadonlyMap<string, GaugeView> => {
+    const [document, units, selection, sliding] = [
+      this.store.document(),
+      this.store.units(),
+      this.state.selection(),
+      this.state.mode(),
+    ];
+    if (document === null) return NO_GAUGES;
+    const gauges = this.gaugesOn(this.network(), sliding.kind === 'sliding' ? sliding : undefined);
+    return this.knownGauges.all(gauges, (drawn) => {
+      const { gauge, tap, towards, stemStart } = drawn;
+      const selected = selection.has(drawn.id);
+      const name = gaugeName(gauge, document, selected, units);
+      return {
+        basis: [gauge, tap.x, tap.y, towards.x, towards.y, stemStart, name],
+        make: () => gaugeView(drawn, name),
+      };
+    });
+  });
   /** Where pipes cross without a junction; while something is moved, as before it. */
   readonly crossings = computed(() => crossings(this.lines().values()));
 
@@ -123,19 +151,20 @@ export class DrawingScene {
 
   /** The element with the keyboard, or the first where none had it: the drawing's one tab stop. */
   readonly tabStop = computed(() => {
-    const { nodes, pipes } = this.settled();
     const focused = this.state.focusId();
-    if (focused !== null && (nodes.has(focused) || pipes.has(focused))) return focused;
+    if (focused !== null && this.has(focused)) return focused;
     return trapsFirst(this.nodeViews()) ?? null;
   });
 
   has(id: string): boolean {
-    return this.settled().nodes.has(id) || this.settled().pipes.has(id);
+    return this.settled().nodes.has(id) || this.settled().pipes.has(id) || this.gauges().has(id);
   }
 
   /** What a sentence calls an element: its tag, or its kind and id. */
   tagOf(id: string): string {
     const { nodes, pipes } = this.settled();
+    const gauge = this.gauges().get(id)?.gauge;
+    if (gauge !== undefined) return gauge.tag ?? `gauge ${gauge.id}`;
     const element = nodes.get(id)?.node ?? pipes.get(id)?.pipe;
     if (element === undefined) return id;
     if (isPipe(element)) return `pipe ${nameOf(element)}`;
@@ -143,9 +172,16 @@ export class DrawingScene {
   }
 
   nameOf(id: string): string {
-    return this.nodeViews().get(id)?.name ?? this.pipeViews().get(id)?.name ?? id;
+    return this.nodeViews().get(id)?.name ?? this.pipeViews().get(id)?.name ?? this.gaugeViews().get(id)?.name ?? id;
+  }
+
+  private gaugesOn(network: DrawnNetwork, sliding?: Sliding): ReadonlyMap<string, DrawnGauge> {
+    const document = this.store.document();
+    return document === null || document.gauges.size === 0 ? NO_GAUGES : drawnGauges(document, network, sliding);
   }
 }
+
+const NO_GAUGES: ReadonlyMap<string, never> = new Map<string, never>();
 
 /** All that results say of an element. What says the same after a solve as before it is the same object. */
 function saidOf(id: string, { traps, nodes, pipes, warnings, isolated, caseNameOf }: SceneResults): readonly unknown[] {

@@ -1,6 +1,7 @@
 import { computed, Injectable, signal } from '@angular/core';
 import type { NodeKind, Position } from '@riseback/network';
 import type { ColouredBy } from '@riseback/figures';
+import type { GaugeDraft } from './model/gauge-draft';
 import { type Displaced, NOTHING_DISPLACED } from './model/drawn-network';
 import type { PipeGrip } from './model/pipe-shape';
 
@@ -9,6 +10,10 @@ export type Mode =
   | { readonly kind: 'idle' }
   /** Waiting for the place of a new node. */
   | { readonly kind: 'placing'; readonly what: NodeKind }
+  /** Waiting for the element that a new gauge is to tap. */
+  | { readonly kind: 'tapping' }
+  /** Moving a gauge along its pipe by keys, before it is set down. */
+  | { readonly kind: 'sliding'; readonly id: string; readonly distanceM: number }
   /** Waiting for the ends of a new pipe; `from` is null until the first is chosen. */
   | {
       readonly kind: 'piping';
@@ -45,6 +50,9 @@ export class DrawingState {
   readonly pointedAt = signal<string | null>(null);
   readonly mode = signal<Mode>(IDLE);
   readonly draft = signal<Draft | null>(null);
+  readonly gaugeDraft = signal<GaugeDraft | null>(null);
+  /** Fields of something new are being asked for. */
+  readonly asking = computed(() => this.draft() !== null || this.gaugeDraft() !== null);
   readonly displaced = signal<Displaced>(NOTHING_DISPLACED);
   readonly colouredBy = signal<ColouredBy>('pressure');
   readonly zoom = signal(1);

@@ -8,6 +8,7 @@ import { DrawingState, IDLE } from './drawing-state';
 import { ArrangeMenu } from './menus/arrange-menu';
 import { NodeArranging } from './node-arranging';
 import { PlanStore } from './plan/plan-store';
+import { GaugePlacing } from './sheet/gauge-placing';
 import { NodePlacing } from './sheet/node-placing';
 import { PipeDrawing } from './sheet/pipe-drawing';
 import { ElementIcon } from './symbols/element-icon';
@@ -37,6 +38,7 @@ export class DrawingTray {
   protected readonly arranging = inject(NodeArranging);
   private readonly pipes = inject(PipeDrawing);
   private readonly placing = inject(NodePlacing);
+  protected readonly gauges = inject(GaugePlacing);
 
   private readonly menuTrigger = viewChild<MatMenuTrigger>('placeTrigger');
 
@@ -46,6 +48,7 @@ export class DrawingTray {
   protected readonly chosenTool = computed(() => {
     const mode = this.state.mode();
     if (mode.kind === 'placing') return mode.what;
+    if (mode.kind === 'tapping') return 'gauge';
     return mode.kind === 'piping' ? 'pipe' : null;
   });
 
@@ -83,6 +86,11 @@ export class DrawingTray {
     if (byKey) this.state.focusOn(focused);
   }
 
+  protected chooseGauge(event: MouseEvent): void {
+    if (event.detail === 0) this.gauges.onFocus();
+    else this.gauges.awaitClick();
+  }
+
   /** Its panel is the network's own, which is there while nothing is selected. */
   protected openPlan(): void {
     this.state.select();
@@ -90,7 +98,7 @@ export class DrawingTray {
   }
 
   protected afterMenu(): void {
-    if (this.state.draft() === null) this.state.focusOn(this.state.focusId());
+    if (!this.state.asking()) this.state.focusOn(this.state.focusId());
   }
 }
 

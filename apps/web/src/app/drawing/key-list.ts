@@ -45,6 +45,7 @@ const GROUPS: readonly KeyGroup[] = [
     keys: [
       ['T, J, R, V, U', 'a trap, junction, receiver, flash vessel, pumped inlet beside the focus'],
       ['Insert', 'the same as a menu'],
+      ['G', 'a gauge on the element or pipe with the focus'],
       ['P', 'a pipe from here: arrows or a typed tag choose its end, Enter makes it'],
     ],
   },
@@ -54,6 +55,7 @@ const GROUPS: readonly KeyGroup[] = [
       ['Enter', 'the fields of the element; Escape comes back'],
       ['M', 'move: arrows one step, Shift ten, Enter sets down, Escape puts back'],
       ['M on a pipe', 'move a bend: comma and full stop choose which, Delete takes it out'],
+      ['M on a gauge', 'move it along its pipe: arrows one step, Shift ten, Enter sets down'],
       ['B on a pipe', 'a new bend: arrows move what lies behind it aside'],
       ['Delete', 'delete, after saying what goes along'],
       ['Ctrl+C, Ctrl+X, Ctrl+V', 'copy, cut, paste, also in another network'],

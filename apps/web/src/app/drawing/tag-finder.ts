@@ -84,7 +84,11 @@ export class TagFinder {
   protected go(event: Event, typed: string): void {
     event.preventDefault();
     const { nodes, pipes } = this.scene.settled();
-    const elements = [...[...nodes.values()].map(({ node }) => node), ...[...pipes.values()].map(({ pipe }) => pipe)];
+    const elements = [
+      ...[...nodes.values()].map(({ node }) => node),
+      ...[...pipes.values()].map(({ pipe }) => pipe),
+      ...[...this.scene.gauges().values()].map(({ id, gauge }) => ({ id, tag: gauge.tag ?? gauge.id })),
+    ];
     const found = findByTag(
       elements.map(({ id, tag }) => ({ id, tag })),
       typed,

@@ -1,11 +1,11 @@
 import { ChangeDetectionStrategy, Component, computed, inject, input, linkedSignal, signal } from '@angular/core';
 import { ActivatedRoute, Router, RouterLink } from '@angular/router';
-import type { SolveResult } from '@riseback/contracts';
 import { type NetworkDocument, toFile } from '@riseback/network';
-import { ledger, liftProfile, type SolveResult as Solved } from '@riseback/solver';
+import { ledger, liftProfile } from '@riseback/solver';
 import { NetworkStore } from '../networks/network-store';
 import { SessionStore } from '../session/session-store';
 import { ProblemBanner } from '../shared/problem-banner/problem-banner';
+import { asSolved } from './as-solved';
 import { allFindings, findingsOfCases } from './finding-list';
 import { FindingsList } from './findings-list/findings-list';
 import { bandsAlong, pressureRamp, pressuresOf } from '@riseback/figures';
@@ -159,9 +159,4 @@ export class LedgerPage {
       queryParamsHandling: 'merge',
     });
   }
-}
-
-/** The contract's result is the solver's, but that an absent key may also be undefined there. */
-function asSolved(result: SolveResult): Solved {
-  return result as Solved;
 }

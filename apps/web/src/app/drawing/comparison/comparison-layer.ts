@@ -40,7 +40,7 @@ export class ComparisonLayer {
     const laid = this.labels().flatMap(({ key, candidates }) => candidates[this.placed().get(key) ?? -1] ?? []);
     const { nodes, pipes } = this.subject();
     return [
-      ...labelObstacles(nodes.values(), pipes.values(), this.zoom()),
+      ...labelObstacles(nodes.values(), pipes.values(), this.scene.gaugeViews().values(), this.zoom()),
       ...laid,
       ...this.commentMarks().map(({ box }) => box),
     ];

@@ -18,15 +18,19 @@ import { CommentsTab } from '../../comments/comments-tab';
 import { elementOf } from '../../comments/comment-subjects';
 import { NetworkStore } from '../../networks/network-store';
 import { type Status, StatusMark } from '../../shared/status-mark/status-mark';
+import { DrawingCommands } from '../drawing-commands';
 import { DrawingScene } from '../drawing-scene';
 import { DrawingState } from '../drawing-state';
 import { isPipe, KIND_WORDS, nameOf, TRAP_TYPE_WORDS } from '../../shared/element-words';
 import { DeletePrompt } from '../sheet/delete-prompt';
 import { ElementIcon } from '../symbols/element-icon';
+import { placeWords } from '../model/gauge-name';
+import { GaugePanel } from './gauge-panel';
 import { InputsTab } from './inputs-tab';
 import { ModelTab } from './model-tab';
 import { NetworkPanel } from './network-panel';
 import { NewElementForm } from './new-element-form';
+import { NewGaugeForm } from './new-gauge-form';
 import { ResultTab } from './result-tab';
 
 const TABS = { result: 'Result', inputs: 'Inputs', model: 'Model', comments: 'Comments' } as const;
@@ -38,12 +42,14 @@ type Tab = keyof typeof TABS;
   imports: [
     CommentsTab,
     ElementIcon,
+    GaugePanel,
     InputsTab,
     MakeCase,
     MatButton,
     ModelTab,
     NetworkPanel,
     NewElementForm,
+    NewGaugeForm,
     ResultTab,
     RouterLink,
     StatusMark,
@@ -58,8 +64,10 @@ export class Inspector {
   private readonly scene = inject(DrawingScene);
   protected readonly comments = inject(CommentStore);
   private readonly deletePrompt = inject(DeletePrompt);
+  private readonly commands = inject(DrawingCommands);
 
   private readonly inputs = viewChild(InputsTab);
+  private readonly gaugePanel = viewChild(GaugePanel);
   private readonly commentsTab = viewChild(CommentsTab);
 
   private readonly wantedTab = signal<Tab>('result');
@@ -68,6 +76,11 @@ export class Inspector {
     if (chosen === null) return null;
     const { nodes, pipes } = this.scene.settled();
     return nodes.get(chosen)?.node ?? pipes.get(chosen)?.pipe ?? null;
+  });
+  protected readonly gauge = computed(() => this.scene.gauges().get(this.state.chosenId() ?? '')?.gauge ?? null);
+  protected readonly gaugePlace = computed(() => {
+    const [gauge, document] = [this.gauge(), this.store.document()];
+    return gauge === null || document === null ? '' : `Gauge ${placeWords(gauge, document, this.store.units())}`;
   });
   protected readonly head = computed(() => {
     const element = this.element();
@@ -113,13 +126,15 @@ export class Inspector {
     return element === null || isPipe(element) || element.kind !== 'trap' ? null : element;
   });
 
+  protected readonly mayRemove = computed(() => this.commands.mayRemove(this.state.selection()));
+
   constructor() {
     const injector = inject(Injector);
     effect(() => {
       if (this.state.fieldsAsked() === 0) return;
       untracked(() => {
         this.wantedTab.set('inputs');
-        afterNextRender(() => this.inputs()?.focusFirst(), { injector });
+        afterNextRender(() => (this.gaugePanel() ?? this.inputs())?.focusFirst(), { injector });
       });
     });
     effect(() => {

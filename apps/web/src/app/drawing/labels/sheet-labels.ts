@@ -2,9 +2,10 @@ import type { Position } from '@riseback/network';
 import { type DisplayUnits, formatQuantity, type QuantityKind } from '@riseback/units';
 import { sizeWords } from '../model/accessible-name';
 import { nameOf } from '../../shared/element-words';
+import type { GaugeView } from '../model/gauge-views';
 import type { Concern, NodeView, PipeView, Side } from '../model/element-views';
 import { longestPiece, middle, pieces } from '../../shared/geometry';
-import type { AreaOutline, Box, LabelRequest } from '@riseback/figures';
+import { type AreaOutline, type Box, GAUGE_DIAL, GAUGE_STEM, type LabelRequest } from '@riseback/figures';
 import { symbolScale } from '../model/viewport';
 
 export interface LabelLine {
@@ -28,7 +29,7 @@ export interface SheetLabel extends LabelRequest {
  * From which zoom on each kind of label shows; the text keeps its size, so there must be room for it. Values come before tags: what
  * stands against each trap is what the sheet is for, and four digits fit where a tag does not.
  */
-const FROM_ZOOM = { values: 0.45, lifts: 0.45, tags: 0.7, pipes: 1.4, cases: 1.4, flows: 2 } as const;
+const FROM_ZOOM = { values: 0.45, lifts: 0.45, tags: 0.7, gauges: 0.9, pipes: 1.4, cases: 1.4, flows: 2 } as const;
 export const LINE_HEIGHT = 14;
 const MARK_WIDTH = 15;
 const GAP = 4;
@@ -46,6 +47,7 @@ const SYMBOL_REACH: Readonly<Record<NodeView['node']['kind'], Readonly<{ x: numb
 interface Subject {
   readonly nodes: Iterable<NodeView>;
   readonly pipes: Iterable<PipeView>;
+  readonly gauges: Iterable<GaugeView>;
   readonly areas: readonly AreaOutline[];
   readonly selected: ReadonlySet<string>;
   /** Pointed at or focused: shows its label at any zoom. */
@@ -57,7 +59,7 @@ interface Subject {
  * @param kind of the values, which are what is coloured
  */
 export function sheetLabels(
-  { nodes, pipes, areas, selected, pointedAt }: Subject,
+  { nodes, pipes, gauges, areas, selected, pointedAt }: Subject,
   zoom: number,
   kind: QuantityKind,
   units: DisplayUnits,
@@ -79,16 +81,30 @@ export function sheetLabels(
     const tag = chosen || zoom >= FROM_ZOOM.pipes ? pipeLabel(view, zoom, units) : undefined;
     if (tag !== undefined) wanted.push({ ...tag, right: chosen ? 0 : 8 });
   }
+  for (const view of gauges) {
+    const chosen = selected.has(view.id) || pointedAt.has(view.id);
+    if (chosen || zoom >= FROM_ZOOM.gauges) wanted.push({ ...gaugeLabel(view, scale, zoom), right: chosen ? 0 : 3 });
+  }
   return wanted.sort((a, b) => a.right - b.right);
 }
 
 /** What labels must keep clear of: symbols and washes. */
-export function labelObstacles(nodes: Iterable<NodeView>, pipes: Iterable<PipeView>, zoom: number): Box[] {
+export function labelObstacles(
+  nodes: Iterable<NodeView>,
+  pipes: Iterable<PipeView>,
+  gauges: Iterable<GaugeView>,
+  zoom: number,
+): Box[] {
   const scale = symbolScale(zoom) * zoom;
   const boxes: Box[] = [];
   for (const view of nodes) {
     const { x, y } = reach(view, scale);
     boxes.push({ x: view.at.x * zoom - x, y: view.at.y * zoom - y, width: 2 * x, height: 2 * y });
+  }
+  for (const view of gauges) {
+    const { x, y } = dialAt(view, scale, zoom);
+    const reach = GAUGE_DIAL * scale;
+    boxes.push({ x: x - reach, y: y - reach, width: 2 * reach, height: 2 * reach });
   }
   const half = 5 * scale;
   for (const { drawn } of pipes) {
@@ -212,6 +228,29 @@ function liftLabel(
       ...places.map((at) => beside(at, 'left', left, lines, zoom)),
     ],
   };
+}
+
+/** Beside the dial, on the side away from what it taps first. */
+function gaugeLabel(view: GaugeView, scale: number, zoom: number): SheetLabel {
+  const lines: LabelLine[] = [{ text: nameOf(view.gauge), look: 'tag', concern: null }];
+  const dial = dialAt(view, scale, zoom);
+  const reach = (GAUGE_DIAL + 1) * scale;
+  const { towards } = view;
+  const outer: Side = towards.y < -0.5 ? 'up' : towards.y > 0.5 ? 'down' : towards.x > 0 ? 'right' : 'left';
+  const order = [...new Set<Side>([outer, 'right', 'left', 'up', 'down'])];
+  const at = { x: dial.x / zoom, y: dial.y / zoom };
+  return {
+    key: `g:${view.id}`,
+    elementId: view.id,
+    lines,
+    candidates: order.map((side) => beside(at, side, { x: reach, y: reach }, lines, zoom)),
+  };
+}
+
+/** The middle of a dial, sheet coordinates times zoom: stems keep the size of symbols. */
+function dialAt({ tap, towards, stemStart }: GaugeView, scale: number, zoom: number): Position {
+  const reach = (stemStart + GAUGE_STEM) * scale;
+  return { x: tap.x * zoom + towards.x * reach, y: tap.y * zoom + towards.y * reach };
 }
 
 /** In the outline, at the corner that is free. */

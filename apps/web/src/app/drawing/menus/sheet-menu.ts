@@ -8,9 +8,12 @@ import { DrawingClipboard } from '../drawing-clipboard';
 import { DrawingScene } from '../drawing-scene';
 import { DrawingState } from '../drawing-state';
 import { shownBends } from '../model/drawn-network';
+import { gaugeIdOf } from '../model/gauge-keys';
 import { NodeArranging } from '../node-arranging';
 import { DeletePrompt } from '../sheet/delete-prompt';
 import { ElementMoving } from '../sheet/element-moving';
+import { GaugePlacing } from '../sheet/gauge-placing';
+import { GaugeSliding } from '../sheet/gauge-sliding';
 import { NodePlacing } from '../sheet/node-placing';
 import { PipeDrawing } from '../sheet/pipe-drawing';
 import type { Target } from '../sheet/sheet-pointer';
@@ -62,6 +65,8 @@ export class SheetMenu {
   private readonly moving = inject(ElementMoving);
   private readonly pipes = inject(PipeDrawing);
   private readonly placing = inject(NodePlacing);
+  protected readonly gauges = inject(GaugePlacing);
+  private readonly sliding = inject(GaugeSliding);
 
   private readonly trigger = viewChild.required(MatMenuTrigger);
 
@@ -74,9 +79,10 @@ export class SheetMenu {
   /** The command took the keyboard elsewhere. */
   private keyboardTaken = false;
 
-  protected readonly kind = computed((): 'node' | 'pipe' | 'sheet' => {
+  protected readonly kind = computed((): 'node' | 'pipe' | 'gauge' | 'sheet' => {
     const { id } = this.target();
     if (id === null || !this.scene.has(id)) return 'sheet';
+    if (this.state.selection().size < 2 && gaugeIdOf(id) !== undefined) return 'gauge';
     // several things are handled as elements are, whichever of them was pointed at
     return this.scene.settled().nodes.has(id) || this.state.selection().size > 1 ? 'node' : 'pipe';
   });
@@ -91,6 +97,7 @@ export class SheetMenu {
     const node = id === null ? undefined : this.scene.settled().nodes.get(id)?.node;
     return this.state.selection().size === 1 && node !== undefined && node.kind !== 'receiver';
   });
+  protected readonly onlyOne = computed(() => this.state.selection().size < 2);
   protected readonly moveWords = computed(() => {
     const { id } = this.target();
     const pipe = id === null ? undefined : this.scene.settled().pipes.get(id);
@@ -110,7 +117,7 @@ export class SheetMenu {
   }
 
   protected closed(): void {
-    if (!this.keyboardTaken && this.state.draft() === null) this.state.focusOn(this.state.focusId());
+    if (!this.keyboardTaken && !this.state.asking()) this.state.focusOn(this.state.focusId());
   }
 
   protected openFields(): void {
@@ -127,6 +134,18 @@ export class SheetMenu {
   protected move(): void {
     const { id } = this.target();
     if (id !== null) this.moving.start(id);
+  }
+
+  protected slide(): void {
+    const { id } = this.target();
+    if (id !== null) this.sliding.start(id);
+  }
+
+  /** Where the pipe was pointed at, or half-way along it. */
+  protected placeGauge(): void {
+    this.keyboardTaken = true;
+    const { id } = this.target();
+    if (id !== null) this.gauges.on(id, this.pointedPlace());
   }
 
   protected addBend(): void {

@@ -1,7 +1,13 @@
 import type { Position } from '@riseback/network';
+import type { DrawnGauge } from './drawn-gauges';
 import type { DrawnNetwork } from './drawn-network';
 
 export type Direction = 'left' | 'right' | 'up' | 'down';
+
+/** What the keyboard goes about in: the drawing and, where it has them, its gauges. */
+export interface Walked extends DrawnNetwork {
+  readonly gauges?: ReadonlyMap<string, DrawnGauge>;
+}
 
 interface Place {
   readonly id: string;
@@ -12,15 +18,15 @@ interface Place {
 export type Reversed = (pipeId: string) => boolean;
 
 /** Every element with the place where it is focused. */
-export function places({ nodes, pipes }: DrawnNetwork): Place[] {
-  return [...nodes.values(), ...pipes.values()];
+export function places({ nodes, pipes, gauges }: Walked): Place[] {
+  return [...nodes.values(), ...pipes.values(), ...(gauges?.values() ?? [])];
 }
 
 /**
  * The nearest element within 45 degrees of a direction; equal distances go to the lower id.
  * @returns undefined when nothing lies that way
  */
-export function nearestInDirection(network: DrawnNetwork, fromId: string, direction: Direction): string | undefined {
+export function nearestInDirection(network: Walked, fromId: string, direction: Direction): string | undefined {
   const from = placeOf(network, fromId);
   if (from === undefined) return undefined;
   let best: { id: string; distance: number } | undefined;
@@ -36,21 +42,25 @@ export function nearestInDirection(network: DrawnNetwork, fromId: string, direct
 }
 
 /** With the flow: from a node to the pipe that drains it, from a pipe to the node it drains to. */
-export function downstreamOf(network: DrawnNetwork, id: string, reversed: Reversed): string | undefined {
+export function downstreamOf(network: Walked, id: string, reversed: Reversed): string | undefined {
+  const tapped = tappedBy(network, id);
+  if (tapped !== undefined) return tapped;
   const drawn = network.pipes.get(id);
   if (drawn !== undefined) return reversed(id) ? drawn.pipe.from : drawn.pipe.to;
   return drainingPipes(network, id, reversed)[0];
 }
 
 /** Against the flow: from a node to the first pipe entering it, from a pipe to the node it comes from. */
-export function upstreamOf(network: DrawnNetwork, id: string, reversed: Reversed): string | undefined {
+export function upstreamOf(network: Walked, id: string, reversed: Reversed): string | undefined {
+  const tapped = tappedBy(network, id);
+  if (tapped !== undefined) return tapped;
   const drawn = network.pipes.get(id);
   if (drawn !== undefined) return reversed(id) ? drawn.pipe.to : drawn.pipe.from;
   return feedingPipes(network, id, reversed)[0];
 }
 
 /** From one pipe entering a node to the next one, round and round; from a node to the first. */
-export function nextEntering(network: DrawnNetwork, id: string, reversed: Reversed): string | undefined {
+export function nextEntering(network: Walked, id: string, reversed: Reversed): string | undefined {
   const node = network.pipes.has(id) ? downstreamOf(network, id, reversed) : id;
   if (node === undefined) return undefined;
   const feeding = feedingPipes(network, node, reversed);
@@ -58,7 +68,7 @@ export function nextEntering(network: DrawnNetwork, id: string, reversed: Revers
 }
 
 /** The node of fixed pressure at the end of the walk from an element; the network's first receiver where the walk ends before one. */
-export function endOfWalk(network: DrawnNetwork, id: string | undefined, reversed: Reversed): string | undefined {
+export function endOfWalk(network: Walked, id: string | undefined, reversed: Reversed): string | undefined {
   const seen = new Set<string>();
   let here = id;
   while (here !== undefined && !seen.has(here)) {
@@ -71,14 +81,15 @@ export function endOfWalk(network: DrawnNetwork, id: string | undefined, reverse
 }
 
 /** A trap upstream of an element, the nearest by steps; the network's first trap where none feeds it. */
-export function trapAbove(network: DrawnNetwork, id: string | undefined, reversed: Reversed): string | undefined {
+export function trapAbove(network: Walked, id: string | undefined, reversed: Reversed): string | undefined {
   const queue = id === undefined ? [] : [id];
   const seen = new Set(queue);
   for (let here = queue.shift(); here !== undefined; here = queue.shift()) {
     if (network.nodes.get(here)?.node.kind === 'trap') return here;
-    const above = network.pipes.has(here)
-      ? [upstreamOf(network, here, reversed)]
-      : feedingPipes(network, here, reversed);
+    const above =
+      network.pipes.has(here) || network.gauges?.has(here) === true
+        ? [upstreamOf(network, here, reversed)]
+        : feedingPipes(network, here, reversed);
     for (const next of above) {
       if (next === undefined || seen.has(next)) continue;
       seen.add(next);
@@ -104,8 +115,14 @@ export function findByTag(
   return starting;
 }
 
-export function placeOf({ nodes, pipes }: DrawnNetwork, id: string): Position | undefined {
-  return (nodes.get(id) ?? pipes.get(id))?.at;
+export function placeOf({ nodes, pipes, gauges }: Walked, id: string): Position | undefined {
+  return (nodes.get(id) ?? pipes.get(id) ?? gauges?.get(id))?.at;
+}
+
+/** From a gauge, with the flow or against it, the keyboard goes to what it taps. */
+function tappedBy({ gauges }: Walked, id: string): string | undefined {
+  const gauge = gauges?.get(id)?.gauge;
+  return gauge?.node ?? gauge?.pipe;
 }
 
 function drainingPipes({ leaving, entering }: DrawnNetwork, node: string, reversed: Reversed): string[] {

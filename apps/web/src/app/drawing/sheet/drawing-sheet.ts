@@ -21,12 +21,15 @@ import { DrawingState } from '../drawing-state';
 import { GraphCanvas } from '../graph-canvas/graph-canvas';
 import { LabelLayer } from '../labels/label-layer';
 import type { NodeView, PipeView } from '../model/element-views';
+import { gaugeIdOf } from '../model/gauge-keys';
+import type { GaugeView } from '../model/gauge-views';
 import { SheetMenu } from '../menus/sheet-menu';
 import { type Direction, placeOf } from '../model/navigation';
 import { boundsOf, needsOverview } from '../model/overview';
 import { centreToShow, symbolScale, toScreen, toSheet } from '../model/viewport';
 import { PlanLayer } from '../plan/plan-layer';
 import { PlanOverlay } from '../plan/plan-overlay';
+import { GaugeMark } from '../symbols/gauge-mark';
 import { NodeMark } from '../symbols/node-mark';
 import { PipeMark } from '../symbols/pipe-mark';
 import { ColourLegend } from './colour-legend';
@@ -49,6 +52,7 @@ const FOLLOW_MARGIN = 48;
   imports: [
     ColourLegend,
     ComparisonLayer,
+    GaugeMark,
     GraphCanvas,
     LabelLayer,
     NodeMark,
@@ -83,7 +87,11 @@ export class DrawingSheet {
 
   protected readonly viewport = computed(() => this.canvas().viewport());
   protected readonly symbolScale = computed(() => symbolScale(this.viewport().zoom));
-  protected readonly canvasNodes = computed(() => [...this.scene.settled().nodes.values()]);
+  /** Gauges come last, so that they lie over what they tap. */
+  protected readonly canvasNodes = computed(() => [
+    ...this.scene.settled().nodes.values(),
+    ...[...this.scene.gauges().values()].map(({ id, tap }) => ({ id, at: tap })),
+  ]);
   protected readonly canvasLinks = computed(() =>
     [...this.scene.settled().pipes.values()].map(({ id, pipe, points }) => ({
       id,
@@ -138,7 +146,7 @@ export class DrawingSheet {
       this.state.zoom.set(this.viewport().zoom);
     });
     effect(() => {
-      this.others.choose([...this.state.selection()]);
+      this.others.choose([...this.state.selection()].filter((id) => gaugeIdOf(id) === undefined));
     });
     inject(DestroyRef).onDestroy(() => this.others.choose(null));
     effect(() => {
@@ -191,7 +199,7 @@ export class DrawingSheet {
   /** The menu of the element with the keyboard, or of the sheet. */
   openMenu(): void {
     const id = this.scene.tabStop();
-    const place = id === null ? undefined : placeOf(this.scene.settled(), id);
+    const place = id === null ? undefined : placeOf(this.scene.walked(), id);
     const at = place === undefined ? { x: 40, y: 40 } : toScreen(place, this.viewport());
     this.menu().open(at, { id, bend: -1 }, null);
   }
@@ -216,7 +224,7 @@ export class DrawingSheet {
   }
 
   /** What is read out: the element, what is otherwise than before, its open comments, and who else has it selected. */
-  protected spoken({ id, name }: NodeView | PipeView): string {
+  protected spoken({ id, name }: NodeView | PipeView | GaugeView): string {
     return [name, this.comparison.wordsFor(id), this.comments.wordsFor(id), this.others.wordsFor(id)]
       .filter((part) => part !== '')
       .join(', ');
@@ -232,6 +240,12 @@ export class DrawingSheet {
   protected shiftOf(view: NodeView): string {
     const from = this.scene.settled().nodes.get(view.id)?.at ?? view.at;
     return `translate(${view.at.x - from.x} ${view.at.y - from.y})`;
+  }
+
+  /** What it taps is being moved, or it along its pipe. */
+  protected gaugeShift({ id, tap }: GaugeView): string {
+    const from = this.scene.gauges().get(id)?.tap ?? tap;
+    return `translate(${tap.x - from.x} ${tap.y - from.y})`;
   }
 
   protected focused(id: string): void {
@@ -271,7 +285,7 @@ export class DrawingSheet {
 
   private followFocus(): void {
     const id = this.state.focusId();
-    const place = id === null ? undefined : placeOf(this.scene.settled(), id);
+    const place = id === null ? undefined : placeOf(this.scene.walked(), id);
     if (id === null || place === undefined) {
       this.canvas().focusDrawing();
       return;

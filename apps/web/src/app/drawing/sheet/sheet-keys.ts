@@ -5,9 +5,12 @@ import { DrawingClipboard } from '../drawing-clipboard';
 import { DrawingCommands } from '../drawing-commands';
 import { DrawingScene } from '../drawing-scene';
 import { DrawingState, IDLE } from '../drawing-state';
+import { gaugeIdOf } from '../model/gauge-keys';
 import type { Direction } from '../model/navigation';
 import { DeletePrompt } from './delete-prompt';
 import { ElementMoving } from './element-moving';
+import { GaugePlacing } from './gauge-placing';
+import { GaugeSliding } from './gauge-sliding';
 import { NodePlacing } from './node-placing';
 import { PipeDrawing } from './pipe-drawing';
 import { ARROWS, WalkKeys } from './walk-keys';
@@ -40,6 +43,8 @@ export class SheetKeys {
   private readonly placing = inject(NodePlacing);
   private readonly pipes = inject(PipeDrawing);
   private readonly moving = inject(ElementMoving);
+  private readonly gaugePlacing = inject(GaugePlacing);
+  private readonly sliding = inject(GaugeSliding);
   private readonly walk = inject(WalkKeys);
 
   /** True when the key meant something here. Tab never does: it always leaves. */
@@ -56,7 +61,10 @@ export class SheetKeys {
         return this.pipes.handle(event, mode);
       case 'moving':
         return this.moving.handle(event, mode);
+      case 'sliding':
+        return this.sliding.handle(event, mode);
       case 'placing':
+      case 'tapping':
       case 'idle':
         return this.walk.handle(event) || this.selectKey(event) || this.letterKey(event, view);
     }
@@ -82,15 +90,21 @@ export class SheetKeys {
       void this.clipboard.copy(this.actedOn());
       return true;
     }
-    return this.store.mayDraw() && this.drawChord(key, event.shiftKey);
+    return this.undoChord(key, event.shiftKey) || (this.store.mayDraw() && this.drawChord(key, event.shiftKey));
+  }
+
+  /** Whoever may change anything here may take it back. */
+  private undoChord(key: string, shift: boolean): boolean {
+    if (!this.store.mayDraw() && !this.gaugePlacing.may()) return false;
+    if (key === 'y' ? shift : key !== 'z') return false;
+    if (key === 'y' || shift) this.commands.redo();
+    else this.commands.undo();
+    return true;
   }
 
   private drawChord(key: string, shift: boolean): boolean {
-    if (key === 'z' && shift) this.commands.redo();
-    else if (shift) return false;
-    else if (key === 'z') this.commands.undo();
-    else if (key === 'y') this.commands.redo();
-    else if (key === 'x') void this.clipboard.cut(this.actedOn());
+    if (shift) return false;
+    if (key === 'x') void this.clipboard.cut(this.actedOn());
     else if (key === 'v') void this.clipboard.paste();
     else if (key === 'd') this.clipboard.duplicate(this.actedOn());
     else return false;
@@ -142,11 +156,12 @@ export class SheetKeys {
 
   private letterKey(event: KeyboardEvent, view: SheetView): boolean {
     const may = this.store.mayDraw();
-    if (may && (event.key === 'Delete' || event.key === 'Backspace')) {
+    const mayPlace = may || this.gaugePlacing.may();
+    if ((event.key === 'Delete' || event.key === 'Backspace') && this.commands.mayRemove(this.actedOn())) {
       void this.deletePrompt.ask(this.actedOn());
       return true;
     }
-    if (may && event.key === 'Insert') {
+    if (mayPlace && event.key === 'Insert') {
       this.state.menuAsked.update((count) => count + 1);
       return true;
     }
@@ -169,8 +184,18 @@ export class SheetKeys {
         this.state.keysAsked.update((count) => count + 1);
         return true;
       default:
-        return may && this.drawLetter(event.key.toLowerCase());
+        return this.gaugeLetter(event.key.toLowerCase()) || (may && this.drawLetter(event.key.toLowerCase()));
     }
+  }
+
+  /** Gauges are placed and moved without leave to draw. */
+  private gaugeLetter(letter: string): boolean {
+    if (!this.gaugePlacing.may()) return false;
+    const here = this.scene.tabStop();
+    if (letter === 'g') this.gaugePlacing.onFocus();
+    else if (letter === 'm' && here !== null && gaugeIdOf(here) !== undefined) this.sliding.start(here);
+    else return false;
+    return true;
   }
 
   private drawLetter(letter: string): boolean {

@@ -47,6 +47,7 @@ export class SheetLabelling {
       {
         nodes: this.scene.nodeViews().values(),
         pipes: this.scene.pipeViews().values(),
+        gauges: this.scene.gaugeViews().values(),
         areas: this.areas(),
         selected: this.state.selection(),
         pointedAt: this.pointedAt(),
@@ -73,7 +74,12 @@ export class SheetLabelling {
     return commentMarks(new Map(at), { nodes: this.scene.nodeViews(), pipes: this.scene.pipeViews() }, this.zoom());
   });
   private readonly obstacles = computed(() => [
-    ...labelObstacles(this.scene.nodeViews().values(), this.scene.pipeViews().values(), this.zoom()),
+    ...labelObstacles(
+      this.scene.nodeViews().values(),
+      this.scene.pipeViews().values(),
+      this.scene.gaugeViews().values(),
+      this.zoom(),
+    ),
     ...this.company().map(({ tag }) => tag),
     ...this.commentMarks().map(({ box }) => box),
   ]);

@@ -8,6 +8,7 @@ import { DrawingState } from '../drawing-state';
 import { shiftNodes } from '../model/displacement';
 import { NOTHING_DISPLACED } from '../model/drawn-network';
 import { toSheet, type Viewport } from '../model/viewport';
+import { GaugePlacing } from './gauge-placing';
 import { NodePlacing } from './node-placing';
 import { Pinch, type PinchStep } from './pinch';
 import { PipeDrawing } from './pipe-drawing';
@@ -57,6 +58,7 @@ export class SheetPointer {
   private readonly commands = inject(DrawingCommands);
   private readonly pipes = inject(PipeDrawing);
   private readonly placing = inject(NodePlacing);
+  private readonly gauges = inject(GaugePlacing);
   private readonly grabbing = inject(PipeGrabbing);
 
   private gesture: Gesture | null = null;
@@ -189,6 +191,11 @@ export class SheetPointer {
     const mode = this.state.mode();
     if (mode.kind === 'placing') {
       this.placing.at(mode.what, place);
+      return;
+    }
+    if (mode.kind === 'tapping') {
+      if (id !== null) this.gauges.on(id, place);
+      else this.state.say('There is nothing to tap: click an element or a pipe, or press Escape');
       return;
     }
     if (mode.kind === 'piping') {

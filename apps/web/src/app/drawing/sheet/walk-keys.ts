@@ -47,7 +47,7 @@ export class WalkKeys {
 
   /** Undefined when there is nothing there, null when the key is no walk. */
   private nextFocus(event: KeyboardEvent): string | undefined | null {
-    const network = this.scene.settled();
+    const network = this.scene.walked();
     const here = this.scene.tabStop() ?? undefined;
     const { reversed } = this.scene;
     const direction = ARROWS[event.key];
