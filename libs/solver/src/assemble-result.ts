@@ -1,21 +1,15 @@
-import { boreAreaM2 } from '@riseback/hydraulics';
 import type { NetworkFile } from '@riseback/network';
-import { blankSaturation, fillSaturation, saturationState } from '@riseback/steam';
+import { saturationState } from '@riseback/steam';
 import { limitsInForce, type LimitsInForce } from './check-limits';
 import { ownRuns, type AverageRun } from './coincidence';
 import { atElement } from './element-failure';
-import { blankFlow, enthalpyAlong } from './flow-and-energy';
-import { fluidStateAt, temperatureAtK, vapourFraction } from './fluid-state';
-import { blankMarch } from './marched-pipes';
+import { fluidStateAt, vapourFraction } from './fluid-state';
 import { networkBands } from './network-bands';
 import { nodeQualities, type NodeQualities } from './node-qualities';
 import { failedOpen } from './open-traps';
-import { checkPipe, vesselCannotDrain } from './pipe-checks';
-import { pipeResult, type PieceEnd } from './pipe-result';
-import { fillFlow } from './pressure-walk';
-import { inletNode, outletNode } from './return-tree';
-import type { NodeResult, PipeResult, SolveResult, SolveWarning, TrapResult } from './solve-result';
-import { MeetingStreams } from './thermal-shock';
+import { vesselCannotDrain } from './pipe-checks';
+import type { NodeResult, SolveResult, SolveWarning, TrapResult } from './solve-result';
+import { tellPipes } from './tell-pipes';
 import { trapResult } from './trap-result';
 
 /** A network solved in one case, before its results are told. */
@@ -32,7 +26,7 @@ export interface Solved extends AverageRun {
 export function assembleResult(solved: Solved): SolveResult {
   const { file, tree, limits } = partsOf(solved);
   const qualities = nodeQualities(solved.state);
-  const pipes = pipesOf(solved, limits, qualities);
+  const pipes = tellPipes(solved, limits, qualities, solved.bands);
   const runs = ownRuns(solved, file.method.coincidence);
   const bands = solved.bands ? networkBands({ ...solved, ends: pipes.ends, ownRuns: runs }) : undefined;
   const models = new Map(file.trapModels.map((model) => [model.id, model]));
@@ -82,64 +76,6 @@ function partsOf({ prepared: { file }, state: { tree } }: Solved): {
 
 function addTo(warnings: SolveWarning[], warning: SolveWarning | undefined): void {
   if (warning !== undefined) warnings.push(warning);
-}
-
-interface Pipes {
-  readonly results: readonly PipeResult[];
-  readonly warnings: readonly SolveWarning[];
-  /** By pipe; of none unless bands are asked for. */
-  readonly ends: readonly (readonly PieceEnd[] | undefined)[];
-  /** What flows into junctions. */
-  readonly streams: MeetingStreams;
-  readonly leftOut: readonly string[];
-}
-
-/** What flows into a pipe, what the march gave for it, and the state at its end: filled in anew for each. */
-const flow = blankFlow();
-const marched = blankMarch();
-const downstream = blankSaturation();
-
-function pipesOf(solved: Solved, limits: LimitsInForce, { quality }: NodeQualities): Pipes {
-  const { file, geometries } = solved.prepared;
-  const { tree, flows, walk } = solved.state;
-  const { friction } = file.method;
-  const results: PipeResult[] = [];
-  const warnings: SolveWarning[] = [];
-  const ends = new Array<readonly PieceEnd[] | undefined>(solved.bands ? file.pipes.length : 0);
-  const streams = new MeetingStreams(file.nodes.length);
-  const leftOut: string[] = [];
-  file.pipes.forEach((pipe, index) => {
-    const geometry = geometries[index];
-    if (geometry === undefined || !walk.marched.has(index)) {
-      leftOut.push(pipe.id);
-      return;
-    }
-    fillFlow(flow, tree, index, geometry, flows);
-    const below = outletNode(tree, index);
-    walk.marched.fill(marched, index);
-    fillSaturation(downstream, walk.pressurePa[below] as number);
-    const { result, ends: endsOfPipe } = pipeResult({
-      pipe,
-      index,
-      geometry,
-      marched,
-      flow,
-      arrow: tree.arrow[index] as number,
-      upstreamQuality: vapourFraction(quality[inletNode(tree, index)] as number),
-      downstream,
-    });
-    results.push(result);
-    if (solved.bands) ends[index] = endsOfPipe;
-    if (flow.massFlowKgS > 0 && solved.nodes[below]?.kind === 'junction') {
-      streams.add(below, index, temperatureAtK(downstream, enthalpyAlong(flow, geometry.lengthM)));
-    }
-    const massFluxKgM2S = flow.massFlowKgS / boreAreaM2(geometry.insideDiameterM);
-    const { lengthM } = geometry;
-    const { checkValve } = pipe;
-    const found = checkPipe({ result, ends: endsOfPipe, friction, lengthM, massFluxKgM2S, checkValve, limits });
-    for (const warning of found) warnings.push(warning);
-  });
-  return { results, warnings, ends, streams, leftOut };
 }
 
 function nodeResult(solved: Solved, index: number, { quality, boilingK }: NodeQualities): NodeResult {

@@ -6,7 +6,7 @@ import { ambientLiquidEnthalpyJKg, type PipeFlow } from './flow-and-energy';
 import { flowOf } from './lift-profile';
 import { piecesAgainstFlow } from './pipe-geometry';
 import { MARCH_TOLERANCE_PA, PipeMarcher } from './pipe-march';
-import { pipeResult, type PieceEnd } from './pipe-result';
+import { pipeResult, type PieceEnd, type PieceEndRecord } from './pipe-result';
 import { walkOfTrap, type WalkedResult, type WalkStep } from './walk-of-trap';
 
 /** Both bands at a point of a lift profile, absolute pressures. */
@@ -130,7 +130,8 @@ function endsOf(marcher: PipeMarcher, step: WalkStep, flow: PipeFlow): readonly 
     piecesAgainstFlow(geometry.pieces, withArrow),
     result.downstreamPressurePa,
   );
-  return pipeResult({
+  const ends: PieceEndRecord[] = [];
+  pipeResult({
     pipe,
     index: 0,
     geometry,
@@ -139,7 +140,9 @@ function endsOf(marcher: PipeMarcher, step: WalkStep, flow: PipeFlow): readonly 
     arrow: withArrow ? 1 : -1,
     upstreamQuality: result.upstreamQuality,
     downstream: saturationState(result.downstreamPressurePa),
-  }).ends;
+    ends,
+  });
+  return ends;
 }
 
 function least(values: readonly (number | undefined)[]): number | undefined {

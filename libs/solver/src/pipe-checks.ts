@@ -1,36 +1,35 @@
-import { DRAINING_QUALITY, type FlowPattern } from '@riseback/hydraulics';
+import { boreAreaM2, DRAINING_QUALITY, type FlowPattern } from '@riseback/hydraulics';
 import type { FrictionMethod } from '@riseback/network';
 import type { LimitsInForce } from './check-limits';
 import { amount, findingWords, say } from './finding-text';
+import type { PipeGeometry } from './pipe-geometry';
 import type { PieceEnd } from './pipe-result';
 import type { PipeResult, SolveWarning } from './solve-result';
 
-/** A pipe of the result, with what the checks need beside it. */
+/** What the checks need of a pipe beside its result. */
 export interface PipeUnderCheck {
-  readonly result: PipeResult;
+  readonly geometry: PipeGeometry;
   /** By piece of its route, from the outlet up. */
   readonly ends: readonly PieceEnd[];
-  readonly friction: FrictionMethod;
-  readonly lengthM: number;
-  readonly massFluxKgM2S: number;
   readonly checkValve: boolean;
+  readonly friction: FrictionMethod;
   readonly limits: LimitsInForce;
 }
 
 const NO_WARNINGS: readonly SolveWarning[] = [];
 
 /** Every check at a pipe that carries a flow: what an engineer should know of it; nothing of one that stands still. */
-export function checkPipe(at: PipeUnderCheck): readonly SolveWarning[] {
-  if (at.result.massFlowKgS === 0) return NO_WARNINGS;
+export function checkPipe(result: PipeResult, at: PipeUnderCheck): readonly SolveWarning[] {
+  if (result.massFlowKgS === 0) return NO_WARNINGS;
   // called by name, not from a list: nearly every pipe is sound, and then these calls are all that its checks cost
-  let warnings = withFinding(NO_WARNINGS, reversed(at));
-  warnings = withFinding(warnings, choked(at));
-  warnings = withFinding(warnings, velocity(at));
-  warnings = withFinding(warnings, momentum(at));
-  warnings = withFinding(warnings, gradient(at));
-  warnings = withFinding(warnings, slug(at));
-  warnings = withFinding(warnings, uphillTwoPhase(at));
-  return withFinding(warnings, dryBasis(at));
+  let warnings = withFinding(NO_WARNINGS, reversed(result, at));
+  warnings = withFinding(warnings, choked(result));
+  warnings = withFinding(warnings, velocity(result, at));
+  warnings = withFinding(warnings, momentum(result, at));
+  warnings = withFinding(warnings, gradient(result, at));
+  warnings = withFinding(warnings, slug(result, at));
+  warnings = withFinding(warnings, uphillTwoPhase(result, at));
+  return withFinding(warnings, dryBasis(result, at));
 }
 
 function withFinding(warnings: readonly SolveWarning[], found: SolveWarning | undefined): readonly SolveWarning[] {
@@ -39,7 +38,7 @@ function withFinding(warnings: readonly SolveWarning[], found: SolveWarning | un
 
 const LARGER_BORE = say`Use a larger bore, or take some of the traps to another return.`;
 
-function reversed({ result, checkValve }: PipeUnderCheck): SolveWarning | undefined {
+function reversed(result: PipeResult, { checkValve }: PipeUnderCheck): SolveWarning | undefined {
   if (result.massFlowKgS > 0) return undefined;
   const warning = { code: 'reversed', element: result.id, value: result.massFlowKgS };
   if (checkValve) {
@@ -50,7 +49,7 @@ function reversed({ result, checkValve }: PipeUnderCheck): SolveWarning | undefi
   return { ...warning, verdict: 'watch', ...findingWords(text, say`Turn the pipe’s ends round.`) };
 }
 
-function velocity({ result, limits }: PipeUnderCheck): SolveWarning | undefined {
+function velocity(result: PipeResult, { limits }: PipeUnderCheck): SolveWarning | undefined {
   const { watchMS, failMS, liquidMS } = limits.velocity;
   const [code, element] = ['velocity', result.id];
   const value = Math.abs(result.mixtureVelocityMS);
@@ -66,25 +65,25 @@ function velocity({ result, limits }: PipeUnderCheck): SolveWarning | undefined 
   return { code, element, verdict, value, limit, ...findingWords(text, LARGER_BORE) };
 }
 
-function momentum({ result, massFluxKgM2S, limits }: PipeUnderCheck): SolveWarning | undefined {
+function momentum(result: PipeResult, { geometry, limits }: PipeUnderCheck): SolveWarning | undefined {
   const limit = limits.momentum.limitPa;
+  const massFluxKgM2S = Math.abs(result.massFlowKgS) / boreAreaM2(geometry.insideDiameterM);
   const value = massFluxKgM2S * Math.abs(result.mixtureVelocityMS);
   if (value <= limit) return undefined;
   const text = say`The mixture strikes bends and valves with ${amount('momentumFlux', value)} (density times velocity squared); above ${amount('momentumFlux', limit)} it erodes them.`;
   return { code: 'momentum', element: result.id, verdict: 'fail', value, limit, ...findingWords(text, LARGER_BORE) };
 }
 
-function gradient({ result, lengthM, limits }: PipeUnderCheck): SolveWarning | undefined {
+function gradient(result: PipeResult, { geometry, limits }: PipeUnderCheck): SolveWarning | undefined {
   const flashing = result.downstreamQuality > 0;
   const limit = flashing ? limits.gradient.flashingPaM : limits.gradient.liquidPaM;
-  const value = (result.frictionPa + result.flashPa) / lengthM;
+  const value = (result.frictionPa + result.flashPa) / geometry.lengthM;
   if (value <= limit) return undefined;
   const text = say`${flashing ? 'Friction and flash steam cost' : 'Friction costs'} ${amount('pressureGradient', value)}, fittings included; above ${amount('pressureGradient', limit)} a return is small for its load, and every trap upstream pays for it.`;
   return { code: 'gradient', element: result.id, verdict: 'watch', value, limit, ...findingWords(text, LARGER_BORE) };
 }
 
-function choked({ result }: PipeUnderCheck): SolveWarning | undefined {
-  const { id, outletPressurePa, downstreamPressurePa } = result;
+function choked({ id, outletPressurePa, downstreamPressurePa }: PipeResult): SolveWarning | undefined {
   if (outletPressurePa === undefined) return undefined;
   const text = say`The flow leaves at its critical velocity: the outlet stands at ${amount('pressure', outletPressurePa)}, ${amount('pressureDifference', outletPressurePa - downstreamPressurePa)} above what it discharges into, and nothing done downstream lowers that.`;
   return {
@@ -103,7 +102,7 @@ const SLUGGING: Readonly<Partial<Record<FlowPattern, string>>> = {
   churn: 'condensate is thrown up this rise and falls back',
 };
 
-function slug({ result, ends }: PipeUnderCheck): SolveWarning | undefined {
+function slug(result: PipeResult, { ends }: PipeUnderCheck): SolveWarning | undefined {
   for (const { pattern } of ends) {
     const words = pattern === undefined ? undefined : SLUGGING[pattern];
     if (words === undefined) continue;
@@ -115,7 +114,7 @@ function slug({ result, ends }: PipeUnderCheck): SolveWarning | undefined {
 
 const LET_FLASH_GO = say`Let the flash steam go in a vessel before this pipe, lay the run to fall, or lift the condensate with a pump.`;
 
-function uphillTwoPhase({ result, ends }: PipeUnderCheck): SolveWarning | undefined {
+function uphillTwoPhase(result: PipeResult, { ends }: PipeUnderCheck): SolveWarning | undefined {
   let value = 0;
   for (const end of ends) if (isFlashingRise(end)) value += end.riseM;
   if (value === 0) return undefined;
@@ -126,7 +125,7 @@ function uphillTwoPhase({ result, ends }: PipeUnderCheck): SolveWarning | undefi
 const ANOTHER_METHOD = say`Look at the trap’s credible band, or compute the network by a full-bore method or by flow pattern.`;
 
 /** Where the basis of dry, pitched returns is asked for more than it was made for. */
-function dryBasis({ result, ends, friction }: PipeUnderCheck): SolveWarning | undefined {
+function dryBasis(result: PipeResult, { ends, friction }: PipeUnderCheck): SolveWarning | undefined {
   if (friction !== 'flashVapour') return undefined;
   const code = 'dryBasis';
   const rise = ends.find(isFlashingRise);

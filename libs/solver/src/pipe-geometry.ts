@@ -13,6 +13,16 @@ export interface PipeGeometry {
   readonly pieces: readonly RoutePiece[];
 }
 
+/** Of no pipe: where a record that is filled in for each pipe begins. */
+export const NO_GEOMETRY: PipeGeometry = {
+  lengthM: 0,
+  insideDiameterM: 0,
+  roughnessM: 0,
+  lossCoefficientPerM: 0,
+  heatLossWM: 0,
+  pieces: [],
+};
+
 /** Each kind of fitting in a network file has its figures in libs/hydraulics; one that had none would not compile. */
 const FIGURES_OF: Readonly<Record<FittingKind, FittingName>> & Readonly<Record<FittingName, FittingKind>> = {
   elbow90: 'elbow90',

@@ -36,7 +36,7 @@ import {
   type FrictionLawName,
 } from './friction-laws';
 import { blankMarch, NO_UPPER_PIECES, type MarchRecord } from './marched-pipes';
-import type { PipeGeometry } from './pipe-geometry';
+import { NO_GEOMETRY, type PipeGeometry } from './pipe-geometry';
 import { staticGradient } from './static-gradient';
 
 export interface MarchedPipe {
@@ -96,7 +96,7 @@ type Writable<T> = { -readonly [Key in keyof T]: T[Key] };
  */
 export class PipeMarcher {
   private readonly at: Place = {
-    pipe: { lengthM: 0, insideDiameterM: 0, roughnessM: 0, lossCoefficientPerM: 0, heatLossWM: 0, pieces: [] },
+    pipe: NO_GEOMETRY,
     flow: { massFlowKgS: 0, inletEnthalpyJKg: 0, heatLossWM: 0, ambientEnthalpyJKg: 0 },
     massFluxKgM2S: 0,
     riseSlope: 0,

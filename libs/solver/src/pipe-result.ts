@@ -1,5 +1,5 @@
 import { boreAreaM2, flowPattern, type FlashingFlow, type FlowPattern } from '@riseback/hydraulics';
-import type { PipeRun, RoutePiece } from '@riseback/network';
+import type { RoutePiece } from '@riseback/network';
 import { blankSaturation, saturationState, type SaturationState } from '@riseback/steam';
 import { atElement } from './element-failure';
 import { enthalpyAlong, type PipeFlow } from './flow-and-energy';
@@ -10,7 +10,7 @@ import type { PipeResult } from './solve-result';
 
 /** A pipe whose march is done, between the nodes at its ends. */
 export interface PipeAfterMarch {
-  readonly pipe: PipeRun;
+  readonly pipe: { readonly id: string };
   readonly index: number;
   readonly geometry: PipeGeometry;
   readonly marched: MarchedPipe;
@@ -21,6 +21,8 @@ export interface PipeAfterMarch {
   readonly upstreamQuality: number;
   /** Not kept. */
   readonly downstream: SaturationState;
+  /** Filled in here, a record for each piece: those that are there already serve again. */
+  readonly ends: PieceEndRecord[];
 }
 
 /** How the flow stands at the downstream end of a piece of a pipe’s route. */
@@ -31,20 +33,20 @@ export interface PieceEnd {
   /** undefined where no map answers. */
   readonly pattern: FlowPattern | undefined;
 }
+export type PieceEndRecord = Writable<PieceEnd>;
 
 /**
- * @returns what is told of the pipe, and how the flow stands at the end of each of its pieces, from the outlet up
+ * What is told of the pipe, and in `ends` how the flow stands at the end of each of its pieces, from the outlet up.
  * @throws ElementFailure where what leaves the pipe is outside the steam properties
  */
-export function pipeResult(at: PipeAfterMarch): { readonly result: PipeResult; readonly ends: readonly PieceEnd[] } {
-  const { pipe, index, geometry, marched, flow, arrow, upstreamQuality, downstream } = at;
+export function pipeResult(at: PipeAfterMarch): PipeResult {
+  const { pipe, index, geometry, marched, flow, arrow, upstreamQuality, downstream, ends } = at;
   const choked = marched.outletPressurePa > downstream.pressurePa;
-  let ends: readonly PieceEnd[];
   let phases: Phases;
   try {
     const saturation = choked ? saturationState(marched.outletPressurePa) : downstream;
     phases = phasesAt(saturation, enthalpyAlong(flow, geometry.lengthM));
-    ends = pieceEnds(at, saturation);
+    fillEnds(at, saturation);
   } catch (error) {
     throw atElement('pipe', pipe, index, error);
   }
@@ -69,7 +71,7 @@ export function pipeResult(at: PipeAfterMarch): { readonly result: PipeResult; r
   };
   if (pattern !== undefined) result.flowPattern = pattern;
   if (choked) result.outletPressurePa = marched.outletPressurePa;
-  return { result, ends };
+  return result;
 }
 
 type Writable<T> = { -readonly [Key in keyof T]: T[Key] };
@@ -93,13 +95,12 @@ const flashing: Writable<FlashingFlow> = {
   fallSlope: NaN,
 };
 
-function pieceEnds({ geometry, marched, flow, arrow }: PipeAfterMarch, outlet: SaturationState): PieceEnd[] {
+function fillEnds({ geometry, marched, flow, arrow, ends }: PipeAfterMarch, outlet: SaturationState): void {
   flashing.massFlowKgS = flow.massFlowKgS;
   flashing.insideDiameterM = geometry.insideDiameterM;
   flashing.roughnessM = geometry.roughnessM;
   flashing.lossCoefficientPerM = geometry.lossCoefficientPerM;
   const pieces = piecesAgainstFlow(geometry.pieces, arrow === 1);
-  const ends = new Array<PieceEnd>(pieces.length);
   let endM = geometry.lengthM;
   for (let i = 0; i < pieces.length; i++) {
     const { lengthM, riseM } = pieces[i] as RoutePiece;
@@ -107,7 +108,10 @@ function pieceEnds({ geometry, marched, flow, arrow }: PipeAfterMarch, outlet: S
     flashing.quality = thermodynamicQuality(flashing.saturation, enthalpyAlong(flow, endM));
     flashing.fallSlope = -riseM / lengthM;
     endM -= lengthM;
-    ends[i] = { riseM, quality: vapourFraction(flashing.quality), pattern: flowPattern(flashing) };
+    const end = (ends[i] ??= { riseM: NaN, quality: NaN, pattern: undefined });
+    end.riseM = riseM;
+    end.quality = vapourFraction(flashing.quality);
+    end.pattern = flowPattern(flashing);
   }
-  return ends;
+  if (ends.length > pieces.length) ends.length = pieces.length;
 }
