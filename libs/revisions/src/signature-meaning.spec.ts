@@ -21,7 +21,7 @@ describe('what a signature means', () => {
   it('says first what is declared, by whom and of what', () => {
     const [approved] = signatureSentences('approved', MATTER);
     expect(approved).toBe(
-      'I, Greta Lowndes, reviewer at the site, have reviewed and approve revision B, “Washer bay”, of the network “Tern Quay” at its version 7. This ends its review and supersedes the revision approved before it.',
+      'I, Greta Lowndes, reviewer at the site, have reviewed and approve revision B, “Washer bay”, of the network “Tern Quay” at its version 7. This ends its review and supersedes any revision approved before it.',
     );
     const [reviewed] = signatureSentences('reviewed', MATTER);
     expect(reviewed).toContain('have reviewed revision B');

@@ -52,7 +52,7 @@ function declaration(meaning: SignatureMeaning, matter: SignedMatter): string {
   const what = `revision ${letter}, “${title}”, of the network “${networkName}” at its version ${networkVersion}`;
   const who = `I, ${personName}, ${role} at the site`;
   if (meaning === 'reviewed') return `${who}, have reviewed ${what}. This does not approve it.`;
-  return `${who}, have reviewed and approve ${what}. This ends its review and supersedes the revision approved before it.`;
+  return `${who}, have reviewed and approve ${what}. This ends its review and supersedes any revision approved before it.`;
 }
 
 function verdictSentence({ traps, fail, watch }: TrapVerdicts): string {
