@@ -20,7 +20,7 @@ const SIZES = [
 const PAGES: Readonly<Record<string, (network: string, empty: string, revision: string) => readonly string[]>> = {
   'around the networks': (network) => {
     const site = network.replace(/\/networks\/.*/, '');
-    const ofSite = ['', '/library', '/audit', '/people', '/mails'].map((page) => `${site}${page}`);
+    const ofSite = ['', '/library', '/settings', '/audit', '/people', '/mails'].map((page) => `${site}${page}`);
     return ['/sites', ...ofSite, '/account', '/nowhere', '/unreachable'];
   },
   'of the drawing': (network, empty) => [
@@ -95,6 +95,7 @@ test('no page is wider than its window, on a phone and at a zoom of 200 %', asyn
       '/sites',
       site,
       `${site}/library`,
+      `${site}/settings`,
       `${site}/audit`,
       '/account',
       `${network}/drawing`,

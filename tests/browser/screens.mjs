@@ -120,6 +120,7 @@ function screens({ siteId, networkId, elements }, empty) {
     { name: 'failed', path: '/sites', act: failServer },
     { name: 'account', path: '/account' },
     { name: 'library', path: `/sites/${siteId}/library` },
+    { name: 'site-settings', path: `/sites/${siteId}/settings` },
     { name: 'not-found', path: '/nowhere' },
   ];
 }

@@ -159,6 +159,14 @@ export class DrawingSheet {
         });
     });
     effect(() => {
+      // a strip or the inspector opened beside it: what is selected stays in sight
+      this.size();
+      if (this.looked)
+        untracked(() => {
+          this.bringIntoSight(this.state.chosenId());
+        });
+    });
+    effect(() => {
       const asked = this.state.zoomAsked();
       if (asked === null) return;
       untracked(() => {
@@ -285,15 +293,18 @@ export class DrawingSheet {
 
   private followFocus(): void {
     const id = this.state.focusId();
+    if (id === null || !this.bringIntoSight(id)) this.canvas().focusDrawing();
+    else this.canvas().focusElement(id);
+  }
+
+  /** Moves the view as little as it takes. False where there is no such element. */
+  private bringIntoSight(id: string | null): boolean {
     const place = id === null ? undefined : placeOf(this.scene.walked(), id);
-    if (id === null || place === undefined) {
-      this.canvas().focusDrawing();
-      return;
-    }
+    if (place === undefined) return false;
     const centre = isCovered(place, this.viewport(), this.overview())
       ? place
       : centreToShow(place, this.viewport(), FOLLOW_MARGIN);
     if (centre !== null) this.canvas().show({ zoom: this.viewport().zoom, centre });
-    this.canvas().focusElement(id);
+    return true;
   }
 }

@@ -9,7 +9,7 @@ import { type TermKey, TERMS } from './terms';
   changeDetection: ChangeDetectionStrategy.OnPush,
   template: `
     <p>
-      <span class="rb-visually-hidden">Words explained: </span>
+      <span>The words:</span>
       @for (key of of(); track key) {
         <app-term [of]="key">{{ terms[key].word }}</app-term>
       }
@@ -26,6 +26,7 @@ import { type TermKey, TERMS } from './terms';
         sans-serif;
     }
 
+    span,
     app-term {
       padding: 4px 0;
     }
