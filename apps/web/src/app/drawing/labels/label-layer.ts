@@ -1,4 +1,5 @@
 import { ChangeDetectionStrategy, Component, computed, input } from '@angular/core';
+import { lasting } from '../../shared/lasting';
 import type { Viewport } from '../model/viewport';
 import { LINE_HEIGHT, type LabelLine, type LabelPlace, type SheetLabel } from './sheet-labels';
 
@@ -16,12 +17,14 @@ interface LaidLabel {
 
 const MARK = 15;
 const BASELINE = 11;
+/** Most solves are over sooner; turning grey and back all labels would be painted twice, and the new pressures wait for it. */
+const GREY_AFTER_MS = 200;
 
 /** The labels over the sheet, in pixels of the screen whatever the zoom. The same words are in the elements' names, so readers skip it. */
 @Component({
   selector: 'app-label-layer',
   changeDetection: ChangeDetectionStrategy.OnPush,
-  host: { 'aria-hidden': 'true', '[class.stale]': 'stale()' },
+  host: { 'aria-hidden': 'true', '[class.stale]': 'grey()' },
   templateUrl: './label-layer.html',
   styleUrl: './label-layer.scss',
 })
@@ -33,6 +36,7 @@ export class LabelLayer {
   readonly chosen = input<ReadonlySet<string>>(new Set());
   /** Values wait for a solve. */
   readonly stale = input(false);
+  protected readonly grey = lasting(this.stale, GREY_AFTER_MS);
 
   protected readonly laid = computed((): LaidLabel[] =>
     this.labels().flatMap((label) => {
