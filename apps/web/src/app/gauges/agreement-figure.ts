@@ -16,7 +16,7 @@ interface Point {
   readonly name: string;
   readonly x: number;
   readonly y: number;
-  /** Ends of the whiskers: expanded uncertainties. */
+  /** Ends of the whiskers: expanded uncertainties, as far as the frame. */
   readonly x1: number;
   readonly x2: number;
   readonly y1: number;
@@ -44,15 +44,8 @@ export function agreementFigure(rows: Iterable<AgreementRow>, units: DisplayUnit
   if (judged.length === 0) return null;
   const shown = (pa: number) => toDisplay(pa, 'pressure', units);
   const sizes = (row: JudgedRow) => [row.measurement.expandedPa, row.predicted.expandedPa] as const;
-  const all = judged.flatMap((row) => {
-    const [measured, predicted] = sizes(row);
-    return [
-      row.measuredPa - measured,
-      row.measuredPa + measured,
-      row.predictedPa - predicted,
-      row.predictedPa + predicted,
-    ].map(shown);
-  });
+  // a whisker may be longer than all that was read: it ends at the frame, and the table has its number
+  const all = judged.flatMap(({ measuredPa, predictedPa }) => [shown(measuredPa), shown(predictedPa)]);
   const ticks = niceTicks(Math.min(0, ...all), Math.max(...all), MOST_STEPS);
   const [low = 0, high = 1] = [ticks[0], ticks.at(-1)];
   const x = (value: number) => CHART.left + ((value - low) / (high - low)) * (CHART.right - CHART.left);
@@ -77,10 +70,10 @@ export function agreementFigure(rows: Iterable<AgreementRow>, units: DisplayUnit
       name: nameOf(row.gauge),
       x: x(shown(row.predictedPa)),
       y: y(shown(row.measuredPa)),
-      x1: x(shown(row.predictedPa - predicted)),
-      x2: x(shown(row.predictedPa + predicted)),
-      y1: y(shown(row.measuredPa + measured)),
-      y2: y(shown(row.measuredPa - measured)),
+      x1: x(clamp(shown(row.predictedPa - predicted))),
+      x2: x(clamp(shown(row.predictedPa + predicted))),
+      y1: y(clamp(shown(row.measuredPa + measured))),
+      y2: y(clamp(shown(row.measuredPa - measured))),
       word: row.word,
     };
   });

@@ -10,7 +10,7 @@ import { nameOf } from '../shared/element-words';
   selector: 'app-reading-log',
   changeDetection: ChangeDetectionStrategy.OnPush,
   template: `
-    <div class="scroll" tabindex="0" role="region" aria-label="Readings as they were taken">
+    <div class="scroll" tabindex="0" role="region" aria-label="Table of the readings">
       <table>
         <thead>
           <tr>

@@ -57,9 +57,11 @@ export function trendFigure(
   const shown = (pa: number) => toDisplay(pa, 'pressure', units);
   const within = (row: (typeof rows)[number]['row']) =>
     row.status === 'judged' ? Math.hypot(row.measurement.expandedPa, row.predicted.expandedPa) : 0;
-  const all = rows.flatMap(({ row }) => [row.measuredPa, row.predictedPa - within(row), row.predictedPa + within(row)]);
-  const ticks = niceTicks(Math.min(...all.map(shown)), Math.max(...all.map(shown)), MOST_STEPS);
+  // a band may be wider than all that was read: it ends at the frame
+  const all = rows.flatMap(({ row }) => [row.measuredPa, row.predictedPa]);
+  const ticks = niceTicks(Math.min(0, ...all.map(shown)), Math.max(...all.map(shown)), MOST_STEPS);
   const [low = 0, high = 1] = [ticks[0], ticks.at(-1)];
+  const clamp = (value: number) => Math.min(high, Math.max(low, value));
   const y = (value: number) => TREND.bottom - ((value - low) / (high - low)) * (TREND.bottom - TREND.top);
   const x = (i: number) => TREND.left + ((i + 0.5) / rows.length) * (TREND.right - TREND.left);
   const pressure = (pa: number) => formatQuantity(pa, 'pressure', units);
@@ -71,8 +73,8 @@ export function trendFigure(
       x: x(i),
       readY: y(shown(row.measuredPa)),
       expectedY: y(shown(row.predictedPa)),
-      highY: y(shown(row.predictedPa + within(row))),
-      lowY: y(shown(row.predictedPa - within(row))),
+      highY: y(clamp(shown(row.predictedPa + within(row)))),
+      lowY: y(clamp(shown(row.predictedPa - within(row)))),
       word,
       read: pressure(row.measuredPa),
       expected: pressure(row.predictedPa),

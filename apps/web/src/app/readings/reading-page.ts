@@ -92,7 +92,10 @@ export class ReadingPage {
   }
 
   protected async close(): Promise<void> {
-    if (await this.store.close()) this.news.set('The round is closed.');
+    if (!(await this.store.close())) return;
+    this.store.goTo('');
+    this.listShown.set(false);
+    this.news.set('The round is closed.');
   }
 
   protected async toAgreement(): Promise<void> {

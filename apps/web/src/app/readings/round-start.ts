@@ -9,6 +9,7 @@ import { READING_CAUTION } from './reading-words';
   selector: 'app-round-start',
   changeDetection: ChangeDetectionStrategy.OnPush,
   template: `
+    <h1>Which round?</h1>
     <p class="caution">{{ caution }}</p>
     @if (openRounds().length > 0) {
       <section aria-labelledby="open-rounds">

@@ -43,6 +43,10 @@ import type { DialUnit } from './typed-reading';
         </li>
       }
     </ol>
+    @if (closable()) {
+      <p>When the round is closed, nothing but corrections is added to it.</p>
+      <button type="button" class="close" (click)="closeWanted.emit()">Close the round</button>
+    }
   `,
   styleUrl: './walk-list.scss',
 })
@@ -51,7 +55,9 @@ export class WalkList {
   readonly standing = input.required<ReadonlyMap<string, KnownReading>>();
   readonly unit = input.required<DialUnit>();
   readonly timeZone = input.required<string>();
+  readonly closable = input(false);
   readonly chosen = output<string>();
+  readonly closeWanted = output();
   readonly moved = output<{ readonly gaugeId: string; readonly by: -1 | 1 }>();
 
   protected readonly rows = computed(() =>

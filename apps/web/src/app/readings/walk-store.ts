@@ -72,10 +72,12 @@ export class WalkStore {
   readonly standing = computed(() => standingReadings(this.knownReadings()));
   readonly doneCount = computed(() => this.cards().filter(({ gauge }) => this.standing().has(gauge.id)).length);
   readonly complete = computed(() => this.cards().length > 0 && this.doneCount() === this.cards().length);
-  /** The gauge that the person stands before; null when all are read and none is gone back to. */
+  /** The gauge that the person stands before; null when all are read, or the round is closed, and none is gone back to. */
   readonly card = computed((): GaugeCard | null => {
     const wanted = this.cards().find(({ gauge }) => gauge.id === this.wantedGaugeId());
-    return wanted ?? this.cards().find(({ gauge }) => !this.standing().has(gauge.id)) ?? null;
+    // a closed round is not gone on with
+    if (wanted !== undefined || this.round()?.closedAt !== undefined) return wanted ?? null;
+    return this.cards().find(({ gauge }) => !this.standing().has(gauge.id)) ?? null;
   });
   readonly expected = computed(() => this.card()?.expected[this.round()?.caseId ?? '']);
   /** Where the walk goes after this one. */
