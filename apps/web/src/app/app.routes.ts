@@ -1,5 +1,6 @@
 import type { Routes } from '@angular/router';
 import { takeToken } from './links/link-token';
+import { readingGuard } from './readings/reading-guard';
 import { signedInGuard } from './session/signed-in-guard';
 
 export const routes: Routes = [
@@ -33,6 +34,12 @@ export const routes: Routes = [
     title: 'Your account · Riseback',
     canActivate: [signedInGuard],
     loadComponent: () => import('./account/account-page').then((m) => m.AccountPage),
+  },
+  {
+    path: 'sites/:siteId/networks/:networkId/gauges/reading',
+    title: 'Readings · Riseback',
+    canActivate: [readingGuard],
+    loadComponent: () => import('./readings/reading-page').then((m) => m.ReadingPage),
   },
   {
     path: 'sites',
@@ -98,6 +105,7 @@ export const routes: Routes = [
           { path: 'cases', loadComponent: () => import('./cases/cases-page').then((m) => m.CasesPage) },
           { path: 'ledger', loadComponent: () => import('./results/ledger-page').then((m) => m.LedgerPage) },
           { path: 'try', loadComponent: () => import('./what-if/what-if-page').then((m) => m.WhatIfPage) },
+          { path: 'gauges', loadComponent: () => import('./gauges/gauges-page').then((m) => m.GaugesPage) },
           {
             path: 'revisions',
             loadComponent: () => import('./revisions/revisions-page').then((m) => m.RevisionsPage),

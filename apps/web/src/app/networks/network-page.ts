@@ -29,6 +29,7 @@ const VIEWS = [
   { path: 'ledger', word: 'Lift & ledger' },
   { path: 'cases', word: 'Cases' },
   { path: 'try', word: 'Try changes' },
+  { path: 'gauges', word: 'Gauges' },
   { path: 'revisions', word: 'Revisions' },
   { path: 'report', word: 'Report' },
   { path: 'method', word: 'Method' },
