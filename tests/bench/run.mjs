@@ -8,7 +8,7 @@ const { values: options } = parseArgs({
   options: { only: { type: 'string' }, minutes: { type: 'string', default: '1' } },
 });
 const benches = {
-  solver: async () => (await import('./solver-bench.ts')).solverBench(),
+  solver: async () => (await import('./as-the-server-solves.mjs')).solverBenchLines(),
   reports: async () => (await import('./report-bench.ts')).reportBench(),
   api: async () => {
     await (await import('../../server/build.mjs')).ensureBuilt(say);

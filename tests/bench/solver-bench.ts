@@ -1,4 +1,3 @@
-import { readFileSync } from 'node:fs';
 import {
   flashVapourLiquidGradient,
   flashVapourSteamGradient,
@@ -21,6 +20,7 @@ import {
   saturationTemperatureK,
   type SaturationRecord,
 } from '@riseback/steam';
+import ternQuay from '../fixtures/tern-quay.json' with { type: 'json' };
 
 const PIPES = [100, 200, 500, 1000, 2000, 5000, 10_000, 20_000, 50_000] as const;
 const RATIO_PIPES = 2000;
@@ -121,8 +121,7 @@ function* meshesRatio(): Generator<string> {
 
 /** What both bands of every trap cost, in solves of the same plant. */
 function bandsRatio(): string {
-  const text = readFileSync(new URL('../fixtures/tern-quay.json', import.meta.url), 'utf8');
-  const read = readNetworkFile(JSON.parse(text) as unknown);
+  const read = readNetworkFile(ternQuay);
   if (!read.ok) throw new Error(JSON.stringify(read.errors));
   const many = (options: Partial<SolveOptions>) => (): void => {
     for (let i = 0; i < 20; i++) solve(read.file, options);

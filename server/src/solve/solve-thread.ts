@@ -39,6 +39,11 @@ interface Running extends Waiting {
 const LIMIT_MS = 10_000;
 /** Some ten times what 50,000 pipes take. */
 const MEMORY_MB = 1_024;
+/**
+ * Room for what a solve makes and drops. With what the engine gives unasked, 48, a large network's result is copied over and over
+ * while it grows: see docs/decisions/0180. The bench of the solver has as much.
+ */
+export const YOUNG_MEMORY_MB = 96;
 /** Beyond this many networks at once a person had better try again than wait. */
 const MOST_WAITING = 100;
 const BROKE = 'The solver broke on this network. Its data is safe; undo the last change, or report the network.';
@@ -124,7 +129,9 @@ export class SolveThread implements SolvePort, FileSolver {
   }
 
   private startWorker(): Worker {
-    const worker = startWorker(this.workerUrl, { resourceLimits: { maxOldGenerationSizeMb: this.memoryMb } });
+    const worker = startWorker(this.workerUrl, {
+      resourceLimits: { maxOldGenerationSizeMb: this.memoryMb, maxYoungGenerationSizeMb: YOUNG_MEMORY_MB },
+    });
     // the server's socket keeps the process alive, not its solver
     worker.unref();
     worker.on('message', (answer: SolveAnswer) => this.take(answer));
