@@ -9,13 +9,13 @@ import type { DraftDefaults } from './draft-defaults';
 const SHARED_KEYS = ['rangeLowPa', 'rangeHighPa', 'accuracy', 'resolutionPa', 'waterLeg'] as const;
 
 /** The next tag, the height of the tap, and the dial of the last gauge. */
-export function gaugeDefaults(draft: GaugeDraft, document: NetworkDocument): DraftDefaults {
+export function gaugeDefaults(draft: GaugeDraft, document: NetworkDocument, pattern?: string): DraftDefaults {
   const gauges = inOrder(document.gauges).map(([, { value }]) => value);
   const tags = gauges.flatMap(({ tag }) => tag ?? []);
   const last = gauges.findLast(({ retired }) => !retired);
   const tap = gaugeTap(toFile(document), draft);
   const values: Record<string, unknown> = {
-    tag: nextTag('gauge', tags, new Set(tags)),
+    tag: nextTag('gauge', tags, new Set(tags), pattern),
     ...('pipe' in draft ? { distanceM: draft.distanceM } : {}),
     ...(tap === undefined ? {} : { elevationM: tap.elevationM }),
   };

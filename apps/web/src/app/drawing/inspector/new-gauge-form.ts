@@ -13,6 +13,7 @@ import {
 } from '@angular/core';
 import { MatButton } from '@angular/material/button';
 import { NetworkStore } from '../../networks/network-store';
+import { HeldSiteSettings } from '../../sites/held-site-settings';
 import { DrawingCommands } from '../drawing-commands';
 import { DrawingState } from '../drawing-state';
 import type { GaugeDraft } from '../model/gauge-draft';
@@ -56,6 +57,7 @@ const NO_DEFAULTS: DraftDefaults = { values: {}, hints: {} };
 export class NewGaugeForm {
   private readonly commands = inject(DrawingCommands);
   private readonly state = inject(DrawingState);
+  private readonly siteSettings = inject(HeldSiteSettings);
   protected readonly store = inject(NetworkStore);
 
   readonly draft = input.required<GaugeDraft>();
@@ -70,7 +72,9 @@ export class NewGaugeForm {
   private readonly defaults = computed((): DraftDefaults => {
     const draft = this.draft();
     const document = untracked(() => this.store.document());
-    return document === null ? NO_DEFAULTS : gaugeDefaults(draft, document);
+    if (document === null) return NO_DEFAULTS;
+    const patterns = untracked(() => this.siteSettings.tagPatterns(this.store.network()?.siteId ?? ''));
+    return gaugeDefaults(draft, document, patterns.gauge);
   });
   protected readonly values = linkedSignal(() => this.defaults().values);
   /** Where a value was filled in from, until it is changed. */
