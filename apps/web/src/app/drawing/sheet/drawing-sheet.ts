@@ -158,12 +158,18 @@ export class DrawingSheet {
           this.fit();
         });
     });
+    let before: object | null = null;
+    let whole = false;
     effect(() => {
-      // a strip or the inspector opened beside it: what is selected stays in sight
-      this.size();
-      if (this.looked)
+      const [size, bounds, view] = [this.size(), this.bounds(), this.viewport()];
+      const [resized, wasWhole] = [before !== null && size !== before, whole];
+      before = size;
+      whole = !needsOverview(bounds, view);
+      // a strip or the inspector opened beside it: what was there to see as a whole still is, and what is selected stays in sight
+      if (resized && this.looked)
         untracked(() => {
-          this.bringIntoSight(this.state.chosenId());
+          if (wasWhole && !whole) this.fit();
+          else this.bringIntoSight(this.state.chosenId());
         });
     });
     effect(() => {
