@@ -66,7 +66,7 @@ function printed({ letter, revisionId, steps, firstBroken, solvedAgain, publicKe
     solvedAgainWords(solvedAgain),
     firstBroken === undefined
       ? 'Sound: everything is as it was frozen and signed.'
-      : `Broken: the first thing that does not match is: ${firstBroken}.`,
+      : `Broken: the first thing that does not match is: ${firstBroken}. Do not rely on this revision; compare it with a backup from before (docs/operations.md, Restore).`,
     '',
   ].join('\n');
 }
