@@ -1,6 +1,8 @@
 import { NoConvergenceError } from '@riseback/numerics';
 import { SteamRangeError } from '@riseback/steam';
 
+const REMEDY = 'Look at the flow, the bore, the length and the rises here: no return works at such a state.';
+
 /** Computing failed at one element of the network for a reason that lies in the network, not in the program. */
 export class ElementFailure extends Error {
   override readonly name = 'ElementFailure';
@@ -15,7 +17,7 @@ export class ElementFailure extends Error {
     readonly pointer: string,
     readonly reason: Error,
   ) {
-    super(reason.message);
+    super(reason instanceof SteamRangeError ? `${reason.message} ${REMEDY}` : reason.message);
   }
 }
 

@@ -27,7 +27,7 @@ export class SteamRangeError extends Error {
   ) {
     const unit = UNITS[quantity];
     super(
-      `The ${quantity} of ${subject} is ${value} ${unit}; it must lie between ${sixDigits(low)} and ${sixDigits(high)} ${unit}.`,
+      `The ${quantity} of ${subject} is ${told(value, low, high)} ${unit}; it must lie between ${sixDigits(low)} and ${sixDigits(high)} ${unit}.`,
     );
   }
 }
@@ -35,6 +35,12 @@ export class SteamRangeError extends Error {
 /** Limits that depend on the pressure come with all their bits; nobody reads more than six digits of them. */
 function sixDigits(limit: number): number {
   return Number(limit.toPrecision(6));
+}
+
+/** A value that misses its limit by a rounding of arithmetic would else read as if it kept it. */
+function told(value: number, low: number, high: number): string {
+  const shown = Number(value.toPrecision(9));
+  return shown === low || shown === high ? `just beyond ${String(shown)}` : String(shown);
 }
 
 /** Refuses NaN too: every comparison with it is false. */
