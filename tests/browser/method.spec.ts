@@ -1,5 +1,5 @@
 import type { Page } from '@playwright/test';
-import { demoNetworkPath, openEmptyNetwork, savedAndSolved, signIn } from './people';
+import { copyOfDemo, demoNetworkPath, openEmptyNetwork, savedAndSolved, signIn } from './people';
 import { expect, test } from './violations';
 
 const choice = (page: Page, label: string) =>
@@ -49,6 +49,39 @@ test('a limit takes typed units and goes back to its default when emptied', asyn
   await field.fill('');
   await field.press('Enter');
   await expect(limits.locator('summary')).toContainText('All at their defaults');
+});
+
+test('a changed atmosphere asks which pressures stay, and is one step back', async ({ page }) => {
+  await signIn(page, 'designer');
+  const network = await copyOfDemo(page, 'High up');
+  const inlets = async () => {
+    const answer = await page.request.get(`/api/networks/${network.split('/').at(-1) ?? ''}/file`);
+    const { site, nodes } = (await answer.json()) as {
+      site: { atmosphericPressurePa: number };
+      nodes: { id: string; inletPressurePa?: number }[];
+    };
+    return [site.atmosphericPressurePa, nodes.find(({ id }) => id === 'TR5')?.inletPressurePa ?? NaN] as const;
+  };
+  await page.goto(`${network}/drawing`);
+  await savedAndSolved(page);
+  const [atmosphere, inlet] = await inlets();
+  const field = page.locator('app-network-panel').getByLabel('Atmosphere');
+  const dialog = page.getByRole('dialog', { name: 'Which pressures stay?' });
+
+  await field.fill('84 kPa');
+  await field.press('Enter');
+  await dialog.getByRole('button', { name: 'Leave it' }).click();
+  await expect(dialog).toBeHidden();
+  expect(await inlets()).toEqual([atmosphere, inlet]);
+
+  await field.fill('84 kPa');
+  await field.press('Enter');
+  await dialog.getByRole('button', { name: 'Gauge values stay' }).click();
+  await savedAndSolved(page);
+  await expect.poll(inlets).toEqual([84_000, inlet + 84_000 - atmosphere]);
+
+  await page.getByRole('button', { name: /^Undo/ }).click();
+  await expect.poll(inlets).toEqual([atmosphere, inlet]);
 });
 
 test('bands and the stall curve say in words what they draw', async ({ page }) => {

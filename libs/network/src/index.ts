@@ -7,6 +7,7 @@ export * from './edit-ops';
 export * from './element-keys';
 export * from './file-settings';
 export * from './findings';
+export * from './gauge-pressures';
 export * from './json-value';
 export * from './layout';
 export * from './mistakes';

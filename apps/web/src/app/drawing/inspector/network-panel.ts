@@ -1,6 +1,25 @@
-import { ChangeDetectionStrategy, Component, computed, inject, signal } from '@angular/core';
+import {
+  afterNextRender,
+  ChangeDetectionStrategy,
+  Component,
+  computed,
+  inject,
+  Injector,
+  signal,
+  viewChild,
+} from '@angular/core';
+import { MatDialog } from '@angular/material/dialog';
 import { RouterLink } from '@angular/router';
-import { type Method, type SiteConditions, setNetworkOp } from '@riseback/network';
+import {
+  atmosphereKeepingGauge,
+  countGaugePressures,
+  type Method,
+  type NetworkDocument,
+  type SiteConditions,
+  setNetworkOp,
+} from '@riseback/network';
+import { formatQuantity } from '@riseback/units';
+import { firstValueFrom } from 'rxjs';
 import {
   ACCELERATION_SENTENCE,
   COINCIDENCE_WORDS,
@@ -12,6 +31,7 @@ import {
 import { NetworkStore } from '../../networks/network-store';
 import { StatusMark } from '../../shared/status-mark/status-mark';
 import { PlanPanel } from '../plan/plan-panel';
+import { AtmosphereDialog, type AtmosphereQuestion, type KeptPressures } from './atmosphere-dialog';
 import type { FieldSpec } from './element-fields';
 import { LimitFields } from './limit-fields';
 import { MethodChoice } from './method-choice';
@@ -47,6 +67,10 @@ const WORDS = {
 })
 export class NetworkPanel {
   protected readonly store = inject(NetworkStore);
+  private readonly dialog = inject(MatDialog);
+  private readonly injector = inject(Injector);
+  private readonly siteForm = viewChild.required<PropertyFields>('siteForm');
+  private asking = false;
 
   protected readonly siteFields = SITE_FIELDS;
   protected readonly words = WORDS;
@@ -79,6 +103,10 @@ export class NetworkPanel {
   protected setSite({ key, what, to }: FieldChange): void {
     const document = this.store.document();
     if (document === null) return;
+    if (key === 'atmosphericPressurePa' && typeof to === 'number' && countGaugePressures(document) > 0) {
+      void this.setAtmosphere(document, to);
+      return;
+    }
     const site = { ...document.site, [key]: to } as SiteConditions;
     this.taken(key, this.store.edit(`${what} of the site`, [setNetworkOp(document, 'site', site)]));
   }
@@ -93,6 +121,43 @@ export class NetworkPanel {
   protected refusalAt(key: string): string {
     const refusal = this.refusal();
     return refusal?.key === key ? refusal.reason : '';
+  }
+
+  /** Asks which pressures stay, since those that were read off dials would else become others. */
+  private async setAtmosphere(document: NetworkDocument, atmosphericPressurePa: number): Promise<void> {
+    // the field commits once more when the question takes its focus away
+    if (this.asking) return;
+    this.asking = true;
+    const kept = await this.keptPressures(document, atmosphericPressurePa);
+    this.asking = false;
+    // somebody else may have changed the network while the question stood
+    const present = this.store.document();
+    if (kept !== undefined && present !== null) {
+      const ops =
+        kept === 'gauge'
+          ? atmosphereKeepingGauge(present, atmosphericPressurePa)
+          : [setNetworkOp(present, 'site', { ...present.site, atmosphericPressurePa })];
+      this.taken('atmosphericPressurePa', this.store.edit('atmosphere of the site', ops));
+    }
+    afterNextRender(() => this.siteForm().focusFirst(), { injector: this.injector });
+  }
+
+  /** Undefined: the person would rather leave the atmosphere as it is. */
+  private keptPressures(document: NetworkDocument, toPa: number): Promise<KeptPressures | undefined> {
+    const printed = (pressurePa: number) =>
+      formatQuantity(pressurePa, 'absolutePressure', this.store.units(), { withUnit: true });
+    const data = {
+      from: printed(document.site.atmosphericPressurePa),
+      to: printed(toPa),
+      count: countGaugePressures(document),
+    };
+    const asked = this.dialog.open<AtmosphereDialog, AtmosphereQuestion, KeptPressures>(AtmosphereDialog, {
+      data,
+      width: '460px',
+      // the field would go on from the value that it still shows; it gets the keyboard back with the new one
+      restoreFocus: false,
+    });
+    return firstValueFrom(asked.afterClosed());
   }
 
   private taken(key: string, taken: boolean): void {
