@@ -1,10 +1,10 @@
 import AxeBuilder from '@axe-core/playwright';
 import type { Page } from '@playwright/test';
 import { Secret, TOTP } from 'otpauth';
-import { signIn } from './people';
+import { invite, signIn } from './people';
 import { expect, test } from './violations';
 
-const OLD = 'demo-tern-quay';
+const OLD = 'slow kettles sing low';
 const NEW = 'tall gulls eat my lunch';
 
 test('one’s own account: units, password, codes and recovery codes from the first to the last', async ({
@@ -12,11 +12,12 @@ test('one’s own account: units, password, codes and recovery codes from the fi
   browser,
 }, { retry }) => {
   test.setTimeout(180_000);
-  // The password does not become the demo's again: no other test signs the reviewer in, and a second try is somebody else's.
-  const who = retry === 0 ? 'reviewer' : 'stranger';
-  await signIn(page, who);
+  // of the test's own, since the password does not become the former again
+  const who = `uma.${String(retry)}`;
+  await invite(browser, who, OLD);
+  await signIn(page, who, OLD);
   const elsewhere = await browser.newPage();
-  await signIn(elsewhere, who);
+  await signIn(elsewhere, who, OLD);
   await openAccount(page);
   await expectNoFindings(page);
 
@@ -33,14 +34,14 @@ test('one’s own account: units, password, codes and recovery codes from the fi
     await expect(rows.first()).toContainText('this one');
     await expect(rows.first()).toContainText('Chrome on Linux');
     const third = await browser.newPage();
-    await signIn(third, who);
+    await signIn(third, who, OLD);
     await page.reload();
     await expect(rows).toHaveCount(3);
     await page.getByRole('button', { name: 'End all others' }).click();
     await expect(page.getByText('2 ended. You are signed in here only.')).toBeVisible();
     expect((await third.request.get('/api/session')).status()).toBe(401);
     await third.close();
-    await signIn(elsewhere, who);
+    await signIn(elsewhere, who, OLD);
   });
 
   await test.step('a new password is judged while it is typed, and ends the other session', async () => {

@@ -160,6 +160,7 @@ test('a forgotten password is chosen anew by a link, whose page masks it, shows 
     for (const address of [`nobody.${unique}@quay.example`, email]) {
       await other.goto('/sign-in');
       await other.getByRole('link', { name: 'Forgotten password' }).click();
+      await expect(other.getByRole('heading', { name: 'Forgotten password' })).toBeVisible();
       await other.getByLabel('E-mail').fill(address);
       await other.keyboard.press('Enter');
       await expect(other.getByRole('status')).toHaveText(

@@ -1,12 +1,12 @@
-import { expect, type Page } from '@playwright/test';
+import { expect, type Browser, type Page } from '@playwright/test';
 
 export type DemoPerson = 'admin' | 'designer' | 'commissioning' | 'reviewer' | 'viewer' | 'stranger';
 
-/** Signs in through the page, as a person does. */
-export async function signIn(page: Page, person: DemoPerson): Promise<void> {
+/** Signs in through the page, as a person does; `person` is what stands before the @. */
+export async function signIn(page: Page, person: string, password = 'demo-tern-quay'): Promise<void> {
   await page.goto('/sign-in');
   await page.getByLabel('E-mail').fill(`${person}@ternquay.example`);
-  await page.getByLabel('Password', { exact: true }).fill('demo-tern-quay');
+  await page.getByLabel('Password', { exact: true }).fill(password);
   await page.getByRole('button', { name: 'Sign in' }).click();
   await expect(page.getByRole('heading', { name: 'Sites' })).toBeVisible();
 }
@@ -24,13 +24,42 @@ export async function demoNetworkPath(page: Page): Promise<string> {
   return `/sites/${site.id}/networks/${demo.id}`;
 }
 
+/** Somebody new, for a test that changes what is a person's own: invited by the administrator, and the invitation accepted. */
+export async function invite(browser: Browser, person: string, password: string): Promise<void> {
+  const context = await browser.newContext();
+  const page = await context.newPage();
+  await signIn(page, 'admin');
+  const site = (await demoNetworkPath(page)).replace(/\/networks\/.*/, '');
+  const email = `${person}@ternquay.example`;
+  const headers = { 'X-XSRF-TOKEN': await proofOf(page) };
+  const invited = await page.request.post(`/api${site}/invitations`, { headers, data: { email, role: 'viewer' } });
+  expect(invited.status()).toBe(201);
+  const token = async () => {
+    const mails = (await (await page.request.get(`/api${site}/received-mails`)).json()) as { id: string; to: string }[];
+    const mail = mails.find(({ to }) => to === email);
+    if (mail === undefined) return '';
+    const { text } = (await (await page.request.get(`/api${site}/received-mails/${mail.id}`)).json()) as {
+      text: string;
+    };
+    return /\/invitation#([\w-]{43})/.exec(text)?.[1] ?? '';
+  };
+  await expect.poll(token, { timeout: 20_000 }).not.toBe('');
+  const data = { token: await token(), name: person, password };
+  expect((await page.request.post('/api/links/acceptance', { headers, data })).ok()).toBe(true);
+  await context.close();
+}
+
+async function proofOf(page: Page): Promise<string> {
+  const token = (await page.context().cookies()).find((cookie) => cookie.name === 'XSRF-TOKEN')?.value ?? '';
+  return decodeURIComponent(token);
+}
+
 /** The demo is for every test: one that changes a network works on a copy of its own. */
 export async function copyOfDemo(page: Page, name: string): Promise<string> {
   const demo = await demoNetworkPath(page);
   const file = (await (await page.request.get(`/api/networks/${demo.split('/').at(-1) ?? ''}/file`)).json()) as object;
-  const token = (await page.context().cookies()).find((cookie) => cookie.name === 'XSRF-TOKEN')?.value ?? '';
   const made = await page.request.post(`/api${demo.replace(/\/[^/]*$/, '')}`, {
-    headers: { 'X-XSRF-TOKEN': decodeURIComponent(token) },
+    headers: { 'X-XSRF-TOKEN': await proofOf(page) },
     data: { ...file, name },
   });
   expect(made.status()).toBe(201);

@@ -18,8 +18,6 @@ export interface StepHistory {
   redo(): void;
 }
 
-const NO_STEPS = { undoLabel: () => null, redoLabel: () => null };
-
 /** Undo and redo as buttons and by their keys, for pages of forms and tables. */
 @Component({
   selector: 'app-undo-buttons',
@@ -83,13 +81,8 @@ export class UndoButtons {
     const before = this.before();
     return before === null || (before.undoLabel() === null && before.redoLabel() === null) ? null : before;
   });
-  /** Who may not draw has no steps in the network to take back. */
-  protected readonly undoLabel = computed(() =>
-    (this.first() ?? (this.store.mayDraw() ? this.store : NO_STEPS)).undoLabel(),
-  );
-  protected readonly redoLabel = computed(() =>
-    (this.first() ?? (this.store.mayDraw() ? this.store : NO_STEPS)).redoLabel(),
-  );
+  protected readonly undoLabel = computed(() => (this.first() ?? this.store).undoLabel());
+  protected readonly redoLabel = computed(() => (this.first() ?? this.store).redoLabel());
 
   protected undo(): void {
     const label = this.undoLabel();
