@@ -68,6 +68,7 @@ const TYPE_NAMES: Record<string, string> = {
 };
 
 function bound(origin: string, relation: string, limit: number | bigint): string {
+  if (origin === 'string' && relation === 'at least' && Number(limit) === 1) return 'must not be empty';
   if (origin === 'string') return `must have ${relation} ${limit} characters`;
   if (origin === 'array') return `must have ${relation} ${limit} items`;
   return `must be ${relation} ${limit}`;

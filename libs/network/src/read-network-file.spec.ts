@@ -68,6 +68,10 @@ describe('mistakes', () => {
     });
   });
 
+  it('says that a name must not be empty, not how many characters it lacks', () => {
+    expect(mistakes(smallJson({ name: '' }))).toEqual({ '/name': 'name must not be empty' });
+  });
+
   it('a rule over two keys is told beside a mistake in a third', () => {
     const { insideDiameterM: _, ...bare } = pipe('L9', 'T1', 'J1');
     expect(Object.keys(mistakes(smallJson({ pipes: [{ ...bare, lengthM: -1 }] })))).toEqual([
